@@ -1,0 +1,2 @@
+// Package symmetry holds point groups and finds them in sets of points.
+package symmetry
