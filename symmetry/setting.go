@@ -84,6 +84,7 @@ type Setting struct {
 	Classes []Class
 	Irreps  []Irrep
 
+	kind    kind
 	product [][]int32
 	inverse []int
 }
