@@ -35,15 +35,16 @@ func Bonds(m *Molecule) [][2]int {
 		return m.Atoms[i].Position.Sub(m.Atoms[j].Position).LenSqr() < reach*reach
 	}
 	neighbours := make([]int, len(m.Atoms))
+	crowded := func(i int) bool { return neighbours[i] > maxNeighbours }
 	g.pairs(func(i, j int) {
-		if bonded(i, j) {
+		if !(crowded(i) && crowded(j)) && bonded(i, j) {
 			neighbours[i]++
 			neighbours[j]++
 		}
 	})
 	var out [][2]int
 	g.pairs(func(i, j int) {
-		if neighbours[i] <= maxNeighbours && neighbours[j] <= maxNeighbours && bonded(i, j) {
+		if !crowded(i) && !crowded(j) && bonded(i, j) {
 			out = append(out, [2]int{min(i, j), max(i, j)})
 		}
 	})

@@ -43,6 +43,9 @@ var bySymbol = func() map[string]Element {
 
 // ElementOf returns the element with the given symbol, in any case ("Cl", "CL", "cl"), and whether there is one.
 func ElementOf(symbol string) (Element, bool) {
+	if len(symbol) > 2 { // some letters beyond ASCII have a lower case within it: the kelvin sign
+		return 0, false
+	}
 	e, ok := bySymbol[strings.ToLower(symbol)]
 	return e, ok
 }
