@@ -1,0 +1,168 @@
+package symmetry
+
+import (
+	"math"
+	"sort"
+
+	"github.com/go-gl/mathgl/mgl64"
+)
+
+// A cloud is a set of points about their centroid, prepared for asking which
+// of them lies near a place.
+type cloud struct {
+	at     []mgl64.Vec3 // centred, Å, in the input's axes
+	kind   []int
+	radius []float64
+	centre mgl64.Vec3
+	cell   float64
+	cells  map[[3]int32][]int32
+}
+
+// cellSize (Å) is a little more than a bond, so that a cell holds a few atoms
+// and a search within tenths of an ångström seldom needs a second one.
+const cellSize = 1.6
+
+func newCloud(points []Point) *cloud {
+	c := &cloud{cell: cellSize, cells: make(map[[3]int32][]int32, len(points))}
+	for _, p := range points {
+		c.centre = c.centre.Add(p.Position)
+	}
+	c.centre = c.centre.Mul(1 / float64(len(points)))
+	for i, p := range points {
+		v := p.Position.Sub(c.centre)
+		c.at = append(c.at, v)
+		c.kind = append(c.kind, p.Kind)
+		c.radius = append(c.radius, v.Len())
+		key := c.key(v)
+		c.cells[key] = append(c.cells[key], int32(i))
+	}
+	return c
+}
+
+func (c *cloud) key(v mgl64.Vec3) [3]int32 {
+	return [3]int32{c.index(v[0]), c.index(v[1]), c.index(v[2])}
+}
+
+func (c *cloud) index(x float64) int32 { return int32(math.Floor(x / c.cell)) }
+
+// visit calls f for every point in the cells that a ball meets.
+func (c *cloud) visit(v mgl64.Vec3, reach float64, f func(i int)) {
+	var low, high [3]int32
+	for k := range low {
+		low[k], high[k] = c.index(v[k]-reach), c.index(v[k]+reach)
+	}
+	for x := low[0]; x <= high[0]; x++ {
+		for y := low[1]; y <= high[1]; y++ {
+			for z := low[2]; z <= high[2]; z++ {
+				for _, i := range c.cells[[3]int32{x, y, z}] {
+					f(int(i))
+				}
+			}
+		}
+	}
+}
+
+// nearest returns the point of a kind that lies nearest to v, within reach; −1
+// if there is none.
+func (c *cloud) nearest(v mgl64.Vec3, kind int, reach float64) int {
+	best, limit := -1, reach*reach
+	c.visit(v, reach, func(i int) {
+		if c.kind[i] != kind {
+			return
+		}
+		d := c.at[i].Sub(v)
+		if sq := d.Dot(d); sq <= limit {
+			best, limit = i, sq
+		}
+	})
+	return best
+}
+
+// closestLike returns the shortest distance between two points of one kind,
+// and which they are; at most limit, with −1 for the points.
+func (c *cloud) closestLike(limit float64) (d float64, a, b int) {
+	d, a, b = limit, -1, -1
+	for i := range c.at {
+		c.visit(c.at[i], d, func(j int) {
+			if j > i && c.kind[j] == c.kind[i] {
+				if sep := c.at[i].Sub(c.at[j]).Len(); sep < d {
+					d, a, b = sep, i, j
+				}
+			}
+		})
+	}
+	return d, a, b
+}
+
+// farthest is the largest distance of a point from the centre.
+func (c *cloud) farthest() float64 {
+	far := 0.0
+	for _, r := range c.radius {
+		far = math.Max(far, r)
+	}
+	return far
+}
+
+// alike counts, for every point, the points of its kind at its distance from
+// the centre, give or take width; like lists them for one.
+func (c *cloud) alike(width float64) (count []int, like func(i int) []int) {
+	order := make([]int, len(c.at))
+	for i := range order {
+		order[i] = i
+	}
+	sort.Slice(order, func(a, b int) bool {
+		i, j := order[a], order[b]
+		if c.kind[i] != c.kind[j] {
+			return c.kind[i] < c.kind[j]
+		}
+		if c.radius[i] != c.radius[j] {
+			return c.radius[i] < c.radius[j]
+		}
+		return i < j
+	})
+	low, high := make([]int, len(order)), make([]int, len(order))
+	count = make([]int, len(order))
+	l, h := 0, 0
+	for at, i := range order {
+		for c.kind[order[l]] != c.kind[i] || c.radius[order[l]] < c.radius[i]-width {
+			l++
+		}
+		h = max(h, at)
+		for h+1 < len(order) && c.kind[order[h+1]] == c.kind[i] && c.radius[order[h+1]] <= c.radius[i]+width {
+			h++
+		}
+		low[i], high[i] = l, h
+		count[i] = h - l + 1
+	}
+	return count, func(i int) []int { return order[low[i] : high[i]+1] }
+}
+
+// line returns the direction through the centre along which the points lie, if
+// all of them are within tolerance of it.
+func (c *cloud) line(tolerance float64) (mgl64.Vec3, bool) {
+	far := 0
+	for i, r := range c.radius {
+		if r > c.radius[far] {
+			far = i
+		}
+	}
+	if c.radius[far] == 0 {
+		return mgl64.Vec3{0, 0, 1}, true
+	}
+	axis := c.at[far].Normalize()
+	// Least squares: the direction of the largest spread, by power iteration
+	// from a direction that is already near to it.
+	for range 50 {
+		var next mgl64.Vec3
+		for _, v := range c.at {
+			next = next.Add(v.Mul(v.Dot(axis)))
+		}
+		axis = next.Normalize()
+	}
+	for _, v := range c.at {
+		if v.Sub(axis.Mul(v.Dot(axis))).Len() > tolerance {
+			return axis, false
+		}
+	}
+	return axis, true
+}

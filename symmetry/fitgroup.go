@@ -1,0 +1,224 @@
+package symmetry
+
+import (
+	"math"
+
+	"github.com/go-gl/mathgl/mgl64"
+)
+
+// A placed group is one found in a cloud together with the nearest points that
+// have it exactly.
+type placed struct {
+	kind     kind
+	matrices []mgl64.Mat3 // kind.elements()
+	// permutations[r] is what matrices[r] does to the points.
+	permutations [][]int32
+	// rotation takes the centred input to the group's standard axes, in one
+	// of the ways that there are; frame.go chooses among them.
+	rotation  mgl64.Mat3
+	ideal     []mgl64.Vec3 // in those axes
+	deviation float64      // Å
+}
+
+// place fits a group of elements to the cloud: the orientation and the exactly
+// symmetric points P with the least Σ|Q−P|². For a given orientation these are
+// P_k = (1/h) Σ_R R⁻¹·Q_R(k); orientation and points are improved in turn
+// until neither moves.
+func (c *cloud) place(group []*element) (*placed, bool) {
+	rec, ok := recognize(group)
+	if !ok {
+		return nil, false
+	}
+	p := &placed{kind: rec.kind, matrices: rec.kind.elements()}
+	if len(p.matrices) != len(group) {
+		return nil, false
+	}
+	p.rotation = rec.axes()
+	if !p.assign(group) {
+		if !rec.kind.icosahedral() {
+			return nil, false
+		}
+		// The three C2 can be taken in two ways that differ by 90°.
+		p.rotation = turnAboutZ(1, 4).Mul3(p.rotation)
+		if !p.assign(group) {
+			return nil, false
+		}
+	}
+	p.settle(c)
+	return p, true
+}
+
+func (k kind) icosahedral() bool { return k.family == icosahedral || k.family == icosahedralProper }
+
+// axes is the rotation with the recognized lines as its z and x.
+func (r recognized) axes() mgl64.Mat3 {
+	z, x := r.z, r.x
+	if z == (mgl64.Vec3{}) {
+		z = mgl64.Vec3{0, 0, 1}
+	}
+	if x == (mgl64.Vec3{}) {
+		x = perpendicular(z)
+	}
+	return mgl64.Mat3FromRows(x, z.Cross(x), z)
+}
+
+// perpendicular returns some unit vector square to a unit vector.
+func perpendicular(z mgl64.Vec3) mgl64.Vec3 {
+	x := mgl64.Vec3{1, 0, 0}
+	if math.Abs(z.X()) > 0.7 {
+		x = mgl64.Vec3{0, 1, 0}
+	}
+	return x.Sub(z.Mul(x.Dot(z))).Normalize()
+}
+
+// assign tells which matrix each element is. False: two are the same, or the
+// senses do not agree, so that the axes cannot be right.
+func (p *placed) assign(group []*element) bool {
+	p.permutations = make([][]int32, len(group))
+	for _, e := range group {
+		m := p.rotation.Mul3(e.matrix).Mul3(p.rotation.Transpose())
+		best, least := -1, math.Inf(1)
+		for i, s := range p.matrices {
+			if (s.Det() < 0) != e.improper {
+				continue
+			}
+			d := 0.0
+			for j := range s {
+				d += (s[j] - m[j]) * (s[j] - m[j])
+			}
+			if d < least {
+				best, least = i, d
+			}
+		}
+		if best < 0 || p.permutations[best] != nil {
+			return false
+		}
+		p.permutations[best] = e.permutation
+	}
+	return true
+}
+
+// settle improves orientation and ideal points in turn.
+func (p *placed) settle(c *cloud) {
+	const rounds = 60 // a few suffice; each wins the factor deviation/size
+	turned := make([]mgl64.Vec3, len(c.at))
+	p.ideal = make([]mgl64.Vec3, len(c.at))
+	for range rounds {
+		p.symmetrize(c, turned)
+		var torque mgl64.Vec3
+		var inertia mgl64.Mat3
+		for k, q := range turned {
+			torque = torque.Add(q.Cross(p.ideal[k]))
+			inertia = addInertia(inertia, q)
+		}
+		turn, ok := rotationBy(inertia, torque)
+		if !ok || equalTo(turn, mgl64.Ident3(), 1e-15) {
+			break
+		}
+		p.rotation = orthonormal(turn.Mul3(p.rotation))
+	}
+	p.symmetrize(c, turned)
+	p.deviation = 0
+	for k := range turned {
+		p.deviation = math.Max(p.deviation, turned[k].Sub(p.ideal[k]).Len())
+	}
+}
+
+// symmetrize averages the points over the group in the present orientation.
+func (p *placed) symmetrize(c *cloud, turned []mgl64.Vec3) {
+	for k, q := range c.at {
+		turned[k] = p.rotation.Mul3x1(q)
+		p.ideal[k] = mgl64.Vec3{}
+	}
+	for r, m := range p.matrices {
+		for k, to := range p.permutations[r] {
+			q := turned[to]
+			p.ideal[k][0] += m[0]*q[0] + m[1]*q[1] + m[2]*q[2] // Mᵀ·q
+			p.ideal[k][1] += m[3]*q[0] + m[4]*q[1] + m[5]*q[2]
+			p.ideal[k][2] += m[6]*q[0] + m[7]*q[1] + m[8]*q[2]
+		}
+	}
+	for k := range p.ideal {
+		p.ideal[k] = p.ideal[k].Mul(1 / float64(len(p.matrices)))
+	}
+}
+
+func equalTo(a, b mgl64.Mat3, limit float64) bool {
+	for i := range a {
+		if math.Abs(a[i]-b[i]) > limit {
+			return false
+		}
+	}
+	return true
+}
+
+// orthonormal removes what rounding has spoilt of a rotation.
+func orthonormal(m mgl64.Mat3) mgl64.Mat3 {
+	x := m.Row(0).Normalize()
+	y := m.Row(1)
+	y = y.Sub(x.Mul(x.Dot(y))).Normalize()
+	return mgl64.Mat3FromRows(x, y, x.Cross(y))
+}
+
+// strongest finds the largest group, within tolerance, that the candidate
+// elements generate. They are taken by rising mismatch, each if the group that
+// it makes with those taken already is still near enough. If some had to be
+// left out, each of these is tried as the first in its turn, and the largest
+// group wins, the nearer one among equals.
+func (c *cloud) strongest(list []*element, tolerance float64) *placed {
+	best, left := c.greedy(nil, list, tolerance)
+	for i, e := range left {
+		if i == mostRestarts {
+			break
+		}
+		other, _ := c.greedy(e, list, tolerance)
+		if other == nil {
+			continue
+		}
+		if h, g := len(other.matrices), len(best.matrices); h > g || h == g && other.deviation < best.deviation-1e-9 {
+			best = other
+		}
+	}
+	return best
+}
+
+// mostRestarts bounds the work on structures that are near to several groups
+// at once; an octahedron distorted in two ways leaves out some thirty.
+const mostRestarts = 48
+
+// greedy returns the group and the elements left out; nil if first alone makes
+// no group within tolerance.
+func (c *cloud) greedy(first *element, list []*element, tolerance float64) (best *placed, left []*element) {
+	var generators []*element
+	known := map[elementKey]bool{}
+	try := func(e *element) bool {
+		group := c.generate(append(generators[:len(generators):len(generators)], e), 4*MaxFold)
+		if group == nil {
+			return false
+		}
+		p, ok := c.place(group)
+		if !ok || p.deviation > tolerance {
+			return false
+		}
+		best = p
+		generators = append(generators, e)
+		for _, g := range group {
+			known[g.key()] = true
+		}
+		return true
+	}
+	if first == nil {
+		first = c.generate(nil, 1)[0]
+	}
+	if !try(first) {
+		return nil, nil
+	}
+	for _, e := range list {
+		// An element of the group moves no point by more than twice the
+		// deviation; the best matrix for all points may do worse for one.
+		if !known[e.key()] && e.mismatch <= 3*tolerance && !try(e) {
+			left = append(left, e)
+		}
+	}
+	return best, left
+}
