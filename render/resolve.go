@@ -1,0 +1,258 @@
+package render
+
+import (
+	"image"
+	"math"
+	"math/bits"
+)
+
+// fillGround fills a part of the picture with the ground.
+func (f *frame) fillGround(out image.Rectangle) {
+	px := f.groundPixel()
+	d := f.dst
+	at := out.Sub(f.rect.Min).Add(d.Rect.Min)
+	n := 4 * out.Dx()
+	first := d.Pix[d.PixOffset(at.Min.X, at.Min.Y):]
+	for i := 0; i < n; i += 4 {
+		copy(first[i:i+4], px[:])
+	}
+	for y := 1; y < out.Dy(); y++ {
+		copy(first[y*d.Stride:y*d.Stride+n], first[:n])
+	}
+}
+
+func (f *frame) groundPixel() [4]uint8 {
+	return f.pixel(f.ground[0]*f.ground[3], f.ground[1]*f.ground[3], f.ground[2]*f.ground[3], f.ground[3])
+}
+
+// pixel returns the bytes of a working colour that is weighed with its
+// opacity a. Bytes are weighed in sRGB numbers, as image.RGBA wants.
+func (f *frame) pixel(r, g, b, a float32) [4]uint8 {
+	if a >= 0.9995 {
+		return [4]uint8{encode(r, f.linear), encode(g, f.linear), encode(b, f.linear), 255}
+	}
+	if !(a > 0) {
+		return [4]uint8{}
+	}
+	one := func(v float32) uint8 {
+		return uint8(float32(encode(v/a, f.linear))*a + 0.5)
+	}
+	return [4]uint8{one(r), one(g), one(b), uint8(a*255 + 0.5)}
+}
+
+// resolve shades the canvas and writes it to the picture.
+func (t *tile) resolve(out image.Rectangle) {
+	f := t.f
+	d := f.dst
+	at := d.Rect.Min.Sub(f.rect.Min)
+	ground := f.groundPixel()
+	n := 1 << t.lg
+	if f.light.style == Ink {
+		t.drawInk(out)
+	}
+	var s sight
+	for y := out.Min.Y; y < out.Max.Y; y++ {
+		py := y - t.y
+		row := d.Pix[d.PixOffset(out.Min.X+at.X, y+at.Y):]
+		for x := out.Min.X; x < out.Max.X; x++ {
+			px := x - t.x
+			i := py*t.side + px
+			o := row[4*(x-out.Min.X):][:4:4]
+			keys := t.keys[i<<t.lg:][:n]
+			layered := t.anyFrag && t.first[i] >= 0
+			var any uint32
+			for _, k := range keys {
+				any |= uint32(k)
+			}
+			if any == 0 && !layered {
+				o[0], o[1], o[2], o[3] = ground[0], ground[1], ground[2], ground[3]
+				continue
+			}
+			f.light.sightAt(float32(x)+0.5, float32(y)+0.5, &s)
+			var c [4]float32
+			if layered {
+				c = t.blend(keys, i, px, py, &s)
+			} else {
+				c = t.solid(keys, px, py, &s)
+			}
+			v := f.pixel(c[0], c[1], c[2], c[3])
+			o[0], o[1], o[2], o[3] = v[0], v[1], v[2], v[3]
+		}
+	}
+}
+
+// middle returns the mean place of the samples of a mask within a pixel.
+func (t *tile) middle(mask uint32) (x, y float32) {
+	n := 1 << t.lg
+	if bits.OnesCount32(mask) == n {
+		return 0.5, 0.5
+	}
+	var sx float64
+	var sk int
+	for m := mask; m != 0; m &= m - 1 {
+		k := bits.TrailingZeros32(m)
+		sx += t.sx[k&15]
+		sk += 2*k + 1
+	}
+	c := float64(bits.OnesCount32(mask))
+	return float32(sx / c), float32(float64(sk) / c / float64(2*n))
+}
+
+// group returns the mask of the samples among todo that show the same part as
+// the first of them, and a slot from their middle.
+func (t *tile) group(keys []uint64, todo uint32) (mask, slot uint32) {
+	k := bits.TrailingZeros32(todo)
+	slot = uint32(keys[k])
+	if slot == 0 {
+		for m := todo; m != 0; m &= m - 1 {
+			if k := bits.TrailingZeros32(m); uint32(keys[k]) == 0 {
+				mask |= 1 << k
+			}
+		}
+		return mask, 0
+	}
+	first := t.slots[slot]
+	form := t.f.parts[first.part].form
+	for m := todo; m != 0; m &= m - 1 {
+		k := bits.TrailingZeros32(m)
+		s := uint32(keys[k])
+		if s == slot {
+			mask |= 1 << k
+			continue
+		}
+		if o := &t.slots[s]; o.part == first.part && (form == formMesh || o.tri == first.tri) {
+			mask |= 1 << k
+		}
+	}
+	half := bits.OnesCount32(mask) / 2
+	m := mask
+	for ; half > 0; half-- {
+		m &= m - 1
+	}
+	return mask, uint32(keys[bits.TrailingZeros32(m)])
+}
+
+// solid returns the colour of a pixel without translucent layers.
+func (t *tile) solid(keys []uint64, px, py int, s *sight) [4]float32 {
+	n := len(keys)
+	todo := uint32(1)<<n - 1
+	inv := 1 / float32(n)
+	g := &t.f.ground
+	var c [4]float32
+	for todo != 0 {
+		mask, slot := t.group(keys, todo)
+		todo &^= mask
+		w := float32(bits.OnesCount32(mask)) * inv
+		if slot == 0 {
+			w *= g[3]
+			c[0], c[1], c[2], c[3] = c[0]+w*g[0], c[1]+w*g[1], c[2]+w*g[2], c[3]+w
+			continue
+		}
+		mx, my := t.middle(mask)
+		r, gr, b := t.shadePlace(slot, float32(px)+mx, float32(py)+my, s)
+		c[0] += w * min(r, 1)
+		c[1] += w * min(gr, 1)
+		c[2] += w * min(b, 1)
+		c[3] += w
+	}
+	return c
+}
+
+// blend returns the colour of a pixel with translucent layers: for every
+// sample the layers in front of its opaque surface, from front to back.
+func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
+	n := len(keys)
+	list := t.sorted[:0]
+	for k := t.first[i]; k >= 0; k = t.frags[k].next {
+		list = append(list, k)
+		for j := len(list) - 1; j > 0 && t.before(list[j], list[j-1]); j-- {
+			list[j], list[j-1] = list[j-1], list[j]
+		}
+	}
+	t.sorted = list
+	acc := t.samples[:n]
+	for k := range acc {
+		acc[k] = [4]float32{0, 0, 0, 1}
+	}
+	full := uint32(1)<<n - 1
+	same := true // all samples alike so far
+	for _, k := range list {
+		fr := &t.frags[k]
+		if t.slots[fr.slot].part < 0 {
+			continue
+		}
+		mx, my := t.middle(fr.mask)
+		r, g, b, a := t.fragColor(fr, float32(px)+mx, float32(py)+my, s)
+		if fr.mask == full && same {
+			w := acc[0][3] * a
+			acc[0][0] += w * r
+			acc[0][1] += w * g
+			acc[0][2] += w * b
+			acc[0][3] -= w
+			continue
+		}
+		if same {
+			same = false
+			for k := 1; k < n; k++ {
+				acc[k] = acc[0]
+			}
+		}
+		for m := fr.mask; m != 0; m &= m - 1 {
+			c := &acc[bits.TrailingZeros32(m)&15]
+			w := c[3] * a
+			c[0] += w * r
+			c[1] += w * g
+			c[2] += w * b
+			c[3] -= w
+		}
+	}
+	if same {
+		for k := 1; k < n; k++ {
+			acc[k] = acc[0]
+		}
+	}
+	var out [4]float32
+	inv := 1 / float32(n)
+	ground := &t.f.ground
+	for todo := full; todo != 0; {
+		mask, slot := t.group(keys, todo)
+		todo &^= mask
+		r, g, b, a := ground[0], ground[1], ground[2], ground[3]
+		if slot != 0 {
+			mx, my := t.middle(mask)
+			r, g, b = t.shadePlace(slot, float32(px)+mx, float32(py)+my, s)
+			a = 1
+		}
+		for m := mask; m != 0; m &= m - 1 {
+			c := &acc[bits.TrailingZeros32(m)&15]
+			w := c[3] * a
+			out[0] += min(c[0]+w*r, 1)
+			out[1] += min(c[1]+w*g, 1)
+			out[2] += min(c[2]+w*b, 1)
+			out[3] += 1 - c[3] + w
+		}
+	}
+	for k := range out {
+		out[k] *= inv
+	}
+	return out
+}
+
+// before tells whether fragment a lies in front of b; of two at the same
+// place the one of the later shape does, as with opaque surfaces.
+func (t *tile) before(a, b int32) bool {
+	fa, fb := &t.frags[a], &t.frags[b]
+	if fa.n != fb.n {
+		return fa.n > fb.n
+	}
+	return fa.slot > fb.slot
+}
+
+// fragColor returns the colour and opacity of a fragment.
+func (t *tile) fragColor(fr *frag, x, y float32, s *sight) (r, g, b, a float32) {
+	p := &t.f.parts[t.slots[fr.slot].part]
+	r, g, b = t.shadePlace(fr.slot, x, y, s)
+	return r, g, b, p.alpha
+}
+
+var _ = math.Sqrt

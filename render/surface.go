@@ -1,0 +1,191 @@
+package render
+
+import "math"
+
+// surf is what a sample's surface shows at one place.
+type surf struct {
+	part   *part
+	n      float32 // nearness
+	nx, ny float32 // its growth to the right and down
+	// The normal in camera space, not of unit length, as the surface has it:
+	// it may point away from the viewer.
+	x, y, z float32
+	// outward tells that the sign of the normal is the surface's own and
+	// facing whether the viewer sees its outer side.
+	outward, facing bool
+	u, v            float32 // surface coordinates
+}
+
+// corners returns the corners of a mesh's triangle on the picture, its index
+// and, for a cut one, what its corners are made of.
+func (t *tile) corners(s *slot) (p *part, a, b, c *vert, tri uint32, l *loose) {
+	f := t.f
+	p = &f.parts[s.part]
+	if s.tri&looseBit != 0 {
+		l = &f.batches[s.batch].loose[s.tri&^looseBit]
+		return p, &l.v[0], &l.v[1], &l.v[2], l.tri, l
+	}
+	tr := &p.mesh.Triangles[s.tri]
+	vs := f.verts[p.vert0:]
+	return p, &vs[tr[0]], &vs[tr[1]], &vs[tr[2]], s.tri, nil
+}
+
+// plane returns the nearness of a slot's surface at a place of the canvas and
+// its growth.
+func (t *tile) plane(k uint32, x, y float32) (n, nx, ny float32) {
+	s := &t.slots[k]
+	f := t.f
+	p := &f.parts[s.part]
+	switch p.form {
+	case formMesh:
+		_, a, b, c, _, _ := t.corners(s)
+		ux, uy := b.x-a.x, b.y-a.y
+		vx, vy := c.x-a.x, c.y-a.y
+		det := ux*vy - vx*uy
+		if det > 1e-4 || det < -1e-4 {
+			un, vn := b.n-a.n, c.n-a.n
+			nx, ny = (un*vy-vn*uy)/det, (vn*ux-un*vx)/det
+		}
+		n = a.n + nx*(x-a.x+float32(t.x)) + ny*(y-a.y+float32(t.y))
+		return min(max(n, min(a.n, b.n, c.n)), max(a.n, b.n, c.n)), nx, ny
+	case formQuadric:
+		q := &f.quadrics[p.index]
+		return q.tangent(float64(x)+float64(t.x), float64(y)+float64(t.y), s.tri)
+	case formDisc:
+		d := &f.discs[p.index]
+		n = float32(d.n[0] + d.n[1]*(float64(x)+float64(t.x)-d.mx) + d.n[2]*(float64(y)+float64(t.y)-d.my))
+		return n, float32(d.n[1]), float32(d.n[2])
+	case formStroke:
+		return float32(f.strokes[s.tri].near(float64(x)+float64(t.x), float64(y)+float64(t.y))), 0, 0
+	}
+	return 0, 0, 0
+}
+
+// tangent returns the nearness of a surface and its growth at a place.
+func (q *quadric) tangent(x, y float64, kind uint32) (n, nx, ny float32) {
+	x, y = x-q.mx, y-q.my
+	switch kind {
+	case capLow:
+		return float32(q.s0.at(x, y)), float32(q.s0[1]), float32(q.s0[2])
+	case capHigh:
+		return float32(q.s1.at(x, y)), float32(q.s1[1]), float32(q.s1[2])
+	}
+	d := q.q[0] + x*(q.q[1]+q.q[3]*x+q.q[4]*y) + y*(q.q[2]+q.q[5]*y)
+	if !(d > 0) {
+		d = 0
+	}
+	s := math.Sqrt(d)
+	h := 0.5 / math.Max(s, 1e-9)
+	if kind == wallBack {
+		s, h = -s, -h
+	}
+	dx := q.q[1] + 2*q.q[3]*x + q.q[4]*y
+	dy := q.q[2] + 2*q.q[5]*y + q.q[4]*x
+	return float32(q.b.at(x, y) + s), float32(q.b[1] + h*dx), float32(q.b[2] + h*dy)
+}
+
+// look fills t.surf with the surface of a slot at a place of the canvas.
+func (t *tile) lookAt(k uint32, x, y float32) *surf {
+	s := &t.slots[k]
+	o := &t.surf
+	f := t.f
+	p := &f.parts[s.part]
+	o.part = p
+	switch p.form {
+	case formMesh:
+		t.lookAtMesh(o, s, x, y)
+	case formQuadric:
+		q := &f.quadrics[p.index]
+		n, c, g := q.surface(float64(x)+float64(t.x), float64(y)+float64(t.y), s.tri)
+		g0, g1, g2 := float32(g[0]), float32(g[1]), float32(g[2])
+		m := &q.nrm
+		o.n = float32(n)
+		o.x = m[0]*g0 + m[1]*g1 + m[2]*g2
+		o.y = m[3]*g0 + m[4]*g1 + m[5]*g2
+		o.z = m[6]*g0 + m[7]*g1 + m[8]*g2
+		o.outward = false
+		if p.hatch.period > 0 {
+			o.u, o.v = q.coords(c)
+		}
+	case formDisc:
+		d := &f.discs[p.index]
+		X, Y := float64(x)+float64(t.x)-d.mx, float64(y)+float64(t.y)-d.my
+		o.n = float32(d.n[0] + d.n[1]*X + d.n[2]*Y)
+		o.x, o.y, o.z = d.normal[0], d.normal[1], d.normal[2]
+		o.outward = false
+		if p.hatch.period > 0 {
+			w := d.radius / (d.w[0] + d.w[1]*X + d.w[2]*Y)
+			o.u = float32((d.u[0] + d.u[1]*X + d.u[2]*Y) * w)
+			o.v = float32((d.v[0] + d.v[1]*X + d.v[2]*Y) * w)
+		}
+	default:
+		o.n = 1
+		o.x, o.y, o.z, o.outward = 0, 0, 1, false
+	}
+	return o
+}
+
+// coords returns the surface coordinates of a point of a round body.
+func (q *quadric) coords(p [3]float64) (u, v float32) {
+	round := float32(math.Atan2(p[1], p[0]))
+	if q.kind == rodSphere {
+		return float32(math.Acos(math.Min(1, math.Max(-1, p[2])))), round
+	}
+	return float32(p[2] * q.length), round
+}
+
+// lookAtMesh mixes the normals and coordinates of a triangle's corners.
+func (t *tile) lookAtMesh(o *surf, s *slot, x, y float32) {
+	p, a, b, c, tri, l := t.corners(s)
+	x += float32(t.x) - a.x
+	y += float32(t.y) - a.y
+	ux, uy := b.x-a.x, b.y-a.y
+	vx, vy := c.x-a.x, c.y-a.y
+	det := ux*vy - vx*uy
+	var wb, wc float32
+	if det != 0 {
+		d := 1 / det
+		wb, wc = (x*vy-vx*y)*d, (ux*y-x*uy)*d
+	}
+	// Stay within the triangle: the place may be a pixel's middle that
+	// belongs to its neighbour.
+	wb, wc = max(wb, 0), max(wc, 0)
+	if sum := wb + wc; sum > 1 {
+		wb, wc = wb/sum, wc/sum
+	}
+	wa := 1 - wb - wc
+	o.n = wa*a.n + wb*b.n + wc*c.n
+	if p.persp {
+		wa, wb, wc = wa*a.n, wb*b.n, wc*c.n
+		k := 1 / (wa + wb + wc)
+		wa, wb, wc = wa*k, wb*k, wc*k
+	}
+	if l != nil {
+		w := &l.weight
+		wa, wb, wc = wa*w[0][0]+wb*w[1][0]+wc*w[2][0], wa*w[0][1]+wb*w[1][1]+wc*w[2][1], wa*w[0][2]+wb*w[1][2]+wc*w[2][2]
+	}
+	m := p.mesh
+	ix := &m.Triangles[tri]
+	var gx, gy, gz float32
+	if m.Normals != nil {
+		na, nb, nc := &m.Normals[ix[0]], &m.Normals[ix[1]], &m.Normals[ix[2]]
+		gx = wa*na[0] + wb*nb[0] + wc*nc[0]
+		gy = wa*na[1] + wb*nb[1] + wc*nc[1]
+		gz = wa*na[2] + wb*nb[2] + wc*nc[2]
+	} else {
+		pa, pb, pc := &m.Positions[ix[0]], &m.Positions[ix[1]], &m.Positions[ix[2]]
+		ax, ay, az := pb[0]-pa[0], pb[1]-pa[1], pb[2]-pa[2]
+		bx, by, bz := pc[0]-pa[0], pc[1]-pa[1], pc[2]-pa[2]
+		gx, gy, gz = ay*bz-az*by, az*bx-ax*bz, ax*by-ay*bx
+	}
+	r := &p.nrm
+	o.x = r[0]*gx + r[1]*gy + r[2]*gz
+	o.y = r[3]*gx + r[4]*gy + r[5]*gz
+	o.z = r[6]*gx + r[7]*gy + r[8]*gz
+	o.outward, o.facing = m.Closed, (det < 0) != p.mirrored
+	if m.Coords != nil && p.hatch.period > 0 {
+		ca, cb, cc := &m.Coords[ix[0]], &m.Coords[ix[1]], &m.Coords[ix[2]]
+		o.u = wa*ca[0] + wb*cb[0] + wc*cc[0]
+		o.v = wa*ca[1] + wb*cb[1] + wc*cc[1]
+	}
+}
