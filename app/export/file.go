@@ -38,6 +38,13 @@ func WriteFile(path string, force bool, write func(io.Writer) error) error {
 	return nil
 }
 
+// CheckTarget tells beforehand whether WriteFile would refuse a path, so that
+// nothing is computed for a file that cannot be written.
+func CheckTarget(path string, force bool) error {
+	_, _, err := checkTarget(path, force)
+	return err
+}
+
 // checkTarget resolves path, which may be a symbolic link to a file, and
 // tells the permissions for the new file.
 func checkTarget(path string, force bool) (target string, mode fs.FileMode, err error) {

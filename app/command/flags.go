@@ -1,0 +1,168 @@
+package command
+
+import (
+	"math"
+	"strconv"
+	"strings"
+
+	"github.com/spf13/cobra"
+	"github.com/spf13/pflag"
+
+	"lobewright/app/study"
+	"lobewright/orbitals"
+)
+
+// groupFlags are the flags that decide the group and its frame.
+func groupFlags(flags *pflag.FlagSet, s *study.Study) {
+	flags.StringVar(&s.Core, "core", "", "`ATOMS` that decide the group, such as Cu,O or 1-5 (default all)")
+	flags.StringVar(&s.Ignore, "ignore", "", "`ATOMS` that do not decide the group, such as H")
+	flags.Var(&positive{&s.Tolerance, study.DefaultTolerance}, "tolerance", "how far an atom may lie from its ideal place, in `Å`")
+	flags.StringVar(&s.Frame, "frame", "", "`RULE` that puts the axes (default \"default\")")
+}
+
+// basisFlag is the selection of functions.
+func basisFlag(flags *pflag.FlagSet, s *study.Study) {
+	flags.StringArrayVar(&s.Basis, "on", nil, "functions to project, `ATOMS:FUNCTIONS`; may be repeated")
+}
+
+// jsonFlag asks for JSON in the place of text.
+func jsonFlag(flags *pflag.FlagSet, wanted *bool) {
+	flags.BoolVar(wanted, "json", false, "print one JSON object in the place of text")
+}
+
+// checkBasis refuses selections that cannot be read before anything is
+// computed.
+func checkBasis(cmd *cobra.Command, s *study.Study, required bool) error {
+	if required && len(s.Basis) == 0 {
+		return usagef("no functions are chosen: give --on ATOMS:FUNCTIONS, such as --on Cl:sigma; see %q", cmd.CommandPath()+" --help")
+	}
+	for _, text := range s.Basis {
+		if _, err := orbitals.ParseChoice(text); err != nil {
+			return usagef("--on: %w", err)
+		}
+	}
+	return nil
+}
+
+// positive is a flag for a finite number greater than zero. The number stays
+// zero, which stands for the default, until it is set.
+type positive struct {
+	number   *float64
+	standard float64
+}
+
+func (p *positive) Set(text string) error {
+	x, err := strconv.ParseFloat(text, 64)
+	if err != nil || !(x > 0) || math.IsInf(x, 0) {
+		return errNotPositive
+	}
+	*p.number = x
+	return nil
+}
+
+func (p *positive) String() string {
+	if p.number == nil || *p.number == 0 {
+		return strconv.FormatFloat(p.standard, 'g', -1, 64)
+	}
+	return strconv.FormatFloat(*p.number, 'g', -1, 64)
+}
+
+func (p *positive) Type() string { return "number" }
+
+// pair reads two numbers with a comma between them.
+func pair(text string) (first, second string, ok bool) {
+	first, second, ok = strings.Cut(text, ",")
+	return strings.TrimSpace(first), strings.TrimSpace(second), ok
+}
+
+// elementFlag is a matrix element "k,l", from 1.
+type elementFlag struct{ element *[2]int }
+
+func (e elementFlag) Set(text string) error {
+	first, second, ok := pair(text)
+	k, errK := strconv.Atoi(first)
+	l, errL := strconv.Atoi(second)
+	if !ok || errK != nil || errL != nil || k < 1 || l < 1 {
+		return errNoElement
+	}
+	*e.element = [2]int{k, l}
+	return nil
+}
+
+func (e elementFlag) String() string {
+	if e.element == nil || *e.element == [2]int{} {
+		return ""
+	}
+	return strconv.Itoa(e.element[0]) + "," + strconv.Itoa(e.element[1])
+}
+
+func (e elementFlag) Type() string { return "K,L" }
+
+// viewFlag is a direction of view "azimuth,elevation" in degrees.
+type viewFlag struct{ camera *study.Camera }
+
+func (v viewFlag) Set(text string) error {
+	first, second, ok := pair(text)
+	azimuth, errA := strconv.ParseFloat(first, 64)
+	elevation, errE := strconv.ParseFloat(second, 64)
+	if !ok || errA != nil || errE != nil || !(math.Abs(azimuth) <= 360) || !(math.Abs(elevation) <= 90) {
+		return errNoView
+	}
+	v.camera.Set, v.camera.Azimuth, v.camera.Elevation = true, azimuth, elevation
+	return nil
+}
+
+func (v viewFlag) String() string {
+	if v.camera == nil || !v.camera.Set {
+		return ""
+	}
+	return strconv.FormatFloat(v.camera.Azimuth, 'g', -1, 64) + "," + strconv.FormatFloat(v.camera.Elevation, 'g', -1, 64)
+}
+
+func (v viewFlag) Type() string { return "AZIMUTH,ELEVATION" }
+
+// oneOf is a flag with a few possible words, of which the first is the
+// default.
+type oneOf struct {
+	word  *string
+	words []string
+}
+
+func (o oneOf) Set(text string) error {
+	for _, w := range o.words {
+		if text == w {
+			*o.word = w
+			return nil
+		}
+	}
+	return wordError{o.words}
+}
+
+func (o oneOf) String() string {
+	if o.word == nil || *o.word == "" {
+		if len(o.words) > 0 {
+			return o.words[0]
+		}
+		return ""
+	}
+	return *o.word
+}
+
+func (o oneOf) Type() string { return "word" }
+
+type wordError struct{ words []string }
+
+func (w wordError) Error() string {
+	last := len(w.words) - 1
+	return "must be " + strings.Join(w.words[:last], ", ") + " or " + w.words[last]
+}
+
+type flagError string
+
+func (f flagError) Error() string { return string(f) }
+
+const (
+	errNotPositive flagError = "must be a number greater than 0"
+	errNoElement   flagError = "must be two numbers from 1 with a comma between them, such as 1,2"
+	errNoView      flagError = "must be an azimuth and an elevation in degrees with a comma between them, such as 30,20"
+)

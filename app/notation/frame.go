@@ -1,0 +1,193 @@
+package notation
+
+import (
+	"fmt"
+	"strings"
+
+	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/symmetry"
+)
+
+// Convention says in words where x, y and z point and by which rule. names
+// are those of the points of the fit ("Cl2"); with them it also says toward
+// which atoms the axes point.
+func Convention(fit *symmetry.Fit, names []string) string {
+	z, x := axisRules(fit, true)
+	z += toward(fit, names, 2)
+	if x != "" {
+		x += toward(fit, names, 0)
+	}
+	return joinClauses(z, x)
+}
+
+// ShortConvention is Convention without what settles rare cases and without
+// atoms, for captions.
+func ShortConvention(fit *symmetry.Fit) string {
+	return joinClauses(axisRules(fit, false))
+}
+
+func joinClauses(z, x string) string {
+	if x == "" {
+		return z
+	}
+	return z + "; " + x
+}
+
+// axisRules says where z and x point. The rest of a rule, which decides only
+// where its first part does not, is left out unless asked for.
+func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
+	rest := func(s string) string {
+		if whole {
+			return " (" + s + ")"
+		}
+		return ""
+	}
+	switch fit.Rule.Z {
+	case symmetry.ZPrincipal:
+		z = "z along " + axisName(fit.Setting) + rest("the axis of the highest order")
+	case symmetry.ZMostAtoms:
+		z = "z along the C2 through most atoms" + rest("then most bonds, then the larger extent")
+	case symmetry.ZPlanarC2:
+		z = "z along the C2 in the molecular plane through most atoms" + rest("then most bonds, then the larger extent")
+	case symmetry.ZPlaneNormal:
+		z = "z square to the mirror plane"
+	case symmetry.ZSmallestMoment:
+		z = "z along the axis of the smallest principal moment of inertia"
+	case symmetry.ZCubic:
+		z = "x, y and z along the three " + cubicAxes(fit.Setting.Symbol) + " axes"
+	case symmetry.ZIcosahedral:
+		z = "x, y and z along three C2 axes, C5 axes along (0, ±1, ±(1 + √5)/2) and cyclic permutations"
+	case symmetry.ZMolecularAxis:
+		z = "z along the molecular axis"
+	case symmetry.ZInput:
+		z = "x, y and z as in the input"
+	default:
+		z = fit.Rule.Z
+	}
+	switch fit.Rule.X {
+	case symmetry.XC2MostAtoms:
+		x = "x along the C2′ through most atoms" + rest("then the one whose vertical planes hold most atoms, then most bonds")
+	case symmetry.XPlaneMostAtoms:
+		x = "xz is the σv plane with most atoms" + rest("then most bonds")
+	case symmetry.XPlanarNormal:
+		x = "x square to the molecular plane"
+	case symmetry.XYZMostAtoms:
+		x = "yz is the plane with most atoms" + rest("then most bonds")
+	case symmetry.XFirstOrbit:
+		x = "xz holds the first atom of the largest set of equivalent atoms off the axis"
+	case symmetry.XSmallerMoment:
+		x = "x along the axis of the smaller moment of inertia in the plane"
+	case symmetry.XLargestMoment:
+		x = "x along the axis of the largest principal moment of inertia"
+	case symmetry.XThreefold:
+		x = "an atom of the first set on threefold axes lies along (1, 1, 1)"
+	case symmetry.XFree:
+		x = "x in any direction square to it"
+	case symmetry.XEquivalent, symmetry.XInput, "":
+	default:
+		x = fit.Rule.X
+	}
+	return z, x
+}
+
+// axisName names the rotation of the highest order about z: "C4".
+func axisName(s *symmetry.Setting) string {
+	highest := 1
+	for _, op := range s.Operations {
+		if !op.Turn.Improper && op.Turn.Num == 1 && isAlong(op.Axis, 2) {
+			highest = max(highest, op.Turn.Den)
+		}
+	}
+	return fmt.Sprintf("C%d", highest)
+}
+
+func cubicAxes(symbol string) string {
+	switch symbol {
+	case "Td":
+		return "S4"
+	case "T", "Th":
+		return "C2"
+	}
+	return "C4"
+}
+
+// isAlong tells whether v has no part square to an axis of the frame; places
+// and axes of operations are exact but for rounding.
+func isAlong(v mgl64.Vec3, axis int) bool {
+	const rounding = 1e-6
+	for i, x := range v {
+		if i != axis && (x > rounding || x < -rounding) {
+			return false
+		}
+	}
+	return true
+}
+
+// toward names the first atom on the positive half of an axis of the frame:
+// ", toward Cl2".
+func toward(fit *symmetry.Fit, names []string, axis int) string {
+	const off = 1e-3 // Å, from the origin
+	for i, p := range fit.Ideal {
+		if i < len(names) && isAlong(p, axis) && p[axis] > off {
+			return fmt.Sprintf(", +%s toward %s", "xyz"[axis:axis+1], names[i])
+		}
+	}
+	return ""
+}
+
+// Source says who published a rule, or that it is common practice or an own
+// choice.
+func Source(rule symmetry.Rule) string {
+	var parts []string
+	for _, key := range rule.Sources {
+		switch key {
+		case symmetry.SourceDepartmentPage:
+			parts = append(parts, "a chemistry department's web page")
+		case symmetry.SourceMulliken:
+			parts = append(parts, "R. S. Mulliken, J. Chem. Phys. 23, 1997 (1955), as quoted elsewhere")
+		case symmetry.SourceCommon:
+			parts = append(parts, "common practice")
+		case symmetry.SourceOwn:
+			parts = append(parts, "own choice")
+		default:
+			parts = append(parts, key)
+		}
+	}
+	return strings.Join(parts, "; ")
+}
+
+// Ties says what the rule left open and how it was settled, a sentence each.
+func Ties(ties []symmetry.Tie) []string {
+	var out []string
+	for _, t := range ties {
+		out = append(out, tieOpen(t.What)+": "+tieSettled(t.Settled))
+	}
+	return out
+}
+
+func tieOpen(what string) string {
+	switch what {
+	case symmetry.TieOrigin:
+		return "the rule leaves several origins"
+	case symmetry.TieZAxis:
+		return "the rule leaves several axes for z"
+	case symmetry.TieZSense:
+		return "the rule leaves open which way z points"
+	case symmetry.TieXAxis:
+		return "the rule leaves several directions for x"
+	case symmetry.TieXSense:
+		return "the rule leaves open which way x points"
+	}
+	return what
+}
+
+func tieSettled(how string) string {
+	switch how {
+	case symmetry.SettledByCoordinates:
+		return "taken is the frame in which the sorted coordinates of the atoms are the larger"
+	case symmetry.SettledByNumber:
+		return "the atom with the lowest number decides"
+	}
+	return how
+}

@@ -1,0 +1,92 @@
+package picture
+
+import (
+	"math"
+
+	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/assets"
+	"lobewright/orbitals/structure"
+	"lobewright/render"
+)
+
+// Sizes of bodies. They belong to the look of the program, see the palette.
+const (
+	atomShare     = 0.32 // of the covalent radius
+	bondThickness = 0.09 // Å
+	lobeShare     = 0.45 // length of the longest lobe, of the nearest distance
+)
+
+// A ball is a round part of the scene: an atom, or about as much room as a
+// lobe takes. Views and labels are chosen by balls.
+type ball struct {
+	centre mgl64.Vec3
+	radius float64 // Å
+}
+
+// A stage is a scene while it is built.
+type stage struct {
+	scene   render.Scene
+	palette assets.Palette
+	look    study.Look
+	// atoms are the balls of all atoms; lobes those of what is drawn on them.
+	// elements those at the rim of symmetry elements.
+	atoms, lobes, elements []ball
+}
+
+// addMolecule draws the atoms and bonds of a structure.
+func (s *stage) addMolecule(g *work.Group) {
+	core := make([]bool, len(g.Molecule.Atoms))
+	for _, i := range g.Core {
+		core[i] = true
+	}
+	// The subject is darker than the spectators; both are quiet.
+	tone := func(i int) float64 {
+		if core[i] {
+			return 0.35
+		}
+		return 0.7
+	}
+	for i, p := range g.Sites.Positions {
+		radius := atomShare * g.Molecule.Atoms[i].Element.Radius()
+		s.atoms = append(s.atoms, ball{p, radius})
+		m := matt(mixed(s.palette.Quiet, s.palette.Ground, tone(i)))
+		m.ID = i + 1
+		s.scene.Add(render.Sphere{Center: p, Radius: radius}, m)
+	}
+	for _, b := range g.Bonds {
+		m := matt(mixed(s.palette.Quiet, s.palette.Ground, max(tone(b[0]), tone(b[1]))+0.1))
+		s.scene.Add(render.Cylinder{A: g.Sites.Positions[b[0]], B: g.Sites.Positions[b[1]], Radius: bondThickness / 2}, m)
+	}
+}
+
+// lobeUnit is the length of the longest lobe: a share of the nearest distance
+// between an atom that carries functions and any other atom. Without another
+// atom the atom's own size takes its place.
+func lobeUnit(g *work.Group, carries []bool) float64 {
+	nearest := math.Inf(1)
+	for i, p := range g.Sites.Positions {
+		if !carries[i] {
+			continue
+		}
+		for j, q := range g.Sites.Positions {
+			if i != j {
+				nearest = min(nearest, p.Sub(q).Len())
+			}
+		}
+	}
+	if math.IsInf(nearest, 1) {
+		nearest = 2 * largestRadius(g.Molecule)
+	}
+	return lobeShare * nearest
+}
+
+func largestRadius(m *structure.Molecule) float64 {
+	largest := 0.0
+	for _, a := range m.Atoms {
+		largest = max(largest, a.Element.Radius())
+	}
+	return largest
+}

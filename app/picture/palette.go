@@ -1,0 +1,53 @@
+package picture
+
+import (
+	"image/color"
+	"sync"
+
+	"lobewright/app/study"
+	"lobewright/assets"
+	"lobewright/render"
+)
+
+// fonts parses the typefaces once, and only if a picture is made.
+var fonts = sync.OnceValues(func() (*render.Fonts, error) {
+	return render.ParseFonts(assets.Font(assets.Regular), assets.Font(assets.Oblique),
+		assets.Font(assets.Bold), assets.Font(assets.BoldOblique))
+})
+
+// paletteOf chooses the colours for a ground.
+func paletteOf(look study.Look) assets.Palette {
+	switch look.Ground {
+	case "dark":
+		return assets.Dark()
+	case "white", "transparent":
+		p := assets.Light()
+		p.Ground = color.NRGBA{255, 255, 255, 255}
+		return p
+	}
+	return assets.Light()
+}
+
+// lookOf sets the renderer's look.
+func lookOf(look study.Look, palette assets.Palette) render.Look {
+	l := render.LitLook(paint(palette.Ground))
+	if look.Style == "ink" {
+		l = render.InkLook(paint(palette.Ground), paint(palette.Ink))
+		l.OutlineWidth *= palette.Outline
+	}
+	if look.Ground == "transparent" {
+		l.GroundOpacity = 0
+	}
+	return l
+}
+
+func paint(c color.NRGBA) render.Color { return render.Color{R: c.R, G: c.G, B: c.B} }
+
+// mixed is a with a share of b.
+func mixed(a, b color.NRGBA, share float64) render.Color {
+	mix := func(x, y uint8) uint8 { return uint8(float64(x)*(1-share) + float64(y)*share + 0.5) }
+	return render.Color{R: mix(a.R, b.R), G: mix(a.G, b.G), B: mix(a.B, b.B)}
+}
+
+// matt is a surface without highlight, for what is not the subject.
+func matt(c render.Color) render.Material { return render.Material{Color: c, Opacity: 1} }

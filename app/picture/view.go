@@ -1,0 +1,201 @@
+package picture
+
+import (
+	"math"
+
+	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/app/study"
+	"lobewright/render"
+)
+
+// A view is a direction of sight: from where the eye looks at the scene.
+type view struct{ azimuth, elevation float64 } // radians
+
+// back is the unit vector from the scene to the eye.
+func (v view) back() mgl64.Vec3 {
+	return mgl64.Vec3{
+		math.Cos(v.elevation) * math.Cos(v.azimuth),
+		math.Cos(v.elevation) * math.Sin(v.azimuth),
+		math.Sin(v.elevation),
+	}
+}
+
+// up is the direction that is vertical in the picture: z as far as possible,
+// and seen from above y, so that x runs to the right.
+func (v view) up() mgl64.Vec3 {
+	back := v.back()
+	up := mgl64.Vec3{0, 0, 1}
+	if math.Abs(back[2]) > 0.999 {
+		up = mgl64.Vec3{0, 1, 0}
+	}
+	return up.Sub(back.Mul(up.Dot(back))).Normalize()
+}
+
+// viewOf takes the view that a study asks for, or the one that shows most.
+func viewOf(c study.Camera, lobes, atoms []ball) view {
+	if c.Set {
+		return view{mgl64.DegToRad(c.Azimuth), mgl64.DegToRad(c.Elevation)}
+	}
+	return bestView(lobes, atoms)
+}
+
+// bestView tries views from the octant in which x points to the viewer's left
+// and toward the viewer, y to the right and z up, as frames are usually drawn.
+// It takes the one in which bodies cover each other least; among equals the
+// one nearest to a middle view. Views along an axis are not tried.
+func bestView(lobes, atoms []ball) view {
+	const middleAzimuth, middleElevation = 28, 20 // degrees
+	best, least := view{}, math.Inf(1)
+	for elevation := 12.0; elevation <= 56; elevation += 4 {
+		for azimuth := 12.0; azimuth <= 78; azimuth += 3 {
+			v := view{mgl64.DegToRad(azimuth), mgl64.DegToRad(elevation)}
+			off := math.Hypot(azimuth-middleAzimuth, elevation-middleElevation)
+			// A full overlap of two largest bodies counts as much as 60° off
+			// the middle.
+			cost := off/60 + covered(v, lobes, atoms)
+			if cost < least-1e-9 {
+				best, least = v, cost
+			}
+		}
+	}
+	return best
+}
+
+// covered adds up how far balls overlap as seen along a view, each pair as a
+// share of the largest ball's size. Pairs that lie in each other anyway do not
+// count, nor do atoms before atoms as much as lobes before lobes.
+func covered(v view, lobes, atoms []ball) float64 {
+	if len(lobes)+len(atoms) > maxBallsCompared {
+		return 0
+	}
+	largest := 0.0
+	for _, b := range append(append([]ball(nil), lobes...), atoms...) {
+		largest = max(largest, b.radius)
+	}
+	back := v.back()
+	sum := 0.0
+	overlap := func(a, b ball, weight float64) {
+		d := a.centre.Sub(b.centre)
+		together := a.radius + b.radius
+		if d.Len() < together {
+			return
+		}
+		apart := d.Sub(back.Mul(d.Dot(back))).Len()
+		if apart < together {
+			sum += weight * (together - apart) / (2 * largest)
+		}
+	}
+	for i, a := range lobes {
+		for _, b := range lobes[:i] {
+			overlap(a, b, 1)
+		}
+		for _, b := range atoms {
+			overlap(a, b, 0.6)
+		}
+	}
+	for i, a := range atoms {
+		for _, b := range atoms[:i] {
+			overlap(a, b, 0.4)
+		}
+	}
+	// What counts is the share of bodies that are covered.
+	return sum / math.Sqrt(float64(max(1, len(lobes)+len(atoms))))
+}
+
+// maxBallsCompared bounds the time that choosing a view may take: 300 views
+// times half the square of this number of comparisons is about half a second.
+// In larger structures no view shows everything anyway.
+const maxBallsCompared = 400
+
+// A screen is the picture in pixels, with the rectangle in which the bodies
+// have to lie.
+type screen struct {
+	width, height            int
+	left, right, top, bottom float64
+	pixelsPerMM              float64
+}
+
+// distanceInRadii is how far the eye is, in radii of the scene: near enough
+// for depth, far enough to keep parallel bonds nearly parallel.
+const distanceInRadii = 7
+
+// cameraFor places the camera so that all balls fill the screen's rectangle.
+func cameraFor(v view, balls []ball, s screen, orthographic bool) render.Camera {
+	centre, radius := enclosing(balls)
+	distance := distanceInRadii * radius
+	back, up := v.back(), v.up()
+	right := up.Cross(back)
+	target := centre
+	build := func(scale float64) render.Camera {
+		// scale is in pixels for a length of 1 at the target.
+		c := render.Camera{Eye: target.Add(back.Mul(distance)), Target: target, Up: up}
+		if orthographic {
+			c.Height = float64(s.height) / scale
+		} else {
+			c.FovY = 2 * math.Atan(float64(s.height)/(2*scale*distance))
+		}
+		return c
+	}
+	scale := (s.bottom - s.top) / (2 * radius)
+	// Scale and middle are found in turn; perspective makes them depend on
+	// each other a little.
+	for range 12 {
+		b := bounds(build(scale), balls, s)
+		scale *= min((s.right-s.left)/(b.right-b.left), (s.bottom-s.top)/(b.bottom-b.top))
+		b = bounds(build(scale), balls, s)
+		dx := (b.left+b.right)/2 - (s.left+s.right)/2
+		dy := (b.top+b.bottom)/2 - (s.top+s.bottom)/2
+		target = target.Add(right.Mul(dx / scale)).Sub(up.Mul(dy / scale))
+	}
+	return build(scale)
+}
+
+type rectangle struct{ left, right, top, bottom float64 }
+
+func (r rectangle) overlaps(o rectangle) bool {
+	return r.left < o.right && o.left < r.right && r.top < o.bottom && o.top < r.bottom
+}
+
+// overlap is the area that two rectangles share.
+func (r rectangle) overlap(o rectangle) float64 {
+	return max(0, min(r.right, o.right)-max(r.left, o.left)) * max(0, min(r.bottom, o.bottom)-max(r.top, o.top))
+}
+
+// A disc is a ball as seen on the picture, in pixels.
+type disc struct{ x, y, radius float64 }
+
+func discOf(c render.Camera, b ball, s screen) disc {
+	x, y, depth, _ := c.Project(b.centre, s.width, s.height)
+	scale := float64(s.height) / c.Height
+	if c.Height == 0 {
+		scale = float64(s.height) / (2 * math.Tan(c.FovY/2) * depth)
+	}
+	return disc{x, y, b.radius * scale}
+}
+
+// bounds is the smallest rectangle around all balls on the picture.
+func bounds(c render.Camera, balls []ball, s screen) rectangle {
+	r := rectangle{math.Inf(1), math.Inf(-1), math.Inf(1), math.Inf(-1)}
+	for _, b := range balls {
+		d := discOf(c, b, s)
+		r.left, r.right = min(r.left, d.x-d.radius), max(r.right, d.x+d.radius)
+		r.top, r.bottom = min(r.top, d.y-d.radius), max(r.bottom, d.y+d.radius)
+	}
+	return r
+}
+
+// enclosing is a ball around all balls: about their common middle.
+func enclosing(balls []ball) (centre mgl64.Vec3, radius float64) {
+	low, high := balls[0].centre, balls[0].centre
+	for _, b := range balls {
+		for i, x := range b.centre {
+			low[i], high[i] = min(low[i], x-b.radius), max(high[i], x+b.radius)
+		}
+	}
+	centre = low.Add(high).Mul(0.5)
+	for _, b := range balls {
+		radius = max(radius, b.centre.Sub(centre).Len()+b.radius)
+	}
+	return centre, radius
+}

@@ -1,0 +1,204 @@
+package table
+
+import (
+	"fmt"
+	"strconv"
+	"strings"
+
+	"lobewright/app/notation"
+	"lobewright/symmetry"
+)
+
+const (
+	coordinatePlaces = 4 // a ten-thousandth of an ångström: below any experiment
+	axisPlaces       = 3
+	characterPlaces  = 3
+	matrixPlaces     = 4
+)
+
+// Operations lists every operation with its class, its axis or normal and,
+// for up to maxShown points, the point to which each point is carried, counted
+// from 1.
+func Operations(s *symmetry.Setting, permutations [][]int, maxShown int) Table {
+	t := Table{Head: []string{"class", "operation", "axis or normal"}}
+	shown := 0
+	if len(permutations) > 0 && len(permutations[0]) <= maxShown {
+		shown = len(permutations[0])
+	}
+	if shown > 0 {
+		t.Head = append(t.Head, "carries atoms "+numbersUpTo(shown)+" to")
+	}
+	for _, c := range s.Classes {
+		for i, r := range c.Members {
+			op := s.Operations[r]
+			row := []string{"", op.Name, axis(op)}
+			if i == 0 {
+				row[0] = c.Name
+			}
+			if shown > 0 {
+				row = append(row, images(permutations[r], shown))
+			}
+			t.Add(row...)
+		}
+	}
+	if len(permutations) > 0 && shown == 0 {
+		t.Notes = append(t.Notes, fmt.Sprintf("(where the %d atoms go: --json)", len(permutations[0])))
+	}
+	return t
+}
+
+// axis writes the axis of a rotation or the normal of a plane; E and i have
+// none.
+func axis(op symmetry.Operation) string {
+	if op.Axis.Len() == 0 {
+		return ""
+	}
+	return components(op.Axis[:])
+}
+
+// numbersUpTo heads the columns of images, which are as wide as the largest
+// number.
+func numbersUpTo(n int) string {
+	parts := make([]string, n)
+	for i := range parts {
+		parts[i] = padNumber(i+1, n)
+	}
+	return strings.Join(parts, " ")
+}
+
+func images(permutation []int, n int) string {
+	parts := make([]string, n)
+	for i, image := range permutation {
+		parts[i] = padNumber(image+1, n)
+	}
+	return strings.Repeat(" ", len("carries atoms ")) + strings.Join(parts, " ")
+}
+
+// padNumber writes a number as wide as the largest one; a point without an
+// image (−1 in code, 0 here) is a dash.
+func padNumber(i, largest int) string {
+	s := strconv.Itoa(i)
+	if i == 0 {
+		s = "–"
+	}
+	return strings.Repeat(" ", max(0, len(strconv.Itoa(largest))-notation.Width(s))) + s
+}
+
+// Characters is the character table of a finite group with the functions that
+// transform like each irrep. Characters that are no whole numbers stand with
+// three places, and below the table in closed form.
+func Characters(s *symmetry.Setting) Table {
+	t := Table{Head: []string{""}, Align: []Align{Left}}
+	for _, c := range s.Classes {
+		t.Head = append(t.Head, c.Name)
+		t.Align = append(t.Align, Right)
+	}
+	closed := closedForms{}
+	for _, irrep := range s.Irreps {
+		row := []string{irrep.Label}
+		for _, x := range irrep.Characters {
+			row = append(row, notation.Short(x, characterPlaces))
+			closed.note(x)
+		}
+		t.Add(append(row, " "+functions(irrep))...)
+	}
+	t.Notes = closed.lines()
+	if pair := complexPairs(s); pair != "" {
+		t.Notes = append(t.Notes, pair)
+	}
+	return t
+}
+
+// functions writes what transforms like an irrep: x²−y², (x, y).
+func functions(irrep symmetry.Irrep) string {
+	if len(irrep.Functions) == 0 {
+		return ""
+	}
+	sets := make([]string, len(irrep.Functions[0]))
+	for j := range sets {
+		partners := make([]string, len(irrep.Functions))
+		for k, list := range irrep.Functions {
+			partners[k] = notation.PlainPolynomial(list[j])
+		}
+		sets[j] = strings.Join(partners, ", ")
+		if len(partners) > 1 {
+			sets[j] = "(" + sets[j] + ")"
+		}
+	}
+	return strings.Join(sets, "  ")
+}
+
+// complexPairs says which irreps are pairs of complex conjugates.
+func complexPairs(s *symmetry.Setting) string {
+	var labels []string
+	for _, irrep := range s.Irreps {
+		if irrep.ComplexPair {
+			labels = append(labels, irrep.Label)
+		}
+	}
+	if len(labels) == 0 {
+		return ""
+	}
+	return strings.Join(labels, ", ") + ": a pair of complex conjugates, taken together over real functions"
+}
+
+// closedForms collects the numbers of a table that are no whole numbers.
+type closedForms struct {
+	values []string // as printed, without sign, in order of appearance
+	exact  map[string]string
+}
+
+func (c *closedForms) note(x float64) {
+	printed := notation.Short(x, characterPlaces)
+	if !strings.Contains(printed, ".") {
+		return
+	}
+	if x < 0 {
+		x, printed = -x, strings.TrimPrefix(printed, "−")
+	}
+	form, ok := notation.Exact(x)
+	if !ok || c.exact[printed] != "" {
+		return
+	}
+	if c.exact == nil {
+		c.exact = map[string]string{}
+	}
+	c.exact[printed] = form
+	c.values = append(c.values, printed)
+}
+
+func (c *closedForms) lines() []string {
+	var lines []string
+	for _, v := range c.values {
+		lines = append(lines, v+" = "+c.exact[v])
+	}
+	return lines
+}
+
+// Matrices lists the matrices of every irrep of dimension 2 and more for
+// every operation; those of dimension 1 are the characters.
+func Matrices(s *symmetry.Setting) Table {
+	t := Table{Head: []string{"irrep", "operation", "matrix, row by row"}}
+	for _, irrep := range s.Irreps {
+		if irrep.Dimension < 2 {
+			continue
+		}
+		t.Break()
+		for r, m := range irrep.Matrices {
+			rows := make([]string, irrep.Dimension)
+			for i := range rows {
+				entries := make([]string, irrep.Dimension)
+				for j := range entries {
+					entries[j] = fmt.Sprintf("%7s", notation.Short(m.At(i, j), matrixPlaces))
+				}
+				rows[i] = strings.Join(entries, " ")
+			}
+			label := ""
+			if r == 0 {
+				label = irrep.Label
+			}
+			t.Add(label, s.Operations[r].Name, strings.Join(rows, "  |"))
+		}
+	}
+	return t
+}

@@ -1,0 +1,183 @@
+package table
+
+import (
+	"strconv"
+	"strings"
+
+	"lobewright/app/notation"
+	"lobewright/app/work"
+	"lobewright/orbitals"
+)
+
+// Atoms lists up to most atoms in the working frame; spectators are marked.
+func Atoms(g *work.Group, most int) Table {
+	t := Table{
+		Head:  []string{"atom", "", "x", "y", "z"},
+		Align: []Align{Right, Left, Right, Right, Right},
+	}
+	core := make([]bool, len(g.Molecule.Atoms))
+	for _, i := range g.Core {
+		core[i] = true
+	}
+	for i, p := range g.Sites.Positions {
+		if i == most {
+			t.Notes = []string{"… and " + strconv.Itoa(len(g.Sites.Positions)-most) + " more (all of them: --json)"}
+			break
+		}
+		row := []string{strconv.Itoa(i + 1), g.Sites.Elements[i].Symbol()}
+		for _, x := range p {
+			row = append(row, notation.Decimal(x, coordinatePlaces))
+		}
+		if !core[i] {
+			row = append(row, "spectator")
+		}
+		t.Add(row...)
+	}
+	return t
+}
+
+// FunctionName names a function with its atom: "Cl2 sigma".
+func FunctionName(b *work.Basis, f orbitals.Function) string {
+	return b.Group.Sites.Elements[f.Site].Symbol() + strconv.Itoa(f.Site+1) + " " + f.Name
+}
+
+// Basis lists the functions with their atoms, where those that have one
+// point, and their orbits.
+func Basis(b *work.Basis) Table {
+	t := Table{
+		Head:  []string{"", "atom", "function", "orbit", "positive lobe"},
+		Align: []Align{Left, Right, Left, Right, Left},
+	}
+	pointed := false
+	for i, f := range b.Functions {
+		direction := ""
+		if f.Direction.Len() > 0 {
+			direction = components(f.Direction[:])
+			pointed = true
+		}
+		t.Add(notation.Phi(i), b.Group.Sites.Elements[f.Site].Symbol()+strconv.Itoa(f.Site+1), f.Name, strconv.Itoa(f.Orbit+1), direction)
+	}
+	if !pointed {
+		t.Head = t.Head[:4]
+	}
+	return t
+}
+
+// components writes a unit vector in columns.
+func components(v []float64) string {
+	parts := make([]string, len(v))
+	for i, x := range v {
+		s := notation.Short(x, axisPlaces)
+		parts[i] = strings.Repeat(" ", max(0, 6-notation.Width(s))) + s
+	}
+	return strings.Join(parts, " ")
+}
+
+// Representation lists the characters of the basis class by class.
+func Representation(o *work.Orbitals) Table {
+	var t Table
+	row := []string{}
+	closed := closedForms{}
+	for i, c := range o.Fit.Setting.Classes {
+		t.Head = append(t.Head, c.Name)
+		t.Align = append(t.Align, Right)
+		x := o.Projection.Characters[i]
+		row = append(row, notation.Short(x, characterPlaces))
+		closed.note(x)
+	}
+	t.Add(row...)
+	t.Notes = closed.lines()
+	return t
+}
+
+// combinationWidth is how wide a line of a combination becomes before it is
+// broken.
+const combinationWidth = 72
+
+// Orbitals lists the group orbitals with their combinations, in closed form
+// where there is one. Copies and partners are numbered only where there are
+// several.
+func Orbitals(o *work.Orbitals) Table {
+	t := Table{Head: []string{"", "copy", "partner", "like", "combination"}, Align: []Align{Left, Right, Right}}
+	irrep, number := -1, -1
+	for _, orbital := range o.Projection.Orbitals {
+		if orbital.Irrep != irrep || orbital.Copy != number && o.Irreps[orbital.Irrep].Dimension > 1 {
+			t.Break()
+		}
+		label := ""
+		if orbital.Irrep != irrep || orbital.Copy != number {
+			label = notation.Orbital(o.Irreps[orbital.Irrep].Label)
+		}
+		irrep, number = orbital.Irrep, orbital.Copy
+		row := []string{label, "", "", likeness(o, orbital)}
+		if o.Content[irrep] > 1 {
+			row[1] = strconv.Itoa(orbital.Copy + 1)
+		}
+		if o.Irreps[irrep].Dimension > 1 {
+			row[2] = strconv.Itoa(orbital.Partner + 1)
+		}
+		for i, line := range combinationLines(orbital.Coefficients) {
+			if i == 0 {
+				t.Add(append(row, line)...)
+			} else {
+				t.Add("", "", "", "", line)
+			}
+		}
+	}
+	return t
+}
+
+// likeness is the simplest function that a partner transforms like.
+func likeness(o *work.Orbitals, orbital orbitals.GroupOrbital) string {
+	functions := o.Irreps[orbital.Irrep].Functions
+	if orbital.Partner < len(functions) && len(functions[orbital.Partner]) > 0 {
+		return notation.PlainPolynomial(functions[orbital.Partner][0])
+	}
+	return ""
+}
+
+func combinationLines(coefficients []float64) []string {
+	if form, ok := orbitals.FindClosedForm(coefficients); ok {
+		return fold(strings.SplitAfter(form.String(), " "))
+	}
+	return fold(spaced(notation.CombinationTerms(notation.Terms(coefficients))))
+}
+
+// fold breaks a combination into lines before its signs.
+func fold(parts []string) []string {
+	var lines []string
+	line := ""
+	for _, part := range parts {
+		startsTerm := strings.HasPrefix(part, "+") || strings.HasPrefix(part, "−")
+		if startsTerm && notation.Width(line+part) > combinationWidth {
+			lines = append(lines, strings.TrimRight(line, " "))
+			line = ""
+		}
+		line += part
+	}
+	return append(lines, strings.TrimRight(line, " "))
+}
+
+// Ledger lists one projection operation by operation.
+func Ledger(l *work.Ledger) Table {
+	t := Table{Head: []string{"operation", "image", "weight", "sum so far"}, Align: []Align{Left, Left, Right}}
+	closed := closedForms{}
+	for _, row := range l.Rows {
+		closed.note(row.Weight)
+		sum := fold(spaced(notation.CombinationTerms(notation.Terms(row.Sum))))
+		t.Add(l.Group.Sites.Setting.Operations[row.Operation].Name, notation.Combination(row.Image),
+			notation.Short(row.Weight, characterPlaces), sum[0])
+		for _, line := range sum[1:] {
+			t.Add("", "", "", line)
+		}
+	}
+	t.Notes = closed.lines()
+	return t
+}
+
+func spaced(parts []string) []string {
+	for i := range parts {
+		parts[i] += " "
+	}
+	return parts
+}
