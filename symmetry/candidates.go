@@ -87,13 +87,14 @@ const manyAlike = 48
 // like them, and they lie well off the centre and off one line with it.
 func (c *cloud) references(reach float64) (a, b int, alike func(int) []int) {
 	count, alike := c.alike(reach)
-	least := math.Max(0.2*c.farthest(), 4*reach)
+	far := c.farthest()
+	least := math.Min(math.Max(0.2*far, 4*reach), 0.99*far)
 	better := func(i, j int) bool {
 		return j < 0 || count[i] < count[j] || count[i] == count[j] && c.radius[i] > c.radius[j]
 	}
 	a, b = -1, -1
 	for i, r := range c.radius {
-		if r >= math.Min(least, 0.99*c.farthest()) && better(i, a) {
+		if r >= least && better(i, a) {
 			a = i
 		}
 	}
@@ -231,6 +232,9 @@ func (c *cloud) improve(m mgl64.Mat3, which []int, image []int32) mgl64.Mat3 {
 			return m
 		}
 		m = turn.Mul3(m)
+		if equalTo(turn, mgl64.Ident3(), 1e-9) {
+			break // the next would be the square of this
+		}
 	}
 	return m
 }

@@ -98,6 +98,10 @@ func (p *placed) assign(group []*element) bool {
 	return true
 }
 
+// settled (radians) is a turn too small to matter: the ideal points have the
+// group exactly in any orientation, and this one moves none by 1e-9 Å.
+const settled = 1e-13
+
 // settle improves orientation and ideal points in turn.
 func (p *placed) settle(c *cloud) {
 	const rounds = 60 // a few suffice; each wins the factor deviation/size
@@ -112,7 +116,7 @@ func (p *placed) settle(c *cloud) {
 			inertia = addInertia(inertia, q)
 		}
 		turn, ok := rotationBy(inertia, torque)
-		if !ok || equalTo(turn, mgl64.Ident3(), 1e-15) {
+		if !ok || equalTo(turn, mgl64.Ident3(), settled) {
 			break
 		}
 		p.rotation = orthonormal(turn.Mul3(p.rotation))
