@@ -81,9 +81,15 @@ func (d *distinctValues) asGolden() (factors []Exact, a, b int, ok bool) {
 	return factors, a, b, factors != nil
 }
 
-// units are τ^k for small k: forms differ by them that are equally simple at
-// first sight.
-var units = []golden{{1, 0}, {0, 1}, {-1, 1}, {1, 1}, {2, -1}, {1, 2}, {-3, 2}, {2, 3}, {5, -3}}
+// units are τ^k for small k, and these times √5: factors that can be common to
+// all numbers and to the divisor without making them longer, or shorter.
+var units = func() []golden {
+	powers := []golden{{1, 0}, {0, 1}, {-1, 1}, {1, 1}, {2, -1}, {1, 2}, {-3, 2}, {2, 3}, {5, -3}}
+	for _, p := range powers[:9] {
+		powers = append(powers, p.times(golden{-1, 2}))
+	}
+	return powers
+}()
 
 // textLength is how long the factors and the divisor are to read.
 func textLength(factors []Exact, a, b int) int {
