@@ -19,7 +19,7 @@ func (p *program) demoCommand() *cobra.Command {
 		Use:     "demo",
 		Short:   "List the embedded demonstration structures",
 		Example: "  lobewright demo\n  lobewright group demo:NAME",
-		Args:    arguments(cobra.NoArgs),
+		Args:    noArguments,
 		RunE: func(cmd *cobra.Command, _ []string) error {
 			t := table.Table{Head: []string{"STRUCTURE", "group", "formula", ""}}
 			for _, d := range assets.DemoList() {

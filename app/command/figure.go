@@ -28,7 +28,7 @@ the same place at the same scale.
   lobewright figure complex.xyz --on Cl:sigma --irrep Eu --copy 1 --partner 2 -o eu-2.png
   lobewright figure complex.xyz --on Cl:sigma --irrep B1g --look ink --width 85 --dpi 600 -o b1g.png
   lobewright figure complex.xyz --operation "C2'(x)" -o axis.png`,
-		Args: arguments(cobra.ExactArgs(1)),
+		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			s.Structure = args[0]
 			if err := checkFigure(cmd, &s, output); err != nil {

@@ -25,7 +25,7 @@ operation, the classes, and the irreps with their characters and matrices.
 		Example: `  lobewright group ideal:OC-6,Co,N,1.96
   lobewright group complex.xyz --ignore H --tolerance 0.05
   lobewright group complex.xyz --json > complex.json`,
-		Args: arguments(cobra.ExactArgs(1)),
+		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			s.Structure = args[0]
 			g, err := p.group(cmd.Context(), s)
@@ -101,12 +101,7 @@ func groupText(g *work.Group, matrices bool) string {
 func headText(g *work.Group) string {
 	var b strings.Builder
 	fit := g.Fit
-	fmt.Fprintf(&b, "%s  (%s, %s)\n\n", g.Molecule.Title, g.Molecule.Formula(), count(len(g.Molecule.Atoms), "atom"))
-	fmt.Fprintf(&b, "Point group  %s", fit.Setting.Symbol)
-	if !fit.Setting.Infinite() {
-		fmt.Fprintf(&b, ", %s", count(fit.Setting.Order(), "operation"))
-	}
-	b.WriteString("\n")
+	b.WriteString(titleText(g))
 	if n := len(g.Core); n < len(g.Molecule.Atoms) {
 		fmt.Fprintf(&b, "Core         %s (%s)\n", numbers(fromOne(g.Core)), count(n, "atom"))
 	}
@@ -115,12 +110,25 @@ func headText(g *work.Group) string {
 	if fit.Doubtful {
 		b.WriteString("Doubtful     another group would be found within a factor of three of the tolerance\n")
 	}
-	fmt.Fprintf(&b, "Frame        %s\n", notation.Convention(fit, g.CoreNames()))
+	for i, clause := range strings.Split(notation.Convention(fit, g.CoreNames()), "; ") {
+		fmt.Fprintf(&b, "%-12s %s\n", []string{"Frame", ""}[min(i, 1)], clause)
+	}
 	fmt.Fprintf(&b, "             (%s; source: %s)\n", fit.Rule.Name, notation.Source(fit.Rule))
 	for _, tie := range notation.Ties(fit.Ties) {
 		fmt.Fprintf(&b, "Tie          %s\n", tie)
 	}
 	return b.String()
+}
+
+// titleText names structure and group.
+func titleText(g *work.Group) string {
+	setting := g.Fit.Setting
+	order := ""
+	if !setting.Infinite() {
+		order = ", " + count(setting.Order(), "operation")
+	}
+	return fmt.Sprintf("%s  (%s, %s)\n\nPoint group  %s%s\n",
+		g.Molecule.Title, g.Molecule.Formula(), count(len(g.Molecule.Atoms), "atom"), setting.Symbol, order)
 }
 
 func count(n int, noun string) string {

@@ -82,7 +82,7 @@ func stringLength(s string) int {
 
 func (v value) write(out *bytes.Buffer, indent int) {
 	if !v.breaks(indent) {
-		out.WriteString(v.text)
+		v.writeInline(out)
 		return
 	}
 	out.WriteByte(v.text[0])
@@ -97,6 +97,24 @@ func (v value) write(out *bytes.Buffer, indent int) {
 		member.write(out, indent+1)
 	}
 	out.WriteString("\n" + strings.Repeat(" ", indent))
+	out.WriteByte(v.text[len(v.text)-1])
+}
+
+func (v value) writeInline(out *bytes.Buffer) {
+	if len(v.members) == 0 {
+		out.WriteString(v.text)
+		return
+	}
+	out.WriteByte(v.text[0])
+	for i, member := range v.members {
+		if i > 0 {
+			out.WriteString(", ")
+		}
+		if len(v.keys) > 0 {
+			out.WriteString(v.keys[i] + ": ")
+		}
+		member.writeInline(out)
+	}
 	out.WriteByte(v.text[len(v.text)-1])
 }
 

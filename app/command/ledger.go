@@ -26,7 +26,7 @@ character (--character). The sum is Σ D(R)_KL · R φ over the operations R.
 		Example: `  lobewright ledger ideal:SP-4,Pd,Cl,2.31 --on Cl:sigma --function 1 --irrep Eu
   lobewright ledger ring.xyz --on C:pz --function 1 --irrep "E1''" --element 2,1
   lobewright ledger ring.xyz --on C:pz --function 1 --irrep "E1''" --character --json`,
-		Args: arguments(cobra.ExactArgs(1)),
+		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			s.Structure = args[0]
 			if err := checkLedger(cmd, &s); err != nil {
@@ -76,7 +76,7 @@ func checkLedger(cmd *cobra.Command, s *study.Study) error {
 // ledgerText lays out one projection.
 func ledgerText(l *work.Ledger) string {
 	var b strings.Builder
-	b.WriteString(headText(l.Group))
+	b.WriteString(titleText(l.Group))
 	f := l.Functions[l.Ledger.Function]
 	weight := "the character"
 	if !l.ByCharacter() {
@@ -88,7 +88,16 @@ func ledgerText(l *work.Ledger) string {
 	if l.Norm == 0 {
 		b.WriteString("\nThe sum is zero: the function has no part in this irrep.\n")
 	} else {
-		fmt.Fprintf(&b, "\nNorm of the sum: %s\n", notation.Short(l.Norm, 6))
+		fmt.Fprintf(&b, "\nNorm of the sum: %s\n", normText(l.Norm))
 	}
 	return b.String()
+}
+
+// normText writes a norm in closed form too, where it has one.
+func normText(norm float64) string {
+	decimal := notation.Short(norm, 6)
+	if exact, ok := notation.Exact(norm); ok && exact != decimal {
+		return exact + " = " + decimal
+	}
+	return decimal
 }

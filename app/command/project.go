@@ -26,7 +26,7 @@ matrices of the irrep.
 		Example: `  lobewright project ideal:SP-4,Pd,Cl,2.31 --on Cl:sigma
   lobewright project ideal:OC-6 --on 2-7:sigma --on 2-7:pi
   lobewright project ring.xyz --on C:pz --json`,
-		Args: arguments(cobra.ExactArgs(1)),
+		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			s.Structure = args[0]
 			if err := checkBasis(cmd, &s, true); err != nil {

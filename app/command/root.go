@@ -42,7 +42,7 @@ Without a command it writes figures of the demonstrations into the folder out.`,
   lobewright project complex.xyz --on Cl:sigma
   lobewright figure complex.xyz --on Cl:sigma --irrep Eu -o eu.png`,
 		Version:       version,
-		Args:          arguments(cobra.NoArgs),
+		Args:          noArguments,
 		RunE:          func(cmd *cobra.Command, _ []string) error { return p.showcase(cmd.Context()) },
 		SilenceErrors: true,
 		SilenceUsage:  true,

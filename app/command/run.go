@@ -85,13 +85,21 @@ func (p *program) note(format string, args ...any) {
 	fmt.Fprintf(p.Err, "note: %s\n", oneLine(fmt.Sprintf(format, args...)))
 }
 
-// arguments wraps a rule for positional arguments so that its error counts as
-// a fault of the command line.
-func arguments(rule cobra.PositionalArgs) cobra.PositionalArgs {
-	return func(cmd *cobra.Command, args []string) error {
-		if err := rule(cmd, args); err != nil {
-			return usagef("%w; see %q", err, cmd.CommandPath()+" --help")
-		}
+// oneStructure is the rule for the arguments of most commands.
+func oneStructure(cmd *cobra.Command, args []string) error {
+	if len(args) == 1 {
 		return nil
 	}
+	return usagef("%s takes one STRUCTURE and %d are given; see %q", cmd.Name(), len(args), cmd.CommandPath()+" --help")
+}
+
+// noArguments is the rule for commands that take none.
+func noArguments(cmd *cobra.Command, args []string) error {
+	if len(args) == 0 {
+		return nil
+	}
+	if cmd.HasParent() {
+		return usagef("%s takes no arguments; see %q", cmd.Name(), cmd.CommandPath()+" --help")
+	}
+	return usagef("there is no command %q; see %q", args[0], cmd.CommandPath()+" --help")
 }

@@ -91,15 +91,24 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 	return z, x
 }
 
-// axisName names the rotation of the highest order about z: "C4".
+// axisName names the axis along z: "C4", or "S4" where an improper rotation
+// of twice an even order makes it the principal one (S4, D2d, S8 …).
 func axisName(s *symmetry.Setting) string {
-	highest := 1
+	proper, improper := 1, 1
 	for _, op := range s.Operations {
-		if !op.Turn.Improper && op.Turn.Num == 1 && isAlong(op.Axis, 2) {
-			highest = max(highest, op.Turn.Den)
+		if op.Turn.Num != 1 || !isAlong(op.Axis, 2) {
+			continue
+		}
+		if op.Turn.Improper {
+			improper = max(improper, op.Turn.Den)
+		} else {
+			proper = max(proper, op.Turn.Den)
 		}
 	}
-	return fmt.Sprintf("C%d", highest)
+	if proper%2 == 0 && improper == 2*proper {
+		return fmt.Sprintf("S%d", improper)
+	}
+	return fmt.Sprintf("C%d", proper)
 }
 
 func cubicAxes(symbol string) string {

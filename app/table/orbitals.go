@@ -7,6 +7,7 @@ import (
 	"lobewright/app/notation"
 	"lobewright/app/work"
 	"lobewright/orbitals"
+	"lobewright/symmetry"
 )
 
 // Atoms lists up to most atoms in the working frame; spectators are marked.
@@ -98,22 +99,22 @@ const combinationWidth = 72
 // where there is one. Copies and partners are numbered only where there are
 // several.
 func Orbitals(o *work.Orbitals) Table {
-	t := Table{Head: []string{"", "copy", "partner", "like", "combination"}, Align: []Align{Left, Right, Right}}
-	irrep, number := -1, -1
+	t := Table{Align: []Align{Left, Right, Right}}
+	t.Head = []string{"", "copy", "partner", "like", "combination"}
+	last := orbitals.GroupOrbital{Irrep: -1}
 	for _, orbital := range o.Projection.Orbitals {
-		if orbital.Irrep != irrep || orbital.Copy != number && o.Irreps[orbital.Irrep].Dimension > 1 {
-			t.Break()
+		irrep := o.Irreps[orbital.Irrep]
+		row := []string{"", "", "", likeness(irrep, orbital.Partner)}
+		if orbital.Irrep != last.Irrep || orbital.Copy != last.Copy {
+			row[0] = notation.Orbital(irrep.Label)
+			if orbital.Irrep != last.Irrep || irrep.Dimension > 1 {
+				t.Break()
+			}
 		}
-		label := ""
-		if orbital.Irrep != irrep || orbital.Copy != number {
-			label = notation.Orbital(o.Irreps[orbital.Irrep].Label)
-		}
-		irrep, number = orbital.Irrep, orbital.Copy
-		row := []string{label, "", "", likeness(o, orbital)}
-		if o.Content[irrep] > 1 {
+		if o.Content[orbital.Irrep] > 1 {
 			row[1] = strconv.Itoa(orbital.Copy + 1)
 		}
-		if o.Irreps[irrep].Dimension > 1 {
+		if irrep.Dimension > 1 {
 			row[2] = strconv.Itoa(orbital.Partner + 1)
 		}
 		for i, line := range combinationLines(orbital.Coefficients) {
@@ -123,15 +124,15 @@ func Orbitals(o *work.Orbitals) Table {
 				t.Add("", "", "", "", line)
 			}
 		}
+		last = orbital
 	}
-	return t
+	return t.withoutBlankColumns()
 }
 
 // likeness is the simplest function that a partner transforms like.
-func likeness(o *work.Orbitals, orbital orbitals.GroupOrbital) string {
-	functions := o.Irreps[orbital.Irrep].Functions
-	if orbital.Partner < len(functions) && len(functions[orbital.Partner]) > 0 {
-		return notation.PlainPolynomial(functions[orbital.Partner][0])
+func likeness(irrep symmetry.Irrep, partner int) string {
+	if partner < len(irrep.Functions) && len(irrep.Functions[partner]) > 0 {
+		return notation.PlainPolynomial(irrep.Functions[partner][0])
 	}
 	return ""
 }

@@ -3,6 +3,7 @@
 package table
 
 import (
+	"slices"
 	"strings"
 
 	"lobewright/app/notation"
@@ -39,6 +40,28 @@ func (t *Table) Break() {
 	if len(t.Rows) > 0 {
 		t.Breaks = append(t.Breaks, len(t.Rows))
 	}
+}
+
+// withoutBlankColumns drops the columns that have a head but no entries.
+func (t Table) withoutBlankColumns() Table {
+	blank := func(i int) bool {
+		return !slices.ContainsFunc(t.Rows, func(row []string) bool { return i < len(row) && row[i] != "" })
+	}
+	for i := len(t.Head) - 1; i >= 0; i-- {
+		if !blank(i) {
+			continue
+		}
+		t.Head = slices.Delete(slices.Clone(t.Head), i, i+1)
+		if i < len(t.Align) {
+			t.Align = slices.Delete(slices.Clone(t.Align), i, i+1)
+		}
+		for k, row := range t.Rows {
+			if i < len(row) {
+				t.Rows[k] = slices.Delete(slices.Clone(row), i, i+1)
+			}
+		}
+	}
+	return t
 }
 
 const (
