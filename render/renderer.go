@@ -48,6 +48,7 @@ type frame struct {
 	quadrics []quadric
 	discs    []disc
 	strokes  []stroke
+	labels   []label
 	dash     []float64
 	nVert    int
 	verts    []vert
@@ -172,9 +173,10 @@ func (r *Renderer) phase(n int, job func(w *worker, i int)) {
 
 // worker is one goroutine's share of the work and its buffers.
 type worker struct {
-	r    *Renderer
-	tile tile
-	bin  binScratch
+	r      *Renderer
+	tile   tile
+	bin    binScratch
+	typist typist
 }
 
 func (w *worker) work() {

@@ -2,7 +2,6 @@ package render
 
 import (
 	"image"
-	"math"
 	"math/bits"
 )
 
@@ -178,11 +177,7 @@ func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
 	same := true // all samples alike so far
 	for _, k := range list {
 		fr := &t.frags[k]
-		if t.slots[fr.slot].part < 0 {
-			continue
-		}
-		mx, my := t.middle(fr.mask)
-		r, g, b, a := t.fragColor(fr, float32(px)+mx, float32(py)+my, s)
+		r, g, b, a := t.fragColor(fr, px, py, s)
 		if fr.mask == full && same {
 			w := acc[0][3] * a
 			acc[0][0] += w * r
@@ -249,10 +244,12 @@ func (t *tile) before(a, b int32) bool {
 }
 
 // fragColor returns the colour and opacity of a fragment.
-func (t *tile) fragColor(fr *frag, x, y float32, s *sight) (r, g, b, a float32) {
+func (t *tile) fragColor(fr *frag, px, py int, s *sight) (r, g, b, a float32) {
 	p := &t.f.parts[t.slots[fr.slot].part]
-	r, g, b = t.shadePlace(fr.slot, x, y, s)
+	if p.form == formLabel {
+		return t.labelColor(p, px, py)
+	}
+	mx, my := t.middle(fr.mask)
+	r, g, b = t.shadePlace(fr.slot, float32(px)+mx, float32(py)+my, s)
 	return r, g, b, p.alpha
 }
-
-var _ = math.Sqrt
