@@ -170,12 +170,15 @@ func TestWhatIsNoStructureGivesOneClearLine(t *testing.T) {
 		{[]string{"group", "demo:none"}, `there is no demonstration "none"; there are benzene`},
 		{[]string{"group", "ideal:OC-6", "--core", "8"}, "atom 8 does not exist; the structure's atoms are 1 to 7"},
 		{[]string{"group", "ideal:OC-6", "--core", "Fe"}, "the structure has no Fe; its elements are N, Co"},
-		{[]string{"group", "ideal:OC-6", "--core", "what?"}, `"what?" is no choice of atoms`},
 		{[]string{"group", "ideal:OC-6", "--ignore", "all"}, "no atom is left to decide the group"},
 	}
 	for _, c := range cases {
 		if line := refuses(t, program, nil, 1, c.args...); !strings.Contains(line, c.want) {
 			t.Errorf("%q says %s\nwant %s", c.args, line, c.want)
 		}
+	}
+	// What no structure could make right is a wrong command line.
+	if line := refuses(t, program, nil, 2, "group", "ideal:OC-6", "--core", "what?"); !strings.Contains(line, `"what?" is no choice of atoms`) {
+		t.Errorf("says %s", line)
 	}
 }
