@@ -59,9 +59,6 @@ func coefficient(x float64) string {
 	return s
 }
 
-// Phi is the name of a function of the basis, from its index: φ1 for 0.
-func Phi(function int) string { return "φ" + Decimal(float64(function+1), 0) }
-
 // Terms makes a sparse sum of a list of coefficients, one a function.
 func Terms(coefficients []float64) []orbitals.Term {
 	var terms []orbitals.Term

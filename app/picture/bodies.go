@@ -14,7 +14,8 @@ import (
 
 // Sizes of bodies. They belong to the look of the program, see the palette.
 const (
-	atomShare     = 0.32 // of the covalent radius
+	atomShare     = 0.32 // radius of an atom, of its covalent radius
+	carrierShare  = 0.16 // the same for atoms with lobes, whose tips it would hide
 	bondThickness = 0.09 // Å
 	lobeShare     = 0.45 // length of the longest lobe, of the nearest distance
 )
@@ -34,6 +35,8 @@ type stage struct {
 	// atoms are the balls of all atoms; lobes those of what is drawn on them.
 	// elements those at the rim of symmetry elements.
 	atoms, lobes, elements []ball
+	// carries marks the atoms with functions; nil without a basis.
+	carries []bool
 }
 
 // addMolecule draws the atoms and bonds of a structure.
@@ -50,7 +53,11 @@ func (s *stage) addMolecule(g *work.Group) {
 		return 0.7
 	}
 	for i, p := range g.Sites.Positions {
-		radius := atomShare * g.Molecule.Atoms[i].Element.Radius()
+		share := atomShare
+		if s.carries != nil && s.carries[i] {
+			share = carrierShare
+		}
+		radius := share * g.Molecule.Atoms[i].Element.Radius()
 		s.atoms = append(s.atoms, ball{p, radius})
 		m := matt(mixed(s.palette.Quiet, s.palette.Ground, tone(i)))
 		m.ID = i + 1

@@ -2,7 +2,7 @@ package picture
 
 import (
 	"fmt"
-	"math"
+	"strconv"
 	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -18,11 +18,12 @@ import (
 type caption []captionLine
 
 type captionLine struct {
-	text   notation.Text
+	text notation.Text
+	// beside follows on the same line if there is room, else on its own.
+	beside notation.Text
 	size   float64 // pt
-	bold   bool
-	quiet  bool // second text
-	legend bool // begins with the two signs of lobes
+	quiet  bool    // second text
+	legend bool    // begins with the two signs of lobes
 }
 
 // Sizes of type, in points, and distances in millimetres.
@@ -37,7 +38,7 @@ const (
 // moleculeCaption names structure and group, and the frame.
 func moleculeCaption(g *work.Group) caption {
 	return caption{
-		{text: notation.Words(g.Molecule.Title + "  ").Then(notation.Group(g.Fit.Setting.Symbol)), size: titleSize},
+		{text: notation.Words(g.Molecule.Title + "   ").Then(notation.Group(g.Fit.Setting.Symbol)), size: titleSize},
 		frameLine(g),
 	}
 }
@@ -46,63 +47,109 @@ func moleculeCaption(g *work.Group) caption {
 // sizes of lobes.
 func orbitalCaption(o *work.Orbitals, orbital *orbitals.GroupOrbital, look study.Look) caption {
 	irrep := o.Irreps[orbital.Irrep]
-	which := ""
+	var which []string
 	if irrep.Dimension > 1 {
-		which = fmt.Sprintf("partner %d of %d", orbital.Partner+1, irrep.Dimension)
+		which = append(which, fmt.Sprintf("partner %d of %d", orbital.Partner+1, irrep.Dimension))
 	}
 	if n := o.Content[orbital.Irrep]; n > 1 {
-		which = strings.TrimPrefix(fmt.Sprintf("%s, copy %d of %d", which, orbital.Copy+1, n), ", ")
+		which = append(which, fmt.Sprintf("copy %d of %d", orbital.Copy+1, n))
 	}
-	title := notation.OrbitalText(irrep.Label)
-	if which != "" {
-		title = title.Then(notation.Words("   " + which))
+	title := captionLine{text: notation.OrbitalText(irrep.Label), size: titleSize}
+	if len(which) > 0 {
+		title.text = title.text.Then(notation.Words("   " + strings.Join(which, ", ")))
 	}
-	lines := caption{{text: title, size: titleSize}}
-	if form, ok := orbitals.FindClosedForm(orbital.Coefficients); ok && len(o.Functions) <= maxWritten {
-		lines = append(lines, captionLine{text: notation.ClosedForm(form).Then(notation.Words("   "), basisText(o.Basis)), size: captionSize})
+	lines := caption{title}
+	if form, ok := orbitals.FindClosedForm(orbital.Coefficients); ok && notation.Width(form.String()) <= longestForm {
+		lines = append(lines, captionLine{text: notation.ClosedForm(form), size: captionSize, beside: basisText(o.Basis, orbital.Coefficients)})
 	}
 	return append(lines, captionLine{text: legendText(look), size: secondSize, quiet: true, legend: true}, frameLine(o.Group))
 }
 
-// maxWritten is how many functions a combination may have to be written below
-// its picture.
-const maxWritten = 12
+// longestForm is how many characters a closed form may have to stand below
+// its picture. A longer one is not read there.
+const longestForm = 56
 
 func legendText(look study.Look) notation.Text {
 	size := look.Size
 	if size == "" {
 		size = "length"
 	}
-	return notation.Words(size+" of a lobe as |").
-		Then(notation.Text{{Text: "c", Italic: true}}, notation.Words("|"))
+	return notation.Words(size+" of a lobe as |").Then(notation.Text{{Text: "c", Italic: true}}, notation.Words("|"))
 }
 
 func frameLine(g *work.Group) captionLine {
-	text := notation.Group(g.Fit.Setting.Symbol).Then(notation.Words(": " + notation.ShortConvention(g.Fit)))
+	text := notation.Group(g.Fit.Setting.Symbol).Then(notation.Words(": "), notation.Sentence(notation.ShortConvention(g.Fit)))
 	return captionLine{text: text, size: secondSize, quiet: true}
 }
 
-// basisText says on which atoms the functions are, where that is short:
-// "φ1–φ4: σ on Cl2–5".
-func basisText(b *work.Basis) notation.Text {
-	first := b.Functions[0]
+// basisText says which functions occur in a combination, where that is short:
+// "φ1–φ4: σ on Cl2–Cl5", "φ1, φ6: dz² on Re1, Re2".
+func basisText(b *work.Basis, coefficients []float64) notation.Text {
+	names := b.AtomNames()
+	var kinds []string
+	numbers, atoms := map[string][]string{}, map[string][]string{}
 	for i, f := range b.Functions {
-		if f.Name != first.Name || b.Group.Sites.Elements[f.Site] != b.Group.Sites.Elements[first.Site] || f.Site != first.Site+i {
-			return nil
+		if coefficients[i] == 0 {
+			continue
 		}
+		if numbers[f.Name] == nil {
+			kinds = append(kinds, f.Name)
+		}
+		numbers[f.Name] = append(numbers[f.Name], strconv.Itoa(i+1))
+		atoms[f.Name] = append(atoms[f.Name], names[f.Site])
 	}
-	n := len(b.Functions)
-	t := phi(1)
-	atoms := fmt.Sprintf("%s%d", b.Group.Sites.Elements[first.Site].Symbol(), first.Site+1)
-	if n > 1 {
-		t = t.Then(notation.Words("–"), phi(n))
-		atoms += fmt.Sprintf("–%d", first.Site+n)
+	var t notation.Text
+	for i, kind := range kinds {
+		if i > 0 {
+			t = t.Then(notation.Words("; "))
+		}
+		for k, number := range ends(numbers[kind]) {
+			if k > 0 {
+				t = t.Then(notation.Words(joint(numbers[kind])))
+			}
+			t = t.Then(notation.PhiText(number))
+		}
+		t = t.Then(notation.Words(": "), notation.Function(kind),
+			notation.Words(" on "+strings.Join(ends(atoms[kind]), joint(atoms[kind]))))
 	}
-	return t.Then(notation.Words(": "), notation.Function(first.Name), notation.Words(" on "+atoms))
+	if notation.Width(t.String()) > longestForm {
+		return nil
+	}
+	return t
 }
 
-func phi(n int) notation.Text {
-	return notation.Text{{Text: "φ", Italic: true}, {Text: fmt.Sprint(n), Place: notation.Sub}}
+// ends are the first and the last entry of a list of which the others follow
+// from them, since their numbers run on; else the whole list.
+func ends(list []string) []string {
+	if len(list) > 2 && runsOn(list) {
+		return []string{list[0], list[len(list)-1]}
+	}
+	return list
+}
+
+// joint is what stands between the entries of ends.
+func joint(list []string) string {
+	if len(list) > 2 && runsOn(list) {
+		return "–"
+	}
+	return ", "
+}
+
+// runsOn tells whether a list of names that end in numbers, or of numbers, has
+// one beginning and numbers without gaps.
+func runsOn(list []string) bool {
+	split := func(s string) (string, int) {
+		letters := strings.TrimRight(s, "0123456789")
+		n, _ := strconv.Atoi(s[len(letters):])
+		return letters, n
+	}
+	letters, first := split(list[0])
+	for i, s := range list {
+		if l, n := split(s); l != letters || n != first+i {
+			return false
+		}
+	}
+	return true
 }
 
 // A setCaption is broken into lines and has a height.
@@ -134,7 +181,7 @@ func (c caption) set(width float64, fonts *render.Fonts) setCaption {
 		if line.legend {
 			indent = legendIndent
 		}
-		for i, text := range breakText(line.text, line.size, width-indent, fonts) {
+		for i, text := range line.broken(width-indent, fonts) {
 			piece := line
 			piece.text = text
 			piece.legend = line.legend && i == 0
@@ -148,6 +195,18 @@ func (c caption) set(width float64, fonts *render.Fonts) setCaption {
 		out.lines[i].base += out.height
 	}
 	return out
+}
+
+// broken breaks a line of a caption into lines of a width in millimetres.
+func (line captionLine) broken(width float64, fonts *render.Fonts) []notation.Text {
+	if len(line.beside) == 0 {
+		return breakText(line.text, line.size, width, fonts)
+	}
+	whole := line.text.Then(notation.Words("   "), line.beside)
+	if w, _, _ := fonts.Measure(runs(whole), line.size); w <= width {
+		return []notation.Text{whole}
+	}
+	return append(breakText(line.text, line.size, width, fonts), breakText(line.beside, line.size, width, fonts)...)
 }
 
 // breakText breaks a text at its blanks into lines of a width in millimetres.
@@ -204,7 +263,7 @@ func (s *stage) addCaption(c setCaption) {
 		s.addOnPaper(render.Text{
 			At: mgl64.Vec3{captionMargin + line.indent, line.base}, Runs: set, Size: line.size,
 			AlignX: -1, AlignY: -1, Fixed: true, Through: true,
-		}, render.Material{Color: paint(colour), Opacity: 1, Flat: true, NoOutline: true})
+		}, flat(colour))
 		if line.legend {
 			s.addSigns(line)
 		}
@@ -220,7 +279,7 @@ func (s *stage) addSigns(line setLine) {
 		s.addOnPaper(render.Text{
 			At: mgl64.Vec3{x + signRadius + 0.5, line.base}, Runs: []render.Run{{Text: sign}}, Size: line.size,
 			AlignX: -1, AlignY: -1, Fixed: true, Through: true,
-		}, render.Material{Color: paint(s.palette.Quiet), Opacity: 1, Flat: true, NoOutline: true})
+		}, flat(s.palette.Quiet))
 	}
 }
 
@@ -228,9 +287,4 @@ func (s *stage) addSigns(line setLine) {
 // corner of the picture.
 func (s *stage) addOnPaper(g render.Geometry, m render.Material) {
 	s.scene.Shapes = append(s.scene.Shapes, render.Shape{Geometry: g, Material: m, Place: &render.Place{}})
-}
-
-func cosSin(k, n int) (cos, sin float64) {
-	sin, cos = math.Sincos(2 * math.Pi * float64(k) / float64(n))
-	return cos, sin
 }

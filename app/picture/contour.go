@@ -14,16 +14,25 @@ type angular func(mgl64.Vec3) float64
 // level; both factors are scaled to a maximum of 1. It is empty where |Y| is
 // below level, has two sheets elsewhere, an inner one at the nucleus and an
 // outer one, and these meet in a rim.
-//
-// The drawn lobes are contours with a small power and a high level: own
-// choice. With the power n−1 of a Slater function a lobe is wider than long
-// and neighbours merge; with a smaller one it tapers to the nucleus, as
-// chemists draw it, and keeps every node and sign of the function.
 type contour struct {
 	power, level float64
 }
 
-var drawn = contour{power: 0.22, level: 0.55}
+// contourOf is the contour that is drawn for a shell l: own choice. With the
+// power n−1 of a Slater function a lobe is wider than long and neighbours
+// merge. With a small power it tapers to the nucleus, as chemists draw it. The
+// level of p is high, for slender lobes. Those of d and f are lower, since
+// their smaller lobes (the ring of dz2 with 0.50 of the largest value, those
+// of fz3 with 0.45) have to rise above it.
+func contourOf(shell int) contour {
+	switch shell {
+	case 1:
+		return contour{power: 0.16, level: 0.75}
+	case 2:
+		return contour{power: 0.16, level: 0.35}
+	}
+	return contour{power: 0.16, level: 0.30}
+}
 
 // radial is r^power · e^(−r), scaled to a maximum of 1 (at r = power).
 func (c contour) radial(r float64) float64 {

@@ -1,12 +1,19 @@
 package picture
 
 import (
+	"math"
+
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/work"
 	"lobewright/assets"
 	"lobewright/render"
-	"lobewright/symmetry"
+)
+
+// Axes and planes stick out beyond everything else.
+const (
+	overhang    = 1.05
+	minOverhang = 0.25 // Å
 )
 
 // addElement draws the symmetry element of an operation: an axis for a
@@ -20,9 +27,8 @@ func (s *stage) addElement(g *work.Group, name string) error {
 	if err != nil {
 		return err
 	}
-	// Axes and planes stick out beyond everything by a quarter.
-	_, reach := enclosing(append([]ball{{}}, append(s.atoms, s.lobes...)...))
-	reach *= 1.1
+	centre, reach := enclosing(append(append([]ball(nil), s.atoms...), s.lobes...))
+	reach = overhang*reach + minOverhang
 	turns := op.Turn.Num != 0
 	inverts := turns && op.Turn.Improper && 2*op.Turn.Num == op.Turn.Den
 	switch {
@@ -31,10 +37,10 @@ func (s *stage) addElement(g *work.Group, name string) error {
 	case op.Axis.Len() == 0: // E has no element
 	default:
 		if turns {
-			s.addAxis(op.Axis, reach)
+			s.addAxis(op.Axis, op.Axis.Mul(op.Axis.Dot(centre)), reach)
 		}
 		if op.Turn.Improper {
-			s.addPlane(op, reach)
+			s.addPlane(op.Axis, centre.Sub(op.Axis.Mul(op.Axis.Dot(centre))), reach)
 		}
 	}
 	return nil
@@ -50,22 +56,25 @@ func (s *stage) addCentre() {
 	s.elements = append(s.elements, ball{radius: radius})
 }
 
-func (s *stage) addAxis(axis mgl64.Vec3, reach float64) {
+// addAxis draws an axis through the origin, as far as reach on both sides of
+// its middle.
+func (s *stage) addAxis(axis, middle mgl64.Vec3, reach float64) {
 	const radius = 0.02 // Å
-	tip := axis.Mul(reach)
-	s.scene.Add(render.Cylinder{A: tip.Mul(-1), B: tip, Radius: radius}, s.elementMaterial(1))
-	s.elements = append(s.elements, ball{tip, radius}, ball{tip.Mul(-1), radius})
+	from, to := middle.Sub(axis.Mul(reach)), middle.Add(axis.Mul(reach))
+	s.scene.Add(render.Cylinder{A: from, B: to, Radius: radius}, s.elementMaterial(1))
+	s.elements = append(s.elements, ball{from, radius}, ball{to, radius})
 }
 
-// addPlane is a translucent disc with a full edge.
-func (s *stage) addPlane(op symmetry.Operation, reach float64) {
-	s.scene.Add(render.Disc{Normal: op.Axis, Radius: reach}, s.elementMaterial(assets.PlaneOpacity))
-	u, v := across(op.Axis)
+// addPlane draws a plane through the origin as a translucent disc with a full
+// edge about its middle.
+func (s *stage) addPlane(normal, middle mgl64.Vec3, reach float64) {
+	s.scene.Add(render.Disc{Center: middle, Normal: normal, Radius: reach}, s.elementMaterial(assets.PlaneOpacity))
+	u, v := across(normal)
 	const corners = 96
 	rim := make([]mgl64.Vec3, corners)
 	for k := range rim {
-		cos, sin := cosSin(k, corners)
-		rim[k] = u.Mul(reach * cos).Add(v.Mul(reach * sin))
+		sin, cos := math.Sincos(2 * math.Pi * float64(k) / corners)
+		rim[k] = middle.Add(u.Mul(reach * cos)).Add(v.Mul(reach * sin))
 		s.elements = append(s.elements, ball{rim[k], 0.01})
 	}
 	const edge = 0.25 // mm

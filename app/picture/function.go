@@ -73,13 +73,11 @@ func sizing(size string) func(float64) float64 {
 
 // addCombination draws the lobes of a combination of functions.
 func (s *stage) addCombination(g *work.Group, parts []mixture) {
-	carries := make([]bool, len(g.Sites.Positions))
 	largest := 0.0
 	for _, m := range parts {
-		carries[m.site] = true
 		largest = max(largest, m.amplitude())
 	}
-	unit, size := lobeUnit(g, carries), sizing(s.look.Size)
+	unit, size := lobeUnit(g, s.carries), sizing(s.look.Size)
 	for _, m := range parts {
 		if share := m.amplitude() / largest; share > negligible {
 			s.addMixture(g.Sites.Positions[m.site], m, unit*size(share))
@@ -103,7 +101,7 @@ func (s *stage) addMixture(at mgl64.Vec3, m mixture, length float64) {
 			s.scene.Shapes[len(s.scene.Shapes)-1].Transform = place
 		}
 	}
-	for _, b := range lobeBalls(m.angular()) {
+	for _, b := range lobeBalls(m.angular(), m.shell) {
 		s.lobes = append(s.lobes, ball{at.Add(b.centre.Mul(length)), b.radius * length})
 	}
 }
@@ -113,8 +111,7 @@ func (s *stage) lobeMaterial(sign float64) render.Material {
 	if sign < 0 {
 		colour = s.palette.Minus
 	}
-	m := render.Solid(paint(colour))
-	return m
+	return render.Solid(paint(colour))
 }
 
 // shapeOf returns the meshes of a mixture and the rotation that brings them
@@ -124,12 +121,12 @@ func shapeOf(m mixture) (plus, minus *render.Mesh, turn mgl64.Mat3) {
 		plus, minus = pLobes()
 		return plus, minus, turnFromZ(mgl64.Vec3{m.vector[0], m.vector[1], m.vector[2]}.Normalize())
 	}
-	plus, minus = lobes(m.angular(), fine)
+	plus, minus = lobes(m.angular(), m.shell, fine)
 	return plus, minus, mgl64.Ident3()
 }
 
 var pLobes = sync.OnceValues(func() (plus, minus *render.Mesh) {
-	return lobes(func(d mgl64.Vec3) float64 { return d[2] }, fine)
+	return lobes(func(d mgl64.Vec3) float64 { return d[2] }, 1, fine)
 })
 
 // turnFromZ is a rotation that takes z to a unit vector.
@@ -144,7 +141,7 @@ func turnFromZ(to mgl64.Vec3) mgl64.Mat3 {
 // lobeBalls stand for the lobes of an angular function where views and labels
 // are chosen: one ball at each maximum of |Y|, several along a ring. Lengths
 // are those of lobes.
-func lobeBalls(y angular) []ball {
+func lobeBalls(y angular, shell int) []ball {
 	const half, narrow = 0.55, 0.38 // the middle and half the width of a lobe
 	points, triangles := directions(2)
 	y = normalized(y)
@@ -165,7 +162,7 @@ func lobeBalls(y angular) []ball {
 	}
 	var out []ball
 	for i, p := range points {
-		if highest[i] && values[i] > drawn.level {
+		if highest[i] && values[i] > contourOf(shell).level {
 			out = append(out, ball{p.Mul(half * values[i]), narrow * values[i]})
 		}
 	}

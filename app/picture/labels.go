@@ -29,12 +29,35 @@ func runs(t notation.Text) []render.Run {
 	return out
 }
 
+// labelled tells which atoms get a label: all in small structures, in larger
+// ones those that carry functions or, without functions, all but hydrogen, and
+// none where labels would hide what they name.
+func (s *stage) labelled(g *work.Group, carries []bool) []bool {
+	const few = 14
+	out := make([]bool, len(s.atoms))
+	n := 0
+	for i := range out {
+		switch {
+		case len(out) <= few:
+			out[i] = true
+		case carries != nil:
+			out[i] = carries[i]
+		default:
+			out[i] = g.Sites.Elements[i].Symbol() != "H"
+		}
+		if out[i] {
+			n++
+		}
+	}
+	if n > maxLabelled {
+		clear(out)
+	}
+	return out
+}
+
 // addLabels writes symbol and number beside the atoms, each on the side where
 // it covers least.
 func (s *stage) addLabels(g *work.Group, camera render.Camera, scr screen, fonts *render.Fonts) {
-	if len(s.atoms) > maxLabelled {
-		return
-	}
 	var obstacles []disc
 	for _, b := range append(append([]ball(nil), s.atoms...), s.lobes...) {
 		obstacles = append(obstacles, discOf(camera, b, scr))
@@ -42,18 +65,21 @@ func (s *stage) addLabels(g *work.Group, camera render.Camera, scr screen, fonts
 	obstacles = append(obstacles, s.bondDiscs(g, camera, scr)...)
 	var taken []rectangle
 	names := g.AtomNames()
-	for i, atom := range s.atoms {
-		text := notation.Words(names[i])
-		width, ascent, _ := fonts.Measure(runs(text), labelSize)
+	for i, wanted := range s.labelled(g, s.carries) {
+		if !wanted {
+			continue
+		}
+		atom, text := s.atoms[i], runs(notation.Words(names[i]))
+		width, ascent, _ := fonts.Measure(text, labelSize)
 		around := discOf(camera, atom, scr)
 		place := bestPlace(around, width*scr.pixelsPerMM, ascent*scr.pixelsPerMM, obstacles, taken, scr)
 		taken = append(taken, place.rectangle)
 		s.scene.Add(render.Text{
-			At: atom.centre, Runs: runs(text), Size: labelSize,
+			At: atom.centre, Runs: text, Size: labelSize,
 			OffsetX: (place.left - around.x) / scr.pixelsPerMM, OffsetY: (around.y - place.bottom) / scr.pixelsPerMM,
 			AlignX: -1, AlignY: -1,
 			Halo: haloWidth, HaloColor: paint(s.palette.Ground), Through: true, Fixed: true,
-		}, render.Material{Color: paint(s.palette.Ink), Opacity: 1, Flat: true, NoOutline: true})
+		}, flat(s.palette.Ink))
 	}
 }
 

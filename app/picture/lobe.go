@@ -9,11 +9,12 @@ import (
 )
 
 // lobes returns the closed surfaces of the positive and of the negative lobes
-// of an angular function, about a nucleus at the origin. The farthest point
+// of an angular function of a shell, about a nucleus at the origin. The farthest point
 // of the larger lobes has the distance 1. A surface without lobes is nil.
-func lobes(y angular, detail detail) (plus, minus *render.Mesh) {
+func lobes(y angular, shell int, detail detail) (plus, minus *render.Mesh) {
 	y = normalized(y)
-	return surface(field{drawn, y, +1}, detail), surface(field{drawn, y, -1}, detail)
+	c := contourOf(shell)
+	return surface(field{c, y, +1}, detail), surface(field{c, y, -1}, detail)
 }
 
 // detail is how finely lobes are cut into triangles.

@@ -51,3 +51,8 @@ func mixed(a, b color.NRGBA, share float64) render.Color {
 
 // matt is a surface without highlight, for what is not the subject.
 func matt(c render.Color) render.Material { return render.Material{Color: c, Opacity: 1} }
+
+// flat is a colour without light, for type, lines and signs.
+func flat(c color.NRGBA) render.Material {
+	return render.Material{Color: paint(c), Opacity: 1, Flat: true, NoOutline: true}
+}

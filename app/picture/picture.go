@@ -54,6 +54,7 @@ func Molecule(g *work.Group, s study.Study) (*Picture, error) {
 // Orbital shows one group orbital on the structure.
 func Orbital(o *work.Orbitals, orbital *orbitals.GroupOrbital, s study.Study) (*Picture, error) {
 	st := newStage(s)
+	st.carries = carriers(o.Basis)
 	st.addMolecule(o.Group)
 	st.addCombination(o.Group, mixtures(o.Basis, orbital.Coefficients))
 	return st.finish(o.Group, s, st.roomOf(o.Basis), orbitalCaption(o, orbital, s.Look))
@@ -63,15 +64,20 @@ func newStage(s study.Study) *stage {
 	return &stage{palette: paletteOf(s.Look), look: s.Look}
 }
 
+// carriers marks the atoms that carry functions of a basis.
+func carriers(b *work.Basis) []bool {
+	out := make([]bool, len(b.Group.Sites.Positions))
+	for _, f := range b.Functions {
+		out[f.Site] = true
+	}
+	return out
+}
+
 // roomOf is the room that lobes of any group orbital of a basis can take. The
 // view and the scale follow from it, so that all of them, partners above all,
 // are seen from one place and at one size.
 func (s *stage) roomOf(b *work.Basis) []ball {
-	carries := make([]bool, len(b.Group.Sites.Positions))
-	for _, f := range b.Functions {
-		carries[f.Site] = true
-	}
-	unit := lobeUnit(b.Group, carries)
+	unit := lobeUnit(b.Group, s.carries)
 	var room []ball
 	for _, f := range b.Functions {
 		at := b.Group.Sites.Positions[f.Site]
@@ -79,7 +85,7 @@ func (s *stage) roomOf(b *work.Basis) []ball {
 			room = append(room, ball{at, unit / 2})
 			continue
 		}
-		for _, l := range lobeBalls(f.Value) {
+		for _, l := range lobeBalls(f.Value, f.Shell) {
 			room = append(room, ball{at.Add(l.centre.Mul(unit)), l.radius * unit})
 		}
 	}

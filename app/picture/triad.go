@@ -26,7 +26,7 @@ func (s *stage) addTriad(v view, balls []ball, scr screen, camera render.Camera,
 		OffsetX: triadInset - box.left, OffsetY: max(captionTop, triadInset) + box.bottom,
 		Share: triadShare, Turn: true,
 	}
-	ink := render.Material{Color: paint(s.palette.Ink), Opacity: 1, Flat: true, NoOutline: true}
+	ink := flat(s.palette.Ink)
 	add := func(g render.Geometry) {
 		at := place
 		s.scene.Shapes = append(s.scene.Shapes, render.Shape{Geometry: g, Material: ink, Place: &at})
