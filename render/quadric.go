@@ -42,6 +42,7 @@ type quadric struct {
 	sz     float64
 	nrm    [9]float32
 	length float64
+	toCam  Affine
 }
 
 // wallMode says which side of the two ends of the wall is inside.
@@ -91,7 +92,7 @@ func (f *frame) addBody(p part, local Affine, kind rod, length float64) {
 	if p.box.x0 >= p.box.x1 || p.box.y0 >= p.box.y1 {
 		return
 	}
-	q := quadric{kind: kind, persp: pr.persp, k0: pr.k0, k1: pr.k1, length: length}
+	q := quadric{kind: kind, persp: pr.persp, k0: pr.k0, k1: pr.k1, length: length, toCam: local}
 	q.safe = !pr.persp || -hi[2]*pr.nMax >= 1
 	if p.box != everywhere {
 		q.mx, q.my = math.Floor((p.box.x0+p.box.x1)/2), math.Floor((p.box.y0+p.box.y1)/2)

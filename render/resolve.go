@@ -46,7 +46,8 @@ func (t *tile) resolve(out image.Rectangle) {
 	at := d.Rect.Min.Sub(f.rect.Min)
 	ground := f.groundPixel()
 	n := 1 << t.lg
-	if f.light.style == Ink {
+	inked := f.ink.half > 0
+	if inked {
 		t.drawInk(out)
 	}
 	var s sight
@@ -63,15 +64,19 @@ func (t *tile) resolve(out image.Rectangle) {
 			for _, k := range keys {
 				any |= uint32(k)
 			}
-			if any == 0 && !layered {
+			line := inked && t.lines.dist[i] < 1e9
+			if any == 0 && !layered && !line {
 				o[0], o[1], o[2], o[3] = ground[0], ground[1], ground[2], ground[3]
 				continue
 			}
 			f.light.sightAt(float32(x)+0.5, float32(y)+0.5, &s)
 			var c [4]float32
-			if layered {
+			switch {
+			case layered:
 				c = t.blend(keys, i, px, py, &s)
-			} else {
+			case line:
+				c = t.under(t.solid(keys, px, py, &s), f.inked(t.lines.dist[i]))
+			default:
 				c = t.solid(keys, px, py, &s)
 			}
 			v := f.pixel(c[0], c[1], c[2], c[3])
@@ -157,6 +162,16 @@ func (t *tile) solid(keys []uint64, px, py int, s *sight) [4]float32 {
 	return c
 }
 
+// under returns a colour with a line drawn over it.
+func (t *tile) under(c [4]float32, a float32) [4]float32 {
+	l := &t.f.light.line
+	for k := range 3 {
+		c[k] += a * (l[k] - c[k])
+	}
+	c[3] += a * (1 - c[3])
+	return c
+}
+
 // blend returns the colour of a pixel with translucent layers: for every
 // sample the layers in front of its opaque surface, from front to back.
 func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
@@ -175,8 +190,32 @@ func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
 	}
 	full := uint32(1)<<n - 1
 	same := true // all samples alike so far
+	line := float32(0)
+	if t.f.ink.half > 0 && t.lines.dist[i] < 1e9 {
+		line = t.f.inked(t.lines.dist[i])
+	}
+	draw := func() {
+		c := &t.f.light.line
+		for k := range acc {
+			w := acc[k][3] * line
+			if same {
+				w = acc[0][3] * line
+			}
+			acc[k][0] += w * c[0]
+			acc[k][1] += w * c[1]
+			acc[k][2] += w * c[2]
+			acc[k][3] -= w
+			if same {
+				break
+			}
+		}
+		line = 0
+	}
 	for _, k := range list {
 		fr := &t.frags[k]
+		if line > 0 && fr.n < t.lines.near[i] {
+			draw()
+		}
 		r, g, b, a := t.fragColor(fr, px, py, s)
 		if fr.mask == full && same {
 			w := acc[0][3] * a
@@ -200,6 +239,9 @@ func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
 			c[2] += w * b
 			c[3] -= w
 		}
+	}
+	if line > 0 {
+		draw()
 	}
 	if same {
 		for k := 1; k < n; k++ {
@@ -248,6 +290,10 @@ func (t *tile) fragColor(fr *frag, px, py int, s *sight) (r, g, b, a float32) {
 	p := &t.f.parts[t.slots[fr.slot].part]
 	if p.form == formLabel {
 		return t.labelColor(p, px, py)
+	}
+	if t.slots[fr.slot].batch == -2 {
+		c := &t.f.light.line
+		return c[0], c[1], c[2], fr.nx
 	}
 	mx, my := t.middle(fr.mask)
 	r, g, b = t.shadePlace(fr.slot, float32(px)+mx, float32(py)+my, s)

@@ -5,6 +5,7 @@ import "math"
 // surf is what a sample's surface shows at one place.
 type surf struct {
 	part   *part
+	index  int32   // of the part
 	n      float32 // nearness
 	nx, ny float32 // its growth to the right and down
 	// The normal in camera space, not of unit length, as the surface has it:
@@ -90,7 +91,7 @@ func (t *tile) lookAt(k uint32, x, y float32) *surf {
 	o := &t.surf
 	f := t.f
 	p := &f.parts[s.part]
-	o.part = p
+	o.part, o.index = p, s.part
 	switch p.form {
 	case formMesh:
 		t.lookAtMesh(o, s, x, y)
@@ -149,9 +150,11 @@ func (t *tile) lookAtMesh(o *surf, s *slot, x, y float32) {
 	}
 	// Stay within the triangle: the place may be a pixel's middle that
 	// belongs to its neighbour.
-	wb, wc = max(wb, 0), max(wc, 0)
-	if sum := wb + wc; sum > 1 {
-		wb, wc = wb/sum, wc/sum
+	if !t.free {
+		wb, wc = max(wb, 0), max(wc, 0)
+		if sum := wb + wc; sum > 1 {
+			wb, wc = wb/sum, wc/sum
+		}
 	}
 	wa := 1 - wb - wc
 	o.n = wa*a.n + wb*b.n + wc*c.n

@@ -30,6 +30,8 @@ type tile struct {
 	anyFrag     bool
 
 	surf    surf
+	free    bool // look beyond the edges of a triangle
+	inks    []inkFrag
 	samples [16][4]float32
 	sorted  []int32
 	lines   inkTile
@@ -115,6 +117,7 @@ func (t *tile) reset() {
 	}
 	t.slots = append(t.slots[:0], slot{part: -1})
 	t.frags = t.frags[:0]
+	t.inks = t.inks[:0]
 	t.anyFrag = false
 }
 
@@ -147,12 +150,13 @@ func (t *tile) see(list []int32) {
 			continue
 		}
 		if it.part != last {
-			t.flush()
+			t.flush(last)
 			last = it.part
 		}
 		t.translucent(it, p)
 	}
-	t.flush()
+	t.flush(last)
+	t.addInks()
 }
 
 // opaque draws an item whose samples hide what is behind them.
@@ -429,7 +433,10 @@ func (t *tile) cover(l *layer, py, x, k int, n float32, slot uint32) {
 }
 
 // flush turns what the layers hold into fragments.
-func (t *tile) flush() {
+func (t *tile) flush(part int32) {
+	if t.front.any {
+		t.inkLayer(&t.front, part)
+	}
 	for _, l := range [2]*layer{&t.front, &t.back} {
 		if !l.any {
 			continue

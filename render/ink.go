@@ -1,0 +1,468 @@
+package render
+
+import (
+	"image"
+	"math"
+	"math/bits"
+)
+
+// The ink look draws a line wherever two sheets of surface meet on the
+// picture: at silhouettes, where bodies cut each other, at creases and where
+// a body hides a part of itself. Between the middles of two neighbouring
+// pixels that show different sheets the border is placed by how many samples
+// of the two pixels belong to each; the border points around a corner of four
+// pixels are joined by straight pieces, and a pixel is inked by its distance
+// from the nearest piece. So lines have one width everywhere, whatever the
+// number of samples.
+
+type ink struct {
+	half float32 // half the width of outlines in pixels
+}
+
+// inkTile is what a tile needs for lines.
+type inkTile struct {
+	cells []cell
+	dist  []float32 // to the nearest piece of line
+	near  []float32 // nearness of that line
+	touch []int32   // pixels that dist was set for
+	right []border  // between a pixel and the next on its right
+	down  []border  // between a pixel and the next below
+}
+
+// cell is what a pixel shows for the most part.
+type cell struct {
+	slot      uint32
+	part      int32 // -1 for the ground
+	n, nx, ny float32
+	x, y, z   float32 // unit normal
+	full      bool    // all samples show this part
+	needed    bool
+}
+
+// border is a place where a line crosses the way from one pixel's middle to
+// the next's: at is its share of the way.
+type border struct {
+	on   bool
+	at   float32
+	near float32
+}
+
+// inkApron returns the width of the apron that lines need.
+func (f *frame) inkApron() int {
+	f.ink.half = 0
+	if f.look.Style != Ink || !(f.look.OutlineWidth > 0) {
+		return 0
+	}
+	f.ink.half = float32(f.look.OutlineWidth * f.pxPerMM / 2)
+	// The farthest middle of a pixel that a line reaches, and one more for
+	// the pixels on the other side of the border.
+	return min(int(math.Ceil(float64(f.ink.half)+0.5))+1, 64)
+}
+
+// creaseCos is the cosine of the angle between normals from which on a crease
+// is drawn: 45°.
+const creaseCos = 0.7071
+
+// drawInk finds the lines between opaque surfaces. It is called when the
+// samples are known and fills dist and near.
+func (t *tile) drawInk(out image.Rectangle) {
+	if !(t.f.ink.half > 0) {
+		return
+	}
+	k := &t.lines
+	n := t.side * t.side
+	k.cells = grow(k.cells, n)
+	k.ready(n)
+	t.fillCells()
+	any := false
+	for y := t.clip.Min.Y; y < t.clip.Max.Y; y++ {
+		for x := t.clip.Min.X; x < t.clip.Max.X; x++ {
+			i := y*t.side + x
+			if x+1 < t.clip.Max.X && t.differ(i, i+1, 1, 0, &k.right[i]) {
+				any = true
+			}
+			if y+1 < t.clip.Max.Y && t.differ(i, i+t.side, 0, 1, &k.down[i]) {
+				any = true
+			}
+		}
+	}
+	if any {
+		t.join(t.clip)
+	}
+}
+
+// ready makes the buffers fit a canvas of n pixels and empties them.
+func (k *inkTile) ready(n int) {
+	if len(k.dist) != n {
+		k.dist, k.near = make([]float32, n), make([]float32, n)
+		k.right, k.down = make([]border, n), make([]border, n)
+		for i := range k.dist {
+			k.dist[i] = 1e9
+		}
+		k.touch = k.touch[:0]
+	}
+	for _, i := range k.touch {
+		k.dist[i] = 1e9
+	}
+	k.touch = k.touch[:0]
+	clear(k.right)
+	clear(k.down)
+}
+
+// fillCells finds what every pixel shows for the most part.
+func (t *tile) fillCells() {
+	n := 1 << t.lg
+	full := uint32(1)<<n - 1
+	for y := t.clip.Min.Y; y < t.clip.Max.Y; y++ {
+		for x := t.clip.Min.X; x < t.clip.Max.X; x++ {
+			i := y*t.side + x
+			c := &t.lines.cells[i]
+			keys := t.keys[i<<t.lg:][:n]
+			any := uint32(0)
+			for _, k := range keys {
+				any |= uint32(k)
+			}
+			if any == 0 {
+				*c = cell{part: -1, full: true}
+				continue
+			}
+			best, bestSlot := uint32(0), uint32(0)
+			for todo := full; todo != 0; {
+				mask, slot := t.partGroup(keys, todo)
+				todo &^= mask
+				if bits.OnesCount32(mask) > bits.OnesCount32(best) {
+					best, bestSlot = mask, slot
+				}
+			}
+			*c = cell{slot: bestSlot, part: -1, full: best == full}
+			if bestSlot == 0 {
+				continue
+			}
+			mx, my := t.middle(best)
+			o := t.lookAt(bestSlot, float32(x)+mx, float32(y)+my)
+			s := 1 / float32(math.Sqrt(float64(o.x*o.x+o.y*o.y+o.z*o.z)+1e-30))
+			if o.z < 0 && !o.outward || o.outward && !o.facing {
+				s = -s
+			}
+			c.part, c.x, c.y, c.z = o.index, o.x*s, o.y*s, o.z*s
+			c.n, c.nx, c.ny = t.plane(bestSlot, float32(x)+0.5, float32(y)+0.5)
+		}
+	}
+}
+
+// partGroup is like group, but takes all surfaces of a part as one.
+func (t *tile) partGroup(keys []uint64, todo uint32) (mask, slot uint32) {
+	slot = uint32(keys[bits.TrailingZeros32(todo)])
+	part := t.slots[slot].part
+	count := 0
+	for m := todo; m != 0; m &= m - 1 {
+		k := bits.TrailingZeros32(m)
+		if t.slots[uint32(keys[k])].part == part {
+			mask |= 1 << k
+			count++
+			if count&1 == 0 {
+				slot = uint32(keys[k])
+			}
+		}
+	}
+	return mask, slot
+}
+
+// differ tells whether a line runs between the pixels i and j, which lie next
+// to each other in direction (dx, dy), and fills in where.
+func (t *tile) differ(i, j int, dx, dy float32, b *border) bool {
+	p, q := &t.lines.cells[i], &t.lines.cells[j]
+	if p.part < 0 && q.part < 0 {
+		return false
+	}
+	if p.part != q.part {
+		front := p
+		if p.part < 0 || q.part >= 0 && q.n > p.n {
+			front = q
+		}
+		if !t.f.parts[front.part].outline {
+			return false
+		}
+		b.on, b.near = true, front.n
+		b.at = t.between(i, j, p.part, q.part)
+		return true
+	}
+	if !t.f.parts[p.part].outline {
+		return false
+	}
+	gp, gq := p.nx*dx+p.ny*dy, q.nx*dx+q.ny*dy
+	jump := abs32((p.n + gp/2) - (q.n - gq/2))
+	pr := &t.f.projs[t.f.parts[p.part].proj]
+	// A jump in depth of more than some pixels, and more than the slopes
+	// account for.
+	pixel := float32(pr.k1 / pr.f)
+	if pr.persp {
+		pixel = p.n / float32(pr.f)
+	}
+	if !(jump > 6*pixel && jump > 3*min(abs32(gp), abs32(gq))) && p.x*q.x+p.y*q.y+p.z*q.z > creaseCos {
+		return false
+	}
+	b.on, b.near = true, max(p.n, q.n)
+	b.at = t.betweenPlanes(i, j, dx, dy)
+	return true
+}
+
+func abs32(v float32) float32 {
+	if v < 0 {
+		return -v
+	}
+	return v
+}
+
+// between returns the place of the border between the parts p and q from the
+// samples of the pixels i and j.
+func (t *tile) between(i, j int, p, q int32) float32 {
+	n := 1 << t.lg
+	cp, cq := 0, 0
+	for _, at := range [2]int{i, j} {
+		for _, k := range t.keys[at<<t.lg:][:n] {
+			switch t.slots[uint32(k)].part {
+			case p:
+				cp++
+			case q:
+				cq++
+			}
+		}
+	}
+	if cp+cq == 0 {
+		return 0.5
+	}
+	return min(1, max(0, 2*float32(cp)/float32(cp+cq)-0.5))
+}
+
+// betweenPlanes does the same for two sheets of one part: a sample belongs to
+// the one in whose plane it lies.
+func (t *tile) betweenPlanes(i, j int, dx, dy float32) float32 {
+	n := 1 << t.lg
+	p, q := &t.lines.cells[i], &t.lines.cells[j]
+	cp := 0
+	for s, at := range [2]int{i, j} {
+		for k, key := range t.keys[at<<t.lg:][:n] {
+			x, y := float32(t.sx[k&15])-0.5, (float32(k)+0.5)/float32(n)-0.5
+			z := math.Float32frombits(uint32(key >> 32))
+			far := float32(s)
+			zp := p.n + p.nx*(x+far*dx) + p.ny*(y+far*dy)
+			zq := q.n + q.nx*(x-(1-far)*dx) + q.ny*(y-(1-far)*dy)
+			if abs32(z-zp) <= abs32(z-zq) {
+				cp++
+			}
+		}
+	}
+	return min(1, max(0, float32(cp)/float32(n)-0.5))
+}
+
+// join makes pieces of line from the borders around every corner of four
+// pixels and measures the pixels near them.
+func (t *tile) join(area image.Rectangle) {
+	k := &t.lines
+	for y := area.Min.Y; y+1 < area.Max.Y; y++ {
+		for x := area.Min.X; x+1 < area.Max.X; x++ {
+			i := y*t.side + x
+			top, bottom, left, right := &k.right[i], &k.right[i+t.side], &k.down[i], &k.down[i+1]
+			if !top.on && !bottom.on && !left.on && !right.on {
+				continue
+			}
+			var px, py, pn [4]float32
+			n := 0
+			add := func(b *border, x, y float32) {
+				if b.on {
+					px[n], py[n], pn[n] = x, y, b.near
+					n++
+				}
+			}
+			fx, fy := float32(x)+0.5, float32(y)+0.5
+			add(top, fx+top.at, fy)
+			add(right, fx+1, fy+right.at)
+			add(bottom, fx+bottom.at, fy+1)
+			add(left, fx, fy+left.at)
+			if n == 2 {
+				t.measure(px[0], py[0], px[1], py[1], max(pn[0], pn[1]))
+				continue
+			}
+			// A single end, or more than two sheets: lines to the middle.
+			var mx, my float32
+			for j := range n {
+				mx, my = mx+px[j]/float32(n), my+py[j]/float32(n)
+			}
+			for j := range n {
+				t.measure(px[j], py[j], mx, my, pn[j])
+			}
+		}
+	}
+}
+
+// measure notes the distance of pixels from a short piece of line.
+func (t *tile) measure(x0, y0, x1, y1, near float32) {
+	k := &t.lines
+	reach := t.f.ink.half + 0.5
+	ax, bx := int(min(x0, x1)-reach-0.5), int(max(x0, x1)+reach+0.5)
+	ay, by := int(min(y0, y1)-reach-0.5), int(max(y0, y1)+reach+0.5)
+	ax, ay = max(ax, t.clip.Min.X), max(ay, t.clip.Min.Y)
+	bx, by = min(bx, t.clip.Max.X-1), min(by, t.clip.Max.Y-1)
+	dx, dy := x1-x0, y1-y0
+	l2 := dx*dx + dy*dy
+	inv := float32(0)
+	if l2 > 1e-12 {
+		inv = 1 / l2
+	}
+	for y := ay; y <= by; y++ {
+		for x := ax; x <= bx; x++ {
+			ex, ey := float32(x)+0.5-x0, float32(y)+0.5-y0
+			s := min(1, max(0, (ex*dx+ey*dy)*inv))
+			ex, ey = ex-s*dx, ey-s*dy
+			d := ex*ex + ey*ey
+			i := y*t.side + x
+			if d < k.dist[i] && d < reach*reach {
+				if k.dist[i] >= 1e9 {
+					k.touch = append(k.touch, int32(i))
+				}
+				k.dist[i], k.near[i] = d, near
+			}
+		}
+	}
+}
+
+// inked returns how much of a pixel a line covers, given the square of its
+// distance. Lines thinner than a pixel are paler.
+func (f *frame) inked(d2 float32) float32 {
+	d := float32(math.Sqrt(float64(d2)))
+	h := f.ink.half
+	return min(1, max(0, h+0.5-d)) * min(1, 2*h)
+}
+
+// inkLayer draws the outline of a translucent sheet as fragments: where the
+// samples of the layer end.
+func (t *tile) inkLayer(l *layer, part int32) {
+	f := t.f
+	if !(f.ink.half > 0) || !f.parts[part].outline {
+		return
+	}
+	k := &t.lines
+	k.ready(t.side * t.side)
+	area := t.clip
+	area.Min.Y, area.Max.Y = max(area.Min.Y, l.y0-1), min(area.Max.Y, l.y1+2)
+	n := float32(int(1) << t.lg)
+	any := false
+	meet := func(i, j int, b *border) {
+		p, q := l.mask[i], l.mask[j]
+		if p == q {
+			return
+		}
+		cp, cq := float32(bits.OnesCount32(p))/n, float32(bits.OnesCount32(q))/n
+		if (cp >= 0.5) == (cq >= 0.5) {
+			return
+		}
+		at := cp + cq - 0.5
+		slot := l.slot[i]
+		if cp < 0.5 {
+			at = 1 - at
+			slot = l.slot[j]
+		}
+		b.on, b.at = true, min(1, max(0, at))
+		b.near, _, _ = t.plane(slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
+		any = true
+	}
+	for y := area.Min.Y; y < area.Max.Y; y++ {
+		for x := area.Min.X; x < area.Max.X; x++ {
+			i := y*t.side + x
+			if x+1 < area.Max.X {
+				meet(i, i+1, &k.right[i])
+			}
+			if y+1 < area.Max.Y {
+				meet(i, i+t.side, &k.down[i])
+			}
+		}
+	}
+	if !any {
+		return
+	}
+	t.join(area)
+	for _, i := range k.touch {
+		t.inks = append(t.inks, inkFrag{pixel: i, n: k.near[i], a: f.inked(k.dist[i]), part: part})
+	}
+}
+
+// inkFrag is a pixel of a translucent sheet's outline.
+type inkFrag struct {
+	pixel, part int32
+	n, a        float32
+}
+
+// addInks turns the outlines of translucent sheets into fragments. Their slot
+// names the part alone.
+func (t *tile) addInks() {
+	if len(t.inks) == 0 {
+		return
+	}
+	slot := uint32(0)
+	last := int32(-1)
+	for _, k := range t.inks {
+		if k.a <= 0 {
+			continue
+		}
+		if k.part != last || slot == 0 {
+			last, slot = k.part, uint32(len(t.slots))
+			t.slots = append(t.slots, lineSlot(k.part))
+		}
+		mask := uint32(0)
+		key := uint64(math.Float32bits(k.n))<<32 | math.MaxUint32
+		for s, v := range t.keys[int(k.pixel)<<t.lg:][:1<<t.lg] {
+			if key > v {
+				mask |= 1 << s
+			}
+		}
+		if mask == 0 {
+			continue
+		}
+		t.frags = append(t.frags, frag{next: t.first[k.pixel], slot: slot, mask: mask, n: k.n, nx: k.a})
+		t.first[k.pixel] = int32(len(t.frags) - 1)
+		t.anyFrag = true
+	}
+}
+
+// lineSlot marks fragments that are a part's outline, not its surface.
+func lineSlot(part int32) slot { return slot{part, -2, 0} }
+
+// tone returns the share of the colour that the ink look shows where the
+// light is nl. The step from one tone to the next is soft over some pixels.
+func (t *tile) tone(k uint32, nl, x, y float32, s *sight) float32 {
+	l := &t.f.light
+	m := l.tones[0]
+	for i := 1; i < l.nTones; i++ {
+		d := nl - l.edges[i-1]
+		step := l.tones[i] - m
+		switch {
+		case d > 0.4:
+			m += step
+		case d > -0.4:
+			w := max(t.lightSlope(k, x, y)*max(l.soft, 0.7), 1e-6)
+			v := min(1, max(0, d/w+0.5))
+			m += step * v * v * (3 - 2*v)
+		}
+	}
+	return m
+}
+
+// lightSlope returns how much the key light changes over a pixel.
+func (t *tile) lightSlope(k uint32, x, y float32) float32 {
+	keep := t.surf
+	a := t.keyLight(k, x-0.5, y)
+	b := t.keyLight(k, x+0.5, y)
+	c := t.keyLight(k, x, y-0.5)
+	d := t.keyLight(k, x, y+0.5)
+	t.surf = keep
+	return float32(math.Sqrt(float64((b-a)*(b-a) + (d-c)*(d-c))))
+}
+
+func (t *tile) keyLight(k uint32, x, y float32) float32 {
+	t.free = true
+	o := t.lookAt(k, x, y)
+	t.free = false
+	l := &t.f.light
+	return (o.x*l.kx + o.y*l.ky + o.z*l.kz) / float32(math.Sqrt(float64(o.x*o.x+o.y*o.y+o.z*o.z)+1e-30))
+}
