@@ -328,3 +328,28 @@ func TestBadPointsAreRefused(t *testing.T) {
 		}
 	}
 }
+
+// Noise beyond the tolerance leaves some lower group: whichever it is, it is
+// within the tolerance, and the same in every orientation and order.
+func TestNoisyStructuresHaveOneGroupInEveryOrientation(t *testing.T) {
+	rng := rand.New(rand.NewSource(11))
+	for _, m := range publishedStructures(t) {
+		for _, noise := range []float64{0.02, 0.04, 0.08} {
+			points, _ := shuffled(m.points(t), noise, rng)
+			base := mustDetect(t, points, 0)
+			consistent(t, m.Name, points, base)
+			for range 2 {
+				turned, _ := shuffled(points, 0, rng)
+				fit := mustDetect(t, turned, 0)
+				consistent(t, m.Name, turned, fit)
+				if fit.Setting.Symbol != base.Setting.Symbol || math.Abs(fit.Deviation-base.Deviation) > 1e-7 || fit.Doubtful != base.Doubtful {
+					t.Errorf("%s with noise %g: %s off by %g (doubtful %v), turned %s off by %g (%v)", m.Name, noise,
+						base.Setting.Symbol, base.Deviation, base.Doubtful, fit.Setting.Symbol, fit.Deviation, fit.Doubtful)
+				}
+				if got, want := coordinateSet(turned, fit), coordinateSet(points, base); strings.Join(got, "|") != strings.Join(want, "|") {
+					t.Errorf("%s with noise %g: another orientation gives other coordinates (ties %v)", m.Name, noise, fit.Ties)
+				}
+			}
+		}
+	}
+}

@@ -34,15 +34,18 @@ func (c *cloud) place(group []*element) (*placed, bool) {
 		return nil, false
 	}
 	p.rotation = rec.axes()
-	if !p.assign(group) {
-		if !rec.kind.icosahedral() {
-			return nil, false
+	misfit, ok := p.assign(group)
+	if rec.kind.icosahedral() {
+		// The three C2 can be taken in two ways that differ by 90°; the other
+		// one may do.
+		other := *p
+		other.rotation = turnAboutZ(1, 4).Mul3(p.rotation)
+		if m, good := other.assign(group); good && (!ok || m < misfit) {
+			*p, ok = other, true
 		}
-		// The three C2 can be taken in two ways that differ by 90°.
-		p.rotation = turnAboutZ(1, 4).Mul3(p.rotation)
-		if !p.assign(group) {
-			return nil, false
-		}
+	}
+	if !ok {
+		return nil, false
 	}
 	p.settle(c)
 	return p, true
@@ -71,9 +74,10 @@ func perpendicular(z mgl64.Vec3) mgl64.Vec3 {
 	return x.Sub(z.Mul(x.Dot(z))).Normalize()
 }
 
-// assign tells which matrix each element is. False: two are the same, or the
-// senses do not agree, so that the axes cannot be right.
-func (p *placed) assign(group []*element) bool {
+// assign tells which matrix each element is, and the sum of the squares of what
+// is left between them. False: two are the same, so that the axes cannot be
+// right.
+func (p *placed) assign(group []*element) (misfit float64, ok bool) {
 	p.permutations = make([][]int32, len(group))
 	for _, e := range group {
 		m := p.rotation.Mul3(e.matrix).Mul3(p.rotation.Transpose())
@@ -91,11 +95,12 @@ func (p *placed) assign(group []*element) bool {
 			}
 		}
 		if best < 0 || p.permutations[best] != nil {
-			return false
+			return 0, false
 		}
 		p.permutations[best] = e.permutation
+		misfit += least
 	}
-	return true
+	return misfit, true
 }
 
 // settled (radians) is a turn too small to matter: the ideal points have the
@@ -164,18 +169,27 @@ func orthonormal(m mgl64.Mat3) mgl64.Mat3 {
 	return mgl64.Mat3FromRows(x, y, x.Cross(y))
 }
 
+// A search looks for the largest group near a cloud. It remembers what it has
+// placed, since many ways of growing a group lead through the same subgroups.
+type search struct {
+	cloud     *cloud
+	tolerance float64
+	seen      map[elementKey]*placed
+}
+
 // strongest finds the largest group, within tolerance, that the candidate
 // elements generate. They are taken by rising mismatch, each if the group that
 // it makes with those taken already is still near enough. If some had to be
 // left out, each of these is tried as the first in its turn, and the largest
 // group wins, the nearer one among equals.
 func (c *cloud) strongest(list []*element, tolerance float64) *placed {
-	best, left := c.greedy(nil, list, tolerance)
+	s := search{c, tolerance, map[elementKey]*placed{}}
+	best, left := s.greedy(nil, list)
 	for i, e := range left {
 		if i == mostRestarts {
 			break
 		}
-		other, _ := c.greedy(e, list, tolerance)
+		other, _ := s.greedy(e, left)
 		if other == nil {
 			continue
 		}
@@ -190,18 +204,15 @@ func (c *cloud) strongest(list []*element, tolerance float64) *placed {
 // at once; an octahedron distorted in two ways leaves out some thirty.
 const mostRestarts = 48
 
-// greedy returns the group and the elements left out; nil if first alone makes
-// no group within tolerance.
-func (c *cloud) greedy(first *element, list []*element, tolerance float64) (best *placed, left []*element) {
+// greedy returns the group and those elements left out that are near enough by
+// themselves; nil if first alone makes no group within tolerance.
+func (s *search) greedy(first *element, list []*element) (best *placed, left []*element) {
 	var generators []*element
 	known := map[elementKey]bool{}
 	try := func(e *element) bool {
-		group := c.generate(append(generators[:len(generators):len(generators)], e), 4*MaxFold)
-		if group == nil {
-			return false
-		}
-		p, ok := c.place(group)
-		if !ok || p.deviation > tolerance {
+		group := s.cloud.generate(append(generators[:len(generators):len(generators)], e), 4*MaxFold)
+		p := s.place(group)
+		if p == nil {
 			return false
 		}
 		best = p
@@ -212,17 +223,47 @@ func (c *cloud) greedy(first *element, list []*element, tolerance float64) (best
 		return true
 	}
 	if first == nil {
-		first = c.generate(nil, 1)[0]
+		first = s.cloud.generate(nil, 1)[0]
 	}
 	if !try(first) {
 		return nil, nil
 	}
 	for _, e := range list {
-		// An element of the group moves no point by more than twice the
-		// deviation; the best matrix for all points may do worse for one.
-		if !known[e.key()] && e.mismatch <= 3*tolerance && !try(e) {
+		switch {
+		case known[e.key()]:
+		case e.mismatch > 3*s.tolerance:
+			// An element of the group moves no point by more than twice the
+			// deviation; the best matrix for all may do worse for one.
+		case s.place(s.cloud.generate([]*element{e}, 4*MaxFold)) == nil:
+			// not even the powers of it are near enough
+		case !try(e):
 			left = append(left, e)
 		}
 	}
 	return best, left
+}
+
+// place fits a group and returns it if it is within tolerance, else nil.
+func (s *search) place(group []*element) *placed {
+	if group == nil {
+		return nil
+	}
+	var key elementKey // the same for the same elements in any order
+	for _, e := range group {
+		k := e.key()
+		key.hash += k.hash * k.hash
+		key.improper = key.improper != k.improper
+		if k.improper {
+			key.hash += k.hash
+		}
+	}
+	if p, ok := s.seen[key]; ok {
+		return p
+	}
+	p, ok := s.cloud.place(group)
+	if !ok || p.deviation > s.tolerance {
+		p = nil
+	}
+	s.seen[key] = p
+	return p
 }

@@ -187,13 +187,17 @@ func (f *framing) mostLinked(among []int) (best int, tie bool) {
 			best = k
 			continue
 		}
-		switch compare(
-			[]float64{degree[k], float64(f.kinds[k]), -f.points[k].Len()},
-			[]float64{degree[best], float64(f.kinds[best]), -f.points[best].Len()}, f.tolerance) {
-		case 1:
-			best, tie = k, false
-		case 0:
+		mine := []float64{degree[k], float64(f.kinds[k]), -f.points[k].Len()}
+		other := []float64{degree[best], float64(f.kinds[best]), -f.points[best].Len()}
+		order := compare(mine, other, f.tolerance)
+		switch {
+		case order == 0:
 			tie = true
+		case order > 0:
+			tie = false
+		}
+		if compare(mine, other, 1e-9) > 0 {
+			best = k
 		}
 	}
 	return best, tie
