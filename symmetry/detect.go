@@ -35,8 +35,8 @@ type Options struct {
 // points that they carry into each other, and the group by what they generate.
 //
 // It returns an error for no points, for coordinates that are no numbers, for
-// a tolerance that is negative or so large that two points of one kind could
-// be exchanged, and where the order of an axis exceeds MaxFold.
+// a negative tolerance, where the order of an axis exceeds MaxFold, and a
+// *CloseError for a tolerance that two points of one kind are too close for.
 func Detect(points []Point, links []Link, options Options) (*Fit, error) {
 	tolerance := options.Tolerance
 	if tolerance == 0 {
@@ -51,8 +51,7 @@ func Detect(points []Point, links []Link, options Options) (*Fit, error) {
 	c := newCloud(points)
 	closest, a, b := c.closestLike(2 * cellSize)
 	if a >= 0 && tolerance >= closest/2 {
-		return nil, fmt.Errorf("tolerance %g Å is too large: points %d and %d of the same kind are only %.3f Å apart; take less than half of that",
-			tolerance, a+1, b+1, closest)
+		return nil, &CloseError{A: a, B: b, Distance: closest, Tolerance: tolerance}
 	}
 	if axis, ok := c.line(tolerance); ok {
 		return c.detectLinear(axis, links, tolerance), nil
@@ -70,6 +69,19 @@ func Detect(points []Point, links []Link, options Options) (*Fit, error) {
 		fit.Doubtful = c.strongest(list, looser).kind != best.kind
 	}
 	return fit, nil
+}
+
+// A CloseError says that the tolerance is so large that two points of one kind
+// could be taken for each other.
+type CloseError struct {
+	A, B                int     // the points, by index
+	Distance, Tolerance float64 // Å
+}
+
+// Error counts the points from 1.
+func (e *CloseError) Error() string {
+	return fmt.Sprintf("tolerance %g Å is too large: points %d and %d of the same kind are only %.3f Å apart; take less than half of that",
+		e.Tolerance, e.A+1, e.B+1, e.Distance)
 }
 
 // farAway (Å) is a coordinate beyond which a structure is no molecule and
