@@ -16,7 +16,7 @@ import (
 func groupFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.StringVar(&s.Core, "core", "", "`ATOMS` that decide the group, such as Cu,O or 1-5 (default all)")
 	flags.StringVar(&s.Ignore, "ignore", "", "`ATOMS` that do not decide the group, such as H")
-	flags.Var(&positive{&s.Tolerance, study.DefaultTolerance}, "tolerance", "how far an atom may lie from its ideal place, in `Å`")
+	flags.Var(&positive{&s.Tolerance, study.DefaultTolerance}, "tolerance", "how far an atom may lie from its ideal place, a `LENGTH` in Å")
 	flags.StringVar(&s.Frame, "frame", "", "`RULE` that puts the axes (default \"default\")")
 }
 

@@ -76,7 +76,7 @@ func (p *program) write(text string) error {
 
 const (
 	maxAtomsShown        = 60 // in the table of atoms
-	maxPermutationsShown = 16 // atoms, in the table of operations
+	maxPermutationsShown = 16 // core atoms, in the table of operations
 )
 
 // groupText lays out all that is known of a group.
@@ -89,12 +89,23 @@ func groupText(g *work.Group, matrices bool) string {
 		b.WriteString("\nThe group has infinitely many operations; project lists the irreps that occur.\n")
 		return b.String()
 	}
-	b.WriteString("\nOperations\n" + table.Operations(setting, g.Sites.Permutations, maxPermutationsShown).Text())
+	b.WriteString("\nOperations\n" + operationsTable(g).Text())
 	b.WriteString("\nCharacters\n" + table.Characters(setting).Text())
 	if matrices {
 		b.WriteString("\nMatrices (column k: what becomes of partner k)\n" + table.Matrices(setting).Text())
 	}
 	return b.String()
+}
+
+// operationsTable shows where the operations carry the core, if that is not
+// too wide.
+func operationsTable(g *work.Group) table.Table {
+	if len(g.Core) <= maxPermutationsShown {
+		return table.Operations(g.Fit.Setting, g.Sites.Permutations, g.Core)
+	}
+	t := table.Operations(g.Fit.Setting, nil, nil)
+	t.Notes = append(t.Notes, fmt.Sprintf("(where the %d atoms go: --json)", len(g.Sites.Positions)))
+	return t
 }
 
 // headText names structure, group and frame.

@@ -47,7 +47,7 @@ character (--character). The sum is Σ D(R)_KL · R φ over the operations R.
 	groupFlags(cmd.Flags(), &s)
 	basisFlag(cmd.Flags(), &s)
 	projection := &s.Projection
-	cmd.Flags().IntVar(&projection.Function, "function", 0, "`N`umber of the function of the basis to project")
+	cmd.Flags().IntVar(&projection.Function, "function", 0, "number `N` of the function of the basis to project")
 	cmd.Flags().StringVar(&projection.Irrep, "irrep", "", "`LABEL` of the irrep to project onto")
 	cmd.Flags().Var(elementFlag{&projection.Element}, "element", "matrix element `K,L` that weighs the operations (default 1,1)")
 	cmd.Flags().BoolVar(&projection.Character, "character", false, "weigh with the character in the place of a matrix element")

@@ -2,6 +2,7 @@ package table
 
 import (
 	"fmt"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -16,17 +17,13 @@ const (
 	matrixPlaces     = 4
 )
 
-// Operations lists every operation with its class, its axis or normal and,
-// for up to maxShown points, the point to which each point is carried, counted
-// from 1.
-func Operations(s *symmetry.Setting, permutations [][]int, maxShown int) Table {
+// Operations lists every operation with its class, its axis or normal and
+// where it carries the points of shown, whose indices it takes. Points are
+// written as people count them.
+func Operations(s *symmetry.Setting, permutations [][]int, shown []int) Table {
 	t := Table{Head: []string{"class", "operation", "axis or normal"}}
-	shown := 0
-	if len(permutations) > 0 && len(permutations[0]) <= maxShown {
-		shown = len(permutations[0])
-	}
-	if shown > 0 {
-		t.Head = append(t.Head, "carries atoms "+numbersUpTo(shown)+" to")
+	if len(shown) > 0 {
+		t.Head = append(t.Head, carries+pointNumbers(shown, shown)+" to")
 	}
 	for _, c := range s.Classes {
 		for i, r := range c.Members {
@@ -35,17 +32,20 @@ func Operations(s *symmetry.Setting, permutations [][]int, maxShown int) Table {
 			if i == 0 {
 				row[0] = c.Name
 			}
-			if shown > 0 {
-				row = append(row, images(permutations[r], shown))
+			if len(shown) > 0 {
+				images := make([]int, len(shown))
+				for k, point := range shown {
+					images[k] = permutations[r][point]
+				}
+				row = append(row, strings.Repeat(" ", len(carries))+pointNumbers(images, shown))
 			}
 			t.Add(row...)
 		}
 	}
-	if len(permutations) > 0 && shown == 0 {
-		t.Notes = append(t.Notes, fmt.Sprintf("(where the %d atoms go: --json)", len(permutations[0])))
-	}
 	return t
 }
+
+const carries = "carries atoms "
 
 // axis writes the axis of a rotation or the normal of a plane; E and i have
 // none.
@@ -56,32 +56,14 @@ func axis(op symmetry.Operation) string {
 	return components(op.Axis[:])
 }
 
-// numbersUpTo heads the columns of images, which are as wide as the largest
-// number.
-func numbersUpTo(n int) string {
-	parts := make([]string, n)
-	for i := range parts {
-		parts[i] = padNumber(i+1, n)
+// pointNumbers writes points from 1, each as wide as the largest of all.
+func pointNumbers(points, all []int) string {
+	width := len(strconv.Itoa(slices.Max(all) + 1))
+	parts := make([]string, len(points))
+	for i, p := range points {
+		parts[i] = fmt.Sprintf("%*d", width, p+1)
 	}
 	return strings.Join(parts, " ")
-}
-
-func images(permutation []int, n int) string {
-	parts := make([]string, n)
-	for i, image := range permutation {
-		parts[i] = padNumber(image+1, n)
-	}
-	return strings.Repeat(" ", len("carries atoms ")) + strings.Join(parts, " ")
-}
-
-// padNumber writes a number as wide as the largest one; a point without an
-// image (−1 in code, 0 here) is a dash.
-func padNumber(i, largest int) string {
-	s := strconv.Itoa(i)
-	if i == 0 {
-		s = "–"
-	}
-	return strings.Repeat(" ", max(0, len(strconv.Itoa(largest))-notation.Width(s))) + s
 }
 
 // Characters is the character table of a finite group with the functions that
