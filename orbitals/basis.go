@@ -216,7 +216,7 @@ func (b *builder) numberOrbits() {
 			image := c.carry(f)
 			for _, j := range b.onSite[c.to(f.Site)] {
 				g := b.functions[j]
-				if g.Shell == f.Shell && math.Abs(dot(g.Vector, image)) > same {
+				if g.Shell == f.Shell && math.Abs(dot(g.Vector, image)) > negligible {
 					join.join(i, j)
 				}
 			}

@@ -3,6 +3,7 @@ package orbitals
 import (
 	"cmp"
 	"fmt"
+	"maps"
 	"math"
 	"slices"
 
@@ -41,24 +42,23 @@ func (b *builder) arms(choice int, it item, atoms []int) (map[int]mgl64.Vec3, er
 // centre.
 const onCentre = 1e-3
 
-// straighten replaces the arms of spectators, whose places are images of each
-// other only nearly, by the mean over all operations. Those of the core are
-// images to rounding and stay as they are.
+// straighten replaces each arm by the mean of what the operations say of it.
+// Those of core atoms differ from it by rounding, which it removes; those of
+// spectators, whose places are images of each other only nearly, by as much as
+// that. For an infinite group there is nothing to do: all arms lie along z.
 func (b *builder) straighten(arms map[int]mgl64.Vec3) {
-	mean := make(map[int]mgl64.Vec3)
+	if b.sites.Setting.Infinite() {
+		return
+	}
+	mean := make(map[int]mgl64.Vec3, len(arms))
 	for k := range arms {
-		if b.sites.core(k) {
-			continue
-		}
 		sum := mgl64.Vec3{}
 		for _, c := range b.carriers {
 			sum = sum.Add(c.matrix.Transpose().Mul3x1(arms[c.to(k)]))
 		}
 		mean[k] = sum.Mul(1 / float64(len(b.carriers)))
 	}
-	for k, r := range mean {
-		arms[k] = r
-	}
+	maps.Copy(arms, mean)
 }
 
 // ruledCentres follows the rule for centres that nobody gave: the core atom

@@ -122,14 +122,13 @@ func checkName(name string) error {
 	if _, _, ok := functionNamed(name); ok || isRelative(name) {
 		return nil
 	}
-	l, ok := shellOf(name)
-	if ok {
+	if _, ok := shellOf(name); ok {
 		return nil
 	}
 	if name == "" {
 		return fmt.Errorf("a function is missing: choose a shell (s, p, d, f), one of its functions (px), sigma, pi, pi-in or pi-out")
 	}
-	if l, ok = shellOf(strings.ToLower(name[:1])); ok && l > 0 && !strings.HasPrefix(name, "pi") {
+	if l, ok := shellOf(strings.ToLower(name[:1])); ok && l > 0 && !strings.HasPrefix(name, "pi") {
 		return fmt.Errorf("%s is no function: those of the %s shell are %s", quote(name), functionNames[l][0][:1], strings.Join(functionNames[l], ", "))
 	}
 	return fmt.Errorf("%s is no function: choose a shell (s, p, d, f), one of its functions (px, dxz, fxyz …), sigma, pi, pi-in or pi-out", quote(name))

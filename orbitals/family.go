@@ -272,7 +272,7 @@ func (b *builder) around(name string, k int, r mgl64.Vec3) ([]candidate, error) 
 func directed(k int, name string, kind Kind, direction mgl64.Vec3, asked bool) candidate {
 	d := direction.Normalize()
 	for i := range d {
-		if math.Abs(d[i]) < 1e-15 {
+		if math.Abs(d[i]) < negligible {
 			d[i] = 0 // rounding, and no negative zero
 		}
 	}

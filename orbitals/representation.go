@@ -29,10 +29,11 @@ type Representation struct {
 	ends  [][]int
 }
 
-// negligible bounds coefficients that are zero but for rounding. It is well
-// above the rounding of a product of a few matrices, and well below what would
-// be missed in a sum that is to be good to 1e-12.
-const negligible = 1e-14
+// negligible bounds coefficients that are zero but for rounding, which stays
+// below 1e-14 in the products of a few matrices and unit vectors. What is left
+// out is too small to be missed in results good to 1e-10; counted, it would
+// join orbits of functions that are apart.
+const negligible = 1e-12
 
 // NewRepresentation makes the representation of sites that all carry the same
 // m functions. permutations[r][k] is the site to which operation r carries site
@@ -123,6 +124,9 @@ func newRepresentation(setting *symmetry.Setting, sites []int, image func(r, fun
 			square := 0.0
 			image(r, i, func(j int, c float64) {
 				square += c * c
+				if whole := math.Round(c); math.Abs(c-whole) < 1e-14 {
+					c = whole
+				}
 				if math.Abs(c) > negligible {
 					terms = append(terms, Term{j, c})
 					join.join(i, j)

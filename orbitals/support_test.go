@@ -131,9 +131,9 @@ func partnersOf(t testing.TB, p *Projection, label string, copy int) [][]float64
 	return out
 }
 
-// tight is what orthonormality and transformation are held to: ten times
+// tight is what orthonormality and transformation are held to: a hundred times
 // better than what is promised a person.
-const tight = 1e-11
+const tight = 1e-12
 
 // checkProjection holds what must be true of every projection: as many group
 // orbitals as functions, orthonormal, each on one orbit, the sign as ruled, and
