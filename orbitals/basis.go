@@ -211,9 +211,10 @@ func (b *builder) noteCompletions(choices int) {
 // numberOrbits numbers the orbits of functions.
 func (b *builder) numberOrbits() {
 	join := newJoints(len(b.functions))
+	var image []float64
 	for i, f := range b.functions {
-		for _, c := range b.carriers {
-			image := c.carry(f)
+		for _, c := range b.generators {
+			image = c.carry(f, image)
 			for _, j := range b.onSite[c.to(f.Site)] {
 				g := b.functions[j]
 				if g.Shell == f.Shell && math.Abs(dot(g.Vector, image)) > negligible {

@@ -53,10 +53,10 @@ func (b *builder) straighten(arms map[int]mgl64.Vec3) {
 	mean := make(map[int]mgl64.Vec3, len(arms))
 	for k := range arms {
 		sum := mgl64.Vec3{}
-		for _, c := range b.carriers {
-			sum = sum.Add(c.matrix.Transpose().Mul3x1(arms[c.to(k)]))
+		for r, op := range b.sites.Setting.Operations {
+			sum = sum.Add(op.Matrix.Transpose().Mul3x1(arms[b.sites.Permutations[r][k]]))
 		}
-		mean[k] = sum.Mul(1 / float64(len(b.carriers)))
+		mean[k] = sum.Mul(1 / float64(b.sites.Setting.Order()))
 	}
 	maps.Copy(arms, mean)
 }
@@ -191,7 +191,7 @@ func (b *builder) spread(it item, start int, centre mgl64.Vec3, exact bool, cent
 	for len(queue) > 0 {
 		k := queue[0]
 		queue = queue[1:]
-		for _, c := range b.carriers {
+		for _, c := range b.generators {
 			j, image := c.to(k), c.matrix.Mul3x1(centres[k])
 			old, done := centres[j]
 			switch {

@@ -14,10 +14,10 @@ import (
 
 // A builder gathers the functions of a Basis.
 type builder struct {
-	sites    *Sites
-	carriers []*carrier
-	bonds    [][]int // atoms bonded to each atom
-	molecule *structure.Molecule
+	sites      *Sites
+	generators []*carrier
+	bonds      [][]int // atoms bonded to each atom
+	molecule   *structure.Molecule
 
 	functions []Function
 	onSite    map[int][]int // indices of functions, by atom
@@ -28,11 +28,11 @@ type builder struct {
 
 func newBuilder(s *Sites) *builder {
 	b := &builder{
-		sites:    s,
-		carriers: s.carriers(),
-		bonds:    make([][]int, len(s.Positions)),
-		molecule: &structure.Molecule{Atoms: make([]structure.Atom, len(s.Positions))},
-		onSite:   make(map[int][]int),
+		sites:      s,
+		generators: s.generators(),
+		bonds:      make([][]int, len(s.Positions)),
+		molecule:   &structure.Molecule{Atoms: make([]structure.Atom, len(s.Positions))},
+		onSite:     make(map[int][]int),
 	}
 	for _, l := range s.Links {
 		b.bonds[l[0]] = append(b.bonds[l[0]], l[1])
@@ -156,6 +156,7 @@ func (b *builder) close(on map[int][]candidate) ([]candidate, error) {
 	type place struct{ site, index int }
 	kept := make(map[place]bool)
 	var queue []place
+	var image []float64
 	sites := slices.Sorted(maps.Keys(on))
 	for _, k := range sites {
 		for i, c := range on[k] {
@@ -169,8 +170,9 @@ func (b *builder) close(on map[int][]candidate) ([]candidate, error) {
 		at := queue[0]
 		queue = queue[1:]
 		f := on[at.site][at.index].Function
-		for _, c := range b.carriers {
-			image, target := c.carry(f), c.to(at.site)
+		for _, c := range b.generators {
+			target := c.to(at.site)
+			image = c.carry(f, image)
 			square := 0.0
 			for i, g := range on[target] {
 				overlap := dot(g.Vector, image)

@@ -2,6 +2,7 @@ package orbitals
 
 import (
 	"math"
+	"slices"
 	"unicode/utf8"
 )
 
@@ -61,6 +62,9 @@ func (d *distinctValues) asGolden() (factors []Exact, a, b int, ok bool) {
 	}
 	best := math.MaxInt
 	for _, m := range rootsBeside {
+		if !slices.ContainsFunc(ratios, func(r goldenRoot) bool { return r.m == m }) {
+			continue // √m would only come to all numbers
+		}
 		numbers := make([]goldenRoot, len(ratios))
 		var common golden
 		for j, r := range ratios {

@@ -80,7 +80,7 @@ func checkAngular(t *testing.T, b *Basis, p *Projection) {
 		irrep := p.Irreps[p.Orbitals[i].Irrep]
 		partners := p.Orbitals[i : i+irrep.Dimension]
 		i += irrep.Dimension
-		for _, c := range b.Sites.carriers() {
+		for _, c := range b.Sites.generators() {
 			for k, partner := range partners {
 				image := apply(b, c, partner.Coefficients)
 				for f := range image {
@@ -101,7 +101,7 @@ func checkAngular(t *testing.T, b *Basis, p *Projection) {
 func apply(b *Basis, c *carrier, coefficients []float64) []float64 {
 	out := make([]float64, len(coefficients))
 	for i, x := range coefficients {
-		image := c.carry(b.Functions[i])
+		image := c.carry(b.Functions[i], nil)
 		for j, g := range b.Functions {
 			if g.Site == c.to(b.Functions[i].Site) && g.Shell == b.Functions[i].Shell {
 				out[j] += x * dot(g.Vector, image)

@@ -93,18 +93,19 @@ func (b *Basis) Representation() (*Representation, error) {
 	if setting.Infinite() {
 		return nil, infinite(setting)
 	}
-	onSite := make(map[int][]int)
+	onSite := make([][]int, len(b.Sites.Positions))
 	sites := make([]int, len(b.Functions))
 	for i, f := range b.Functions {
 		sites[i] = f.Site
 		onSite[f.Site] = append(onSite[f.Site], i)
 	}
-	carriers := b.Sites.carriers()
+	operations := b.Sites.operations()
+	var image []float64
 	return newRepresentation(setting, sites, func(r, function int, add func(int, float64)) {
 		f := b.Functions[function]
-		image := carriers[r].carry(f)
-		for _, j := range onSite[carriers[r].to(f.Site)] {
-			if g := b.Functions[j]; g.Shell == f.Shell {
+		image = operations[r].carry(f, image)
+		for _, j := range onSite[operations[r].to(f.Site)] {
+			if g := &b.Functions[j]; g.Shell == f.Shell {
 				add(j, dot(g.Vector, image))
 			}
 		}
@@ -118,7 +119,11 @@ func newRepresentation(setting *symmetry.Setting, sites []int, image func(r, fun
 	rep := &Representation{setting: setting, sites: sites}
 	join := newJoints(n)
 	for r := range setting.Operations {
-		terms := make([]Term, 0, n)
+		room := n
+		if r > 0 {
+			room = max(n, len(rep.terms[r-1])*5/4)
+		}
+		terms := make([]Term, 0, room)
 		ends := make([]int, n)
 		for i := range n {
 			square := 0.0
