@@ -1,6 +1,7 @@
 package orbitals
 
 import (
+	"fmt"
 	"math"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -81,7 +82,7 @@ func Harmonics(l int, direction mgl64.Vec3) []float64 {
 			factorD2 * (x*x - y*y),
 			factorD * x * y,
 		}
-	default:
+	case 3:
 		return []float64{
 			factorF0 * z * (2*z*z - 3*x*x - 3*y*y),
 			factorF1 * x * (4*z*z - x*x - y*y),
@@ -92,4 +93,5 @@ func Harmonics(l int, direction mgl64.Vec3) []float64 {
 			factorF3 * y * (3*x*x - y*y),
 		}
 	}
+	panic(fmt.Sprintf("orbitals: shell %d has no named functions", l))
 }
