@@ -67,7 +67,7 @@ packages:
 	    command -v sudo >/dev/null || { echo "run as root: apt-get install$$missing"; exit 1; }; root=sudo; \
 	  fi; \
 	  echo "installing$$missing"; \
-	  install="$$root env DEBIAN_FRONTEND=noninteractive apt-get install -y -q$$missing"; \
+	  install="$$root env DEBIAN_FRONTEND=noninteractive apt-get install -y -q --no-install-recommends$$missing"; \
 	  $$install || { $$root apt-get update -q && $$install; }; \
 	else \
 	  for t in $(TEST_TOOLS); do command -v $$t >/dev/null || missing="$$missing $$t"; done; \
