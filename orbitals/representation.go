@@ -118,29 +118,29 @@ func newRepresentation(setting *symmetry.Setting, sites []int, image func(r, fun
 	n := len(sites)
 	rep := &Representation{setting: setting, sites: sites}
 	join := newJoints(n)
-	for r := range setting.Operations {
-		room := n
-		if r > 0 {
-			room = max(n, len(rep.terms[r-1])*5/4)
+	var of int // the function whose image is being added
+	var square float64
+	var terms []Term
+	add := func(j int, c float64) {
+		square += c * c
+		if whole := math.Round(c); math.Abs(c-whole) < 1e-14 {
+			c = whole
 		}
-		terms := make([]Term, 0, room)
+		if math.Abs(c) > negligible {
+			terms = append(terms, Term{j, c})
+			join.join(of, j)
+		}
+	}
+	for r := range setting.Operations {
+		terms = make([]Term, 0, max(n, len(terms)*5/4))
 		ends := make([]int, n)
-		for i := range n {
-			square := 0.0
-			image(r, i, func(j int, c float64) {
-				square += c * c
-				if whole := math.Round(c); math.Abs(c-whole) < 1e-14 {
-					c = whole
-				}
-				if math.Abs(c) > negligible {
-					terms = append(terms, Term{j, c})
-					join.join(i, j)
-				}
-			})
+		for of = range n {
+			square = 0
+			image(r, of, add)
 			if math.Abs(square-1) > 1e-9 {
-				return nil, fmt.Errorf("operation %s carries function %d out of the set", setting.Operations[r].Name, i+1)
+				return nil, fmt.Errorf("operation %s carries function %d out of the set", setting.Operations[r].Name, of+1)
 			}
-			ends[i] = len(terms)
+			ends[of] = len(terms)
 		}
 		rep.terms = append(rep.terms, terms)
 		rep.ends = append(rep.ends, ends)
