@@ -35,6 +35,8 @@ type stage struct {
 	// atoms are the balls of all atoms; lobes those of what is drawn on them.
 	// elements those at the rim of symmetry elements.
 	atoms, lobes, elements []ball
+	// corner is where the triad stands on the picture, in pixels.
+	corner rectangle
 	// carries marks the atoms with functions; nil without a basis.
 	carries []bool
 }
@@ -45,12 +47,17 @@ func (s *stage) addMolecule(g *work.Group) {
 	for _, i := range g.Core {
 		core[i] = true
 	}
-	// The subject is darker than the spectators; both are quiet.
+	// The core stands out from the ground more than the spectators do; both
+	// are quiet.
+	coreTone, otherTone := 0.45, 0.75
+	if s.look.Ground == "dark" {
+		coreTone, otherTone = 0.15, 0.6
+	}
 	tone := func(i int) float64 {
 		if core[i] {
-			return 0.35
+			return coreTone
 		}
-		return 0.7
+		return otherTone
 	}
 	for i, p := range g.Sites.Positions {
 		share := atomShare

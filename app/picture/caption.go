@@ -59,8 +59,14 @@ func orbitalCaption(o *work.Orbitals, orbital *orbitals.GroupOrbital, look study
 		title.text = title.text.Then(notation.Words("   " + strings.Join(which, ", ")))
 	}
 	lines := caption{title}
-	if form, ok := orbitals.FindClosedForm(orbital.Coefficients); ok && notation.Width(form.String()) <= longestForm {
-		lines = append(lines, captionLine{text: notation.ClosedForm(form), size: captionSize, beside: basisText(o.Basis, orbital.Coefficients)})
+	form, ok := orbitals.FindClosedForm(orbital.Coefficients)
+	functions := basisText(o.Basis, orbital.Coefficients)
+	switch {
+	case !ok || notation.Width(form.String()) > longestForm:
+	case len(form.Terms) == 1 && !form.Terms[0].Negative && len(functions) > 0:
+		lines = append(lines, captionLine{text: functions, size: captionSize})
+	default:
+		lines = append(lines, captionLine{text: notation.ClosedForm(form), size: captionSize, beside: functions})
 	}
 	return append(lines, captionLine{text: legendText(look), size: secondSize, quiet: true, legend: true}, frameLine(o.Group))
 }
@@ -228,17 +234,23 @@ func breakText(t notation.Text, size, width float64, fonts *render.Fonts) []nota
 	return append(lines, line)
 }
 
-// words cuts a text before its blanks.
+// words cuts a text behind its blanks, but not within brackets.
 func words(t notation.Text) []notation.Text {
 	var out []notation.Text
+	open, ended := 0, true
 	for _, r := range t {
-		for i, part := range strings.SplitAfter(r.Text, " ") {
-			piece := notation.Text{{Text: part, Italic: r.Italic, Place: r.Place}}
-			if n := len(out); n > 0 && i == 0 && !strings.HasSuffix(out[n-1].String(), " ") {
-				out[n-1] = out[n-1].Then(piece)
-			} else if part != "" {
-				out = append(out, piece)
+		for _, part := range strings.SplitAfter(r.Text, " ") {
+			if part == "" {
+				continue
 			}
+			piece := notation.Text{{Text: part, Italic: r.Italic, Place: r.Place}}
+			if ended {
+				out = append(out, piece)
+			} else {
+				out[len(out)-1] = out[len(out)-1].Then(piece)
+			}
+			open += strings.Count(part, "(") - strings.Count(part, ")")
+			ended = open == 0 && strings.HasSuffix(part, " ")
 		}
 	}
 	return out

@@ -43,44 +43,59 @@ func (c contour) radial(r float64) float64 {
 }
 
 // reach is the distance of the farthest point of the contour from the
-// nucleus: the outer solution of radial(r) = level, by bisection.
+// nucleus: the outer solution of radial(r) = level.
 func (c contour) reach() float64 {
 	low, high := c.power, c.power+1
 	for c.radial(high) > c.level {
 		high *= 2
 	}
-	return bisect(low, high, func(r float64) float64 { return c.radial(r) - c.level })
+	return root(low, high, func(r float64) float64 { return c.radial(r) - c.level })
 }
 
-// bisect finds a zero of f between a and b, where f has different signs.
-func bisect(a, b float64, f func(float64) float64) float64 {
-	rising := f(b) > f(a)
-	// 50 halvings reach the spacing of float64 for intervals of order 1.
-	for range 50 {
-		middle := (a + b) / 2
-		if (f(middle) > 0) == rising {
-			b = middle
+// root finds a zero of f between a and b, where f has different signs, by
+// regula falsi in the Illinois variant (M. Dowell, P. Jarratt, BIT 11, 168
+// (1971); from memory): secants, with the weight of an end halved that stays.
+func root(a, b float64, f func(float64) float64) float64 {
+	const enough = 1e-12 // of a field whose maximum is about 1
+	fa, fb := f(a), f(b)
+	for range 60 {
+		if fa == fb {
+			break
+		}
+		c := (a*fb - b*fa) / (fb - fa)
+		fc := f(c)
+		if math.Abs(fc) < enough {
+			return c
+		}
+		if (fc > 0) == (fb > 0) {
+			b, fb = c, fc
+			fa /= 2
 		} else {
-			a = middle
+			// The new point is always b, the older one a.
+			a, fa = b, fb
+			b, fb = c, fc
 		}
 	}
 	return (a + b) / 2
 }
 
 // field is positive within the lobes of one sign, negative outside, and zero
-// on the contour. Its lengths are those of contour.radial.
+// on the contour. Its lengths are shares of the contour's reach.
 type field struct {
 	contour
 	y    angular // scaled to a largest |Y| of 1
 	sign float64
+	unit float64 // the reach, in lengths of contour.radial
 }
+
+func newField(c contour, y angular, sign float64) field { return field{c, y, sign, c.reach()} }
 
 func (f field) at(p mgl64.Vec3) float64 {
 	r := p.Len()
 	if r == 0 {
 		return -f.level
 	}
-	return f.radial(r)*f.sign*f.y(p.Mul(1/r)) - f.level
+	return f.radial(r*f.unit)*f.sign*f.y(p.Mul(1/r)) - f.level
 }
 
 // outward is the unit normal of the contour at p, which points to smaller

@@ -14,6 +14,7 @@ import (
 const (
 	overhang    = 1.05
 	minOverhang = 0.25 // Å
+	rimRoom     = 0.02 // Å, radius of the balls that stand for their ends
 )
 
 // addElement draws the symmetry element of an operation: an axis for a
@@ -59,10 +60,10 @@ func (s *stage) addCentre() {
 // addAxis draws an axis through the origin, as far as reach on both sides of
 // its middle.
 func (s *stage) addAxis(axis, middle mgl64.Vec3, reach float64) {
-	const radius = 0.02 // Å
 	from, to := middle.Sub(axis.Mul(reach)), middle.Add(axis.Mul(reach))
-	s.scene.Add(render.Cylinder{A: from, B: to, Radius: radius}, s.elementMaterial(1))
-	s.elements = append(s.elements, ball{from, radius}, ball{to, radius})
+	const width = 0.5 // mm
+	s.scene.Add(render.Line{Points: []mgl64.Vec3{from, to}, Width: width}, s.elementMaterial(1))
+	s.elements = append(s.elements, ball{from, rimRoom}, ball{to, rimRoom})
 }
 
 // addPlane draws a plane through the origin as a translucent disc with a full
@@ -75,7 +76,7 @@ func (s *stage) addPlane(normal, middle mgl64.Vec3, reach float64) {
 	for k := range rim {
 		sin, cos := math.Sincos(2 * math.Pi * float64(k) / corners)
 		rim[k] = middle.Add(u.Mul(reach * cos)).Add(v.Mul(reach * sin))
-		s.elements = append(s.elements, ball{rim[k], 0.01})
+		s.elements = append(s.elements, ball{rim[k], rimRoom})
 	}
 	const edge = 0.25 // mm
 	s.scene.Add(render.Line{Points: rim, Closed: true, Width: edge}, s.elementMaterial(1))

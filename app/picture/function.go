@@ -78,22 +78,30 @@ func (s *stage) addCombination(g *work.Group, parts []mixture) {
 		largest = max(largest, m.amplitude())
 	}
 	unit, size := lobeUnit(g, s.carries), sizing(s.look.Size)
+	detail := fine
+	if len(parts) > maxFine {
+		detail = coarse
+	}
 	for _, m := range parts {
 		if share := m.amplitude() / largest; share > negligible {
-			s.addMixture(g.Sites.Positions[m.site], m, unit*size(share))
+			s.addMixture(g.Sites.Positions[m.site], m, unit*size(share), detail)
 		}
 	}
 }
 
+// maxFine is how many atoms may have finely cut lobes; with more of them each
+// is small on the picture.
+const maxFine = 24
+
 // addMixture draws the lobes on one atom; length is that of the longest.
-func (s *stage) addMixture(at mgl64.Vec3, m mixture, length float64) {
+func (s *stage) addMixture(at mgl64.Vec3, m mixture, length float64, detail detail) {
 	if m.shell == 0 {
 		// A sphere as wide as a lobe is long.
 		s.scene.Add(render.Sphere{Center: at, Radius: length / 2}, s.lobeMaterial(m.vector[0]))
 		s.lobes = append(s.lobes, ball{at, length / 2})
 		return
 	}
-	plus, minus, turn := shapeOf(m)
+	plus, minus, turn := shapeOf(m, detail)
 	place := &render.Affine{Linear: turn.Mul(length), Shift: at}
 	for sign, mesh := range []*render.Mesh{plus, minus} {
 		if mesh != nil {
@@ -116,18 +124,22 @@ func (s *stage) lobeMaterial(sign float64) render.Material {
 
 // shapeOf returns the meshes of a mixture and the rotation that brings them
 // into the scene. All p functions share one pair of meshes.
-func shapeOf(m mixture) (plus, minus *render.Mesh, turn mgl64.Mat3) {
+func shapeOf(m mixture, detail detail) (plus, minus *render.Mesh, turn mgl64.Mat3) {
 	if m.shell == 1 {
-		plus, minus = pLobes()
+		plus, minus = pLobes[detail]()
 		return plus, minus, turnFromZ(mgl64.Vec3{m.vector[0], m.vector[1], m.vector[2]}.Normalize())
 	}
-	plus, minus = lobes(m.angular(), m.shell, fine)
+	plus, minus = lobes(m.angular(), m.shell, detail)
 	return plus, minus, mgl64.Ident3()
 }
 
-var pLobes = sync.OnceValues(func() (plus, minus *render.Mesh) {
-	return lobes(func(d mgl64.Vec3) float64 { return d[2] }, 1, fine)
-})
+// pLobes are the lobes of pz, cut once.
+var pLobes = map[detail]func() (plus, minus *render.Mesh){
+	fine:   sync.OnceValues(func() (plus, minus *render.Mesh) { return lobes(alongZ, 1, fine) }),
+	coarse: sync.OnceValues(func() (plus, minus *render.Mesh) { return lobes(alongZ, 1, coarse) }),
+}
+
+func alongZ(d mgl64.Vec3) float64 { return d[2] }
 
 // turnFromZ is a rotation that takes z to a unit vector.
 func turnFromZ(to mgl64.Vec3) mgl64.Mat3 {

@@ -58,12 +58,13 @@ func (s *stage) labelled(g *work.Group, carries []bool) []bool {
 // addLabels writes symbol and number beside the atoms, each on the side where
 // it covers least.
 func (s *stage) addLabels(g *work.Group, camera render.Camera, scr screen, fonts *render.Fonts) {
+	seen := newSight(camera, scr)
 	var obstacles []disc
 	for _, b := range append(append([]ball(nil), s.atoms...), s.lobes...) {
-		obstacles = append(obstacles, discOf(camera, b, scr))
+		obstacles = append(obstacles, seen.disc(b))
 	}
-	obstacles = append(obstacles, s.bondDiscs(g, camera, scr)...)
-	var taken []rectangle
+	obstacles = append(obstacles, s.bondDiscs(g, seen)...)
+	taken := []rectangle{s.corner}
 	names := g.AtomNames()
 	for i, wanted := range s.labelled(g, s.carries) {
 		if !wanted {
@@ -71,7 +72,7 @@ func (s *stage) addLabels(g *work.Group, camera render.Camera, scr screen, fonts
 		}
 		atom, text := s.atoms[i], runs(notation.Words(names[i]))
 		width, ascent, _ := fonts.Measure(text, labelSize)
-		around := discOf(camera, atom, scr)
+		around := seen.disc(s.around(atom))
 		place := bestPlace(around, width*scr.pixelsPerMM, ascent*scr.pixelsPerMM, obstacles, taken, scr)
 		taken = append(taken, place.rectangle)
 		s.scene.Add(render.Text{
@@ -83,13 +84,24 @@ func (s *stage) addLabels(g *work.Group, camera render.Camera, scr screen, fonts
 	}
 }
 
+// around is the ball that a label of an atom stands beside: the atom, or the
+// sphere of an s function on it.
+func (s *stage) around(atom ball) ball {
+	for _, l := range s.lobes {
+		if l.centre == atom.centre && l.radius > atom.radius {
+			return l
+		}
+	}
+	return atom
+}
+
 // bondDiscs are points along the bonds that labels should not cover.
-func (s *stage) bondDiscs(g *work.Group, camera render.Camera, scr screen) []disc {
+func (s *stage) bondDiscs(g *work.Group, seen sight) []disc {
 	var out []disc
 	for _, b := range g.Bonds {
 		p, q := s.atoms[b[0]].centre, s.atoms[b[1]].centre
 		for _, t := range []float64{0.3, 0.4, 0.5, 0.6, 0.7} {
-			out = append(out, discOf(camera, ball{p.Add(q.Sub(p).Mul(t)), bondThickness / 2}, scr))
+			out = append(out, seen.disc(ball{p.Add(q.Sub(p).Mul(t)), bondThickness / 2}))
 		}
 	}
 	return out
@@ -100,11 +112,12 @@ type labelPlace struct {
 	cost float64
 }
 
-// bestPlace tries sixteen places around a disc, nearer ones first.
+// bestPlace tries sixteen places around a disc at several distances. A label
+// moves away only if that uncovers more than a quarter of its height.
 func bestPlace(around disc, width, height float64, obstacles []disc, taken []rectangle, scr screen) labelPlace {
 	gap := labelGap * scr.pixelsPerMM
 	best := labelPlace{cost: math.Inf(1)}
-	for ring, further := range []float64{0, 1, 2.5} {
+	for ring, further := range []float64{0, 1, 2, 3.5} {
 		for k := range 16 {
 			// From the right, where a label is read first, by turns up and
 			// down.
@@ -117,7 +130,7 @@ func bestPlace(around disc, width, height float64, obstacles []disc, taken []rec
 			x := around.x + r*math.Cos(angle) + width/2*(math.Cos(angle)-1)
 			y := around.y - r*math.Sin(angle) - height/2*(math.Sin(angle)-1)
 			p := labelPlace{rectangle: rectangle{x, x + width, y - height, y}}
-			p.cost = float64(ring)*0.5 + float64(k)*0.01 + p.covers(obstacles, taken, scr)
+			p.cost = float64(ring)*0.25 + float64(k)*0.01 + p.covers(obstacles, taken, scr)
 			if p.cost < best.cost {
 				best = p
 			}
@@ -126,14 +139,13 @@ func bestPlace(around disc, width, height float64, obstacles []disc, taken []rec
 	return best
 }
 
-// covers counts what a label would hide, in units of its own area, and forbids
-// other labels and the rim of the picture.
+// covers counts how deep a label would lie in bodies, and forbids other labels
+// and the rim of the picture.
 func (p labelPlace) covers(obstacles []disc, taken []rectangle, scr screen) float64 {
-	area := (p.right - p.left) * (p.bottom - p.top)
 	cost := 0.0
 	for _, d := range obstacles {
-		box := rectangle{d.x - d.radius, d.x + d.radius, d.y - d.radius, d.y + d.radius}
-		cost += p.overlap(box) / area
+		// How deep the disc reaches into the label, in heights of the label.
+		cost += max(0, d.radius-p.distance(d.x, d.y)) / (p.bottom - p.top)
 	}
 	for _, r := range taken {
 		if p.overlaps(r) {

@@ -2,6 +2,7 @@ package picture
 
 import (
 	"math"
+	"sync"
 
 	"github.com/go-gl/mathgl/mgl64"
 
@@ -14,7 +15,7 @@ import (
 func lobes(y angular, shell int, detail detail) (plus, minus *render.Mesh) {
 	y = normalized(y)
 	c := contourOf(shell)
-	return surface(field{c, y, +1}, detail), surface(field{c, y, -1}, detail)
+	return surface(newField(c, y, +1), detail), surface(newField(c, y, -1), detail)
 }
 
 // detail is how finely lobes are cut into triangles.
@@ -23,8 +24,12 @@ type detail struct {
 	layers   int // from the nucleus outward
 }
 
-// fine resolves a lobe of 200 pixels without a visible corner.
-var fine = detail{halvings: 4, layers: 16}
+// fine resolves a lobe of 300 pixels without a visible corner, coarse one of
+// 80, with a quarter of the triangles.
+var (
+	fine   = detail{halvings: 4, layers: 14}
+	coarse = detail{halvings: 3, layers: 10}
+)
 
 // normalized scales y to a largest absolute value of 1, which is sought among
 // a few thousand directions and refined from the best one.
@@ -79,34 +84,58 @@ func across(p mgl64.Vec3) (u, v mgl64.Vec3) {
 // the tips at the nucleus are resolved as finely as the rest. Since the
 // tetrahedra meet face to face, the surface is closed, whatever its form.
 func surface(f field, detail detail) *render.Mesh {
-	reach := f.reach()
-	m := &march{field: f, grid: newShells(detail, reach), on: map[[2]int]uint32{}}
-	m.values = make([]float64, len(m.grid.nodes))
-	for i, p := range m.grid.nodes {
-		m.values[i] = f.at(p)
-	}
+	m := &march{field: f, grid: gridOf[detail](), on: map[[2]int]uint32{}}
+	m.values = m.grid.valuesOf(f)
 	for _, t := range m.grid.tetrahedra {
 		m.cut(t)
 	}
 	if len(m.triangles) == 0 {
 		return nil
 	}
-	return m.mesh(reach)
+	return m.mesh()
 }
 
-// shells are the nodes and tetrahedra of a ball about the nucleus.
+// shells are the nodes and tetrahedra of a ball of radius 1 about the nucleus:
+// the nucleus itself, then layer by layer a node in every direction.
 type shells struct {
 	nodes      []mgl64.Vec3
 	tetrahedra [][4]int
+	directions []mgl64.Vec3
+	radii      []float64 // of the layers
 }
 
-func newShells(detail detail, reach float64) shells {
+// valuesOf is f at all nodes; the angular function is called once for every
+// direction.
+func (g *shells) valuesOf(f field) []float64 {
+	angular := make([]float64, len(g.directions))
+	for i, d := range g.directions {
+		angular[i] = f.sign * f.y(d)
+	}
+	values := make([]float64, 0, len(g.nodes))
+	values = append(values, -f.level) // at the nucleus
+	for _, r := range g.radii {
+		radial := f.radial(r * f.unit)
+		for _, y := range angular {
+			values = append(values, radial*y-f.level)
+		}
+	}
+	return values
+}
+
+// gridOf are the shells for each detail, made once.
+var gridOf = map[detail]func() *shells{
+	fine:   sync.OnceValue(func() *shells { return newShells(fine) }),
+	coarse: sync.OnceValue(func() *shells { return newShells(coarse) }),
+}
+
+func newShells(detail detail) *shells {
 	points, triangles := directions(detail.halvings)
-	g := shells{nodes: []mgl64.Vec3{{}}}
+	g := &shells{nodes: []mgl64.Vec3{{}}, directions: points}
 	for layer := 1; layer <= detail.layers; layer++ {
 		// Layers lie closer near the nucleus; the last one is outside.
 		share := float64(layer) / float64(detail.layers)
-		r := 1.01 * reach * math.Pow(share, 1.4)
+		r := 1.01 * math.Pow(share, 1.4)
+		g.radii = append(g.radii, r)
 		for _, p := range points {
 			g.nodes = append(g.nodes, p.Mul(r))
 		}
@@ -145,7 +174,7 @@ func sorted(t [3]int) (a, b, c int) {
 // march collects the surface while tetrahedra are cut.
 type march struct {
 	field
-	grid      shells
+	grid      *shells
 	values    []float64
 	on        map[[2]int]uint32 // the vertex on an edge of the grid
 	vertices  []mgl64.Vec3
@@ -196,7 +225,7 @@ func (m *march) vertex(inside, outside int) uint32 {
 	a, b := m.grid.nodes[inside], m.grid.nodes[outside]
 	// At the nucleus the field does not depend on the way there, so that a
 	// contour between the nucleus and the first layer is found like others.
-	t := bisect(0, 1, func(t float64) float64 { return m.at(a.Add(b.Sub(a).Mul(t))) })
+	t := root(0, 1, func(t float64) float64 { return m.at(a.Add(b.Sub(a).Mul(t))) })
 	v := uint32(len(m.vertices))
 	m.vertices = append(m.vertices, a.Add(b.Sub(a).Mul(t)))
 	m.on[key] = v
@@ -212,16 +241,15 @@ func (m *march) add(asIs bool, a, b, c uint32) {
 	m.triangles = append(m.triangles, [3]uint32{a, b, c})
 }
 
-// mesh scales the surface to a reach of 1. The surface coordinates are the
-// distance from the nucleus and the angle about z.
-func (m *march) mesh(reach float64) *render.Mesh {
+// mesh has as surface coordinates the distance from the nucleus and the angle
+// about z.
+func (m *march) mesh() *render.Mesh {
 	out := &render.Mesh{Closed: true, Triangles: m.triangles}
 	for _, p := range m.vertices {
 		n := m.outward(p)
-		q := p.Mul(1 / reach)
-		out.Positions = append(out.Positions, [3]float32{float32(q[0]), float32(q[1]), float32(q[2])})
+		out.Positions = append(out.Positions, [3]float32{float32(p[0]), float32(p[1]), float32(p[2])})
 		out.Normals = append(out.Normals, [3]float32{float32(n[0]), float32(n[1]), float32(n[2])})
-		out.Coords = append(out.Coords, [2]float32{float32(q.Len()), float32(math.Atan2(q[1], q[0]))})
+		out.Coords = append(out.Coords, [2]float32{float32(p.Len()), float32(math.Atan2(p[1], p[0]))})
 	}
 	return out
 }

@@ -25,9 +25,6 @@ var shapes = map[string]angular{ // named by the letter of their shell
 
 func shellNamed(name string) int { return strings.Index("spdf", name[:1]) }
 
-// coarse is enough for what is tested here.
-var coarse = detail{halvings: 3, layers: 10}
-
 func TestLobesAreClosedAndWoundOutward(t *testing.T) {
 	for name, y := range shapes {
 		plus, minus := lobes(y, shellNamed(name), coarse)

@@ -170,12 +170,12 @@ func newScreen(width, height, captionHeight, dpi float64) (screen, error) {
 // suitingHeight is the height of the bodies' part that leaves the least empty
 // ground, within limits that look well.
 func suitingHeight(v view, balls []ball, width float64, orthographic bool) float64 {
-	const side = 1000
-	square := screen{width: side, height: side, right: side, bottom: side, pixelsPerMM: 1}
-	b := bounds(cameraFor(v, balls, square, orthographic), balls, square)
-	aspect := (b.bottom - b.top) / (b.right - b.left)
-	body := (width-2*sideMargin)*aspect + 2*topMargin
-	return min(max(body, 0.5*width), 1.05*width)
+	high := screen{width: int(100 * width), height: int(200 * width), pixelsPerMM: 100}
+	high.left, high.right = 100*sideMargin, 100*(width-sideMargin)
+	high.bottom = float64(high.height)
+	b := newSight(cameraFor(v, balls, high, orthographic), high).bounds(balls)
+	body := (b.bottom-b.top)/high.pixelsPerMM + 2*topMargin
+	return min(max(body, 0.45*width), 1.05*width)
 }
 
 // operationNamed finds an operation by its name.

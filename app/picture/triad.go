@@ -1,8 +1,6 @@
 package picture
 
 import (
-	"math"
-
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/render"
@@ -46,6 +44,7 @@ func (s *stage) addTriad(v view, balls []ball, scr screen, camera render.Camera,
 		top:    float64(scr.height) - (place.OffsetY-box.top+1)*scr.pixelsPerMM,
 		bottom: float64(scr.height),
 	}
+	s.corner = corner
 	return clearOf(corner, v, balls, scr, camera, orthographic)
 }
 
@@ -68,7 +67,7 @@ func triadBox(camera render.Camera, length float64) rectangle {
 // clearOf makes the bodies smaller, and moves them away from the corner as far
 // as the room allows, until none lies in it.
 func clearOf(corner rectangle, v view, balls []ball, scr screen, camera render.Camera, orthographic bool) render.Camera {
-	for shrink := 1.0; shrink > 0.3; shrink *= 0.96 {
+	for shrink := 1.0; shrink > 0.3; shrink *= 0.95 {
 		for _, move := range [][2]float64{{0, 0}, {0, 1}, {1, 0}, {1, 1}} {
 			width, height := (scr.right-scr.left)*shrink, (scr.bottom-scr.top)*shrink
 			inner := scr
@@ -86,12 +85,10 @@ func clearOf(corner rectangle, v view, balls []ball, scr screen, camera render.C
 }
 
 func isClear(corner rectangle, balls []ball, c render.Camera, scr screen) bool {
+	seen := newSight(c, scr)
 	for _, b := range balls {
-		d := discOf(c, b, scr)
-		// The nearest point of the corner to the disc's middle.
-		dx := d.x - math.Min(math.Max(d.x, corner.left), corner.right)
-		dy := d.y - math.Min(math.Max(d.y, corner.top), corner.bottom)
-		if math.Hypot(dx, dy) < d.radius {
+		d := seen.disc(b)
+		if corner.distance(d.x, d.y) < d.radius {
 			return false
 		}
 	}

@@ -47,13 +47,11 @@ func viewOf(c study.Camera, lobes, atoms []ball) view {
 func bestView(lobes, atoms []ball) view {
 	const middleAzimuth, middleElevation = 28, 20 // degrees
 	best, least := view{}, math.Inf(1)
-	for elevation := 12.0; elevation <= 56; elevation += 4 {
-		for azimuth := 12.0; azimuth <= 78; azimuth += 3 {
+	for elevation := 12.0; elevation <= 44; elevation += 4 {
+		for azimuth := 16.0; azimuth <= 64; azimuth += 3 {
 			v := view{mgl64.DegToRad(azimuth), mgl64.DegToRad(elevation)}
 			off := math.Hypot(azimuth-middleAzimuth, elevation-middleElevation)
-			// A full overlap of two largest bodies counts as much as 60° off
-			// the middle.
-			cost := off/60 + covered(v, lobes, atoms)
+			cost := off/degreesForCover + covered(v, lobes, atoms)
 			if cost < least-1e-9 {
 				best, least = v, cost
 			}
@@ -62,6 +60,10 @@ func bestView(lobes, atoms []ball) view {
 	return best
 }
 
+// degreesForCover says how many degrees off the middle view are worth a cover
+// of 1: found by looking at pictures of all kinds.
+const degreesForCover = 90
+
 // covered adds up how far balls overlap as seen along a view, each pair as a
 // share of the largest ball's size. Pairs that lie in each other anyway do not
 // count, nor do atoms before atoms as much as lobes before lobes.
@@ -69,10 +71,7 @@ func covered(v view, lobes, atoms []ball) float64 {
 	if len(lobes)+len(atoms) > maxBallsCompared {
 		return 0
 	}
-	largest := 0.0
-	for _, b := range append(append([]ball(nil), lobes...), atoms...) {
-		largest = max(largest, b.radius)
-	}
+	largest := max(largestBall(lobes), largestBall(atoms))
 	back := v.back()
 	sum := 0.0
 	overlap := func(a, b ball, weight float64) {
@@ -103,10 +102,18 @@ func covered(v view, lobes, atoms []ball) float64 {
 	return sum / math.Sqrt(float64(max(1, len(lobes)+len(atoms))))
 }
 
-// maxBallsCompared bounds the time that choosing a view may take: 300 views
-// times half the square of this number of comparisons is about half a second.
+func largestBall(balls []ball) float64 {
+	largest := 0.0
+	for _, b := range balls {
+		largest = max(largest, b.radius)
+	}
+	return largest
+}
+
+// maxBallsCompared bounds the time that choosing a view may take: 150 views
+// times half the square of this number of comparisons is a tenth of a second.
 // In larger structures no view shows everything anyway.
-const maxBallsCompared = 400
+const maxBallsCompared = 250
 
 // A screen is the picture in pixels, with the rectangle in which the bodies
 // have to lie.
@@ -115,6 +122,10 @@ type screen struct {
 	left, right, top, bottom float64
 	pixelsPerMM              float64
 }
+
+// maxScale is how many millimetres an ångström may take: small molecules do not
+// swell to fill the picture.
+const maxScale = 22
 
 // distanceInRadii is how far the eye is, in radii of the scene: near enough
 // for depth, far enough to keep parallel bonds nearly parallel.
@@ -137,13 +148,15 @@ func cameraFor(v view, balls []ball, s screen, orthographic bool) render.Camera 
 		}
 		return c
 	}
+	largest := maxScale * s.pixelsPerMM
 	scale := (s.bottom - s.top) / (2 * radius)
 	// Scale and middle are found in turn; perspective makes them depend on
 	// each other a little.
-	for range 12 {
-		b := bounds(build(scale), balls, s)
+	for range 6 {
+		b := newSight(build(scale), s).bounds(balls)
 		scale *= min((s.right-s.left)/(b.right-b.left), (s.bottom-s.top)/(b.bottom-b.top))
-		b = bounds(build(scale), balls, s)
+		scale = min(scale, largest)
+		b = newSight(build(scale), s).bounds(balls)
 		dx := (b.left+b.right)/2 - (s.left+s.right)/2
 		dy := (b.top+b.bottom)/2 - (s.top+s.bottom)/2
 		target = target.Add(right.Mul(dx / scale)).Sub(up.Mul(dy / scale))
@@ -157,28 +170,41 @@ func (r rectangle) overlaps(o rectangle) bool {
 	return r.left < o.right && o.left < r.right && r.top < o.bottom && o.top < r.bottom
 }
 
-// overlap is the area that two rectangles share.
-func (r rectangle) overlap(o rectangle) float64 {
-	return max(0, min(r.right, o.right)-max(r.left, o.left)) * max(0, min(r.bottom, o.bottom)-max(r.top, o.top))
+// distance is how far a point lies outside of r, 0 inside.
+func (r rectangle) distance(x, y float64) float64 {
+	return math.Hypot(x-min(max(x, r.left), r.right), y-min(max(y, r.top), r.bottom))
 }
 
 // A disc is a ball as seen on the picture, in pixels.
 type disc struct{ x, y, radius float64 }
 
-func discOf(c render.Camera, b ball, s screen) disc {
-	x, y, depth, _ := c.Project(b.centre, s.width, s.height)
-	scale := float64(s.height) / c.Height
-	if c.Height == 0 {
-		scale = float64(s.height) / (2 * math.Tan(c.FovY/2) * depth)
+// A sight is a camera with a screen, ready to see many balls.
+type sight struct {
+	camera        render.Camera
+	turn          mgl64.Mat3
+	width, height float64
+}
+
+func newSight(c render.Camera, s screen) sight {
+	return sight{c, c.Rotation(), float64(s.width), float64(s.height)}
+}
+
+// disc agrees with render.Camera.Project, which turns the camera anew for
+// every point.
+func (v sight) disc(b ball) disc {
+	q := v.turn.Mul3x1(b.centre.Sub(v.camera.Eye))
+	scale := v.height / v.camera.Height
+	if v.camera.Height == 0 {
+		scale = v.height / (2 * math.Tan(v.camera.FovY/2) * -q[2])
 	}
-	return disc{x, y, b.radius * scale}
+	return disc{v.width/2 + q[0]*scale, v.height/2 - q[1]*scale, b.radius * scale}
 }
 
 // bounds is the smallest rectangle around all balls on the picture.
-func bounds(c render.Camera, balls []ball, s screen) rectangle {
+func (v sight) bounds(balls []ball) rectangle {
 	r := rectangle{math.Inf(1), math.Inf(-1), math.Inf(1), math.Inf(-1)}
 	for _, b := range balls {
-		d := discOf(c, b, s)
+		d := v.disc(b)
 		r.left, r.right = min(r.left, d.x-d.radius), max(r.right, d.x+d.radius)
 		r.top, r.bottom = min(r.top, d.y-d.radius), max(r.bottom, d.y+d.radius)
 	}
