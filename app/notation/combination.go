@@ -7,23 +7,29 @@ import (
 	"lobewright/orbitals"
 )
 
-// coefficientPlaces is how many places a coefficient without closed form gets
-// in text; the JSON has it to the last bit.
-const coefficientPlaces = 4
+// A Coefficient writes the absolute value of a coefficient.
+type Coefficient func(x float64) string
 
-// Combination writes a sum of functions: "φ3", "−φ2", "1/2 φ1 − √3/2 φ4". An
-// empty sum is "0".
-func Combination(terms []orbitals.Term) string {
-	return strings.Join(CombinationTerms(terms), " ")
+// ExactCoefficient writes closed forms where there are some, else four
+// decimals; the JSON has them to the last bit.
+func ExactCoefficient(x float64) string {
+	if exact, ok := Exact(x); ok {
+		return exact
+	}
+	return Decimal(x, 4)
 }
 
-// CombinationTerms is Combination cut between its terms, each with its sign.
-// Terms too small to be seen are left out.
-func CombinationTerms(terms []orbitals.Term) []string {
+// DecimalCoefficient writes whole numbers as such, others with three decimals.
+func DecimalCoefficient(x float64) string { return Short(x, 3) }
+
+// Combination writes a sum of functions term by term, each with its sign:
+// "φ3"; "−φ2"; "1/2 φ1", "− √3/2 φ4". Terms too small to be seen are left out;
+// an empty sum is "0".
+func Combination(terms []orbitals.Term, write Coefficient) []string {
 	var parts []string
 	for _, t := range terms {
-		body := coefficient(math.Abs(t.Coefficient))
-		if body == "0" {
+		body := write(math.Abs(t.Coefficient))
+		if strings.Trim(body, "0.") == "" {
 			continue
 		}
 		if body == "1" {
@@ -46,17 +52,6 @@ func CombinationTerms(terms []orbitals.Term) []string {
 		return []string{"0"}
 	}
 	return parts
-}
-
-func coefficient(x float64) string {
-	if exact, ok := Exact(x); ok {
-		return exact
-	}
-	s := Decimal(x, coefficientPlaces)
-	if strings.Trim(s, "0.") == "" {
-		return "0"
-	}
-	return s
 }
 
 // Terms makes a sparse sum of a list of coefficients, one a function.

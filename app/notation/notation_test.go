@@ -1,6 +1,12 @@
 package notation
 
-import "testing"
+import (
+	"math"
+	"strings"
+	"testing"
+
+	"lobewright/orbitals"
+)
 
 // brief writes a Text with _ before what is lowered, ^ before what is raised
 // and * around what is italic.
@@ -58,5 +64,44 @@ func TestLabelsAreSetWithRealIndices(t *testing.T) {
 		if got.LaTeX() != c.latex {
 			t.Errorf("%s: LaTeX %s, want %s", c.in, got.LaTeX(), c.latex)
 		}
+	}
+}
+
+func TestCombinationsAreWrittenAsSums(t *testing.T) {
+	terms := []orbitals.Term{{Function: 0, Coefficient: -0.5}, {Function: 2, Coefficient: 1e-17}, {Function: 3, Coefficient: math.Sqrt(3) / 2}, {Function: 9, Coefficient: -1}}
+	for _, c := range []struct {
+		write Coefficient
+		want  string
+	}{{ExactCoefficient, "−1/2 φ1 + √3/2 φ4 − φ10"}, {DecimalCoefficient, "−0.500 φ1 + 0.866 φ4 − φ10"}} {
+		if got := strings.Join(Combination(terms, c.write), " "); got != c.want {
+			t.Errorf("written %q, want %q", got, c.want)
+		}
+	}
+	if got := strings.Join(Combination(nil, ExactCoefficient), " "); got != "0" {
+		t.Errorf("an empty sum is written %q", got)
+	}
+}
+
+func TestContentCountsCopies(t *testing.T) {
+	if got := Content([]string{"A1'", "A2'", "E'"}, []int{2, 0, 1}); got != "2A1' + E'" {
+		t.Errorf("content %q", got)
+	}
+}
+
+func TestSentencesSetAxesAndOperations(t *testing.T) {
+	got := brief(Sentence("z along C4; x along the C2′ through most atoms, xz is the σv plane"))
+	want := "*z* along *C*_[4]; *x* along the *C*_[2]′ through most atoms, *xz* is the *σ*_[v] plane"
+	if got != want {
+		t.Errorf("set as %s", got)
+	}
+}
+
+func TestClosedFormsHaveLoweredNumbers(t *testing.T) {
+	form, ok := orbitals.FindClosedForm([]float64{2 / math.Sqrt(6), -1 / math.Sqrt(6), -1 / math.Sqrt(6)})
+	if !ok {
+		t.Fatal("no closed form")
+	}
+	if got := brief(ClosedForm(form)); got != "(2*φ*_[1] − *φ*_[2] − *φ*_[3])/√6" {
+		t.Errorf("set as %s", got)
 	}
 }

@@ -141,7 +141,7 @@ func combinationLines(coefficients []float64) []string {
 	if form, ok := orbitals.FindClosedForm(coefficients); ok {
 		return fold(strings.SplitAfter(form.String(), " "))
 	}
-	return fold(spaced(notation.CombinationTerms(notation.Terms(coefficients))))
+	return fold(spaced(notation.Combination(notation.Terms(coefficients), notation.ExactCoefficient)))
 }
 
 // fold breaks a combination into lines before its signs.
@@ -165,8 +165,8 @@ func Ledger(l *work.Ledger) Table {
 	closed := closedForms{}
 	for _, row := range l.Rows {
 		closed.note(row.Weight)
-		sum := fold(spaced(notation.CombinationTerms(notation.Terms(row.Sum))))
-		t.Add(l.Group.Sites.Setting.Operations[row.Operation].Name, notation.Combination(row.Image),
+		sum := fold(spaced(notation.Combination(notation.Terms(row.Sum), notation.DecimalCoefficient)))
+		t.Add(l.Group.Sites.Setting.Operations[row.Operation].Name, strings.Join(notation.Combination(row.Image, notation.ExactCoefficient), " "),
 			notation.Short(row.Weight, characterPlaces), sum[0])
 		for _, line := range sum[1:] {
 			t.Add("", "", "", line)

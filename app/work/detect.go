@@ -1,6 +1,7 @@
 package work
 
 import (
+	"errors"
 	"fmt"
 
 	"lobewright/app/study"
@@ -28,5 +29,13 @@ func detect(read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
 			links = append(links, symmetry.Link{i, j})
 		}
 	}
-	return symmetry.Detect(points, links, symmetry.Options{Tolerance: s.TheTolerance()})
+	fit, err := symmetry.Detect(points, links, symmetry.Options{Tolerance: s.TheTolerance()})
+	var close *symmetry.CloseError
+	if errors.As(err, &close) {
+		// Points are counted within the core; people know the atoms.
+		names := read.AtomNames()
+		return nil, fmt.Errorf("tolerance %g Å is too large: %s and %s are only %.3f Å apart; take less than half of that",
+			close.Tolerance, names[core[close.A]], names[core[close.B]], close.Distance)
+	}
+	return fit, err
 }

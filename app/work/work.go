@@ -58,9 +58,9 @@ type Group struct {
 }
 
 // AtomNames are the names of all atoms: symbol and number, from 1 ("Cl2").
-func (g *Group) AtomNames() []string {
-	names := make([]string, len(g.Molecule.Atoms))
-	for i, a := range g.Molecule.Atoms {
+func (s *Structure) AtomNames() []string {
+	names := make([]string, len(s.Molecule.Atoms))
+	for i, a := range s.Molecule.Atoms {
 		names[i] = a.Element.Symbol() + strconv.Itoa(i+1)
 	}
 	return names
