@@ -16,6 +16,7 @@ BUILD    = CGO_ENABLED=0 $(GO) build -trimpath -buildvcs=false -ldflags "-X main
 
 .PHONY: run build test lint unit fuzz bench packages clean help
 .DEFAULT_GOAL := help
+.NOTPARALLEL:
 
 help: ## say what can be made
 	@grep -hE '^[a-z]+:.*##' $(MAKEFILE_LIST) | sed -E 's/^([a-z]+):.*## /make \1	/' | expand -t 14

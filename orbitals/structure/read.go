@@ -7,6 +7,7 @@ import (
 	"path/filepath"
 	"strconv"
 	"strings"
+	"unicode"
 	"unicode/utf8"
 )
 
@@ -126,10 +127,11 @@ func (p *parser) title(name string) error {
 	return nil
 }
 
-// oneLine makes a title fit on one line: control characters become blanks, blanks at the ends are dropped.
+// oneLine makes a title fit on one line: control characters and others that print nothing, such as those that turn
+// the direction of writing, become blanks; blanks at the ends are dropped.
 func oneLine(text string) string {
 	text = strings.Map(func(r rune) rune {
-		if r < ' ' || 0x7f <= r && r < 0xa0 || r == '\u2028' || r == '\u2029' {
+		if !unicode.IsPrint(r) {
 			return ' '
 		}
 		return r
@@ -215,7 +217,7 @@ func (p *parser) element(text string) (Element, error) {
 	if e, ok := ElementOf(symbol); ok {
 		if !p.labels {
 			p.labels = true
-			p.note(LabelsRead, "labels such as "+text+" were read as elements")
+			p.note(LabelsRead, "labels such as "+shorten(text)+" were read as elements")
 		}
 		return e, nil
 	}

@@ -83,6 +83,7 @@ func TestReadSaysWhatItPassedOver(t *testing.T) {
 		{one + "charges\n", "test.xyz:4: what follows the last atom was not read", TextLeft},
 		{one + "\x00\x00", "test.xyz:3: what follows the last atom was not read", TextLeft},
 		{"1\nx\nAr7 0 0 0\n", "test.xyz:3: labels such as Ar7 were read as elements", LabelsRead},
+		{"1\nx\nAr" + strings.Repeat("7", 1000) + " 0 0 0\n", "test.xyz:3: labels such as Ar" + strings.Repeat("7", 58) + " … were read as elements", LabelsRead},
 		{"1\nx\nD 0 0 0\n", "test.xyz:3: D was read as hydrogen", IsotopesRead},
 		{"1\n\xc5\nAr 0 0 0\n", "test.xyz:2: the title is not UTF-8; it was read as Latin-1", TitleDecoded},
 	}
@@ -98,11 +99,12 @@ func TestReadSaysWhatItPassedOver(t *testing.T) {
 
 func TestTitleIsTheFilesOwnOrItsName(t *testing.T) {
 	cases := map[string]string{
-		"1\n a  title \nAr 0 0 0\n":     "a  title",
-		"1\n\nAr 0 0 0\n":               "test.xyz",
-		"1\n \t \nAr 0 0 0\n":           "test.xyz",
-		"1\n2.3 \xc5\nAr 0 0 0\n":       "2.3 Å",
-		"1\nπ-stack\u2028x\nAr 0 0 0\n": "π-stack x",
+		"1\n a  title \nAr 0 0 0\n":         "a  title",
+		"1\n\nAr 0 0 0\n":                   "test.xyz",
+		"1\n \t \nAr 0 0 0\n":               "test.xyz",
+		"1\n2.3 \xc5\nAr 0 0 0\n":           "2.3 Å",
+		"1\nπ-stack\u2028x\nAr 0 0 0\n":     "π-stack x",
+		"1\nright\u202eleft\tx\nAr 0 0 0\n": "right left x",
 	}
 	for text, want := range cases {
 		if m, _ := read(t, text); m.Title != want {
@@ -358,5 +360,26 @@ func holdsOneLine(t *testing.T, text string) {
 	t.Helper()
 	if text == "" || strings.ContainsAny(text, "\n\r\x00\x1b") || len(text) > 2000 {
 		t.Errorf("%q is not one clear line", text)
+	}
+}
+
+func BenchmarkRead(b *testing.B) {
+	for _, n := range []int{4, 60, 1000, MaxAtoms} {
+		m := &Molecule{Title: "block"}
+		for i := range n {
+			m.Atoms = append(m.Atoms, Atom{79, mgl64.Vec3{float64(i%28) * 2.5123, float64(i/28%28) * 2.5123, float64(i/784) * 2.5123}})
+		}
+		var text bytes.Buffer
+		if err := Write(&text, m); err != nil {
+			b.Fatal(err)
+		}
+		b.Run(grouped(n), func(b *testing.B) {
+			b.SetBytes(int64(text.Len()))
+			for b.Loop() {
+				if _, _, err := Read(bytes.NewReader(text.Bytes()), "test.xyz"); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
 	}
 }
