@@ -2,6 +2,7 @@ package render
 
 import (
 	"context"
+	"slices"
 	"syscall"
 	"testing"
 	"time"
@@ -32,10 +33,20 @@ func benchmarkScene(b *testing.B, name string, look Look) {
 	b.ReportAllocs()
 	b.ResetTimer()
 	start := cpuTime()
+	var least [36]float64 // of the rounds, for every step
 	for i := 0; b.Loop(); i++ {
+		from := cpuTime()
 		draw(i)
+		if d := float64(cpuTime()-from) / 1e6; i < 36 || d < least[i%36] {
+			least[i%36] = d
+		}
 	}
 	b.ReportMetric(float64(cpuTime()-start)/1e6/float64(b.N), "cpu-ms/op")
+	if b.N >= 36 {
+		slices.Sort(least[:])
+		// As the peers report it: what a frame costs on a quiet machine.
+		b.ReportMetric((least[17]+least[18])/2, "best-cpu-ms")
+	}
 }
 
 var white = Color{255, 255, 255}

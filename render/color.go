@@ -18,24 +18,24 @@ var fromSRGB = func() (t [256]float32) {
 	return t
 }()
 
-// toSRGB holds the sRGB number of linear light in steps of 1/4096 of its
-// square root, which is fine enough to round every number correctly to
-// within half a step of 1/255.
-const sqrtSteps = 4096
-
-var toSRGB = func() (t [sqrtSteps + 1]uint8) {
+// toSRGB holds the sRGB numbers of linear light, found by the exponent and
+// the first ten bits of the mantissa of a float32: from 2^-13, below which
+// the number is 0, to 1. That is fine enough to be right within a tenth of a
+// step.
+var toSRGB = func() (t [14 << 10]uint8) {
 	for i := range t {
-		r := float64(i) / sqrtSteps
-		v := r * r
+		v := float64(math.Float32frombits(uint32(i+srgbBase)<<13 | 1<<12))
 		if v <= 0.0031308 {
 			v *= 12.92
 		} else {
 			v = 1.055*math.Pow(v, 1/2.4) - 0.055
 		}
-		t[i] = uint8(v*255 + 0.5)
+		t[i] = uint8(math.Min(255, v*255+0.5))
 	}
 	return t
 }()
+
+const srgbBase = (127 - 13) << 10
 
 // tone returns the working numbers of a colour.
 func (f *frame) tone(c Color) [3]float32 {
@@ -54,7 +54,11 @@ func encode(v float32, linear bool) uint8 {
 		v = 1
 	}
 	if !linear {
-		return uint8(v*255 + 0.5)
+		return uint8(int32(v*255 + 0.5))
 	}
-	return toSRGB[int(float32(math.Sqrt(float64(v)))*sqrtSteps+0.5)]
+	i := int(math.Float32bits(v)>>13) - srgbBase
+	if i < 0 {
+		return uint8(int32(v*(12.92*255) + 0.5))
+	}
+	return toSRGB[min(i, len(toSRGB)-1)]
 }

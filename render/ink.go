@@ -430,7 +430,7 @@ func lineSlot(part int32) slot { return slot{part, -2, 0} }
 
 // tone returns the share of the colour that the ink look shows where the
 // light is nl. The step from one tone to the next is soft over some pixels.
-func (t *tile) tone(k uint32, nl, x, y float32, s *sight) float32 {
+func (t *tile) tone(k uint32, nl, x, y float32) float32 {
 	l := &t.f.light
 	m := l.tones[0]
 	for i := 1; i < l.nTones; i++ {

@@ -14,6 +14,7 @@ type light struct {
 	diffuse, fill float32
 	specular      float32
 	shine         int
+	glint         float32 // cosine below which the highlight is not seen
 	line          [3]float32
 	tones         [8]float32
 	edges         [8]float32
@@ -62,31 +63,34 @@ func (f *frame) setLight() {
 	if o.nTones == 0 {
 		o.nTones, o.tones[0] = 1, 1
 	}
+	// Where the highlight is weaker than a quarter of a step of 1/255.
+	o.glint = float32(math.Pow(0.001/math.Max(l.Specular, 0.001), 1/float64(o.shine)))
 	g := f.tone(l.Ground)
 	f.ground = [4]float32{g[0], g[1], g[2], float32(math.Max(0, math.Min(1, l.GroundOpacity)))}
 	p := sceneProjection(f.camera, f.w, f.h, 1)
 	o.persp, o.invF, o.cx, o.cy = p.persp, float32(1/p.f), float32(p.cx), float32(p.cy)
 }
 
-// sight holds what shading needs of a pixel: the unit vector to the eye and
-// the unit vector half way to the key light.
+// sight holds what shading needs of a pixel: the direction (a, b, 1) to the
+// eye, the length of that vector's inverse, and the inverse length of the
+// unit vector to the eye plus that to the key light.
 type sight struct {
-	vx, vy, vz float32
-	hx, hy, hz float32
+	a, b   float32
+	il, ih float32
 }
 
 // sightAt returns the sight of a place of the whole picture.
 func (l *light) sightAt(x, y float32, s *sight) {
-	s.vx, s.vy, s.vz = 0, 0, 1
-	if l.persp {
-		a, b := (l.cx-x)*l.invF, (y-l.cy)*l.invF
-		k := 1 / float32(math.Sqrt(float64(a*a+b*b+1)))
-		s.vx, s.vy, s.vz = a*k, b*k, k
+	if !l.persp {
+		*s = sight{0, 0, 1, 1 / sqrt32(2+2*l.kz)}
+		return
 	}
-	hx, hy, hz := l.kx+s.vx, l.ky+s.vy, l.kz+s.vz
-	k := 1 / float32(math.Sqrt(float64(hx*hx+hy*hy+hz*hz)+1e-12))
-	s.hx, s.hy, s.hz = hx*k, hy*k, hz*k
+	a, b := (l.cx-x)*l.invF, (y-l.cy)*l.invF
+	il := 1 / sqrt32(a*a+b*b+1)
+	*s = sight{a, b, il, 1 / sqrt32(2.000001+2*(l.kx*a+l.ky*b+l.kz)*il)}
 }
+
+func sqrt32(v float32) float32 { return float32(math.Sqrt(float64(v))) }
 
 // power returns x to a whole power.
 func power(x float32, n int) float32 {
@@ -120,22 +124,23 @@ func (t *tile) shadePlace(k uint32, x, y float32, s *sight) (r, g, b float32) {
 	}
 	l := &t.f.light
 	nx, ny, nz := o.x, o.y, o.z
-	turn := nx*s.vx+ny*s.vy+nz*s.vz < 0
+	nv := nx*s.a + ny*s.b + nz
+	turn := nv < 0
 	if o.outward && l.style != Plain {
 		turn = !o.facing
 	}
 	q := nx*nx + ny*ny + nz*nz
-	if !(q > 0) {
-		nx, ny, nz, q, turn = s.vx, s.vy, s.vz, 1, false
+	if !(q > 1e-36) {
+		nx, ny, nz, q, nv, turn = s.a, s.b, 1, 1/(s.il*s.il), 1/(s.il*s.il), false
 	}
-	inv := 1 / float32(math.Sqrt(float64(q)))
+	inv := 1 / sqrt32(q)
 	if turn {
 		inv = -inv
 	}
 	nl := (nx*l.kx + ny*l.ky + nz*l.kz) * inv
 	switch l.style {
 	case Ink:
-		m := t.tone(k, nl, x, y, s)
+		m := t.tone(k, nl, x, y)
 		return r * m, g * m, b * m
 	case Lit:
 		return t.lit(o, r, g, b, nx*inv, ny*inv, nz*inv, nl, x, y, s)
@@ -145,7 +150,7 @@ func (t *tile) shadePlace(k uint32, x, y float32, s *sight) (r, g, b float32) {
 		d += l.diffuse * nl
 	}
 	r, g, b = r*d, g*d, b*d
-	if nh := (nx*s.hx + ny*s.hy + nz*s.hz) * inv; nh > 0.5 {
+	if nh := (nl + nv*inv*s.il) * s.ih; nh > l.glint {
 		h := l.specular * power(nh, l.shine)
 		r, g, b = r+h, g+h, b+h
 	}

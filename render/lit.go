@@ -264,7 +264,7 @@ func (t *tile) lit(o *surf, r, g, b, nx, ny, nz, nl, x, y float32, s *sight) (fl
 		d += l.fill * k
 	}
 	shine := float32(0)
-	if nh := nx*s.hx + ny*s.hy + nz*s.hz; nh > 0.6 {
+	if nh := (nl + (nx*s.a+ny*s.b+nz)*s.il) * s.ih; nh > l.glint {
 		shine = l.specular * o.part.gloss * power(nh, l.shine)
 	}
 	if l.shade > 0 && len(t.f.shades.head) > 0 && o.part.proj == 0 {

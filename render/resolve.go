@@ -77,12 +77,34 @@ func (t *tile) resolve(out image.Rectangle) {
 			case line:
 				c = t.under(t.solid(keys, px, py, &s), f.inked(t.lines.dist[i]))
 			default:
+				if k := t.whole(keys); k != 0 {
+					r, g, b := t.shadePlace(k, float32(px)+0.5, float32(py)+0.5, &s)
+					o[0], o[1], o[2], o[3] = encode(r, f.linear), encode(g, f.linear), encode(b, f.linear), 255
+					continue
+				}
 				c = t.solid(keys, px, py, &s)
 			}
 			v := f.pixel(c[0], c[1], c[2], c[3])
 			o[0], o[1], o[2], o[3] = v[0], v[1], v[2], v[3]
 		}
 	}
+}
+
+// whole returns a slot of the part that all samples show, or 0.
+func (t *tile) whole(keys []uint64) uint32 {
+	k := uint32(keys[len(keys)/2])
+	if k == 0 {
+		return 0
+	}
+	s := &t.slots[k]
+	for _, v := range keys {
+		if uint32(v) != k {
+			if o := &t.slots[uint32(v)]; o.part != s.part || o.batch < 0 && o.tri != s.tri {
+				return 0
+			}
+		}
+	}
+	return k
 }
 
 // middle returns the mean place of the samples of a mask within a pixel.

@@ -85,7 +85,7 @@ func (q *quadric) tangent(x, y float64, kind uint32) (n, nx, ny float32) {
 	return float32(q.b.at(x, y) + s), float32(q.b[1] + h*dx), float32(q.b[2] + h*dy)
 }
 
-// look fills t.surf with the surface of a slot at a place of the canvas.
+// lookAt fills t.surf with the surface of a slot at a place of the canvas.
 func (t *tile) lookAt(k uint32, x, y float32) *surf {
 	s := &t.slots[k]
 	o := &t.surf
@@ -94,7 +94,7 @@ func (t *tile) lookAt(k uint32, x, y float32) *surf {
 	o.part, o.index = p, s.part
 	switch p.form {
 	case formMesh:
-		t.lookAtMesh(o, s, x, y)
+		t.lookAtMesh(o, s, p, x, y)
 	case formQuadric:
 		q := &f.quadrics[p.index]
 		n, c, g := q.surface(float64(x)+float64(t.x), float64(y)+float64(t.y), s.tri)
@@ -135,40 +135,55 @@ func (q *quadric) coords(p [3]float64) (u, v float32) {
 	return float32(p[2] * q.length), round
 }
 
-// lookAtMesh mixes the normals and coordinates of a triangle's corners.
-func (t *tile) lookAtMesh(o *surf, s *slot, x, y float32) {
-	p, a, b, c, tri, l := t.corners(s)
+// lookAtMesh mixes the normals and coordinates of a triangle's corners. The
+// mixture need not be weighed out to 1 for the normal, whose length does not
+// matter, which saves divisions.
+func (t *tile) lookAtMesh(o *surf, s *slot, p *part, x, y float32) {
+	f := t.f
+	m := p.mesh
+	var a, b, c *vert
+	tri := s.tri
+	var l *loose
+	if tri&looseBit == 0 {
+		ix := &m.Triangles[tri]
+		vs := f.verts[p.vert0:]
+		a, b, c = &vs[ix[0]], &vs[ix[1]], &vs[ix[2]]
+	} else {
+		l = &f.batches[s.batch].loose[tri&^looseBit]
+		a, b, c = &l.v[0], &l.v[1], &l.v[2]
+		tri = l.tri
+	}
+	ix := &m.Triangles[tri]
 	x += float32(t.x) - a.x
 	y += float32(t.y) - a.y
 	ux, uy := b.x-a.x, b.y-a.y
 	vx, vy := c.x-a.x, c.y-a.y
 	det := ux*vy - vx*uy
-	var wb, wc float32
-	if det != 0 {
-		d := 1 / det
-		wb, wc = (x*vy-vx*y)*d, (ux*y-x*uy)*d
+	wb, wc := x*vy-vx*y, ux*y-x*uy
+	o.outward, o.facing = m.Closed, (det < 0) != p.mirrored
+	if det < 0 {
+		det, wb, wc = -det, -wb, -wc
 	}
-	// Stay within the triangle: the place may be a pixel's middle that
-	// belongs to its neighbour.
+	wa := det - wb - wc
 	if !t.free {
-		wb, wc = max(wb, 0), max(wc, 0)
-		if sum := wb + wc; sum > 1 {
-			wb, wc = wb/sum, wc/sum
+		// Stay within the triangle: the place may be a pixel's middle that
+		// belongs to its neighbour.
+		wa, wb, wc = max(wa, 0), max(wb, 0), max(wc, 0)
+	}
+	if t.deep {
+		sum := wa + wb + wc
+		o.n = a.n
+		if sum > 0 {
+			o.n = (wa*a.n + wb*b.n + wc*c.n) / sum
 		}
 	}
-	wa := 1 - wb - wc
-	o.n = wa*a.n + wb*b.n + wc*c.n
 	if p.persp {
 		wa, wb, wc = wa*a.n, wb*b.n, wc*c.n
-		k := 1 / (wa + wb + wc)
-		wa, wb, wc = wa*k, wb*k, wc*k
 	}
 	if l != nil {
 		w := &l.weight
 		wa, wb, wc = wa*w[0][0]+wb*w[1][0]+wc*w[2][0], wa*w[0][1]+wb*w[1][1]+wc*w[2][1], wa*w[0][2]+wb*w[1][2]+wc*w[2][2]
 	}
-	m := p.mesh
-	ix := &m.Triangles[tri]
 	var gx, gy, gz float32
 	if m.Normals != nil {
 		na, nb, nc := &m.Normals[ix[0]], &m.Normals[ix[1]], &m.Normals[ix[2]]
@@ -185,10 +200,13 @@ func (t *tile) lookAtMesh(o *surf, s *slot, x, y float32) {
 	o.x = r[0]*gx + r[1]*gy + r[2]*gz
 	o.y = r[3]*gx + r[4]*gy + r[5]*gz
 	o.z = r[6]*gx + r[7]*gy + r[8]*gz
-	o.outward, o.facing = m.Closed, (det < 0) != p.mirrored
-	if m.Coords != nil && p.hatch.period > 0 {
+	if p.hatch.period > 0 && m.Coords != nil {
 		ca, cb, cc := &m.Coords[ix[0]], &m.Coords[ix[1]], &m.Coords[ix[2]]
-		o.u = wa*ca[0] + wb*cb[0] + wc*cc[0]
-		o.v = wa*ca[1] + wb*cb[1] + wc*cc[1]
+		k := float32(0)
+		if sum := wa + wb + wc; sum != 0 {
+			k = 1 / sum
+		}
+		o.u = (wa*ca[0] + wb*cb[0] + wc*cc[0]) * k
+		o.v = (wa*ca[1] + wb*cb[1] + wc*cc[1]) * k
 	}
 }

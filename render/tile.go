@@ -31,6 +31,7 @@ type tile struct {
 
 	surf    surf
 	free    bool // look beyond the edges of a triangle
+	deep    bool // shading needs the nearness
 	inks    []inkFrag
 	samples [16][4]float32
 	sorted  []int32
@@ -90,6 +91,7 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	t.clip = out.Inset(-f.apron).Sub(image.Pt(t.x, t.y))
 	t.rows = [2]int{(t.y + t.clip.Min.Y) << t.lg, (t.y + t.clip.Max.Y) << t.lg}
 	t.sx = f.sx
+	t.deep = f.light.style == Lit
 	for k := range t.sfix {
 		t.sfix[k] = 1<<32 - 1 - int64(f.sx[k]*(1<<32))
 	}
