@@ -1,6 +1,7 @@
 package structure
 
 import (
+	"fmt"
 	"strconv"
 	"strings"
 )
@@ -17,7 +18,7 @@ const wantAtoms = "atoms are chosen by element (F), number (2-4,7), all, or orbi
 // orbits are refused. The error is an *Error, or the error of orbit.
 func ParseAtoms(text string, m *Molecule, orbit func(n int) ([]int, error)) ([]int, error) {
 	if len(text) > maxChoice {
-		return nil, badAtoms(BadAtoms, "a choice of atoms of %s characters", grouped(len(text)))
+		return nil, badAtoms("a choice of atoms of %s characters", grouped(len(text)))
 	}
 	chosen := make([]bool, len(m.Atoms))
 	for term := range strings.SplitSeq(text, ",") {
@@ -39,7 +40,7 @@ func ParseAtoms(text string, m *Molecule, orbit func(n int) ([]int, error)) ([]i
 func chooseTerm(term string, m *Molecule, orbit func(n int) ([]int, error), chosen []bool) error {
 	switch {
 	case term == "":
-		return badAtoms(BadAtoms, "a choice of atoms is empty")
+		return badAtoms("a choice of atoms is empty")
 	case strings.EqualFold(term, "all"):
 		for i := range chosen {
 			chosen[i] = true
@@ -53,7 +54,7 @@ func chooseTerm(term string, m *Molecule, orbit func(n int) ([]int, error), chos
 	}
 	e, ok := ElementOf(term)
 	if !ok {
-		return badAtoms(BadAtoms, "%s is no choice of atoms", found(term))
+		return badAtoms("%s is no choice of atoms", found(term))
 	}
 	occurs := false
 	for i, a := range m.Atoms {
@@ -96,11 +97,11 @@ func atomNumber(text string, chosen []bool) (int, error) {
 	text = strings.TrimSpace(text)
 	for _, c := range []byte(text) {
 		if c < '0' || c > '9' {
-			return 0, badAtoms(BadAtoms, "%s is no atom number", found(text))
+			return 0, badAtoms("%s is no atom number", found(text))
 		}
 	}
 	if text == "" {
-		return 0, badAtoms(BadAtoms, "a range of atoms has no end")
+		return 0, badAtoms("a range of atoms has no end")
 	}
 	n, err := strconv.Atoi(text)
 	if err != nil || n < 1 || n > len(chosen) {
@@ -114,7 +115,7 @@ func atomNumber(text string, chosen []bool) (int, error) {
 func chooseOrbit(text string, orbit func(n int) ([]int, error), chosen []bool) error {
 	n, err := strconv.Atoi(text)
 	if err != nil || n < 1 {
-		return badAtoms(BadAtoms, "%s is no orbit", found("orbit:"+text))
+		return badAtoms("%s is no orbit", found("orbit:"+text))
 	}
 	if orbit == nil {
 		return &Error{Problem: BadAtoms, What: "orbits are not known here",
@@ -161,8 +162,8 @@ func Core(m *Molecule, core, ignore string) ([]int, error) {
 	return out, nil
 }
 
-func badAtoms(p Problem, format string, args ...any) *Error {
-	return (&lines{}).fail(p, 0, wantAtoms, format, args...)
+func badAtoms(format string, args ...any) *Error {
+	return &Error{Problem: BadAtoms, What: fmt.Sprintf(format, args...), Want: wantAtoms}
 }
 
 // list writes elements with commas between them.
