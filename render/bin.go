@@ -96,7 +96,7 @@ func (r *Renderer) projectChunk(_ *worker, i int) {
 			x := m[0]*v[0] + m[1]*v[1] + m[2]*v[2] + m[3]
 			y := m[4]*v[0] + m[5]*v[1] + m[6]*v[2] + m[7]
 			z := m[8]*v[0] + m[9]*v[1] + m[10]*v[2] + m[11]
-			out[j] = vert{cx + sx*x, cy + sy*y, k0 + k1*z, 0}
+			out[j] = vert{snap(cx + sx*x), snap(cy + sy*y), k0 + k1*z, 0}
 		}
 		return
 	}
@@ -112,7 +112,7 @@ func (r *Renderer) projectChunk(_ *worker, i int) {
 			continue
 		}
 		n := 1 / w
-		out[j] = vert{cx + sx*x*n, cy + sy*y*n, n, 0}
+		out[j] = vert{snap(cx + sx*x*n), snap(cy + sy*y*n), n, 0}
 	}
 	f.chunks[i].behind = behind
 }
@@ -292,7 +292,7 @@ func (f *frame) cutNear(b *batch, p *part, t uint32) {
 		l := loose{tri: t}
 		for i, c := range [3]*corner{&out[0], &out[k-1], &out[k]} {
 			x, y, z := pr.point(Vec3{float64(c.q[0]), float64(c.q[1]), float64(c.q[2])})
-			l.v[i] = vert{float32(x), float32(y), float32(z), 0}
+			l.v[i] = vert{snap(float32(x)), snap(float32(y)), float32(z), 0}
 			l.weight[i] = c.w
 		}
 		if l.v[0].n > 0 && l.v[1].n > 0 && l.v[2].n > 0 {

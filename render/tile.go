@@ -16,7 +16,6 @@ type tile struct {
 	clip image.Rectangle // of the canvas, in its own pixels
 	rows [2]int          // first and last sample row to draw, in the whole picture
 	sx   [16]float64
-	sfix [16]int64 // sx in 32.32 fixed point, less one unit so that >>32 rounds up
 
 	// keys holds, for every sample, the nearness of the nearest surface in
 	// the upper half and its slot in the lower. Positive floats are ordered
@@ -29,6 +28,7 @@ type tile struct {
 	first       []int32 // of a pixel's layers
 	anyFrag     bool
 
+	kernel  kernel
 	surf    surf
 	free    bool // look beyond the edges of a triangle
 	deep    bool // shading needs the nearness
@@ -92,9 +92,6 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	t.rows = [2]int{(t.y + t.clip.Min.Y) << t.lg, (t.y + t.clip.Max.Y) << t.lg}
 	t.sx = f.sx
 	t.deep = f.light.style == Lit
-	for k := range t.sfix {
-		t.sfix[k] = 1<<32 - 1 - int64(f.sx[k]*(1<<32))
-	}
 	n := t.side * t.side
 	t.keys = grow(t.keys, n<<t.lg)
 	t.first = grow(t.first, n)

@@ -1,0 +1,17 @@
+package render
+
+import "golang.org/x/sys/cpu"
+
+// useVectors tells whether the processor has the vector instructions of the
+// assembly; without them the plain Go code does the same.
+var useVectors = cpu.X86.HasAVX2
+
+// drawFour is drawPlain for four samples a pixel, two pixels at a time.
+//
+//go:noescape
+func drawFour(k *kernel) bool
+
+// maskFour is maskPlain for four samples a pixel, two pixels at a time.
+//
+//go:noescape
+func maskFour(k *kernel) bool
