@@ -5,14 +5,14 @@ import "math"
 // hatching returns how much of a pixel the hatching covers. Lines keep their
 // width on the picture wherever the surface turns; where they would run
 // together they become an even tone.
-func (t *tile) hatching(k uint32, o *surf, x, y float32) float32 {
-	h := o.part.hatch
-	at := o.u
+func (t *tile) hatching(s *slot, p *part, x, y float32) float32 {
+	h := &p.hatch
+	at := t.surf.u
 	if h.second {
-		at = o.v
+		at = t.surf.v
 	}
-	ux := t.slope(k, x, y, 0.5, 0, h.second)
-	uy := t.slope(k, x, y, 0, 0.5, h.second)
+	ux := t.slope(s, p, x, y, 0.5, 0, h.second)
+	uy := t.slope(s, p, x, y, 0, 0.5, h.second)
 	grad := float32(math.Sqrt(float64(ux*ux + uy*uy)))
 	if !(grad > 0) {
 		return 0
@@ -29,18 +29,20 @@ func (t *tile) hatching(k uint32, o *surf, x, y float32) float32 {
 
 // slope returns the growth of a surface coordinate over a pixel in direction
 // (dx, dy), which is half a pixel long.
-func (t *tile) slope(k uint32, x, y, dx, dy float32, second bool) float32 {
+func (t *tile) slope(s *slot, p *part, x, y, dx, dy float32, second bool) float32 {
 	keep := t.surf
 	t.free = true
-	a := *t.lookAt(k, x+dx, y+dy)
-	b := *t.lookAt(k, x-dx, y-dy)
+	t.lookAt(s, p, x+dx, y+dy)
+	a := t.surf
+	t.lookAt(s, p, x-dx, y-dy)
+	b := t.surf
 	t.free = false
 	t.surf = keep
 	d := a.u - b.u
 	if second {
 		d = a.v - b.v
 	}
-	if a.part.form == formQuadric { // an angle may have come round
+	if p.form == formQuadric { // an angle may have come round
 		if d > math.Pi {
 			d -= 2 * math.Pi
 		} else if d < -math.Pi {

@@ -139,12 +139,13 @@ func (t *tile) fillCells() {
 				continue
 			}
 			mx, my := t.middle(best)
-			o := t.lookAt(bestSlot, float32(x)+mx, float32(y)+my)
-			s := 1 / float32(math.Sqrt(float64(o.x*o.x+o.y*o.y+o.z*o.z)+1e-30))
-			if o.z < 0 && !o.outward || o.outward && !o.facing {
+			sl := &t.slots[bestSlot]
+			nx, ny, nz, side := t.lookAt(sl, &t.f.parts[sl.part], float32(x)+mx, float32(y)+my)
+			s := 1 / sqrt32(nx*nx+ny*ny+nz*nz+1e-30)
+			if side < 0 || side == 0 && nz < 0 {
 				s = -s
 			}
-			c.part, c.x, c.y, c.z = o.index, o.x*s, o.y*s, o.z*s
+			c.part, c.x, c.y, c.z = sl.part, nx*s, ny*s, nz*s
 			c.n, c.nx, c.ny = t.plane(bestSlot, float32(x)+0.5, float32(y)+0.5)
 		}
 	}
@@ -430,7 +431,7 @@ func lineSlot(part int32) slot { return slot{part, -2, 0} }
 
 // tone returns the share of the colour that the ink look shows where the
 // light is nl. The step from one tone to the next is soft over some pixels.
-func (t *tile) tone(k uint32, nl, x, y float32) float32 {
+func (t *tile) tone(s *slot, p *part, nl, x, y float32) float32 {
 	l := &t.f.light
 	m := l.tones[0]
 	for i := 1; i < l.nTones; i++ {
@@ -440,7 +441,7 @@ func (t *tile) tone(k uint32, nl, x, y float32) float32 {
 		case d > 0.4:
 			m += step
 		case d > -0.4:
-			w := max(t.lightSlope(k, x, y)*max(l.soft, 0.7), 1e-6)
+			w := max(t.lightSlope(s, p, x, y)*max(l.soft, 0.7), 1e-6)
 			v := min(1, max(0, d/w+0.5))
 			m += step * v * v * (3 - 2*v)
 		}
@@ -449,20 +450,20 @@ func (t *tile) tone(k uint32, nl, x, y float32) float32 {
 }
 
 // lightSlope returns how much the key light changes over a pixel.
-func (t *tile) lightSlope(k uint32, x, y float32) float32 {
+func (t *tile) lightSlope(s *slot, p *part, x, y float32) float32 {
 	keep := t.surf
-	a := t.keyLight(k, x-0.5, y)
-	b := t.keyLight(k, x+0.5, y)
-	c := t.keyLight(k, x, y-0.5)
-	d := t.keyLight(k, x, y+0.5)
+	a := t.keyLight(s, p, x-0.5, y)
+	b := t.keyLight(s, p, x+0.5, y)
+	c := t.keyLight(s, p, x, y-0.5)
+	d := t.keyLight(s, p, x, y+0.5)
 	t.surf = keep
 	return float32(math.Sqrt(float64((b-a)*(b-a) + (d-c)*(d-c))))
 }
 
-func (t *tile) keyLight(k uint32, x, y float32) float32 {
+func (t *tile) keyLight(s *slot, p *part, x, y float32) float32 {
 	t.free = true
-	o := t.lookAt(k, x, y)
+	nx, ny, nz, _ := t.lookAt(s, p, x, y)
 	t.free = false
 	l := &t.f.light
-	return (o.x*l.kx + o.y*l.ky + o.z*l.kz) / float32(math.Sqrt(float64(o.x*o.x+o.y*o.y+o.z*o.z)+1e-30))
+	return (nx*l.kx + ny*l.ky + nz*l.kz) / sqrt32(nx*nx+ny*ny+nz*nz+1e-30)
 }

@@ -58,8 +58,8 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 // Y3 Y4 Y5   edge functions of the pair
 // Y6         n0 + gy·y of the row; Y7 x of the pair
 // Y8 Y9 Y10  growth of the edge functions over two pixels
-// Y11 gx     Y12 slot
-// Y13 Y14 Y15 scratch
+// Y12        slot
+// Y11 Y13 Y14 Y15 scratch
 #define PREPARE \
 	VMOVDQU      sampleX<>(SB), Y13; \
 	VMOVDQU      sampleY<>(SB), Y14; \
@@ -67,6 +67,7 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 	EDGE(4, Y1, Y9); \
 	EDGE(8, Y2, Y10); \
 	VBROADCASTSS 40(DI), Y11; \
+	VMOVUPS      Y11, gx-64(SP); \
 	VPBROADCASTD 56(DI), Y12; \
 	MOVL         60(DI), R8; \
 	MOVL         64(DI), R9; \
@@ -97,7 +98,8 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 	VBROADCASTSS 36(DI), Y15; \
 	VADDPS       Y6, Y15, Y6; \
 	VBROADCASTSS 48(DI), Y7; \
-	VADDPS       sampleXF<>(SB), Y7, Y7
+	VADDPS       sampleXF<>(SB), Y7, Y7; \
+	VMOVUPS      Y7, pairX-128(SP)
 
 // DOWN goes to the next row: the edge functions grow by 256·b, y by 1.
 #define DOWN \
@@ -120,10 +122,11 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 	VPADDD       Y9, Y4, Y4; \
 	VPADDD       Y10, Y5, Y5; \
 	VBROADCASTSS two<>(SB), Y15; \
-	VADDPS       Y15, Y7, Y7
+	VADDPS       Y15, Y7, Y7; \
+	VMOVUPS      Y7, pairX-128(SP)
 
 // func drawFour(k *kernel) bool
-TEXT ·drawFour(SB), NOSPLIT, $32-9
+TEXT ·drawFour(SB), NOSPLIT, $128-9
 	MOVQ k+0(FP), DI
 	PREPARE
 	XORL AX, AX
@@ -140,26 +143,29 @@ drawPair:
 	CMPL      DX, $255
 	JEQ       drawNext
 	VPSRAD    $31, Y13, Y13       // all ones outside
-	VMULPS    Y7, Y11, Y14
+	VMULPS    gx-64(SP), Y7, Y14
 	VADDPS    Y14, Y6, Y14        // nearness
-	VPUNPCKLDQ Y14, Y12, Y15      // keys of the first pixel
-	VPCMPGTQ  (BX), Y15, Y15
-	VPUNPCKLDQ Y13, Y13, Y13      // outside, first pixel; the second is made anew below
-	VPANDN    Y15, Y13, Y15       // seen
-	VPMOVMSKB Y15, R11
+	VPUNPCKHDQ Y13, Y13, Y11
+	VMOVDQU   Y11, out-96(SP)
+	VPUNPCKLDQ Y13, Y13, Y13      // outside, first pixel
+	VPUNPCKLDQ Y14, Y12, Y15      // its keys
+	VMOVDQU   (BX), Y11
+	VPCMPGTQ  Y11, Y15, Y7
+	VPANDN    Y7, Y13, Y7         // seen
+	VMOVMSKPD Y7, R11
 	ORL       R11, AX
-	VPUNPCKLDQ Y14, Y12, Y13
-	VPMASKMOVQ Y13, Y15, (BX)
-	VPOR      Y3, Y4, Y13
-	VPOR      Y5, Y13, Y13
-	VPSRAD    $31, Y13, Y13
-	VPUNPCKHDQ Y13, Y13, Y13
-	VPUNPCKHDQ Y14, Y12, Y14      // keys of the second pixel
-	VPCMPGTQ  32(BX), Y14, Y15
-	VPANDN    Y15, Y13, Y15
-	VPMOVMSKB Y15, R11
+	VBLENDVPD Y7, Y15, Y11, Y15
+	VMOVDQU   Y15, (BX)
+	VPUNPCKHDQ Y14, Y12, Y15      // keys of the second pixel
+	VMOVDQU   32(BX), Y11
+	VPCMPGTQ  Y11, Y15, Y7
+	VMOVDQU   out-96(SP), Y13
+	VPANDN    Y7, Y13, Y7
+	VMOVMSKPD Y7, R11
 	ORL       R11, AX
-	VPMASKMOVQ Y14, Y15, 32(BX)
+	VBLENDVPD Y7, Y15, Y11, Y15
+	VMOVDQU   Y15, 32(BX)
+	VMOVUPS   pairX-128(SP), Y7
 
 drawNext:
 	RIGHT
@@ -177,7 +183,7 @@ drawNext:
 	RET
 
 // func maskFour(k *kernel) bool
-TEXT ·maskFour(SB), NOSPLIT, $32-9
+TEXT ·maskFour(SB), NOSPLIT, $128-9
 	MOVQ k+0(FP), DI
 	PREPARE
 	MOVQ 88(DI), R12
@@ -196,7 +202,7 @@ maskPair:
 	VMOVMSKPS Y13, DX
 	CMPL      DX, $255
 	JEQ       maskNext
-	VMULPS    Y7, Y11, Y14
+	VMULPS    gx-64(SP), Y7, Y14
 	VADDPS    Y14, Y6, Y14
 	VPSRAD    $31, Y13, Y13
 	VPUNPCKLDQ Y14, Y12, Y15

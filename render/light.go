@@ -14,15 +14,16 @@ type light struct {
 	diffuse, fill float32
 	specular      float32
 	shine         int
-	glint         float32 // cosine below which the highlight is not seen
-	line          [3]float32
-	tones         [8]float32
-	edges         [8]float32
-	nTones        int
-	soft          float32 // pixels
-	shade         float32
-	invF, cx, cy  float32
-	persp         bool
+	// Below which the highlight is not seen: a cosine, a sum of cosines.
+	glint, glintSum float32
+	line            [3]float32
+	tones           [8]float32
+	edges           [8]float32
+	nTones          int
+	soft            float32 // pixels
+	shade           float32
+	invF, cx, cy    float32
+	persp           bool
 }
 
 // check tells what is wrong with a look.
@@ -44,6 +45,7 @@ func (l *Look) check() error {
 // setLight readies the lights and the ground.
 func (f *frame) setLight() {
 	l, o := &f.look, &f.light
+	p := sceneProjection(f.camera, f.w, f.h, 1)
 	key, fill := unit(l.Key, Vec3{0, 0, 1}), unit(l.Fill, Vec3{0, 0, 1})
 	*o = light{
 		style: l.Style,
@@ -65,29 +67,48 @@ func (f *frame) setLight() {
 	}
 	// Where the highlight is weaker than a quarter of a step of 1/255.
 	o.glint = float32(math.Pow(0.001/math.Max(l.Specular, 0.001), 1/float64(o.shine)))
+	// |L + V| is least at the corner of the picture that is farthest from
+	// the light.
+	least := float32(2)
+	for _, c := range [4][2]float32{{0, 0}, {float32(f.w), 0}, {0, float32(f.h)}, {float32(f.w), float32(f.h)}} {
+		a, b := float32(0), float32(0)
+		if p.persp {
+			a, b = (float32(p.cx)-c[0])/float32(p.f), (c[1]-float32(p.cy))/float32(p.f)
+		}
+		lv := (o.kx*a + o.ky*b + o.kz) / sqrt32(a*a+b*b+1)
+		least = min(least, sqrt32(max(0, 2+2*lv)))
+	}
+	o.glintSum = o.glint*least - 1e-4
 	g := f.tone(l.Ground)
 	f.ground = [4]float32{g[0], g[1], g[2], float32(math.Max(0, math.Min(1, l.GroundOpacity)))}
-	p := sceneProjection(f.camera, f.w, f.h, 1)
 	o.persp, o.invF, o.cx, o.cy = p.persp, float32(1/p.f), float32(p.cx), float32(p.cy)
 }
 
-// sight holds what shading needs of a pixel: the direction (a, b, 1) to the
-// eye, the length of that vector's inverse, and the inverse length of the
-// unit vector to the eye plus that to the key light.
-type sight struct {
-	a, b   float32
-	il, ih float32
+// sightAt returns the direction (a, b, 1) from a place of the whole picture
+// to the eye.
+func (l *light) sightAt(x, y float32) (a, b float32) {
+	if !l.persp {
+		return 0, 0
+	}
+	return (l.cx - x) * l.invF, (y - l.cy) * l.invF
 }
 
-// sightAt returns the sight of a place of the whole picture.
-func (l *light) sightAt(x, y float32, s *sight) {
-	if !l.persp {
-		*s = sight{0, 0, 1, 1 / sqrt32(2+2*l.kz)}
-		return
+// gleam returns the highlight of a surface, where nl is the cosine between
+// its unit normal and the key light and nv the product of the normal with
+// (a, b, 1). Most places are far from the highlight and cost next to nothing.
+func (l *light) gleam(a, b, nl, nv float32) float32 {
+	// The cosine with the direction half way, (nl + nv/v)/|L + V|, is at
+	// most half the sum times what |L + V| can be less than 2.
+	if nl+nv < l.glintSum {
+		return 0
 	}
-	a, b := (l.cx-x)*l.invF, (y-l.cy)*l.invF
 	il := 1 / sqrt32(a*a+b*b+1)
-	*s = sight{a, b, il, 1 / sqrt32(2.000001+2*(l.kx*a+l.ky*b+l.kz)*il)}
+	lv := (l.kx*a + l.ky*b + l.kz) * il
+	nh := (nl + nv*il) / sqrt32(2.000001+2*lv)
+	if nh < l.glint {
+		return 0
+	}
+	return l.specular * power(nh, l.shine)
 }
 
 func sqrt32(v float32) float32 { return float32(math.Sqrt(float64(v))) }
@@ -108,51 +129,49 @@ func power(x float32, n int) float32 {
 }
 
 // shadePlace returns the colour of a slot's surface at a place of the canvas.
-func (t *tile) shadePlace(k uint32, x, y float32, s *sight) (r, g, b float32) {
-	o := t.lookAt(k, x, y)
-	p := o.part
+// It is where the looks part.
+func (t *tile) shadePlace(k uint32, x, y float32) (r, g, b float32) {
+	s := &t.slots[k]
+	p := &t.f.parts[s.part]
+	nx, ny, nz, side := t.lookAt(s, p, x, y)
 	r, g, b = p.col[0], p.col[1], p.col[2]
 	if p.hatch.period > 0 {
-		if w := t.hatching(k, o, x, y); w > 0 {
+		if w := t.hatching(s, p, x, y); w > 0 {
 			h := &p.hatch.col
 			r, g, b = r+(h[0]-r)*w, g+(h[1]-g)*w, b+(h[2]-b)*w
-			o.part = p
 		}
 	}
 	if p.flat {
 		return r, g, b
 	}
 	l := &t.f.light
-	nx, ny, nz := o.x, o.y, o.z
-	nv := nx*s.a + ny*s.b + nz
-	turn := nv < 0
-	if o.outward && l.style != Plain {
-		turn = !o.facing
-	}
+	va, vb := l.sightAt(x+float32(t.x), y+float32(t.y))
+	nv := nx*va + ny*vb + nz
 	q := nx*nx + ny*ny + nz*nz
 	if !(q > 1e-36) {
-		nx, ny, nz, q, nv, turn = s.a, s.b, 1, 1/(s.il*s.il), 1/(s.il*s.il), false
+		nx, ny, nz = va, vb, 1
+		q = va*va + vb*vb + 1
+		nv, side = q, 0
 	}
 	inv := 1 / sqrt32(q)
-	if turn {
+	if side == 0 && nv < 0 || side < 0 && l.style != Plain || side != 0 && l.style == Plain && nv < 0 {
 		inv = -inv
 	}
 	nl := (nx*l.kx + ny*l.ky + nz*l.kz) * inv
+	nv *= inv
 	switch l.style {
 	case Ink:
-		m := t.tone(k, nl, x, y)
+		m := t.tone(s, p, nl, x, y)
 		return r * m, g * m, b * m
 	case Lit:
-		return t.lit(o, r, g, b, nx*inv, ny*inv, nz*inv, nl, x, y, s)
+		d := t.lit(s.part, nx*inv, ny*inv, nz*inv, nl, x, y)
+		h := l.gleam(va, vb, nl, nv) * p.gloss * min(d, 1)
+		return r*d + h, g*d + h, b*d + h
 	}
 	d := l.ambient
 	if nl > 0 {
 		d += l.diffuse * nl
 	}
-	r, g, b = r*d, g*d, b*d
-	if nh := (nl + nv*inv*s.il) * s.ih; nh > l.glint {
-		h := l.specular * power(nh, l.shine)
-		r, g, b = r+h, g+h, b+h
-	}
-	return r, g, b
+	h := l.gleam(va, vb, nl, nv)
+	return r*d + h, g*d + h, b*d + h
 }

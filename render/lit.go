@@ -251,8 +251,9 @@ func (s *shades) hidden(part int32, x, y, z, nx, ny, nz float32) float32 {
 	return min(1, strength*sum)
 }
 
-// lit returns the colour of a place in the lit look.
-func (t *tile) lit(o *surf, r, g, b, nx, ny, nz, nl, x, y float32, s *sight) (float32, float32, float32) {
+// lit returns the share of its colour that a place shows in the lit look; the
+// normal is of unit length.
+func (t *tile) lit(part int32, nx, ny, nz, nl, x, y float32) float32 {
 	l := &t.f.light
 	// Light that reaches a little round the edge of night.
 	const wrap = 0.3
@@ -263,18 +264,11 @@ func (t *tile) lit(o *surf, r, g, b, nx, ny, nz, nl, x, y float32, s *sight) (fl
 	if k := nx*l.fx + ny*l.fy + nz*l.fz; k > 0 {
 		d += l.fill * k
 	}
-	shine := float32(0)
-	if nh := (nl + (nx*s.a+ny*s.b+nz)*s.il) * s.ih; nh > l.glint {
-		shine = l.specular * o.part.gloss * power(nh, l.shine)
+	if sh := &t.f.shades; l.shade > 0 && len(sh.head) > 0 && sh.head[part] < sh.head[part+1] {
+		px, py, pz := l.spot(&t.f.projs[0], x+float32(t.x), y+float32(t.y), t.surf.n)
+		d *= 1 - l.shade*sh.hidden(part, px, py, pz, nx, ny, nz)
 	}
-	if l.shade > 0 && len(t.f.shades.head) > 0 && o.part.proj == 0 {
-		pr := &t.f.projs[0]
-		px, py, pz := l.spot(pr, x+float32(t.x), y+float32(t.y), o.n)
-		k := 1 - l.shade*t.f.shades.hidden(o.index, px, py, pz, nx, ny, nz)
-		d *= k
-		shine *= k
-	}
-	return r*d + shine, g*d + shine, b*d + shine
+	return d
 }
 
 // spot returns the point of camera space at a pixel place and nearness.

@@ -50,7 +50,6 @@ func (t *tile) resolve(out image.Rectangle) {
 	if inked {
 		t.drawInk(out)
 	}
-	var s sight
 	for y := out.Min.Y; y < out.Max.Y; y++ {
 		py := y - t.y
 		row := d.Pix[d.PixOffset(out.Min.X+at.X, y+at.Y):]
@@ -69,20 +68,19 @@ func (t *tile) resolve(out image.Rectangle) {
 				o[0], o[1], o[2], o[3] = ground[0], ground[1], ground[2], ground[3]
 				continue
 			}
-			f.light.sightAt(float32(x)+0.5, float32(y)+0.5, &s)
 			var c [4]float32
 			switch {
 			case layered:
-				c = t.blend(keys, i, px, py, &s)
+				c = t.blend(keys, i, px, py)
 			case line:
-				c = t.under(t.solid(keys, px, py, &s), f.inked(t.lines.dist[i]))
+				c = t.under(t.solid(keys, px, py), f.inked(t.lines.dist[i]))
 			default:
 				if k := t.whole(keys); k != 0 {
-					r, g, b := t.shadePlace(k, float32(px)+0.5, float32(py)+0.5, &s)
+					r, g, b := t.shadePlace(k, float32(px)+0.5, float32(py)+0.5)
 					o[0], o[1], o[2], o[3] = encode(r, f.linear), encode(g, f.linear), encode(b, f.linear), 255
 					continue
 				}
-				c = t.solid(keys, px, py, &s)
+				c = t.solid(keys, px, py)
 			}
 			v := f.pixel(c[0], c[1], c[2], c[3])
 			o[0], o[1], o[2], o[3] = v[0], v[1], v[2], v[3]
@@ -109,19 +107,27 @@ func (t *tile) whole(keys []uint64) uint32 {
 
 // middle returns the mean place of the samples of a mask within a pixel.
 func (t *tile) middle(mask uint32) (x, y float32) {
-	n := 1 << t.lg
-	if bits.OnesCount32(mask) == n {
+	if t.lg <= 2 {
+		m := &t.middles[mask&15]
+		return m[0], m[1]
+	}
+	return t.f.middleOf(mask)
+}
+
+func (f *frame) middleOf(mask uint32) (x, y float32) {
+	n := 1 << f.lg
+	c := bits.OnesCount32(mask)
+	if c == n || c == 0 {
 		return 0.5, 0.5
 	}
 	var sx float64
 	var sk int
 	for m := mask; m != 0; m &= m - 1 {
 		k := bits.TrailingZeros32(m)
-		sx += t.sx[k&15]
+		sx += f.sx[k&15]
 		sk += 2*k + 1
 	}
-	c := float64(bits.OnesCount32(mask))
-	return float32(sx / c), float32(float64(sk) / c / float64(2*n))
+	return float32(sx / float64(c)), float32(float64(sk) / float64(c) / float64(2*n))
 }
 
 // group returns the mask of the samples among todo that show the same part as
@@ -159,7 +165,7 @@ func (t *tile) group(keys []uint64, todo uint32) (mask, slot uint32) {
 }
 
 // solid returns the colour of a pixel without translucent layers.
-func (t *tile) solid(keys []uint64, px, py int, s *sight) [4]float32 {
+func (t *tile) solid(keys []uint64, px, py int) [4]float32 {
 	n := len(keys)
 	todo := uint32(1)<<n - 1
 	inv := 1 / float32(n)
@@ -175,7 +181,7 @@ func (t *tile) solid(keys []uint64, px, py int, s *sight) [4]float32 {
 			continue
 		}
 		mx, my := t.middle(mask)
-		r, gr, b := t.shadePlace(slot, float32(px)+mx, float32(py)+my, s)
+		r, gr, b := t.shadePlace(slot, float32(px)+mx, float32(py)+my)
 		c[0] += w * min(r, 1)
 		c[1] += w * min(gr, 1)
 		c[2] += w * min(b, 1)
@@ -196,7 +202,7 @@ func (t *tile) under(c [4]float32, a float32) [4]float32 {
 
 // blend returns the colour of a pixel with translucent layers: for every
 // sample the layers in front of its opaque surface, from front to back.
-func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
+func (t *tile) blend(keys []uint64, i, px, py int) [4]float32 {
 	n := len(keys)
 	list := t.sorted[:0]
 	for k := t.first[i]; k >= 0; k = t.frags[k].next {
@@ -238,7 +244,7 @@ func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
 		if line > 0 && fr.n < t.lines.near[i] {
 			draw()
 		}
-		r, g, b, a := t.fragColor(fr, px, py, s)
+		r, g, b, a := t.fragColor(fr, px, py)
 		if fr.mask == full && same {
 			w := acc[0][3] * a
 			acc[0][0] += w * r
@@ -279,7 +285,7 @@ func (t *tile) blend(keys []uint64, i, px, py int, s *sight) [4]float32 {
 		r, g, b, a := ground[0], ground[1], ground[2], ground[3]
 		if slot != 0 {
 			mx, my := t.middle(mask)
-			r, g, b = t.shadePlace(slot, float32(px)+mx, float32(py)+my, s)
+			r, g, b = t.shadePlace(slot, float32(px)+mx, float32(py)+my)
 			a = 1
 		}
 		for m := mask; m != 0; m &= m - 1 {
@@ -308,7 +314,7 @@ func (t *tile) before(a, b int32) bool {
 }
 
 // fragColor returns the colour and opacity of a fragment.
-func (t *tile) fragColor(fr *frag, px, py int, s *sight) (r, g, b, a float32) {
+func (t *tile) fragColor(fr *frag, px, py int) (r, g, b, a float32) {
 	p := &t.f.parts[t.slots[fr.slot].part]
 	if p.form == formLabel {
 		return t.labelColor(p, px, py)
@@ -318,6 +324,6 @@ func (t *tile) fragColor(fr *frag, px, py int, s *sight) (r, g, b, a float32) {
 		return c[0], c[1], c[2], fr.nx
 	}
 	mx, my := t.middle(fr.mask)
-	r, g, b = t.shadePlace(fr.slot, float32(px)+mx, float32(py)+my, s)
+	r, g, b = t.shadePlace(fr.slot, float32(px)+mx, float32(py)+my)
 	return r, g, b, p.alpha
 }

@@ -2,19 +2,10 @@ package render
 
 import "math"
 
-// surf is what a sample's surface shows at one place.
+// surf is what a surface shows at the place last looked at.
 type surf struct {
-	part   *part
-	index  int32   // of the part
-	n      float32 // nearness
-	nx, ny float32 // its growth to the right and down
-	// The normal in camera space, not of unit length, as the surface has it:
-	// it may point away from the viewer.
-	x, y, z float32
-	// outward tells that the sign of the normal is the surface's own and
-	// facing whether the viewer sees its outer side.
-	outward, facing bool
-	u, v            float32 // surface coordinates
+	n    float32 // nearness
+	u, v float32 // surface coordinates
 }
 
 // corners returns the corners of a mesh's triangle on the picture, its index
@@ -85,45 +76,38 @@ func (q *quadric) tangent(x, y float64, kind uint32) (n, nx, ny float32) {
 	return float32(q.b.at(x, y) + s), float32(q.b[1] + h*dx), float32(q.b[2] + h*dy)
 }
 
-// lookAt fills t.surf with the surface of a slot at a place of the canvas.
-func (t *tile) lookAt(k uint32, x, y float32) *surf {
-	s := &t.slots[k]
-	o := &t.surf
+// lookAt returns the normal, in camera space and of any length, of a slot's
+// surface at a place of the canvas, and whether it is known to point to the
+// viewer or, negated, away; 0 when its sign means nothing. Nearness, when
+// t.deep is set, and surface coordinates of hatched parts go to t.surf.
+func (t *tile) lookAt(s *slot, p *part, x, y float32) (nx, ny, nz float32, side int) {
 	f := t.f
-	p := &f.parts[s.part]
-	o.part, o.index = p, s.part
 	switch p.form {
 	case formMesh:
-		t.lookAtMesh(o, s, p, x, y)
+		return t.lookAtMesh(s, p, x, y)
 	case formQuadric:
 		q := &f.quadrics[p.index]
 		n, c, g := q.surface(float64(x)+float64(t.x), float64(y)+float64(t.y), s.tri)
 		g0, g1, g2 := float32(g[0]), float32(g[1]), float32(g[2])
 		m := &q.nrm
-		o.n = float32(n)
-		o.x = m[0]*g0 + m[1]*g1 + m[2]*g2
-		o.y = m[3]*g0 + m[4]*g1 + m[5]*g2
-		o.z = m[6]*g0 + m[7]*g1 + m[8]*g2
-		o.outward = false
+		t.surf.n = float32(n)
 		if p.hatch.period > 0 {
-			o.u, o.v = q.coords(c)
+			t.surf.u, t.surf.v = q.coords(c)
 		}
+		return m[0]*g0 + m[1]*g1 + m[2]*g2, m[3]*g0 + m[4]*g1 + m[5]*g2, m[6]*g0 + m[7]*g1 + m[8]*g2, 0
 	case formDisc:
 		d := &f.discs[p.index]
-		X, Y := float64(x)+float64(t.x)-d.mx, float64(y)+float64(t.y)-d.my
-		o.n = float32(d.n[0] + d.n[1]*X + d.n[2]*Y)
-		o.x, o.y, o.z = d.normal[0], d.normal[1], d.normal[2]
-		o.outward = false
-		if p.hatch.period > 0 {
+		if t.deep || p.hatch.period > 0 {
+			X, Y := float64(x)+float64(t.x)-d.mx, float64(y)+float64(t.y)-d.my
+			t.surf.n = float32(d.n[0] + d.n[1]*X + d.n[2]*Y)
 			w := d.radius / (d.w[0] + d.w[1]*X + d.w[2]*Y)
-			o.u = float32((d.u[0] + d.u[1]*X + d.u[2]*Y) * w)
-			o.v = float32((d.v[0] + d.v[1]*X + d.v[2]*Y) * w)
+			t.surf.u = float32((d.u[0] + d.u[1]*X + d.u[2]*Y) * w)
+			t.surf.v = float32((d.v[0] + d.v[1]*X + d.v[2]*Y) * w)
 		}
-	default:
-		o.n = 1
-		o.x, o.y, o.z, o.outward = 0, 0, 1, false
+		return d.normal[0], d.normal[1], d.normal[2], 0
 	}
-	return o
+	t.surf.n = 1
+	return 0, 0, 1, 0
 }
 
 // coords returns the surface coordinates of a point of a round body.
@@ -138,7 +122,7 @@ func (q *quadric) coords(p [3]float64) (u, v float32) {
 // lookAtMesh mixes the normals and coordinates of a triangle's corners. The
 // mixture need not be weighed out to 1 for the normal, whose length does not
 // matter, which saves divisions.
-func (t *tile) lookAtMesh(o *surf, s *slot, p *part, x, y float32) {
+func (t *tile) lookAtMesh(s *slot, p *part, x, y float32) (nx, ny, nz float32, side int) {
 	f := t.f
 	m := p.mesh
 	var a, b, c *vert
@@ -160,7 +144,12 @@ func (t *tile) lookAtMesh(o *surf, s *slot, p *part, x, y float32) {
 	vx, vy := c.x-a.x, c.y-a.y
 	det := ux*vy - vx*uy
 	wb, wc := x*vy-vx*y, ux*y-x*uy
-	o.outward, o.facing = m.Closed, (det < 0) != p.mirrored
+	if m.Closed {
+		side = 1
+		if (det < 0) == p.mirrored {
+			side = -1
+		}
+	}
 	if det < 0 {
 		det, wb, wc = -det, -wb, -wc
 	}
@@ -172,9 +161,9 @@ func (t *tile) lookAtMesh(o *surf, s *slot, p *part, x, y float32) {
 	}
 	if t.deep {
 		sum := wa + wb + wc
-		o.n = a.n
+		t.surf.n = a.n
 		if sum > 0 {
-			o.n = (wa*a.n + wb*b.n + wc*c.n) / sum
+			t.surf.n = (wa*a.n + wb*b.n + wc*c.n) / sum
 		}
 	}
 	if p.persp {
@@ -197,16 +186,17 @@ func (t *tile) lookAtMesh(o *surf, s *slot, p *part, x, y float32) {
 		gx, gy, gz = ay*bz-az*by, az*bx-ax*bz, ax*by-ay*bx
 	}
 	r := &p.nrm
-	o.x = r[0]*gx + r[1]*gy + r[2]*gz
-	o.y = r[3]*gx + r[4]*gy + r[5]*gz
-	o.z = r[6]*gx + r[7]*gy + r[8]*gz
+	nx = r[0]*gx + r[1]*gy + r[2]*gz
+	ny = r[3]*gx + r[4]*gy + r[5]*gz
+	nz = r[6]*gx + r[7]*gy + r[8]*gz
 	if p.hatch.period > 0 && m.Coords != nil {
 		ca, cb, cc := &m.Coords[ix[0]], &m.Coords[ix[1]], &m.Coords[ix[2]]
 		k := float32(0)
 		if sum := wa + wb + wc; sum != 0 {
 			k = 1 / sum
 		}
-		o.u = (wa*ca[0] + wb*cb[0] + wc*cc[0]) * k
-		o.v = (wa*ca[1] + wb*cb[1] + wc*cc[1]) * k
+		t.surf.u = (wa*ca[0] + wb*cb[0] + wc*cc[0]) * k
+		t.surf.v = (wa*ca[1] + wb*cb[1] + wc*cc[1]) * k
 	}
+	return nx, ny, nz, side
 }
