@@ -350,7 +350,7 @@ func (t *tile) inkLayer(l *layer, part int32) {
 	n := float32(int(1) << t.lg)
 	any := false
 	meet := func(i, j int, b *border) {
-		p, q := l.mask[i], l.mask[j]
+		p, q := l.at[i].mask, l.at[j].mask
 		if p == q {
 			return
 		}
@@ -359,10 +359,10 @@ func (t *tile) inkLayer(l *layer, part int32) {
 			return
 		}
 		at := cp + cq - 0.5
-		slot := l.slot[i]
+		slot := l.at[i].slot
 		if cp < 0.5 {
 			at = 1 - at
-			slot = l.slot[j]
+			slot = l.at[j].slot
 		}
 		b.on, b.at = true, min(1, max(0, at))
 		b.near, _, _ = t.plane(slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
@@ -420,7 +420,7 @@ func (t *tile) addInks() {
 		if mask == 0 {
 			continue
 		}
-		t.frags = append(t.frags, frag{next: t.first[k.pixel], slot: slot, mask: mask, n: k.n, nx: k.a})
+		t.frags = append(t.frags, frag{next: t.first[k.pixel], slot: slot, mask: mask, n: k.n, a: k.a})
 		t.first[k.pixel] = int32(len(t.frags) - 1)
 		t.anyFrag = true
 	}

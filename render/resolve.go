@@ -2,6 +2,7 @@ package render
 
 import (
 	"image"
+	"math"
 	"math/bits"
 )
 
@@ -204,6 +205,7 @@ func (t *tile) under(c [4]float32, a float32) [4]float32 {
 // sample the layers in front of its opaque surface, from front to back.
 func (t *tile) blend(keys []uint64, i, px, py int) [4]float32 {
 	n := len(keys)
+	full := uint32(1)<<n - 1
 	list := t.sorted[:0]
 	for k := t.first[i]; k >= 0; k = t.frags[k].next {
 		list = append(list, k)
@@ -212,74 +214,93 @@ func (t *tile) blend(keys []uint64, i, px, py int) [4]float32 {
 		}
 	}
 	t.sorted = list
-	acc := t.samples[:n]
-	for k := range acc {
-		acc[k] = [4]float32{0, 0, 0, 1}
-	}
-	full := uint32(1)<<n - 1
-	same := true // all samples alike so far
-	line := float32(0)
+	line, lineNear := float32(0), float32(0)
 	if t.f.ink.half > 0 && t.lines.dist[i] < 1e9 {
-		line = t.f.inked(t.lines.dist[i])
+		line, lineNear = t.f.inked(t.lines.dist[i]), t.lines.near[i]
 	}
-	draw := func() {
-		c := &t.f.light.line
-		for k := range acc {
-			w := acc[k][3] * line
-			if same {
-				w = acc[0][3] * line
-			}
-			acc[k][0] += w * c[0]
-			acc[k][1] += w * c[1]
-			acc[k][2] += w * c[2]
-			acc[k][3] -= w
-			if same {
-				break
-			}
-		}
-		line = 0
+	if t.crossing(list) {
+		t.blendSamples(list, n, px, py, line, lineNear)
+		return t.behind(keys, px, py)
 	}
+	lc := &t.f.light.line
+	// c and left are the colour and the light let through so far, as long as
+	// all samples agree.
+	var r, g, b float32
+	left, same := float32(1), true
+	acc := t.samples[:n]
 	for _, k := range list {
 		fr := &t.frags[k]
-		if line > 0 && fr.n < t.lines.near[i] {
-			draw()
+		if line > 0 && fr.n < lineNear {
+			if same {
+				w := left * line
+				r, g, b, left = r+w*lc[0], g+w*lc[1], b+w*lc[2], left-w
+			} else {
+				t.add(full, lc[0], lc[1], lc[2], line)
+			}
+			line = 0
 		}
-		r, g, b, a := t.fragColor(fr, px, py)
+		fr0, fg, fb, fa := t.fragColor(fr, px, py)
 		if fr.mask == full && same {
-			w := acc[0][3] * a
-			acc[0][0] += w * r
-			acc[0][1] += w * g
-			acc[0][2] += w * b
-			acc[0][3] -= w
+			w := left * fa
+			r, g, b, left = r+w*fr0, g+w*fg, b+w*fb, left-w
 			continue
 		}
 		if same {
 			same = false
-			for k := 1; k < n; k++ {
-				acc[k] = acc[0]
+			for k := range acc {
+				acc[k] = [4]float32{r, g, b, left}
 			}
 		}
-		for m := fr.mask; m != 0; m &= m - 1 {
-			c := &acc[bits.TrailingZeros32(m)&15]
-			w := c[3] * a
-			c[0] += w * r
-			c[1] += w * g
-			c[2] += w * b
-			c[3] -= w
-		}
+		t.add(fr.mask, fr0, fg, fb, fa)
 	}
-	if line > 0 {
-		draw()
+	if line > 0 && same {
+		w := left * line
+		r, g, b, left = r+w*lc[0], g+w*lc[1], b+w*lc[2], left-w
+	} else if line > 0 {
+		t.add(full, lc[0], lc[1], lc[2], line)
 	}
-	if same {
-		for k := 1; k < n; k++ {
-			acc[k] = acc[0]
-		}
+	if !same {
+		return t.behind(keys, px, py)
 	}
+	var any uint32
+	for _, k := range keys {
+		any |= uint32(k)
+	}
+	if any == 0 {
+		o := &t.f.ground
+		w := left * o[3]
+		return [4]float32{min(r+w*o[0], 1), min(g+w*o[1], 1), min(b+w*o[2], 1), 1 - left + w}
+	}
+	if k := t.whole(keys); k != 0 {
+		fr0, fg, fb := t.shadePlace(k, float32(px)+0.5, float32(py)+0.5)
+		return [4]float32{min(r+left*fr0, 1), min(g+left*fg, 1), min(b+left*fb, 1), 1}
+	}
+	for k := range acc {
+		acc[k] = [4]float32{r, g, b, left}
+	}
+	return t.behind(keys, px, py)
+}
+
+// add lays a colour under what the samples of a mask have so far.
+func (t *tile) add(mask uint32, r, g, b, a float32) {
+	for m := mask; m != 0; m &= m - 1 {
+		c := &t.samples[bits.TrailingZeros32(m)&15]
+		w := c[3] * a
+		c[0] += w * r
+		c[1] += w * g
+		c[2] += w * b
+		c[3] -= w
+	}
+}
+
+// behind lays the opaque surfaces and the ground under the samples and
+// returns their mean.
+func (t *tile) behind(keys []uint64, px, py int) [4]float32 {
+	n := len(keys)
 	var out [4]float32
 	inv := 1 / float32(n)
 	ground := &t.f.ground
-	for todo := full; todo != 0; {
+	for todo := uint32(1)<<n - 1; todo != 0; {
 		mask, slot := t.group(keys, todo)
 		todo &^= mask
 		r, g, b, a := ground[0], ground[1], ground[2], ground[3]
@@ -289,7 +310,7 @@ func (t *tile) blend(keys []uint64, i, px, py int) [4]float32 {
 			a = 1
 		}
 		for m := mask; m != 0; m &= m - 1 {
-			c := &acc[bits.TrailingZeros32(m)&15]
+			c := &t.samples[bits.TrailingZeros32(m)&15]
 			w := c[3] * a
 			out[0] += min(c[0]+w*r, 1)
 			out[1] += min(c[1]+w*g, 1)
@@ -301,6 +322,72 @@ func (t *tile) blend(keys []uint64, i, px, py int) [4]float32 {
 		out[k] *= inv
 	}
 	return out
+}
+
+// crossing tells whether two layers that follow each other may change places
+// within the pixel.
+func (t *tile) crossing(list []int32) bool {
+	for j := 1; j < len(list); j++ {
+		a, b := &t.frags[list[j-1]], &t.frags[list[j]]
+		if a.n-b.n < (abs32(a.nx-b.nx)+abs32(a.ny-b.ny))/2 && t.slots[a.slot].part != t.slots[b.slot].part {
+			return true
+		}
+	}
+	return false
+}
+
+// blendSamples fills the samples with the layers in front of the opaque
+// surfaces, in an order of their own for every sample.
+func (t *tile) blendSamples(list []int32, n, px, py int, line, lineNear float32) {
+	colors := t.colors[:0]
+	for _, k := range list {
+		r, g, b, a := t.fragColor(&t.frags[k], px, py)
+		colors = append(colors, [4]float32{r, g, b, a})
+	}
+	t.colors = colors
+	lc := &t.f.light.line
+	for s := range n {
+		x, y := float32(t.sx[s&15])-0.5, (float32(s)+0.5)/float32(n)-0.5
+		acc := [4]float32{0, 0, 0, 1}
+		lay := func(r, g, b, a float32) {
+			w := acc[3] * a
+			acc[0] += w * r
+			acc[1] += w * g
+			acc[2] += w * b
+			acc[3] -= w
+		}
+		last := float32(math.Inf(1))
+		lastK := -1
+		line := line
+		for range list {
+			// The next layer behind the last.
+			best, bestN := -1, float32(math.Inf(-1))
+			for j, k := range list {
+				fr := &t.frags[k]
+				if fr.mask>>s&1 == 0 {
+					continue
+				}
+				at := fr.n + fr.nx*x + fr.ny*y
+				if (at < last || at == last && j > lastK) && at > bestN {
+					best, bestN = j, at
+				}
+			}
+			if best < 0 {
+				break
+			}
+			if line > 0 && bestN < lineNear {
+				lay(lc[0], lc[1], lc[2], line)
+				line = 0
+			}
+			c := &colors[best]
+			lay(c[0], c[1], c[2], c[3])
+			last, lastK = bestN, best
+		}
+		if line > 0 {
+			lay(lc[0], lc[1], lc[2], line)
+		}
+		t.samples[s] = acc
+	}
 }
 
 // before tells whether fragment a lies in front of b; of two at the same
@@ -321,7 +408,7 @@ func (t *tile) fragColor(fr *frag, px, py int) (r, g, b, a float32) {
 	}
 	if t.slots[fr.slot].batch == -2 {
 		c := &t.f.light.line
-		return c[0], c[1], c[2], fr.nx
+		return c[0], c[1], c[2], fr.a
 	}
 	mx, my := t.middle(fr.mask)
 	r, g, b = t.shadePlace(fr.slot, float32(px)+mx, float32(py)+my)

@@ -36,6 +36,7 @@ type tile struct {
 	inks    []inkFrag
 	samples [16][4]float32
 	sorted  []int32
+	colors  [][4]float32
 	lines   inkTile
 }
 
@@ -49,11 +50,16 @@ type slot struct {
 
 // layer collects one sheet of a translucent part, pixel by pixel.
 type layer struct {
-	mask []uint32
-	slot []uint32
-	any  bool
-	y0   int
-	y1   int
+	at     []sheet
+	any    bool
+	y0, y1 int // rows that were touched
+}
+
+// sheet is a layer's share of a pixel; n, nx and ny are as in frag and set
+// for meshes only.
+type sheet struct {
+	mask, slot uint32
+	n, nx, ny  float32
 }
 
 // frag is one translucent sheet in one pixel.
@@ -63,6 +69,7 @@ type frag struct {
 	mask   uint32
 	n      float32 // nearness at the pixel's middle
 	nx, ny float32 // its growth to the right and down
+	a      float32 // opacity of a line
 }
 
 // drawTile draws one tile of the frame into the destination.
@@ -99,13 +106,9 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	n := t.side * t.side
 	t.keys = grow(t.keys, n<<t.lg)
 	t.first = grow(t.first, n)
-	if len(t.front.mask) != n {
-		t.front, t.back = newLayer(n), newLayer(n)
+	if len(t.front.at) != n {
+		t.front.at, t.back.at = make([]sheet, n), make([]sheet, n)
 	}
-}
-
-func newLayer(n int) layer {
-	return layer{mask: make([]uint32, n), slot: make([]uint32, n)}
 }
 
 // reset forgets what the canvas shows.
@@ -405,6 +408,10 @@ func (t *tile) plate(d *disc, p *part, layered bool) {
 	j0, j1 := t.rowRange(b.y0, b.y1)
 	step := 1 / float64(int(1)<<t.lg)
 	slot := uint32(len(t.slots) - 1)
+	if layered && d.hole < 0 {
+		t.pane(d, b, slot)
+		return
+	}
 	var parts [2][2]float64
 	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
 	for j := j0; j < j1; j++ {
@@ -416,6 +423,57 @@ func (t *tile) plate(d *disc, p *part, layered bool) {
 		for i := range n {
 			x0, x1 := t.pixelRange(parts[i][0], parts[i][1], k)
 			t.run(py, x0, x1, k, float32(n0), float32(d.n[1]), slot, layered)
+		}
+	}
+}
+
+// pane draws a translucent disc without a hole. It is one sheet, so its
+// fragments are made at once, pixel row by pixel row.
+func (t *tile) pane(d *disc, b *box, slot uint32) {
+	n := 1 << t.lg
+	y0, y1 := max(t.clip.Min.Y, int(math.Max(-1e6, b.y0))-t.y-1), min(t.clip.Max.Y, int(math.Min(1e6, b.y1))-t.y+2)
+	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
+	var piece [2][2]float64
+	var x0, x1 [16]int
+	nx, ny := float32(d.n[1]), float32(d.n[2])
+	full := uint32(1)<<n - 1
+	for py := y0; py < y1; py++ {
+		from, to, coreFrom, coreTo := math.MaxInt, 0, 0, math.MaxInt
+		for k := range n {
+			x0[k], x1[k] = 0, 0
+			y := float64(t.y+py) + (float64(k)+0.5)/float64(n)
+			if d.spans(y, lo, hi, &piece) > 0 {
+				x0[k], x1[k] = t.pixelRange(piece[0][0], piece[0][1], k)
+			}
+			if x0[k] < x1[k] {
+				from, to = min(from, x0[k]), max(to, x1[k])
+			}
+			coreFrom, coreTo = max(coreFrom, x0[k]), min(coreTo, x1[k])
+		}
+		row := d.n[0] + d.n[2]*(float64(t.y+py)+0.5-d.my) + d.n[1]*(float64(t.x)+0.5-d.mx)
+		for x := from; x < to; x++ {
+			mask := full
+			if x < coreFrom || x >= coreTo {
+				mask = 0
+				for k := range n {
+					if x >= x0[k] && x < x1[k] {
+						mask |= 1 << k
+					}
+				}
+			}
+			i := py*t.side + x
+			near := float32(row + d.n[1]*float64(x))
+			for k, key := range t.keys[i<<t.lg:][:n] {
+				if uint32(key) != 0 || t.empty != 0 {
+					at := near + nx*(float32(t.sx[k&15])-0.5) + ny*((float32(k)+0.5)/float32(n)-0.5)
+					if int64(uint64(math.Float32bits(at))<<32|math.MaxUint32) <= int64(key) {
+						mask &^= 1 << k
+					}
+				}
+			}
+			if mask != 0 {
+				t.push(i, frag{slot: slot, mask: mask, n: near, nx: nx, ny: ny})
+			}
 		}
 	}
 }
@@ -456,7 +514,7 @@ func (t *tile) stroke(s *stroke, layered bool) {
 		for x := x0; x < x1; x++ {
 			n := float32(s.near(float64(t.x+x)+t.sx[k], y))
 			if layered {
-				if t.front.mask[py*t.side+x]>>k&1 == 0 {
+				if t.front.at[py*t.side+x].mask>>k&1 == 0 {
 					t.cover(&t.front, py, x, k, n, slot)
 				}
 				continue
@@ -477,17 +535,23 @@ func (t *tile) cover(l *layer, py, x, k int, n float32, slot uint32) {
 	if int64(uint64(math.Float32bits(n))<<32|math.MaxUint32) <= int64(t.keys[i<<t.lg+k]) {
 		return
 	}
-	m := l.mask[i]
-	if m>>k&1 != 0 {
-		t.emit(l, i)
-		m = 0
+	s := &l.at[i]
+	if s.mask>>k&1 != 0 {
+		t.emit(s, i)
 	}
+	l.touch(py)
+	s.mask |= 1 << k
+	s.slot = slot
+}
+
+func (l *layer) touch(y int) {
 	if !l.any {
-		l.any, l.y0, l.y1 = true, py, py
+		l.any, l.y0, l.y1 = true, y, y
+	} else if y < l.y0 {
+		l.y0 = y
+	} else if y > l.y1 {
+		l.y1 = y
 	}
-	l.y0, l.y1 = min(l.y0, py), max(l.y1, py)
-	l.mask[i] = m | 1<<k
-	l.slot[i] = slot
 }
 
 // flush turns what the layers hold into fragments.
@@ -499,22 +563,38 @@ func (t *tile) flush(part int32) {
 		if !l.any {
 			continue
 		}
-		for i := l.y0 * t.side; i < (l.y1+1)*t.side; i++ {
-			if l.mask[i] != 0 {
-				t.emit(l, i)
+		at := l.at[l.y0*t.side : (l.y1+1)*t.side]
+		mesh := t.f.parts[part].form == formMesh
+		for i := range at {
+			s := &at[i]
+			if s.mask == 0 {
+				continue
+			}
+			if mesh {
+				t.push(l.y0*t.side+i, frag{slot: s.slot, mask: s.mask, n: s.n, nx: s.nx, ny: s.ny})
+				s.mask = 0
+			} else {
+				t.emit(s, l.y0*t.side+i)
 			}
 		}
 		l.any = false
 	}
 }
 
-// emit adds the layer's pixel i to the pixel's fragments.
-func (t *tile) emit(l *layer, i int) {
-	x, y := i%t.side, i/t.side
-	fr := frag{next: t.first[i], slot: l.slot[i], mask: l.mask[i]}
-	fr.n, fr.nx, fr.ny = t.plane(l.slot[i], float32(x)+0.5, float32(y)+0.5)
+// emit makes a fragment of a layer's share of pixel i and empties it.
+func (t *tile) emit(s *sheet, i int) {
+	fr := frag{slot: s.slot, mask: s.mask, n: s.n, nx: s.nx, ny: s.ny}
+	if t.f.parts[t.slots[s.slot].part].form != formMesh {
+		fr.n, fr.nx, fr.ny = t.plane(s.slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
+	}
+	t.push(i, fr)
+	s.mask = 0
+}
+
+// push adds a fragment to a pixel.
+func (t *tile) push(i int, fr frag) {
+	fr.next = t.first[i]
 	t.first[i] = int32(len(t.frags))
 	t.frags = append(t.frags, fr)
 	t.anyFrag = true
-	l.mask[i] = 0
 }

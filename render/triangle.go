@@ -201,6 +201,8 @@ func (t *tile) addMasks(k *kernel, pixel int, l *layer) bool {
 	hit := false
 	m := 0
 	at := pixel << t.lg
+	l.touch(pixel / t.side)
+	l.touch(pixel/t.side + int(k.rows) - 1)
 	for r := range int(k.rows) {
 		for p := range int(k.pairs) {
 			if t.lg > 2 {
@@ -212,7 +214,7 @@ func (t *tile) addMasks(k *kernel, pixel int, l *layer) bool {
 						}
 					}
 					if mask != 0 {
-						t.coverMask(l, pixel+r*t.side+2*p+q, mask, k.slot)
+						t.coverMask(l, pixel+r*t.side+2*p+q, mask, k, 2*p+q, r)
 						hit = true
 					}
 				}
@@ -226,10 +228,10 @@ func (t *tile) addMasks(k *kernel, pixel int, l *layer) bool {
 			hit = true
 			i := pixel + r*t.side + 2*p
 			if b&15 != 0 {
-				t.coverMask(l, i, uint32(b&15), k.slot)
+				t.coverMask(l, i, uint32(b&15), k, 2*p, r)
 			}
 			if b>>4 != 0 {
-				t.coverMask(l, i+1, uint32(b>>4), k.slot)
+				t.coverMask(l, i+1, uint32(b>>4), k, 2*p+1, r)
 			}
 		}
 	}
@@ -239,22 +241,15 @@ func (t *tile) addMasks(k *kernel, pixel int, l *layer) bool {
 // coverMask adds samples of one pixel to a layer. When the layer has one of
 // them already, they belong to another sheet: the pixel so far becomes a
 // fragment of its own.
-func (t *tile) coverMask(l *layer, i int, mask, slot uint32) {
-	m := l.mask[i]
-	if m&mask != 0 {
-		t.emit(l, i)
-		m = 0
+func (t *tile) coverMask(l *layer, i int, mask uint32, k *kernel, x, y int) {
+	s := &l.at[i]
+	if s.mask&mask != 0 {
+		t.emit(s, i)
 	}
-	l.mask[i] = m | mask
-	l.slot[i] = slot
-	y := i / t.side
-	if !l.any {
-		l.any, l.y0, l.y1 = true, y, y
-	} else if y < l.y0 {
-		l.y0 = y
-	} else if y > l.y1 {
-		l.y1 = y
-	}
+	s.mask |= mask
+	s.slot = k.slot
+	s.n = k.n0 + k.gy*(k.y+float32(y)+0.5) + k.gx*(k.x+float32(x)+0.5)
+	s.nx, s.ny = k.gx, k.gy
 }
 
 // large draws a triangle of any size, sample row by sample row: the whole
@@ -312,6 +307,10 @@ func (t *tile) large(a, b, c *vert, n0, gx, gy float32, slot uint32, l *layer) b
 				near := row + gx*(float32(x)+float32(t.sx[s&15]))
 				if l != nil {
 					t.cover(l, py, x, s, near, slot)
+					if sh := &l.at[py*t.side+x]; sh.slot == slot {
+						sh.n = n0 + gy*(float32(py)+0.5) + gx*(float32(x)+0.5)
+						sh.nx, sh.ny = gx, gy
+					}
 					continue
 				}
 				key := uint64(math.Float32bits(near))<<32 | uint64(slot)
