@@ -21,7 +21,7 @@ func New(symbol string) (*Setting, error) {
 
 // newSetting builds the group in its standard axes.
 func newSetting(k kind) *Setting {
-	s := &Setting{Symbol: k.symbol(), kind: k}
+	s := &Setting{Symbol: k.symbol(), kind: k, turn: mgl64.Ident3()}
 	if k.infinite() {
 		return s
 	}
@@ -35,7 +35,11 @@ func newSetting(k kind) *Setting {
 			ops[i].orient(axis.X()*axis.Y()*axis.Z() < 0)
 		}
 	}
-	nameOperations(k, ops)
+	prefixes := make([]string, len(ops))
+	for i, o := range ops {
+		prefixes[i] = k.prefix(o)
+	}
+	nameOperations(k, ops, prefixes)
 	order, classOf := arrange(k, ops, table)
 	s.Operations = make([]Operation, len(ops))
 	for to, from := range order {

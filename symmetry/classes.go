@@ -69,13 +69,7 @@ func arrange(k kind, ops []Operation, table [][]int32) (order, classOf []int) {
 	classes := conjugacyClasses(table)
 	ranks := k.ranks(ops, table)
 	for _, c := range classes {
-		sort.SliceStable(c, func(a, b int) bool {
-			p, q := ops[c[a]], ops[c[b]]
-			if powerOf(p) != powerOf(q) {
-				return powerOf(p) < powerOf(q)
-			}
-			return k.direction(p).less(k.direction(q))
-		})
+		sort.SliceStable(c, func(a, b int) bool { return k.before(ops[c[a]], ops[c[b]]) })
 	}
 	printed := map[int]int{}
 	if list := printedClasses[k.family]; list != nil {
@@ -103,6 +97,14 @@ func arrange(k kind, ops []Operation, table [][]int32) (order, classOf []int) {
 		}
 	}
 	return order, classOf
+}
+
+// before sorts the members of a class: by power, then by direction.
+func (k kind) before(p, q Operation) bool {
+	if powerOf(p) != powerOf(q) {
+		return powerOf(p) < powerOf(q)
+	}
+	return k.direction(p).less(k.direction(q))
 }
 
 // first is the lowest rank in a class.

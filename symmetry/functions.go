@@ -61,14 +61,15 @@ type functionFamily struct {
 }
 
 // functionFamilies prepares rotations and polynomials up to the third degree
-// for a group. Cubic functions of the icosahedral groups have coefficients in
-// φ and no common names; they are left out.
-func functionFamilies(k kind, ops []Operation) []functionFamily {
+// for a group. upright: every operation keeps z or turns it round, so that the
+// plain polynomials of axialCubes will do. Cubic functions of the icosahedral
+// groups have coefficients in φ and no common names; they are left out.
+func functionFamilies(k kind, ops []Operation, upright bool) []functionFamily {
 	out := []functionFamily{
 		newFunctionFamily(linears, ops, false), newFunctionFamily(rotations, ops, true), newFunctionFamily(squares, ops, false),
 	}
 	switch {
-	case k.axial():
+	case upright:
 		out = append(out, newFunctionFamily(axialCubes, ops, false))
 	case k.family != icosahedral && k.family != icosahedralProper:
 		out = append(out, newFunctionFamily(cubicCubes, ops, false))
@@ -280,6 +281,11 @@ func combination(list []named, v *mat.VecDense) string {
 	}
 	sort.SliceStable(terms, func(a, b int) bool { return math.Abs(terms[a].c) > math.Abs(terms[b].c)+negligible })
 	common := math.Abs(terms[len(terms)-1].c)
+	for _, t := range terms {
+		if multiple(t.c/common) == "" {
+			common = 1 // no common factor: each term has its own number
+		}
+	}
 	var b strings.Builder
 	for i, t := range terms {
 		c := t.c / common
@@ -289,12 +295,21 @@ func combination(list []named, v *mat.VecDense) string {
 		case i > 0:
 			b.WriteByte('+')
 		}
-		if a := math.Round(math.Abs(c)); a != 1 {
-			b.WriteString(strconv.Itoa(int(a)))
+		switch a := math.Abs(c); {
+		case multiple(a) == "":
+			b.WriteString(strconv.FormatFloat(a, 'f', 4, 64))
+		case multiple(a) != "1":
+			b.WriteString(multiple(a))
 		}
 		b.WriteString(t.name)
 	}
-	factor := surd(common)
+	factor := multiple(common)
+	switch {
+	case factor == "":
+		factor = strconv.FormatFloat(common, 'f', 4, 64)
+	case factor == "1":
+		factor = ""
+	}
 	switch {
 	case factor == "":
 		return b.String()
@@ -318,9 +333,13 @@ func printOrder(list []named) []int {
 	return order
 }
 
-// surd writes a number whose square is an integer: "", "2", "√3", "2√3".
-func surd(v float64) string {
+// multiple writes a number whose square is an integer: "1", "2", "√3", "2√3";
+// "" for any other.
+func multiple(v float64) string {
 	square := int(math.Round(v * v))
+	if square == 0 || math.Abs(v*v-float64(square)) > 1e-6 {
+		return ""
+	}
 	whole := 1
 	for f := 2; f*f <= square; f++ {
 		for square%(f*f) == 0 {
@@ -329,8 +348,6 @@ func surd(v float64) string {
 		}
 	}
 	switch {
-	case square == 1 && whole == 1:
-		return ""
 	case square == 1:
 		return strconv.Itoa(whole)
 	case whole == 1:

@@ -22,7 +22,7 @@ func irreps(k kind, s *Setting) []Irrep {
 			if sum == s.Order() {
 				break
 			}
-			ir := Irrep{Dimension: base.dimension, Matrices: product(sign, base.matrices)}
+			ir := Irrep{Dimension: base.dimension, Matrices: product(sign, base.matrices), azimuthal: base.azimuthal}
 			ir.Characters = characters(s, ir.Matrices)
 			norm := 0.0
 			for c, x := range ir.Characters {
@@ -42,7 +42,7 @@ func irreps(k kind, s *Setting) []Irrep {
 		panic("symmetry: irreps of " + s.Symbol + " do not exhaust the group")
 	}
 	label(k, s, kept)
-	families := functionFamilies(k, s.Operations)
+	families := functionFamilies(k, s.Operations, k.axial())
 	for i := range kept {
 		kept[i].Functions = functions(families, &kept[i])
 	}
@@ -54,6 +54,7 @@ type base struct {
 	dimension int
 	matrices  []*mat.Dense
 	mayPair   bool // two conjugate one-dimensional ones may hide in it
+	azimuthal int  // j of (cos jφ, sin jφ), else 0
 }
 
 // companions is how many of the signs a base is multiplied by. The azimuthal
@@ -193,20 +194,20 @@ func (k kind) bases(s *Setting) []base {
 	ops := s.Operations
 	trivial := func(Operation) *mat.Dense { return mat.NewDense(1, 1, []float64{1}) }
 	if !k.axial() {
-		out := []base{{1, each(ops, trivial), false}}
+		out := []base{{1, each(ops, trivial), false, 0}}
 		if k.family == icosahedral || k.family == icosahedralProper {
 			return append(out, icosahedralBases(s)...)
 		}
 		return append(out,
-			base{2, each(ops, func(o Operation) *mat.Dense { return quadratics(o.Matrix, 2) }), true},
-			base{3, each(ops, vector), false})
+			base{2, each(ops, func(o Operation) *mat.Dense { return quadratics(o.Matrix, 2) }), true, 0},
+			base{3, each(ops, vector), false, 0})
 	}
-	out := []base{{1, each(ops, trivial), false}}
+	out := []base{{1, each(ops, trivial), false, 0}}
 	acts := k.actions(ops)
 	for j := 1; j <= k.n; j++ {
 		// (cos jφ, sin jφ); for the groups with mirrors or flips a pair of
 		// them with 2jφ a whole number of turns falls into two irreps.
-		b := base{2, make([]*mat.Dense, len(ops)), true}
+		b := base{2, make([]*mat.Dense, len(ops)), true, j}
 		turns := false
 		for i, act := range acts {
 			c, sn := cosTurn(j*act.a, k.azimuthSteps()), sinTurn(j*act.a, k.azimuthSteps())
@@ -303,7 +304,7 @@ func icosahedralBases(s *Setting) []base {
 		t2[i].Apply(func(_, _ int, v float64) float64 { return conjugate(v) }, t1[i])
 		five[i] = quadratics(proper(o), 5)
 	}
-	return []base{{3, t1, false}, {3, t2, false}, {4, foursome(t1, t2, five), false}, {5, five, false}}
+	return []base{{3, t1, false, 0}, {3, t2, false, 0}, {4, foursome(t1, t2, five), false, 0}, {5, five, false, 0}}
 }
 
 // conjugate changes the sign of √5 in an entry of the icosahedral matrices.

@@ -102,13 +102,13 @@ func axisLetter(a mgl64.Vec3) byte {
 // Numbers run over the axes that have no letter, by azimuth and then by polar
 // angle of the axis; planes that hold z are counted by the azimuth of their
 // trace in xy, so that σv(1) holds C2(1).
-func nameOperations(k kind, ops []Operation) {
+func nameOperations(k kind, ops []Operation, prefixes []string) {
 	numbered := map[string][]direction{}
-	for _, o := range ops {
+	for i, o := range ops {
 		if o.Axis == (mgl64.Vec3{}) || axisLetter(o.Axis) != 0 {
 			continue
 		}
-		p, prefix := k.direction(o), k.prefix(o)
+		p, prefix := k.direction(o), prefixes[i]
 		known := false
 		for _, q := range numbered[prefix] {
 			known = known || p.same(q)
@@ -121,26 +121,28 @@ func nameOperations(k kind, ops []Operation) {
 		sort.Slice(list, func(a, b int) bool { return list[a].less(list[b]) })
 	}
 	for i := range ops {
-		o := &ops[i]
-		prefix := k.prefix(*o)
-		o.Name = prefix + exponent(o.Turn)
-		switch letter := axisLetter(o.Axis); {
-		case o.Axis == (mgl64.Vec3{}):
-			// E and i need no more.
-		case prefix == "σh" && k.axial():
-			// there is only one
-		case letter != 0 && strings.HasPrefix(prefix, "σ"):
-			o.Name += map[byte]string{'x': "(yz)", 'y': "(xz)", 'z': "(xy)"}[letter]
-		case letter != 0:
-			o.Name += fmt.Sprintf("(%c)", letter)
-		default:
-			for j, q := range numbered[prefix] {
-				if k.direction(*o).same(q) {
-					o.Name += fmt.Sprintf("(%d)", j+1)
-				}
-			}
+		ops[i].Name = prefixes[i] + exponent(ops[i].Turn) + k.bracket(ops[i], prefixes[i], numbered[prefixes[i]])
+	}
+}
+
+// bracket is what tells an operation from its like, with the brackets.
+func (k kind) bracket(o Operation, prefix string, numbered []direction) string {
+	switch letter := axisLetter(o.Axis); {
+	case o.Axis == (mgl64.Vec3{}):
+		return "" // E and i
+	case prefix == "σh" && k.axial():
+		return "" // there is only one
+	case letter != 0 && strings.HasPrefix(prefix, "σ"):
+		return map[byte]string{'x': "(yz)", 'y': "(xz)", 'z': "(xy)"}[letter]
+	case letter != 0:
+		return fmt.Sprintf("(%c)", letter)
+	}
+	for j, q := range numbered {
+		if k.direction(o).same(q) {
+			return fmt.Sprintf("(%d)", j+1)
 		}
 	}
+	panic("symmetry: an axis that was not counted")
 }
 
 // A direction is where an axis points, in radians.

@@ -67,6 +67,11 @@ func (p *reader) product() float64 {
 	v := 1.0
 	if d := p.digits(); d != "" {
 		v = float64(atoi(d))
+		if p.peek() == '.' {
+			p.pos++
+			fraction := p.digits()
+			v += float64(atoi(fraction)) / math.Pow(10, float64(len(fraction)))
+		}
 	}
 	for {
 		switch c := p.peek(); c {

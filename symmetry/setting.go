@@ -68,6 +68,9 @@ type Irrep struct {
 	// label carries none. Mirror is +1 or −1 for Σ+ and Σ−, else 0. Both are
 	// set only for infinite groups.
 	Gerade, Mirror int
+
+	// azimuthal is the j of the partners (cos jφ, sin jφ) in an axial group.
+	azimuthal int
 }
 
 // A Setting is a point group together with the frame it is written in. It
@@ -84,7 +87,9 @@ type Setting struct {
 	Classes []Class
 	Irreps  []Irrep
 
-	kind    kind
+	kind kind
+	// turn takes the standard axes of the group to those of this frame.
+	turn    mgl64.Mat3
 	product [][]int32
 	inverse []int
 }
