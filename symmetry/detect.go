@@ -113,7 +113,7 @@ func check(points []Point, links []Link, tolerance float64) error {
 func detectAtom(p Point, tolerance float64) *Fit {
 	return &Fit{
 		Setting: newSetting(kind{family: spherical}), Origin: p.Position, Rotation: mgl64.Ident3(),
-		Ideal: []mgl64.Vec3{{}}, Tolerance: tolerance, Rule: Rule{Name: "default", Z: ZInput, X: XInput, Sources: []string{SourceOwn}},
+		Ideal: []mgl64.Vec3{{}}, fromDefault: mgl64.Ident3(), Tolerance: tolerance, Rule: Rule{Name: "default", Z: ZInput, X: XInput, Sources: []string{SourceOwn}},
 	}
 }
 
@@ -124,7 +124,7 @@ func (c *cloud) detectLinear(axis mgl64.Vec3, links []Link, tolerance float64) *
 		heights[i] = v.Dot(axis)
 	}
 	partner, central := c.invertible(axis, heights, tolerance)
-	fit := &Fit{Tolerance: tolerance}
+	fit := &Fit{Tolerance: tolerance, fromDefault: mgl64.Ident3()}
 	if central {
 		for i, j := range partner {
 			if i <= j {

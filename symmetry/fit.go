@@ -59,4 +59,8 @@ type Fit struct {
 	Doubtful bool
 	Rule     Rule
 	Ties     []Tie
+
+	// fromDefault takes the frame of the default rules to this one.
+	fromDefault mgl64.Mat3
+	defaults    Rule // the rule of that frame, where it is not this one
 }

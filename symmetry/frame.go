@@ -83,7 +83,7 @@ func (c *cloud) frame(p *placed, links []Link, tolerance float64) *Fit {
 			f.proper = append(f.proper, m)
 		}
 	}
-	fit := &Fit{Setting: s, Tolerance: tolerance, Deviation: p.deviation}
+	fit := &Fit{Setting: s, Tolerance: tolerance, Deviation: p.deviation, fromDefault: mgl64.Ident3()}
 	origin := f.origin(p, fit)
 	f.points = make([]mgl64.Vec3, len(p.ideal))
 	for k, v := range p.ideal {

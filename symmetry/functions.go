@@ -157,23 +157,43 @@ func rotateLast(t []float64, m mgl64.Mat3) []float64 {
 // functions lists what transforms like each partner of an irrep. Each set is
 // found by the projections P_k1 = (d/h) Σ_R D_k1(R)·R of one seed, so that its
 // members transform with exactly the irrep's matrices.
-func functions(families []functionFamily, ir *Irrep) [][]string {
+func functions(families []functionFamily, ir *Irrep) ([][]string, []functionSet) {
 	out := make([][]string, ir.Dimension)
 	for i := range out {
 		out[i] = []string{}
 	}
-	for _, family := range families {
+	var all []functionSet
+	for place, family := range families {
 		for _, set := range family.sets(ir) {
-			for i, text := range set {
-				out[i] = append(out[i], text)
+			for i, v := range set {
+				out[i] = append(out[i], combination(family.list, v))
 			}
+			all = append(all, functionSet{place, family.tensors(set)})
 		}
+	}
+	return out, all
+}
+
+// A functionSet is one function a partner, as tensors; family tells polar
+// vectors, rotations, quadratic and cubic functions apart.
+type functionSet struct {
+	family  int
+	tensors [][]float64
+}
+
+func (f functionFamily) tensors(set []*mat.VecDense) [][]float64 {
+	out := make([][]float64, len(set))
+	for i, v := range set {
+		var t mat.VecDense
+		t.MulVec(f.forms, v)
+		out[i] = t.RawVector().Data
 	}
 	return out
 }
 
-// sets projects every function of the list in turn and keeps what is new.
-func (f functionFamily) sets(ir *Irrep) [][]string {
+// sets projects every function of the list in turn and keeps what is new, as
+// coefficients of the list, partner by partner.
+func (f functionFamily) sets(ir *Irrep) [][]*mat.VecDense {
 	rows, n := f.forms.Dims()
 	// Everything below is in coefficients of the list again.
 	var toList mat.Dense
@@ -197,7 +217,7 @@ func (f functionFamily) sets(ir *Irrep) [][]string {
 		partners[p].Mul(&toList, sum)
 	}
 	var kept []*mat.VecDense
-	var sets [][]string
+	var sets [][]*mat.VecDense
 	for seed := 0; seed < n; seed++ {
 		if dependent(kept, partners[0].ColView(seed)) {
 			continue
@@ -206,11 +226,11 @@ func (f functionFamily) sets(ir *Irrep) [][]string {
 		if partners[0].At(seed, seed) < 0 {
 			scale = -scale
 		}
-		set := make([]string, ir.Dimension)
+		set := make([]*mat.VecDense, ir.Dimension)
 		for p := range partners {
 			v := mat.NewVecDense(n, nil)
 			v.ScaleVec(scale, partners[p].ColView(seed))
-			set[p] = combination(f.list, v)
+			set[p] = v
 			if ir.ComplexPair || p == 0 {
 				kept = append(kept, v)
 			}

@@ -44,7 +44,7 @@ func irreps(k kind, s *Setting) []Irrep {
 	label(k, s, kept)
 	families := functionFamilies(k, s.Operations, k.axial())
 	for i := range kept {
-		kept[i].Functions = functions(families, &kept[i])
+		kept[i].Functions, kept[i].sets = functions(families, &kept[i])
 	}
 	return kept
 }

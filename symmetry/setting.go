@@ -71,6 +71,8 @@ type Irrep struct {
 
 	// azimuthal is the j of the partners (cos jφ, sin jφ) in an axial group.
 	azimuthal int
+	// sets are the functions of Functions as tensors, to compare frames by.
+	sets []functionSet
 }
 
 // A Setting is a point group together with the frame it is written in. It

@@ -124,7 +124,7 @@ func turnedIrreps(standard, s *Setting, order []int, w mgl64.Mat3) []Irrep {
 			matrices[r].Apply(func(_, _ int, v float64) float64 { return tidy(v) }, matrices[r])
 		}
 		ir.Matrices = matrices
-		ir.Functions = functions(families, &ir)
+		ir.Functions, ir.sets = functions(families, &ir)
 		out[i] = ir
 	}
 	return out
