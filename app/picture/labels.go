@@ -100,8 +100,9 @@ func (s *stage) bondDiscs(g *work.Group, seen sight) []disc {
 	var out []disc
 	for _, b := range g.Bonds {
 		p, q := s.atoms[b[0]].centre, s.atoms[b[1]].centre
-		for _, t := range []float64{0.3, 0.4, 0.5, 0.6, 0.7} {
-			out = append(out, seen.disc(ball{p.Add(q.Sub(p).Mul(t)), bondThickness / 2}))
+		for step := 1; step < 10; step++ {
+			at := p.Add(q.Sub(p).Mul(float64(step) / 10))
+			out = append(out, seen.disc(ball{at, bondThickness}))
 		}
 	}
 	return out

@@ -1,88 +1,118 @@
 // Package study holds what a person chose in one piece of work, and nothing
 // that follows from it. Two equal studies give the same results, and so the
 // same text, the same JSON and the same picture.
+//
+// A Study is a plain value. Encode and Decode make its file; a History holds
+// the studies of one sitting, for undo and redo.
 package study
 
-// Version is the version of the study's form that this program writes.
-const Version = 1
+import "slices"
 
 // A Study is all choices of one piece of work. Its zero value has every
 // default but no structure. Atoms, functions, copies, partners and matrix
 // elements count from 1, as people count; zero means that nothing is chosen.
+//
+// Studies are handed about as values and share their lists, so a list is never
+// changed in place: who changes one puts a new one there.
 type Study struct {
-	Version int `json:"version"`
 	// Structure says where the structure comes from: the path of a file, "-"
-	// for standard input, or a name such as "ideal:OC-6" or "demo:…".
-	Structure string `json:"structure"`
+	// for standard input, or a name such as "ideal:OC-6" or "demo:…". Where
+	// there are Coordinates it is only their name.
+	Structure string `record:"structure"`
+	// Coordinates is the text of a coordinate list that came from no file that
+	// could be read again; see WithCoordinates.
+	Coordinates string `record:"coordinates,lines"`
 	// Core and Ignore choose the atoms that decide the group; both empty:
 	// all atoms.
-	Core   string `json:"core,omitempty"`
-	Ignore string `json:"ignore,omitempty"`
+	Core   string `record:"core"`
+	Ignore string `record:"ignore"`
 	// Tolerance (Å) is the farthest that a core atom may lie from its ideal
 	// place. Zero stands for DefaultTolerance.
-	Tolerance float64 `json:"tolerance,omitempty"`
+	Tolerance float64 `record:"tolerance"`
 	// Frame names the rule that puts the axes; empty: the default rule.
-	Frame string `json:"frame,omitempty"`
+	Frame string `record:"frame"`
 	// Basis holds the selections of functions, such as "Cl:sigma".
-	Basis      []string   `json:"basis,omitempty"`
-	Projection Projection `json:"projection,omitzero"`
-	// Operation names an operation whose symmetry element is shown.
-	Operation string `json:"operation,omitempty"`
-	Camera    Camera `json:"camera,omitzero"`
-	Look      Look   `json:"look,omitzero"`
-	Figure    Figure `json:"figure,omitzero"`
+	Basis []string `record:"basis"`
+	// Atoms are those chosen in the picture, rising. They decide nothing.
+	Atoms      []int      `record:"atoms"`
+	Projection Projection `record:"projection"`
+	// Operation names the operation whose symmetry element is shown and which
+	// is played.
+	Operation string `record:"operation"`
+	// Moment is how far the operation has come: 0 at the start, 1 at the end.
+	Moment float64 `record:"moment"`
+	// Angle is φ in degrees, for the operations C(φ), σv(φ) … of linear
+	// molecules: from 0 to 360.
+	Angle  float64 `record:"angle"`
+	Camera Camera  `record:"camera"`
+	Look   Look    `record:"look"`
+	Figure Figure  `record:"figure"`
 }
 
 // A Projection says what is projected and which result is looked at.
 type Projection struct {
 	// Function is the function of the basis whose ledger is made.
-	Function int `json:"function,omitempty"`
+	Function int `record:"function"`
 	// Irrep is a label; Copy and Partner choose a group orbital of it.
-	Irrep   string `json:"irrep,omitempty"`
-	Copy    int    `json:"copy,omitempty"`
-	Partner int    `json:"partner,omitempty"`
+	Irrep   string `record:"irrep"`
+	Copy    int    `record:"copy"`
+	Partner int    `record:"partner"`
+	// Subject is what the operation is played on and what is drawn; see
+	// TheSubject.
+	Subject Subject `record:"subject"`
 	// Element is the matrix element that weighs the operations in the
 	// ledger; zero stands for (1, 1). Character takes the character instead.
-	Element   [2]int `json:"element,omitzero"`
-	Character bool   `json:"character,omitempty"`
+	Element   [2]int `record:"element"`
+	Character bool   `record:"character"`
 }
 
-// A Camera says from where the picture is seen. The zero Camera leaves the
-// choice to the program.
-type Camera struct {
-	// Azimuth is counted from +x toward +y, Elevation from the xy plane
-	// toward +z, both in degrees. They count only if Set.
-	Set       bool    `json:"set,omitempty"`
-	Azimuth   float64 `json:"azimuth,omitempty"`
-	Elevation float64 `json:"elevation,omitempty"`
-	// Orthographic turns the perspective off.
-	Orthographic bool `json:"orthographic,omitempty"`
+// A Subject is what an operation is played on.
+type Subject string
+
+// The subjects.
+const (
+	NoSubject       Subject = ""
+	SubjectFunction Subject = "function" // the function of the basis
+	SubjectOrbital  Subject = "orbital"  // the group orbital
+)
+
+// TheSubject is the subject in force. Without a choice it is the group orbital
+// if an irrep is chosen, else the function; NoSubject if that is not chosen
+// either.
+func (p Projection) TheSubject() Subject {
+	switch {
+	case p.Irrep != "" && (p.Subject != SubjectFunction || p.Function == 0):
+		return SubjectOrbital
+	case p.Function != 0:
+		return SubjectFunction
+	}
+	return NoSubject
 }
 
 // A Look says how bodies are drawn.
 type Look struct {
 	// Style is "lit" or "ink"; empty stands for "lit".
-	Style string `json:"style,omitempty"`
+	Style string `record:"style"`
 	// Ground is "paper", "white", "dark" or "transparent"; empty stands for
 	// "paper".
-	Ground string `json:"ground,omitempty"`
+	Ground string `record:"ground"`
 	// Size is what goes with |c| of a lobe: "length", "area" or "volume";
 	// empty stands for "length".
-	Size string `json:"size,omitempty"`
+	Size string `record:"size"`
 	// NoLabels and NoAxes leave the atoms' labels and the triad out.
-	NoLabels bool `json:"noLabels,omitempty"`
-	NoAxes   bool `json:"noAxes,omitempty"`
+	NoLabels bool `record:"noLabels"`
+	NoAxes   bool `record:"noAxes"`
 }
 
 // A Figure says how large the picture is on paper.
 type Figure struct {
 	// Width and Height are in millimetres, Resolution in dots per inch. Zero
 	// stands for the defaults, a zero Height for one that suits the content.
-	Width      float64 `json:"width,omitempty"`
-	Height     float64 `json:"height,omitempty"`
-	Resolution float64 `json:"resolution,omitempty"`
+	Width      float64 `record:"width"`
+	Height     float64 `record:"height"`
+	Resolution float64 `record:"resolution"`
 	// NoCaption leaves out the label and the legend below the picture.
-	NoCaption bool `json:"noCaption,omitempty"`
+	NoCaption bool `record:"noCaption"`
 }
 
 // DefaultTolerance (Å) is about the scatter of a good crystal structure, and
@@ -130,4 +160,40 @@ func (f Figure) TheResolution() float64 {
 		return DefaultResolution
 	}
 	return f.Resolution
+}
+
+// Opened is the study with another structure. What was chosen about the old
+// one is forgotten; how pictures are drawn stays.
+func (s Study) Opened(structure string) Study {
+	return Study{
+		Structure: structure,
+		Camera:    Camera{Orthographic: s.Camera.Orthographic},
+		Look:      s.Look,
+		Figure:    s.Figure,
+	}
+}
+
+// Equal tells whether two studies are the same choices.
+func (s Study) Equal(t Study) bool {
+	if !slices.Equal(s.Basis, t.Basis) || !slices.Equal(s.Atoms, t.Atoms) {
+		return false
+	}
+	return s.flat() == t.flat()
+}
+
+// A flat is a study without its lists, which == can compare.
+type flat struct {
+	structure, coordinates, core, ignore, frame, operation string
+	tolerance, moment, angle                               float64
+	projection                                             Projection
+	camera                                                 Camera
+	look                                                   Look
+	figure                                                 Figure
+}
+
+func (s Study) flat() flat {
+	return flat{
+		s.Structure, s.Coordinates, s.Core, s.Ignore, s.Frame, s.Operation,
+		s.Tolerance, s.Moment, s.Angle, s.Projection, s.Camera, s.Look, s.Figure,
+	}
 }
