@@ -42,6 +42,7 @@ type frame struct {
 	pxPerMM float64
 	lg      int // log2 of the samples a pixel
 	sx      [16]float64
+	middles [16][2]float32 // middleOf the masks of up to four samples
 
 	projs    []projection
 	parts    []part
@@ -115,6 +116,9 @@ func (r *Renderer) begin(ctx context.Context, rect image.Rectangle, w, h int, ca
 	f.pxPerMM = dpi / 25.4
 	f.lg = sampleShift(quality.Samples)
 	copy(f.sx[:], samplePlaces[f.lg])
+	for m := range f.middles {
+		f.middles[m][0], f.middles[m][1] = f.middleOf(uint32(m))
+	}
 	n := quality.Workers
 	if n <= 0 {
 		n = runtime.GOMAXPROCS(0)

@@ -1,6 +1,7 @@
 package render
 
 import (
+	"encoding/binary"
 	"image"
 	"math"
 	"math/bits"
@@ -45,46 +46,66 @@ func (t *tile) resolve(out image.Rectangle) {
 	f := t.f
 	d := f.dst
 	at := d.Rect.Min.Sub(f.rect.Min)
-	ground := f.groundPixel()
+	gp := f.groundPixel()
+	ground := binary.LittleEndian.Uint32(gp[:])
+	back := f.ground
 	n := 1 << t.lg
+	full := uint32(1)<<n - 1
 	inked := f.ink.half > 0
 	if inked {
 		t.drawInk(out)
 	}
+	lines := t.lines.dist
 	for y := out.Min.Y; y < out.Max.Y; y++ {
 		py := y - t.y
-		row := d.Pix[d.PixOffset(out.Min.X+at.X, y+at.Y):]
-		for x := out.Min.X; x < out.Max.X; x++ {
-			px := x - t.x
-			i := py*t.side + px
-			o := row[4*(x-out.Min.X):][:4:4]
+		row := d.Pix[d.PixOffset(out.Min.X+at.X, y+at.Y):][:4*out.Dx()]
+		i := py*t.side + out.Min.X - t.x
+		px := out.Min.X - t.x
+		for ; len(row) >= 4; row = row[4:] {
+			o := row[:4:4]
 			keys := t.keys[i<<t.lg:][:n]
-			layered := t.anyFrag && t.first[i] >= 0
+			line := inked && lines[i] < 1e9
 			var any uint32
 			for _, k := range keys {
 				any |= uint32(k)
 			}
-			line := inked && t.lines.dist[i] < 1e9
-			if any == 0 && !layered && !line {
-				o[0], o[1], o[2], o[3] = ground[0], ground[1], ground[2], ground[3]
-				continue
-			}
 			var c [4]float32
-			switch {
-			case layered:
-				c = t.blend(keys, i, px, py)
-			case line:
-				c = t.under(t.solid(keys, px, py), f.inked(t.lines.dist[i]))
-			default:
-				if k := t.whole(keys); k != 0 {
-					r, g, b := t.shadePlace(k, float32(px)+0.5, float32(py)+0.5)
-					o[0], o[1], o[2], o[3] = encode(r, f.linear), encode(g, f.linear), encode(b, f.linear), 255
+			if t.anyFrag && t.first[i] >= 0 {
+				if fr := &t.frags[t.first[i]]; any == 0 && !line && fr.next < 0 && fr.mask == full {
+					r, g, b, a := t.fragColor(fr, px, py)
+					w := (1 - a) * back[3]
+					c = [4]float32{r*a + w*back[0], g*a + w*back[1], b*a + w*back[2], a + w}
+				} else {
+					c = t.blend(keys, i, px, py)
+				}
+			} else if any == 0 {
+				if !line {
+					binary.LittleEndian.PutUint32(o, ground)
+					i++
+					px++
 					continue
 				}
+				c = t.under(t.solid(keys, px, py), f.inked(lines[i]))
+			} else if k := t.whole(keys); k != 0 {
+				r, g, b := t.shadePlace(k, float32(px)+0.5, float32(py)+0.5)
+				if line {
+					c = t.under([4]float32{r, g, b, 1}, f.inked(lines[i]))
+					r, g, b = c[0], c[1], c[2]
+				}
+				binary.LittleEndian.PutUint32(o, uint32(encode(r, f.linear))|uint32(encode(g, f.linear))<<8|uint32(encode(b, f.linear))<<16|0xff<<24)
+				i++
+				px++
+				continue
+			} else {
 				c = t.solid(keys, px, py)
+				if line {
+					c = t.under(c, f.inked(lines[i]))
+				}
 			}
 			v := f.pixel(c[0], c[1], c[2], c[3])
-			o[0], o[1], o[2], o[3] = v[0], v[1], v[2], v[3]
+			binary.LittleEndian.PutUint32(o, uint32(v[0])|uint32(v[1])<<8|uint32(v[2])<<16|uint32(v[3])<<24)
+			i++
+			px++
 		}
 	}
 }
@@ -109,7 +130,7 @@ func (t *tile) whole(keys []uint64) uint32 {
 // middle returns the mean place of the samples of a mask within a pixel.
 func (t *tile) middle(mask uint32) (x, y float32) {
 	if t.lg <= 2 {
-		m := &t.middles[mask&15]
+		m := &t.f.middles[mask&15]
 		return m[0], m[1]
 	}
 	return t.f.middleOf(mask)

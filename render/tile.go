@@ -27,9 +27,9 @@ type tile struct {
 	frags       []frag
 	first       []int32 // of a pixel's layers
 	anyFrag     bool
+	solidAny    bool // something opaque is on the canvas, or there is a far limit
 
 	kernel  kernel
-	middles [16][2]float32 // of the masks of up to four samples
 	surf    surf
 	free    bool // look beyond the edges of a triangle
 	deep    bool // shading needs the nearness
@@ -99,9 +99,6 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	t.clip = out.Inset(-f.apron).Sub(image.Pt(t.x, t.y))
 	t.rows = [2]int{(t.y + t.clip.Min.Y) << t.lg, (t.y + t.clip.Max.Y) << t.lg}
 	t.sx = f.sx
-	for m := range t.middles {
-		t.middles[m][0], t.middles[m][1] = f.middleOf(uint32(m))
-	}
 	t.deep = f.light.style == Lit
 	n := t.side * t.side
 	t.keys = grow(t.keys, n<<t.lg)
@@ -148,6 +145,7 @@ func (t *tile) see(list []int32) {
 	for i := range t.first {
 		t.first[i] = -1
 	}
+	t.solidAny = len(t.slots) > 1 || t.empty != 0
 	last := int32(-1)
 	for _, k := range list {
 		it := &f.items[k]
@@ -463,6 +461,10 @@ func (t *tile) pane(d *disc, b *box, slot uint32) {
 			}
 			i := py*t.side + x
 			near := float32(row + d.n[1]*float64(x))
+			if !t.solidAny {
+				t.push(i, frag{slot: slot, mask: mask, n: near, nx: nx, ny: ny})
+				continue
+			}
 			for k, key := range t.keys[i<<t.lg:][:n] {
 				if uint32(key) != 0 || t.empty != 0 {
 					at := near + nx*(float32(t.sx[k&15])-0.5) + ny*((float32(k)+0.5)/float32(n)-0.5)
