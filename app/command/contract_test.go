@@ -6,6 +6,7 @@ import (
 	"encoding/json"
 	"fmt"
 	"math"
+	"os"
 	"strings"
 	"testing"
 )
@@ -496,5 +497,41 @@ func TestLinearMoleculesAndAtomsHaveEmptyLists(t *testing.T) {
 				t.Errorf("%s: irrep %+v", c.structure, irrep)
 			}
 		}
+	}
+}
+
+func TestTheFrameTakesTheInputToThePrintedAtoms(t *testing.T) {
+	t.Chdir(t.TempDir())
+	// A bent molecule in a general position, with a little noise, one atom of
+	// which is a spectator.
+	input := [][]float64{{1.2, -0.4, 2.2}, {1.9, 0.21, 2.5}, {0.4, 0.13, 2.06}, {4, 4, 4}}
+	text := "4\nnoisy\n"
+	for i, p := range input {
+		text += fmt.Sprintf("%s %.10f %.10f %.10f\n", []string{"O", "H", "H", "Ne"}[i], p[0], p[1], p[2])
+	}
+	if err := os.WriteFile("noisy.xyz", []byte(text), 0o666); err != nil {
+		t.Fatal(err)
+	}
+	var g contractGroup
+	runJSON(t, &g, "group", "noisy.xyz", "--ignore", "Ne")
+	if g.PointGroup != "C2v" || len(g.Structure.Core) != 3 {
+		t.Fatalf("point group %s, core %v", g.PointGroup, g.Structure.Core)
+	}
+	farthest := 0.0
+	for i, p := range input {
+		moved := make([]float64, 3)
+		for k := range moved {
+			moved[k] = p[k] - g.Frame.Origin[k]
+		}
+		off := distance(apply(g.Frame.Rotation, moved), g.Structure.Atoms[i].Position)
+		if i == 3 && off > 1e-12 {
+			t.Errorf("the spectator is moved by %g Å", off)
+		}
+		if i < 3 {
+			farthest = max(farthest, off)
+		}
+	}
+	if math.Abs(farthest-g.Deviation) > 1e-9 || farthest < 1e-3 {
+		t.Errorf("the atoms are moved by up to %g Å, the deviation is %g", farthest, g.Deviation)
 	}
 }
