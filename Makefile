@@ -6,13 +6,17 @@ GO       ?= go
 FUZZTIME ?= 20s
 BENCH    ?= .
 
-# What the tests need beside Go: a computer algebra system that checks the class functions of every group.
+# The window needs a C compiler and the headers of OpenGL and X11; the command line needs neither.
+WINDOW_PACKAGES  := gcc pkg-config libgl1-mesa-dev xorg-dev
+WINDOW_LIBRARIES := gl x11 xcursor xi xinerama xrandr xxf86vm
+WINDOW_THERE     := pkg-config --exists $(WINDOW_LIBRARIES)
+# The tests need a computer algebra system, which checks the class functions of every group.
 TEST_PACKAGES := gap-core gap-character-tables
-TEST_TOOLS    := gap
+TEST_THERE    := command -v gap >/dev/null
 
 # The program is stamped with the state of the checkout; -buildvcs would fail in a checkout of another user.
 VERSION := $(shell git describe --tags --always --dirty 2>/dev/null || echo devel)
-BUILD    = CGO_ENABLED=0 $(GO) build -trimpath -buildvcs=false -ldflags "-X main.version=$(VERSION)"
+BUILD    = $(GO) build -trimpath -buildvcs=false -ldflags "-X main.version=$(VERSION)"
 
 .PHONY: run build test lint unit fuzz bench packages clean help
 .DEFAULT_GOAL := help
@@ -21,12 +25,14 @@ BUILD    = CGO_ENABLED=0 $(GO) build -trimpath -buildvcs=false -ldflags "-X main
 help: ## say what can be made
 	@grep -hE '^[a-z]+:.*##' $(MAKEFILE_LIST) | sed -E 's/^([a-z]+):.*## /make \1	/' | expand -t 14
 
-run: build ## build the program and draw the demonstration's figures into out/
+run: ## build the program and start it; without a display it draws the demonstration's figures into out/
+	@$(call ensure,$(WINDOW_PACKAGES),$(WINDOW_THERE)) && cgo=1 || { cgo=0; echo "without them there is no window, only the command line"; }; \
+	echo "== build"; CGO_ENABLED=$$cgo $(BUILD) -o lobewright ./app
 	./lobewright
 
-build: ## build the command line: ./lobewright
+build: ## build the command line alone, which needs no C compiler: ./lobewright
 	@echo "== build"
-	$(BUILD) -o lobewright ./app
+	CGO_ENABLED=0 $(BUILD) -o lobewright ./app
 
 test: packages lint unit build ## check the style, run every test, build the program
 	@echo "== all is well"
@@ -55,27 +61,27 @@ bench: ## every benchmark, or BENCH=name
 	@echo "== go test -bench $(BENCH)"
 	$(GO) test -run '^$$' -bench '$(BENCH)' -benchmem ./...
 
-# Installs what the tests need. Where there is no apt-get it says what is missing, and goes on if all of it is there.
+# $(call ensure,PACKAGES,TEST) installs the packages that are missing. Where there is no apt-get, or it fails, the shell
+# command TEST decides whether all is there; if not, it says what to install.
+define ensure
+{ echo "== packages: $(1)"; missing=; \
+  if command -v apt-get >/dev/null && command -v dpkg-query >/dev/null; then \
+    for p in $(1); do \
+      dpkg-query -W -f '$${Status}' $$p 2>/dev/null | grep -q '^install ok installed' || missing="$$missing $$p"; \
+    done; \
+    if [ -n "$$missing" ]; then \
+      root=; [ "$$(id -u)" = 0 ] || root=sudo; \
+      install="$$root env DEBIAN_FRONTEND=noninteractive apt-get install -y -q --no-install-recommends$$missing"; \
+      echo "$$install"; \
+      $$install || { $$root apt-get update -q && $$install; }; \
+    fi; \
+  fi; \
+  $(2) || { echo "missing: install what Debian has in the packages $(1)"; false; }; }
+endef
+
 packages:
-	@echo "== packages: $(TEST_PACKAGES)"
-	@set -e; missing=; \
-	if command -v apt-get >/dev/null && command -v dpkg-query >/dev/null; then \
-	  for p in $(TEST_PACKAGES); do \
-	    dpkg-query -W -f '$${Status}' $$p 2>/dev/null | grep -q '^install ok installed' || missing="$$missing $$p"; \
-	  done; \
-	  [ -n "$$missing" ] || exit 0; \
-	  root=; if [ "$$(id -u)" != 0 ]; then \
-	    command -v sudo >/dev/null || { echo "run as root: apt-get install$$missing"; exit 1; }; root=sudo; \
-	  fi; \
-	  echo "installing$$missing"; \
-	  install="$$root env DEBIAN_FRONTEND=noninteractive apt-get install -y -q --no-install-recommends$$missing"; \
-	  $$install || { $$root apt-get update -q && $$install; }; \
-	else \
-	  for t in $(TEST_TOOLS); do command -v $$t >/dev/null || missing="$$missing $$t"; done; \
-	  [ -n "$$missing" ] || exit 0; \
-	  echo "not found:$$missing; install GAP 4.12 with its library of character tables (on Debian: $(TEST_PACKAGES))"; \
-	  exit 1; \
-	fi
+	@$(call ensure,$(TEST_PACKAGES),$(TEST_THERE))
+	@$(call ensure,$(WINDOW_PACKAGES),$(WINDOW_THERE))
 
 clean: ## remove what was built and drawn
 	rm -rf lobewright out
