@@ -139,18 +139,39 @@ func likeness(irrep symmetry.Irrep, partner int) string {
 
 func combinationLines(coefficients []float64) []string {
 	if form, ok := orbitals.FindClosedForm(coefficients); ok {
-		return fold(strings.SplitAfter(form.String(), " "))
+		return fold(formTerms(form.String()))
 	}
 	return fold(spaced(notation.Combination(notation.Terms(coefficients), notation.ExactCoefficient)))
 }
 
-// fold breaks a combination into lines before its signs.
-func fold(parts []string) []string {
+// formTerms cuts a closed form before the signs of its terms, but not within
+// the brackets of a coefficient, which stand deeper than the first function.
+func formTerms(form string) []string {
+	level := strings.Count(form[:strings.Index(form, "φ")], "(") - strings.Count(form[:strings.Index(form, "φ")], ")")
+	var terms []string
+	depth, start := 0, 0
+	for i, r := range form {
+		switch r {
+		case '(':
+			depth++
+		case ')':
+			depth--
+		case '+', '−':
+			if depth == level && i > start && form[i-1] == ' ' {
+				terms = append(terms, form[start:i])
+				start = i
+			}
+		}
+	}
+	return append(terms, form[start:])
+}
+
+// fold joins terms to lines of at most combinationWidth.
+func fold(terms []string) []string {
 	var lines []string
 	line := ""
-	for _, part := range parts {
-		startsTerm := strings.HasPrefix(part, "+") || strings.HasPrefix(part, "−")
-		if startsTerm && notation.Width(line+part) > combinationWidth {
+	for _, part := range terms {
+		if line != "" && notation.Width(line+part) > combinationWidth {
 			lines = append(lines, strings.TrimRight(line, " "))
 			line = ""
 		}

@@ -1,6 +1,7 @@
 package table
 
 import (
+	"slices"
 	"strings"
 	"testing"
 
@@ -39,5 +40,22 @@ func TestIrrationalCharactersAreExplained(t *testing.T) {
 		if !strings.Contains(text, want) {
 			t.Errorf("no %q in\n%s", want, text)
 		}
+	}
+}
+
+func TestCombinationsBreakBetweenTermsOnly(t *testing.T) {
+	for form, want := range map[string][]string{
+		"(2φ1 − φ2 + φ3)/√6":          {"(2φ1 ", "− φ2 ", "+ φ3)/√6"},
+		"((1 + √5)φ1 − (√5 − 1)φ2)/4": {"((1 + √5)φ1 ", "− (√5 − 1)φ2)/4"},
+		"(1 + √5)φ1 + φ2":             {"(1 + √5)φ1 ", "+ φ2"},
+		"−φ1":                         {"−φ1"},
+	} {
+		if got := formTerms(form); !slices.Equal(got, want) {
+			t.Errorf("%s is cut into %q", form, got)
+		}
+	}
+	lines := fold([]string{strings.Repeat("a", 40) + " ", "+ " + strings.Repeat("b", 40)})
+	if len(lines) != 2 || strings.HasSuffix(lines[0], " ") {
+		t.Errorf("folded to %q", lines)
 	}
 }
