@@ -2,7 +2,7 @@
 
 package render
 
-const useVectors = false
+var useVectors = false
 
 func drawFour(*kernel) bool { panic("unreachable") }
 func maskFour(*kernel) bool { panic("unreachable") }

@@ -31,7 +31,6 @@ const (
 	// strength turns the share of the sky into shade: half the sky hidden is
 	// full shade.
 	strength = 2
-	maxNear  = 24
 )
 
 // shadesOf finds the balls of the frame and, for every part, which matter.
@@ -67,7 +66,7 @@ func (r *Renderer) shadesOf() {
 	s.head = append(s.head, int32(len(s.near)))
 }
 
-// neighbours lists the balls that a part feels, at most maxNear.
+// neighbours lists the balls that a part feels.
 func (s *shades) neighbours(i int32, p *part, f *frame) {
 	// A ball around the part: of its own balls, or of a disc.
 	var c ball
@@ -97,14 +96,13 @@ func (s *shades) neighbours(i int32, p *part, f *frame) {
 	if !found {
 		return
 	}
-	first := len(s.near)
 	for k := range s.balls {
 		b := &s.balls[k]
 		if b.part == i {
 			continue
 		}
 		d := max(distance(&c, b)-1.05*c.r, 1e-9)
-		if b.weight*b.r*b.r > faintest*d*d && len(s.near)-first < maxNear {
+		if b.weight*b.r*b.r > faintest*d*d {
 			s.near = append(s.near, int32(k))
 		}
 	}

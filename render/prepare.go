@@ -283,10 +283,13 @@ func (f *frame) addMesh(p part, m Affine, g *Mesh) {
 	for _, v := range n {
 		big = math.Max(big, math.Abs(v))
 	}
-	if big > 0 {
+	p.mirrored = m.Linear.Det() < 0
+	if p.mirrored {
+		big = -big // normals stay outside
+	}
+	if big != 0 {
 		p.nrm = rows32(n, 1/big)
 	}
-	p.mirrored = m.Linear.Det() < 0
 	p.vert0 = f.nVert
 	f.nVert += len(g.Positions)
 	p.cull = g.Closed && !p.layered

@@ -81,8 +81,10 @@ func (f *frame) addBody(p part, local Affine, kind rod, length float64) {
 		return
 	}
 	m := local.Linear
-	scale := m.Col(0).Len() * m.Col(1).Len() * m.Col(2).Len()
-	if det := m.Det(); !(math.Abs(det) > 1e-6*scale) || !(scale > 1e-60) {
+	// Rays are met in the body's own space; when that is pressed so flat that
+	// the eye lies a million units away there, their numbers get too coarse.
+	inv := m.Inv()
+	if far := inv.Mul3x1(local.Shift).Len() + inv.Col(2).Len(); !(m.Det() != 0 && far < 1e6) {
 		f.addMesh(p, local, flatBodies()[kind])
 		return
 	}

@@ -240,8 +240,10 @@ func (t *tile) batch(it *item, p *part, layered bool) {
 		if ((c.x-a.x)*(a.y-d.y)-(d.x-a.x)*(a.y-c.y) < 0) != p.mirrored {
 			l = &t.back
 		}
-		if t.triangle(a, c, d, s, l) {
-			t.slots = append(t.slots, slot{it.part, it.batch, e})
+		// Known before it is drawn: a layer may turn into fragments on the way.
+		t.slots = append(t.slots, slot{it.part, it.batch, e})
+		if !t.triangle(a, c, d, s, l) {
+			t.slots = t.slots[:s]
 		}
 	}
 }
