@@ -12,7 +12,7 @@ import (
 // one element are carried into each other.
 func detect(read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
 	if s.Frame != "" && s.Frame != "default" {
-		return nil, fmt.Errorf("frame %q is not known; there is one: default", s.Frame)
+		return nil, blame(StageGroup, ConcernFrame, fmt.Errorf("frame %q is not known; there is one: default", s.Frame))
 	}
 	points := make([]symmetry.Point, len(core))
 	place := make(map[int]int, len(core)) // atom → point
@@ -34,8 +34,12 @@ func detect(read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
 	if errors.As(err, &close) {
 		// Points are counted within the core; people know the atoms.
 		names := read.AtomNames()
-		return nil, fmt.Errorf("tolerance %g Å is too large: %s and %s are only %.3f Å apart; take less than half of that",
-			close.Tolerance, names[core[close.A]], names[core[close.B]], close.Distance)
+		return nil, blame(StageGroup, ConcernTolerance, fmt.Errorf(
+			"tolerance %g Å is too large: %s and %s are only %.3f Å apart; take less than half of that",
+			close.Tolerance, names[core[close.A]], names[core[close.B]], close.Distance))
 	}
-	return fit, err
+	if s.Tolerance < 0 {
+		return nil, blame(StageGroup, ConcernTolerance, err)
+	}
+	return fit, blame(StageGroup, ConcernStructure, err)
 }

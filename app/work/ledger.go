@@ -15,43 +15,63 @@ import (
 func (w *Work) Ledger(ctx context.Context, s study.Study) (*Ledger, error) {
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	p := s.Projection
-	key := ledgerKey{keyOfBasis(s), p.Function, p.Irrep, p.TheElement()}
-	return w.ledgers.get(key, func() (*Ledger, error) {
+	return w.ledger(ctx, s)
+}
+
+func (w *Work) ledger(ctx context.Context, s study.Study) (*Ledger, error) {
+	return w.ledgers.get(w.keyOfLedger(s), func() (*Ledger, error) {
 		basis, err := w.basis(ctx, s)
 		if err != nil {
 			return nil, err
 		}
 		setting := basis.Fit.Setting
 		if setting.Infinite() {
-			return nil, fmt.Errorf("%s has infinitely many operations, so there is no ledger; project lists its group orbitals", setting.Symbol)
+			return nil, blame(StageLedger, ConcernStructure, fmt.Errorf(
+				"%s has infinitely many operations, so there is no ledger; project lists its group orbitals", setting.Symbol))
 		}
-		if n := len(basis.Functions); p.Function < 1 || p.Function > n {
-			return nil, fmt.Errorf("function %d does not exist; the basis has functions 1 to %d", p.Function, n)
+		p := s.Projection
+		if err := checkFunction(basis, p.Function); err != nil {
+			return nil, blame(StageLedger, ConcernFunction, err)
 		}
 		irrep, err := FindIrrep(p.Irrep, setting.Symbol, setting.Irreps)
 		if err != nil {
-			return nil, err
+			return nil, blame(StageLedger, ConcernIrrep, err)
 		}
-		element := orbitals.ByCharacter
-		if !p.Character {
-			e := p.TheElement()
-			if d := setting.Irreps[irrep].Dimension; e[0] < 1 || e[0] > d || e[1] < 1 || e[1] > d {
-				return nil, fmt.Errorf("matrix element %d,%d does not exist; the matrices of %s have %d × %d elements",
-					e[0], e[1], setting.Irreps[irrep].Label, d, d)
-			}
-			element = [2]int{e[0] - 1, e[1] - 1}
+		element, err := elementOf(p, setting.Irreps[irrep])
+		if err != nil {
+			return nil, blame(StageLedger, ConcernElement, err)
 		}
-		representation, err := basis.Representation()
+		representation, err := w.representation(ctx, s)
 		if err != nil {
 			return nil, err
 		}
 		ledger, err := representation.Ledger(p.Function-1, irrep, element)
 		if err != nil {
-			return nil, err
+			return nil, blame(StageLedger, ConcernFunction, err)
 		}
 		return &Ledger{basis, ledger, setting.Irreps[irrep]}, nil
 	})
+}
+
+// checkFunction refuses a function, counted from 1, that a basis lacks.
+func checkFunction(basis *Basis, function int) error {
+	if n := len(basis.Functions); function < 1 || function > n {
+		return fmt.Errorf("function %d does not exist; the basis has functions 1 to %d", function, n)
+	}
+	return nil
+}
+
+// elementOf is the matrix element that weighs the operations, from 0.
+func elementOf(p study.Projection, irrep symmetry.Irrep) ([2]int, error) {
+	if p.Character {
+		return orbitals.ByCharacter, nil
+	}
+	e, d := p.TheElement(), irrep.Dimension
+	if e[0] < 1 || e[0] > d || e[1] < 1 || e[1] > d {
+		return e, fmt.Errorf("matrix element %d,%d does not exist; the matrices of %s have %d × %d elements",
+			e[0], e[1], irrep.Label, d, d)
+	}
+	return [2]int{e[0] - 1, e[1] - 1}, nil
 }
 
 // ByCharacter tells whether the operations are weighed with the character.

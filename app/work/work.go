@@ -10,7 +10,6 @@ import (
 	"context"
 	"errors"
 	"strconv"
-	"strings"
 	"sync"
 
 	"lobewright/app/study"
@@ -25,12 +24,16 @@ import (
 type Work struct {
 	inputs structure.Inputs
 
-	mu          sync.Mutex
-	structures  stage[string, *Structure]
-	groups      stage[groupKey, *Group]
-	bases       stage[basisKey, *Basis]
-	projections stage[basisKey, *Orbitals]
-	ledgers     stage[ledgerKey, *Ledger]
+	mu              sync.Mutex
+	reading         int // counts how often a structure was read anew
+	reopened        stage[structureKey, *Structure]
+	structures      stage[structureKey, *Structure]
+	groups          stage[groupKey, *Group]
+	bases           stage[basisKey, *Basis]
+	representations stage[basisKey, *orbitals.Representation]
+	projections     stage[basisKey, *Orbitals]
+	ledgers         stage[ledgerKey, *Ledger]
+	plays           stage[playKey, *Play]
 }
 
 // New returns a Work that reads structures from inputs and the file system.
@@ -95,34 +98,8 @@ type Ledger struct {
 	Irrep symmetry.Irrep
 }
 
-type groupKey struct {
-	structure, core, ignore, frame string
-	tolerance                      float64
-}
-
-func keyOfGroup(s study.Study) groupKey {
-	return groupKey{s.Structure, s.Core, s.Ignore, s.Frame, s.TheTolerance()}
-}
-
-type basisKey struct {
-	groupKey
-	basis string
-}
-
-func keyOfBasis(s study.Study) basisKey {
-	// No selection contains a line feed.
-	return basisKey{keyOfGroup(s), strings.Join(s.Basis, "\n")}
-}
-
-type ledgerKey struct {
-	basisKey
-	function int
-	irrep    string
-	element  [2]int
-}
-
-// Structure reads the structure of a study. The error is a *structure.Error
-// or that of ctx.
+// Structure reads the structure of a study. The error is a *Problem around a
+// *structure.Error, or that of ctx.
 func (w *Work) Structure(ctx context.Context, s study.Study) (*Structure, error) {
 	w.mu.Lock()
 	defer w.mu.Unlock()
@@ -130,15 +107,12 @@ func (w *Work) Structure(ctx context.Context, s study.Study) (*Structure, error)
 }
 
 func (w *Work) structure(ctx context.Context, s study.Study) (*Structure, error) {
-	return w.structures.get(s.Structure, func() (*Structure, error) {
-		if err := ctx.Err(); err != nil {
-			return nil, err
+	key := w.keyOfStructure(s)
+	return w.structures.get(key, func() (*Structure, error) {
+		if w.reopened.known && w.reopened.key == key {
+			return w.reopened.value, nil
 		}
-		m, notes, err := structure.Open(s.Structure, w.inputs)
-		if err != nil {
-			return nil, err
-		}
-		return &Structure{Molecule: m, Bonds: structure.Bonds(m), Notes: notes}, nil
+		return open(ctx, s, w.inputs)
 	})
 }
 
@@ -150,14 +124,14 @@ func (w *Work) Group(ctx context.Context, s study.Study) (*Group, error) {
 }
 
 func (w *Work) group(ctx context.Context, s study.Study) (*Group, error) {
-	return w.groups.get(keyOfGroup(s), func() (*Group, error) {
+	return w.groups.get(w.keyOfGroup(s), func() (*Group, error) {
 		read, err := w.structure(ctx, s)
 		if err != nil {
 			return nil, err
 		}
 		core, err := structure.Core(read.Molecule, s.Core, s.Ignore)
 		if err != nil {
-			return nil, err
+			return nil, blameCore(read.Molecule, s, err)
 		}
 		if err := ctx.Err(); err != nil {
 			return nil, err
@@ -168,7 +142,7 @@ func (w *Work) group(ctx context.Context, s study.Study) (*Group, error) {
 		}
 		sites, err := orbitals.NewSites(fit, core, read.Molecule, read.Bonds)
 		if err != nil {
-			return nil, err
+			return nil, blame(StageGroup, ConcernStructure, err)
 		}
 		return &Group{Structure: read, Core: core, Fit: fit, Sites: sites}, nil
 	})
@@ -182,26 +156,45 @@ func (w *Work) Basis(ctx context.Context, s study.Study) (*Basis, error) {
 }
 
 func (w *Work) basis(ctx context.Context, s study.Study) (*Basis, error) {
-	return w.bases.get(keyOfBasis(s), func() (*Basis, error) {
+	return w.bases.get(w.keyOfBasis(s), func() (*Basis, error) {
 		choices := make([]orbitals.Choice, len(s.Basis))
 		for i, text := range s.Basis {
 			var err error
 			if choices[i], err = orbitals.ParseChoice(text); err != nil {
-				return nil, err
+				return nil, &Problem{Stage: StageBasis, Concern: ConcernBasis, Index: i, Err: err}
 			}
 		}
 		if len(choices) == 0 {
-			return nil, errors.New("no functions are chosen")
+			return nil, blame(StageBasis, ConcernBasis, errors.New("no functions are chosen"))
 		}
 		group, err := w.group(ctx, s)
 		if err != nil {
 			return nil, err
 		}
-		basis, err := orbitals.NewBasis(group.Sites, choices...)
-		if err != nil {
+		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
+		basis, err := orbitals.NewBasis(group.Sites, choices...)
+		if err != nil {
+			return nil, blameChoice(group.Sites, choices, err)
+		}
 		return &Basis{group, basis}, nil
+	})
+}
+
+// representation is what the operations make of the basis; nil for an infinite
+// group.
+func (w *Work) representation(ctx context.Context, s study.Study) (*orbitals.Representation, error) {
+	return w.representations.get(w.keyOfBasis(s), func() (*orbitals.Representation, error) {
+		basis, err := w.basis(ctx, s)
+		if err != nil || basis.Fit.Setting.Infinite() {
+			return nil, err
+		}
+		if err := ctx.Err(); err != nil {
+			return nil, err
+		}
+		representation, err := basis.Representation()
+		return representation, blame(StageOrbitals, ConcernBasis, err)
 	})
 }
 
@@ -209,17 +202,30 @@ func (w *Work) basis(ctx context.Context, s study.Study) (*Basis, error) {
 func (w *Work) Orbitals(ctx context.Context, s study.Study) (*Orbitals, error) {
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.projections.get(keyOfBasis(s), func() (*Orbitals, error) {
+	return w.orbitals(ctx, s)
+}
+
+func (w *Work) orbitals(ctx context.Context, s study.Study) (*Orbitals, error) {
+	return w.projections.get(w.keyOfBasis(s), func() (*Orbitals, error) {
 		basis, err := w.basis(ctx, s)
+		if err != nil {
+			return nil, err
+		}
+		representation, err := w.representation(ctx, s)
 		if err != nil {
 			return nil, err
 		}
 		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
-		projection, err := basis.Project()
+		var projection *orbitals.Projection
+		if representation == nil {
+			projection, err = basis.Project()
+		} else {
+			projection, err = orbitals.Project(representation)
+		}
 		if err != nil {
-			return nil, err
+			return nil, blame(StageOrbitals, ConcernBasis, err)
 		}
 		return &Orbitals{basis, projection}, nil
 	})
