@@ -5,6 +5,7 @@ import (
 	"image/png"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
 )
@@ -127,21 +128,26 @@ func TestAFigureIsOverwrittenOnlyWithForce(t *testing.T) {
 
 func TestWithoutACommandTheDemonstrationIsDrawn(t *testing.T) {
 	t.Chdir(t.TempDir())
+	// An older figure by the program's own name may be overwritten.
+	older := filepath.Join(showcaseFolder, showpieces()[0].file+".png")
+	if err := os.Mkdir(showcaseFolder, 0o777); err != nil {
+		t.Fatal(err)
+	}
+	if err := os.WriteFile(older, []byte("older"), 0o666); err != nil {
+		t.Fatal(err)
+	}
 	status, out, messages := run(t)
 	if status != 0 || messages != "" {
 		t.Fatalf("status %d: %s", status, messages)
 	}
 	printed := lines(out)[1:]
-	if len(printed) < 10 {
-		t.Errorf("only %d figures", len(printed))
+	if len(printed) < 10 || !slices.Contains(printed, older) {
+		t.Errorf("figures %q", printed)
 	}
 	for _, path := range printed {
 		if img := readPNG(t, path); img.Bounds().Dx() < 500 {
 			t.Errorf("%s is %d pixels wide", path, img.Bounds().Dx())
 		}
-	}
-	if status, _, messages := run(t); status != 0 {
-		t.Errorf("a second time: %s", messages)
 	}
 }
 
