@@ -185,7 +185,8 @@ func (f *frame) addLine(p part, m Affine, g *Line) {
 		if !(s.n0 > 0) || !(s.n1 > 0) {
 			continue
 		}
-		if period == 0 {
+		const most = 1e6 // pixels; dashes of a longer line would be lost in rounding
+		if period == 0 || math.Abs(s.x0)+math.Abs(s.y0)+math.Abs(s.x1)+math.Abs(s.y1) > most {
 			f.strokes = append(f.strokes, s)
 			continue
 		}

@@ -117,7 +117,10 @@ func (r *Renderer) addLabel(scene *Scene, s *Shape, index, proj int32, g *Text) 
 	ls.used++
 	set := &ls.set
 	l.runs, l.em, l.n, l.fixed = g.Runs, em, float32(n), g.Fixed || proj != 0
-	l.halo = math.Min(64, math.Max(0, g.Halo*f.pxPerMM))
+	l.halo = 0
+	if g.Halo > 0 {
+		l.halo = math.Min(64, g.Halo*f.pxPerMM)
+	}
 	l.colRim = f.tone(g.HaloColor)
 	ax := math.Max(-1, math.Min(1, g.AlignX))
 	ay := math.Max(-1, math.Min(1, g.AlignY))
@@ -126,6 +129,10 @@ func (r *Renderer) addLabel(scene *Scene, s *Shape, index, proj int32, g *Text) 
 	const capital = 0.7
 	l.y = y - g.OffsetY*f.pxPerMM + (ay+1)/2*capital*em
 	l.box = box{l.x, l.y - set.ascent, l.x + set.width, l.y + set.descent}
+	if !(l.x > -1e5 && l.x < 1e5 && l.y > -1e5 && l.y < 1e5 && set.width < 1e5 && l.em*set.width < 1<<26) {
+		ls.used--
+		return
+	}
 	p := f.newPart(s, index, proj)
 	p.form, p.flat, p.layered, p.outline = formLabel, true, true, false
 	p.index = int32(ls.used - 1)
@@ -197,7 +204,7 @@ func (r *Renderer) drawLabel(w *worker, i int) {
 	t.rast.Reset(wd, ht)
 	ox, oy := l.x-float64(l.rect.Min.X), l.y-float64(l.rect.Min.Y)
 	for _, g := range t.set.glyphs {
-		t.outline(&g, ox, oy)
+		t.outline(&g, ox, oy, float64(wd), float64(ht))
 	}
 	m := l.sign
 	m.Pix, m.Stride, m.Rect = grow(m.Pix, wd*ht), wd, image.Rect(0, 0, wd, ht)
@@ -210,8 +217,8 @@ func (r *Renderer) drawLabel(w *worker, i int) {
 	}
 }
 
-// outline adds a sign to the rasterizer.
-func (t *typist) outline(g *glyph, ox, oy float64) {
+// outline adds a sign to the rasterizer, which wants it within w and h.
+func (t *typist) outline(g *glyph, ox, oy, w, h float64) {
 	upm := g.font.UnitsPerEm()
 	segs, err := g.font.LoadGlyph(&t.set.buf, g.index, fixed.Int26_6(upm)<<6, nil)
 	if err != nil {
@@ -219,7 +226,7 @@ func (t *typist) outline(g *glyph, ox, oy float64) {
 	}
 	k := g.size / float64(upm) / 64
 	at := func(p fixed.Point26_6) (float32, float32) {
-		return float32(ox + g.x + float64(p.X)*k), float32(oy - g.y + float64(p.Y)*k)
+		return float32(min(max(ox+g.x+float64(p.X)*k, 0), w)), float32(min(max(oy-g.y+float64(p.Y)*k, 0), h))
 	}
 	for _, s := range segs {
 		x, y := at(s.Args[0])
