@@ -7,15 +7,15 @@ import (
 )
 
 // The keys hold what of a study a stage reads, directly or through the stages
-// before it.
+// before it. They can be made while others compute.
 
 type structureKey struct {
 	structure, coordinates string
-	reading                int
+	reading                int64
 }
 
 func (w *Work) keyOfStructure(s study.Study) structureKey {
-	return structureKey{s.Structure, s.Coordinates, w.reading}
+	return structureKey{s.Structure, s.Coordinates, w.reading.Load()}
 }
 
 type groupKey struct {

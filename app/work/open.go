@@ -77,7 +77,7 @@ func (w *Work) Reopen(ctx context.Context, s study.Study) (*Structure, error) {
 	w.mu.Lock()
 	defer w.mu.Unlock()
 	if key := w.keyOfStructure(s); w.structures.known && w.structures.key == key {
-		w.reading++
+		w.reading.Add(1)
 	}
 	w.reopened = stage[structureKey, *Structure]{w.keyOfStructure(s), read, true}
 	return read, nil

@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"runtime/debug"
 
 	"lobewright/app/study"
 	"lobewright/orbitals"
@@ -48,7 +49,7 @@ const (
 	ConcernPartner   Concern = "partner"
 	ConcernElement   Concern = "element"
 	ConcernOperation Concern = "operation"
-	// ConcernProgram is a fault of this program; Err is a *PanicError.
+	// ConcernProgram is a fault of this program; Err wraps a *PanicError.
 	ConcernProgram Concern = "program"
 )
 
@@ -74,8 +75,17 @@ type PanicError struct {
 	Stack []byte
 }
 
-// Error is one line without the stack.
-func (p *PanicError) Error() string { return fmt.Sprintf("internal error: %v", p.Value) }
+// Error is what the panic said, without the stack.
+func (p *PanicError) Error() string { return fmt.Sprint(p.Value) }
+
+// caught makes a problem of a panic.
+func caught(stage Stage, value any) *Problem {
+	fault, ok := value.(*PanicError) // caught once before, in the goroutine where it was
+	if !ok {
+		fault = &PanicError{value, debug.Stack()}
+	}
+	return &Problem{Stage: stage, Concern: ConcernProgram, Err: fmt.Errorf("internal error: %w", fault)}
+}
 
 // blame ties an error to what it is about, unless that is done, or the
 // computation was only cancelled.

@@ -11,6 +11,7 @@ import (
 	"errors"
 	"strconv"
 	"sync"
+	"sync/atomic"
 
 	"lobewright/app/study"
 	"lobewright/orbitals"
@@ -24,8 +25,9 @@ import (
 type Work struct {
 	inputs structure.Inputs
 
+	reading atomic.Int64 // counts how often the structure at hand was read anew
+
 	mu              sync.Mutex
-	reading         int // counts how often a structure was read anew
 	reopened        stage[structureKey, *Structure]
 	structures      stage[structureKey, *Structure]
 	groups          stage[groupKey, *Group]
