@@ -18,18 +18,28 @@ type element struct {
 	mismatch    float64 // Å, the farthest that an image lies from its point
 }
 
-// key is equal for equal elements.
+// key is equal for equal elements. Points near one line can be carried alike by
+// a rotation about it and by one across it, or by a plane and by the
+// inversion; so the key tells large turns from small ones.
 func (e *element) key() elementKey {
 	h := uint64(14695981039346656037) // FNV-1a
 	for _, p := range e.permutation {
 		h = (h ^ uint64(p)) * 1099511628211
 	}
-	return elementKey{h, e.improper}
+	cos := e.matrix.Trace() - 1
+	if e.improper {
+		cos += 2
+	}
+	return elementKey{h, e.improper, cos/2 < largeTurn}
 }
 
+// largeTurn is a cosine that no turn of a group with n up to MaxNearFold comes
+// near to: C3 has −0.5, the fourth power of C11 −0.65.
+const largeTurn = -0.58
+
 type elementKey struct {
-	hash     uint64
-	improper bool
+	hash            uint64
+	improper, large bool
 }
 
 // candidates finds every orthogonal matrix that carries each point of the

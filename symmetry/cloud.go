@@ -15,48 +15,96 @@ type cloud struct {
 	radius []float64
 	centre mgl64.Vec3
 	cell   float64
-	cells  map[[3]int32][]int32
+	// The points lie in cells of a grid, in rows along z: those of cell
+	// (x, y, z) are member[first[n]:first[n+1]] with n counted from low.
+	low, size [3]int
+	first     []int32
+	member    []int32
 }
 
 // cellSize (Å) is a little more than a bond, so that a cell holds a few atoms
 // and a search within tenths of an ångström seldom needs a second one.
 const cellSize = 1.6
 
+// mostCells bounds the memory of the grid of a set that is spread out: its
+// cells are made larger.
+const mostCells = 1 << 20
+
 func newCloud(points []Point) *cloud {
-	c := &cloud{cell: cellSize, cells: make(map[[3]int32][]int32, len(points))}
+	c := &cloud{cell: cellSize}
 	for _, p := range points {
 		c.centre = c.centre.Add(p.Position)
 	}
 	c.centre = c.centre.Mul(1 / float64(len(points)))
-	for i, p := range points {
+	for _, p := range points {
 		v := p.Position.Sub(c.centre)
 		c.at = append(c.at, v)
 		c.kind = append(c.kind, p.Kind)
 		c.radius = append(c.radius, v.Len())
-		key := c.key(v)
-		c.cells[key] = append(c.cells[key], int32(i))
 	}
+	for !c.measure() {
+		c.cell *= 2
+	}
+	c.fill()
 	return c
 }
 
-func (c *cloud) key(v mgl64.Vec3) [3]int32 {
-	return [3]int32{c.index(v[0]), c.index(v[1]), c.index(v[2])}
+// measure lays the grid; false if it would have too many cells.
+func (c *cloud) measure() bool {
+	cells := 1
+	for k := range 3 {
+		low, high := c.index(c.at[0][k]), c.index(c.at[0][k])
+		for _, v := range c.at {
+			low, high = min(low, c.index(v[k])), max(high, c.index(v[k]))
+		}
+		c.low[k], c.size[k] = low, high-low+1
+		if cells *= c.size[k]; cells > mostCells {
+			return false
+		}
+	}
+	c.first = make([]int32, cells+1)
+	return true
 }
 
-func (c *cloud) index(x float64) int32 { return int32(math.Floor(x / c.cell)) }
+// fill sorts the points into their cells, in their own order.
+func (c *cloud) fill() {
+	place := make([]int, len(c.at))
+	for i, v := range c.at {
+		n := 0
+		for k := range 3 {
+			n = n*c.size[k] + c.index(v[k]) - c.low[k]
+		}
+		place[i] = n
+		c.first[n+1]++
+	}
+	for n := 1; n < len(c.first); n++ {
+		c.first[n] += c.first[n-1]
+	}
+	c.member = make([]int32, len(c.at))
+	next := append([]int32(nil), c.first...)
+	for i, n := range place {
+		c.member[next[n]] = int32(i)
+		next[n]++
+	}
+}
+
+func (c *cloud) index(x float64) int { return int(math.Floor(x / c.cell)) }
 
 // visit calls f for every point in the cells that a ball meets.
 func (c *cloud) visit(v mgl64.Vec3, reach float64, f func(i int)) {
-	var low, high [3]int32
+	var low, high [3]int
 	for k := range low {
-		low[k], high[k] = c.index(v[k]-reach), c.index(v[k]+reach)
+		low[k] = max(c.index(v[k]-reach)-c.low[k], 0)
+		high[k] = min(c.index(v[k]+reach)-c.low[k], c.size[k]-1)
 	}
 	for x := low[0]; x <= high[0]; x++ {
 		for y := low[1]; y <= high[1]; y++ {
-			for z := low[2]; z <= high[2]; z++ {
-				for _, i := range c.cells[[3]int32{x, y, z}] {
-					f(int(i))
-				}
+			if low[2] > high[2] {
+				continue
+			}
+			row := (x*c.size[1] + y) * c.size[2]
+			for _, i := range c.member[c.first[row+low[2]]:c.first[row+high[2]+1]] {
+				f(int(i))
 			}
 		}
 	}

@@ -150,7 +150,7 @@ func (c *cloud) detectLinear(axis mgl64.Vec3, links []Link, tolerance float64) *
 	for i, h := range heights {
 		ideal[i] = mgl64.Vec3{0, 0, h}
 	}
-	f := framing{points: ideal, kinds: c.kind, links: links, tolerance: tolerance}
+	f := framing{points: ideal, kinds: c.kind, links: links, tolerance: min(tolerance, frameTolerance)}
 	symbol := kind{family: linearPolar}
 	if central {
 		symbol.family = linearCentral

@@ -109,7 +109,7 @@ const settled = 1e-13
 
 // settle improves orientation and ideal points in turn.
 func (p *placed) settle(c *cloud) {
-	const rounds = 60 // a few suffice; each wins the factor deviation/size
+	const rounds = 500 // a few suffice near the group; each wins the factor deviation/size
 	turned := make([]mgl64.Vec3, len(c.at))
 	p.ideal = make([]mgl64.Vec3, len(c.at))
 	for range rounds {
@@ -248,15 +248,7 @@ func (s *search) place(group []*element) *placed {
 	if group == nil {
 		return nil
 	}
-	var key elementKey // the same for the same elements in any order
-	for _, e := range group {
-		k := e.key()
-		key.hash += k.hash * k.hash
-		key.improper = key.improper != k.improper
-		if k.improper {
-			key.hash += k.hash
-		}
-	}
+	key := keyOf(group)
 	if p, ok := s.seen[key]; ok {
 		return p
 	}
@@ -266,4 +258,21 @@ func (s *search) place(group []*element) *placed {
 	}
 	s.seen[key] = p
 	return p
+}
+
+// keyOf is the same for the same elements in any order.
+func keyOf(group []*element) elementKey {
+	var key elementKey
+	for _, e := range group {
+		k := e.key()
+		key.hash += k.hash * k.hash
+		key.improper = key.improper != k.improper
+		if k.improper {
+			key.hash += k.hash
+		}
+		if k.large {
+			key.hash += 3 * k.hash
+		}
+	}
+	return key
 }

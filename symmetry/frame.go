@@ -74,10 +74,15 @@ type framing struct {
 	tolerance float64
 }
 
+// frameTolerance (Å) is how far a point may lie from an axis or a plane that
+// counts it, or the scores of two frames from each other: the points are ideal,
+// so that those that an operation keeps in place lie there exactly.
+const frameTolerance = DefaultTolerance
+
 // frame chooses axes for a placed group and writes everything in them.
 func (c *cloud) frame(p *placed, links []Link, tolerance float64) *Fit {
 	s := newSetting(p.kind)
-	f := framing{kind: p.kind, points: p.ideal, kinds: c.kind, links: links, group: p.matrices, tolerance: tolerance}
+	f := framing{kind: p.kind, points: p.ideal, kinds: c.kind, links: links, group: p.matrices, tolerance: min(tolerance, frameTolerance)}
 	for _, m := range p.matrices {
 		if m.Det() > 0 {
 			f.proper = append(f.proper, m)
@@ -250,6 +255,9 @@ func (f *framing) sortOrbits(permutations [][]int32) {
 // choose returns the rotation from the axes in hand to those of the rules.
 func (f *framing) choose(fit *Fit) mgl64.Mat3 {
 	turns := f.turns()
+	if len(turns) == 0 { // no point is off the axis: no direction is better
+		turns = []mgl64.Mat3{mgl64.Ident3()}
+	}
 	if len(turns) > len(f.proper) { // else all are equivalent
 		for _, c := range f.criteria() {
 			turns = f.keepBest(turns, c)
