@@ -29,22 +29,19 @@ func Bonds(m *Molecule) [][2]int {
 	if longest == 0 {
 		return nil
 	}
-	g := newGrid(m.Atoms, longest)
 	bonded := func(i, j int) bool {
 		reach := BondFactor * (m.Atoms[i].Element.Radius() + m.Atoms[j].Element.Radius())
 		return m.Atoms[i].Position.Sub(m.Atoms[j].Position).LenSqr() < reach*reach
 	}
-	neighbours := make([]int, len(m.Atoms))
-	crowded := func(i int) bool { return neighbours[i] > maxNeighbours }
-	g.pairs(func(i, j int) {
-		if !(crowded(i) && crowded(j)) && bonded(i, j) {
-			neighbours[i]++
-			neighbours[j]++
-		}
-	})
+	all := make([]int, len(m.Atoms))
+	for i := range all {
+		all[i] = i
+	}
+	g := newGrid(m.Atoms, all, longest)
+	sparse := slices.DeleteFunc(all, func(i int) bool { return g.crowded(m.Atoms[i], i, bonded) })
 	var out [][2]int
-	g.pairs(func(i, j int) {
-		if !crowded(i) && !crowded(j) && bonded(i, j) {
+	newGrid(m.Atoms, sparse, longest).pairs(func(i, j int) {
+		if bonded(i, j) {
 			out = append(out, [2]int{min(i, j), max(i, j)})
 		}
 	})
@@ -83,7 +80,8 @@ func onOneSpot(atoms []Atom, limit float64) (first, second int, ok bool) {
 // A grid sorts atoms into cubes, so that near pairs are found without looking at all pairs.
 type grid struct {
 	cells map[cell][]int
-	order []cell // in the order in which the atoms filled them
+	size  float64 // Å, the edge of a cube
+	order []cell  // in the order in which the atoms filled them
 }
 
 type cell [3]int
@@ -96,16 +94,37 @@ func cellOf(a Atom, size float64) (c cell) {
 	return c
 }
 
-func newGrid(atoms []Atom, size float64) *grid {
-	g := &grid{cells: make(map[cell][]int)}
-	for i, a := range atoms {
-		c := cellOf(a, size)
+// newGrid sorts the chosen atoms into cubes with edges of the given size (Å).
+func newGrid(atoms []Atom, chosen []int, size float64) *grid {
+	g := &grid{cells: make(map[cell][]int), size: size}
+	for _, i := range chosen {
+		c := cellOf(atoms[i], size)
 		if _, ok := g.cells[c]; !ok {
 			g.order = append(g.order, c)
 		}
 		g.cells[c] = append(g.cells[c], i)
 	}
 	return g
+}
+
+// crowded tells whether atom i has more than maxNeighbours; it stops counting there.
+func (g *grid) crowded(a Atom, i int, bonded func(i, j int) bool) bool {
+	n := 0
+	c := cellOf(a, g.size)
+	for x := -1; x <= 1; x++ {
+		for y := -1; y <= 1; y++ {
+			for z := -1; z <= 1; z++ {
+				for _, j := range g.cells[cell{c[0] + x, c[1] + y, c[2] + z}] {
+					if i != j && bonded(i, j) {
+						if n++; n > maxNeighbours {
+							return true
+						}
+					}
+				}
+			}
+		}
+	}
+	return false
 }
 
 // half are the neighbours of a cell on one side, so that no pair of cells is met twice.
