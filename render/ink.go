@@ -184,6 +184,11 @@ func (t *tile) differ(i, j int, dx, dy float32, b *border) bool {
 		if !t.f.parts[front.part].outline {
 			return false
 		}
+		// Where a drawn line dips into a body there is no edge.
+		if p.part >= 0 && q.part >= 0 && (t.f.parts[p.part].form == formStroke || t.f.parts[q.part].form == formStroke) &&
+			abs32(p.n-q.n) < 12*t.f.pixelDepth(front.part, front.n) {
+			return false
+		}
 		b.on, b.near = true, front.n
 		b.at = t.between(i, j, p.part, q.part)
 		return true
@@ -193,19 +198,26 @@ func (t *tile) differ(i, j int, dx, dy float32, b *border) bool {
 	}
 	gp, gq := p.nx*dx+p.ny*dy, q.nx*dx+q.ny*dy
 	jump := abs32((p.n + gp/2) - (q.n - gq/2))
-	pr := &t.f.projs[t.f.parts[p.part].proj]
 	// A jump in depth of more than some pixels, and more than the slopes
-	// account for.
-	pixel := float32(pr.k1 / pr.f)
-	if pr.persp {
-		pixel = p.n / float32(pr.f)
-	}
-	if !(jump > 6*pixel && jump > 3*min(abs32(gp), abs32(gq))) && p.x*q.x+p.y*q.y+p.z*q.z > creaseCos {
+	// account for. Where both sides are seen at a glancing angle the slopes
+	// of facets say little.
+	pixel := t.f.pixelDepth(p.part, p.n)
+	fold := jump > 6*pixel && jump > 3*min(abs32(gp), abs32(gq)) && (max(p.z, q.z) > 0.35 || jump > 60*pixel)
+	if !fold && p.x*q.x+p.y*q.y+p.z*q.z > creaseCos {
 		return false
 	}
 	b.on, b.near = true, max(p.n, q.n)
 	b.at = t.betweenPlanes(i, j, dx, dy)
 	return true
+}
+
+// pixelDepth is the nearness that a depth as large as a pixel makes.
+func (f *frame) pixelDepth(part int32, n float32) float32 {
+	pr := &f.projs[f.parts[part].proj]
+	if pr.persp {
+		return n / float32(pr.f)
+	}
+	return float32(pr.k1 / pr.f)
 }
 
 func abs32(v float32) float32 {
@@ -365,7 +377,10 @@ func (t *tile) inkLayer(l *layer, part int32) {
 			slot = l.at[j].slot
 		}
 		b.on, b.at = true, min(1, max(0, at))
-		b.near, _, _ = t.plane(slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
+		// A little nearer than the sheet, so that a line where it dips into a
+		// body is seen on both sides.
+		z, zx, zy := t.plane(slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
+		b.near = z + 2*(abs32(zx)+abs32(zy)) + 4*f.pixelDepth(part, z)
 		any = true
 	}
 	for y := area.Min.Y; y < area.Max.Y; y++ {

@@ -408,7 +408,7 @@ func (t *tile) plate(d *disc, p *part, layered bool) {
 	j0, j1 := t.rowRange(b.y0, b.y1)
 	step := 1 / float64(int(1)<<t.lg)
 	slot := uint32(len(t.slots) - 1)
-	if layered && d.hole < 0 {
+	if layered && d.hole < 0 && !(t.f.ink.half > 0 && p.outline) {
 		t.pane(d, b, slot)
 		return
 	}
