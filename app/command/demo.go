@@ -43,13 +43,15 @@ type showpiece struct {
 	study.Study
 }
 
-// showcase writes figures of the demonstrations and prints their paths.
-func (p *program) showcase(ctx context.Context) error {
+// showcase writes figures of the demonstrations and prints their paths, and
+// why there is no window instead.
+func (p *program) showcase(ctx context.Context, why error) error {
 	if err := os.MkdirAll(showcaseFolder, 0o777); err != nil {
 		return fmt.Errorf("cannot make the folder %s: %w", showcaseFolder, err)
 	}
 	pieces := showpieces()
-	err := p.write(fmt.Sprintf("There is no window yet; %d figures of the demonstrations are written into the folder %s:\n", len(pieces), showcaseFolder))
+	err := p.write(fmt.Sprintf("No window can be opened here (%s); %d figures of the demonstrations are written into the folder %s:\n",
+		oneLine(why.Error()), len(pieces), showcaseFolder))
 	for _, piece := range pieces {
 		if err != nil {
 			return err

@@ -1,6 +1,8 @@
 package command
 
 import (
+	"errors"
+
 	"github.com/spf13/cobra"
 )
 
@@ -31,19 +33,28 @@ A selection of functions is ATOMS:FUNCTIONS
 // root builds the tree of commands.
 func (p *program) root(version string) *cobra.Command {
 	root := &cobra.Command{
-		Use:   "lobewright",
+		Use:   "lobewright [STRUCTURE]",
 		Short: "Point groups, group orbitals and figures of them, from coordinates",
 		Long: `Lobewright takes the coordinates of a molecule to its point group in a stated
 frame of axes, to the group orbitals of its ligands with all partners, and to
 figures of them.
 
-Without a command it writes figures of the demonstrations into the folder out.`,
-		Example: `  lobewright group complex.xyz
+Without a command it opens the window. Where there is no display it writes
+figures of the demonstrations into the folder out instead.`,
+		Example: `  lobewright complex.xyz
+  lobewright group complex.xyz
   lobewright project complex.xyz --on Cl:sigma
   lobewright figure complex.xyz --on Cl:sigma --irrep Eu -o eu.png`,
-		Version:       version,
-		Args:          noArguments,
-		RunE:          func(cmd *cobra.Command, _ []string) error { return p.showcase(cmd.Context()) },
+		Version: version,
+		Args:    mayBeStructure,
+		RunE: func(cmd *cobra.Command, args []string) error {
+			err := p.window(cmd.Context(), args)
+			var none NoWindow
+			if len(args) == 0 && errors.As(err, &none) {
+				return p.showcase(cmd.Context(), none.Reason)
+			}
+			return err
+		},
 		SilenceErrors: true,
 		SilenceUsage:  true,
 	}
@@ -54,6 +65,6 @@ Without a command it writes figures of the demonstrations into the folder out.`,
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error {
 		return usagef("%w; see %q", err, cmd.CommandPath()+" --help")
 	})
-	root.AddCommand(p.groupCommand(), p.projectCommand(), p.ledgerCommand(), p.figureCommand(), p.demoCommand())
+	root.AddCommand(p.groupCommand(), p.projectCommand(), p.ledgerCommand(), p.figureCommand(), p.windowCommand(), p.demoCommand())
 	return root
 }

@@ -26,7 +26,21 @@ const (
 type Streams struct {
 	In       io.Reader
 	Out, Err io.Writer
+	// Window opens the window with a structure, or with what was open last if
+	// that is empty, and returns when it is closed. The error is a NoWindow
+	// where there is no display or no window was built in; nil stands for that
+	// too.
+	Window func(ctx context.Context, structure string) error
 }
+
+// NoWindow says why no window can be opened here, whatever the structure.
+type NoWindow struct{ Reason error }
+
+// Error implements error.
+func (n NoWindow) Error() string { return "no window can be opened: " + n.Reason.Error() }
+
+// Unwrap returns the reason.
+func (n NoWindow) Unwrap() error { return n.Reason }
 
 // A program is what all commands share in one run.
 type program struct {

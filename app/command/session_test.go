@@ -53,7 +53,7 @@ func play(t *testing.T, line string) string {
 	if out != "" {
 		stdout = new(bytes.Buffer)
 	}
-	status := Run(context.Background(), words[1:], Streams{bytes.NewReader(input), stdout, &messages}, "test")
+	status := Run(context.Background(), words[1:], Streams{In: bytes.NewReader(input), Out: stdout, Err: &messages}, "test")
 	if out != "" {
 		if err := os.WriteFile(out, stdout.Bytes(), 0o666); err != nil {
 			t.Fatal(err)
