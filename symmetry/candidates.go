@@ -117,14 +117,21 @@ func (c *cloud) references(reach float64) (a, b int, alike func(int) []int) {
 		}
 		return c.at[a].Cross(c.at[i]).Len() / (c.radius[a] * c.radius[i])
 	}
-	for _, enough := range []float64{0.3, 0.1, 0} { // 0: whatever is left
+	for _, enough := range []float64{0.3, 0.1} {
 		for i := range c.at {
-			if sine(i) > math.Max(enough, 1e-3) && c.radius[i]*sine(i) > reach && better(i, b) {
+			if sine(i) > enough && c.radius[i]*sine(i) > reach && better(i, b) {
 				b = i
 			}
 		}
 		if b >= 0 {
 			break
+		}
+	}
+	if b < 0 { // a small set, or one near a line: the point farthest from it
+		for i := range c.at {
+			if sine(i) > 0 && (b < 0 || c.radius[i]*sine(i) > c.radius[b]*sine(b)) {
+				b = i
+			}
 		}
 	}
 	if b >= 0 && count[b] > manyAlike {

@@ -251,6 +251,27 @@ func TestStretchedOctahedronChangesItsGroupAtTheTolerance(t *testing.T) {
 	}
 }
 
+// A wider tolerance never loses a group that a narrower one has found.
+func TestWiderToleranceKeepsTheGroup(t *testing.T) {
+	rng := rand.New(rand.NewSource(13))
+	for _, m := range publishedStructures(t) {
+		if strings.Contains(m.PointGroup, "∞") {
+			continue
+		}
+		points, _ := shuffled(m.points(t), 0.004, rng)
+		closest, _, _ := newCloud(points).closestLike(3)
+		for _, tolerance := range []float64{0.01, 0.05, 0.1, 0.2, 0.3} {
+			if tolerance >= closest/2 {
+				break
+			}
+			fit := mustDetect(t, points, tolerance)
+			if fit.Setting.Symbol != m.PointGroup && fit.Setting.Order() < mustNew(t, m.PointGroup).Order() && !fit.Setting.Infinite() {
+				t.Errorf("%s at %g Å: %s, want %s or more", m.Name, tolerance, fit.Setting.Symbol, m.PointGroup)
+			}
+		}
+	}
+}
+
 func TestLinearSetsAndSingleAtomsHaveTheirInfiniteGroups(t *testing.T) {
 	rng := rand.New(rand.NewSource(5))
 	on := func(kinds []int, heights ...float64) []Point {
