@@ -225,3 +225,33 @@ func TestVectorKernelEqualsPlainGo(t *testing.T) {
 		}
 	}
 }
+
+// The assembly of the lit look's shade adds up the same shares.
+func TestVectorShadeEqualsPlainGo(t *testing.T) {
+	if !useVectors {
+		t.Skip("no vector instructions")
+	}
+	rng := rand.New(rand.NewPCG(7, 8))
+	for range 200 {
+		n := 1 + rng.IntN(5)
+		var l near
+		for range n {
+			b := emptyBlock
+			for i := range b {
+				b[i] = float32(rng.NormFloat64())
+			}
+			for i := range 8 {
+				b[24+i] = float32(0.1 + rng.Float64())
+				b[32+i] = b[24+i] * b[24+i]
+			}
+			l.blocks = append(l.blocks, b[:]...)
+		}
+		k := skyKernel{x: rng.Float32(), y: rng.Float32(), z: rng.Float32(), nx: 0.6, ny: 0.48, nz: 0.64, faintest: faintest}
+		k.hidden(&l)
+		got := k.sum
+		k.skyPlain(l.blocks)
+		if got != k.sum {
+			t.Fatalf("assembly %v, plain Go %v", got, k.sum)
+		}
+	}
+}

@@ -15,3 +15,8 @@ func drawFour(k *kernel) bool
 //
 //go:noescape
 func maskFour(k *kernel) bool
+
+// skyEight is skyPlain, eight balls at a time.
+//
+//go:noescape
+func skyEight(k *skyKernel)

@@ -11,15 +11,30 @@ import "math"
 // as the picture is refined.
 type shades struct {
 	balls []ball
-	// near lists the balls that matter to a part: near[head[i]:head[i+1]].
-	head []int32
-	near []int32
+	first []int32 // of a part's own balls, and one more
+	near  []near  // the balls that matter to a part
 }
+
+// near lists balls in blocks of eight: eight times x, then y, z, the radius,
+// and its square with the weight.
+type near struct {
+	blocks []float32
+	count  int
+}
+
+const blockSize = 5 * 8
+
+// emptyBlock is eight balls of no weight.
+var emptyBlock = func() (b [blockSize]float32) {
+	for i := range 8 {
+		b[24+i] = 1
+	}
+	return b
+}()
 
 // ball is a body's stand-in, in camera space.
 type ball struct {
 	x, y, z, r float32
-	part       int32
 	weight     float32
 }
 
@@ -37,16 +52,18 @@ const (
 func (r *Renderer) shadesOf() {
 	f := &r.frame
 	s := &f.shades
-	s.balls, s.head, s.near = s.balls[:0], s.head[:0], s.near[:0]
+	s.balls, s.first = s.balls[:0], s.first[:0]
+	s.near = s.near[:0]
 	if f.light.style != Lit || !(f.light.shade > 0) {
 		return
 	}
 	for i := range f.parts {
 		p := &f.parts[i]
+		first := len(s.balls)
+		s.first = append(s.first, int32(first))
 		if p.proj != 0 || p.flat {
 			continue
 		}
-		first := len(s.balls)
 		switch p.form {
 		case formQuadric:
 			s.addQuadric(&f.quadrics[p.index])
@@ -54,58 +71,58 @@ func (r *Renderer) shadesOf() {
 			s.addMesh(p)
 		}
 		for k := range s.balls[first:] {
-			s.balls[first+k].part, s.balls[first+k].weight = int32(i), p.alpha
+			s.balls[first+k].weight = p.alpha
 		}
 	}
-	for i := range f.parts {
-		s.head = append(s.head, int32(len(s.near)))
-		if f.parts[i].proj == 0 {
-			s.neighbours(int32(i), &f.parts[i], f)
-		}
-	}
-	s.head = append(s.head, int32(len(s.near)))
+	s.first = append(s.first, int32(len(s.balls)))
+	s.near = grow(s.near[:cap(s.near)], len(f.parts))
+	r.phase(len(f.parts), r.nearJob)
 }
 
 // neighbours lists the balls that a part feels.
-func (s *shades) neighbours(i int32, p *part, f *frame) {
-	// A ball around the part: of its own balls, or of a disc.
-	var c ball
-	found := false
-	if p.form == formDisc {
-		return // planes and mirrors stay even
+func (r *Renderer) neighbours(_ *worker, i int) {
+	s := &r.frame.shades
+	out := &s.near[i]
+	out.blocks, out.count = out.blocks[:0], 0
+	own := s.balls[s.first[i]:s.first[i+1]]
+	if len(own) == 0 {
+		return // planes and lines stay even
 	}
-	for _, b := range s.balls {
-		if b.part != i {
-			continue
-		}
-		if !found {
-			c, found = b, true
-			continue
-		}
-		d := distance(&c, &b)
-		if d+b.r > c.r {
-			if d+c.r <= b.r {
-				c = b
-				continue
-			}
-			r := (d + c.r + b.r) / 2
-			k := (r - c.r) / d
-			c.x, c.y, c.z, c.r = c.x+(b.x-c.x)*k, c.y+(b.y-c.y)*k, c.z+(b.z-c.z)*k, r
-		}
-	}
-	if !found {
-		return
+	// A ball around the part.
+	c := own[0]
+	for k := range own[1:] {
+		c = around(c, own[1+k])
 	}
 	for k := range s.balls {
 		b := &s.balls[k]
-		if b.part == i {
+		d := distance(&c, b) - 1.05*c.r
+		w := b.weight * b.r * b.r
+		if d > 0 && w <= faintest*d*d || k >= int(s.first[i]) && k < int(s.first[i+1]) {
 			continue
 		}
-		d := max(distance(&c, b)-1.05*c.r, 1e-9)
-		if b.weight*b.r*b.r > faintest*d*d {
-			s.near = append(s.near, int32(k))
+		at := out.count % 8
+		if at == 0 {
+			out.blocks = append(out.blocks, emptyBlock[:]...)
 		}
+		o := out.blocks[len(out.blocks)-blockSize:]
+		o[at], o[8+at], o[16+at], o[24+at], o[32+at] = b.x, b.y, b.z, b.r, w
+		out.count++
 	}
+}
+
+// around returns a ball around two balls.
+func around(c, b ball) ball {
+	d := distance(&c, &b)
+	switch {
+	case d+b.r <= c.r:
+		return c
+	case d+c.r <= b.r:
+		return b
+	}
+	r := (d + c.r + b.r) / 2
+	k := (r - c.r) / d
+	c.x, c.y, c.z, c.r = c.x+(b.x-c.x)*k, c.y+(b.y-c.y)*k, c.z+(b.z-c.z)*k, r
+	return c
 }
 
 func distance(a, b *ball) float32 {
@@ -128,7 +145,7 @@ func (s *shades) addQuadric(q *quadric) {
 	case rodCone:
 		at(Vec3{0, 0, -0.65}, 0.5*round)
 	case rodCylinder:
-		n := int(math.Min(6, math.Max(1, col(2).Len()/(2*round))))
+		n := int(math.Min(4, math.Max(1, col(2).Len()/(2*round))))
 		for k := range n {
 			at(Vec3{0, 0, (float64(k) + 0.5) / float64(n)}, round)
 		}
@@ -221,32 +238,46 @@ func longest(q []Vec3, mid Vec3) Vec3 {
 	return axis
 }
 
-// hidden returns the share of the sky that the balls take from a place of a
-// part, 0 to 1; x, y, z is in camera space, the normal of unit length.
-func (s *shades) hidden(part int32, x, y, z, nx, ny, nz float32) float32 {
-	sum := float32(0)
-	for _, k := range s.near[s.head[part]:s.head[part+1]] {
-		b := &s.balls[k]
-		dx, dy, dz := b.x-x, b.y-y, b.z-z
-		d2 := dx*dx + dy*dy + dz*dz
-		r2 := b.r * b.r * b.weight
-		if r2 < faintest*d2 {
-			continue
-		}
-		h := nx*dx + ny*dy + nz*dz
-		// Part of a ball may stand above the horizon though its middle does
-		// not.
-		if h < -b.r {
-			continue
-		}
-		if d2 < b.r*b.r {
-			d2 = b.r * b.r
-		}
-		d := float32(math.Sqrt(float64(d2)))
-		up := (h + b.r) / (d + b.r)
-		sum += (r2/d2 - faintest) * up * up
+// skyKernel is a place and its unit normal, with the balls to look at; its
+// layout is known to the assembly.
+type skyKernel struct {
+	x, y, z, nx, ny, nz float32
+	blocks              *float32
+	n                   int64 // blocks
+	faintest            float32
+	sum                 [8]float32
+}
+
+// hidden returns the share of the sky that balls take from a place, 0 to 1.
+func (k *skyKernel) hidden(l *near) float32 {
+	k.blocks, k.n, k.faintest = &l.blocks[0], int64(len(l.blocks)/blockSize), faintest
+	if useVectors {
+		skyEight(k)
+	} else {
+		k.skyPlain(l.blocks)
 	}
+	a := &k.sum
+	sum := ((a[0] + a[4]) + (a[1] + a[5])) + ((a[2] + a[6]) + (a[3] + a[7]))
 	return min(1, strength*sum)
+}
+
+// skyPlain sums the shares of the sky, eight sums side by side. skyEight does
+// the same.
+func (k *skyKernel) skyPlain(blocks []float32) {
+	k.sum = [8]float32{}
+	for ; len(blocks) >= blockSize; blocks = blocks[blockSize:] {
+		for i := range 8 {
+			dx, dy, dz := blocks[i]-k.x, blocks[8+i]-k.y, blocks[16+i]-k.z
+			r, w := blocks[24+i], blocks[32+i]
+			d2 := max(float32(dx*dx+dy*dy)+dz*dz, r*r)
+			share := max(w/d2-faintest, 0)
+			h := float32(k.nx*dx+k.ny*dy) + k.nz*dz
+			// A part of a ball may stand above the horizon though its middle
+			// does not.
+			up := max(h+r, 0) / (sqrt32(d2) + r)
+			k.sum[i] += share * up * up
+		}
+	}
 }
 
 // lit returns the share of its colour that a place shows in the lit look; the
@@ -262,9 +293,11 @@ func (t *tile) lit(part int32, nx, ny, nz, nl, x, y float32) float32 {
 	if k := nx*l.fx + ny*l.fy + nz*l.fz; k > 0 {
 		d += l.fill * k
 	}
-	if sh := &t.f.shades; l.shade > 0 && len(sh.head) > 0 && sh.head[part] < sh.head[part+1] {
-		px, py, pz := l.spot(&t.f.projs[0], x+float32(t.x), y+float32(t.y), t.surf.n)
-		d *= 1 - l.shade*sh.hidden(part, px, py, pz, nx, ny, nz)
+	if sh := t.f.shades.near; l.shade > 0 && len(sh) > 0 && sh[part].count > 0 {
+		k := &t.sky
+		k.x, k.y, k.z = l.spot(&t.f.projs[0], x+float32(t.x), y+float32(t.y), t.surf.n)
+		k.nx, k.ny, k.nz = nx, ny, nz
+		d *= 1 - l.shade*k.hidden(&sh[part])
 	}
 	return d
 }

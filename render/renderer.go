@@ -26,9 +26,9 @@ type Renderer struct {
 	job     func(w *worker, i int)
 	run     []func()
 
-	vertexJob, binJob, tileJob func(w *worker, i int)
-	pickAt                     image.Point
-	hits                       []Hit
+	vertexJob, binJob, nearJob, tileJob func(w *worker, i int)
+	pickAt                              image.Point
+	hits                                []Hit
 }
 
 // frame is what all workers share while one picture is drawn.
@@ -144,7 +144,7 @@ func (r *Renderer) build(scene *Scene) {
 // hire makes the number of workers n and the functions that start them.
 func (r *Renderer) hire(n int) {
 	if r.vertexJob == nil {
-		r.vertexJob, r.binJob, r.tileJob = r.projectChunk, r.binBatch, r.drawTile
+		r.vertexJob, r.binJob, r.nearJob, r.tileJob = r.projectChunk, r.binBatch, r.neighbours, r.drawTile
 	}
 	for len(r.workers) < n {
 		w := &worker{r: r}

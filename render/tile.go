@@ -30,6 +30,7 @@ type tile struct {
 	solidAny    bool // something opaque is on the canvas, or there is a far limit
 
 	kernel  kernel
+	sky     skyKernel
 	surf    surf
 	free    bool // look beyond the edges of a triangle
 	deep    bool // shading needs the nearness
