@@ -1,0 +1,518 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"errors"
+	"fmt"
+	"math"
+	"slices"
+	"strconv"
+	"strings"
+
+	"fyne.io/fyne/v2"
+	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/app/notation"
+	"lobewright/app/picture"
+	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/orbitals"
+)
+
+// newView makes the picture and says what the hand does in it.
+func (u *ui) newView() *viewport {
+	v := newViewport(u)
+	rows := func() mgl64.Mat3 { return v.sight.Rows() }
+	camera := func(step study.Step, change func(study.Camera) study.Camera) {
+		s := u.now()
+		s.Camera = change(s.Camera.WithView(rows()))
+		if !u.history.Open() {
+			u.history.Begin(step)
+		}
+		u.history.Set(s)
+		u.show(true)
+	}
+	v.begin = func(pan bool) {
+		u.stopGlide()
+		if pan {
+			u.history.Begin(study.StepPan)
+		} else {
+			u.history.Begin(study.StepOrbit)
+		}
+	}
+	v.end = func(bool) {
+		u.history.Commit()
+		u.session.Keep(u.now())
+		u.show(false)
+		u.updateMenus()
+	}
+	v.turnBy = func(dx, dy float64) {
+		// Over the short side it is half a turn.
+		perPixel := math.Pi / float64(max(1, min(v.width, v.height)))
+		camera(study.StepOrbit, func(c study.Camera) study.Camera { return c.Orbited(rows(), dx*perPixel, -dy*perPixel) })
+	}
+	v.panBy = func(dx, dy float64) {
+		perPixel := v.sight.PerPixel(v.width, v.height)
+		camera(study.StepPan, func(c study.Camera) study.Camera { return c.Panned(dx*perPixel, -dy*perPixel) })
+	}
+	v.zoomAt = func(factor, x, y float64) {
+		u.stopGlide()
+		u.history.Begin(study.StepZoom)
+		perPixel := v.sight.PerPixel(v.width, v.height)
+		at := [2]float64{(x - float64(v.width)/2) * perPixel, (float64(v.height)/2 - y) * perPixel}
+		camera(study.StepZoom, func(c study.Camera) study.Camera { return c.ZoomedAt(factor, at) })
+		u.session.Keep(u.now())
+	}
+	v.fit = u.fit
+	v.click = u.clicked
+	v.hintFor = u.nameOf
+	v.key = u.key
+	v.typed = u.typed
+	return v
+}
+
+func (u *ui) stopGlide() {
+	if u.glide != nil {
+		u.glide.clock.stop()
+		u.glide = nil
+	}
+}
+
+// moveCamera is a step of the camera that the picture glides through.
+func (u *ui) moveCamera(step study.Step, change func(study.Camera) study.Camera) {
+	from := u.view.sight
+	s := u.now()
+	s.Camera = change(s.Camera.WithView(from.Rows()))
+	u.do(step, s)
+	u.glideFrom(from)
+}
+
+func (u *ui) fit() {
+	u.moveCamera(study.StepFit, func(c study.Camera) study.Camera { return c.Fitted() })
+}
+
+// along looks along an axis of the frame.
+func (u *ui) along(axis mgl64.Vec3) {
+	up := mgl64.Vec3{0, 0, 1}
+	if math.Abs(axis.Normalize()[2]) > 0.99 {
+		up = mgl64.Vec3{0, 1, 0}
+	}
+	u.moveCamera(study.StepAlong, func(c study.Camera) study.Camera { return c.Along(axis, up) })
+}
+
+// alongOperation looks along the axis, or the normal of the plane, of the
+// operation at hand.
+func (u *ui) alongOperation() {
+	if op, ok := u.operation(); ok && op.Axis.Len() > 0 {
+		u.along(op.Axis)
+	}
+}
+
+// firstView goes back to the view that the program chooses.
+func (u *ui) firstView() {
+	from := u.view.sight
+	s := u.now()
+	s.Camera = study.Camera{Orthographic: s.Camera.Orthographic}
+	u.do(study.StepFit, s)
+	u.glideFrom(from)
+}
+
+// clicked chooses what is seen under the pointer: an atom, and the function on
+// it, or the next one where it has several. Empty ground lets go of the atoms.
+func (u *ui) clicked(p picture.Picked, ok bool, add bool) {
+	s := u.now()
+	switch {
+	case !ok:
+		if len(s.Atoms) > 0 {
+			s.Atoms = nil
+			u.do(study.StepAtoms, s)
+		}
+	case p.Element:
+		u.alongOperation()
+	case add:
+		atoms := slices.Clone(s.Atoms)
+		if i := slices.Index(atoms, p.Atom+1); i >= 0 {
+			atoms = slices.Delete(atoms, i, i+1)
+		} else {
+			atoms = append(atoms, p.Atom+1)
+			slices.Sort(atoms)
+		}
+		s.Atoms = atoms
+		u.do(study.StepAtoms, s)
+	default:
+		s.Atoms = []int{p.Atom + 1}
+		step := study.StepAtoms
+		if n := u.functionAt(p, s); n > 0 {
+			s.Projection.Function, s.Projection.Subject, s.Moment = n, study.SubjectFunction, 0
+			step = study.StepFunction
+			u.fade()
+		}
+		u.do(step, s)
+	}
+}
+
+// functionAt is the function, from 1, that a click on an atom means; 0 if the
+// atom has none.
+func (u *ui) functionAt(p picture.Picked, s study.Study) int {
+	b := u.state.Basis
+	if b == nil || len(s.Basis) == 0 {
+		return 0
+	}
+	var here []int
+	for i, f := range b.Functions {
+		if f.Site == p.Atom {
+			here = append(here, i+1)
+		}
+	}
+	if len(here) == 0 {
+		return 0
+	}
+	if s.Projection.TheSubject() == study.SubjectFunction {
+		if i := slices.Index(here, s.Projection.Function); i >= 0 {
+			return here[(i+1)%len(here)]
+		}
+	}
+	return here[0]
+}
+
+// nameOf says what lies under the pointer.
+func (u *ui) nameOf(p picture.Picked) string {
+	if p.Element {
+		if op, ok := u.operation(); ok {
+			return op.Name + ": click to look along it"
+		}
+		return ""
+	}
+	g := u.state.Group
+	if g == nil || p.Atom < 0 || p.Atom >= len(g.Molecule.Atoms) {
+		return ""
+	}
+	text := g.AtomNames()[p.Atom]
+	if b := u.state.Basis; b != nil && len(u.now().Basis) > 0 {
+		for i, f := range b.Functions {
+			if f.Site == p.Atom {
+				text += fmt.Sprintf("  φ%d %s", i+1, notation.Function(f.Name).String())
+			}
+		}
+	}
+	return text
+}
+
+func (u *ui) chooseFunction(n int) {
+	s := u.now()
+	s.Projection.Function, s.Projection.Subject, s.Moment = n, study.SubjectFunction, 0
+	u.fade()
+	u.do(study.StepFunction, s)
+}
+
+func (u *ui) chooseOrbital(irrep string, number, partner int) {
+	s := u.now()
+	step := study.StepIrrep
+	if s.Projection.Irrep == irrep && s.Projection.Copy == number {
+		step = study.StepPartner
+	}
+	s.Projection.Irrep, s.Projection.Copy, s.Projection.Partner = irrep, number, partner
+	s.Projection.Subject, s.Moment = study.SubjectOrbital, 0
+	u.fade()
+	u.do(step, s)
+}
+
+// nextOrbital goes to another group orbital of the list.
+func (u *ui) nextOrbital(by int) {
+	o := u.state.Orbitals
+	if o == nil || len(o.Projection.Orbitals) == 0 {
+		return
+	}
+	list := o.Projection.Orbitals
+	at := slices.IndexFunc(list, func(x orbitals.GroupOrbital) bool { return &x == u.orbital() })
+	if now := u.orbital(); now != nil && u.now().Projection.TheSubject() == study.SubjectOrbital {
+		at = slices.IndexFunc(list, func(x orbitals.GroupOrbital) bool {
+			return x.Irrep == now.Irrep && x.Copy == now.Copy && x.Partner == now.Partner
+		})
+	}
+	at = (at + by + len(list)) % len(list)
+	if at < 0 {
+		at = 0
+	}
+	u.chooseOrbital(o.Irreps[list[at].Irrep].Label, list[at].Copy+1, list[at].Partner+1)
+}
+
+// nextFunction goes to another function of the basis.
+func (u *ui) nextFunction(by int) {
+	b := u.state.Basis
+	if b == nil || len(b.Functions) == 0 || len(u.now().Basis) == 0 {
+		return
+	}
+	n := len(b.Functions)
+	u.chooseFunction((u.now().Projection.Function-1+by+n)%n + 1)
+}
+
+// nextOperation goes to another operation without playing it.
+func (u *ui) nextOperation(by int) {
+	if u.state.Group == nil {
+		return
+	}
+	s := u.now()
+	list := u.state.Group.Operations(s.Angle)
+	at := slices.IndexFunc(list, func(o work.Operation) bool { return o.Name == s.Operation })
+	if at < 0 && by < 0 {
+		at = 0
+	}
+	u.chooseOperation(list[(at+by+len(list))%len(list)].Name)
+}
+
+func (u *ui) chooseOperation(name string) {
+	s := u.now()
+	s.Operation, s.Moment = name, 0
+	u.do(study.StepOperation, s)
+	u.ledger.reveal("operation " + name)
+}
+
+// playOperation chooses an operation and plays it from the start.
+func (u *ui) playOperation(name string) {
+	u.chooseOperation(name)
+	u.player.start()
+}
+
+// scrubbed follows the bar: a gesture that ends with its release.
+func (u *ui) scrubbed(moment float64) {
+	u.player.stop()
+	u.history.Begin(study.StepScrub)
+	s := u.now()
+	s.Moment = moment
+	u.history.Set(s)
+	u.show(true)
+	u.said.Update()
+}
+
+// angled follows the bar of the angle of a linear molecule's operation.
+func (u *ui) angled(degrees float64) {
+	u.player.stop()
+	u.history.Begin(study.StepAngle)
+	s := u.now()
+	s.Angle = degrees
+	u.history.Set(s)
+	u.service.Request(s)
+	u.show(true)
+	u.said.Update()
+	u.ledger.Update()
+}
+
+func (u *ui) toggleBasis(entry string) {
+	s := u.now()
+	list := slices.Clone(s.Basis)
+	if i := slices.Index(list, entry); i >= 0 {
+		list = slices.Delete(list, i, i+1)
+	} else {
+		list = append(list, entry)
+	}
+	u.setBasis(list)
+}
+
+func (u *ui) removeBasis(i int) {
+	u.setBasis(slices.Delete(slices.Clone(u.now().Basis), i, i+1))
+}
+
+// setBasis changes the basis. What was chosen among its functions no longer
+// means anything, but the first function is there to be watched.
+func (u *ui) setBasis(list []string) {
+	s := u.now()
+	s.Basis = list
+	s.Projection = study.Projection{}
+	s.Moment = 0
+	if len(list) > 0 {
+		s.Projection.Function, s.Projection.Subject = 1, study.SubjectFunction
+	}
+	u.do(study.StepBasis, s)
+}
+
+// typeBasis takes a typed selection. A fault of its spelling is shown beside
+// it and changes nothing.
+func (u *ui) typeBasis(text string) {
+	text = strings.TrimSpace(text)
+	if text == "" {
+		return
+	}
+	if _, err := orbitals.ParseChoice(text); err != nil {
+		u.notice = err.Error()
+		u.given.Update()
+		return
+	}
+	u.notice = ""
+	u.basis.SetText("")
+	if !slices.Contains(u.now().Basis, text) {
+		u.setBasis(append(slices.Clone(u.now().Basis), text))
+	}
+}
+
+func (u *ui) setTolerance(t float64) {
+	s := u.now()
+	s.Tolerance = t
+	u.do(study.StepTolerance, s)
+}
+
+func (u *ui) askTolerance() {
+	u.ask("Tolerance", "How far may an atom lie from its ideal place, in Å?", strconv.FormatFloat(u.now().TheTolerance(), 'g', 6, 64), func(text string) error {
+		t, err := strconv.ParseFloat(strings.TrimSpace(strings.TrimSuffix(strings.ReplaceAll(text, ",", "."), "Å")), 64)
+		if err != nil || !(t > 0) || t > 10 {
+			return errors.New("give a length in Å above 0, such as 0.02")
+		}
+		u.setTolerance(t)
+		return nil
+	})
+}
+
+func (u *ui) askCore() {
+	s := u.now()
+	u.ask("Core", "Which atoms decide the group? Elements or numbers (Pt,2-5); empty: all", s.Core, func(text string) error {
+		return u.tryStudy(study.StepCore, func(s *study.Study) { s.Core, s.Ignore = strings.TrimSpace(text), "" })
+	})
+}
+
+func (u *ui) askIgnore() {
+	s := u.now()
+	u.ask("Spectators", "Which atoms do not decide the group? Elements or numbers (H,7-9); empty: none", s.Ignore, func(text string) error {
+		return u.tryStudy(study.StepCore, func(s *study.Study) { s.Core, s.Ignore = "", strings.TrimSpace(text) })
+	})
+}
+
+// tryStudy is a step; what is wrong with it appears beside the thing.
+func (u *ui) tryStudy(step study.Step, change func(*study.Study)) error {
+	s := u.now()
+	change(&s)
+	if err := s.Check(); err != nil {
+		return err
+	}
+	u.do(step, s)
+	return nil
+}
+
+func (u *ui) undo() {
+	u.player.stop()
+	from := u.view.sight
+	if _, ok := u.history.Undo(); ok {
+		u.changed()
+		u.glideFrom(from)
+	}
+}
+
+func (u *ui) redo() {
+	u.player.stop()
+	from := u.view.sight
+	if _, ok := u.history.Redo(); ok {
+		u.changed()
+		u.glideFrom(from)
+	}
+}
+
+// key serves the picture, and the window where nothing has the focus.
+func (u *ui) key(e *fyne.KeyEvent) bool {
+	shift := u.modifiers()&fyne.KeyModifierShift != 0
+	turn := func(x, y float64) {
+		const step = math.Pi / 36
+		u.moveBy(study.StepOrbit, func(c study.Camera, rows mgl64.Mat3) study.Camera { return c.Orbited(rows, x*step, y*step) })
+	}
+	pan := func(x, y float64) {
+		by := 24 * u.view.sight.PerPixel(u.view.width, u.view.height) * u.view.scale()
+		u.moveBy(study.StepPan, func(c study.Camera, _ mgl64.Mat3) study.Camera { return c.Panned(x*by, y*by) })
+	}
+	move := turn
+	if shift {
+		move = pan
+	}
+	switch e.Name {
+	case fyne.KeyLeft:
+		move(-1, 0)
+	case fyne.KeyRight:
+		move(1, 0)
+	case fyne.KeyUp:
+		move(0, 1)
+	case fyne.KeyDown:
+		move(0, -1)
+	case fyne.KeySpace:
+		u.togglePlay()
+	case fyne.KeyHome:
+		u.jump(0)
+	case fyne.KeyEnd:
+		u.jump(1)
+	case fyne.KeyPageUp:
+		u.nextOrbital(-1)
+	case fyne.KeyPageDown:
+		u.nextOrbital(1)
+	case fyne.KeyEscape:
+		u.escape()
+	default:
+		return false
+	}
+	return true
+}
+
+// typed serves letters in the picture.
+func (u *ui) typed(r rune) bool {
+	switch r {
+	case '+', '=':
+		u.zoomBy(1.2)
+	case '-', '−':
+		u.zoomBy(1 / 1.2)
+	case 'f', 'F', '0':
+		u.fit()
+	case 'x':
+		u.along(mgl64.Vec3{1, 0, 0})
+	case 'y':
+		u.along(mgl64.Vec3{0, 1, 0})
+	case 'z':
+		u.along(mgl64.Vec3{0, 0, 1})
+	case 'X':
+		u.along(mgl64.Vec3{-1, 0, 0})
+	case 'Y':
+		u.along(mgl64.Vec3{0, -1, 0})
+	case 'Z':
+		u.along(mgl64.Vec3{0, 0, -1})
+	case 'a':
+		u.alongOperation()
+	case '.':
+		u.nextOperation(1)
+	case ',':
+		u.nextOperation(-1)
+	case 'n':
+		u.nextFunction(1)
+	case 'N':
+		u.nextFunction(-1)
+	default:
+		return false
+	}
+	return true
+}
+
+// moveBy is a step of the camera by a key; repeated keys are one step.
+func (u *ui) moveBy(step study.Step, change func(study.Camera, mgl64.Mat3) study.Camera) {
+	u.stopGlide()
+	u.history.Begin(step)
+	s := u.now()
+	rows := u.view.sight.Rows()
+	s.Camera = change(s.Camera.WithView(rows), rows)
+	u.history.Set(s)
+	u.session.Keep(s)
+	u.show(true)
+	u.updateMenus()
+}
+
+func (u *ui) zoomBy(factor float64) {
+	u.view.zoomAt(factor, float64(u.view.width)/2, float64(u.view.height)/2)
+	u.updateMenus()
+}
+
+// escape gives up a gesture, closes what lies over the window, or stops what
+// plays.
+func (u *ui) escape() {
+	switch {
+	case u.win.Canvas().Overlays().Top() != nil:
+		u.win.Canvas().Overlays().Top().Hide()
+	case u.player.playing:
+		u.player.stop()
+	case u.history.Open():
+		u.history.Cancel()
+		u.changed()
+	}
+}

@@ -1,0 +1,234 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"os"
+	"path/filepath"
+	"slices"
+	"strings"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/widget"
+)
+
+// A question is a small sheet over the window with one line to type. What is
+// wrong with the answer appears beside it, and the sheet stays.
+type question struct {
+	u       *ui
+	popup   *widget.PopUp
+	entry   *answerEntry
+	fault   *canvas.Text
+	asked   func(text string, done func(error))
+	content *fyne.Container
+}
+
+// An answerEntry tells of the keys that an entry leaves unused.
+type answerEntry struct {
+	widget.Entry
+	escape func()
+	tab    func()
+}
+
+// TypedKey implements fyne.Focusable.
+func (e *answerEntry) TypedKey(k *fyne.KeyEvent) {
+	switch {
+	case k.Name == fyne.KeyEscape && e.escape != nil:
+		e.escape()
+	case k.Name == fyne.KeyTab && e.tab != nil:
+		e.tab()
+	default:
+		e.Entry.TypedKey(k)
+	}
+}
+
+// AcceptsTab implements fyne.Tabbable.
+func (e *answerEntry) AcceptsTab() bool { return e.tab != nil }
+
+// ask opens a sheet; answer returns what is wrong, or nil to close it.
+func (u *ui) ask(title, text, now string, answer func(string) error) *question {
+	return u.askLater(title, text, now, func(text string, done func(error)) { done(answer(text)) })
+}
+
+// askLater is ask for answers that take time.
+func (u *ui) askLater(title, text, now string, answer func(text string, done func(error)), more ...fyne.CanvasObject) *question {
+	q := &question{u: u, asked: answer}
+	q.entry = &answerEntry{escape: q.close}
+	q.entry.ExtendBaseWidget(q.entry)
+	q.entry.SetText(now)
+	q.entry.CursorColumn = len([]rune(now))
+	q.entry.OnSubmitted = func(string) { u.guard(q.submit) }
+	p := u.palette()
+	q.fault = canvas.NewText("", p.Accent)
+	q.fault.TextSize = secondSize * float32(u.zoom())
+	head := widget.NewLabelWithStyle(title, fyne.TextAlignLeading, fyne.TextStyle{Bold: true})
+	ok := widget.NewButton("OK", func() { u.guard(q.submit) })
+	ok.Importance = widget.HighImportance
+	cancel := widget.NewButton("Cancel", q.close)
+	explain := widget.NewLabel(text)
+	explain.Wrapping = fyne.TextWrapWord
+	q.content = container.NewVBox(head, explain, q.entry, q.fault)
+	for _, m := range more {
+		q.content.Add(m)
+	}
+	q.content.Add(container.NewBorder(nil, nil, nil, container.NewHBox(cancel, ok)))
+	q.popup = widget.NewModalPopUp(container.NewPadded(q.content), u.win.Canvas())
+	q.popup.Show()
+	q.fitted()
+	u.win.Canvas().Focus(q.entry)
+	return q
+}
+
+// fitted gives the sheet a width that suits the window.
+func (q *question) fitted() {
+	room := q.u.win.Canvas().Size()
+	q.popup.Resize(fyne.NewSize(min(560*float32(q.u.zoom()), room.Width-40), q.popup.MinSize().Height))
+}
+
+func (q *question) close() {
+	q.popup.Hide()
+	q.u.win.Canvas().Focus(q.u.view)
+}
+
+func (q *question) submit() {
+	q.asked(q.entry.Text, func(err error) {
+		if err == nil {
+			q.close()
+			return
+		}
+		q.say(err.Error())
+	})
+}
+
+// say shows what is wrong, in as many lines as the sheet is wide.
+func (q *question) say(text string) {
+	q.fault.Text = ""
+	width := q.popup.Size().Width - 48
+	lines := wrapPlain(text, width, q.fault.TextSize)
+	// One canvas.Text is one line, so the others follow it.
+	for i := len(q.content.Objects) - 1; i >= 0; i-- {
+		if t, ok := q.content.Objects[i].(*canvas.Text); ok && t != q.fault {
+			q.content.Remove(t)
+		}
+	}
+	at := slices.Index(q.content.Objects, fyne.CanvasObject(q.fault))
+	for i, line := range lines {
+		if i == 0 {
+			q.fault.Text = line
+			continue
+		}
+		t := canvas.NewText(line, q.fault.Color)
+		t.TextSize = q.fault.TextSize
+		q.content.Objects = slices.Insert(q.content.Objects, at+i, fyne.CanvasObject(t))
+	}
+	q.content.Refresh()
+	q.fitted()
+}
+
+func wrapPlain(text string, width, size float32) []string {
+	var lines []string
+	line := ""
+	for _, word := range strings.Fields(text) {
+		longer := strings.TrimSpace(line + " " + word)
+		if line != "" && fyne.MeasureText(longer, size, fyne.TextStyle{}).Width > width {
+			lines = append(lines, line)
+			longer = word
+		}
+		line = longer
+	}
+	return append(lines, line)
+}
+
+// askPath asks for the path of a file, with completion by Tab and the entries
+// of the folder below.
+func (u *ui) askPath(title, text, now string, answer func(path string, done func(error))) {
+	list := widget.NewLabel("")
+	list.Wrapping = fyne.TextWrapWord
+	q := u.askLater(title, text, now, func(text string, done func(error)) {
+		answer(expanded(strings.TrimSpace(text)), done)
+	}, list)
+	show := func(path string) {
+		names := completions(path)
+		const most = 24
+		text := strings.Join(names[:min(most, len(names))], "   ")
+		if len(names) > most {
+			text += "   …"
+		}
+		if text == "" {
+			text = "no such file"
+		}
+		list.SetText(text)
+		q.fitted()
+	}
+	q.entry.OnChanged = func(s string) { u.guard(func() { show(s) }) }
+	q.entry.tab = func() {
+		u.guard(func() {
+			if longer := completed(q.entry.Text); longer != q.entry.Text {
+				q.entry.SetText(longer)
+				q.entry.CursorColumn = len([]rune(longer))
+				q.entry.Refresh()
+			}
+		})
+	}
+	show(now)
+}
+
+// expanded replaces a leading ~ by the home folder and makes a path absolute;
+// names such as "demo:water" stay.
+func expanded(path string) string {
+	if path == "" || strings.HasPrefix(path, "demo:") || strings.HasPrefix(path, "ideal:") {
+		return path
+	}
+	if home, err := os.UserHomeDir(); err == nil && (path == "~" || strings.HasPrefix(path, "~/")) {
+		path = filepath.Join(home, path[1:])
+	}
+	if absolute, err := filepath.Abs(path); err == nil {
+		return absolute
+	}
+	return path
+}
+
+// completions are the entries of a folder that go on from what is typed;
+// folders end in a slash and come first.
+func completions(typed string) []string {
+	folder, begin := filepath.Split(typed)
+	in := expanded(folder)
+	if folder == "" {
+		in = "."
+	}
+	entries, err := os.ReadDir(in)
+	if err != nil {
+		return nil
+	}
+	var folders, files []string
+	for _, e := range entries {
+		name := e.Name()
+		if !strings.HasPrefix(name, begin) || strings.HasPrefix(name, ".") && !strings.HasPrefix(begin, ".") {
+			continue
+		}
+		if info, err := os.Stat(filepath.Join(in, name)); err == nil && info.IsDir() {
+			folders = append(folders, name+"/")
+		} else {
+			files = append(files, name)
+		}
+	}
+	return append(folders, files...)
+}
+
+// completed is what is typed, with what all completions go on with.
+func completed(typed string) string {
+	names := completions(typed)
+	if len(names) == 0 {
+		return typed
+	}
+	common := names[0]
+	for _, n := range names[1:] {
+		for !strings.HasPrefix(n, common) {
+			common = common[:len(common)-1]
+		}
+	}
+	folder, _ := filepath.Split(typed)
+	return folder + common
+}

@@ -1,0 +1,206 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"context"
+	"image"
+	"image/color"
+	"image/draw"
+	"strings"
+
+	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/app/notation"
+	"lobewright/app/picture"
+	"lobewright/assets"
+	"lobewright/render"
+)
+
+// A board is what a pane shows: texts, lines, fields and images with their
+// places, and what answers to a click. Lengths are in the toolkit's units, x
+// to the right and y down.
+type board struct {
+	width, height float64
+	palette       assets.Palette
+
+	scene  render.Scene
+	images []boardImage
+	spots  []spot
+	bottom float64 // of everything drawn
+}
+
+type boardImage struct {
+	x, y float64
+	img  *image.RGBA
+}
+
+// A spot is a rectangle that does something.
+type spot struct {
+	x, y, width, height float64
+	// name tells spots apart when the pane is drawn anew.
+	name string
+	// hint is shown while the pointer rests there.
+	hint string
+	do   func()
+}
+
+func (s spot) holds(x, y float64) bool {
+	return s.x <= x && x < s.x+s.width && s.y <= y && y < s.y+s.height
+}
+
+// The board's scene is set at 72 pixels an inch for a scale of 1, so that a
+// point is a unit.
+const (
+	boardDPI = 72
+	unitMM   = 25.4 / 72
+)
+
+func newBoard(width, height float64, palette assets.Palette) *board {
+	b := &board{width: width, height: height, palette: palette}
+	b.scene.Fonts, _ = picture.Fonts()
+	return b
+}
+
+// place is the point of the scene for a place on the board.
+func (b *board) place(x, y float64) mgl64.Vec3 { return mgl64.Vec3{x, b.height - y} }
+
+func (b *board) add(g render.Geometry, c color.NRGBA) {
+	b.scene.Shapes = append(b.scene.Shapes, render.Shape{
+		Geometry: g,
+		Material: render.Material{Color: render.Color{R: c.R, G: c.G, B: c.B}, Opacity: float64(c.A) / 255, Flat: true, NoOutline: true},
+		Place:    &render.Place{Unit: unitMM},
+	})
+}
+
+func (b *board) seen(top, bottom float64) bool {
+	b.bottom = max(b.bottom, bottom)
+	return bottom >= 0 && top <= b.height
+}
+
+// A style is how a text is set.
+type style struct {
+	size  float64
+	color color.NRGBA
+	bold  bool
+	align float64 // -1 left, 0 middle, 1 right
+}
+
+// text sets a line with its base at y and returns its width.
+func (b *board) text(x, y float64, t notation.Text, s style) float64 {
+	set := picture.Runs(t)
+	for i := range set {
+		set[i].Bold = s.bold
+	}
+	if b.seen(y-s.size, y+0.3*s.size) {
+		b.add(render.Text{At: b.place(x, y), Runs: set, Size: s.size, AlignX: s.align, AlignY: -1, Fixed: true, Through: true}, s.color)
+	}
+	return b.measure(t, s)
+}
+
+func (b *board) measure(t notation.Text, s style) float64 {
+	if b.scene.Fonts == nil || len(t) == 0 {
+		return 0
+	}
+	set := picture.Runs(t)
+	for i := range set {
+		set[i].Bold = s.bold
+	}
+	w, _, _ := b.scene.Fonts.Measure(set, s.size)
+	return w / unitMM
+}
+
+// paragraph sets a text in lines of a width, the first one with its base at
+// y, and returns the base of the line that would follow.
+func (b *board) paragraph(x, y, width float64, t notation.Text, s style) float64 {
+	for _, line := range b.wrapped(t, width, s) {
+		b.text(x, y, line, s)
+		y += 1.4 * s.size
+	}
+	return y
+}
+
+// wrapped breaks a text at its blanks into lines of a width.
+func (b *board) wrapped(t notation.Text, width float64, s style) []notation.Text {
+	var lines []notation.Text
+	var line, word notation.Text
+	end := func() {
+		if len(line) > 0 && b.measure(line.Then(word), s) > width {
+			lines = append(lines, line)
+			line = nil
+		}
+		line = line.Then(word)
+		word = nil
+	}
+	for _, r := range t {
+		for _, part := range strings.SplitAfter(r.Text, " ") {
+			if part == "" {
+				continue
+			}
+			word = word.Then(notation.Text{{Text: part, Italic: r.Italic, Place: r.Place}})
+			if strings.HasSuffix(part, " ") {
+				end()
+			}
+		}
+	}
+	end()
+	if len(line) > 0 {
+		lines = append(lines, line)
+	}
+	return lines
+}
+
+// clipped is the longest beginning of a line that fits, with an ellipsis.
+func (b *board) clipped(text string, width float64, s style) string {
+	if b.measure(notation.Words(text), s) <= width {
+		return text
+	}
+	runes := []rune(text)
+	for n := len(runes) - 1; n > 0; n-- {
+		short := strings.TrimRight(string(runes[:n]), " ") + "…"
+		if b.measure(notation.Words(short), s) <= width {
+			return short
+		}
+	}
+	return "…"
+}
+
+func (b *board) fill(x, y, width, height float64, c color.NRGBA) {
+	if b.seen(y, y+height) && width > 0 && height > 0 {
+		b.add(render.Polygon{Points: []mgl64.Vec3{
+			b.place(x, y), b.place(x, y+height), b.place(x+width, y+height), b.place(x+width, y),
+		}}, c)
+	}
+}
+
+// frame draws the outline of a rectangle, within it.
+func (b *board) frame(x, y, width, height, thick float64, c color.NRGBA) {
+	b.fill(x, y, width, thick, c)
+	b.fill(x, y+height-thick, width, thick, c)
+	b.fill(x, y+thick, thick, height-2*thick, c)
+	b.fill(x+width-thick, y+thick, thick, height-2*thick, c)
+}
+
+func (b *board) image(x, y float64, img *image.RGBA) {
+	if img != nil {
+		b.images = append(b.images, boardImage{x, y, img})
+	}
+}
+
+func (b *board) spot(s spot) { b.spots = append(b.spots, s) }
+
+// paint draws the board at a number of pixels a unit.
+func (b *board) paint(r *render.Renderer, dst *image.RGBA, scale float64) error {
+	ground := b.palette.Panel
+	camera := render.Camera{Eye: mgl64.Vec3{0, 0, 1}, Up: mgl64.Vec3{0, 1, 0}, Height: 1}
+	look := render.PlainLook(render.Color{R: ground.R, G: ground.G, B: ground.B})
+	quality := render.Quality{Samples: 4, DPI: boardDPI * scale, Workers: 1}
+	if err := r.Draw(context.Background(), dst, &b.scene, camera, look, quality, render.Band{}); err != nil {
+		return err
+	}
+	for _, i := range b.images {
+		at := image.Pt(int(i.x*scale+0.5), int(i.y*scale+0.5))
+		draw.Draw(dst, i.img.Bounds().Add(at), i.img, image.Point{}, draw.Src)
+	}
+	return nil
+}

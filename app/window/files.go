@@ -1,0 +1,253 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"image"
+	"io"
+	"os"
+	"path/filepath"
+	"strings"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/widget"
+
+	"lobewright/app/export"
+	"lobewright/app/picture"
+	"lobewright/app/study"
+	"lobewright/app/work"
+)
+
+// demoStudies say what a demonstration shows first.
+var demoStudies = map[string]struct{ basis, operation string }{
+	"square-plane": {"Cl:sigma", "C4(z)"}, "octahedron": {"C:sigma", ""}, "tetrahedron": {"Cl:sigma", ""}, "prism": {"S:sigma", ""},
+	"bipyramid": {"F:sigma", ""}, "hexaaqua": {"O:sigma", ""}, "octacyanide": {"C:sigma", ""}, "sandwich-staggered": {"C:pz", ""},
+	"sandwich-eclipsed": {"C:pz", ""}, "sandwich-eight": {"C:pz", ""}, "dimer": {"Re:d", ""}, "trimer": {"Re:d", ""}, "water": {"H:s", ""},
+	"furan": {"C:pz,O:pz", ""}, "benzene": {"C:pz", ""}, "benzenetriol": {"C:pz", ""}, "silicic-acid": {"O:sigma", ""}, "crown": {"S:s", ""},
+	"propadiene": {"H:s", ""}, "cage": {"C:s", ""}, "rod": {"N:p", ""}, "cyanide": {"N:p", ""}, "propeller": {"O:sigma", ""},
+}
+
+// demoStudy is the study of a demonstration. Other than for a person's own
+// file, functions and an operation are chosen, so that there is something to
+// play.
+func demoStudy(from study.Study, name string) study.Study {
+	s := from.Opened("demo:" + name)
+	d := demoStudies[name]
+	if d.basis != "" {
+		s.Basis = strings.Split(d.basis, ",")
+		s.Projection.Function, s.Projection.Subject = 1, study.SubjectFunction
+	}
+	s.Operation = d.operation
+	return s
+}
+
+func (u *ui) openDemo(name string) {
+	u.try(demoStudy(u.now(), name), nil)
+}
+
+// open reads a structure or a study. Only what can be read takes the place of
+// the work; else a message stands where the path was typed, or on top of the
+// left pane, and nothing changes.
+func (u *ui) open(structure string, done func(error)) {
+	if strings.HasSuffix(structure, study.Extension) {
+		u.openStudy(structure, done)
+		return
+	}
+	if name, ok := strings.CutPrefix(structure, "demo:"); ok {
+		u.try(demoStudy(u.now(), name), done)
+		return
+	}
+	u.try(u.now().Opened(structure), done)
+}
+
+func (u *ui) try(s study.Study, done func(error)) {
+	u.service.Try(s, func(_ *work.Structure, err error) {
+		u.guard(func() {
+			if err == nil {
+				u.openProblem = ""
+				u.do(study.StepOpen, s)
+				if s.Coordinates == "" {
+					_ = u.session.AddRecent(s.Structure)
+					u.updateMenus()
+				}
+			}
+			u.tell(err, done)
+		})
+	})
+}
+
+// tell hands an error to whoever asked, or shows it on the left.
+func (u *ui) tell(err error, done func(error)) {
+	if done != nil {
+		done(err)
+		return
+	}
+	if err != nil {
+		u.openProblem = err.Error()
+		u.given.scrollTo(0)
+		u.given.Update()
+	}
+}
+
+func (u *ui) openStudy(path string, done func(error)) {
+	f, err := os.Open(path)
+	if err != nil {
+		u.tell(errors.New("cannot open "+path+": "+cause(err)), done)
+		return
+	}
+	defer f.Close()
+	s, err := study.Read(f, filepath.Base(path))
+	if err != nil {
+		u.tell(err, done)
+		return
+	}
+	u.try(s, done)
+}
+
+func cause(err error) string {
+	var path *os.PathError
+	if errors.As(err, &path) {
+		return path.Err.Error()
+	}
+	return err.Error()
+}
+
+// openCoordinates takes pasted text.
+func (u *ui) openCoordinates(text string) {
+	if strings.TrimSpace(text) == "" {
+		u.tell(errors.New("the clipboard holds no text; copy lines \"El x y z\" with lengths in Å"), nil)
+		return
+	}
+	if path := strings.TrimSpace(text); !strings.Contains(path, "\n") && len(path) < 1000 {
+		// A path that was copied in a file manager.
+		u.open(expanded(strings.TrimPrefix(path, "file://")), nil)
+		return
+	}
+	s, err := u.now().WithCoordinates("pasted", text)
+	if err != nil {
+		u.tell(err, nil)
+		return
+	}
+	u.try(s, nil)
+}
+
+func (u *ui) paste() { u.openCoordinates(u.app.Clipboard().Content()) }
+
+// dropped opens the first file of a drop.
+func (u *ui) dropped(_ fyne.Position, files []fyne.URI) {
+	if len(files) > 0 {
+		u.guard(func() { u.open(files[0].Path(), nil) })
+	}
+}
+
+func (u *ui) folder() string {
+	if s := u.now().Structure; filepath.IsAbs(s) {
+		return filepath.Dir(s) + "/"
+	}
+	if here, err := os.Getwd(); err == nil && here != "/" {
+		return here + "/"
+	}
+	return "~/"
+}
+
+func (u *ui) askOpen() {
+	u.askPath("Open", "A file of coordinates (count, title, then El x y z in Å), a study, or ideal:OC-6. Tab completes.", u.folder(),
+		func(path string, done func(error)) {
+			if info, err := os.Stat(path); err == nil && info.IsDir() {
+				done(errors.New(path + " is a folder; type the name of a file in it"))
+				return
+			}
+			u.open(path, done)
+		})
+}
+
+func (u *ui) askSave() {
+	u.askPath("Save study", "The choices, as text that people can read. The coordinates stay in their own file.", u.folder()+"study"+study.Extension,
+		func(path string, done func(error)) {
+			if !strings.HasSuffix(path, study.Extension) {
+				path += study.Extension
+			}
+			done(export.WriteFile(path, false, func(w io.Writer) error {
+				text, err := study.Encode(u.now())
+				if err == nil {
+					_, err = w.Write(text)
+				}
+				return err
+			}))
+		})
+}
+
+// askPicture saves what is shown, at twice the resolution of the screen.
+func (u *ui) askPicture() {
+	u.askPath("Save picture", "A PNG of the picture as it is seen, with twice as many pixels.", u.folder()+"picture.png",
+		func(path string, done func(error)) {
+			if !strings.HasSuffix(strings.ToLower(path), ".png") {
+				path += ".png"
+			}
+			r := request{shown: u.view.shown, sight: u.view.sight, width: 2 * u.view.width, height: 2 * u.view.height, dpi: 2 * u.view.dpi()}
+			go func() {
+				err := savePicture(path, r)
+				fyne.Do(func() { u.guard(func() { done(err) }) })
+			}()
+		})
+}
+
+func savePicture(path string, r request) (err error) {
+	defer func() {
+		if fault := recover(); fault != nil {
+			err = fmt.Errorf("a fault of this program: %v", fault)
+		}
+	}()
+	if err := export.CheckTarget(path, false); err != nil {
+		return err
+	}
+	var live picture.Live
+	f, err := live.Frame(r.shown, r.sight, r.width, r.height, r.dpi, false)
+	if err != nil {
+		return err
+	}
+	p := picture.Picture{Scene: f.Scene, Camera: f.Camera, Look: f.Look, Width: r.width, Height: r.height, Resolution: r.dpi}
+	var img *image.RGBA
+	if img, err = p.Draw(context.Background()); err != nil {
+		return err
+	}
+	return export.WriteFile(path, false, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi) })
+}
+
+// keysText is what Help shows.
+const keysText = `Picture
+drag  turn      right drag, Shift drag  move      wheel, + −  zoom
+double click on the ground, f  fit      x y z (Shift: from behind)  look along      a  along the operation's axis
+click  choose an atom or lobe and its function      Shift click  choose several atoms
+arrows  turn      Shift arrows  move
+Operation
+Space  play or pause      Home, End  start, end      . ,  next, before      n N  function
+Page down, Page up  group orbital
+Everywhere
+Tab  next region; arrows and Return within it      Ctrl O  open      Ctrl V  paste coordinates
+Ctrl Z, Ctrl Y  undo, redo      Alt  menu      Escape  close, stop`
+
+func (u *ui) showKeys() { u.showText("Keys and mouse", keysText) }
+
+func (u *ui) about() {
+	u.showText("Lobewright "+u.version, "From the coordinates of a molecule to its point group in a stated frame, to the group orbitals of its ligands, and to pictures of them.\n\nTypeface: DejaVu Sans 2.37; its licence goes with the program.")
+}
+
+func (u *ui) showText(title, text string) {
+	var popup *widget.PopUp
+	body := widget.NewLabel(text)
+	body.Wrapping = fyne.TextWrapWord
+	done := widget.NewButton("Close", func() { popup.Hide() })
+	popup = widget.NewModalPopUp(container.NewPadded(container.NewVBox(
+		widget.NewLabelWithStyle(title, fyne.TextAlignLeading, fyne.TextStyle{Bold: true}), body,
+		container.NewBorder(nil, nil, nil, done))), u.win.Canvas())
+	popup.Show()
+	room := u.win.Canvas().Size()
+	popup.Resize(fyne.NewSize(min(760*float32(u.zoom()), room.Width-40), popup.MinSize().Height))
+	popup.Resize(fyne.NewSize(popup.Size().Width, popup.MinSize().Height))
+	u.win.Canvas().Focus(done)
+}

@@ -1,0 +1,198 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"context"
+	"image"
+	"sync"
+	"sync/atomic"
+	"time"
+
+	"lobewright/app/picture"
+	"lobewright/render"
+)
+
+// A request asks for one frame of the picture.
+type request struct {
+	shown         picture.Shown
+	sight         picture.Orbit
+	width, height int
+	dpi           float64
+	// moving asks for a quick frame now and a full one at rest.
+	moving bool
+}
+
+// A drawn frame is an image with the scene that it was drawn from.
+type drawn struct {
+	*picture.Frame
+	image *image.RGBA
+	full  bool
+}
+
+// frames draws pictures in the background. The newest request wins; images go
+// round between the goroutine that draws and the one that shows.
+type frames struct {
+	want   chan request
+	free   chan *drawn
+	ready  atomic.Pointer[drawn]
+	shown  *drawn // the toolkit's goroutine only
+	notify func() // a frame is ready
+	failed func(any)
+	ctx    context.Context
+	stop   context.CancelFunc
+	done   sync.WaitGroup
+	asked  atomic.Int64
+	count  atomic.Int64 // frames drawn
+
+	mu     sync.Mutex
+	cancel context.CancelFunc // of a full frame that is being drawn
+}
+
+// Times of the drawing.
+const (
+	// settle is how long nothing moves before a full frame is drawn.
+	settle = 60 * time.Millisecond
+	// slow is a quick frame that takes too long for 50 a second: from then on
+	// quick frames have half the resolution; fast brings it back.
+	slow, fast = 17 * time.Millisecond, 5 * time.Millisecond
+)
+
+func newFrames(notify func(), failed func(any)) *frames {
+	f := &frames{want: make(chan request, 1), free: make(chan *drawn, 3), notify: notify, failed: failed}
+	f.ctx, f.stop = context.WithCancel(context.Background())
+	for range cap(f.free) {
+		f.free <- nil
+	}
+	f.done.Add(1)
+	go f.work()
+	return f
+}
+
+// ask takes the place of a request that nobody has begun yet. The toolkit's
+// goroutine only.
+func (f *frames) ask(r request) {
+	f.asked.Add(1)
+	select {
+	case <-f.want:
+	default:
+	}
+	f.want <- r
+	f.mu.Lock()
+	if f.cancel != nil {
+		f.cancel()
+	}
+	f.mu.Unlock()
+}
+
+// take returns the newest frame, which stays the caller's until the next call;
+// nil before the first. The toolkit's goroutine only.
+func (f *frames) take() *drawn {
+	if d := f.ready.Swap(nil); d != nil {
+		if f.shown != nil {
+			f.free <- f.shown
+		}
+		f.shown = d
+	}
+	return f.shown
+}
+
+func (f *frames) close() {
+	f.stop()
+	f.done.Wait()
+}
+
+// work draws until close.
+func (f *frames) work() {
+	defer f.done.Done()
+	defer func() {
+		if fault := recover(); fault != nil {
+			f.failed(fault)
+		}
+	}()
+	var (
+		live     picture.Live
+		renderer render.Renderer
+		half     bool
+		next     *request
+	)
+	for {
+		var r request
+		if next != nil {
+			r, next = *next, nil
+		} else {
+			select {
+			case r = <-f.want:
+			case <-f.ctx.Done():
+				return
+			}
+		}
+		if r.moving {
+			began := time.Now()
+			q := r
+			if half {
+				q.width, q.height, q.dpi = (r.width+1)/2, (r.height+1)/2, r.dpi/2
+			}
+			if !f.draw(f.ctx, &live, &renderer, q, true) {
+				return
+			}
+			switch took := time.Since(began); {
+			case !half && took > slow:
+				half = true
+			case half && took < fast:
+				half = false
+			}
+			select {
+			case n := <-f.want:
+				next = &n
+				continue
+			case <-time.After(settle):
+			case <-f.ctx.Done():
+				return
+			}
+		}
+		ctx, cancel := context.WithCancel(f.ctx)
+		f.mu.Lock()
+		f.cancel = cancel
+		f.mu.Unlock()
+		if len(f.want) > 0 {
+			cancel()
+		}
+		ok := f.draw(ctx, &live, &renderer, r, false)
+		f.mu.Lock()
+		f.cancel = nil
+		f.mu.Unlock()
+		cancel()
+		if !ok {
+			return
+		}
+	}
+}
+
+// draw draws a frame and hands it over; false after close.
+func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.Renderer, r request, quick bool) bool {
+	frame, err := live.Frame(r.shown, r.sight, r.width, r.height, r.dpi, quick)
+	if err != nil {
+		return true
+	}
+	var d *drawn
+	select {
+	case d = <-f.free:
+	case <-f.ctx.Done():
+		return false
+	}
+	if d == nil || d.image.Rect.Dx() != r.width || d.image.Rect.Dy() != r.height {
+		d = &drawn{image: image.NewRGBA(image.Rect(0, 0, r.width, r.height))}
+	}
+	d.Frame, d.full = frame, !quick
+	if err := renderer.Draw(ctx, d.image, &frame.Scene, frame.Camera, frame.Look, frame.Quality, render.Band{}); err != nil {
+		f.free <- d
+		return f.ctx.Err() == nil
+	}
+	f.count.Add(1)
+	if old := f.ready.Swap(d); old != nil {
+		f.free <- old
+	}
+	f.notify()
+	return true
+}

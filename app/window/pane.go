@@ -1,0 +1,367 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"image"
+	"math"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/driver/desktop"
+	"fyne.io/fyne/v2/widget"
+
+	"lobewright/assets"
+	"lobewright/render"
+)
+
+// A pane draws itself as one image and answers to spots on it: by the mouse,
+// and by the keyboard with a mark that the arrow keys move from spot to spot.
+// It scrolls when its content is larger than itself.
+type pane struct {
+	widget.BaseWidget
+	content func(b *board) // draws the pane, shifted by its scroll
+	palette func() assets.Palette
+	zoom    func() float64 // of all sizes, by preference
+	guard   func(func())   // runs what spots do
+
+	// sideways panes scroll along x, others along y.
+	sideways bool
+	least    fyne.Size
+
+	raster   *canvas.Raster
+	image    *image.RGBA
+	renderer render.Renderer
+	stale    bool
+	spots    []spot
+	mark     string // name of the spot that the keyboard is on
+	hover    string
+	scroll   float64
+	extent   float64 // of the content
+	focused  bool
+	onHint   func(text string, at fyne.Position)
+}
+
+func newPane(content func(b *board), u *ui) *pane {
+	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint}
+	p.raster = canvas.NewRaster(p.generate)
+	p.ExtendBaseWidget(p)
+	return p
+}
+
+// CreateRenderer implements fyne.Widget.
+func (p *pane) CreateRenderer() fyne.WidgetRenderer { return widget.NewSimpleRenderer(p.raster) }
+
+// MinSize implements fyne.CanvasObject.
+func (p *pane) MinSize() fyne.Size {
+	z := float32(p.zoom())
+	return fyne.NewSize(p.least.Width*z, p.least.Height*z)
+}
+
+// Update draws the pane anew.
+func (p *pane) Update() {
+	p.stale = true
+	p.raster.Refresh()
+}
+
+// Refresh implements fyne.CanvasObject.
+func (p *pane) Refresh() { p.Update() }
+
+// Resize implements fyne.CanvasObject.
+func (p *pane) Resize(s fyne.Size) {
+	p.BaseWidget.Resize(s)
+	p.Update()
+}
+
+func (p *pane) size() (width, height float64) {
+	z := p.zoom()
+	return float64(p.Size().Width) / z, float64(p.Size().Height) / z
+}
+
+// lay has the content drawn on a board of the pane's size.
+func (p *pane) lay() *board {
+	w, h := p.size()
+	b := newBoard(w, h, p.palette())
+	p.content(b)
+	p.spots = b.spots
+	return b
+}
+
+func (p *pane) generate(w, h int) image.Image {
+	if w < 1 || h < 1 || p.Size().Width < 1 {
+		return image.NewRGBA(image.Rect(0, 0, 1, 1))
+	}
+	if !p.stale && p.image != nil && p.image.Rect.Dx() == w && p.image.Rect.Dy() == h {
+		return p.image
+	}
+	if p.image == nil || p.image.Rect.Dx() != w || p.image.Rect.Dy() != h {
+		p.image = image.NewRGBA(image.Rect(0, 0, w, h))
+	}
+	p.stale = false
+	p.guard(func() {
+		b := p.lay()
+		if limit := max(0, p.extent-p.room(b)); p.scroll > limit {
+			p.scroll = limit
+			b = p.lay()
+		}
+		p.decorate(b)
+		_ = b.paint(&p.renderer, p.image, float64(w)/b.width)
+	})
+	return p.image
+}
+
+// room is how much of the content is seen at once.
+func (p *pane) room(b *board) float64 {
+	if p.sideways {
+		return b.width
+	}
+	return b.height
+}
+
+// decorate marks the spot under the pointer and that of the keyboard, and
+// draws the scroll bar.
+func (p *pane) decorate(b *board) {
+	for _, s := range b.spots {
+		if s.name == p.hover && s.do != nil {
+			b.fill(s.x, s.y, s.width, s.height, faint(b.palette.Ink, 0x12))
+		}
+		if s.name == p.mark && p.focused {
+			b.frame(s.x-1, s.y-1, s.width+2, s.height+2, 2, b.palette.Accent)
+		}
+	}
+	if p.focused && p.mark == "" {
+		b.frame(0, 0, b.width, b.height, 2, b.palette.Accent)
+	}
+	room := p.room(b)
+	if p.extent <= room {
+		return
+	}
+	const thick, inset = 4, 2
+	length := max(24, room*room/p.extent)
+	at := (room - length) * p.scroll / (p.extent - room)
+	if p.sideways {
+		b.fill(at, b.height-thick-inset, length, thick, faint(b.palette.Ink, 0x70))
+	} else {
+		b.fill(b.width-thick-inset, at, thick, length, faint(b.palette.Ink, 0x70))
+	}
+}
+
+func (p *pane) spotAt(at fyne.Position) (spot, bool) {
+	z := p.zoom()
+	x, y := float64(at.X)/z, float64(at.Y)/z
+	for i := len(p.spots) - 1; i >= 0; i-- {
+		if p.spots[i].holds(x, y) {
+			return p.spots[i], true
+		}
+	}
+	return spot{}, false
+}
+
+func (p *pane) spotNamed(name string) (spot, bool) {
+	for _, s := range p.spots {
+		if s.name == name {
+			return s, true
+		}
+	}
+	return spot{}, false
+}
+
+// Tapped implements fyne.Tappable.
+func (p *pane) Tapped(e *fyne.PointEvent) {
+	p.focus()
+	if s, ok := p.spotAt(e.Position); ok && s.do != nil {
+		p.mark = s.name
+		p.guard(s.do)
+		p.Update()
+	}
+}
+
+func (p *pane) focus() {
+	if c := fyne.CurrentApp().Driver().CanvasForObject(p); c != nil {
+		c.Focus(p)
+	}
+}
+
+// Scrolled implements fyne.Scrollable.
+func (p *pane) Scrolled(e *fyne.ScrollEvent) {
+	d := float64(e.Scrolled.DY)
+	if d == 0 {
+		d = float64(e.Scrolled.DX)
+	}
+	p.scrollTo(p.scroll - 2*d)
+}
+
+// Dragged implements fyne.Draggable.
+func (p *pane) Dragged(e *fyne.DragEvent) {
+	if p.sideways {
+		p.scrollTo(p.scroll - float64(e.Dragged.DX)/p.zoom())
+	} else {
+		p.scrollTo(p.scroll - float64(e.Dragged.DY)/p.zoom())
+	}
+}
+
+// DragEnd implements fyne.Draggable.
+func (p *pane) DragEnd() {}
+
+func (p *pane) scrollTo(to float64) {
+	w, h := p.size()
+	room := h
+	if p.sideways {
+		room = w
+	}
+	to = min(max(0, to), max(0, p.extent-room))
+	if to != p.scroll {
+		p.scroll = to
+		p.Update()
+	}
+}
+
+// show scrolls until a spot is seen whole.
+func (p *pane) show(s spot) {
+	w, h := p.size()
+	const margin = 12
+	if p.sideways {
+		if s.x < margin {
+			p.scrollTo(p.scroll + s.x - margin)
+		} else if s.x+s.width > w-margin {
+			p.scrollTo(p.scroll + s.x + s.width - w + margin)
+		}
+		return
+	}
+	if s.y < margin {
+		p.scrollTo(p.scroll + s.y - margin)
+	} else if s.y+s.height > h-margin {
+		p.scrollTo(p.scroll + s.y + s.height - h + margin)
+	}
+}
+
+// reveal scrolls to a spot by its name, as soon as the pane is drawn.
+func (p *pane) reveal(name string) {
+	if p.Size().Width < 1 {
+		return
+	}
+	p.lay()
+	if s, ok := p.spotNamed(name); ok {
+		p.show(s)
+	}
+}
+
+// MouseIn implements desktop.Hoverable.
+func (p *pane) MouseIn(e *desktop.MouseEvent) { p.MouseMoved(e) }
+
+// MouseMoved implements desktop.Hoverable.
+func (p *pane) MouseMoved(e *desktop.MouseEvent) {
+	s, _ := p.spotAt(e.Position)
+	if s.name == p.hover {
+		return
+	}
+	p.hover = s.name
+	p.onHint(s.hint, e.AbsolutePosition)
+	p.Update()
+}
+
+// MouseOut implements desktop.Hoverable.
+func (p *pane) MouseOut() {
+	p.hover = ""
+	p.onHint("", fyne.Position{})
+	p.Update()
+}
+
+// Cursor implements desktop.Cursorable.
+func (p *pane) Cursor() desktop.Cursor {
+	if s, ok := p.spotNamed(p.hover); ok && s.do != nil {
+		return desktop.PointerCursor
+	}
+	return desktop.DefaultCursor
+}
+
+// FocusGained implements fyne.Focusable.
+func (p *pane) FocusGained() {
+	p.focused = true
+	if _, ok := p.spotNamed(p.mark); !ok {
+		p.mark = ""
+		for _, s := range p.spots {
+			if s.do != nil {
+				p.mark = s.name
+				break
+			}
+		}
+	}
+	p.Update()
+}
+
+// FocusLost implements fyne.Focusable.
+func (p *pane) FocusLost() {
+	p.focused = false
+	p.Update()
+}
+
+// TypedRune implements fyne.Focusable.
+func (p *pane) TypedRune(rune) {}
+
+// TypedKey implements fyne.Focusable.
+func (p *pane) TypedKey(e *fyne.KeyEvent) {
+	switch e.Name {
+	case fyne.KeyReturn, fyne.KeyEnter, fyne.KeySpace:
+		if s, ok := p.spotNamed(p.mark); ok && s.do != nil {
+			p.guard(s.do)
+			p.Update()
+		}
+	case fyne.KeyRight:
+		p.move(1, 0)
+	case fyne.KeyLeft:
+		p.move(-1, 0)
+	case fyne.KeyDown:
+		p.move(0, 1)
+	case fyne.KeyUp:
+		p.move(0, -1)
+	case fyne.KeyPageDown:
+		p.scrollTo(p.scroll + 200)
+	case fyne.KeyPageUp:
+		p.scrollTo(p.scroll - 200)
+	case fyne.KeyHome:
+		p.scrollTo(0)
+	case fyne.KeyEnd:
+		p.scrollTo(math.Inf(1))
+	}
+}
+
+// move takes the keyboard's mark to the nearest spot in a direction.
+func (p *pane) move(dx, dy float64) {
+	from, ok := p.spotNamed(p.mark)
+	best, least := spot{}, math.Inf(1)
+	for _, s := range p.spots {
+		if s.do == nil || s.name == p.mark {
+			continue
+		}
+		if !ok {
+			best = s
+			break
+		}
+		// Along the direction from edge to edge, across it from middle to
+		// middle.
+		x, y := s.x+s.width/2-from.x-from.width/2, s.y+s.height/2-from.y-from.height/2
+		along, across := x*dx+y*dy, math.Abs(x*dy)+math.Abs(y*dx)
+		if along <= 1 || dx != 0 && across > (s.height+from.height)/2 {
+			continue
+		}
+		if d := along + 3*across; d < least {
+			best, least = s, d
+		}
+	}
+	if best.name == "" {
+		return
+	}
+	p.mark = best.name
+	p.show(best)
+	p.Update()
+}
+
+var (
+	_ fyne.Tappable      = (*pane)(nil)
+	_ fyne.Focusable     = (*pane)(nil)
+	_ fyne.Scrollable    = (*pane)(nil)
+	_ fyne.Draggable     = (*pane)(nil)
+	_ desktop.Hoverable  = (*pane)(nil)
+	_ desktop.Cursorable = (*pane)(nil)
+)

@@ -1,0 +1,453 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"fmt"
+	"os"
+	"runtime"
+	"strings"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/layout"
+	"fyne.io/fyne/v2/theme"
+	"fyne.io/fyne/v2/widget"
+
+	"lobewright/app/picture"
+	"lobewright/app/session"
+	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/assets"
+	"lobewright/orbitals"
+	"lobewright/orbitals/structure"
+)
+
+// An ui is the whole window. Its fields belong to the toolkit's goroutine.
+type ui struct {
+	app     fyne.App
+	win     fyne.Window
+	version string
+
+	session *session.Session
+	history *study.History
+	service *work.Service
+	state   *work.State // the newest; never nil
+	colours look
+	motion  bool // operations move; else they are shown as stills
+
+	view    *viewport
+	given   *pane // left
+	follows *pane // right: content and group orbitals
+	detail  *pane // right, below: the chosen group orbital
+	ledger  *pane // below: one column an operation
+	said    *pane // below: what the function has become
+	scrub   *scrubBar
+	angle   *scrubBar
+	angles  *fyne.Container // angle with its name, for linear molecules
+	basis   *widget.Entry
+	play    *widget.Button
+	hints   *hintBox
+	thumbs  *thumbs
+	player  *player
+	items   menuItems
+
+	// openProblem is what is wrong with the file that was to be opened last.
+	openProblem string
+	notice      string // a remark of the program itself
+
+	sights  sightCache
+	images  imageCache
+	glide   *glide
+	fading  *fading
+	closing bool
+}
+
+// firstDemo is what the window shows the first time.
+const firstDemo = "square-plane"
+
+// newUI makes the window's content for an app. Nothing is computed or drawn
+// before the study is set.
+func newUI(app fyne.App, win fyne.Window, s *session.Session, version string) *ui {
+	u := &ui{app: app, win: win, version: version, session: s, state: &work.State{}}
+	p := s.Preferences()
+	u.colours = look{chosen: p.Theme, dark: systemIsDark(app), scale: float32(p.Scale)}
+	u.motion = !p.NoMotion
+	app.Settings().SetTheme(u.colours)
+
+	u.history = study.NewHistory(study.Study{})
+	u.service = work.NewService(work.New(structure.Inputs{Demo: assets.Demos()}), fyne.Do, func(st *work.State) { u.guard(func() { u.deliver(st) }) })
+	u.hints = newHintBox(u)
+	u.thumbs = newThumbs(u)
+	u.player = newPlayer(u)
+	u.view = u.newView()
+	u.given = newPane(u.drawGiven, u)
+	u.given.least = fyne.NewSize(leftWidth, 100)
+	u.follows = newPane(u.drawFollows, u)
+	u.follows.least = fyne.NewSize(rightWidth, 100)
+	u.detail = newPane(u.drawDetail, u)
+	u.detail.least = fyne.NewSize(rightWidth, 176)
+	u.ledger = newPane(u.drawLedger, u)
+	u.ledger.sideways = true
+	u.ledger.least = fyne.NewSize(200, ledgerHeight)
+	u.said = newPane(u.drawSaid, u)
+	u.said.least = fyne.NewSize(160, 36)
+	u.scrub = newScrubBar(u, 1, 0.01)
+	u.scrub.change = u.scrubbed
+	u.scrub.end = u.commit
+	u.angle = newScrubBar(u, 359, 1)
+	u.angle.change = u.angled
+	u.angle.end = u.commit
+	u.angles = container.NewBorder(nil, nil, widget.NewLabel("φ"), nil, u.angle)
+	u.angles.Hide()
+	u.basis = widget.NewEntry()
+	u.basis.SetPlaceHolder("type: Cl:sigma, 2-4:pz …")
+	u.basis.OnSubmitted = func(text string) { u.guard(func() { u.typeBasis(text) }) }
+	win.SetContent(u.assemble())
+	win.SetMainMenu(u.menus())
+	u.addShortcuts()
+	return u
+}
+
+// systemIsDark tells whether the desktop asks for dark colours. Without a
+// desktop the toolkit says dark; the program's own choice is light.
+func systemIsDark(app fyne.App) bool {
+	if runtime.GOOS == "linux" && os.Getenv("DBUS_SESSION_BUS_ADDRESS") == "" {
+		return false
+	}
+	return app.Settings().ThemeVariant() == theme.VariantDark
+}
+
+// Widths and heights of the regions, in units.
+const (
+	leftWidth    = 250
+	rightWidth   = 262
+	pad          = 12
+	ledgerHeight = 70
+)
+
+func (u *ui) assemble() fyne.CanvasObject {
+	button := func(icon fyne.Resource, do func()) *widget.Button {
+		b := widget.NewButtonWithIcon("", icon, func() { u.guard(do) })
+		b.Importance = widget.LowImportance
+		return b
+	}
+	u.play = button(theme.MediaPlayIcon(), u.togglePlay)
+	controls := container.NewHBox(
+		button(theme.MediaSkipPreviousIcon(), func() { u.jump(0) }),
+		u.play,
+		button(theme.MediaSkipNextIcon(), func() { u.jump(1) }),
+	)
+	rule := func() fyne.CanvasObject { return widget.NewSeparator() }
+	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.scrub, u.angles)
+	row := container.NewBorder(nil, nil, controls, nil, container.New(&shares{weights: []float32{1, 1.1}}, bars, u.said))
+	below := container.NewVBox(rule(), u.ledger, rule(), container.NewPadded(row))
+	left := container.NewBorder(nil, container.NewPadded(u.basis), nil, nil, u.given)
+	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
+	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
+		container.NewBorder(nil, nil, rule(), nil, right), u.view)
+	whole := container.NewBorder(nil, below, nil, nil, middle)
+	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
+}
+
+// shares lays its visible objects side by side by weights.
+type shares struct{ weights []float32 }
+
+func (s *shares) Layout(objects []fyne.CanvasObject, size fyne.Size) {
+	sum := float32(0)
+	for i, o := range objects {
+		if o.Visible() {
+			sum += s.weights[i]
+		}
+	}
+	x := float32(0)
+	for i, o := range objects {
+		if o.Visible() {
+			w := size.Width * s.weights[i] / sum
+			o.Move(fyne.NewPos(x, 0))
+			o.Resize(fyne.NewSize(w, size.Height))
+			x += w
+		}
+	}
+}
+
+func (s *shares) MinSize(objects []fyne.CanvasObject) fyne.Size {
+	var least fyne.Size
+	for _, o := range objects {
+		if o.Visible() {
+			m := o.MinSize()
+			least.Width += m.Width
+			least.Height = max(least.Height, m.Height)
+		}
+	}
+	return least
+}
+
+func (u *ui) palette() assets.Palette { return u.colours.palette() }
+
+func (u *ui) zoom() float64 {
+	if u.colours.scale > 0 {
+		return float64(u.colours.scale)
+	}
+	return 1
+}
+
+// now is the study in force.
+func (u *ui) now() study.Study { return u.history.Now() }
+
+// start puts a study on the screen without a step of history.
+func (u *ui) start(s study.Study) {
+	u.history.Reset(s)
+	u.changed()
+}
+
+// do is one finished step.
+func (u *ui) do(step study.Step, s study.Study) {
+	u.player.stop()
+	u.history.Do(step, s)
+	u.changed()
+}
+
+// commit ends a gesture.
+func (u *ui) commit() {
+	u.history.Commit()
+	u.changed()
+}
+
+// changed follows a change of the study.
+func (u *ui) changed() {
+	s := u.now()
+	u.session.Keep(s)
+	u.service.Request(s)
+	u.show(false)
+	u.refreshPanes()
+}
+
+func (u *ui) refreshPanes() {
+	u.given.Update()
+	u.follows.Update()
+	u.detail.Update()
+	u.ledger.Update()
+	u.said.Update()
+	u.updateMenus()
+}
+
+// deliver takes new results.
+func (u *ui) deliver(st *work.State) {
+	before := u.state
+	u.state = st
+	if p := st.Problem(work.ConcernProgram); p != nil {
+		u.notice = "a fault of this program: " + p.Error() + "; the study is saved"
+		_ = u.session.SaveNow()
+	}
+	if before.Group != st.Group && st.Group != nil {
+		u.win.SetTitle(title(st.Group))
+		u.session.Settled()
+	}
+	if before.Orbitals != st.Orbitals {
+		u.thumbs.forget()
+	}
+	u.images.update(u)
+	u.show(false)
+	u.refreshPanes()
+	if before.Orbital != st.Orbital && st.Orbital != nil {
+		u.follows.reveal(orbitalName(st.Orbital.Irrep, st.Orbital.Copy, st.Orbital.Partner))
+	}
+}
+
+func title(g *work.Group) string {
+	return strings.TrimSpace(g.Molecule.Title) + " — Lobewright"
+}
+
+// coefficients are those of the function or group orbital that is shown; nil
+// if none is chosen or its results are not there yet.
+func (u *ui) coefficients() []float64 {
+	s, st := u.now(), u.state
+	if st.Basis == nil || len(s.Basis) == 0 {
+		return nil
+	}
+	switch s.Projection.TheSubject() {
+	case study.SubjectFunction:
+		if n := s.Projection.Function; n >= 1 && n <= len(st.Basis.Functions) {
+			c := make([]float64, len(st.Basis.Functions))
+			c[n-1] = 1
+			return c
+		}
+	case study.SubjectOrbital:
+		if o := u.orbital(); o != nil {
+			return o.Coefficients
+		}
+	}
+	return nil
+}
+
+// orbital is the chosen group orbital, taken from the results at hand so that
+// a choice among them is seen at once.
+func (u *ui) orbital() *orbitals.GroupOrbital {
+	if u.state.Orbitals == nil {
+		return nil
+	}
+	o, err := u.state.Orbitals.Orbital(u.now().Projection)
+	if err != nil {
+		return nil
+	}
+	return o
+}
+
+// operation is the operation at hand.
+func (u *ui) operation() (work.Operation, bool) {
+	s := u.now()
+	if s.Operation == "" || u.state.Group == nil {
+		return work.Operation{}, false
+	}
+	op, err := u.state.Group.Operation(s.Operation, s.Angle)
+	return op, err == nil
+}
+
+// show has the picture drawn as the study and the results say.
+func (u *ui) show(moving bool) {
+	s, st := u.now(), u.state
+	shown := picture.Shown{Group: st.Group, Look: s.Look}
+	palette := u.palette()
+	shown.Palette = &palette
+	if len(s.Basis) > 0 {
+		shown.Basis = st.Basis
+	}
+	shown.Coefficients = u.coefficients()
+	for _, a := range s.Atoms {
+		shown.Marked = append(shown.Marked, a-1)
+	}
+	if op, ok := u.operation(); ok {
+		shown.Operation, shown.Moment = &op, s.Moment
+	}
+	u.fading.apply(u, &shown)
+	u.view.shown = shown
+	if st.Group != nil {
+		u.view.sight = u.sights.sight(s.Camera, st.Group, shown.Basis)
+		if u.glide != nil {
+			u.view.sight = u.glide.at(u.view.sight)
+		}
+	}
+	u.view.ask(moving || u.player.playing || u.glide != nil || shown.Fade < 1 && shown.Before != nil)
+	u.scrub.set(s.Moment)
+	u.angle.set(s.Angle)
+	if infinite := st.Group != nil && st.Group.Fit.Setting.Infinite(); infinite != u.angles.Visible() {
+		if infinite {
+			u.angles.Show()
+		} else {
+			u.angles.Hide()
+		}
+		u.win.Content().Refresh()
+	}
+	u.player.label()
+}
+
+// guard runs what a person asked for. A panic is a fault of this program: the
+// study is saved and a message shown; the window goes on.
+func (u *ui) guard(f func()) {
+	defer func() {
+		if fault := recover(); fault != nil {
+			u.failed(fault)
+		}
+	}()
+	f()
+}
+
+func (u *ui) failed(fault any) {
+	saved := "the study is saved"
+	if err := u.session.SaveNow(); err != nil {
+		saved = "the study could not be saved: " + err.Error()
+	}
+	u.notice = fmt.Sprintf("a fault of this program: %v; %s", fault, saved)
+	fmt.Fprintln(os.Stderr, "lobewright: "+strings.ReplaceAll(u.notice, "\n", " "))
+	u.given.Update()
+}
+
+// failedAside is failed for other goroutines.
+func (u *ui) failedAside(fault any) { fyne.Do(func() { u.failed(fault) }) }
+
+// hint shows a few words beside the pointer.
+func (u *ui) hint(text string, at fyne.Position) { u.hints.show(text, at) }
+
+// close stops all that runs beside the toolkit and saves.
+func (u *ui) close() {
+	if u.closing {
+		return
+	}
+	u.closing = true
+	u.player.stop()
+	u.service.Close()
+	u.view.frames.close()
+	u.thumbs.close()
+	p := u.session.Preferences()
+	size := u.win.Canvas().Size()
+	p.Width, p.Height = float64(size.Width), float64(size.Height)
+	_ = u.session.SetPreferences(p)
+	if err := u.session.Close(); err != nil {
+		fmt.Fprintln(os.Stderr, "lobewright: "+err.Error())
+	}
+}
+
+// A sightCache keeps what the program chooses of the camera for a structure
+// and a basis: choosing takes time.
+type sightCache struct {
+	group *work.Group
+	basis *work.Basis
+	best  picture.Orbit
+}
+
+func (c *sightCache) sight(camera study.Camera, g *work.Group, b *work.Basis) picture.Orbit {
+	if c.group != g || c.basis != b {
+		c.group, c.basis, c.best = g, b, picture.BestOrbit(g, b)
+	}
+	return c.best.Seen(camera)
+}
+
+// hintBox is a small text beside the pointer.
+type hintBox struct {
+	u     *ui
+	layer *fyne.Container
+	back  *canvas.Rectangle
+	text  *canvas.Text
+}
+
+func newHintBox(u *ui) *hintBox {
+	h := &hintBox{u: u, back: canvas.NewRectangle(nil), text: canvas.NewText("", nil)}
+	h.layer = container.NewWithoutLayout(h.back, h.text)
+	h.back.Hide()
+	h.text.Hide()
+	return h
+}
+
+// show takes the place of the hint before; an empty text hides it.
+func (h *hintBox) show(text string, at fyne.Position) {
+	if text == "" {
+		if h.back.Visible() {
+			h.back.Hide()
+			h.text.Hide()
+		}
+		return
+	}
+	p := h.u.palette()
+	h.text.Text, h.text.TextSize, h.text.Color = text, secondSize*float32(h.u.zoom()), p.Ink
+	h.back.FillColor, h.back.StrokeColor, h.back.StrokeWidth = p.Ground, p.Rule, 1
+	size := h.text.MinSize()
+	box := fyne.NewSize(size.Width+12, size.Height+6)
+	room := h.u.win.Canvas().Size()
+	origin := fyne.CurrentApp().Driver().AbsolutePositionForObject(h.layer)
+	x := max(0, min(at.X+14, room.Width-box.Width-4))
+	y := at.Y + 18
+	if y+box.Height > 0.8*room.Height {
+		y = at.Y - box.Height - 30 // above a column of the ledger
+	}
+	x, y = x-origin.X, y-origin.Y
+	h.back.Move(fyne.NewPos(x, y))
+	h.back.Resize(box)
+	h.text.Move(fyne.NewPos(x+6, y+3))
+	h.text.Resize(size)
+	h.back.Show()
+	h.text.Show()
+	h.back.Refresh()
+	h.text.Refresh()
+}
