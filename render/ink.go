@@ -31,12 +31,10 @@ type inkTile struct {
 
 // cell is what a pixel shows for the most part.
 type cell struct {
-	slot      uint32
-	part      int32 // -1 for the ground
-	n, nx, ny float32
-	x, y, z   float32 // unit normal
-	full      bool    // all samples show this part
-	needed    bool
+	slot    uint32
+	part    int32   // -1 for the ground
+	n       float32 // nearness of one of its samples
+	x, y, z float32 // unit normal towards the viewer
 }
 
 // border is a place where a line crosses the way from one pixel's middle to
@@ -50,8 +48,11 @@ type border struct {
 // inkApron returns the width of the apron that lines need.
 func (f *frame) inkApron() int {
 	f.ink.half = 0
-	if f.look.Style != Ink || !(f.look.OutlineWidth > 0) {
+	if f.look.Style != Ink {
 		return 0
+	}
+	if !(f.look.OutlineWidth > 0) {
+		return 1
 	}
 	f.ink.half = float32(f.look.OutlineWidth * f.pxPerMM / 2)
 	// The farthest middle of a pixel that a line reaches, and one more for
@@ -65,24 +66,28 @@ const creaseCos = 0.7071
 
 // drawInk finds the lines between opaque surfaces. It is called when the
 // samples are known and fills dist and near.
-func (t *tile) drawInk(out image.Rectangle) {
+func (t *tile) drawInk() {
+	k := &t.lines
+	k.cells = grow(k.cells, t.side*t.side)
+	t.fillCells()
 	if !(t.f.ink.half > 0) {
 		return
 	}
-	k := &t.lines
-	n := t.side * t.side
-	k.cells = grow(k.cells, n)
-	k.ready(n)
-	t.fillCells()
+	k.ready(t.side*t.side, t.clip.Min.Y*t.side, t.clip.Max.Y*t.side)
 	any := false
 	for y := t.clip.Min.Y; y < t.clip.Max.Y; y++ {
 		for x := t.clip.Min.X; x < t.clip.Max.X; x++ {
 			i := y*t.side + x
-			if x+1 < t.clip.Max.X && t.differ(i, i+1, 1, 0, &k.right[i]) {
-				any = true
+			p := &k.cells[i]
+			if x+1 < t.clip.Max.X {
+				if q := &k.cells[i+1]; p.slot != q.slot && t.differ(i, i+1, 1, 0, &k.right[i]) {
+					any = true
+				}
 			}
-			if y+1 < t.clip.Max.Y && t.differ(i, i+t.side, 0, 1, &k.down[i]) {
-				any = true
+			if y+1 < t.clip.Max.Y {
+				if q := &k.cells[i+t.side]; p.slot != q.slot && t.differ(i, i+t.side, 0, 1, &k.down[i]) {
+					any = true
+				}
 			}
 		}
 	}
@@ -91,8 +96,9 @@ func (t *tile) drawInk(out image.Rectangle) {
 	}
 }
 
-// ready makes the buffers fit a canvas of n pixels and empties them.
-func (k *inkTile) ready(n int) {
+// ready makes the buffers fit a canvas of n pixels and empties them, the
+// borders from one pixel to another.
+func (k *inkTile) ready(n, from, to int) {
 	if len(k.dist) != n {
 		k.dist, k.near = make([]float32, n), make([]float32, n)
 		k.right, k.down = make([]border, n), make([]border, n)
@@ -105,8 +111,8 @@ func (k *inkTile) ready(n int) {
 		k.dist[i] = 1e9
 	}
 	k.touch = k.touch[:0]
-	clear(k.right)
-	clear(k.down)
+	clear(k.right[from:to])
+	clear(k.down[from:to])
 }
 
 // fillCells finds what every pixel shows for the most part.
@@ -118,37 +124,105 @@ func (t *tile) fillCells() {
 			i := y*t.side + x
 			c := &t.lines.cells[i]
 			keys := t.keys[i<<t.lg:][:n]
-			any := uint32(0)
+			mx, my := float32(0.5), float32(0.5)
+			slot := t.whole(keys)
+			if slot == 0 {
+				any := uint32(0)
+				for _, k := range keys {
+					any |= uint32(k)
+				}
+				if any == 0 {
+					*c = cell{part: -1}
+					continue
+				}
+				best := uint32(0)
+				for todo := full; todo != 0; {
+					mask, s := t.partGroup(keys, todo)
+					todo &^= mask
+					if bits.OnesCount32(mask) > bits.OnesCount32(best) {
+						best, slot = mask, s
+					}
+				}
+				if slot == 0 {
+					*c = cell{part: -1}
+					continue
+				}
+				mx, my = t.middle(best)
+			}
+			c.slot = slot
 			for _, k := range keys {
-				any |= uint32(k)
-			}
-			if any == 0 {
-				*c = cell{part: -1, full: true}
-				continue
-			}
-			best, bestSlot := uint32(0), uint32(0)
-			for todo := full; todo != 0; {
-				mask, slot := t.partGroup(keys, todo)
-				todo &^= mask
-				if bits.OnesCount32(mask) > bits.OnesCount32(best) {
-					best, bestSlot = mask, slot
+				if uint32(k) == slot {
+					c.n = math.Float32frombits(uint32(k >> 32))
+					break
 				}
 			}
-			*c = cell{slot: bestSlot, part: -1, full: best == full}
-			if bestSlot == 0 {
-				continue
-			}
-			mx, my := t.middle(best)
-			sl := &t.slots[bestSlot]
-			nx, ny, nz, side := t.lookAt(sl, &t.f.parts[sl.part], float32(x)+mx, float32(y)+my)
-			s := 1 / sqrt32(nx*nx+ny*ny+nz*nz+1e-30)
+			s := &t.slots[slot]
+			nx, ny, nz, side := t.lookAt(s, &t.f.parts[s.part], float32(x)+mx, float32(y)+my)
+			k := 1 / sqrt32(nx*nx+ny*ny+nz*nz+1e-30)
 			if side < 0 || side == 0 && nz < 0 {
-				s = -s
+				k = -k
 			}
-			c.part, c.x, c.y, c.z = sl.part, nx*s, ny*s, nz*s
-			c.n, c.nx, c.ny = t.plane(bestSlot, float32(x)+0.5, float32(y)+0.5)
+			c.part, c.x, c.y, c.z = s.part, nx*k, ny*k, nz*k
 		}
 	}
+}
+
+// inkWhole returns the colour of a pixel that shows one part alone, from its
+// cell.
+func (t *tile) inkWhole(i, px, py int) (r, g, b float32) {
+	c := &t.lines.cells[i]
+	p := &t.f.parts[c.part]
+	if p.hatch.period > 0 {
+		return t.shadePlace(c.slot, float32(px)+0.5, float32(py)+0.5)
+	}
+	if p.flat {
+		return p.col[0], p.col[1], p.col[2]
+	}
+	l := &t.f.light
+	nl := c.x*l.kx + c.y*l.ky + c.z*l.kz
+	m := l.tones[0]
+	for k := 1; k < l.nTones; k++ {
+		d := nl - l.edges[k-1]
+		step := l.tones[k] - m
+		if d > 0.4 {
+			m += step
+		} else if d > -0.4 {
+			m += step * softStep(d, t.cellSlope(i, px, py)*max(l.soft, 0.7))
+		}
+	}
+	return p.col[0] * m, p.col[1] * m, p.col[2] * m
+}
+
+// softStep is 0 well below d = 0 and 1 well above, with a change of width w.
+func softStep(d, w float32) float32 {
+	v := min(1, max(0, d/max(w, 1e-6)+0.5))
+	return v * v * (3 - 2*v)
+}
+
+// cellSlope returns how much the key light changes over a pixel, from the
+// pixels around.
+func (t *tile) cellSlope(i, px, py int) float32 {
+	l := &t.f.light
+	c := &t.lines.cells[i]
+	along := func(a, b int) float32 {
+		p, q := &t.lines.cells[a], &t.lines.cells[b]
+		k := float32(0.5)
+		if p.part != c.part {
+			p, k = c, 1
+		}
+		if q.part != c.part {
+			q, k = c, 1
+		}
+		return ((p.x-q.x)*l.kx + (p.y-q.y)*l.ky + (p.z-q.z)*l.kz) * k
+	}
+	var gx, gy float32
+	if px > t.clip.Min.X && px+1 < t.clip.Max.X {
+		gx = along(i-1, i+1)
+	}
+	if py > t.clip.Min.Y && py+1 < t.clip.Max.Y {
+		gy = along(i-t.side, i+t.side)
+	}
+	return sqrt32(gx*gx + gy*gy)
 }
 
 // partGroup is like group, but takes all surfaces of a part as one.
@@ -196,13 +270,19 @@ func (t *tile) differ(i, j int, dx, dy float32, b *border) bool {
 	if !t.f.parts[p.part].outline {
 		return false
 	}
-	gp, gq := p.nx*dx+p.ny*dy, q.nx*dx+q.ny*dy
-	jump := abs32((p.n + gp/2) - (q.n - gq/2))
-	// A jump in depth of more than some pixels, and more than the slopes
-	// account for. Where both sides are seen at a glancing angle the slopes
-	// of facets say little.
 	pixel := t.f.pixelDepth(p.part, p.n)
-	fold := jump > 6*pixel && jump > 3*min(abs32(gp), abs32(gq)) && (max(p.z, q.z) > 0.35 || jump > 60*pixel)
+	fold := false
+	if abs32(p.n-q.n) > 6*pixel && t.f.parts[p.part].form != formDisc {
+		// A jump in depth of more than some pixels, and more than the slopes
+		// account for. Where both sides are seen at a glancing angle the
+		// slopes of facets say little.
+		x, y := float32(i%t.side)+0.5, float32(i/t.side)+0.5
+		pn, px, py := t.plane(p.slot, x, y)
+		qn, qx, qy := t.plane(q.slot, x+dx, y+dy)
+		gp, gq := px*dx+py*dy, qx*dx+qy*dy
+		jump := abs32((pn + gp/2) - (qn - gq/2))
+		fold = jump > 6*pixel && jump > 3*min(abs32(gp), abs32(gq)) && (max(p.z, q.z) > 0.35 || jump > 60*pixel)
+	}
 	if !fold && p.x*q.x+p.y*q.y+p.z*q.z > creaseCos {
 		return false
 	}
@@ -252,15 +332,18 @@ func (t *tile) between(i, j int, p, q int32) float32 {
 // the one in whose plane it lies.
 func (t *tile) betweenPlanes(i, j int, dx, dy float32) float32 {
 	n := 1 << t.lg
+	x0, y0 := float32(i%t.side), float32(i/t.side)
 	p, q := &t.lines.cells[i], &t.lines.cells[j]
+	pn, px, py := t.plane(p.slot, x0+0.5, y0+0.5)
+	qn, qx, qy := t.plane(q.slot, x0+0.5+dx, y0+0.5+dy)
 	cp := 0
 	for s, at := range [2]int{i, j} {
 		for k, key := range t.keys[at<<t.lg:][:n] {
 			x, y := float32(t.sx[k&15])-0.5, (float32(k)+0.5)/float32(n)-0.5
 			z := math.Float32frombits(uint32(key >> 32))
 			far := float32(s)
-			zp := p.n + p.nx*(x+far*dx) + p.ny*(y+far*dy)
-			zq := q.n + q.nx*(x-(1-far)*dx) + q.ny*(y-(1-far)*dy)
+			zp := pn + px*(x+far*dx) + py*(y+far*dy)
+			zq := qn + qx*(x-(1-far)*dx) + qy*(y-(1-far)*dy)
 			if abs32(z-zp) <= abs32(z-zq) {
 				cp++
 			}
@@ -356,9 +439,9 @@ func (t *tile) inkLayer(l *layer, part int32) {
 		return
 	}
 	k := &t.lines
-	k.ready(t.side * t.side)
 	area := t.clip
 	area.Min.Y, area.Max.Y = max(area.Min.Y, l.y0-1), min(area.Max.Y, l.y1+2)
+	k.ready(t.side*t.side, area.Min.Y*t.side, area.Max.Y*t.side)
 	n := float32(int(1) << t.lg)
 	any := false
 	meet := func(i, j int, b *border) {
@@ -456,9 +539,7 @@ func (t *tile) tone(s *slot, p *part, nl, x, y float32) float32 {
 		case d > 0.4:
 			m += step
 		case d > -0.4:
-			w := max(t.lightSlope(s, p, x, y)*max(l.soft, 0.7), 1e-6)
-			v := min(1, max(0, d/w+0.5))
-			m += step * v * v * (3 - 2*v)
+			m += step * softStep(d, t.lightSlope(s, p, x, y)*max(l.soft, 0.7))
 		}
 	}
 	return m
@@ -467,12 +548,11 @@ func (t *tile) tone(s *slot, p *part, nl, x, y float32) float32 {
 // lightSlope returns how much the key light changes over a pixel.
 func (t *tile) lightSlope(s *slot, p *part, x, y float32) float32 {
 	keep := t.surf
-	a := t.keyLight(s, p, x-0.5, y)
-	b := t.keyLight(s, p, x+0.5, y)
-	c := t.keyLight(s, p, x, y-0.5)
-	d := t.keyLight(s, p, x, y+0.5)
+	a := t.keyLight(s, p, x, y)
+	gx := t.keyLight(s, p, x+0.5, y) - a
+	gy := t.keyLight(s, p, x, y+0.5) - a
 	t.surf = keep
-	return float32(math.Sqrt(float64((b-a)*(b-a) + (d-c)*(d-c))))
+	return 2 * sqrt32(gx*gx+gy*gy)
 }
 
 func (t *tile) keyLight(s *slot, p *part, x, y float32) float32 {

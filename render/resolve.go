@@ -52,8 +52,9 @@ func (t *tile) resolve(out image.Rectangle) {
 	n := 1 << t.lg
 	full := uint32(1)<<n - 1
 	inked := f.ink.half > 0
-	if inked {
-		t.drawInk(out)
+	inkLook := f.light.style == Ink
+	if inkLook {
+		t.drawInk()
 	}
 	lines := t.lines.dist
 	for y := out.Min.Y; y < out.Max.Y; y++ {
@@ -87,7 +88,12 @@ func (t *tile) resolve(out image.Rectangle) {
 				}
 				c = t.under(t.solid(keys, px, py), f.inked(lines[i]))
 			} else if k := t.whole(keys); k != 0 {
-				r, g, b := t.shadePlace(k, float32(px)+0.5, float32(py)+0.5)
+				var r, g, b float32
+				if inkLook {
+					r, g, b = t.inkWhole(i, px, py)
+				} else {
+					r, g, b = t.shadePlace(k, float32(px)+0.5, float32(py)+0.5)
+				}
 				if line {
 					c = t.under([4]float32{r, g, b, 1}, f.inked(lines[i]))
 					r, g, b = c[0], c[1], c[2]
