@@ -7,12 +7,13 @@ FUZZTIME ?= 20s
 BENCH    ?= .
 
 # The window needs a C compiler and the headers of OpenGL and X11; the command line needs neither.
-WINDOW_PACKAGES  := gcc pkg-config libgl1-mesa-dev xorg-dev
+WINDOW_PACKAGES  := gcc pkg-config libgl1-mesa-dev xorg-dev libgl1-mesa-dri
 WINDOW_LIBRARIES := gl x11 xcursor xi xinerama xrandr xxf86vm
 WINDOW_THERE     := pkg-config --exists $(WINDOW_LIBRARIES)
-# The tests need a computer algebra system, which checks the class functions of every group.
-TEST_PACKAGES := gap-core gap-character-tables
-TEST_THERE    := command -v gap >/dev/null
+# The tests need a computer algebra system, which checks the class functions of every group, and a display in memory
+# with a hand that moves its mouse and types.
+TEST_PACKAGES := gap-core gap-character-tables xvfb xdotool
+TEST_THERE    := command -v gap >/dev/null && command -v Xvfb >/dev/null && command -v xdotool >/dev/null
 
 # The program is stamped with the state of the checkout; -buildvcs would fail in a checkout of another user.
 VERSION := $(shell git describe --tags --always --dirty 2>/dev/null || echo devel)
@@ -46,9 +47,10 @@ lint: ## gofmt, go vet, staticcheck
 	@echo "== staticcheck"
 	$(GO) tool staticcheck ./...
 
+# Elsewhere the tests of the real window are skipped where there is no display in memory, but not here.
 unit: ## every test
 	@echo "== go test"
-	$(GO) test -timeout 10m ./...
+	LOBEWRIGHT_NEEDS_DISPLAY=1 $(GO) test -timeout 15m ./...
 
 fuzz: ## every fuzz target for FUZZTIME (20s)
 	@for p in $$($(GO) list ./...); do \
