@@ -176,18 +176,29 @@ func freeFrames(rec recognized) []mgl64.Mat3 {
 	return out
 }
 
-// restrict finds what an irrep of the group holds in the subgroup, by the
-// projections P_k1 = (d/h) Σ_R D_k1(R)·R on the space of its partners: first
-// partners are an orthonormal basis of the image of P_11, made from the
-// group's partners in their order; P_k1 gives the others of the same copy.
+// restrict finds what an irrep of the group holds in the subgroup.
 func (d *Descent) restrict(ir *Irrep) ([]Content, *mat.Dense) {
-	n := ir.Dimension
+	kept := make([]*mat.Dense, len(d.Operations))
+	for r, o := range d.Operations {
+		kept[d.Images[r]] = ir.Matrices[o]
+	}
+	return d.Subgroup.split(kept)
+}
+
+// split takes a representation, by one matrix an operation, apart by the
+// projections P_k1 = (d/h) Σ_R D_k1(R)·R: first partners are an orthonormal
+// basis of the image of P_11, made from the representation's functions in
+// their order; P_k1 gives the others of the same copy. Row l of the result is
+// partner l of the content, in its order; so column k is function k as a
+// combination of the partners.
+func (s *Setting) split(representation []*mat.Dense) ([]Content, *mat.Dense) {
+	n, _ := representation[0].Dims()
 	partners := mat.NewDense(n, n, nil)
 	row := 0
 	var content []Content
-	for i := range d.Subgroup.Irreps {
-		sub := &d.Subgroup.Irreps[i]
-		projections := d.projections(ir, sub)
+	for i := range s.Irreps {
+		sub := &s.Irreps[i]
+		projections := projections(sub, representation)
 		copies := 0
 		var taken []*mat.VecDense
 		for seed := 0; seed < n; seed++ {
@@ -222,20 +233,20 @@ func (d *Descent) restrict(ir *Irrep) ([]Content, *mat.Dense) {
 		}
 	}
 	if row != n {
-		panic("symmetry: partners of " + ir.Label + " of " + d.Group.Symbol + " lost in " + d.Subgroup.Symbol)
+		panic("symmetry: functions lost in " + s.Symbol)
 	}
 	return content, partners
 }
 
-// projections are the P_k1 of an irrep of the subgroup on the partners of one
-// of the group.
-func (d *Descent) projections(ir, sub *Irrep) []*mat.Dense {
-	out := make([]*mat.Dense, sub.Dimension)
+// projections are the P_k1 of an irrep in a representation.
+func projections(ir *Irrep, representation []*mat.Dense) []*mat.Dense {
+	n, _ := representation[0].Dims()
+	out := make([]*mat.Dense, ir.Dimension)
 	for p := range out {
-		out[p] = mat.NewDense(ir.Dimension, ir.Dimension, nil)
-		for r, o := range d.Operations {
+		out[p] = mat.NewDense(n, n, nil)
+		for r, m := range representation {
 			var term mat.Dense
-			term.Scale(sub.Matrices[d.Images[r]].At(p, 0)*float64(sub.Dimension)/float64(len(d.Operations)), ir.Matrices[o])
+			term.Scale(ir.Matrices[r].At(p, 0)*float64(ir.Dimension)/float64(len(representation)), m)
 			out[p].Add(out[p], &term)
 		}
 	}

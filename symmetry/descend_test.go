@@ -252,3 +252,41 @@ func spell(list []Content) string {
 	}
 	return strings.Join(out, " ")
 }
+
+// The usual correlation tables of linear molecules (G. Herzberg 1945; from
+// memory): in C2v Σ+ is A1, Σ− A2, Π B1 + B2, Δ A1 + A2; in D2h Σg+ Ag, Σu+
+// B1u, Σg− B1g, Πg B2g + B3g, Πu B2u + B3u, Δg Ag + B1g; in Dnh Σu+ is A2u.
+func TestLinearGroupsDescendAsPrinted(t *testing.T) {
+	for _, c := range []struct{ group, sub, pairs string }{
+		{"C∞v", "C2v", "Σ+=A1 Σ-=A2 Π=B1+B2 Δ=A1+A2"}, {"C∞v", "C4v", "Σ+=A1 Σ-=A2 Π=E Δ=B1+B2"}, {"C∞v", "C3v", "Π=E Δ=E Φ=A1+A2"},
+		{"D∞h", "D2h", "Σg+=Ag Σu+=B1u Σg-=B1g Σu-=Au Πg=B2g+B3g Πu=B2u+B3u Δg=Ag+B1g Δu=Au+B1u"},
+		{"D∞h", "D4h", "Σg+=A1g Σu+=A2u Σg-=A2g Σu-=A1u Πu=Eu Δg=B1g+B2g"}, {"D∞h", "D6h", "Πg=E1g Δu=E2u Φu=B1u+B2u"},
+		{"D∞h", "C∞v", ""}, {"C∞v", "D2h", ""}, {"D∞h", "Td", ""}, {"Kh", "C2v", ""},
+	} {
+		d, err := DescendLinear(c.group, c.sub, 3)
+		if c.pairs == "" {
+			if err == nil {
+				t.Errorf("%s in %s is accepted", c.sub, c.group)
+			}
+			continue
+		}
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, pair := range strings.Fields(c.pairs) {
+			label, want, _ := strings.Cut(pair, "=")
+			found := false
+			for i, ir := range d.Irreps {
+				if ir.Label == label {
+					found = true
+					if got := strings.ReplaceAll(spell(d.Correlation[i]), " ", "+"); got != want {
+						t.Errorf("%s in %s: %s is %s, want %s", c.sub, c.group, label, got, want)
+					}
+				}
+			}
+			if !found {
+				t.Errorf("%s has no %s", c.group, label)
+			}
+		}
+	}
+}
