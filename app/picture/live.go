@@ -587,3 +587,11 @@ func Runs(t notation.Text) []render.Run { return runs(t) }
 
 // Fonts are the built-in typefaces. The error is a fault of the program.
 func Fonts() (*render.Fonts, error) { return fonts() }
+
+// Prepare makes what the first picture needs and takes time: typefaces and
+// the most common lobes. Without it the first picture makes them.
+func Prepare() {
+	_, _ = fonts()
+	pLobes[coarse]()
+	pLobes[fine]()
+}

@@ -78,6 +78,7 @@ func (u *ui) askLater(title, text, now string, answer func(text string, done fun
 	q.popup.Show()
 	q.fitted()
 	u.win.Canvas().Focus(q.entry)
+	q.entry.TypedShortcut(&fyne.ShortcutSelectAll{}) // typing replaces it
 	return q
 }
 

@@ -5,6 +5,7 @@ package window
 import (
 	"fmt"
 	"path/filepath"
+	"strings"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/driver/desktop"
@@ -33,13 +34,34 @@ type menuItems struct {
 	last                                      string // what they showed
 }
 
+// A hiddenShortcut works like any other. The toolkit writes shortcuts that it
+// knows in the colour of shadows, too pale to read, so labels name the keys.
+type hiddenShortcut struct{ shortcut *desktop.CustomShortcut }
+
+// ShortcutName implements fyne.Shortcut.
+func (h hiddenShortcut) ShortcutName() string { return h.shortcut.ShortcutName() }
+
+func keyText(key fyne.KeyName, modifier fyne.KeyModifier) string {
+	text := "Ctrl+"
+	if modifier&fyne.KeyModifierSuper != 0 {
+		text = "Cmd+"
+	}
+	if modifier&fyne.KeyModifierShift != 0 {
+		text += "Shift+"
+	}
+	return text + string(key)
+}
+
 // menus makes the main menu. Everything in the window can be reached from it.
 func (u *ui) menus() *fyne.MainMenu {
 	item := func(label string, do func()) *fyne.MenuItem {
 		return fyne.NewMenuItem(label, func() { u.guard(do) })
 	}
 	with := func(i *fyne.MenuItem, key fyne.KeyName, modifier fyne.KeyModifier) *fyne.MenuItem {
-		i.Shortcut = &desktop.CustomShortcut{KeyName: key, Modifier: modifier}
+		i.Shortcut = hiddenShortcut{&desktop.CustomShortcut{KeyName: key, Modifier: modifier}}
+		if text := keyText(key, modifier); !strings.Contains(i.Label, "   ") {
+			i.Label += "   " + text
+		}
 		return i
 	}
 	const control, shift = fyne.KeyModifierShortcutDefault, fyne.KeyModifierShift

@@ -16,6 +16,7 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/app"
 
+	"lobewright/app/picture"
 	"lobewright/app/session"
 	"lobewright/app/study"
 	_ "lobewright/app/window/language" // before the toolkit
@@ -44,6 +45,14 @@ func Run(ctx context.Context, o Options) (err error) {
 		}
 	}()
 	began := processStart()
+	measure := os.Getenv("LOBEWRIGHT_MEASURE") != ""
+	mark := func(what string) {
+		if measure {
+			fmt.Fprintf(os.Stderr, "%5d ms  %s\n", time.Since(began).Milliseconds(), what)
+		}
+	}
+	mark("the program runs")
+	go picture.Prepare() // while the toolkit opens the window
 	app.SetMetadata(fyne.AppMetadata{
 		ID: "org.lobewright.window", Name: "Lobewright", Version: o.Version,
 		// Every call from another goroutine goes through fyne.Do; without
@@ -58,7 +67,9 @@ func Run(ctx context.Context, o Options) (err error) {
 		_ = kept.Close()
 		return errors.New("the window cannot be opened: " + reason)
 	}
+	mark("the toolkit has a window")
 	u := newUI(a, win, kept, o.Version)
+	mark("the panes are made")
 	for _, n := range notes {
 		u.notice = n.Text
 	}
@@ -78,13 +89,11 @@ func Run(ctx context.Context, o Options) (err error) {
 
 	// Without OpenGL the toolkit goes on and shows nothing.
 	painted := make(chan struct{})
-	measure := os.Getenv("LOBEWRIGHT_MEASURE") != ""
 	u.view.first = func() {
 		close(painted)
-		if measure {
-			fmt.Fprintf(os.Stderr, "first picture after %d ms\n", time.Since(began).Milliseconds())
-		}
+		mark("first picture")
 	}
+	u.mark = mark
 	if measure {
 		go u.measure()
 	}

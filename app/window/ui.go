@@ -62,6 +62,7 @@ type ui struct {
 	glide   *glide
 	fading  *fading
 	closing bool
+	mark    func(string) // measures, if asked
 }
 
 // firstDemo is what the window shows the first time.
@@ -236,6 +237,9 @@ func (u *ui) refreshPanes() {
 // deliver takes new results.
 func (u *ui) deliver(st *work.State) {
 	before := u.state
+	if before.Group == nil && st.Group != nil && u.mark != nil {
+		u.mark("the group is known")
+	}
 	u.state = st
 	if p := st.Problem(work.ConcernProgram); p != nil {
 		u.notice = "a fault of this program: " + p.Error() + "; the study is saved"

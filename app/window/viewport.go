@@ -118,9 +118,8 @@ func (v *viewport) scale() float64 {
 
 func (v *viewport) generate(w, h int) image.Image {
 	if w != v.width || h != v.height {
-		resized := v.width > 0
 		v.width, v.height = w, h
-		v.ask(resized)
+		v.ask(true) // quick first
 	}
 	d := v.frames.take()
 	if d == nil {
