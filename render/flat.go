@@ -9,6 +9,7 @@ type disc struct {
 	mx, my     float64
 	hole       float64 // square of the hole's radius in units of the disc's
 	normal     [3]float32
+	light      float32 // cosine between the normal and the key light
 	radius     float64
 	nMax       float64
 }
@@ -75,6 +76,7 @@ func (f *frame) addDisc(p part, m Affine, g Disc) {
 	for k := range 3 {
 		d.normal[k] = float32(normal[k] / size)
 	}
+	d.light = d.normal[0]*f.light.kx + d.normal[1]*f.light.ky + d.normal[2]*f.light.kz
 	p.form, p.index = formDisc, int32(len(f.discs))
 	f.discs = append(f.discs, d)
 	f.parts = append(f.parts, p)

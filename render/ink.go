@@ -184,9 +184,9 @@ func (t *tile) inkWhole(i, px, py int) (r, g, b float32) {
 	for k := 1; k < l.nTones; k++ {
 		d := nl - l.edges[k-1]
 		step := l.tones[k] - m
-		if d > 0.4 {
+		if d > 0.15 {
 			m += step
-		} else if d > -0.4 {
+		} else if d > -0.15 {
 			m += step * softStep(d, t.cellSlope(i, px, py)*max(l.soft, 0.7))
 		}
 	}
@@ -536,9 +536,9 @@ func (t *tile) tone(s *slot, p *part, nl, x, y float32) float32 {
 		d := nl - l.edges[i-1]
 		step := l.tones[i] - m
 		switch {
-		case d > 0.4:
+		case d > 0.15:
 			m += step
-		case d > -0.4:
+		case d > -0.15:
 			m += step * softStep(d, t.lightSlope(s, p, x, y)*max(l.soft, 0.7))
 		}
 	}

@@ -229,14 +229,17 @@ func (t *tile) under(c [4]float32, a float32) [4]float32 {
 }
 
 // blend returns the colour of a pixel with translucent layers: for every
-// sample the layers in front of its opaque surface, from front to back.
+// sample the layers in front of its opaque surface, from front to back. Of two
+// layers at the same place that of the later shape counts as nearer, as with
+// opaque surfaces.
 func (t *tile) blend(keys []uint64, i, px, py int) [4]float32 {
 	n := len(keys)
 	full := uint32(1)<<n - 1
 	list := t.sorted[:0]
-	for k := t.first[i]; k >= 0; k = t.frags[k].next {
+	frags := t.frags
+	for k := t.first[i]; k >= 0; k = frags[k].next {
 		list = append(list, k)
-		for j := len(list) - 1; j > 0 && t.before(list[j], list[j-1]); j-- {
+		for j := len(list) - 1; j > 0 && (frags[k].n > frags[list[j-1]].n || frags[k].n == frags[list[j-1]].n && frags[k].slot > frags[list[j-1]].slot); j-- {
 			list[j], list[j-1] = list[j-1], list[j]
 		}
 	}
@@ -417,19 +420,13 @@ func (t *tile) blendSamples(list []int32, n, px, py int, line, lineNear float32)
 	}
 }
 
-// before tells whether fragment a lies in front of b; of two at the same
-// place the one of the later shape does, as with opaque surfaces.
-func (t *tile) before(a, b int32) bool {
-	fa, fb := &t.frags[a], &t.frags[b]
-	if fa.n != fb.n {
-		return fa.n > fb.n
-	}
-	return fa.slot > fb.slot
-}
-
 // fragColor returns the colour and opacity of a fragment.
 func (t *tile) fragColor(fr *frag, px, py int) (r, g, b, a float32) {
 	p := &t.f.parts[t.slots[fr.slot].part]
+	if p.form == formDisc && t.f.light.style != Lit && p.hatch.period == 0 && !p.flat {
+		r, g, b = t.paneColor(p, px, py)
+		return r, g, b, p.alpha
+	}
 	if p.form == formLabel {
 		return t.labelColor(p, px, py)
 	}
@@ -440,4 +437,27 @@ func (t *tile) fragColor(fr *frag, px, py int) (r, g, b, a float32) {
 	mx, my := t.middle(fr.mask)
 	r, g, b = t.shadePlace(fr.slot, float32(px)+mx, float32(py)+my)
 	return r, g, b, p.alpha
+}
+
+// paneColor is shadePlace for a disc in the looks Plain and Ink: its normal is
+// the same everywhere.
+func (t *tile) paneColor(p *part, px, py int) (r, g, b float32) {
+	d := &t.f.discs[p.index]
+	l := &t.f.light
+	n := &d.normal
+	va, vb := l.sightAt(float32(px+t.x)+0.5, float32(py+t.y)+0.5)
+	nl, nv := d.light, n[0]*va+n[1]*vb+n[2]
+	if nv < 0 {
+		nl, nv = -nl, -nv
+	}
+	if l.style == Ink {
+		m := l.tones[0]
+		for i := 1; i < l.nTones && nl >= l.edges[i-1]; i++ {
+			m = l.tones[i]
+		}
+		return p.col[0] * m, p.col[1] * m, p.col[2] * m
+	}
+	h := l.gleam(va, vb, nl, nv)
+	k := l.ambient + l.diffuse*max(nl, 0)
+	return p.col[0]*k + h, p.col[1]*k + h, p.col[2]*k + h
 }

@@ -409,8 +409,8 @@ func (t *tile) plate(d *disc, p *part, layered bool) {
 	j0, j1 := t.rowRange(b.y0, b.y1)
 	step := 1 / float64(int(1)<<t.lg)
 	slot := uint32(len(t.slots) - 1)
-	if layered && d.hole < 0 && !(t.f.ink.half > 0 && p.outline) {
-		t.pane(d, b, slot)
+	if layered && d.hole < 0 {
+		t.pane(d, b, slot, t.f.ink.half > 0 && p.outline)
 		return
 	}
 	var parts [2][2]float64
@@ -429,8 +429,9 @@ func (t *tile) plate(d *disc, p *part, layered bool) {
 }
 
 // pane draws a translucent disc without a hole. It is one sheet, so its
-// fragments are made at once, pixel row by pixel row.
-func (t *tile) pane(d *disc, b *box, slot uint32) {
+// fragments are made at once, pixel row by pixel row, unless the layer is
+// wanted for an outline.
+func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
 	n := 1 << t.lg
 	y0, y1 := max(t.clip.Min.Y, int(math.Max(-1e6, b.y0))-t.y-1), min(t.clip.Max.Y, int(math.Min(1e6, b.y1))-t.y+2)
 	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
@@ -438,6 +439,7 @@ func (t *tile) pane(d *disc, b *box, slot uint32) {
 	var x0, x1 [16]int
 	nx, ny := float32(d.n[1]), float32(d.n[2])
 	full := uint32(1)<<n - 1
+	frags := t.frags
 	for py := y0; py < y1; py++ {
 		from, to, coreFrom, coreTo := math.MaxInt, 0, 0, math.MaxInt
 		for k := range n {
@@ -464,23 +466,43 @@ func (t *tile) pane(d *disc, b *box, slot uint32) {
 			}
 			i := py*t.side + x
 			near := float32(row + d.n[1]*float64(x))
-			if !t.solidAny {
-				t.push(i, frag{slot: slot, mask: mask, n: near, nx: nx, ny: ny})
-				continue
-			}
-			for k, key := range t.keys[i<<t.lg:][:n] {
-				if uint32(key) != 0 || t.empty != 0 {
-					at := near + nx*(float32(t.sx[k&15])-0.5) + ny*((float32(k)+0.5)/float32(n)-0.5)
-					if int64(uint64(math.Float32bits(at))<<32|math.MaxUint32) <= int64(key) {
-						mask &^= 1 << k
+			if t.solidAny {
+				keys := t.keys[i<<t.lg:][:n]
+				any := t.empty
+				for _, key := range keys {
+					any |= key
+				}
+				if any != 0 {
+					mask &= t.ahead(keys, near, nx, ny)
+					if mask == 0 {
+						continue
 					}
 				}
 			}
-			if mask != 0 {
-				t.push(i, frag{slot: slot, mask: mask, n: near, nx: nx, ny: ny})
+			if keep {
+				t.front.at[i] = sheet{mask, slot, near, nx, ny}
+				t.front.touch(py)
+				continue
 			}
+			frags = append(frags, frag{next: t.first[i], slot: slot, mask: mask, n: near, nx: nx, ny: ny})
+			t.first[i] = int32(len(frags) - 1)
 		}
 	}
+	t.frags = frags
+	t.anyFrag = len(frags) > 0
+}
+
+// ahead returns the samples of a pixel where a plane lies in front of what is
+// there.
+func (t *tile) ahead(keys []uint64, near, nx, ny float32) (mask uint32) {
+	step := 1 / float32(len(keys))
+	for k, key := range keys {
+		at := near + nx*(float32(t.sx[k&15])-0.5) + ny*((float32(k)+0.5)*step-0.5)
+		if int64(uint64(math.Float32bits(at))<<32|math.MaxUint32) > int64(key) {
+			mask |= 1 << k
+		}
+	}
+	return mask
 }
 
 // run draws a piece of a sample row whose nearness is linear: n0 + n1·x.
@@ -569,7 +591,8 @@ func (t *tile) flush(part int32) {
 			continue
 		}
 		at := l.at[l.y0*t.side : (l.y1+1)*t.side]
-		mesh := t.f.parts[part].form == formMesh
+		form := t.f.parts[part].form
+		mesh := form == formMesh || form == formDisc && t.f.discs[t.f.parts[part].index].hole < 0
 		for i := range at {
 			s := &at[i]
 			if s.mask == 0 {
