@@ -90,31 +90,41 @@ func (r *Renderer) projectChunk(_ *worker, i int) {
 	in := p.mesh.Positions[c.from:c.to]
 	sx, sy := float32(pr.f), float32(-pr.f)
 	cx, cy := float32(pr.cx), float32(pr.cy)
-	if !pr.persp {
-		k0, k1 := float32(pr.k0), float32(pr.k1)
-		for j, v := range in {
-			x := m[0]*v[0] + m[1]*v[1] + m[2]*v[2] + m[3]
-			y := m[4]*v[0] + m[5]*v[1] + m[6]*v[2] + m[7]
-			z := m[8]*v[0] + m[9]*v[1] + m[10]*v[2] + m[11]
-			out[j] = vert{snap(cx + sx*x), snap(cy + sy*y), k0 + k1*z, 0}
-		}
-		return
-	}
+	k0, k1 := float32(pr.k0), float32(pr.k1)
 	near := float32(1 / pr.nMax)
 	behind := false
 	for j, v := range in {
 		x := m[0]*v[0] + m[1]*v[1] + m[2]*v[2] + m[3]
 		y := m[4]*v[0] + m[5]*v[1] + m[6]*v[2] + m[7]
-		w := -(m[8]*v[0] + m[9]*v[1] + m[10]*v[2] + m[11])
-		if !(w >= near) {
-			out[j] = vert{n: -1}
+		z := m[8]*v[0] + m[9]*v[1] + m[10]*v[2] + m[11]
+		o := &out[j]
+		if !pr.persp {
+			o.x, o.y, o.n = snap(cx+sx*x), snap(cy+sy*y), k0+k1*z
+			continue
+		}
+		if !(-z >= near) {
+			*o = vert{n: -1}
 			behind = true
 			continue
 		}
-		n := 1 / w
-		out[j] = vert{snap(cx + sx*x*n), snap(cy + sy*y*n), n, 0}
+		n := -1 / z
+		o.x, o.y, o.n = snap(cx+sx*x*n), snap(cy+sy*y*n), n
 	}
 	f.chunks[i].behind = behind
+	if p.mesh.Normals == nil {
+		return
+	}
+	k := p.nrm
+	for j, g := range p.mesh.Normals[c.from:c.to] {
+		o := &out[j]
+		w := float32(1)
+		if pr.persp {
+			w = o.n
+		}
+		o.nx = (k[0]*g[0] + k[1]*g[1] + k[2]*g[2]) * w
+		o.ny = (k[3]*g[0] + k[4]*g[1] + k[5]*g[2]) * w
+		o.nz = (k[6]*g[0] + k[7]*g[1] + k[8]*g[2]) * w
+	}
 }
 
 // binBatch sorts a batch of triangles into tiles. Those that cannot be seen
@@ -292,8 +302,20 @@ func (f *frame) cutNear(b *batch, p *part, t uint32) {
 		l := loose{tri: t}
 		for i, c := range [3]*corner{&out[0], &out[k-1], &out[k]} {
 			x, y, z := pr.point(Vec3{float64(c.q[0]), float64(c.q[1]), float64(c.q[2])})
-			l.v[i] = vert{snap(float32(x)), snap(float32(y)), float32(z), 0}
-			l.weight[i] = c.w
+			v := vert{x: snap(float32(x)), y: snap(float32(y)), n: float32(z)}
+			if p.mesh.Normals != nil {
+				var g [3]float32
+				for k, q := range tri {
+					for r := range 3 {
+						g[r] += c.w[k] * p.mesh.Normals[q][r]
+					}
+				}
+				r := &p.nrm
+				v.nx = (r[0]*g[0] + r[1]*g[1] + r[2]*g[2]) * v.n
+				v.ny = (r[3]*g[0] + r[4]*g[1] + r[5]*g[2]) * v.n
+				v.nz = (r[6]*g[0] + r[7]*g[1] + r[8]*g[2]) * v.n
+			}
+			l.v[i], l.weight[i] = v, c.w
 		}
 		if l.v[0].n > 0 && l.v[1].n > 0 && l.v[2].n > 0 {
 			b.loose = append(b.loose, l)

@@ -68,8 +68,13 @@ type frame struct {
 }
 
 // vert is a vertex on the picture; n is not positive when it lies before the
-// near limit or makes no sense.
-type vert struct{ x, y, n, pad float32 }
+// near limit or makes no sense. The normal is in camera space, in perspective
+// times n, so that mixtures of vertices need no weighing.
+type vert struct {
+	x, y, n, _ float32
+	nx, ny, nz float32
+	_          float32
+}
 
 type chunk struct {
 	part     int32

@@ -67,8 +67,12 @@ func (t *tile) resolve(out image.Rectangle) {
 			keys := t.keys[i<<t.lg:][:n]
 			line := inked && lines[i] < 1e9
 			var any uint32
-			for _, k := range keys {
-				any |= uint32(k)
+			if len(keys) == 4 {
+				any = uint32(keys[0] | keys[1] | keys[2] | keys[3])
+			} else {
+				for _, k := range keys {
+					any |= uint32(k)
+				}
 			}
 			var c [4]float32
 			if t.anyFrag && t.first[i] >= 0 {

@@ -166,30 +166,28 @@ func (t *tile) lookAtMesh(s *slot, p *part, x, y float32) (nx, ny, nz float32, s
 			t.surf.n = (wa*a.n + wb*b.n + wc*c.n) / sum
 		}
 	}
-	if p.persp {
-		wa, wb, wc = wa*a.n, wb*b.n, wc*c.n
-	}
-	if l != nil {
-		w := &l.weight
-		wa, wb, wc = wa*w[0][0]+wb*w[1][0]+wc*w[2][0], wa*w[0][1]+wb*w[1][1]+wc*w[2][1], wa*w[0][2]+wb*w[1][2]+wc*w[2][2]
-	}
-	var gx, gy, gz float32
 	if m.Normals != nil {
-		na, nb, nc := &m.Normals[ix[0]], &m.Normals[ix[1]], &m.Normals[ix[2]]
-		gx = wa*na[0] + wb*nb[0] + wc*nc[0]
-		gy = wa*na[1] + wb*nb[1] + wc*nc[1]
-		gz = wa*na[2] + wb*nb[2] + wc*nc[2]
+		nx = wa*a.nx + wb*b.nx + wc*c.nx
+		ny = wa*a.ny + wb*b.ny + wc*c.ny
+		nz = wa*a.nz + wb*b.nz + wc*c.nz
 	} else {
 		pa, pb, pc := &m.Positions[ix[0]], &m.Positions[ix[1]], &m.Positions[ix[2]]
 		ax, ay, az := pb[0]-pa[0], pb[1]-pa[1], pb[2]-pa[2]
 		bx, by, bz := pc[0]-pa[0], pc[1]-pa[1], pc[2]-pa[2]
-		gx, gy, gz = ay*bz-az*by, az*bx-ax*bz, ax*by-ay*bx
+		gx, gy, gz := ay*bz-az*by, az*bx-ax*bz, ax*by-ay*bx
+		r := &p.nrm
+		nx = r[0]*gx + r[1]*gy + r[2]*gz
+		ny = r[3]*gx + r[4]*gy + r[5]*gz
+		nz = r[6]*gx + r[7]*gy + r[8]*gz
 	}
-	r := &p.nrm
-	nx = r[0]*gx + r[1]*gy + r[2]*gz
-	ny = r[3]*gx + r[4]*gy + r[5]*gz
-	nz = r[6]*gx + r[7]*gy + r[8]*gz
 	if p.hatch.period > 0 && m.Coords != nil {
+		if p.persp {
+			wa, wb, wc = wa*a.n, wb*b.n, wc*c.n
+		}
+		if l != nil {
+			w := &l.weight
+			wa, wb, wc = wa*w[0][0]+wb*w[1][0]+wc*w[2][0], wa*w[0][1]+wb*w[1][1]+wc*w[2][1], wa*w[0][2]+wb*w[1][2]+wc*w[2][2]
+		}
 		ca, cb, cc := &m.Coords[ix[0]], &m.Coords[ix[1]], &m.Coords[ix[2]]
 		k := float32(0)
 		if sum := wa + wb + wc; sum != 0 {

@@ -440,9 +440,13 @@ func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
 	nx, ny := float32(d.n[1]), float32(d.n[2])
 	full := uint32(1)<<n - 1
 	frags := t.frags
+	all := d.fills(float64(t.x), float64(t.y), float64(t.x+t.side), float64(t.y+t.side))
 	for py := y0; py < y1; py++ {
 		from, to, coreFrom, coreTo := math.MaxInt, 0, 0, math.MaxInt
-		for k := range n {
+		if all {
+			from, to = t.clip.Min.X, t.clip.Max.X
+		}
+		for k := 0; k < n && !all; k++ {
 			x0[k], x1[k] = 0, 0
 			y := float64(t.y+py) + (float64(k)+0.5)/float64(n)
 			if d.spans(y, lo, hi, &piece) > 0 {
