@@ -2,6 +2,7 @@ package work
 
 import (
 	"context"
+	"errors"
 
 	"lobewright/app/study"
 )
@@ -29,8 +30,9 @@ func (w *Work) advance(ctx context.Context, s study.Study, asked [stages]any, be
 			return c, nil, false
 		}
 		progress.Done++
-		if err != nil {
-			problems = noted(problems, err.(*Problem))
+		var problem *Problem
+		if errors.As(err, &problem) {
+			problems = noted(problems, problem)
 		}
 		if c.has()[stage] {
 			c.keys[stage] = asked[stage]
@@ -63,32 +65,47 @@ func (w *Work) step(ctx context.Context, s study.Study, stage Stage, c *chain) (
 			err = caught(stage, value)
 		}
 	}()
-	switch stage {
-	case StageStructure:
+	if stage == StageStructure {
 		c.Structure, err = w.Structure(ctx, s)
+		return err
+	}
+	w.mu.Lock()
+	defer w.mu.Unlock()
+	switch stage {
 	case StageGroup:
-		c.Group, err = w.Group(ctx, s)
+		c.Group, err = w.groupOf(ctx, c.Structure, s)
 	case StageBasis:
-		c.Basis, err = w.Basis(ctx, s)
+		c.Basis, err = w.basisOf(ctx, c.Group, s)
 	case StageOrbitals:
-		c.Orbitals, err = w.Orbitals(ctx, s)
+		c.Orbitals, err = w.orbitalsOf(ctx, c.Basis)
 	case StageOrbital:
 		c.Orbital, err = c.Orbitals.Orbital(s.Projection)
 	case StageLedger:
-		c.Ledger, err = w.Ledger(ctx, s)
+		c.Ledger, err = w.ledgerOf(ctx, c.Basis, s.Projection)
 	case StagePlay:
-		if c.Basis != nil {
-			c.Play, err = w.Play(ctx, s)
-		}
-		if c.Play == nil && !cancelled(err) {
-			s.Basis = nil // the operation alone
-			var wrong error
-			if c.Play, wrong = w.Play(ctx, s); err == nil {
-				err = wrong
-			}
-		}
+		err = w.playWhatIsThere(ctx, s, c)
 	}
 	return blame(stage, ConcernProgram, err)
+}
+
+// playWhatIsThere plays the operation alone if it cannot be played on the
+// subject, so that at least its element is seen.
+func (w *Work) playWhatIsThere(ctx context.Context, s study.Study, c *chain) (err error) {
+	switch subject := subjectOf(s); {
+	case subject == study.SubjectOrbital && c.Orbitals != nil:
+		c.Play, err = w.playOf(ctx, c.Group, nil, c.Orbitals, s)
+	case subject == study.SubjectFunction && c.Basis != nil:
+		c.Play, err = w.playOf(ctx, c.Group, c.Basis, nil, s)
+	}
+	if c.Play != nil || cancelled(err) {
+		return err
+	}
+	alone, wrong := w.playOf(ctx, c.Group, nil, nil, s)
+	c.Play = alone
+	if err == nil {
+		err = wrong
+	}
+	return err
 }
 
 // noted adds a problem unless another stage has told the same.

@@ -7,7 +7,8 @@ import (
 )
 
 // The keys hold what of a study a stage reads, directly or through the stages
-// before it. They can be made while others compute.
+// before it. They tell whether a result is that of a study, and can be made
+// while others compute.
 
 type structureKey struct {
 	structure, coordinates string
@@ -34,9 +35,12 @@ type basisKey struct {
 }
 
 func (w *Work) keyOfBasis(s study.Study) basisKey {
-	// No selection contains a line feed.
-	return basisKey{w.keyOfGroup(s), strings.Join(s.Basis, "\n")}
+	return basisKey{w.keyOfGroup(s), joinBasis(s)}
 }
+
+// joinBasis makes one text of all selections, none of which contains a line
+// feed.
+func joinBasis(s study.Study) string { return strings.Join(s.Basis, "\n") }
 
 type orbitalKey struct {
 	basisKey
@@ -70,19 +74,23 @@ type playKey struct {
 }
 
 func (w *Work) keyOfPlay(s study.Study) playKey {
-	key := playKey{operation: s.Operation, subject: s.Projection.TheSubject()}
-	if isFamily(s.Operation) {
-		key.angle = s.Angle
-	}
-	switch {
-	case len(s.Basis) == 0 || key.subject == study.NoSubject:
-		key.subject = study.NoSubject
-		key.groupKey = w.keyOfGroup(s)
-	case key.subject == study.SubjectFunction:
+	key := playKey{operation: s.Operation, angle: angleOf(s), subject: subjectOf(s)}
+	switch key.subject {
+	case study.SubjectFunction:
 		key.basisKey = w.keyOfBasis(s)
 		key.function = s.Projection.Function
-	default:
+	case study.SubjectOrbital:
 		key.orbitalKey = w.keyOfOrbital(s)
+	default:
+		key.groupKey = w.keyOfGroup(s)
 	}
 	return key
+}
+
+// angleOf is the angle as far as the operation of a study depends on it.
+func angleOf(s study.Study) float64 {
+	if isFamily(s.Operation) {
+		return s.Angle
+	}
+	return 0
 }

@@ -13,23 +13,29 @@ import (
 // Ledger projects one function of the basis, operation by operation. A group
 // with infinitely many operations has no ledger.
 func (w *Work) Ledger(ctx context.Context, s study.Study) (*Ledger, error) {
+	basis, err := w.Basis(ctx, s)
+	if err != nil {
+		return nil, err
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.ledger(ctx, s)
+	return w.ledgerOf(ctx, basis, s.Projection)
 }
 
-func (w *Work) ledger(ctx context.Context, s study.Study) (*Ledger, error) {
-	return w.ledgers.get(w.keyOfLedger(s), func() (*Ledger, error) {
-		basis, err := w.basis(ctx, s)
-		if err != nil {
-			return nil, err
-		}
+type ledgerInputs struct {
+	*Basis
+	function int
+	irrep    string
+	element  [2]int
+}
+
+func (w *Work) ledgerOf(ctx context.Context, basis *Basis, p study.Projection) (*Ledger, error) {
+	return w.ledgers.get(ledgerInputs{basis, p.Function, p.Irrep, p.TheElement()}, func() (*Ledger, error) {
 		setting := basis.Fit.Setting
 		if setting.Infinite() {
 			return nil, blame(StageLedger, ConcernStructure, fmt.Errorf(
 				"%s has infinitely many operations, so there is no ledger; project lists its group orbitals", setting.Symbol))
 		}
-		p := s.Projection
 		if err := checkFunction(basis, p.Function); err != nil {
 			return nil, blame(StageLedger, ConcernFunction, err)
 		}
@@ -41,7 +47,7 @@ func (w *Work) ledger(ctx context.Context, s study.Study) (*Ledger, error) {
 		if err != nil {
 			return nil, blame(StageLedger, ConcernElement, err)
 		}
-		representation, err := w.representation(ctx, s)
+		representation, err := w.representationOf(ctx, basis)
 		if err != nil {
 			return nil, err
 		}

@@ -112,11 +112,11 @@ func sincos(degrees float64) (sin, cos float64) {
 	sin, cos = math.Sincos(mgl64.DegToRad(rest))
 	switch rest {
 	case 30:
-		sin = 0.5
+		sin, cos = 0.5, math.Sqrt(3)/2
 	case 45:
 		sin, cos = math.Sqrt2/2, math.Sqrt2/2
 	case 60:
-		cos = 0.5
+		sin, cos = math.Sqrt(3)/2, 0.5
 	}
 	for range int(quarter) {
 		sin, cos = cos, -sin

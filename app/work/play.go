@@ -44,28 +44,68 @@ type Play struct {
 // Play carries out the operation of a study on its subject. A study without a
 // subject or without a basis gets the operation alone.
 func (w *Work) Play(ctx context.Context, s study.Study) (*Play, error) {
+	var basis *Basis
+	var all *Orbitals
+	var group *Group
+	var err error
+	switch subjectOf(s) {
+	case study.SubjectFunction:
+		if basis, err = w.Basis(ctx, s); err == nil {
+			group = basis.Group
+		}
+	case study.SubjectOrbital:
+		if all, err = w.Orbitals(ctx, s); err == nil {
+			group = all.Group
+		}
+	default:
+		group, err = w.Group(ctx, s)
+	}
+	if err != nil {
+		return nil, err
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.play(ctx, s)
+	return w.playOf(ctx, group, basis, all, s)
 }
 
-func (w *Work) play(ctx context.Context, s study.Study) (*Play, error) {
-	key := w.keyOfPlay(s)
-	return w.plays.get(key, func() (*Play, error) {
-		group, err := w.group(ctx, s)
-		if err != nil {
-			return nil, err
-		}
+// subjectOf is the subject in force; without a basis there is none.
+func subjectOf(s study.Study) study.Subject {
+	if len(s.Basis) == 0 {
+		return study.NoSubject
+	}
+	return s.Projection.TheSubject()
+}
+
+type playInputs struct {
+	*Group
+	basis      *Basis
+	orbitals   *Orbitals
+	operation  string
+	angle      float64
+	projection study.Projection
+}
+
+// playOf plays on the orbital that is chosen of all, or else on the function
+// that is chosen of the basis, or else on nothing.
+func (w *Work) playOf(ctx context.Context, group *Group, basis *Basis, all *Orbitals, s study.Study) (*Play, error) {
+	inputs := playInputs{group, basis, all, s.Operation, angleOf(s), study.Projection{}}
+	switch {
+	case all != nil:
+		inputs.projection = study.Projection{Irrep: s.Projection.Irrep, Copy: max(1, s.Projection.Copy), Partner: max(1, s.Projection.Partner)}
+	case basis != nil:
+		inputs.projection = study.Projection{Function: s.Projection.Function}
+	}
+	return w.plays.get(inputs, func() (*Play, error) {
 		operation, err := group.Operation(s.Operation, s.Angle)
 		if err != nil {
 			return nil, blame(StagePlay, ConcernOperation, err)
 		}
 		p := &Play{Group: group, Operation: operation, Function: -1, Sites: sitesUnder(group, operation)}
-		switch key.subject {
-		case study.SubjectFunction:
-			err = w.playFunction(ctx, s, p)
-		case study.SubjectOrbital:
-			err = w.playOrbital(ctx, s, p)
+		switch {
+		case all != nil:
+			err = w.playOrbital(ctx, all, s.Projection, p)
+		case basis != nil:
+			err = w.playFunction(ctx, basis, s.Projection.Function, p)
 		}
 		return p, err
 	})
@@ -90,16 +130,11 @@ func sitesUnder(g *Group, o Operation) []int {
 	return out
 }
 
-func (w *Work) playFunction(ctx context.Context, s study.Study, p *Play) error {
-	basis, err := w.basis(ctx, s)
-	if err != nil {
-		return err
-	}
-	function := s.Projection.Function
+func (w *Work) playFunction(ctx context.Context, basis *Basis, function int, p *Play) error {
 	if err := checkFunction(basis, function); err != nil {
 		return blame(StagePlay, ConcernFunction, err)
 	}
-	images, err := w.imager(ctx, s, basis, p)
+	images, err := w.imager(ctx, basis, p)
 	if err != nil {
 		return err
 	}
@@ -118,16 +153,12 @@ func (w *Work) playFunction(ctx context.Context, s study.Study, p *Play) error {
 	return nil
 }
 
-func (w *Work) playOrbital(ctx context.Context, s study.Study, p *Play) error {
-	all, err := w.orbitals(ctx, s)
+func (w *Work) playOrbital(ctx context.Context, all *Orbitals, projection study.Projection, p *Play) error {
+	orbital, err := all.Orbital(projection)
 	if err != nil {
 		return err
 	}
-	orbital, err := all.Orbital(s.Projection)
-	if err != nil {
-		return err
-	}
-	images, err := w.imager(ctx, s, all.Basis, p)
+	images, err := w.imager(ctx, all.Basis, p)
 	if err != nil {
 		return err
 	}
@@ -148,11 +179,11 @@ func (w *Work) playOrbital(ctx context.Context, s study.Study, p *Play) error {
 // An imager gives what an operation makes of a function of the basis.
 type imager func(function int) ([]orbitals.Term, error)
 
-func (w *Work) imager(ctx context.Context, s study.Study, basis *Basis, p *Play) (imager, error) {
+func (w *Work) imager(ctx context.Context, basis *Basis, p *Play) (imager, error) {
 	if p.Operation.Index < 0 {
 		return continuous(basis, p.Operation.Matrix, p.Sites), nil
 	}
-	representation, err := w.representation(ctx, s)
+	representation, err := w.representationOf(ctx, basis)
 	if err != nil {
 		return nil, err
 	}

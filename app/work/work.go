@@ -1,9 +1,10 @@
 // Package work computes what follows from a study: structure, group, basis,
-// group orbitals, ledger. Each stage is kept under the part of the study that
-// it reads, so that a change of the camera computes nothing and a change of
-// the basis finds no group anew.
+// group orbitals, ledger, and what single operations make of them. Each stage
+// is kept under the part of the study that it reads, so that a change of the
+// camera computes nothing and a change of the basis finds no group anew.
 //
-// Both faces of the program, the commands and the window, use this package.
+// Both faces of the program use this package: the commands call a Work and
+// wait, the window has a Service, which works in the background.
 package work
 
 import (
@@ -20,8 +21,8 @@ import (
 )
 
 // Work computes results and keeps the last one of every stage. It may be used
-// by several goroutines; they wait for each other. Results are shared and must
-// not be changed.
+// by several goroutines; they wait for each other, stage by stage. Results are
+// shared and must not be changed.
 type Work struct {
 	inputs structure.Inputs
 
@@ -30,12 +31,12 @@ type Work struct {
 	mu              sync.Mutex
 	reopened        stage[structureKey, *Structure]
 	structures      stage[structureKey, *Structure]
-	groups          stage[groupKey, *Group]
-	bases           stage[basisKey, *Basis]
-	representations stage[basisKey, *orbitals.Representation]
-	projections     stage[basisKey, *Orbitals]
-	ledgers         stage[ledgerKey, *Ledger]
-	plays           stage[playKey, *Play]
+	groups          stage[groupInputs, *Group]
+	bases           stage[basisInputs, *Basis]
+	representations stage[*Basis, *orbitals.Representation]
+	projections     stage[*Basis, *Orbitals]
+	ledgers         stage[ledgerInputs, *Ledger]
+	plays           stage[playInputs, *Play]
 }
 
 // New returns a Work that reads structures from inputs and the file system.
@@ -101,36 +102,60 @@ type Ledger struct {
 }
 
 // Structure reads the structure of a study. The error is a *Problem around a
-// *structure.Error, or that of ctx.
+// *structure.Error, or that of ctx. Nobody else waits while a file is read.
 func (w *Work) Structure(ctx context.Context, s study.Study) (*Structure, error) {
+	key := w.keyOfStructure(s)
+	if read := w.knownStructure(key); read != nil {
+		return read, nil
+	}
+	read, err := open(ctx, s, w.inputs)
+	if err != nil {
+		return nil, err
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.structure(ctx, s)
+	return w.structures.get(key, func() (*Structure, error) { return read, nil })
 }
 
-func (w *Work) structure(ctx context.Context, s study.Study) (*Structure, error) {
-	key := w.keyOfStructure(s)
-	return w.structures.get(key, func() (*Structure, error) {
+// knownStructure is a structure that was read before, or nil.
+func (w *Work) knownStructure(key structureKey) *Structure {
+	w.mu.Lock()
+	defer w.mu.Unlock()
+	read, _ := w.structures.get(key, func() (*Structure, error) {
 		if w.reopened.known && w.reopened.key == key {
 			return w.reopened.value, nil
 		}
-		return open(ctx, s, w.inputs)
+		return nil, errUnknown
 	})
+	return read
 }
+
+var errUnknown = errors.New("not known")
 
 // Group finds the point group of a study's core and its frame.
 func (w *Work) Group(ctx context.Context, s study.Study) (*Group, error) {
+	read, err := w.Structure(ctx, s)
+	if err != nil {
+		return nil, err
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.group(ctx, s)
+	return w.groupOf(ctx, read, s)
 }
 
-func (w *Work) group(ctx context.Context, s study.Study) (*Group, error) {
-	return w.groups.get(w.keyOfGroup(s), func() (*Group, error) {
-		read, err := w.structure(ctx, s)
-		if err != nil {
-			return nil, err
-		}
+// The inputs of a stage are the very results that it goes out from, and the
+// choices that it reads. So all results of one study belong together, whatever
+// was computed and forgotten between.
+type groupInputs struct {
+	*Structure
+	core, ignore, frame string
+	tolerance           float64
+}
+
+// groupOf and its like are called with the lock held.
+func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Group, error) {
+	inputs := groupInputs{read, s.Core, s.Ignore, s.Frame, s.TheTolerance()}
+	return w.groups.get(inputs, func() (*Group, error) {
 		core, err := structure.Core(read.Molecule, s.Core, s.Ignore)
 		if err != nil {
 			return nil, blameCore(read.Molecule, s, err)
@@ -152,24 +177,41 @@ func (w *Work) group(ctx context.Context, s study.Study) (*Group, error) {
 
 // Basis puts the chosen functions on the atoms.
 func (w *Work) Basis(ctx context.Context, s study.Study) (*Basis, error) {
+	// What is written wrong is told before anything is read.
+	if _, err := parseChoices(s.Basis); err != nil {
+		return nil, err
+	}
+	group, err := w.Group(ctx, s)
+	if err != nil {
+		return nil, err
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.basis(ctx, s)
+	return w.basisOf(ctx, group, s)
 }
 
-func (w *Work) basis(ctx context.Context, s study.Study) (*Basis, error) {
-	return w.bases.get(w.keyOfBasis(s), func() (*Basis, error) {
-		choices := make([]orbitals.Choice, len(s.Basis))
-		for i, text := range s.Basis {
-			var err error
-			if choices[i], err = orbitals.ParseChoice(text); err != nil {
-				return nil, &Problem{Stage: StageBasis, Concern: ConcernBasis, Index: i, Err: err}
-			}
+func parseChoices(texts []string) ([]orbitals.Choice, error) {
+	choices := make([]orbitals.Choice, len(texts))
+	for i, text := range texts {
+		var err error
+		if choices[i], err = orbitals.ParseChoice(text); err != nil {
+			return nil, &Problem{Stage: StageBasis, Concern: ConcernBasis, Index: i, Err: err}
 		}
-		if len(choices) == 0 {
-			return nil, blame(StageBasis, ConcernBasis, errors.New("no functions are chosen"))
-		}
-		group, err := w.group(ctx, s)
+	}
+	if len(choices) == 0 {
+		return nil, blame(StageBasis, ConcernBasis, errors.New("no functions are chosen"))
+	}
+	return choices, nil
+}
+
+type basisInputs struct {
+	*Group
+	basis string // joined
+}
+
+func (w *Work) basisOf(ctx context.Context, group *Group, s study.Study) (*Basis, error) {
+	return w.bases.get(basisInputs{group, joinBasis(s)}, func() (*Basis, error) {
+		choices, err := parseChoices(s.Basis)
 		if err != nil {
 			return nil, err
 		}
@@ -184,14 +226,13 @@ func (w *Work) basis(ctx context.Context, s study.Study) (*Basis, error) {
 	})
 }
 
-// representation is what the operations make of the basis; nil for an infinite
+// representationOf is what the operations make of a basis; nil for an infinite
 // group.
-func (w *Work) representation(ctx context.Context, s study.Study) (*orbitals.Representation, error) {
-	return w.representations.get(w.keyOfBasis(s), func() (*orbitals.Representation, error) {
-		basis, err := w.basis(ctx, s)
-		if err != nil || basis.Fit.Setting.Infinite() {
-			return nil, err
-		}
+func (w *Work) representationOf(ctx context.Context, basis *Basis) (*orbitals.Representation, error) {
+	if basis.Fit.Setting.Infinite() {
+		return nil, nil
+	}
+	return w.representations.get(basis, func() (*orbitals.Representation, error) {
 		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
@@ -202,18 +243,18 @@ func (w *Work) representation(ctx context.Context, s study.Study) (*orbitals.Rep
 
 // Orbitals projects the basis onto every irrep.
 func (w *Work) Orbitals(ctx context.Context, s study.Study) (*Orbitals, error) {
+	basis, err := w.Basis(ctx, s)
+	if err != nil {
+		return nil, err
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.orbitals(ctx, s)
+	return w.orbitalsOf(ctx, basis)
 }
 
-func (w *Work) orbitals(ctx context.Context, s study.Study) (*Orbitals, error) {
-	return w.projections.get(w.keyOfBasis(s), func() (*Orbitals, error) {
-		basis, err := w.basis(ctx, s)
-		if err != nil {
-			return nil, err
-		}
-		representation, err := w.representation(ctx, s)
+func (w *Work) orbitalsOf(ctx context.Context, basis *Basis) (*Orbitals, error) {
+	return w.projections.get(basis, func() (*Orbitals, error) {
+		representation, err := w.representationOf(ctx, basis)
 		if err != nil {
 			return nil, err
 		}
