@@ -142,6 +142,9 @@ func (r *Renderer) build(scene *Scene) {
 	r.frame.split()
 	r.phase(len(r.frame.chunks), r.vertexJob)
 	r.phase(len(r.frame.batches), r.binJob)
+	if r.stopped.Load() {
+		return // batches that were not binned are of an older frame
+	}
 	r.frame.list()
 	r.shadesOf()
 }
