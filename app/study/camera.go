@@ -141,10 +141,11 @@ func (c Camera) ZoomedAt(factor float64, at [2]float64) Camera {
 	if !(zoom > 0) {
 		return c
 	}
+	zoom = roundedTo(zoom, 6)
 	for i := range c.Pan {
 		c.Pan[i] = c.Pan[i] + at[i]*(before/zoom-1)
 	}
-	c.Zoom = roundedTo(zoom, 6)
+	c.Zoom = zoom
 	return c.Panned(0, 0)
 }
 
