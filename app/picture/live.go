@@ -83,6 +83,9 @@ func (l *Live) Frame(shown Shown, orbit Orbit, width, height int, dpi float64, q
 	}
 	s := &stage{palette: palette, look: shown.Look}
 	s.scene.Fonts = fonts
+	if shown.Group == nil {
+		orbit = NewOrbit(0.4, 0.3)
+	}
 	f := &Frame{
 		Camera: orbit.Camera(width, height), Look: lookOf(shown.Look, palette),
 		Quality: render.Quality{Samples: 8, DPI: dpi}, Width: width, Height: height,

@@ -262,9 +262,16 @@ func (u *ui) nextOperation(by int) {
 	u.chooseOperation(list[(at+by+len(list))%len(list)].Name)
 }
 
+// firstAngle (degrees) is φ for the operations of a linear molecule until a
+// person chooses another.
+const firstAngle = 50
+
 func (u *ui) chooseOperation(name string) {
 	s := u.now()
 	s.Operation, s.Moment = name, 0
+	if s.Angle == 0 && strings.Contains(name, "φ") {
+		s.Angle = firstAngle // by 0 nothing would be seen
+	}
 	u.do(study.StepOperation, s)
 	u.ledger.reveal("operation " + name)
 }
@@ -310,8 +317,8 @@ func (u *ui) toggleBasis(entry string) {
 	u.setBasis(list)
 }
 
-func (u *ui) removeBasis(i int) {
-	u.setBasis(slices.Delete(slices.Clone(u.now().Basis), i, i+1))
+func (u *ui) removeBasis(entry string) {
+	u.setBasis(slices.DeleteFunc(slices.Clone(u.now().Basis), func(s string) bool { return s == entry }))
 }
 
 // setBasis changes the basis. What was chosen among its functions no longer

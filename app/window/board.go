@@ -137,9 +137,11 @@ func (b *board) wrapped(t notation.Text, width float64, s style) []notation.Text
 			if part == "" {
 				continue
 			}
-			word = word.Then(notation.Text{{Text: part, Italic: r.Italic, Place: r.Place}})
-			if strings.HasSuffix(part, " ") {
-				end()
+			for _, piece := range b.fitting(part, width, s) {
+				word = word.Then(notation.Text{{Text: piece, Italic: r.Italic, Place: r.Place}})
+				if piece != part || strings.HasSuffix(piece, " ") {
+					end()
+				}
 			}
 		}
 	}
@@ -148,6 +150,29 @@ func (b *board) wrapped(t notation.Text, width float64, s style) []notation.Text
 		lines = append(lines, line)
 	}
 	return lines
+}
+
+// fitting cuts a word that is wider than a line, after a hyphen or a bracket
+// where it has one.
+func (b *board) fitting(word string, width float64, s style) []string {
+	wide := func(w string) bool { return b.measure(notation.Words(w), s) > width }
+	var out []string
+	for wide(word) {
+		runes := []rune(word)
+		n := len(runes) - 1
+		for n > 1 && wide(string(runes[:n])) {
+			n--
+		}
+		for cut := n; cut > n/2; cut-- {
+			if strings.ContainsRune("-)/", runes[cut-1]) {
+				n = cut
+				break
+			}
+		}
+		out = append(out, string(runes[:n]))
+		word = string(runes[n:])
+	}
+	return append(out, word)
 }
 
 // clipped is the longest beginning of a line that fits, with an ellipsis.

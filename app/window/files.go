@@ -191,7 +191,7 @@ func (u *ui) askPicture() {
 			r := request{shown: u.view.shown, sight: u.view.sight, width: 2 * u.view.width, height: 2 * u.view.height, dpi: 2 * u.view.dpi()}
 			go func() {
 				err := savePicture(path, r)
-				fyne.Do(func() { u.guard(func() { done(err) }) })
+				u.post(func() { u.guard(func() { done(err) }) })
 			}()
 		})
 }

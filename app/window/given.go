@@ -292,12 +292,12 @@ func (d *givenDrawing) functions() {
 		d.basisRow(r, s, known)
 	}
 	// What was typed and has no chip.
-	for i, entry := range s.Basis {
+	for _, entry := range s.Basis {
 		if !known[entry] {
 			w := d.board.measure(notation.Words(entry), d.plain)
 			d.board.text(pad, d.y+16, notation.Words(d.board.clipped(entry, d.width-32, d.plain)), d.plain)
 			d.chip(pad+min(w, d.width-32)+8, d.y, 24, notation.Words("×"), chip{
-				name: "remove " + entry, hint: "take it out of the basis", do: func() { d.removeBasis(i) },
+				name: "remove " + entry, hint: "take it out of the basis", do: func() { d.removeBasis(entry) },
 			})
 			d.y += chipHeight + 4
 		}

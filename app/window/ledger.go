@@ -7,8 +7,6 @@ import (
 	"math"
 	"strings"
 
-	"fyne.io/fyne/v2"
-
 	"lobewright/app/notation"
 	"lobewright/app/study"
 	"lobewright/app/work"
@@ -104,7 +102,7 @@ func (c *imageCache) update(u *ui) {
 		if err != nil {
 			return
 		}
-		fyne.Do(func() {
+		u.post(func() {
 			if c.wanted == b {
 				c.basis, c.representation, c.wanted = b, r, nil
 				u.ledger.Update()

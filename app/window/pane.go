@@ -3,8 +3,10 @@
 package window
 
 import (
+	"fmt"
 	"image"
 	"math"
+	"os"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -105,9 +107,20 @@ func (p *pane) generate(w, h int) image.Image {
 			b = p.lay()
 		}
 		p.decorate(b)
+		if measureSpots {
+			p.printSpots()
+		}
 		_ = b.paint(&p.renderer, p.image, float64(w)/b.width)
 	})
 	return p.image
+}
+
+func (p *pane) printSpots() {
+	at := fyne.CurrentApp().Driver().AbsolutePositionForObject(p)
+	z := p.zoom()
+	for _, s := range p.spots {
+		fmt.Fprintf(os.Stderr, "spot\t%s\t%.0f\t%.0f\n", s.name, float64(at.X)+z*(s.x+s.width/2), float64(at.Y)+z*(s.y+s.height/2))
+	}
 }
 
 // room is how much of the content is seen at once.
@@ -146,7 +159,16 @@ func (p *pane) decorate(b *board) {
 	}
 }
 
+// fresh lays the pane anew if what it shows has changed since it was drawn, so
+// that nobody clicks on what is no longer there.
+func (p *pane) fresh() {
+	if p.stale && p.Size().Width > 0 {
+		p.lay()
+	}
+}
+
 func (p *pane) spotAt(at fyne.Position) (spot, bool) {
+	p.fresh()
 	z := p.zoom()
 	x, y := float64(at.X)/z, float64(at.Y)/z
 	for i := len(p.spots) - 1; i >= 0; i-- {
@@ -158,6 +180,7 @@ func (p *pane) spotAt(at fyne.Position) (spot, bool) {
 }
 
 func (p *pane) spotNamed(name string) (spot, bool) {
+	p.fresh()
 	for _, s := range p.spots {
 		if s.name == name {
 			return s, true

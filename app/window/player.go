@@ -6,7 +6,6 @@ import (
 	"sync/atomic"
 	"time"
 
-	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/theme"
 
 	"lobewright/app/picture"
@@ -35,19 +34,19 @@ func (p *player) start() {
 	}
 	p.stop()
 	s := u.now()
-	if s.Moment >= 1 {
-		s.Moment = 0
-	}
 	if !u.motion {
 		u.history.Do(study.StepPlay, p.nextStill(s))
 		u.changed()
 		return
 	}
+	if s.Moment >= 1 {
+		s.Moment = 0
+	}
 	u.history.Begin(study.StepPlay)
 	u.history.Set(s)
 	p.playing = true
 	p.began = time.Now().Add(-picture.Elapsed(op, s.Moment))
-	p.clock = startClock(func() { u.guard(p.tick) })
+	p.clock = startClock(u.post, func() { u.guard(p.tick) })
 	p.label()
 }
 
@@ -139,7 +138,7 @@ type clock struct {
 	pending atomic.Bool
 }
 
-func startClock(tick func()) *clock {
+func startClock(post func(func()), tick func()) *clock {
 	c := &clock{done: make(chan struct{})}
 	go func() {
 		t := time.NewTicker(time.Second / 60)
@@ -150,7 +149,7 @@ func startClock(tick func()) *clock {
 				return
 			case <-t.C:
 				if c.pending.CompareAndSwap(false, true) {
-					fyne.Do(func() {
+					post(func() {
 						c.pending.Store(false)
 						select {
 						case <-c.done:
@@ -186,7 +185,7 @@ func (u *ui) glideFrom(from picture.Orbit) {
 	}
 	g := &glide{from: from, began: time.Now()}
 	u.glide = g
-	g.clock = startClock(func() {
+	g.clock = startClock(u.post, func() {
 		u.guard(func() {
 			if u.glide == g && time.Since(g.began) >= glideTime {
 				u.glide = nil
@@ -221,7 +220,7 @@ func (u *ui) fade() {
 	}
 	f := &fading{before: shown.Coefficients, began: time.Now()}
 	u.fading = f
-	f.clock = startClock(func() {
+	f.clock = startClock(u.post, func() {
 		u.guard(func() {
 			if u.fading == f && time.Since(f.began) >= fadeTime {
 				u.fading = nil

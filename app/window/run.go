@@ -68,7 +68,7 @@ func Run(ctx context.Context, o Options) (err error) {
 		return errors.New("the window cannot be opened: " + reason)
 	}
 	mark("the toolkit has a window")
-	u := newUI(a, win, kept, o.Version)
+	u := newUI(a, win, kept, o.Version, fyne.Do)
 	mark("the panes are made")
 	for _, n := range notes {
 		u.notice = n.Text
@@ -95,6 +95,7 @@ func Run(ctx context.Context, o Options) (err error) {
 	}
 	u.mark = mark
 	if measure {
+		measureSpots = true
 		go u.measure()
 	}
 	var failure error
@@ -194,6 +195,10 @@ func (l *toolkitLog) reason() string {
 
 func oneLine(s string) string { return strings.Join(strings.Fields(s), " ") }
 
+// measureSpots has panes print where their spots are, for whoever moves the
+// mouse by program.
+var measureSpots bool
+
 // measure prints how many frames were drawn and shown in each second that had
 // some.
 func (u *ui) measure() {
@@ -202,6 +207,10 @@ func (u *ui) measure() {
 		drawn := u.view.frames.count.Load()
 		fyne.Do(func() {
 			shown := u.view.shownCount
+			for name, o := range map[string]fyne.CanvasObject{"view": u.view, "scrub": u.scrub, "angle": u.angle, "typed": u.basis} {
+				at := fyne.CurrentApp().Driver().AbsolutePositionForObject(o)
+				fmt.Fprintf(os.Stderr, "spot\t%s\t%.0f\t%.0f\n", name, at.X+o.Size().Width/2, at.Y+o.Size().Height/2)
+			}
 			if drawn-last > 1 {
 				fmt.Fprintf(os.Stderr, "frames in a second: %d drawn, %d shown\n", drawn-last, shown-lastShown)
 			}

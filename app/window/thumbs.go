@@ -8,8 +8,6 @@ import (
 	"math"
 	"sync"
 
-	"fyne.io/fyne/v2"
-
 	"lobewright/app/picture"
 	"lobewright/assets"
 	"lobewright/render"
@@ -125,7 +123,7 @@ func (t *thumbs) work() {
 		if renderer.Draw(t.ctx, img, &f.Scene, f.Camera, f.Look, f.Quality, render.Band{}) != nil {
 			return
 		}
-		fyne.Do(func() {
+		t.u.post(func() {
 			if job.key.round == t.round {
 				t.images[job.key] = img
 				t.u.follows.Update()

@@ -6,6 +6,7 @@ import (
 	"fmt"
 	"os"
 	"runtime"
+	"runtime/debug"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -29,6 +30,7 @@ type ui struct {
 	app     fyne.App
 	win     fyne.Window
 	version string
+	post    func(func())
 
 	session *session.Session
 	history *study.History
@@ -70,15 +72,16 @@ const firstDemo = "square-plane"
 
 // newUI makes the window's content for an app. Nothing is computed or drawn
 // before the study is set.
-func newUI(app fyne.App, win fyne.Window, s *session.Session, version string) *ui {
-	u := &ui{app: app, win: win, version: version, session: s, state: &work.State{}}
+// post has a function run on the toolkit's goroutine.
+func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, post func(func())) *ui {
+	u := &ui{app: app, win: win, version: version, session: s, state: &work.State{}, post: post}
 	p := s.Preferences()
 	u.colours = look{chosen: p.Theme, dark: systemIsDark(app), scale: float32(p.Scale)}
 	u.motion = !p.NoMotion
 	app.Settings().SetTheme(u.colours)
 
 	u.history = study.NewHistory(study.Study{})
-	u.service = work.NewService(work.New(structure.Inputs{Demo: assets.Demos()}), fyne.Do, func(st *work.State) { u.guard(func() { u.deliver(st) }) })
+	u.service = work.NewService(work.New(structure.Inputs{Demo: assets.Demos()}), post, func(st *work.State) { u.guard(func() { u.deliver(st) }) })
 	u.hints = newHintBox(u)
 	u.thumbs = newThumbs(u)
 	u.player = newPlayer(u)
@@ -219,6 +222,7 @@ func (u *ui) commit() {
 // changed follows a change of the study.
 func (u *ui) changed() {
 	s := u.now()
+	u.hints.show("", fyne.Position{})
 	u.session.Keep(s)
 	u.service.Request(s)
 	u.show(false)
@@ -359,6 +363,7 @@ func (u *ui) guard(f func()) {
 }
 
 func (u *ui) failed(fault any) {
+	trace()
 	saved := "the study is saved"
 	if err := u.session.SaveNow(); err != nil {
 		saved = "the study could not be saved: " + err.Error()
@@ -368,8 +373,18 @@ func (u *ui) failed(fault any) {
 	u.given.Update()
 }
 
+// trace prints where a fault happened, for whoever looks for it.
+func trace() {
+	if os.Getenv("LOBEWRIGHT_MEASURE") != "" {
+		os.Stderr.Write(debug.Stack())
+	}
+}
+
 // failedAside is failed for other goroutines.
-func (u *ui) failedAside(fault any) { fyne.Do(func() { u.failed(fault) }) }
+func (u *ui) failedAside(fault any) {
+	trace()
+	u.post(func() { u.failed(fault) })
+}
 
 // hint shows a few words beside the pointer.
 func (u *ui) hint(text string, at fyne.Position) { u.hints.show(text, at) }

@@ -26,6 +26,7 @@ type viewport struct {
 	ring   *canvas.Rectangle // around the picture while it has the focus
 	frames *frames
 	guard  func(func())
+	post   func(func())
 
 	// What the picture shows; the owner sets them and calls ask.
 	shown picture.Shown
@@ -59,7 +60,7 @@ type viewport struct {
 }
 
 func newViewport(u *ui) *viewport {
-	v := &viewport{guard: u.guard, onHint: u.hint}
+	v := &viewport{guard: u.guard, post: u.post, onHint: u.hint}
 	v.raster = canvas.NewRaster(v.generate)
 	v.ring = canvas.NewRectangle(nil)
 	v.ring.StrokeWidth = 2
@@ -89,7 +90,7 @@ func (stacked) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.NewSize(120,
 // ready is called on the drawing goroutine. At most one refresh is waiting.
 func (v *viewport) ready() {
 	if v.posted.CompareAndSwap(false, true) {
-		fyne.Do(func() {
+		v.post(func() {
 			v.posted.Store(false)
 			v.raster.Refresh()
 		})
