@@ -48,7 +48,6 @@ func (t *tile) resolve(out image.Rectangle) {
 	at := d.Rect.Min.Sub(f.rect.Min)
 	gp := f.groundPixel()
 	ground := binary.LittleEndian.Uint32(gp[:])
-	back := f.ground
 	n := 1 << t.lg
 	full := uint32(1)<<n - 1
 	inked := f.ink.half > 0
@@ -76,13 +75,15 @@ func (t *tile) resolve(out image.Rectangle) {
 			}
 			var c [4]float32
 			if t.anyFrag && t.first[i] >= 0 {
-				if fr := &t.frags[t.first[i]]; any == 0 && !line && fr.next < 0 && fr.mask == full {
-					r, g, b, a := t.fragColor(fr, px, py)
-					w := (1 - a) * back[3]
-					c = [4]float32{r*a + w*back[0], g*a + w*back[1], b*a + w*back[2], a + w}
-				} else {
-					c = t.blend(keys, i, px, py)
+				if any == 0 && !line {
+					if v, ok := t.evenStack(i, full); ok {
+						binary.LittleEndian.PutUint32(o, v)
+						i++
+						px++
+						continue
+					}
 				}
+				c = t.blend(keys, i, px, py)
 			} else if any == 0 {
 				if !line {
 					binary.LittleEndian.PutUint32(o, ground)
@@ -427,9 +428,10 @@ func (t *tile) blendSamples(list []int32, n, px, py int, line, lineNear float32)
 // fragColor returns the colour and opacity of a fragment.
 func (t *tile) fragColor(fr *frag, px, py int) (r, g, b, a float32) {
 	p := &t.f.parts[t.slots[fr.slot].part]
-	if p.form == formDisc && t.f.light.style != Lit && p.hatch.period == 0 && !p.flat {
-		r, g, b = t.paneColor(p, px, py)
-		return r, g, b, p.alpha
+	if p.form == formDisc && t.slots[fr.slot].batch != -2 {
+		if c := &t.panes[t.slots[fr.slot].tri]; c.even {
+			return c.r, c.g, c.b, p.alpha
+		}
 	}
 	if p.form == formLabel {
 		return t.labelColor(p, px, py)
@@ -443,25 +445,88 @@ func (t *tile) fragColor(fr *frag, px, py int) (r, g, b, a float32) {
 	return r, g, b, p.alpha
 }
 
-// paneColor is shadePlace for a disc in the looks Plain and Ink: its normal is
-// the same everywhere.
-func (t *tile) paneColor(p *part, px, py int) (r, g, b float32) {
+// paneColor is the colour of a translucent disc on a canvas; even tells that
+// it is the same all over.
+type paneColor struct {
+	r, g, b float32
+	even    bool
+}
+
+// evenColor finds the colour of a disc when it is even on the canvas: without
+// hatching, seen from one side and away from the highlight.
+func (t *tile) evenColor(p *part) (c paneColor) {
 	d := &t.f.discs[p.index]
 	l := &t.f.light
-	n := &d.normal
-	va, vb := l.sightAt(float32(px+t.x)+0.5, float32(py+t.y)+0.5)
-	nl, nv := d.light, n[0]*va+n[1]*vb+n[2]
-	if nv < 0 {
-		nl, nv = -nl, -nv
+	if p.hatch.period > 0 {
+		return c
 	}
-	if l.style == Ink {
-		m := l.tones[0]
-		for i := 1; i < l.nTones && nl >= l.edges[i-1]; i++ {
-			m = l.tones[i]
+	front, back := 0, 0
+	for _, e := range [4][2]int{{0, 0}, {t.side, 0}, {0, t.side}, {t.side, t.side}} {
+		va, vb := l.sightAt(float32(t.x+e[0]), float32(t.y+e[1]))
+		nl, nv := d.light, d.normal[0]*va+d.normal[1]*vb+d.normal[2]
+		if nv < 0 {
+			nl, nv = -nl, -nv
+			back++
+		} else {
+			front++
 		}
-		return p.col[0] * m, p.col[1] * m, p.col[2] * m
+		if nl+nv >= l.glintSum && !p.flat {
+			return c
+		}
 	}
-	h := l.gleam(va, vb, nl, nv)
-	k := l.ambient + l.diffuse*max(nl, 0)
-	return p.col[0]*k + h, p.col[1]*k + h, p.col[2]*k + h
+	if front > 0 && back > 0 {
+		return c
+	}
+	c.even = true
+	half := float32(t.side) / 2
+	c.r, c.g, c.b = t.shadePlace(uint32(len(t.slots)-1), half, half)
+	return c
+}
+
+const maxEven = 4
+
+// evenStack returns the pixel of a stack of even discs in front of the
+// ground. Neighbouring pixels mostly show the same stack, so that the last
+// one is kept.
+func (t *tile) evenStack(i int, full uint32) (uint32, bool) {
+	var near [maxEven]float32
+	var slope [maxEven]float32
+	var order [maxEven]uint32
+	n := 0
+	for k := t.first[i]; k >= 0; {
+		fr := &t.frags[k]
+		s := &t.slots[fr.slot]
+		if n == maxEven || fr.mask != full || s.batch != -1 || t.f.parts[s.part].form != formDisc || !t.panes[s.tri].even {
+			return 0, false
+		}
+		j := n
+		for ; j > 0 && fr.n > near[j-1]; j-- {
+			near[j], slope[j], order[j] = near[j-1], slope[j-1], order[j-1]
+		}
+		near[j], slope[j], order[j] = fr.n, abs32(fr.nx)+abs32(fr.ny), fr.slot
+		n++
+		k = fr.next
+	}
+	same := n == t.lastCount
+	for j := range n {
+		if j > 0 && near[j-1]-near[j] < (slope[j]+slope[j-1])/2 {
+			return 0, false // they may cross here
+		}
+		same = same && order[j] == t.last[j]
+	}
+	if same {
+		return t.lastPixel, true
+	}
+	var c [4]float32
+	left := float32(1)
+	for j := range n {
+		p := &t.panes[t.slots[order[j]].tri]
+		w := left * t.f.parts[t.slots[order[j]].part].alpha
+		c[0], c[1], c[2], left = c[0]+w*p.r, c[1]+w*p.g, c[2]+w*p.b, left-w
+	}
+	g := &t.f.ground
+	w := left * g[3]
+	v := t.f.pixel(min(c[0]+w*g[0], 1), min(c[1]+w*g[1], 1), min(c[2]+w*g[2], 1), 1-left+w)
+	t.last, t.lastCount, t.lastPixel = order, n, binary.LittleEndian.Uint32(v[:])
+	return t.lastPixel, true
 }

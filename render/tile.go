@@ -29,16 +29,20 @@ type tile struct {
 	anyFrag     bool
 	solidAny    bool // something opaque is on the canvas, or there is a far limit
 
-	kernel  kernel
-	sky     skyKernel
-	surf    surf
-	free    bool // look beyond the edges of a triangle
-	deep    bool // shading needs the nearness
-	inks    []inkFrag
-	samples [16][4]float32
-	sorted  []int32
-	colors  [][4]float32
-	lines   inkTile
+	kernel    kernel
+	sky       skyKernel
+	surf      surf
+	free      bool // look beyond the edges of a triangle
+	deep      bool // shading needs the nearness
+	inks      []inkFrag
+	samples   [16][4]float32
+	panes     []paneColor     // of the translucent discs
+	last      [maxEven]uint32 // the even discs of the pixel before, from the front
+	lastCount int
+	lastPixel uint32
+	sorted    []int32
+	colors    [][4]float32
+	lines     inkTile
 }
 
 // slot says what a sample shows: a triangle of a batch, a kind of surface of
@@ -122,6 +126,8 @@ func (t *tile) reset() {
 	t.slots = append(t.slots[:0], slot{part: -1})
 	t.frags = t.frags[:0]
 	t.inks = t.inks[:0]
+	t.panes = t.panes[:0]
+	t.lastCount = 0
 	t.anyFrag = false
 }
 
@@ -203,7 +209,8 @@ func (t *tile) translucent(it *item, p *part) {
 		}
 		t.body(&f.quadrics[it.first], p, s, true)
 	case formDisc:
-		t.slots = append(t.slots, slot{it.part, -1, 0})
+		t.slots = append(t.slots, slot{it.part, -1, uint32(len(t.panes))})
+		t.panes = append(t.panes, t.evenColor(p))
 		t.plate(&f.discs[it.first], p, true)
 	case formStroke:
 		t.slots = append(t.slots, slot{it.part, -1, uint32(it.first)})
