@@ -111,10 +111,12 @@ func check(points []Point, links []Link, tolerance float64) error {
 }
 
 func detectAtom(p Point, tolerance float64) *Fit {
-	return &Fit{
+	fit := &Fit{
 		Setting: newSetting(kind{family: spherical}), Origin: p.Position, Rotation: mgl64.Ident3(),
 		Ideal: []mgl64.Vec3{{}}, fromDefault: mgl64.Ident3(), Tolerance: tolerance, Rule: Rule{Name: "default", Z: ZInput, X: XInput, Sources: []string{SourceOwn}},
 	}
+	fit.keep(&cloud{at: []mgl64.Vec3{{}}, centre: p.Position})
+	return fit
 }
 
 // detectLinear tells C∞v from D∞h and puts the molecule on z.
@@ -158,6 +160,7 @@ func (c *cloud) detectLinear(axis mgl64.Vec3, links []Link, tolerance float64) *
 	fit.Setting = newSetting(symbol)
 	x := perpendicular(axis)
 	f.linear(fit, mgl64.Mat3FromRows(x, axis.Cross(x), axis), c.centre, central)
+	fit.keep(c)
 	return fit
 }
 

@@ -63,4 +63,6 @@ type Fit struct {
 	// fromDefault takes the frame of the default rules to this one.
 	fromDefault mgl64.Mat3
 	defaults    Rule // the rule of that frame, where it is not this one
+	least       leastSquares
+	input       []mgl64.Vec3 // the points, in the input's axes
 }

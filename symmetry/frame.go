@@ -110,6 +110,7 @@ func (c *cloud) frame(p *placed, links []Link, tolerance float64) *Fit {
 			break
 		}
 	}
+	fit.keep(c)
 	return fit
 }
 

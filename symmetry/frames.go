@@ -58,7 +58,8 @@ type Frame struct {
 
 // Frames lists every choice of axes that a rule in use gives for the points,
 // the one in force first, then the default and the others, at the end the
-// input's own axes (left out where they are those in force).
+// input's own axes (left out where they are those in force, and for a linear
+// molecule that does not lie along the z of the input).
 func (f *Fit) Frames() []Frame {
 	back := f.fromDefault.Transpose()
 	out := []Frame{{f.Rule, mgl64.Ident3()}}
@@ -72,8 +73,8 @@ func (f *Fit) Frames() []Frame {
 	for _, r := range f.Setting.kind.rules(f.defaultRule()) {
 		add(r.Rule, r.Turn)
 	}
-	if !f.Setting.Infinite() {
-		add(Rule{FrameFile, ZInput, XInput, []string{SourceOwn}}, f.Rotation.Transpose().Mul3(f.fromDefault))
+	if rule, turn := f.inputFrame(); !f.Setting.Infinite() || math.Abs(turn.At(2, 2)) == 1 {
+		add(rule, turn)
 	}
 	return out
 }
@@ -195,12 +196,15 @@ func (f *Fit) In(frame Frame) *Fit {
 	g.defaults = f.defaultRule()
 	g.Rule = frame.Rule
 	g.fromDefault = orthonormal(frame.Turn.Mul3(f.fromDefault))
-	g.Rotation = orthonormal(frame.Turn.Mul3(f.Rotation))
 	g.Ideal = make([]mgl64.Vec3, len(f.Ideal))
 	for k, v := range f.Ideal {
 		g.Ideal[k] = clean(frame.Turn.Mul3x1(v))
 	}
+	g.placeInInput()
 	g.Setting = f.Setting.Turned(frame.Turn)
+	if frame.Rule.Name == FrameFile && frame.Rule.X != XInputLabels && !f.Setting.kind.keepsLabels(g.fromDefault) {
+		g.Setting = turnedSetting(f.Setting.kind, g.fromDefault)
+	}
 	if frame.Rule.Name != FrameDefault {
 		g.Ties = nil
 		for _, t := range f.Ties {

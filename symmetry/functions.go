@@ -222,7 +222,7 @@ func (f functionFamily) sets(ir *Irrep) [][]*mat.VecDense {
 		if dependent(kept, partners[0].ColView(seed)) {
 			continue
 		}
-		scale := 1 / smallest(partners, seed)
+		scale := 1 / unit(partners, seed)
 		if partners[0].At(seed, seed) < 0 {
 			scale = -scale
 		}
@@ -273,15 +273,23 @@ func dependent(kept []*mat.VecDense, v mat.Vector) bool {
 	return mat.Norm(rest, 2) < negligible
 }
 
-// smallest is the least size, other than zero, of the coefficients that the
-// partners made from a seed have.
-func smallest(partners []*mat.Dense, seed int) float64 {
-	least := math.Inf(1)
+// unit is the size that is made 1 among the coefficients that the partners made
+// from a seed have: the least other than zero, if all others are square roots
+// of integers beside it; else the largest, and the others become decimals.
+func unit(partners []*mat.Dense, seed int) float64 {
+	least, largest := math.Inf(1), 0.0
+	var sizes []float64
 	for _, p := range partners {
 		for i, rows := 0, p.RawMatrix().Rows; i < rows; i++ {
 			if a := math.Abs(p.At(i, seed)); a > negligible {
-				least = math.Min(least, a)
+				least, largest = math.Min(least, a), math.Max(largest, a)
+				sizes = append(sizes, a)
 			}
+		}
+	}
+	for _, a := range sizes {
+		if multiple(a/least) == "" {
+			return largest
 		}
 	}
 	return least
@@ -317,7 +325,7 @@ func combination(list []named, v *mat.VecDense) string {
 		}
 		switch a := math.Abs(c); {
 		case multiple(a) == "":
-			b.WriteString(strconv.FormatFloat(a, 'f', 4, 64))
+			b.WriteString(strconv.FormatFloat(a, 'f', -1, 64))
 		case multiple(a) != "1":
 			b.WriteString(multiple(a))
 		}
@@ -326,7 +334,7 @@ func combination(list []named, v *mat.VecDense) string {
 	factor := multiple(common)
 	switch {
 	case factor == "":
-		factor = strconv.FormatFloat(common, 'f', 4, 64)
+		factor = strconv.FormatFloat(common, 'f', -1, 64)
 	case factor == "1":
 		factor = ""
 	}
@@ -357,7 +365,7 @@ func printOrder(list []named) []int {
 // "" for any other.
 func multiple(v float64) string {
 	square := int(math.Round(v * v))
-	if square == 0 || math.Abs(v*v-float64(square)) > 1e-6 {
+	if square == 0 || math.Abs(v*v-float64(square)) > 1e-8 {
 		return ""
 	}
 	whole := 1

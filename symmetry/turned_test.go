@@ -4,7 +4,6 @@ import (
 	"fmt"
 	"math"
 	"math/rand"
-	"strings"
 	"testing"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -106,14 +105,10 @@ func checkRepresentation(t *testing.T, what string, s *Setting, ir Irrep) {
 	}
 }
 
-// checkFunctions evaluates the printed functions; those with decimals hold to
-// four of them.
+// checkFunctions evaluates the printed functions.
 func checkFunctions(t *testing.T, what string, s *Setting, ir Irrep) {
 	t.Helper()
-	limit := 1e-9
-	if strings.Contains(fmt.Sprint(ir.Functions), ".") {
-		limit = 5e-3
-	}
+	const limit = 1e-9
 	for set := range ir.Functions[0] {
 		for r, o := range s.Operations {
 			for k := range ir.Functions {

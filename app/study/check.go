@@ -38,7 +38,10 @@ func (s Study) Check() error {
 	c.text("core", s.Core, maxSelection)
 	c.text("ignore", s.Ignore, maxSelection)
 	c.number("tolerance", s.Tolerance, 0, math.MaxFloat64)
+	c.text("as", s.As, maxName)
 	c.text("frame", s.Frame, maxName)
+	c.text("z", s.Z, maxName)
+	c.text("x", s.X, maxName)
 	c.basis(s.Basis)
 	c.atoms(s.Atoms)
 	p := s.Projection

@@ -29,8 +29,17 @@ type Study struct {
 	// Tolerance (Å) is the farthest that a core atom may lie from its ideal
 	// place. Zero stands for DefaultTolerance.
 	Tolerance float64 `record:"tolerance"`
+	// As chooses one of the groups that the structure nearly has, in the place
+	// of the one that it has within the tolerance: "D4h", or "D4h:2" for the
+	// second embedding.
+	As string `record:"as"`
 	// Frame names the rule that puts the axes; empty: the default rule.
 	Frame string `record:"frame"`
+	// Z and X lay these axes without a rule: an operation, an atom (from the
+	// origin to it), two atoms ("3,5": from one to the other) or a vector of
+	// the input ("0,1,1").
+	Z string `record:"z"`
+	X string `record:"x"`
 	// Basis holds the selections of functions, such as "Cl:sigma".
 	Basis []string `record:"basis"`
 	// Atoms are those chosen in the picture, rising. They decide nothing.
@@ -183,17 +192,17 @@ func (s Study) Equal(t Study) bool {
 
 // A flat is a study without its lists, which == can compare.
 type flat struct {
-	structure, coordinates, core, ignore, frame, operation string
-	tolerance, moment, angle                               float64
-	projection                                             Projection
-	camera                                                 Camera
-	look                                                   Look
-	figure                                                 Figure
+	structure, coordinates, core, ignore, as, frame, z, x, operation string
+	tolerance, moment, angle                                         float64
+	projection                                                       Projection
+	camera                                                           Camera
+	look                                                             Look
+	figure                                                           Figure
 }
 
 func (s Study) flat() flat {
 	return flat{
-		s.Structure, s.Coordinates, s.Core, s.Ignore, s.Frame, s.Operation,
+		s.Structure, s.Coordinates, s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.Operation,
 		s.Tolerance, s.Moment, s.Angle, s.Projection, s.Camera, s.Look, s.Figure,
 	}
 }

@@ -15,7 +15,7 @@ import (
 
 // full has no choice at its default.
 var full = Study{
-	Structure: "pasted", Coordinates: "1\nxenon\nXe 0 0 0\n", Core: "1-5", Ignore: "H", Tolerance: 0.05, Frame: "default",
+	Structure: "pasted", Coordinates: "1\nxenon\nXe 0 0 0\n", Core: "1-5", Ignore: "H", Tolerance: 0.05, As: "D4h:2", Frame: "default", Z: "C4(z)", X: "2",
 	Basis: []string{"Cl:sigma", "Cl:pi"}, Atoms: []int{2, 4},
 	Projection: Projection{Function: 3, Irrep: "Eu", Copy: 2, Partner: 1, Subject: SubjectFunction, Element: [2]int{2, 1}, Character: true},
 	Operation:  "C4^3(z)", Moment: 0.25, Angle: 60,
@@ -36,7 +36,10 @@ const fullText = `{
   "core": "1-5",
   "ignore": "H",
   "tolerance": 0.05,
+  "as": "D4h:2",
   "frame": "default",
+  "z": "C4(z)",
+  "x": "2",
   "basis": ["Cl:sigma", "Cl:pi"],
   "atoms": [2, 4],
   "projection": {
@@ -138,7 +141,10 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 		"core":                  func(s *Study) { s.Core = strings.Repeat("1,", 1<<18) },
 		"ignore":                func(s *Study) { s.Ignore = "\xff" },
 		"tolerance":             func(s *Study) { s.Tolerance = -1 },
+		"as":                    func(s *Study) { s.As = "\x00" },
 		"frame":                 func(s *Study) { s.Frame = "\x00" },
+		"z":                     func(s *Study) { s.Z = "\x00" },
+		"x":                     func(s *Study) { s.X = "\x00" },
 		"basis":                 func(s *Study) { s.Basis = make([]string, 300) },
 		"basis[2]":              func(s *Study) { s.Basis = []string{"a", "\r"} },
 		"atoms[2]":              func(s *Study) { s.Atoms = []int{3, 3} },
@@ -181,9 +187,9 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 
 func TestAHandWrittenFileIsToldWhereItIsWrong(t *testing.T) {
 	for text, want := range map[string]string{
-		strings.Replace(fullText, "0.25", "25", 1):               "f:26: moment: 25 is too large; the most is 1",
-		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:38: look.style: "gaudy" is not known; there are lit, ink`,
-		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:33: camera.zoom: a number is due, not a list",
+		strings.Replace(fullText, "0.25", "25", 1):               "f:29: moment: 25 is too large; the most is 1",
+		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:41: look.style: "gaudy" is not known; there are lit, ink`,
+		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:36: camera.zoom: a number is due, not a list",
 		fullText[:300]: "f:19: the file is cut off here",
 		strings.Replace(fullText, `"version": 1`, `"version": 2`, 1): "f:2: version: 2 is newer than this program, which reads up to version 1",
 	} {
@@ -283,7 +289,8 @@ func anyStudy(t *rapid.T) Study {
 	flag := rapid.Bool()
 	s := Study{
 		Structure: name.Draw(t, "structure"), Coordinates: rapid.String().Draw(t, "coordinates"),
-		Core: name.Draw(t, "core"), Ignore: name.Draw(t, "ignore"), Tolerance: number(0, 1e3), Frame: name.Draw(t, "frame"),
+		Core: name.Draw(t, "core"), Ignore: name.Draw(t, "ignore"), Tolerance: number(0, 1e3), As: name.Draw(t, "as"),
+		Frame: name.Draw(t, "frame"), Z: name.Draw(t, "z"), X: name.Draw(t, "x"),
 		Basis: rapid.SliceOfN(name, 0, 4).Draw(t, "basis"),
 		Projection: Projection{
 			count.Draw(t, "function"), name.Draw(t, "irrep"), count.Draw(t, "copy"), count.Draw(t, "partner"),
