@@ -157,3 +157,35 @@ func alignPair(t *mat.Dense, here *Irrep, share []float64) *mat.Dense {
 	out.Add(out, &tj)
 	return out
 }
+
+// ByPowers tells, irrep by irrep, whose characters are those of this one for
+// the k-th powers of the operations: the name that it has where the k-th power
+// of every rotation is taken for the rotation itself. k must be prime to the
+// order of every operation; else it panics.
+func (s *Setting) ByPowers(k int) []int {
+	powers := make([]int, len(s.Classes)) // class → that of the powers
+	for c, class := range s.Classes {
+		p := 0
+		for range k {
+			p = s.Product(class.Members[0], p)
+		}
+		powers[c] = s.Operations[p].Class
+	}
+	out := make([]int, len(s.Irreps))
+	for i, ir := range s.Irreps {
+		out[i] = -1
+		for j, other := range s.Irreps {
+			same := ir.Dimension == other.Dimension
+			for c := range s.Classes {
+				same = same && math.Abs(other.Characters[c]-ir.Characters[powers[c]]) < 1e-6
+			}
+			if same {
+				out[i] = j
+			}
+		}
+		if out[i] < 0 {
+			panic("symmetry: powers that are no relabelling of " + s.Symbol)
+		}
+	}
+	return out
+}

@@ -273,9 +273,14 @@ func dependent(kept []*mat.VecDense, v mat.Vector) bool {
 	return mat.Norm(rest, 2) < negligible
 }
 
+// mostUnder bounds the square of the number that the least coefficient of a set
+// becomes; harmonics in the axes of regular polyhedra need no more.
+const mostUnder = 400
+
 // unit is the size that is made 1 among the coefficients that the partners made
-// from a seed have: the least other than zero, if all others are square roots
-// of integers beside it; else the largest, and the others become decimals.
+// from a seed have: the one by which all become square roots of integers, the
+// least of them as small as can be; else the largest coefficient, and the
+// others become decimals.
 func unit(partners []*mat.Dense, seed int) float64 {
 	least, largest := math.Inf(1), 0.0
 	var sizes []float64
@@ -287,12 +292,17 @@ func unit(partners []*mat.Dense, seed int) float64 {
 			}
 		}
 	}
-	for _, a := range sizes {
-		if multiple(a/least) == "" {
-			return largest
+next:
+	for under := 1; under <= mostUnder; under++ {
+		u := least / math.Sqrt(float64(under))
+		for _, a := range sizes {
+			if multiple(a/u) == "" {
+				continue next
+			}
 		}
+		return u
 	}
-	return least
+	return largest
 }
 
 // combination prints a combination of named functions: 2z2-x2-y2, √3(x2-y2).

@@ -319,10 +319,14 @@ func (e *expression) factor() float64 {
 }
 
 func (e *expression) number() float64 {
-	n := 0
-	for r := e.peek(); r >= '0' && r <= '9'; r = e.peek() {
-		n = 10*n + int(r-'0')
+	e.peek()
+	start := e.at
+	for e.at < len(e.text) && (e.text[e.at] >= '0' && e.text[e.at] <= '9' || e.text[e.at] == '.') {
 		e.at++
 	}
-	return float64(n)
+	n, err := strconv.ParseFloat(string(e.text[start:e.at]), 64)
+	if err != nil {
+		e.t.Fatalf("%q: %v", string(e.text), err)
+	}
+	return n
 }

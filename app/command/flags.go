@@ -17,7 +17,18 @@ func groupFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.StringVar(&s.Core, "core", "", "`ATOMS` that decide the group, such as Cu,O or 1-5 (default all)")
 	flags.StringVar(&s.Ignore, "ignore", "", "`ATOMS` that do not decide the group, such as H")
 	flags.Var(&positive{&s.Tolerance, study.DefaultTolerance}, "tolerance", "how far an atom may lie from its ideal place, a `LENGTH` in Å")
-	flags.StringVar(&s.Frame, "frame", "", "`RULE` that puts the axes (default \"default\")")
+	flags.StringVar(&s.As, "as", "", "take the structure for `GROUP`, one that it nearly has: D4h, or D4h:2 for the second as near lists them")
+	flags.StringVar(&s.Frame, "frame", "", "`RULE` that puts the axes; the command frames lists those of a molecule (default \"default\")")
+	flags.StringVar(&s.Z, "z", "", "lay z along `WHAT`: an operation, an atom (3), from atom to atom (3,5) or a vector of the input (0,1,1)")
+	flags.StringVar(&s.X, "x", "", "lay x along `WHAT`, as for z")
+}
+
+// checkFrame refuses two ways to lay the axes at once.
+func checkFrame(s *study.Study) error {
+	if s.Frame != "" && (s.Z != "" || s.X != "") {
+		return usagef("--frame and --z or --x exclude each other: a rule lays the axes, or you do")
+	}
+	return nil
 }
 
 // basisFlag is the selection of functions.
@@ -33,6 +44,9 @@ func jsonFlag(flags *pflag.FlagSet, wanted *bool) {
 // checkBasis refuses selections that cannot be read before anything is
 // computed.
 func checkBasis(cmd *cobra.Command, s *study.Study, required bool) error {
+	if err := checkFrame(s); err != nil {
+		return err
+	}
 	if required && len(s.Basis) == 0 {
 		return usagef("no functions are chosen: give --on ATOMS:FUNCTIONS, such as --on Cl:sigma; see %q", cmd.CommandPath()+" --help")
 	}

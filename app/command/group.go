@@ -28,6 +28,9 @@ operation, the classes, and the irreps with their characters and matrices.
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			s.Structure = args[0]
+			if err := checkFrame(&s); err != nil {
+				return err
+			}
 			g, err := p.group(cmd.Context(), s)
 			if err != nil {
 				return err

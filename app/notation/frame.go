@@ -62,6 +62,19 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 		z = "z along the molecular axis"
 	case symmetry.ZInput:
 		z = "x, y and z as in the input"
+	case symmetry.ZC3Axis:
+		z = "z along a C3"
+	case symmetry.ZC2Axis:
+		z = "z along a C2" + rest("one that is no power of a C4")
+	case symmetry.ZC5Axis:
+		z = "z along a C5"
+	case symmetry.ZExplicit:
+		z = "z and x as given"
+		if name := axisName(fit.Setting); name != "C1" {
+			z += rest("z along " + name)
+		}
+	case symmetry.XPermuted:
+		z = permutation(fit.Rule.Name)
 	default:
 		z = fit.Rule.Z
 	}
@@ -84,11 +97,53 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 		x = "an atom of the first set on threefold axes lies along (1, 1, 1)"
 	case symmetry.XFree:
 		x = "x in any direction square to it"
-	case symmetry.XEquivalent, symmetry.XInput, "":
+	case symmetry.XPlaneXZ:
+		x = "xz is the plane with most atoms" + rest("then most bonds")
+	case symmetry.XBetween:
+		x = "x between the atoms" + rest(betweenWhat(fit.Setting))
+	case symmetry.XC2OnY:
+		x = "y along the C2 that the default rule puts on x"
+	case symmetry.XSigmaYZ:
+		x = "yz is the σv plane that the default rule puts in xz"
+	case symmetry.XSigmaDXZ:
+		x = "xz is a σd plane" + rest("the C2′ lie between the planes")
+	case symmetry.XExchanged:
+		x = "x and y exchanged" + rest("turned by 90° about z from the default")
+	case symmetry.XC2Across:
+		x = "x along a C2 square to it"
+	case symmetry.XHoldsC2:
+		x = "xz holds the axis that the default rule puts on z"
+	case symmetry.XOtherSetting:
+		x = "turned by 90° about z from the default" + rest("C5 axes along (±(1 + √5)/2, 0, ±1) and cyclic permutations")
+	case symmetry.XInputLabels:
+		x = "the axes of the group lie along them and the irreps are labelled by them"
+	case symmetry.XInput:
+		if fit.Rule.Name == symmetry.FrameFile {
+			x = "the irreps are labelled as by the default rule"
+		}
+	case symmetry.XEquivalent, symmetry.XExplicit, symmetry.XPermuted, "":
 	default:
 		x = fit.Rule.X
 	}
 	return z, x
+}
+
+// betweenWhat says which elements of an even group lie between the atoms.
+func betweenWhat(s *symmetry.Setting) string {
+	if strings.HasSuffix(s.Symbol, "v") {
+		return "xz is the σ plane that the default rule calls σd"
+	}
+	return "along the C2 that the default rule calls C2″"
+}
+
+// permutation says, of a rule for D2 or D2h, which axes of the default rule
+// become x, y and z.
+func permutation(name string) string {
+	axes := strings.TrimPrefix(name, "axes-")
+	if len(axes) != 3 {
+		return name
+	}
+	return fmt.Sprintf("x, y and z are the %c, %c and %c of the default rule", axes[0], axes[1], axes[2])
 }
 
 // axisName names the axis along z: "C4", or "S4" where an improper rotation

@@ -1,6 +1,8 @@
 package notation
 
 import (
+	"regexp"
+	"strconv"
 	"strings"
 	"unicode/utf8"
 )
@@ -100,7 +102,7 @@ func Polynomial(s string) Text { return polynomialRuns(s, OnLine) }
 func polynomialRuns(s string, place Place) Text {
 	var t Text
 	afterVariable := false
-	for _, r := range s {
+	for _, r := range decimals.ReplaceAllStringFunc(s, roundedDecimal) {
 		switch {
 		case strings.ContainsRune("xyzR", r):
 			t = t.add(Run{Text: string(r), Italic: true, Place: place})
@@ -116,6 +118,17 @@ func polynomialRuns(s string, place Place) Text {
 		}
 	}
 	return rotations(t)
+}
+
+// decimals are coefficients that have no closed form.
+var decimals = regexp.MustCompile(`\d+\.\d+`)
+
+func roundedDecimal(s string) string {
+	x, err := strconv.ParseFloat(s, 64)
+	if err != nil {
+		return s
+	}
+	return strconv.FormatFloat(x, 'f', 3, 64)
 }
 
 // power raises a digit. Within an index there is no second level of runs, so
@@ -156,3 +169,11 @@ func leadingDigits(s string) string { return leadingLetters(s, "0123456789") }
 func leadingLetters(s, set string) string {
 	return s[:len(s)-len(strings.TrimLeft(s, set))]
 }
+
+// PlainLabel writes a label in the plain characters of the contract, however it
+// was typed: typographic primes, subscripts, a double quote for two primes.
+func PlainLabel(s string) string { return plainLabel.Replace(s) }
+
+var plainLabel = strings.NewReplacer(
+	"″", "''", "\"", "''", "′", "'", "’", "'", "−", "-", "⁺", "+", "⁻", "-",
+	"₁", "1", "₂", "2", "₃", "3", "₄", "4", "₅", "5", "₆", "6", "₇", "7", "₈", "8", "₉", "9", "₀", "0")

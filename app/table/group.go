@@ -91,21 +91,29 @@ func Characters(s *symmetry.Setting) Table {
 	return t
 }
 
+// longestSet is how many characters the functions of all partners may have. In
+// axes that are not those of the group some have hundreds; the JSON has them.
+const longestSet = 80
+
 // functions writes what transforms like an irrep: x²−y², (x, y).
 func functions(irrep symmetry.Irrep) string {
 	if len(irrep.Functions) == 0 {
 		return ""
 	}
-	sets := make([]string, len(irrep.Functions[0]))
-	for j := range sets {
+	var sets []string
+	for j := range irrep.Functions[0] {
 		partners := make([]string, len(irrep.Functions))
 		for k, list := range irrep.Functions {
 			partners[k] = notation.PlainPolynomial(list[j])
 		}
-		sets[j] = strings.Join(partners, ", ")
+		set := strings.Join(partners, ", ")
 		if len(partners) > 1 {
-			sets[j] = "(" + sets[j] + ")"
+			set = "(" + set + ")"
 		}
+		if notation.Width(set) > longestSet {
+			return strings.Join(append(sets, "…"), "  ")
+		}
+		sets = append(sets, set)
 	}
 	return strings.Join(sets, "  ")
 }

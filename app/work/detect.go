@@ -8,12 +8,9 @@ import (
 	"lobewright/symmetry"
 )
 
-// detect finds the group of the core. Kinds are atomic numbers: only atoms of
-// one element are carried into each other.
-func detect(read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
-	if s.Frame != "" && s.Frame != "default" {
-		return nil, blame(StageGroup, ConcernFrame, fmt.Errorf("frame %q is not known; there is one: default", s.Frame))
-	}
+// points are the core atoms as the search for symmetry sees them. Kinds are
+// atomic numbers: only atoms of one element are carried into each other.
+func points(read *Structure, core []int) ([]symmetry.Point, []symmetry.Link) {
 	points := make([]symmetry.Point, len(core))
 	place := make(map[int]int, len(core)) // atom → point
 	for k, i := range core {
@@ -29,6 +26,12 @@ func detect(read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
 			links = append(links, symmetry.Link{i, j})
 		}
 	}
+	return points, links
+}
+
+// detect finds the group of the core in its default frame.
+func detect(read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
+	points, links := points(read, core)
 	fit, err := symmetry.Detect(points, links, symmetry.Options{Tolerance: s.TheTolerance()})
 	var close *symmetry.CloseError
 	if errors.As(err, &close) {

@@ -21,12 +21,12 @@ func (w *Work) keyOfStructure(s study.Study) structureKey {
 
 type groupKey struct {
 	structureKey
-	core, ignore, frame string
-	tolerance           float64
+	core, ignore, as, frame, z, x string
+	tolerance                     float64
 }
 
 func (w *Work) keyOfGroup(s study.Study) groupKey {
-	return groupKey{w.keyOfStructure(s), s.Core, s.Ignore, s.Frame, s.TheTolerance()}
+	return groupKey{w.keyOfStructure(s), s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.TheTolerance()}
 }
 
 type basisKey struct {

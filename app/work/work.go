@@ -31,6 +31,7 @@ type Work struct {
 	mu              sync.Mutex
 	reopened        stage[structureKey, *Structure]
 	structures      stage[structureKey, *Structure]
+	ladders         stage[ladderInputs, *Ladder]
 	groups          stage[groupInputs, *Group]
 	bases           stage[basisInputs, *Basis]
 	representations stage[*Basis, *orbitals.Representation]
@@ -148,23 +149,26 @@ func (w *Work) Group(ctx context.Context, s study.Study) (*Group, error) {
 // was computed and forgotten between.
 type groupInputs struct {
 	*Structure
-	core, ignore, frame string
-	tolerance           float64
+	core, ignore, as, frame, z, x string
+	tolerance                     float64
 }
 
 // groupOf and its like are called with the lock held.
 func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Group, error) {
-	inputs := groupInputs{read, s.Core, s.Ignore, s.Frame, s.TheTolerance()}
+	inputs := groupInputs{read, s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.TheTolerance()}
 	return w.groups.get(inputs, func() (*Group, error) {
-		core, err := structure.Core(read.Molecule, s.Core, s.Ignore)
+		core, err := coreOf(read, s)
 		if err != nil {
-			return nil, blameCore(read.Molecule, s, err)
+			return nil, err
 		}
 		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
-		fit, err := detect(read, core, s)
+		fit, err := w.fit(ctx, read, core, s)
 		if err != nil {
+			return nil, err
+		}
+		if fit, err = inFrame(fit, read, core, s); err != nil {
 			return nil, err
 		}
 		sites, err := orbitals.NewSites(fit, core, read.Molecule, read.Bonds)
@@ -173,6 +177,28 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Gr
 		}
 		return &Group{Structure: read, Core: core, Fit: fit, Sites: sites}, nil
 	})
+}
+
+// coreOf chooses the atoms that decide the group.
+func coreOf(read *Structure, s study.Study) ([]int, error) {
+	core, err := structure.Core(read.Molecule, s.Core, s.Ignore)
+	if err != nil {
+		return nil, blameCore(read.Molecule, s, err)
+	}
+	return core, nil
+}
+
+// fit is the group in its default frame: the one that the core has within the
+// tolerance, or the one of the ladder that is chosen.
+func (w *Work) fit(ctx context.Context, read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
+	if s.As == "" {
+		return detect(read, core, s)
+	}
+	ladder, err := w.ladderOf(ctx, read, s, nil)
+	if err != nil {
+		return nil, err
+	}
+	return ladder.choose(s)
 }
 
 // Basis puts the chosen functions on the atoms.

@@ -1,0 +1,254 @@
+package work
+
+import (
+	"fmt"
+	"math"
+
+	"lobewright/symmetry"
+)
+
+// An Exchange is another frame for a Group, with what everything in the frame
+// in force is called there.
+type Exchange struct {
+	Frame symmetry.Frame
+	// Fit is the group in that frame.
+	Fit *symmetry.Fit
+	// Names is nil for an infinite group, whose irreps are the same in every
+	// frame.
+	Names *symmetry.Exchange
+}
+
+// Exchanges lists every choice of axes that a rule in use gives for the group,
+// the one in force first.
+func (g *Group) Exchanges() []Exchange {
+	var out []Exchange
+	for _, frame := range g.Fit.Frames() {
+		e := Exchange{Frame: frame, Fit: g.Fit.In(frame)}
+		if !g.Fit.Setting.Infinite() {
+			e.Names = symmetry.ExchangeNames(g.Fit.Setting, e.Fit.Setting, frame.Turn)
+		}
+		out = append(out, e)
+	}
+	return out
+}
+
+// A Renaming is a name here and elsewhere.
+type Renaming struct{ Here, There string }
+
+// A Relabelling is a convention that differs in names alone, by no rotation.
+type Relabelling struct {
+	// Name is plain text that --from takes: "F for T", "C5^2 for C5".
+	Name string
+	// Source is a key of symmetry.Rule.Sources or, with more words, a text.
+	Source string
+	// Irreps has every irrep; Classes those classes that have another name.
+	Irreps, Classes []Renaming
+}
+
+// Relabellings lists the conventions that differ from ours in the names of the
+// irreps or classes of a finite group alone. Those that count from another
+// power of the principal axis follow from the characters: an irrep takes the
+// name of the one whose character of R is that of R^k.
+func Relabellings(s *symmetry.Setting) []Relabelling {
+	var out []Relabelling
+	if s.Infinite() {
+		return nil
+	}
+	letters := func(name, source string, swap map[byte]byte) {
+		r := Relabelling{Name: name, Source: source}
+		changed := false
+		for _, ir := range s.Irreps {
+			there := ir.Label
+			if to, ok := swap[there[0]]; ok {
+				there = string(to) + there[1:]
+				changed = true
+			}
+			r.Irreps = append(r.Irreps, Renaming{ir.Label, there})
+		}
+		if changed {
+			out = append(out, r)
+		}
+	}
+	letters("F for T", "common practice in spectroscopy", map[byte]byte{'T': 'F'})
+	letters("U and V for G and H", "common practice in older texts", map[byte]byte{'G': 'U', 'H': 'V'})
+	out = append(out, powers(s)...)
+	if s.Symbol == "O" || s.Symbol == "Oh" {
+		r := Relabelling{Name: "C2' for C2, C4^2 for C2", Source: "common practice"}
+		for _, ir := range s.Irreps {
+			r.Irreps = append(r.Irreps, Renaming{ir.Label, ir.Label})
+		}
+		for _, c := range s.Classes {
+			switch c.Name {
+			case "6C2":
+				r.Classes = append(r.Classes, Renaming{c.Name, "6C2'"})
+			case "3C2(=C4^2)":
+				r.Classes = append(r.Classes, Renaming{c.Name, "3C4^2"})
+			}
+		}
+		out = append(out, r)
+	}
+	return out
+}
+
+// powers are the relabellings that take another power of the principal
+// operation for it.
+func powers(s *symmetry.Setting) []Relabelling {
+	name, order, exponent := principal(s)
+	var out []Relabelling
+	for j := 2; 2*j < order; j++ {
+		if divisor(j, order) != 1 {
+			continue
+		}
+		k := j
+		for divisor(k, exponent) != 1 {
+			k += order
+		}
+		there := s.ByPowers(k)
+		r := Relabelling{Name: fmt.Sprintf("%s^%d for %s", name, j, name), Source: "common practice"}
+		changed := false
+		for i, ir := range s.Irreps {
+			r.Irreps = append(r.Irreps, Renaming{ir.Label, s.Irreps[there[i]].Label})
+			changed = changed || there[i] != i
+		}
+		if changed {
+			out = append(out, r)
+		}
+	}
+	return out
+}
+
+// principal is the rotation of the highest order, a rotatory reflection where
+// that has twice an even order, with the exponent of the group.
+func principal(s *symmetry.Setting) (name string, order, exponent int) {
+	exponent = 1
+	proper, improper := 1, 1
+	for _, o := range s.Operations {
+		n := o.Turn.Den
+		if o.Turn.Improper && n%2 == 1 {
+			n *= 2
+		}
+		exponent = exponent / divisor(exponent, n) * n
+		if o.Turn.Improper {
+			improper = max(improper, o.Turn.Den)
+		} else {
+			proper = max(proper, o.Turn.Den)
+		}
+	}
+	if proper%2 == 0 && improper == 2*proper {
+		return fmt.Sprintf("S%d", improper), improper, exponent
+	}
+	return fmt.Sprintf("C%d", proper), proper, exponent
+}
+
+func divisor(a, b int) int {
+	for b != 0 {
+		a, b = b, a%b
+	}
+	return a
+}
+
+// A Lift is a representation of a subgroup as it may come about from the full
+// group.
+type Lift struct {
+	Descent *symmetry.Descent
+	// Ways are the contents in the full group that go over into the given one;
+	// none if there is none.
+	Ways [][]symmetry.Content
+	// Telling are the classes of the full group in which the characters of the
+	// ways differ.
+	Telling []string
+	// More says that there are more ways than are listed.
+	More bool
+}
+
+// mostWays bounds the list of a Lift; a set of levels that has so many is no
+// single degenerate set.
+const mostWays = 12
+
+// LiftContent finds the contents in the full group that hold so many copies of
+// the subgroup's irreps.
+func LiftContent(d *symmetry.Descent, copies []int) *Lift {
+	rows := make([][]int, len(d.Correlation)) // what an irrep of the group takes
+	place := map[string]int{}
+	for i, ir := range d.Subgroup.Irreps {
+		place[ir.Label] = i
+	}
+	for i, content := range d.Correlation {
+		rows[i] = make([]int, len(copies))
+		for _, c := range content {
+			rows[i][place[c.Irrep.Label]] = c.Copies
+		}
+	}
+	l := &Lift{Descent: d}
+	left := append([]int(nil), copies...)
+	taken := make([]int, len(rows))
+	l.search(rows, left, taken, 0)
+	l.tell()
+	return l
+}
+
+// search tries the irreps of the full group one after the other, most copies
+// first.
+func (l *Lift) search(rows [][]int, left, taken []int, at int) {
+	if l.More {
+		return
+	}
+	if at == len(rows) {
+		for _, n := range left {
+			if n != 0 {
+				return
+			}
+		}
+		if len(l.Ways) == mostWays {
+			l.More = true
+			return
+		}
+		var way []symmetry.Content
+		for i, n := range taken {
+			if n > 0 {
+				way = append(way, symmetry.Content{Irrep: l.Descent.Group.Irreps[i], Copies: n})
+			}
+		}
+		l.Ways = append(l.Ways, way)
+		return
+	}
+	most := math.MaxInt
+	for i, n := range rows[at] {
+		if n > 0 {
+			most = min(most, left[i]/n)
+		}
+	}
+	for n := most; n >= 0; n-- {
+		for i, m := range rows[at] {
+			left[i] -= n * m
+		}
+		taken[at] = n
+		l.search(rows, left, taken, at+1)
+		taken[at] = 0
+		for i, m := range rows[at] {
+			left[i] += n * m
+		}
+	}
+}
+
+// tell lists the classes that would tell the ways apart.
+func (l *Lift) tell() {
+	if len(l.Ways) < 2 {
+		return
+	}
+	for c, class := range l.Descent.Group.Classes {
+		character := func(way []symmetry.Content) float64 {
+			sum := 0.0
+			for _, p := range way {
+				sum += float64(p.Copies) * p.Irrep.Characters[c]
+			}
+			return sum
+		}
+		for _, way := range l.Ways[1:] {
+			if math.Abs(character(way)-character(l.Ways[0])) > 1e-6 {
+				l.Telling = append(l.Telling, class.Name)
+				break
+			}
+		}
+	}
+}
