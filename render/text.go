@@ -150,7 +150,7 @@ func pushApart(ls []label, w, h int) {
 		}
 		best, bestX, bestY := math.Inf(1), 0.0, 0.0
 		step := 0.35 * l.em
-		for ring := 0; ring <= 8 && best > 0; ring++ {
+		for ring := 0; ring <= 16 && best > 0; ring++ {
 			n := 1
 			if ring > 0 {
 				n = 12
