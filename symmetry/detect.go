@@ -49,7 +49,7 @@ func Detect(points []Point, links []Link, options Options) (*Fit, error) {
 		return detectAtom(points[0], tolerance), nil
 	}
 	c := newCloud(points)
-	closest, a, b := c.closestLike(2 * cellSize)
+	closest, a, b := c.closestLike(math.Max(2*cellSize, 2.01*tolerance))
 	if a >= 0 && tolerance >= closest/2 {
 		return nil, &CloseError{A: a, B: b, Distance: closest, Tolerance: tolerance}
 	}

@@ -324,7 +324,7 @@ func TestPlanarSetsKeepTheirPlane(t *testing.T) {
 }
 
 func TestBadPointsAreRefused(t *testing.T) {
-	ring := func(n int) []Point {
+	circle := func(n int) []Point {
 		var out []Point
 		for k := range n {
 			a := 2 * math.Pi * float64(k) / float64(n)
@@ -341,7 +341,7 @@ func TestBadPointsAreRefused(t *testing.T) {
 	}{
 		{nil, nil, 0, "no points"}, {[]Point{{mgl64.Vec3{math.NaN(), 0, 0}, 1}}, nil, 0, "point 1"},
 		{[]Point{{mgl64.Vec3{}, 1}, {mgl64.Vec3{1e308, 0, 0}, 1}}, nil, 0, "point 2"}, {two, nil, -1, "must be positive"},
-		{two, nil, math.NaN(), "must be positive"}, {two, nil, 0.4, "too large"}, {two, []Link{{0, 3}}, 0, "link"}, {ring(121), nil, 0, "operations"},
+		{two, nil, math.NaN(), "must be positive"}, {two, nil, 0.4, "too large"}, {join([]Point{at(0, 0, 0, 78)}, ring(4, 2.3, 0, 0, 17)), nil, 2, "too large"}, {two, []Link{{0, 3}}, 0, "link"}, {circle(121), nil, 0, "operations"},
 	} {
 		_, err := Detect(c.points, c.links, Options{Tolerance: c.tolerance})
 		if err == nil || !strings.Contains(err.Error(), c.want) {
