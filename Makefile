@@ -50,7 +50,7 @@ lint: ## gofmt, go vet, staticcheck
 # Elsewhere the tests of the real window are skipped where there is no display in memory, but not here.
 unit: ## every test
 	@echo "== go test"
-	LOBEWRIGHT_NEEDS_DISPLAY=1 $(GO) test -timeout 15m ./...
+	LOBEWRIGHT_NEEDS_DISPLAY=1 LOBEWRIGHT_NEEDS_GAP=1 $(GO) test -timeout 15m ./...
 
 fuzz: ## every fuzz target for FUZZTIME (20s)
 	@for p in $$($(GO) list ./...); do \
