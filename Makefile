@@ -51,6 +51,8 @@ lint: ## gofmt, go vet, staticcheck
 unit: ## every test
 	@echo "== go test"
 	LOBEWRIGHT_NEEDS_DISPLAY=1 LOBEWRIGHT_NEEDS_GAP=1 $(GO) test -timeout 15m ./...
+	@echo "== go test -race, where several goroutines share state"
+	$(GO) test -race -timeout 15m ./app/study/... ./app/work ./app/session
 
 fuzz: ## every fuzz target for FUZZTIME (20s)
 	@for p in $$($(GO) list ./...); do \
