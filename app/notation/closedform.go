@@ -31,13 +31,16 @@ func Phi(function int) string { return "φ" + strconv.Itoa(function+1) }
 
 // Sentence sets a sentence in which names of axes, operations and planes
 // occur: x, y, z and their planes in italic, C4, C2′, σv and the like as
-// operations.
+// operations. What follows "toward" is the name of an atom: C2 is one there.
 func Sentence(s string) Text {
 	var t Text
+	before := ""
 	for _, word := range strings.SplitAfter(s, " ") {
 		core := strings.TrimRightFunc(word, func(r rune) bool { return unicode.IsSpace(r) || strings.ContainsRune(",;:.", r) })
 		rest := word[len(core):]
 		switch {
+		case before == "toward":
+			t = t.Then(Words(core))
 		case isAxes(core):
 			t = t.Then(Text{{Text: core, Italic: true}})
 		case isOperation(core):
@@ -46,6 +49,7 @@ func Sentence(s string) Text {
 			t = t.Then(Words(core))
 		}
 		t = t.Then(Words(rest))
+		before = core
 	}
 	return t
 }

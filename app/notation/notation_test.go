@@ -94,6 +94,9 @@ func TestSentencesSetAxesAndOperations(t *testing.T) {
 	if got != want {
 		t.Errorf("set as %s", got)
 	}
+	if got, want := brief(Sentence("z along C2, +z toward C2")), "*z* along *C*_[2], +z toward C2"; got != want {
+		t.Errorf("an axis and an atom of one name are set as %s, want %s", got, want)
+	}
 }
 
 func TestClosedFormsHaveLoweredNumbers(t *testing.T) {
