@@ -157,6 +157,9 @@ func (r *Renderer) binBatch(w *worker, i int) {
 		if y1-y0 < 1 && rowFrom(float64(y0), rows) >= rowFrom(float64(y1), rows) {
 			return
 		}
+		if x1-x0 < 1 && rowFrom(float64(x0), rows) >= rowFrom(float64(x1), rows) {
+			return
+		}
 		t := f.tileRect(x0, y0, x1, y1)
 		s.tri = append(s.tri, id)
 		s.rect = append(s.rect, t)

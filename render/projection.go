@@ -20,7 +20,7 @@ type projection struct {
 	nMin, nMax float64 // far and near limit
 }
 
-// scenePins returns the projection of the camera for a picture of w × h
+// sceneProjection returns the projection of the camera for a picture of w × h
 // pixels. reach is the largest distance of anything in the scene from the
 // target.
 func sceneProjection(c Camera, w, h int, reach float64) projection {
@@ -100,16 +100,6 @@ func (p *projection) point(q Vec3) (x, y, n float64) {
 		return 0, 0, -1
 	}
 	return p.cx + p.f*q[0]*n, p.cy - p.f*q[1]*n, n
-}
-
-// ray returns the line of sight of a pixel place: in perspective from the
-// origin with z = -1 at parameter 1/n, otherwise along -z.
-func (p *projection) ray(x, y float64) (ox, oy, dx, dy float64) {
-	a, b := (x-p.cx)/p.f, (p.cy-y)/p.f
-	if p.persp {
-		return 0, 0, a, b
-	}
-	return a, b, 0, 0
 }
 
 // box is a rectangle of pixel places.

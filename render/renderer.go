@@ -27,8 +27,6 @@ type Renderer struct {
 	run     []func()
 
 	vertexJob, binJob, nearJob, tileJob func(w *worker, i int)
-	pickAt                              image.Point
-	hits                                []Hit
 }
 
 // frame is what all workers share while one picture is drawn.

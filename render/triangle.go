@@ -74,8 +74,11 @@ func (t *tile) triangle(a, b, c *vert, slot uint32, l *layer) bool {
 	if (bx-ax)*(cy-ay)-(cx-ax)*(by-ay) < 0 {
 		bx, by, cx, cy = cx, cy, bx, by
 	}
-	px0, py0 := max(int(x0+wide)-wide, t.clip.Min.X)&^1, max(int(y0+wide)-wide, t.clip.Min.Y)
-	px1, py1 := min(int(x1+wide)-wide, t.clip.Max.X-1), min(int(y1+wide)-wide, t.clip.Max.Y-1)
+	// No sample lies within half a sample row of a pixel's rim, but some lie
+	// just there.
+	rim := t.rim
+	px0, py0 := max(int(x0+rim+wide-0.5/sub)-wide, t.clip.Min.X)&^1, max(int(y0+rim+wide-0.5/sub)-wide, t.clip.Min.Y)
+	px1, py1 := min(int(x1-rim+wide+1)-wide-1, t.clip.Max.X-1), min(int(y1-rim+wide+1)-wide-1, t.clip.Max.Y-1)
 	if px1 < px0 || py1 < py0 {
 		return false
 	}

@@ -1,0 +1,314 @@
+package render
+
+import "math"
+
+// How the samples of a tile are reached by everything that is not a triangle.
+
+// pixelRange returns the first and the end pixel of the canvas whose sample
+// in the row of kind k lies in the half-open interval x0 to x1.
+func (t *tile) pixelRange(x0, x1 float64, k int) (int, int) {
+	ox := float64(t.x) + t.sx[k]
+	a, b := math.Ceil(x0-ox), math.Ceil(x1-ox)
+	lo, hi := float64(t.clip.Min.X), float64(t.clip.Max.X)
+	if !(a > lo) {
+		a = lo
+	}
+	if !(b < hi) {
+		b = hi
+	}
+	if a >= b {
+		return 0, 0
+	}
+	return int(a), int(b)
+}
+
+// rowRange returns the sample rows of a box on the canvas.
+func (t *tile) rowRange(y0, y1 float64) (int, int) {
+	r := float64(int(1) << t.lg)
+	lo, hi := float64(t.rows[0]), float64(t.rows[1])
+	return int(math.Min(hi, math.Max(lo, math.Floor(y0*r-0.5)))), int(math.Max(lo, math.Min(hi, math.Ceil(y1*r+0.5))))
+}
+
+// ball draws a sphere or ellipsoid that lies wholly in front of the eye.
+func (t *tile) ball(q *quadric, b *box, slot uint32) {
+	j0, j1 := t.rowRange(b.y0, b.y1)
+	step := 1 / float64(int(1)<<t.lg)
+	keys := t.keys
+	for j := j0; j < j1; j++ {
+		y := (float64(j) + 0.5) * step
+		l, r := q.span(y, b.x0, b.x1)
+		k := j & (1<<t.lg - 1)
+		x0, x1 := t.pixelRange(l, r, k)
+		if x0 >= x1 {
+			continue
+		}
+		dy := y - q.my
+		b0 := q.b[0] + q.b[2]*dy
+		c0, c1, c2 := q.q[0]+dy*(q.q[2]+q.q[5]*dy), q.q[1]+q.q[4]*dy, q.q[3]
+		row := (((j >> t.lg) - t.y) * t.side << t.lg) + k
+		dx := float64(t.x) + t.sx[k] - q.mx
+		for x := x0; x < x1; x++ {
+			u := float64(x) + dx
+			d := c0 + u*(c1+u*c2)
+			if d < 0 {
+				d = 0
+			}
+			n := b0 + q.b[1]*u + math.Sqrt(d)
+			key := uint64(math.Float32bits(float32(n)))<<32 | uint64(slot)
+			if p := &keys[row+x<<t.lg]; int64(key) > int64(*p) {
+				*p = key
+			}
+		}
+	}
+}
+
+// body draws any round body, opaque or as two layers.
+func (t *tile) body(q *quadric, p *part, slot uint32, layered bool) {
+	b := &p.box
+	j0, j1 := t.rowRange(b.y0, b.y1)
+	step := 1 / float64(int(1)<<t.lg)
+	nMax := t.f.projs[p.proj].nMax
+	if !layered && q.safe && q.mode == wallBetween && (q.slab == slabAhead || q.slab == slabAnyhow) {
+		t.rod(q, b, slot)
+		return
+	}
+	for j := j0; j < j1; j++ {
+		y := (float64(j) + 0.5) * step
+		l, r := q.span(y, b.x0, b.x1)
+		k := j & (1<<t.lg - 1)
+		x0, x1 := t.pixelRange(l, r, k)
+		py := (j >> t.lg) - t.y
+		for x := x0; x < x1; x++ {
+			in, out, inKind, outKind, ok := q.ends(float64(t.x+x)+t.sx[k], y)
+			if !ok {
+				continue
+			}
+			seen := in <= nMax
+			if !layered {
+				if !seen {
+					if !(out > 0 && out <= nMax) {
+						continue
+					}
+					in, inKind = out, outKind
+				}
+				key := uint64(math.Float32bits(float32(in)))<<32 | uint64(slot+inKind)
+				if p := &t.keys[(py*t.side+x)<<t.lg+k]; int64(key) > int64(*p) {
+					*p = key
+				}
+				continue
+			}
+			if seen {
+				t.cover(&t.front, py, x, k, float32(in), slot+inKind)
+			}
+			if out > 0 && out <= nMax {
+				t.cover(&t.back, py, x, k, float32(out), slot+outKind)
+			}
+		}
+	}
+}
+
+// rod draws an opaque cylinder or cone that lies wholly in front of the eye.
+func (t *tile) rod(q *quadric, b *box, slot uint32) {
+	j0, j1 := t.rowRange(b.y0, b.y1)
+	step := 1 / float64(int(1)<<t.lg)
+	keys := t.keys
+	ahead := q.slab == slabAhead
+	for j := j0; j < j1; j++ {
+		y := (float64(j) + 0.5) * step
+		l, r := q.span(y, b.x0, b.x1)
+		k := j & (1<<t.lg - 1)
+		x0, x1 := t.pixelRange(l, r, k)
+		if x0 >= x1 {
+			continue
+		}
+		dy := y - q.my
+		c0, c1, c2 := q.q[0]+dy*(q.q[2]+q.q[5]*dy), q.q[1]+q.q[4]*dy, q.q[3]
+		u := float64(t.x+x0) + t.sx[k] - q.mx
+		wall, low, high := q.b.at(u, dy), q.s0.at(u, dy), q.s1.at(u, dy)
+		i := ((j>>t.lg-t.y)*t.side+x0)<<t.lg + k
+		for ; x0 < x1; x0++ {
+			d := c0 + u*(c1+u*c2)
+			s := 0.0
+			if d > 0 {
+				s = math.Sqrt(d)
+			} else if c2 >= 0 { // a cone whose span is not bounded
+				s = math.Inf(-1)
+			}
+			in, out := wall+s, wall-s
+			near, far, id := low, high, slot+capLow
+			if near < far {
+				near, far, id = far, near, slot+capHigh
+			}
+			if near >= in {
+				id = slot
+			}
+			in, out = min(in, near), max(out, far)
+			if in >= out && (!ahead || far > 0) {
+				key := uint64(math.Float32bits(float32(in)))<<32 | uint64(id)
+				if p := &keys[i]; int64(key) > int64(*p) {
+					*p = key
+				}
+			}
+			i += 1 << t.lg
+			u++
+			wall += q.b[1]
+			low += q.s0[1]
+			high += q.s1[1]
+		}
+	}
+}
+
+// plate draws a disc, opaque or as a layer.
+func (t *tile) plate(d *disc, p *part, layered bool) {
+	b := &p.box
+	j0, j1 := t.rowRange(b.y0, b.y1)
+	step := 1 / float64(int(1)<<t.lg)
+	slot := uint32(len(t.slots) - 1)
+	if layered && d.hole < 0 {
+		t.pane(d, b, slot, t.f.ink.half > 0 && p.outline)
+		return
+	}
+	var parts [2][2]float64
+	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
+	for j := j0; j < j1; j++ {
+		y := (float64(j) + 0.5) * step
+		k := j & (1<<t.lg - 1)
+		py := (j >> t.lg) - t.y
+		n := d.spans(y, lo, hi, &parts)
+		n0 := d.n[0] + d.n[2]*(y-d.my) + d.n[1]*(float64(t.x)+t.sx[k]-d.mx)
+		for i := range n {
+			x0, x1 := t.pixelRange(parts[i][0], parts[i][1], k)
+			t.run(py, x0, x1, k, float32(n0), float32(d.n[1]), slot, layered)
+		}
+	}
+}
+
+// pane draws a translucent disc without a hole. It is one sheet, so its
+// fragments are made at once, pixel row by pixel row, unless the layer is
+// wanted for an outline.
+func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
+	n := 1 << t.lg
+	y0, y1 := max(t.clip.Min.Y, int(math.Max(-1e6, b.y0))-t.y-1), min(t.clip.Max.Y, int(math.Min(1e6, b.y1))-t.y+2)
+	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
+	var piece [2][2]float64
+	var x0, x1 [16]int
+	nx, ny := float32(d.n[1]), float32(d.n[2])
+	full := uint32(1)<<n - 1
+	frags := t.frags
+	all := d.fills(float64(t.x), float64(t.y), float64(t.x+t.side), float64(t.y+t.side))
+	for py := y0; py < y1; py++ {
+		from, to, coreFrom, coreTo := math.MaxInt, 0, 0, math.MaxInt
+		if all {
+			from, to = t.clip.Min.X, t.clip.Max.X
+		}
+		for k := 0; k < n && !all; k++ {
+			x0[k], x1[k] = 0, 0
+			y := float64(t.y+py) + (float64(k)+0.5)/float64(n)
+			if d.spans(y, lo, hi, &piece) > 0 {
+				x0[k], x1[k] = t.pixelRange(piece[0][0], piece[0][1], k)
+			}
+			if x0[k] < x1[k] {
+				from, to = min(from, x0[k]), max(to, x1[k])
+			}
+			coreFrom, coreTo = max(coreFrom, x0[k]), min(coreTo, x1[k])
+		}
+		row := d.n[0] + d.n[2]*(float64(t.y+py)+0.5-d.my) + d.n[1]*(float64(t.x)+0.5-d.mx)
+		for x := from; x < to; x++ {
+			mask := full
+			if x < coreFrom || x >= coreTo {
+				mask = 0
+				for k := range n {
+					if x >= x0[k] && x < x1[k] {
+						mask |= 1 << k
+					}
+				}
+			}
+			i := py*t.side + x
+			near := float32(row + d.n[1]*float64(x))
+			if t.solidAny {
+				keys := t.keys[i<<t.lg:][:n]
+				any := t.empty
+				for _, key := range keys {
+					any |= key
+				}
+				if any != 0 {
+					mask &= t.ahead(keys, near, nx, ny)
+					if mask == 0 {
+						continue
+					}
+				}
+			}
+			if keep {
+				t.front.at[i] = sheet{mask, slot, near, nx, ny}
+				t.front.touch(py)
+				continue
+			}
+			frags = append(frags, frag{next: t.first[i], slot: slot, mask: mask, n: near, nx: nx, ny: ny})
+			t.first[i] = int32(len(frags) - 1)
+		}
+	}
+	t.frags = frags
+	t.anyFrag = len(frags) > 0
+}
+
+// ahead returns the samples of a pixel where a plane lies in front of what is
+// there.
+func (t *tile) ahead(keys []uint64, near, nx, ny float32) (mask uint32) {
+	step := 1 / float32(len(keys))
+	for k, key := range keys {
+		at := near + nx*(float32(t.sx[k&15])-0.5) + ny*((float32(k)+0.5)*step-0.5)
+		if int64(uint64(math.Float32bits(at))<<32|math.MaxUint32) > int64(key) {
+			mask |= 1 << k
+		}
+	}
+	return mask
+}
+
+// run draws a piece of a sample row whose nearness is linear: n0 + n1·x.
+func (t *tile) run(py, x0, x1, k int, n0, n1 float32, slot uint32, layered bool) {
+	row := py * t.side
+	if !layered {
+		for x := x0; x < x1; x++ {
+			n := n0 + n1*float32(x)
+			key := uint64(math.Float32bits(n))<<32 | uint64(slot)
+			if p := &t.keys[(row+x)<<t.lg+k]; int64(key) > int64(*p) {
+				*p = key
+			}
+		}
+		return
+	}
+	for x := x0; x < x1; x++ {
+		t.cover(&t.front, py, x, k, n0+n1*float32(x), slot)
+	}
+}
+
+// stroke draws a straight piece of a line.
+func (t *tile) stroke(s *stroke, layered bool) {
+	b := s.box()
+	j0, j1 := t.rowRange(b.y0, b.y1)
+	step := 1 / float64(int(1)<<t.lg)
+	slot := uint32(len(t.slots) - 1)
+	for j := j0; j < j1; j++ {
+		y := (float64(j) + 0.5) * step
+		l, r, ok := s.span(y)
+		if !ok {
+			continue
+		}
+		k := j & (1<<t.lg - 1)
+		py := (j >> t.lg) - t.y
+		x0, x1 := t.pixelRange(l, r, k)
+		for x := x0; x < x1; x++ {
+			n := float32(s.near(float64(t.x+x)+t.sx[k], y))
+			if layered {
+				if t.front.at[py*t.side+x].mask>>k&1 == 0 {
+					t.cover(&t.front, py, x, k, n, slot)
+				}
+				continue
+			}
+			key := uint64(math.Float32bits(n))<<32 | uint64(slot)
+			if p := &t.keys[(py*t.side+x)<<t.lg+k]; int64(key) > int64(*p) {
+				*p = key
+			}
+		}
+	}
+}

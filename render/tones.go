@@ -1,0 +1,97 @@
+package render
+
+// The flat tones of the ink look.
+
+// inkWhole returns the colour of a pixel that shows one part alone, from its
+// cell.
+func (t *tile) inkWhole(i, px, py int) (r, g, b float32) {
+	c := &t.lines.cells[i]
+	p := &t.f.parts[c.part]
+	if p.hatch.period > 0 {
+		return t.shadePlace(c.slot, float32(px)+0.5, float32(py)+0.5)
+	}
+	if p.flat {
+		return p.col[0], p.col[1], p.col[2]
+	}
+	l := &t.f.light
+	nl := c.x*l.kx + c.y*l.ky + c.z*l.kz
+	m := l.tones[0]
+	for k := 1; k < l.nTones; k++ {
+		d := nl - l.edges[k-1]
+		step := l.tones[k] - m
+		if d > 0.15 {
+			m += step
+		} else if d > -0.15 {
+			m += step * softStep(d, t.cellSlope(i, px, py)*max(l.soft, 0.7))
+		}
+	}
+	return p.col[0] * m, p.col[1] * m, p.col[2] * m
+}
+
+// softStep is 0 well below d = 0 and 1 well above, with a change of width w.
+func softStep(d, w float32) float32 {
+	v := min(1, max(0, d/max(w, 1e-6)+0.5))
+	return v * v * (3 - 2*v)
+}
+
+// cellSlope returns how much the key light changes over a pixel, from the
+// pixels around.
+func (t *tile) cellSlope(i, px, py int) float32 {
+	l := &t.f.light
+	c := &t.lines.cells[i]
+	along := func(a, b int) float32 {
+		p, q := &t.lines.cells[a], &t.lines.cells[b]
+		k := float32(0.5)
+		if p.part != c.part {
+			p, k = c, 1
+		}
+		if q.part != c.part {
+			q, k = c, 1
+		}
+		return ((p.x-q.x)*l.kx + (p.y-q.y)*l.ky + (p.z-q.z)*l.kz) * k
+	}
+	var gx, gy float32
+	if px > t.clip.Min.X && px+1 < t.clip.Max.X {
+		gx = along(i-1, i+1)
+	}
+	if py > t.clip.Min.Y && py+1 < t.clip.Max.Y {
+		gy = along(i-t.side, i+t.side)
+	}
+	return sqrt32(gx*gx + gy*gy)
+}
+
+// tone returns the share of the colour that the ink look shows where the
+// light is nl. The step from one tone to the next is soft over some pixels.
+func (t *tile) tone(s *slot, p *part, nl, x, y float32) float32 {
+	l := &t.f.light
+	m := l.tones[0]
+	for i := 1; i < l.nTones; i++ {
+		d := nl - l.edges[i-1]
+		step := l.tones[i] - m
+		switch {
+		case d > 0.15:
+			m += step
+		case d > -0.15:
+			m += step * softStep(d, t.lightSlope(s, p, x, y)*max(l.soft, 0.7))
+		}
+	}
+	return m
+}
+
+// lightSlope returns how much the key light changes over a pixel.
+func (t *tile) lightSlope(s *slot, p *part, x, y float32) float32 {
+	keep := t.surf
+	a := t.keyLight(s, p, x, y)
+	gx := t.keyLight(s, p, x+0.5, y) - a
+	gy := t.keyLight(s, p, x, y+0.5) - a
+	t.surf = keep
+	return 2 * sqrt32(gx*gx+gy*gy)
+}
+
+func (t *tile) keyLight(s *slot, p *part, x, y float32) float32 {
+	t.free = true
+	nx, ny, nz, _ := t.lookAt(s, p, x, y)
+	t.free = false
+	l := &t.f.light
+	return (nx*l.kx + ny*l.ky + nz*l.kz) / sqrt32(nx*nx+ny*ny+nz*nz+1e-30)
+}
