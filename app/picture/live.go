@@ -69,6 +69,10 @@ type Frame struct {
 // ghostOpacity is the opacity of the start while an operation plays.
 const ghostOpacity = 0.25
 
+// ghostSize keeps a ghost within the lobe that has come to lie over it: two
+// surfaces in one place would be drawn in patches.
+const ghostSize = 0.97
+
 // Frame makes the scene of a moment for a picture of a size in pixels with a
 // number of pixels an inch. A quick frame has coarser lobes and fewer samples,
 // and leaves the labels where they stood.
@@ -263,13 +267,21 @@ func (l *Live) addParts(s *stage, g *work.Group, parts []part, by mgl64.Mat3, op
 		if p.shell == 0 {
 			m := s.fadedLobe(p.vector[0], p.flip, opacity)
 			m.ID = id
-			s.scene.Add(render.Sphere{Center: at, Radius: p.length / 2}, m)
+			radius := p.length / 2
+			if opacity < 1 {
+				radius *= ghostSize
+			}
+			s.scene.Add(render.Sphere{Center: at, Radius: radius}, m)
 			s.scene.Shapes[len(s.scene.Shapes)-1].Transform = &place
 			s.lobes = append(s.lobes, ball{place.Apply(at), p.length / 2})
 			continue
 		}
 		plus, minus, turn := l.shapeOf(p.mixture, detail)
-		place = place.After(render.Affine{Linear: turn.Mul(p.length), Shift: at})
+		length := p.length
+		if opacity < 1 {
+			length *= ghostSize
+		}
+		place = place.After(render.Affine{Linear: turn.Mul(length), Shift: at})
 		for i, mesh := range []*render.Mesh{plus, minus} {
 			if mesh == nil {
 				continue

@@ -18,6 +18,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/orbitals"
+	"lobewright/symmetry"
 )
 
 // newView makes the picture and says what the hand does in it.
@@ -366,6 +367,43 @@ func (u *ui) askTolerance() {
 			return errors.New("give a length in Å above 0, such as 0.02")
 		}
 		u.setTolerance(t)
+		return nil
+	})
+}
+
+// chooseFrame takes the axes of a rule. Operations and partners may have other
+// names there, so what was chosen among them is let go.
+func (u *ui) chooseFrame(name string) {
+	if name == symmetry.FrameDefault {
+		name = ""
+	}
+	u.setAxes(name, "", "")
+}
+
+func (u *ui) setAxes(frame, z, x string) {
+	s := u.now()
+	s.Frame, s.Z, s.X = frame, z, x
+	s.Operation, s.Moment = "", 0
+	s.Projection.Irrep, s.Projection.Copy, s.Projection.Partner = "", 0, 0
+	if s.Projection.Function > 0 {
+		s.Projection.Subject = study.SubjectFunction
+	}
+	u.do(study.StepFrame, s)
+}
+
+// askAxes asks for z and x.
+func (u *ui) askAxes() {
+	s := u.now()
+	now := strings.TrimSuffix(s.Z+"; "+s.X, "; ")
+	u.ask("Axes", "What z points along, then after a semicolon x: an operation (C4(z)), an atom (2), two atoms (2,3), or a vector in the axes of the file (1,0,0).", now, func(text string) error {
+		z, x, _ := strings.Cut(text, ";")
+		z, x = strings.TrimSpace(z), strings.TrimSpace(x)
+		try := u.now()
+		try.Frame, try.Z, try.X = "", z, x
+		if err := try.Check(); err != nil {
+			return err
+		}
+		u.setAxes("", z, x)
 		return nil
 	})
 }

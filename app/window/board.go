@@ -84,6 +84,9 @@ type style struct {
 	color color.NRGBA
 	bold  bool
 	align float64 // -1 left, 0 middle, 1 right
+	// whole keeps what stands in more than one bracket on one line: for
+	// formulas.
+	whole bool
 }
 
 // text sets a line with its base at y and returns its width.
@@ -124,6 +127,7 @@ func (b *board) paragraph(x, y, width float64, t notation.Text, s style) float64
 func (b *board) wrapped(t notation.Text, width float64, s style) []notation.Text {
 	var lines []notation.Text
 	var line, word notation.Text
+	depth := 0
 	end := func() {
 		if len(line) > 0 && b.measure(line.Then(word), s) > width {
 			lines = append(lines, line)
@@ -139,7 +143,8 @@ func (b *board) wrapped(t notation.Text, width float64, s style) []notation.Text
 			}
 			for _, piece := range b.fitting(part, width, s) {
 				word = word.Then(notation.Text{{Text: piece, Italic: r.Italic, Place: r.Place}})
-				if piece != part || strings.HasSuffix(piece, " ") {
+				depth += strings.Count(piece, "(") - strings.Count(piece, ")")
+				if piece != part || strings.HasSuffix(piece, " ") && !(s.whole && depth > 1) {
 					end()
 				}
 			}

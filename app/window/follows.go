@@ -166,7 +166,9 @@ func (u *ui) drawDetail(b *board) {
 		}
 		b.text(pad+w+10, y+headSize, notation.Words(strings.Join(which, ", ")), quiet)
 		y += headSize + 12
-		y = b.paragraph(pad, y+textSize-4, width, combinationText(o.Coefficients), plain)
+		formula := plain
+		formula.whole = true
+		y = b.paragraph(pad, y+textSize-4, width, combinationText(o.Coefficients), formula)
 		if f := irrepFunctions(irrep, o.Partner); f != nil {
 			y = b.paragraph(pad, y+2, width, notation.Words("transforms like ").Then(f), quiet)
 		}

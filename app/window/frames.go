@@ -36,8 +36,9 @@ type frames struct {
 	want   chan request
 	free   chan *drawn
 	ready  atomic.Pointer[drawn]
-	shown  *drawn // the toolkit's goroutine only
-	notify func() // a frame is ready
+	taken  chan struct{} // holds one: the frame that was ready has been taken
+	shown  *drawn        // the toolkit's goroutine only
+	notify func()        // a frame is ready
 	failed func(any)
 	ctx    context.Context
 	stop   context.CancelFunc
@@ -59,7 +60,7 @@ const (
 )
 
 func newFrames(notify func(), failed func(any)) *frames {
-	f := &frames{want: make(chan request, 1), free: make(chan *drawn, 3), notify: notify, failed: failed}
+	f := &frames{want: make(chan request, 1), free: make(chan *drawn, 3), taken: make(chan struct{}, 1), notify: notify, failed: failed}
 	f.ctx, f.stop = context.WithCancel(context.Background())
 	for range cap(f.free) {
 		f.free <- nil
@@ -89,6 +90,10 @@ func (f *frames) ask(r request) {
 // nil before the first. The toolkit's goroutine only.
 func (f *frames) take() *drawn {
 	if d := f.ready.Swap(nil); d != nil {
+		select {
+		case f.taken <- struct{}{}:
+		default:
+		}
 		if f.shown != nil {
 			f.free <- f.shown
 		}
@@ -142,6 +147,7 @@ func (f *frames) work() {
 			case half && took < fast:
 				half = false
 			}
+			f.waitTaken()
 			select {
 			case n := <-f.want:
 				next = &n
@@ -169,6 +175,20 @@ func (f *frames) work() {
 	}
 }
 
+// waitTaken waits until the newest frame is on its way to the screen, so that
+// none is drawn for nothing; not for long, since a hidden window takes none.
+func (f *frames) waitTaken() {
+	if f.ready.Load() == nil {
+		return
+	}
+	const patience = 40 * time.Millisecond
+	select {
+	case <-f.taken:
+	case <-time.After(patience):
+	case <-f.ctx.Done():
+	}
+}
+
 // draw draws a frame and hands it over; false after close.
 func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.Renderer, r request, quick bool) bool {
 	frame, err := live.Frame(r.shown, r.sight, r.width, r.height, r.dpi, quick)
@@ -190,6 +210,10 @@ func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.
 		return f.ctx.Err() == nil
 	}
 	f.count.Add(1)
+	select {
+	case <-f.taken: // it told of an older frame
+	default:
+	}
 	if old := f.ready.Swap(d); old != nil {
 		f.free <- old
 	}

@@ -12,6 +12,7 @@ import (
 	"lobewright/app/notation"
 	"lobewright/app/study"
 	"lobewright/app/work"
+	"lobewright/symmetry"
 )
 
 // drawGiven draws the left pane: what is given. Structure, group, frame,
@@ -229,7 +230,35 @@ func (d *givenDrawing) frameOfAxes() {
 	for _, tie := range notation.Ties(fit.Ties) {
 		d.words(tie, d.quiet)
 	}
-	d.problem(work.ConcernFrame)
+	d.problem(work.ConcernFrame, work.ConcernZ, work.ConcernX)
+	d.frames()
+}
+
+// frames offers every choice of axes: by the name of its rule, and by hand.
+func (d *givenDrawing) frames() {
+	s := d.now()
+	byHand := s.Z != "" || s.X != ""
+	x := float64(pad)
+	d.y += 4
+	offer := func(label, hint string, on bool, do func()) {
+		w := d.board.measure(notation.Words(label), d.quiet) + 14
+		if x+w > pad+d.width {
+			x = pad
+			d.y += chipHeight + 3
+		}
+		drawChip(d.board, x, d.y, w, notation.Words(label), secondSize, chip{name: "frame " + label, hint: hint, on: on, do: do})
+		x += w + 3
+	}
+	for _, f := range d.state.Group.Fit.Frames() {
+		name := f.Rule.Name
+		if name == symmetry.FrameExplicit {
+			continue
+		}
+		now := s.Frame == name || s.Frame == "" && name == symmetry.FrameDefault
+		offer(name, "axes by the rule "+name+" ("+notation.Source(f.Rule)+")", now && !byHand, func() { d.chooseFrame(name) })
+	}
+	offer("by hand …", "say what z and x point along", byHand, d.askAxes)
+	d.y += chipHeight + 4
 }
 
 // A chip is a word that can be switched.

@@ -156,17 +156,26 @@ func combination(terms []orbitals.Term, name func(number string) notation.Text, 
 	if len(terms) > most {
 		return notation.Words(fmt.Sprintf("sum of %d", len(terms)))
 	}
-	return longCombination(terms, name)
+	return setCombination(terms, name, shortCoefficient)
 }
 
-func longCombination(terms []orbitals.Term, name func(number string) notation.Text) notation.Text {
+// shortCoefficient is exact where that is short.
+func shortCoefficient(x float64) string {
+	if exact := notation.ExactCoefficient(x); notation.Width(exact) <= 5 {
+		return exact
+	}
+	return notation.Short(x, 3)
+}
+
+// setCombination sets a sum with its functions named by name.
+func setCombination(terms []orbitals.Term, name func(number string) notation.Text, write notation.Coefficient) notation.Text {
 	var t notation.Text
-	for _, part := range notation.Combination(terms, notation.ExactCoefficient) {
+	for _, part := range notation.Combination(terms, write) {
 		if len(t) > 0 {
 			t = t.Then(notation.Words(" "))
 		}
 		before, number, named := strings.Cut(part, "φ")
-		t = t.Then(notation.Words(before))
+		t = t.Then(notation.Words(notation.Minus(before)))
 		if named {
 			t = t.Then(name(number))
 		}
@@ -295,7 +304,7 @@ func (u *ui) imageText(op work.Operation) notation.Text {
 	default:
 		return nil
 	}
-	t := longCombination(terms, name)
+	t := setCombination(terms, name, notation.ExactCoefficient)
 	// The function that it has become is named, where it is one.
 	if s.Projection.TheSubject() == study.SubjectFunction && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
 		f := st.Basis.Functions[terms[0].Function]

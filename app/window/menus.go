@@ -81,7 +81,7 @@ func (u *ui) menus() *fyne.MainMenu {
 	edit := fyne.NewMenu("Edit", m.undo, m.redo, rule(),
 		with(item("Type a selection of functions", func() { u.win.Canvas().Focus(u.basis) }), fyne.KeyB, control),
 		item("No functions", func() { u.setBasis(nil) }), rule(),
-		item("Core …", u.askCore), item("Spectators …", u.askIgnore), item("Tolerance …", u.askTolerance))
+		item("Axes …", u.askAxes), item("Core …", u.askCore), item("Spectators …", u.askIgnore), item("Tolerance …", u.askTolerance))
 
 	m.parallel = item("Without perspective", func() {
 		s := u.now()

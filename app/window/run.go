@@ -60,7 +60,7 @@ func Run(ctx context.Context, o Options) (err error) {
 		Migrations: map[string]bool{"fyneDo": true},
 	})
 	a := app.New()
-	kept, notes := session.Open(session.Options{})
+	kept, notes := session.Open(session.Options{Interval: time.Second})
 	win := a.NewWindow(name)
 	release()
 	if reason := said.reason(); reason != "" {
