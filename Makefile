@@ -15,9 +15,10 @@ WINDOW_THERE     := pkg-config --exists $(WINDOW_LIBRARIES)
 TEST_PACKAGES := gap-core gap-character-tables xvfb xdotool
 TEST_THERE    := command -v gap >/dev/null && command -v Xvfb >/dev/null && command -v xdotool >/dev/null
 
-# The program is stamped with the state of the checkout; -buildvcs would fail in a checkout of another user.
+# The program is stamped with the state of the checkout; -buildvcs would fail in a checkout of another user. No flag here
+# changes how packages are compiled, so that tests and program share the toolkit, which takes minutes.
 VERSION := $(shell git describe --tags --always --dirty 2>/dev/null || echo devel)
-BUILD    = $(GO) build -trimpath -buildvcs=false -ldflags "-X main.version=$(VERSION)"
+BUILD    = $(GO) build -buildvcs=false -ldflags "-X main.version=$(VERSION)"
 
 .PHONY: run build test lint unit fuzz bench packages clean help
 .DEFAULT_GOAL := help
