@@ -44,7 +44,8 @@ type frames struct {
 	stop   context.CancelFunc
 	done   sync.WaitGroup
 	asked  atomic.Int64
-	count  atomic.Int64 // frames drawn
+	count  atomic.Int64  // frames drawn
+	took   time.Duration // for the last frame; the drawing goroutine only
 
 	mu     sync.Mutex
 	cancel context.CancelFunc // of a full frame that is being drawn
@@ -54,9 +55,9 @@ type frames struct {
 const (
 	// settle is how long nothing moves before a full frame is drawn.
 	settle = 60 * time.Millisecond
-	// slow is a quick frame that takes too long for 50 a second: from then on
-	// quick frames have half the resolution; fast brings it back.
-	slow, fast = 17 * time.Millisecond, 5 * time.Millisecond
+	// slow is a quick frame that takes too long to turn smoothly: from then on
+	// quick frames have half the resolution; fast brings the whole back.
+	slow, fast = 24 * time.Millisecond, 6 * time.Millisecond
 )
 
 func newFrames(notify func(), failed func(any)) *frames {
@@ -133,7 +134,6 @@ func (f *frames) work() {
 			}
 		}
 		if r.moving {
-			began := time.Now()
 			q := r
 			if half {
 				q.width, q.height, q.dpi = (r.width+1)/2, (r.height+1)/2, r.dpi/2
@@ -141,13 +141,12 @@ func (f *frames) work() {
 			if !f.draw(f.ctx, &live, &renderer, q, true) {
 				return
 			}
-			switch took := time.Since(began); {
-			case !half && took > slow:
+			switch {
+			case !half && f.took > slow:
 				half = true
-			case half && took < fast:
+			case half && f.took < fast:
 				half = false
 			}
-			f.waitTaken()
 			select {
 			case n := <-f.want:
 				next = &n
@@ -175,8 +174,9 @@ func (f *frames) work() {
 	}
 }
 
-// waitTaken waits until the newest frame is on its way to the screen, so that
-// none is drawn for nothing; not for long, since a hidden window takes none.
+// waitTaken waits until the frame before is on its way to the screen: the next
+// one is drawn meanwhile, but no third, which would be drawn for nothing. It
+// does not wait for long, since a hidden window takes none.
 func (f *frames) waitTaken() {
 	if f.ready.Load() == nil {
 		return
@@ -191,6 +191,7 @@ func (f *frames) waitTaken() {
 
 // draw draws a frame and hands it over; false after close.
 func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.Renderer, r request, quick bool) bool {
+	began := time.Now()
 	frame, err := live.Frame(r.shown, r.sight, r.width, r.height, r.dpi, quick)
 	if err != nil {
 		return true
@@ -210,6 +211,8 @@ func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.
 		return f.ctx.Err() == nil
 	}
 	f.count.Add(1)
+	f.took = time.Since(began)
+	f.waitTaken()
 	select {
 	case <-f.taken: // it told of an older frame
 	default:
