@@ -34,6 +34,7 @@ type cell struct {
 	slot    uint32
 	part    int32   // -1 for the ground
 	n       float32 // nearness of one of its samples
+	step    float32 // nearness that counts as a jump
 	x, y, z float32 // unit normal towards the viewer
 }
 
@@ -64,6 +65,10 @@ func (f *frame) inkApron() int {
 // is drawn: 45°.
 const creaseCos = 0.7071
 
+// jumpPixels is the depth in pixels from which on a step within a body may be
+// a fold.
+const jumpPixels = 6
+
 // drawInk finds the lines between opaque surfaces. It is called when the
 // samples are known and fills dist and near.
 func (t *tile) drawInk() {
@@ -79,21 +84,26 @@ func (t *tile) drawInk() {
 		for x := t.clip.Min.X; x < t.clip.Max.X; x++ {
 			i := y*t.side + x
 			p := &k.cells[i]
-			if x+1 < t.clip.Max.X {
-				if q := &k.cells[i+1]; p.slot != q.slot && t.differ(i, i+1, 1, 0, &k.right[i]) {
-					any = true
-				}
+			if x+1 < t.clip.Max.X && !p.goesOn(&k.cells[i+1]) && t.differ(i, i+1, 1, 0, &k.right[i]) {
+				any = true
 			}
-			if y+1 < t.clip.Max.Y {
-				if q := &k.cells[i+t.side]; p.slot != q.slot && t.differ(i, i+t.side, 0, 1, &k.down[i]) {
-					any = true
-				}
+			if y+1 < t.clip.Max.Y && !p.goesOn(&k.cells[i+t.side]) && t.differ(i, i+t.side, 0, 1, &k.down[i]) {
+				any = true
 			}
 		}
 	}
 	if any {
 		t.join(t.clip)
 	}
+}
+
+// goesOn tells whether the surface of a pixel goes on smoothly into another.
+func (p *cell) goesOn(q *cell) bool {
+	if p.slot == q.slot {
+		return true
+	}
+	d := p.n - q.n
+	return p.part == q.part && d < p.step && d > -p.step && p.x*q.x+p.y*q.y+p.z*q.z > creaseCos
 }
 
 // ready makes the buffers fit a canvas of n pixels and empties them, the
@@ -163,6 +173,7 @@ func (t *tile) fillCells() {
 				k = -k
 			}
 			c.part, c.x, c.y, c.z = s.part, nx*k, ny*k, nz*k
+			c.step = jumpPixels * t.f.pixelDepth(s.part, c.n)
 		}
 	}
 }
@@ -212,9 +223,8 @@ func (t *tile) differ(i, j int, dx, dy float32, b *border) bool {
 	if !t.f.parts[p.part].outline {
 		return false
 	}
-	pixel := t.f.pixelDepth(p.part, p.n)
 	fold := false
-	if abs32(p.n-q.n) > 6*pixel && t.f.parts[p.part].form != formDisc {
+	if abs32(p.n-q.n) > p.step && t.f.parts[p.part].form != formDisc {
 		// A jump in depth of more than some pixels, and more than the slopes
 		// account for. Where both sides are seen at a glancing angle the
 		// slopes of facets say little.
@@ -223,7 +233,7 @@ func (t *tile) differ(i, j int, dx, dy float32, b *border) bool {
 		qn, qx, qy := t.plane(q.slot, x+dx, y+dy)
 		gp, gq := px*dx+py*dy, qx*dx+qy*dy
 		jump := abs32((pn + gp/2) - (qn - gq/2))
-		fold = jump > 6*pixel && jump > 3*min(abs32(gp), abs32(gq)) && (max(p.z, q.z) > 0.35 || jump > 60*pixel)
+		fold = jump > p.step && jump > 3*min(abs32(gp), abs32(gq)) && (max(p.z, q.z) > 0.35 || jump > 10*p.step)
 	}
 	if !fold && p.x*q.x+p.y*q.y+p.z*q.z > creaseCos {
 		return false
@@ -388,9 +398,6 @@ func (t *tile) inkLayer(l *layer, part int32) {
 	any := false
 	meet := func(i, j int, b *border) {
 		p, q := l.at[i].mask, l.at[j].mask
-		if p == q {
-			return
-		}
 		cp, cq := float32(bits.OnesCount32(p))/n, float32(bits.OnesCount32(q))/n
 		if (cp >= 0.5) == (cq >= 0.5) {
 			return
@@ -411,10 +418,11 @@ func (t *tile) inkLayer(l *layer, part int32) {
 	for y := area.Min.Y; y < area.Max.Y; y++ {
 		for x := area.Min.X; x < area.Max.X; x++ {
 			i := y*t.side + x
-			if x+1 < area.Max.X {
+			m := l.at[i].mask
+			if x+1 < area.Max.X && m != l.at[i+1].mask {
 				meet(i, i+1, &k.right[i])
 			}
-			if y+1 < area.Max.Y {
+			if y+1 < area.Max.Y && m != l.at[i+t.side].mask {
 				meet(i, i+t.side, &k.down[i])
 			}
 		}

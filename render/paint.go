@@ -194,12 +194,17 @@ func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
 	var x0, x1 [16]int
 	nx, ny := float32(d.n[1]), float32(d.n[2])
 	full := uint32(1)<<n - 1
-	frags := t.frags
+	area := t.clip
 	all := d.fills(float64(t.x), float64(t.y), float64(t.x+t.side), float64(t.y+t.side))
+	if keep = keep && (!all || t.solidAny); !keep {
+		area = t.inner
+		y0, y1 = max(y0, area.Min.Y), min(y1, area.Max.Y)
+	}
+	frags := t.frags
 	for py := y0; py < y1; py++ {
 		from, to, coreFrom, coreTo := math.MaxInt, 0, 0, math.MaxInt
 		if all {
-			from, to = t.clip.Min.X, t.clip.Max.X
+			from, to = area.Min.X, area.Max.X
 		}
 		for k := 0; k < n && !all; k++ {
 			x0[k], x1[k] = 0, 0
@@ -213,6 +218,7 @@ func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
 			coreFrom, coreTo = max(coreFrom, x0[k]), min(coreTo, x1[k])
 		}
 		row := d.n[0] + d.n[2]*(float64(t.y+py)+0.5-d.my) + d.n[1]*(float64(t.x)+0.5-d.mx)
+		from, to = max(from, area.Min.X), min(to, area.Max.X)
 		for x := from; x < to; x++ {
 			mask := full
 			if x < coreFrom || x >= coreTo {
@@ -254,6 +260,18 @@ func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
 // ahead returns the samples of a pixel where a plane lies in front of what is
 // there.
 func (t *tile) ahead(keys []uint64, near, nx, ny float32) (mask uint32) {
+	// Mostly all samples agree.
+	lo, hi := keys[0], keys[0]
+	for _, key := range keys[1:] {
+		lo, hi = min(lo, key), max(hi, key)
+	}
+	half := (abs32(nx) + abs32(ny)) / 2
+	if near-half > math.Float32frombits(uint32(hi>>32)) {
+		return 1<<len(keys) - 1
+	}
+	if near+half < math.Float32frombits(uint32(lo>>32)) {
+		return 0
+	}
 	step := 1 / float32(len(keys))
 	for k, key := range keys {
 		at := near + nx*(float32(t.sx[k&15])-0.5) + ny*((float32(k)+0.5)*step-0.5)

@@ -9,13 +9,14 @@ import (
 // it, as wide as the widest outline. First every sample learns which surface
 // is nearest, then translucent layers are collected, then pixels are shaded.
 type tile struct {
-	f    *frame
-	lg   uint
-	side int             // of the canvas with its apron
-	x, y int             // place of the canvas in the whole picture
-	clip image.Rectangle // of the canvas, in its own pixels
-	rows [2]int          // first and last sample row to draw, in the whole picture
-	sx   [16]float64
+	f     *frame
+	lg    uint
+	side  int             // of the canvas with its apron
+	x, y  int             // place of the canvas in the whole picture
+	clip  image.Rectangle // of the canvas, in its own pixels
+	inner image.Rectangle // without the apron
+	rows  [2]int          // first and last sample row to draw, in the whole picture
+	sx    [16]float64
 
 	// keys holds, for every sample, the nearness of the nearest surface in
 	// the upper half and its slot in the lower. Positive floats are ordered
@@ -103,6 +104,7 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	t.side = tileSide + 2*f.apron
 	t.x, t.y = out.Min.X/tileSide*tileSide-f.apron, out.Min.Y/tileSide*tileSide-f.apron
 	t.clip = out.Inset(-f.apron).Sub(image.Pt(t.x, t.y))
+	t.inner = out.Sub(image.Pt(t.x, t.y))
 	t.rows = [2]int{(t.y + t.clip.Min.Y) << t.lg, (t.y + t.clip.Max.Y) << t.lg}
 	t.sx = f.sx
 	t.rim = 0.5 / float32(int(1)<<t.lg)
@@ -295,11 +297,16 @@ func (t *tile) flush(part int32) {
 			continue
 		}
 		at := l.at[l.y0*t.side : (l.y1+1)*t.side]
+		apron := t.f.apron > 0
 		form := t.f.parts[part].form
 		mesh := form == formMesh || form == formDisc && t.f.discs[t.f.parts[part].index].hole < 0
 		for i := range at {
 			s := &at[i]
 			if s.mask == 0 {
+				continue
+			}
+			if apron && !image.Pt(i%t.side, l.y0+i/t.side).In(t.inner) {
+				s.mask = 0 // wanted for outlines alone
 				continue
 			}
 			if mesh {
