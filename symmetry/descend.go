@@ -218,7 +218,7 @@ func (s *Setting) split(representation []*mat.Dense) ([]Content, *mat.Dense) {
 				v := mat.NewVecDense(n, nil)
 				v.MulVec(projections[p], first)
 				for k := 0; k < n; k++ {
-					partners.Set(row, k, tidyZero(v.AtVec(k)))
+					partners.Set(row, k, tidyZero(tidy(v.AtVec(k))))
 				}
 				row++
 				// In a complex pair P_11 holds both partners of a copy.
