@@ -12,10 +12,15 @@ import (
 	"lobewright/orbitals"
 )
 
-// groupFlags are the flags that decide the group and its frame.
-func groupFlags(flags *pflag.FlagSet, s *study.Study) {
+// coreFlags choose the atoms that decide the group.
+func coreFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.StringVar(&s.Core, "core", "", "`ATOMS` that decide the group, such as Cu,O or 1-5 (default all)")
 	flags.StringVar(&s.Ignore, "ignore", "", "`ATOMS` that do not decide the group, such as H")
+}
+
+// groupFlags are the flags that decide the group and its frame.
+func groupFlags(flags *pflag.FlagSet, s *study.Study) {
+	coreFlags(flags, s)
 	flags.Var(&positive{&s.Tolerance, study.DefaultTolerance}, "tolerance", "how far an atom may lie from its ideal place, a `LENGTH` in Å")
 	flags.StringVar(&s.As, "as", "", "take the structure for `GROUP`, one that it nearly has: D4h, or D4h:2 for the second as near lists them")
 	flags.StringVar(&s.Frame, "frame", "", "`RULE` that puts the axes; the command frames lists those of a molecule (default \"default\")")

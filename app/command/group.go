@@ -49,6 +49,9 @@ operation, the classes, and the irreps with their characters and matrices.
 
 // group computes the group and passes on what the reader remarks.
 func (p *program) group(ctx context.Context, s study.Study) (*work.Group, error) {
+	if err := p.prepare(ctx, s); err != nil {
+		return nil, err
+	}
 	g, err := p.work.Group(ctx, s)
 	if err != nil {
 		return nil, err
@@ -152,7 +155,7 @@ func count(n int, noun string) string {
 	return fmt.Sprintf("%d %ss", n, noun)
 }
 
-func trimmed(x float64) string { return fmt.Sprintf("%g", x) }
+func trimmed(x float64) string { return fmt.Sprintf("%.4g", x) }
 
 // numbers writes rising numbers with runs as ranges: 1-5,7.
 func numbers(list []int) string {

@@ -32,6 +32,9 @@ character (--character). The sum is Σ D(R)_KL · R φ over the operations R.
 			if err := checkLedger(cmd, &s); err != nil {
 				return err
 			}
+			if err := p.prepare(cmd.Context(), s); err != nil {
+				return err
+			}
 			l, err := p.work.Ledger(cmd.Context(), s)
 			if err != nil {
 				return err

@@ -2,6 +2,7 @@ package command
 
 import (
 	"context"
+	"fmt"
 	"strings"
 
 	"github.com/spf13/cobra"
@@ -50,6 +51,9 @@ matrices of the irrep.
 
 // orbitals computes the group orbitals and passes on all remarks.
 func (p *program) orbitals(ctx context.Context, s study.Study) (*work.Orbitals, error) {
+	if err := p.prepare(ctx, s); err != nil {
+		return nil, err
+	}
 	o, err := p.work.Orbitals(ctx, s)
 	if err != nil {
 		return nil, err
@@ -74,6 +78,9 @@ func projectText(o *work.Orbitals) string {
 		b.WriteString("\nCharacters of the basis\n" + table.Representation(o).Text())
 	}
 	b.WriteString("\nContent\n  " + notation.Content(labels(o), o.Content) + "\n")
+	if o.Linear != "" {
+		fmt.Fprintf(&b, "\nNames in %s, up to Φ\n%s", o.Linear, table.LinearNames(o).Text())
+	}
 	b.WriteString("\nGroup orbitals\n" + table.Orbitals(o).Text())
 	return b.String()
 }

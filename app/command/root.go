@@ -65,6 +65,6 @@ figures of the demonstrations into the folder out instead.`,
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error {
 		return usagef("%w; see %q", err, cmd.CommandPath()+" --help")
 	})
-	root.AddCommand(p.groupCommand(), p.projectCommand(), p.ledgerCommand(), p.figureCommand(), p.windowCommand(), p.demoCommand(), p.framesCommand(), p.multiplyCommand(), p.descendCommand())
+	root.AddCommand(p.groupCommand(), p.projectCommand(), p.ledgerCommand(), p.figureCommand(), p.windowCommand(), p.demoCommand(), p.framesCommand(), p.multiplyCommand(), p.descendCommand(), p.nearCommand(), p.idealizeCommand())
 	return root
 }

@@ -7,6 +7,7 @@ import (
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/notation"
+	"lobewright/app/work"
 	"lobewright/symmetry"
 )
 
@@ -121,6 +122,32 @@ func Rows(m mgl64.Mat3) Table {
 	for i := range 3 {
 		r := m.Row(i)
 		t.Add("xyz"[i:i+1], notation.Vector(r[:], 4))
+	}
+	return t
+}
+
+// LinearNames says which irreps of the linear group go over into those of the
+// finite group that hold functions of the basis.
+func LinearNames(o *work.Orbitals) Table {
+	const most = 3
+	t := Table{Head: []string{o.Fit.Setting.Symbol, o.Linear}}
+	d, err := symmetry.DescendLinear(o.Linear, o.Fit.Setting.Symbol, most)
+	if err != nil {
+		return t
+	}
+	for i, irrep := range o.Irreps {
+		if o.Content[i] == 0 {
+			continue
+		}
+		var names []string
+		for k, content := range d.Correlation {
+			for _, c := range content {
+				if c.Irrep.Label == irrep.Label {
+					names = append(names, d.Irreps[k].Label)
+				}
+			}
+		}
+		t.Add(irrep.Label, strings.Join(names, " or "))
 	}
 	return t
 }

@@ -9,6 +9,8 @@ import (
 	"strconv"
 	"strings"
 
+	"github.com/go-gl/mathgl/mgl64"
+
 	"lobewright/app/study"
 	"lobewright/symmetry"
 )
@@ -45,12 +47,36 @@ func (w *Work) ladderOf(ctx context.Context, read *Structure, s study.Study, pro
 			return nil, err
 		}
 		points, links := points(read, core)
+		if fit, err := symmetry.Detect(points, links, symmetry.Options{}); err == nil && fit.Setting.Infinite() {
+			return &Ladder{read, core, []*symmetry.Nearness{infinitelyNear(fit, points)}}, nil
+		}
 		groups, err := symmetry.Near(ctx, points, links, 0, progress)
 		if err != nil {
 			return nil, blame(StageGroup, ConcernStructure, err)
 		}
 		return &Ladder{read, core, groups}, nil
 	})
+}
+
+// infinitelyNear is the one entry for a linear molecule or an atom, whose
+// subgroups cannot be listed.
+func infinitelyNear(fit *symmetry.Fit, points []symmetry.Point) *symmetry.Nearness {
+	n := &symmetry.Nearness{Fit: fit, Embedding: 1, Axis: fit.Rotation.Row(2)}
+	var centre mgl64.Vec3
+	for _, p := range points {
+		centre = centre.Add(p.Position.Mul(1 / float64(len(points))))
+	}
+	moved, spread := 0.0, 0.0
+	for k, p := range points {
+		d := fit.Rotation.Mul3x1(p.Position.Sub(fit.Origin)).Sub(fit.Ideal[k])
+		q := p.Position.Sub(centre)
+		moved += d.Dot(d)
+		spread += q.Dot(q)
+	}
+	if spread > 0 {
+		n.Measure = 100 * moved / spread
+	}
+	return n
 }
 
 // ParseEmbedding reads "D4h" or "D4h:2"; without a number the embedding is 1.
@@ -98,9 +124,28 @@ func (l *Ladder) Find(text string) (*symmetry.Nearness, error) {
 	return nil, fmt.Errorf("the structure is not within %g Å of %s: it is of %s", symmetry.DefaultNearness, symbol, strings.Join(symbols, " "))
 }
 
+// Linear is the fit of a linear molecule, whose ladder is its one entry; else
+// nil.
+func (l *Ladder) Linear() *symmetry.Fit {
+	if len(l.Groups) == 1 && l.Groups[0].Fit.Setting.Infinite() && len(l.Core) > 1 {
+		return l.Groups[0].Fit
+	}
+	return nil
+}
+
 // choose is the fit of the group that a study takes the structure for. Its
 // tolerance is that of the study, or what the group needs.
 func (l *Ladder) choose(s study.Study) (*symmetry.Fit, error) {
+	if linear := l.Linear(); linear != nil {
+		symbol, embedding, err := ParseEmbedding(s.As)
+		if err == nil && embedding > 1 {
+			err = fmt.Errorf("there is one %s with the z of a linear molecule, not %d", symbol, embedding)
+		}
+		if err == nil && symbol != linear.Setting.Symbol {
+			linear, err = linear.LinearAs(symbol)
+		}
+		return linear, blame(StageGroup, ConcernAs, err)
+	}
 	near, err := l.Find(s.As)
 	if err != nil {
 		return nil, blame(StageGroup, ConcernAs, err)

@@ -62,6 +62,8 @@ type Group struct {
 	// Sites holds every atom in the working frame, and where the operations
 	// carry it.
 	Sites *orbitals.Sites
+	// Linear is C∞v or D∞h where a linear molecule is taken for a finite group.
+	Linear string
 }
 
 // AtomNames are the names of all atoms: symbol and number, from 1 ("Cl2").
@@ -175,7 +177,11 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Gr
 		if err != nil {
 			return nil, blame(StageGroup, ConcernStructure, err)
 		}
-		return &Group{Structure: read, Core: core, Fit: fit, Sites: sites}, nil
+		g := &Group{Structure: read, Core: core, Fit: fit, Sites: sites}
+		if ladder := w.ladders.value; s.As != "" && !fit.Setting.Infinite() && ladder.Linear() != nil {
+			g.Linear = ladder.Linear().Setting.Symbol
+		}
+		return g, nil
 	})
 }
 
