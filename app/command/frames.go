@@ -1,7 +1,6 @@
 package command
 
 import (
-	"fmt"
 	"strings"
 
 	"github.com/spf13/cobra"
@@ -169,9 +168,4 @@ func describeExchange(g *work.Group, e work.Exchange) exchangeDocument {
 		d.Operations = append(d.Operations, renamingDocument{o.Name, there.Operations[e.Names.Operations[r]].Name})
 	}
 	return d
-}
-
-// ruleInWords names a frame for a sentence.
-func ruleInWords(e work.Exchange) string {
-	return fmt.Sprintf("%s (%s)", e.Frame.Rule.Name, notation.ShortConvention(e.Fit))
 }

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"slices"
 	"strings"
+	"unicode/utf8"
 
 	"github.com/spf13/cobra"
 
@@ -154,15 +155,12 @@ var linearLetters = map[string]string{"S": "Σ", "P": "Π", "D": "Δ", "F": "Φ"
 // small, and Latin in a linear group.
 func infiniteIrrep(symbol, typed string) (symmetry.Irrep, error) {
 	label := notation.PlainLabel(typed)
-	for _, r := range label {
-		first := string(r)
-		rest := label[len(first):]
-		if greek, ok := linearLetters[first]; ok && symbol != "Kh" {
-			first = greek
-		}
-		label = strings.ToUpper(first) + rest
-		break
+	_, length := utf8.DecodeRuneInString(label)
+	first, rest := label[:length], label[length:]
+	if greek, ok := linearLetters[first]; ok && symbol != "Kh" {
+		first = greek
 	}
+	label = strings.ToUpper(first) + rest
 	ir, err := symmetry.InfiniteIrrepByLabel(symbol, label)
 	if err != nil {
 		_, err = symmetry.InfiniteIrrepByLabel(symbol, typed) // names it as typed

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 	"unicode"
+	"unicode/utf8"
 
 	"lobewright/app/notation"
 	"lobewright/app/work"
@@ -60,11 +61,8 @@ func sameLabel(a, b string) bool {
 
 // asTyped gives a label the letter case of another.
 func asTyped(label, typed string) string {
-	for _, r := range typed {
-		if unicode.IsLower(r) {
-			return notation.Orbital(label)
-		}
-		break
+	if first, _ := utf8.DecodeRuneInString(typed); unicode.IsLower(first) {
+		return notation.Orbital(label)
 	}
 	return label
 }
