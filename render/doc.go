@@ -28,6 +28,12 @@
 // of the picture to draw and Band.Width and Height are the size of the whole,
 // up to 16,384 on a side. Bands fit together without a seam.
 //
+// # While a scene moves
+//
+// Only edges depend on the number of samples: a window may draw with one
+// sample while it is turned and then again with 4, 8 and 16, and nothing jumps.
+// Pass a context to give up a drawing that has become stale.
+//
 // # Parts of the picture
 //
 // A shape with a Place is fixed to the picture (a triad of axes, a scale bar,

@@ -42,10 +42,10 @@ const (
 	// faintest is the share of the sky below which a ball is not felt; it is
 	// taken off every share so that nothing jumps where a ball comes into
 	// reach.
-	faintest = 0.03
-	// strength turns the share of the sky into shade: half the sky hidden is
+	faintest = 0.045
+	// strength turns the share of the sky into shade: about half the sky hidden is
 	// full shade.
-	strength = 2
+	strength = 2.2
 )
 
 // shadesOf finds the balls of the frame and, for every part, which matter.

@@ -116,7 +116,9 @@ func LitLook(ground Color) Look {
 }
 
 // InkLook is the style Ink on a full ground with outlines of the given
-// colour, half a point wide.
+// colour, half a point wide, which is right for paper. On a screen, which is
+// coarser, set OutlineWidth to about 1.4 pixels (0.37 mm at 96 pixels an
+// inch).
 func InkLook(ground, line Color) Look {
 	return Look{
 		Style: Ink, Ground: ground, GroundOpacity: 1,

@@ -324,3 +324,32 @@ func TestDrawTellsWhatIsWrong(t *testing.T) {
 		}
 	}
 }
+
+// Parts of the largest picture agree where they overlap.
+func TestLargestPicture(t *testing.T) {
+	s, c := translucentScene(t)
+	for _, l := range looks {
+		q := Quality{Samples: 4, DPI: 1200}
+		var parts [2]*image.RGBA
+		for k, rect := range []image.Rectangle{image.Rect(9000, 9100, 9220, 9330), image.Rect(9101, 9203, 9301, 9403)} {
+			parts[k] = image.NewRGBA(rect)
+			if err := Draw(context.Background(), parts[k], s, c, l.look, q, Band{MaxSide, MaxSide}); err != nil {
+				t.Fatal(err)
+			}
+		}
+		both := parts[0].Rect.Intersect(parts[1].Rect)
+		colors := map[[4]uint8]bool{}
+		for y := both.Min.Y; y < both.Max.Y; y++ {
+			for x := both.Min.X; x < both.Max.X; x++ {
+				a, b := parts[0].RGBAAt(x, y), parts[1].RGBAAt(x, y)
+				if a != b {
+					t.Fatalf("%s: pixel %d,%d is %v in one part and %v in another", l.name, x, y, a, b)
+				}
+				colors[[4]uint8{a.R, a.G, a.B, a.A}] = true
+			}
+		}
+		if len(colors) < 3 {
+			t.Errorf("%s: the part shows nothing", l.name)
+		}
+	}
+}
