@@ -47,6 +47,31 @@ func (e *answerEntry) TypedKey(k *fyne.KeyEvent) {
 // AcceptsTab implements fyne.Tabbable.
 func (e *answerEntry) AcceptsTab() bool { return e.tab != nil }
 
+// A sheetButton closes its sheet by Escape too.
+type sheetButton struct {
+	widget.Button
+	escape func()
+}
+
+func newSheetButton(label string, do, escape func()) *sheetButton {
+	b := &sheetButton{escape: escape}
+	b.Text, b.OnTapped = label, do
+	b.ExtendBaseWidget(b)
+	return b
+}
+
+// TypedKey implements fyne.Focusable.
+func (b *sheetButton) TypedKey(k *fyne.KeyEvent) {
+	switch k.Name {
+	case fyne.KeyEscape:
+		b.escape()
+	case fyne.KeyReturn, fyne.KeyEnter:
+		b.OnTapped()
+	default:
+		b.Button.TypedKey(k)
+	}
+}
+
 // ask opens a sheet; answer returns what is wrong, or nil to close it.
 func (u *ui) ask(title, text, now string, answer func(string) error) *question {
 	return u.askLater(title, text, now, func(text string, done func(error)) { done(answer(text)) })
@@ -64,9 +89,9 @@ func (u *ui) askLater(title, text, now string, answer func(text string, done fun
 	q.fault = canvas.NewText("", p.Accent)
 	q.fault.TextSize = secondSize * float32(u.zoom())
 	head := widget.NewLabelWithStyle(title, fyne.TextAlignLeading, fyne.TextStyle{Bold: true})
-	ok := widget.NewButton("OK", func() { u.guard(q.submit) })
+	ok := newSheetButton("OK", func() { u.guard(q.submit) }, q.close)
 	ok.Importance = widget.HighImportance
-	cancel := widget.NewButton("Cancel", q.close)
+	cancel := newSheetButton("Cancel", q.close, q.close)
 	explain := widget.NewLabel(text)
 	explain.Wrapping = fyne.TextWrapWord
 	q.content = container.NewVBox(head, explain, q.entry, q.fault)

@@ -241,13 +241,18 @@ func (u *ui) showText(title, text string) {
 	var popup *widget.PopUp
 	body := widget.NewLabel(text)
 	body.Wrapping = fyne.TextWrapWord
-	done := widget.NewButton("Close", func() { popup.Hide() })
+	hide := func() {
+		popup.Hide()
+		u.win.Canvas().Focus(u.view)
+	}
+	done := newSheetButton("Close", hide, hide)
 	popup = widget.NewModalPopUp(container.NewPadded(container.NewVBox(
 		widget.NewLabelWithStyle(title, fyne.TextAlignLeading, fyne.TextStyle{Bold: true}), body,
 		container.NewBorder(nil, nil, nil, done))), u.win.Canvas())
 	popup.Show()
 	room := u.win.Canvas().Size()
-	popup.Resize(fyne.NewSize(min(760*float32(u.zoom()), room.Width-40), popup.MinSize().Height))
-	popup.Resize(fyne.NewSize(popup.Size().Width, popup.MinSize().Height))
+	width := min(720*float32(u.zoom()), room.Width-40)
+	popup.Resize(fyne.NewSize(width, popup.MinSize().Height))
+	popup.Resize(fyne.NewSize(width, popup.MinSize().Height)) // the text has been wrapped
 	u.win.Canvas().Focus(done)
 }

@@ -20,6 +20,7 @@ type player struct {
 	began   time.Time
 	clock   *clock
 	shown   bool // the button shows a pause
+	said    time.Time
 }
 
 func newPlayer(u *ui) *player { return &player{u: u} }
@@ -88,7 +89,12 @@ func (p *player) tick() {
 		return
 	}
 	u.show(true)
-	u.said.Update()
+	// Nobody reads faster, and every pane that is drawn costs frames.
+	const often = 100 * time.Millisecond
+	if now := time.Now(); now.Sub(p.said) > often {
+		p.said = now
+		u.said.Update()
+	}
 }
 
 // stop ends the playing where it is.

@@ -20,6 +20,7 @@ import (
 	"lobewright/app/picture"
 	"lobewright/app/session"
 	"lobewright/app/study"
+	"lobewright/app/work"
 )
 
 // A bench is a window under the toolkit's test driver. What other goroutines
@@ -311,6 +312,59 @@ func TestPathsAreTyped(t *testing.T) {
 	}
 	if got := completions(dir + "/p"); !slices.Equal(got, []string{"paper/", "palladate.xyz", "palladium.xyz"}) {
 		t.Errorf("completions are %q", got)
+	}
+}
+
+func TestASheetStaysUntilItsAnswerIsRight(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("water")
+	b.askTolerance()
+	top := func() fyne.CanvasObject { return b.win.Canvas().Overlays().Top() }
+	entry := b.win.Canvas().Focused().(*answerEntry)
+	for _, wrong := range []string{"", "much", "-1", "NaN"} {
+		entry.SetText(wrong)
+		entry.OnSubmitted(wrong)
+		if top() == nil {
+			t.Fatalf("%q is taken for an answer", wrong)
+		}
+	}
+	entry.SetText("0,05 Å")
+	entry.OnSubmitted("0,05 Å")
+	if top() != nil || b.now().Tolerance != 0.05 {
+		t.Errorf("the tolerance is %v, the sheet %v", b.now().Tolerance, top())
+	}
+	for _, open := range []func(){b.askTolerance, b.askOpen, b.askCore, b.askAxes, b.showKeys, b.about} {
+		open()
+		b.win.Canvas().Focused().TypedKey(&fyne.KeyEvent{Name: fyne.KeyEscape})
+		if top() != nil {
+			t.Fatal("Escape leaves a sheet open")
+		}
+	}
+}
+
+func TestAxesAreChosenByRuleAndByHand(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("square-plane")
+	rules := 0
+	for _, f := range b.state.Group.Fit.Frames() {
+		if f.Rule.Name == "default" {
+			continue
+		}
+		rules++
+		before := b.state.Group
+		b.tap(b.given, "frame "+f.Rule.Name)
+		b.until("the axes "+f.Rule.Name, func() bool { return b.state.Group != before && b.state.Group.Fit.Rule.Name == f.Rule.Name })
+	}
+	if rules == 0 {
+		t.Error("D4h has one frame only")
+	}
+	b.setAxes("", "C4(z)", "3")
+	b.until("the axes by hand", func() bool { return b.state.Group.Fit.Rule.Name == "explicit" })
+	group := b.state.Group
+	b.setAxes("", "99", "")
+	b.until("the problem", func() bool { return b.state.Problem(work.ConcernZ) != nil })
+	if b.state.Group != group {
+		t.Error("the group before is gone")
 	}
 }
 
