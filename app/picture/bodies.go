@@ -17,7 +17,8 @@ const (
 	atomShare     = 0.32 // radius of an atom, of its covalent radius
 	carrierShare  = 0.16 // the same for atoms with lobes, whose tips it would hide
 	bondThickness = 0.09 // Å
-	lobeShare     = 0.45 // length of the longest lobe, of the nearest distance
+	lobeShare     = 0.45 // length of the longest lobe, of the nearest distance between carriers
+	mostShare     = 0.9  // the same at the most, of the distance to the next atom of any kind
 )
 
 // A ball is a round part of the scene: an atom, or about as much room as a
@@ -77,24 +78,34 @@ func (s *stage) addMolecule(g *work.Group) {
 }
 
 // lobeUnit is the length of the longest lobe: a share of the nearest distance
-// between an atom that carries functions and any other atom. Without another
-// atom the atom's own size takes its place.
+// between two atoms that carry functions, so that lobes side by side do not run
+// into each other, but not more than reaches the next atom of any kind. With a
+// single carrier the next atom takes the place of the next carrier, and without
+// another atom the atom's own size.
 func lobeUnit(g *work.Group, carries []bool) float64 {
-	nearest := math.Inf(1)
+	nearest, next := math.Inf(1), math.Inf(1)
 	for i, p := range g.Sites.Positions {
 		if !carries[i] {
 			continue
 		}
 		for j, q := range g.Sites.Positions {
-			if i != j {
-				nearest = min(nearest, p.Sub(q).Len())
+			if i == j {
+				continue
+			}
+			d := p.Sub(q).Len()
+			next = min(next, d)
+			if carries[j] {
+				nearest = min(nearest, d)
 			}
 		}
 	}
-	if math.IsInf(nearest, 1) {
-		nearest = 2 * largestRadius(g.Molecule)
+	switch {
+	case !math.IsInf(nearest, 1):
+		return min(lobeShare*nearest, mostShare*next)
+	case !math.IsInf(next, 1):
+		return lobeShare * next
 	}
-	return lobeShare * nearest
+	return lobeShare * 2 * largestRadius(g.Molecule)
 }
 
 func largestRadius(m *structure.Molecule) float64 {

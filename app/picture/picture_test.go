@@ -120,8 +120,8 @@ func lobeLengths(p *Picture) []float64 {
 }
 
 func TestTheSizeOfALobeGoesWithItsCoefficient(t *testing.T) {
-	// Eg, partner 1, of the octahedron is (2, 2, −1, −1, −1, −1)/√12. The
-	// nearest distance is that of C and O, 1.14 Å.
+	// Eg, partner 1, of the octahedron is (2, 2, −1, −1, −1, −1)/√12. Two C are
+	// 2.7 Å apart, 0.45 of which would be more than 0.9 of the 1.14 Å to O.
 	for size, ratio := range map[string]float64{"": 2, "length": 2, "area": math.Sqrt2, "volume": math.Cbrt(2)} {
 		s := study.Study{
 			Structure: "demo:octahedron", Basis: []string{"C:sigma"},
@@ -132,7 +132,7 @@ func TestTheSizeOfALobeGoesWithItsCoefficient(t *testing.T) {
 			t.Fatalf("%d lobes", len(lengths))
 		}
 		for i, l := range lengths {
-			want := 0.45 * 1.14
+			want := 0.9 * 1.14
 			if i >= 2 {
 				want /= ratio
 			}
