@@ -255,3 +255,23 @@ func TestVectorShadeEqualsPlainGo(t *testing.T) {
 		}
 	}
 }
+
+// Wide outlines make the canvas of a tile wide: triangles as large as it are
+// drawn like small ones.
+func TestWideOutlines(t *testing.T) {
+	s, c := translucentScene(t)
+	look := InkLook(white, Color{})
+	for _, width := range []float64{0.5, 3, 12, 40} { // millimetres
+		look.OutlineWidth = width
+		m := draw(t, s, c, look, 200, 150, Quality{Samples: 4, DPI: 100})
+		dark := 0
+		for i := 0; i < len(m.Pix); i += 4 {
+			if m.Pix[i] < 40 && m.Pix[i+1] < 40 && m.Pix[i+2] < 40 {
+				dark++
+			}
+		}
+		if share := float64(dark) / (200 * 150); width == 40 && share < 0.6 || width == 0.5 && share > 0.4 {
+			t.Errorf("outlines of %g mm blacken %.2f of the picture", width, share)
+		}
+	}
+}

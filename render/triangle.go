@@ -40,8 +40,11 @@ type kernel struct {
 	stride  int64      // 80: bytes from row to row
 	masks   *uint8     // 88: where a layer's masks go, one a pair
 	_       [4]float64 // spare
-	maskBuf [40 * 20]uint8
+	maskBuf [maxMasks]uint8
 }
+
+// maxMasks is the largest field of pixel pairs that the innermost loop takes.
+const maxMasks = 40 * 20
 
 // triangle draws a triangle: onto the samples when l is nil, otherwise into
 // the layer. It tells whether it reached a sample.
@@ -81,6 +84,9 @@ func (t *tile) triangle(a, b, c *vert, slot uint32, l *layer) bool {
 	px1, py1 := min(int(x1-rim+wide+1)-wide-1, t.clip.Max.X-1), min(int(y1-rim+wide+1)-wide-1, t.clip.Max.Y-1)
 	if px1 < px0 || py1 < py0 {
 		return false
+	}
+	if l != nil && (py1-py0+1)*((px1-px0)/2+1) > maxMasks {
+		return t.large(a, b, c, n0, gx, gy, slot, l)
 	}
 	sx, sy := int32(px0*sub), int32(py0*sub)
 	// The edge from P to Q has a = Py - Qy and b = Qx - Px.
