@@ -343,15 +343,34 @@ func (u *ui) typeBasis(text string) {
 		return
 	}
 	if _, err := orbitals.ParseChoice(text); err != nil {
-		u.notice = err.Error()
-		u.given.Update()
+		u.sayTyped(err.Error())
 		return
 	}
-	u.notice = ""
 	u.basis.SetText("")
 	if !slices.Contains(u.now().Basis, text) {
 		u.setBasis(append(slices.Clone(u.now().Basis), text))
 	}
+}
+
+// sayTyped shows what is wrong with what was typed, right above it.
+func (u *ui) sayTyped(problem string) {
+	if problem == u.typedProblem {
+		return
+	}
+	u.typedProblem = problem
+	if problem == "" {
+		u.fault.Hide()
+	} else {
+		u.fault.Show()
+	}
+	u.fault.Update()
+	u.win.Content().Refresh()
+}
+
+func (u *ui) drawFault(b *board) {
+	y := b.paragraph(pad, secondSize+2-u.fault.scroll, b.width-2*pad, notation.Words(u.typedProblem),
+		style{size: secondSize, color: b.palette.Accent, align: -1})
+	u.fault.extent = y - secondSize + u.fault.scroll
 }
 
 func (u *ui) setTolerance(t float64) {

@@ -28,6 +28,8 @@ type drawn struct {
 	*picture.Frame
 	image *image.RGBA
 	full  bool
+	// structure tells that it is not the mere ground.
+	structure bool
 }
 
 // frames draws pictures in the background. The newest request wins; images go
@@ -205,7 +207,7 @@ func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.
 	if d == nil || d.image.Rect.Dx() != r.width || d.image.Rect.Dy() != r.height {
 		d = &drawn{image: image.NewRGBA(image.Rect(0, 0, r.width, r.height))}
 	}
-	d.Frame, d.full = frame, !quick
+	d.Frame, d.full, d.structure = frame, !quick, r.shown.Group != nil
 	if err := renderer.Draw(ctx, d.image, &frame.Scene, frame.Camera, frame.Look, frame.Quality, render.Band{}); err != nil {
 		f.free <- d
 		return f.ctx.Err() == nil

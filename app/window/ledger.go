@@ -304,7 +304,11 @@ func (u *ui) imageText(op work.Operation) notation.Text {
 	default:
 		return nil
 	}
-	t := setCombination(terms, name, notation.ExactCoefficient)
+	write := notation.ExactCoefficient
+	if op.Family {
+		write = shortCoefficient // for any angle there is some long cosine
+	}
+	t := setCombination(terms, name, write)
 	// The function that it has become is named, where it is one.
 	if s.Projection.TheSubject() == study.SubjectFunction && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
 		f := st.Basis.Functions[terms[0].Function]

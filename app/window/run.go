@@ -89,10 +89,8 @@ func Run(ctx context.Context, o Options) (err error) {
 
 	// Without OpenGL the toolkit goes on and shows nothing.
 	painted := make(chan struct{})
-	u.view.first = func() {
-		close(painted)
-		mark("first picture")
-	}
+	u.view.painted = func() { close(painted) }
+	u.view.first = func() { mark("first picture") }
 	u.mark = mark
 	if measure {
 		measureSpots = true

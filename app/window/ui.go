@@ -49,12 +49,15 @@ type ui struct {
 	angle   *scrubBar
 	angles  *fyne.Container // angle with its name, for linear molecules
 	basis   *widget.Entry
+	fault   *pane // above basis: what is wrong with what was typed
 	play    *widget.Button
 	hints   *hintBox
 	thumbs  *thumbs
 	player  *player
 	items   menuItems
 
+	// typedProblem is what is wrong with the functions that were typed.
+	typedProblem string
 	// openProblem is what is wrong with the file that was to be opened last.
 	openProblem string
 	notice      string // a remark of the program itself
@@ -105,8 +108,12 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.angle.end = u.commit
 	u.angles = container.NewBorder(nil, nil, widget.NewLabel("φ"), nil, u.angle)
 	u.angles.Hide()
+	u.fault = newPane(u.drawFault, u)
+	u.fault.least = fyne.NewSize(100, 54)
+	u.fault.Hide()
 	u.basis = widget.NewEntry()
 	u.basis.SetPlaceHolder("type: Cl:sigma, 2-4:pz …")
+	u.basis.OnChanged = func(string) { u.sayTyped("") }
 	u.basis.OnSubmitted = func(text string) { u.guard(func() { u.typeBasis(text) }) }
 	win.SetContent(u.assemble())
 	win.SetMainMenu(u.menus())
@@ -147,7 +154,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.scrub, u.angles)
 	row := container.NewBorder(nil, nil, controls, nil, container.New(&shares{weights: []float32{1, 1.1}}, bars, u.said))
 	below := container.NewVBox(rule(), u.ledger, rule(), container.NewPadded(row))
-	left := container.NewBorder(nil, container.NewPadded(u.basis), nil, nil, u.given)
+	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, u.given)
 	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
 	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
 		container.NewBorder(nil, nil, rule(), nil, right), u.view)

@@ -35,7 +35,8 @@ type viewport struct {
 	width, height int // of the picture in pixels
 	picker        render.Renderer
 	posted        atomic.Bool
-	first         func() // called once, after the first frame
+	painted       func() // called once, when the toolkit first asks for the picture
+	first         func() // called once, with the first picture of a structure
 	shownCount    int
 
 	button        desktop.MouseButton // that is down; 0 none
@@ -118,6 +119,11 @@ func (v *viewport) scale() float64 {
 }
 
 func (v *viewport) generate(w, h int) image.Image {
+	if v.painted != nil {
+		f := v.painted
+		v.painted = nil
+		f()
+	}
 	if w != v.width || h != v.height {
 		v.width, v.height = w, h
 		v.ask(true) // quick first
@@ -127,7 +133,7 @@ func (v *viewport) generate(w, h int) image.Image {
 		return image.NewRGBA(image.Rect(0, 0, 1, 1))
 	}
 	v.shownCount++
-	if v.first != nil {
+	if v.first != nil && d.structure {
 		f := v.first
 		v.first = nil
 		f()

@@ -255,6 +255,25 @@ func TestABadFileChangesNothing(t *testing.T) {
 	}
 }
 
+func TestWhatIsWrongWithTypedFunctionsStandsAboveThem(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("water")
+	before := b.now()
+	b.basis.SetText("H:sigm")
+	b.basis.OnSubmitted("H:sigm")
+	if !strings.Contains(b.typedProblem, "sigm") || !b.fault.Visible() || b.basis.Text != "H:sigm" || !b.now().Equal(before) {
+		t.Errorf("it says %q, and %q is typed", b.typedProblem, b.basis.Text)
+	}
+	b.basis.SetText("H:sigma")
+	if b.fault.Visible() {
+		t.Error("the message stays while one types")
+	}
+	b.basis.OnSubmitted("H:sigma")
+	if got := b.now().Basis; len(got) != 2 || got[1] != "H:sigma" || b.basis.Text != "" {
+		t.Errorf("the basis is %q", got)
+	}
+}
+
 func TestCoordinatesCanBePastedAndDropped(t *testing.T) {
 	b := newBench(t, t.TempDir())
 	b.open("water")
