@@ -23,6 +23,7 @@ func groupFlags(flags *pflag.FlagSet, s *study.Study) {
 	coreFlags(flags, s)
 	flags.Var(&positive{&s.Tolerance, study.DefaultTolerance}, "tolerance", "how far an atom may lie from its ideal place, a `LENGTH` in Å")
 	flags.StringVar(&s.As, "as", "", "take the structure for `GROUP`, one that it nearly has: D4h, or D4h:2 for the second as near lists them")
+	flags.BoolVar(&s.KeepAxes, "keep-axes", false, "with --as: lay the axes as in the largest group near by that holds this one")
 	flags.StringVar(&s.Frame, "frame", "", "`RULE` that puts the axes; the command frames lists those of a molecule (default \"default\")")
 	flags.StringVar(&s.Z, "z", "", "lay z along `WHAT`: an operation, an atom (3), from atom to atom (3,5) or a vector of the input (0,1,1)")
 	flags.StringVar(&s.X, "x", "", "lay x along `WHAT`, as for z")
@@ -32,6 +33,12 @@ func groupFlags(flags *pflag.FlagSet, s *study.Study) {
 func checkFrame(s *study.Study) error {
 	if s.Frame != "" && (s.Z != "" || s.X != "") {
 		return usagef("--frame and --z or --x exclude each other: a rule lays the axes, or you do")
+	}
+	switch {
+	case s.KeepAxes && s.As == "":
+		return usagef("--keep-axes needs --as GROUP, whose axes it lays as in a larger group")
+	case s.KeepAxes && (s.Frame != "" || s.Z != "" || s.X != ""):
+		return usagef("--keep-axes excludes --frame, --z and --x: the axes are kept, or laid anew")
 	}
 	return nil
 }

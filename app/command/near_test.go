@@ -174,3 +174,43 @@ func TestASearchStopsWhenItIsInterrupted(t *testing.T) {
 		t.Errorf("status %d, output %q, messages %q", status, out.String(), messages.String())
 	}
 }
+
+// Eu of the square goes over into B2u + B3u if z stays (x and y), but by the rule
+// for planar D2h, which lays z into the plane, into B1u + B2u.
+func TestAxesAreKeptOnTheWayToASubgroup(t *testing.T) {
+	for _, c := range []struct {
+		flags   []string
+		content string
+	}{
+		{nil, "2Ag + B1u + B2u"},
+		{[]string{"--keep-axes"}, "2Ag + B2u + B3u"},
+	} {
+		var p contractProjection
+		runJSON(t, &p, append([]string{"project", "demo:square-plane", "--as", "D2h", "--on", "Cl:sigma"}, c.flags...)...)
+		checkGroup(t, p.contractGroup)
+		checkFunctions(t, p.contractGroup)
+		checkProjection(t, p)
+		var content []contractContent
+		for _, part := range p.Content {
+			content = append(content, contractContent(part))
+		}
+		if got := contentOf(content); got != c.content {
+			t.Errorf("%v: %s, want %s", c.flags, got, c.content)
+		}
+	}
+	// Of a distorted octahedron too: every group below Oh keeps its axes as far
+	// as its own rules for z allow.
+	var whole contractGroup
+	runJSON(t, &whole, "group", "demo:hydrate", "--core", "1-7", "--as", "Oh")
+	for _, as := range []string{"D4h:1", "D2h:1", "D2h:3", "C4v:2", "C2v:2", "C2h:4", "Cs:2", "C3:1", "Ci", "C1"} {
+		var g, free contractGroup
+		runJSON(t, &g, "group", "demo:hydrate", "--core", "1-7", "--as", as, "--keep-axes")
+		runJSON(t, &free, "group", "demo:hydrate", "--core", "1-7", "--as", as)
+		checkGroup(t, g)
+		checkFunctions(t, g)
+		turn := func(f contractGroup) float64 { return trace(multiply(f.Frame.Rotation, transposed(whole.Frame.Rotation))) }
+		if g.Frame.Name != "held" || turn(g) < turn(free)-1e-9 {
+			t.Errorf("%s: %s, the turn from Oh has the trace %.3f, by default %.3f", as, g.Frame.Name, turn(g), turn(free))
+		}
+	}
+}

@@ -76,6 +76,9 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 	case symmetry.XPermuted:
 		z = permutation(fit.Rule.Name)
 	default:
+		if group, held := strings.CutPrefix(fit.Rule.Z, "held:"); held {
+			return "z and x as near as can be to those of " + group + ", which holds this group", ""
+		}
 		z = fit.Rule.Z
 	}
 	switch fit.Rule.X {

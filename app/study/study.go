@@ -33,6 +33,9 @@ type Study struct {
 	// of the one that it has within the tolerance: "D4h", or "D4h:2" for the
 	// second embedding.
 	As string `record:"as"`
+	// KeepAxes lays the axes of As like those of the largest group that the
+	// structure nearly has and that holds it.
+	KeepAxes bool `record:"keepAxes"`
 	// Frame names the rule that puts the axes; empty: the default rule.
 	Frame string `record:"frame"`
 	// Z and X lay these axes without a rule: an operation, an atom (from the
@@ -193,6 +196,7 @@ func (s Study) Equal(t Study) bool {
 // A flat is a study without its lists, which == can compare.
 type flat struct {
 	structure, coordinates, core, ignore, as, frame, z, x, operation string
+	keepAxes                                                         bool
 	tolerance, moment, angle                                         float64
 	projection                                                       Projection
 	camera                                                           Camera
@@ -203,6 +207,6 @@ type flat struct {
 func (s Study) flat() flat {
 	return flat{
 		s.Structure, s.Coordinates, s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.Operation,
-		s.Tolerance, s.Moment, s.Angle, s.Projection, s.Camera, s.Look, s.Figure,
+		s.KeepAxes, s.Tolerance, s.Moment, s.Angle, s.Projection, s.Camera, s.Look, s.Figure,
 	}
 }

@@ -15,7 +15,7 @@ import (
 
 // full has no choice at its default.
 var full = Study{
-	Structure: "pasted", Coordinates: "1\nxenon\nXe 0 0 0\n", Core: "1-5", Ignore: "H", Tolerance: 0.05, As: "D4h:2", Frame: "default", Z: "C4(z)", X: "2",
+	Structure: "pasted", Coordinates: "1\nxenon\nXe 0 0 0\n", Core: "1-5", Ignore: "H", Tolerance: 0.05, As: "D4h:2", KeepAxes: true, Frame: "default", Z: "C4(z)", X: "2",
 	Basis: []string{"Cl:sigma", "Cl:pi"}, Atoms: []int{2, 4},
 	Projection: Projection{Function: 3, Irrep: "Eu", Copy: 2, Partner: 1, Subject: SubjectFunction, Element: [2]int{2, 1}, Character: true},
 	Operation:  "C4^3(z)", Moment: 0.25, Angle: 60,
@@ -37,6 +37,7 @@ const fullText = `{
   "ignore": "H",
   "tolerance": 0.05,
   "as": "D4h:2",
+  "keepAxes": true,
   "frame": "default",
   "z": "C4(z)",
   "x": "2",
@@ -187,9 +188,9 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 
 func TestAHandWrittenFileIsToldWhereItIsWrong(t *testing.T) {
 	for text, want := range map[string]string{
-		strings.Replace(fullText, "0.25", "25", 1):               "f:29: moment: 25 is too large; the most is 1",
-		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:41: look.style: "gaudy" is not known; there are lit, ink`,
-		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:36: camera.zoom: a number is due, not a list",
+		strings.Replace(fullText, "0.25", "25", 1):               "f:30: moment: 25 is too large; the most is 1",
+		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:42: look.style: "gaudy" is not known; there are lit, ink`,
+		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:37: camera.zoom: a number is due, not a list",
 		fullText[:300]: "f:19: the file is cut off here",
 		strings.Replace(fullText, `"version": 1`, `"version": 2`, 1): "f:2: version: 2 is newer than this program, which reads up to version 1",
 	} {
@@ -289,7 +290,7 @@ func anyStudy(t *rapid.T) Study {
 	flag := rapid.Bool()
 	s := Study{
 		Structure: name.Draw(t, "structure"), Coordinates: rapid.String().Draw(t, "coordinates"),
-		Core: name.Draw(t, "core"), Ignore: name.Draw(t, "ignore"), Tolerance: number(0, 1e3), As: name.Draw(t, "as"),
+		Core: name.Draw(t, "core"), Ignore: name.Draw(t, "ignore"), Tolerance: number(0, 1e3), As: name.Draw(t, "as"), KeepAxes: flag.Draw(t, "keepAxes"),
 		Frame: name.Draw(t, "frame"), Z: name.Draw(t, "z"), X: name.Draw(t, "x"),
 		Basis: rapid.SliceOfN(name, 0, 4).Draw(t, "basis"),
 		Projection: Projection{

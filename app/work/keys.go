@@ -22,11 +22,12 @@ func (w *Work) keyOfStructure(s study.Study) structureKey {
 type groupKey struct {
 	structureKey
 	core, ignore, as, frame, z, x string
+	keepAxes                      bool
 	tolerance                     float64
 }
 
 func (w *Work) keyOfGroup(s study.Study) groupKey {
-	return groupKey{w.keyOfStructure(s), s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.TheTolerance()}
+	return groupKey{w.keyOfStructure(s), s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.KeepAxes, s.TheTolerance()}
 }
 
 type basisKey struct {

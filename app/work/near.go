@@ -152,5 +152,12 @@ func (l *Ladder) choose(s study.Study) (*symmetry.Fit, error) {
 	}
 	fit := *near.Fit
 	fit.Tolerance = math.Max(s.TheTolerance(), fit.Deviation)
-	return &fit, nil
+	if !s.KeepAxes {
+		return &fit, nil
+	}
+	frame, err := l.held(&fit)
+	if err != nil {
+		return nil, blame(StageGroup, ConcernFrame, err)
+	}
+	return fit.In(frame), nil
 }

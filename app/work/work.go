@@ -152,12 +152,13 @@ func (w *Work) Group(ctx context.Context, s study.Study) (*Group, error) {
 type groupInputs struct {
 	*Structure
 	core, ignore, as, frame, z, x string
+	keepAxes                      bool
 	tolerance                     float64
 }
 
 // groupOf and its like are called with the lock held.
 func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Group, error) {
-	inputs := groupInputs{read, s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.TheTolerance()}
+	inputs := groupInputs{read, s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.KeepAxes, s.TheTolerance()}
 	return w.groups.get(inputs, func() (*Group, error) {
 		core, err := coreOf(read, s)
 		if err != nil {
