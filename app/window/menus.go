@@ -245,6 +245,9 @@ func (u *ui) setScale(scale float64) {
 func (u *ui) restyle() {
 	u.app.Settings().SetTheme(u.colours)
 	u.thumbs.forget()
+	for _, t := range u.tracks {
+		t.line.FillColor = u.palette().Rule
+	}
 	u.win.Content().Refresh()
 	u.show(false)
 	u.refreshPanes()

@@ -3,6 +3,9 @@
 package window
 
 import (
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
+	"fyne.io/fyne/v2/container"
 	"fyne.io/fyne/v2/widget"
 )
 
@@ -40,3 +43,26 @@ func (s *scrubBar) set(v float64) {
 	s.SetValue(v)
 	s.setting = false
 }
+
+// A track is a line behind a slider: the toolkit draws the part that lies
+// before the thumb in the colour of grounds, too pale to see.
+type track struct {
+	line *canvas.Rectangle
+}
+
+// onTrack puts a slider on a track.
+func (u *ui) onTrack(s *scrubBar) fyne.CanvasObject {
+	t := track{canvas.NewRectangle(u.palette().Rule)}
+	u.tracks = append(u.tracks, t)
+	return container.NewStack(container.New(t, t.line), s)
+}
+
+// Layout implements fyne.Layout.
+func (t track) Layout(_ []fyne.CanvasObject, size fyne.Size) {
+	const inset, thick = 16, 2
+	t.line.Resize(fyne.NewSize(max(0, size.Width-2*inset), thick))
+	t.line.Move(fyne.NewPos(inset, (size.Height-thick)/2))
+}
+
+// MinSize implements fyne.Layout.
+func (t track) MinSize([]fyne.CanvasObject) fyne.Size { return fyne.Size{} }

@@ -67,7 +67,7 @@ func (l look) Color(name fyne.ThemeColorName, _ fyne.ThemeVariant) color.Color {
 		theme.ColorNameHeaderBackground:
 		return p.Panel
 	case theme.ColorNameInputBackground:
-		return p.Ground
+		return faint(p.Ground, 0x80) // over the track of a slider
 	case theme.ColorNameButton:
 		return between(p.Panel, p.Ink, 0.06)
 	case theme.ColorNameDisabledButton:

@@ -47,6 +47,7 @@ type ui struct {
 	said    *pane // below: what the function has become
 	scrub   *scrubBar
 	angle   *scrubBar
+	tracks  []track
 	angles  *fyne.Container // angle with its name, for linear molecules
 	basis   *widget.Entry
 	fault   *pane // above basis: what is wrong with what was typed
@@ -106,7 +107,7 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.angle = newScrubBar(u, 359, 1)
 	u.angle.change = u.angled
 	u.angle.end = u.commit
-	u.angles = container.NewBorder(nil, nil, widget.NewLabel("φ"), nil, u.angle)
+	u.angles = container.NewBorder(nil, nil, widget.NewLabel("φ"), nil, u.onTrack(u.angle))
 	u.angles.Hide()
 	u.fault = newPane(u.drawFault, u)
 	u.fault.least = fyne.NewSize(100, 54)
@@ -151,7 +152,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 		button(theme.MediaSkipNextIcon(), func() { u.jump(1) }),
 	)
 	rule := func() fyne.CanvasObject { return widget.NewSeparator() }
-	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.scrub, u.angles)
+	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.onTrack(u.scrub), u.angles)
 	row := container.NewBorder(nil, nil, controls, nil, container.New(&shares{weights: []float32{1, 1.1}}, bars, u.said))
 	below := container.NewVBox(rule(), u.ledger, rule(), container.NewPadded(row))
 	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, u.given)
