@@ -6,24 +6,33 @@ import (
 	"github.com/go-gl/mathgl/mgl64"
 )
 
+// neverAssigned is the cost of a pair that must not be.
+const neverAssigned = 1e12
+
 // assignment gives each point an image of its kind of its own, with the least
-// sum of squared distances (H. W. Kuhn, Naval Research Logistics Quarterly 2,
-// 83 (1955), in the form with potentials and shortest augmenting paths; from
-// memory).
+// sum of squared distances; false if there is none.
 func (c *cloud) assignment(m mgl64.Mat3, image []int32) bool {
 	n := len(c.at)
-	const never = 1e12
 	cost := make([]float64, n*n)
 	for i, v := range c.at {
 		w := m.Mul3x1(v)
 		for j := range c.at {
-			cost[i*n+j] = never
+			cost[i*n+j] = neverAssigned
 			if c.kind[i] == c.kind[j] {
 				d := w.Sub(c.at[j])
 				cost[i*n+j] = d.Dot(d)
 			}
 		}
 	}
+	return leastCost(cost, image)
+}
+
+// leastCost assigns every row of an n×n table of costs a column of its own so
+// that the sum is the least (H. W. Kuhn, Naval Research Logistics Quarterly 2,
+// 83 (1955), in the form with potentials and shortest augmenting paths; from
+// memory). False: a pair that must not be could not be avoided.
+func leastCost(cost []float64, image []int32) bool {
+	n := len(image)
 	u, v := make([]float64, n+1), make([]float64, n+1)
 	match, way := make([]int, n+1), make([]int, n+1) // rows and columns from 1
 	for i := 1; i <= n; i++ {
@@ -68,7 +77,7 @@ func (c *cloud) assignment(m mgl64.Mat3, image []int32) bool {
 	}
 	for j := 1; j <= n; j++ {
 		image[match[j]-1] = int32(j - 1)
-		if cost[(match[j]-1)*n+j-1] >= never {
+		if cost[(match[j]-1)*n+j-1] >= neverAssigned {
 			return false
 		}
 	}

@@ -180,3 +180,48 @@ func BenchmarkNear(b *testing.B) {
 		})
 	}
 }
+
+// The published values: square from tetrahedron 33.33, trigonal prism from
+// octahedron 16.74 (testdata/checkvalues/symmetry_distance.json).
+func TestShapeMeasuresAgreeWithThePublishedOnes(t *testing.T) {
+	var file struct {
+		Shape []struct {
+			What, Note        string
+			Reference, Points []mgl64.Vec3
+			Value             float64
+		}
+	}
+	load(t, &file, "checkvalues", "symmetry_distance.json")
+	rng := rand.New(rand.NewSource(1))
+	for _, c := range file.Shape {
+		var points, reference []Point
+		for i := range c.Points {
+			kind := 8
+			if c.Note != "" && i == len(c.Points)-1 {
+				kind = 26 // the centre of both
+			}
+			points = append(points, Point{c.Points[i], kind})
+			reference = append(reference, Point{c.Reference[i].Mul(1.7), kind})
+		}
+		points, _ = shuffled(points, 0, rng)
+		got, err := ShapeMeasure(points, reference)
+		if err != nil || math.Abs(got-c.Value) > 1e-4 {
+			t.Errorf("%s: %v, want %v (%v)", c.What, got, c.Value, err)
+		}
+	}
+	// More points than are tried in every way: a prism of two rings of six
+	// against itself, turned, mirrored and enlarged, and with a stretched axis.
+	prism := join(ring(6, 2, 1.1, 10, 6), ring(6, 2, -1.1, 10, 6))
+	turned, _ := shuffled(prism, 0, rng)
+	for i := range turned {
+		turned[i].Position = turned[i].Position.Mul(-2.2)
+	}
+	if got, err := ShapeMeasure(turned, prism); err != nil || got > 1e-9 {
+		t.Errorf("a prism against itself: %v (%v)", got, err)
+	}
+	for _, bad := range [][2][]Point{{nil, nil}, {ring(3, 1, 0, 0, 6), ring(4, 1, 0, 0, 6)}, {ring(3, 1, 0, 0, 6), ring(3, 1, 0, 0, 7)}, {{at(0, 0, 0, 1)}, {at(0, 0, 0, 1)}}} {
+		if _, err := ShapeMeasure(bad[0], bad[1]); err == nil {
+			t.Errorf("%v against %v is accepted", bad[0], bad[1])
+		}
+	}
+}
