@@ -7,7 +7,7 @@ import (
 
 // tileSide is the side of a tile in pixels. A tile's samples stay in the
 // processor's cache.
-const tileSide = 32
+const tileSide = 48
 
 // A batch is a run of triangles of one part. It sorts them into tiles.
 type batch struct {

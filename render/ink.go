@@ -55,7 +55,7 @@ func (f *frame) inkApron() int {
 	if !(f.look.OutlineWidth > 0) {
 		return 1
 	}
-	f.ink.half = float32(f.look.OutlineWidth * f.pxPerMM / 2)
+	f.ink.half = float32(math.Min(f.look.OutlineWidth*f.pxPerMM/2, 62)) // what the widest apron holds
 	// The farthest middle of a pixel that a line reaches, and one more for
 	// the pixels on the other side of the border.
 	return min(int(math.Ceil(float64(f.ink.half)+0.5))+1, 64)

@@ -44,7 +44,7 @@ type kernel struct {
 }
 
 // maxMasks is the largest field of pixel pairs that the innermost loop takes.
-const maxMasks = 40 * 20
+const maxMasks = 56 * 28
 
 // triangle draws a triangle: onto the samples when l is nil, otherwise into
 // the layer. It tells whether it reached a sample.
