@@ -208,7 +208,9 @@ func TestAxesAreKeptOnTheWayToASubgroup(t *testing.T) {
 		runJSON(t, &free, "group", "demo:hydrate", "--core", "1-7", "--as", as)
 		checkGroup(t, g)
 		checkFunctions(t, g)
-		turn := func(f contractGroup) float64 { return trace(multiply(f.Frame.Rotation, transposed(whole.Frame.Rotation))) }
+		turn := func(f contractGroup) float64 {
+			return trace(multiply(f.Frame.Rotation, transposed(whole.Frame.Rotation)))
+		}
 		if g.Frame.Name != "held" || turn(g) < turn(free)-1e-9 {
 			t.Errorf("%s: %s, the turn from Oh has the trace %.3f, by default %.3f", as, g.Frame.Name, turn(g), turn(free))
 		}

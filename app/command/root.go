@@ -43,6 +43,7 @@ Without a command it opens the window. Where there is no display it writes
 figures of the demonstrations into the folder out instead.`,
 		Example: `  lobewright complex.xyz
   lobewright group complex.xyz
+  lobewright frames complex.xyz
   lobewright project complex.xyz --on Cl:sigma
   lobewright figure complex.xyz --on Cl:sigma --irrep Eu -o eu.png`,
 		Version: version,

@@ -189,6 +189,8 @@ func (t *translation) text(g *work.Group) string {
 // cannot tell.
 func liftSentence(l *work.Lift, symbol, from string) string {
 	switch ways := waysText(l); {
+	case len(ways) == 0 && l.More:
+		return "there are too many ways to try; give the labels of one degenerate set alone"
 	case len(ways) == 0:
 		return "no set of irreps of " + symbol + " goes over into these"
 	case len(ways) == 1:

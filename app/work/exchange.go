@@ -157,13 +157,19 @@ type Lift struct {
 	// Telling are the classes of the full group in which the characters of the
 	// ways differ.
 	Telling []string
-	// More says that there are more ways than are listed.
+	// More says that there are more ways than are listed, or that there were
+	// too many to try.
 	More bool
+
+	tried int
 }
 
 // mostWays bounds the list of a Lift; a set of levels that has so many is no
 // single degenerate set.
 const mostWays = 12
+
+// mostTried bounds the search, which grows with the copies of every irrep.
+const mostTried = 1_000_000
 
 // LiftContent finds the contents in the full group that hold so many copies of
 // the subgroup's irreps.
@@ -190,6 +196,9 @@ func LiftContent(d *symmetry.Descent, copies []int) *Lift {
 // search tries the irreps of the full group one after the other, most copies
 // first.
 func (l *Lift) search(rows [][]int, left, taken []int, at int) {
+	if l.tried++; l.tried > mostTried {
+		l.More = true
+	}
 	if l.More {
 		return
 	}
