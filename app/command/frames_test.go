@@ -208,6 +208,12 @@ func TestLabelsAreTranslatedAndLifted(t *testing.T) {
 	if got := strings.Join(ways, " or "); got != "T1u or T2u" || len(f.Translation.Lifts[0].Telling) == 0 || !f.Translation.Lifts[0].Complete {
 		t.Errorf("lifted: %s %+v", got, f.Translation.Lifts[0])
 	}
+	// x and y of a linear molecule, and what has three nodal planes.
+	f = contractFrames{}
+	runJSON(t, &f, "frames", "demo:rod", "--translate", "b2u, b3u", "--from", "D2h")
+	if w := f.Translation.Lifts[0].Ways; len(w) != 2 || contentOf(w[0])+" "+contentOf(w[1]) != "Πu Φu" {
+		t.Errorf("lifted: %+v", w)
+	}
 }
 
 func TestExplicitAxesLieWhereTheyAreAskedFor(t *testing.T) {

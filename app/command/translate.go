@@ -84,7 +84,7 @@ func translated(g *work.Group, text, from string) (*translation, error) {
 	t := &translation{from: from, given: given}
 	setting := g.Fit.Setting
 	if setting.Infinite() {
-		return nil, fmt.Errorf("labels of %s are the same in every frame", setting.Symbol)
+		return t, t.liftLinear(setting.Symbol)
 	}
 	var names []string
 	for _, e := range g.Exchanges() {
@@ -134,32 +134,52 @@ func (t *translation) lift(setting *symmetry.Setting) error {
 	if err != nil {
 		return err
 	}
-	sub := descents[0].Subgroup
+	copies, err := t.copies(descents[0].Subgroup)
+	for _, d := range descents {
+		if err == nil {
+			t.lifts = append(t.lifts, work.LiftContent(d, copies))
+		}
+	}
+	return err
+}
+
+// liftLinear does the same for a linear molecule.
+func (t *translation) liftLinear(symbol string) error {
+	d, err := symmetry.DescendLinear(symbol, t.from, mostLambda)
+	if err != nil {
+		if _, unknown := symmetry.New(t.from); unknown != nil {
+			return fmt.Errorf("--from %s: labels of %s are the same in every frame; only those of a subgroup, such as D2h, are translated", t.from, symbol)
+		}
+		return err
+	}
+	copies, err := t.copies(d.Subgroup)
+	if err == nil {
+		t.lifts = []*work.Lift{work.LiftLinear(d, copies)}
+	}
+	return err
+}
+
+// copies counts the labels that are given, one number an irrep of their group.
+func (t *translation) copies(sub *symmetry.Setting) ([]int, error) {
 	copies := make([]int, len(sub.Irreps))
 	for _, l := range t.given {
 		n := 1
 		if l.number != "" {
 			if _, err := fmt.Sscan(l.number, &n); err != nil || n > 1000 {
-				return fmt.Errorf("--translate: %s copies are too many", l.number)
+				return nil, fmt.Errorf("--translate: %s copies are too many", l.number)
 			}
 		}
-		found := false
-		var labels []string
-		for i, ir := range sub.Irreps {
-			labels = append(labels, ir.Label)
-			if sameLabel(ir.Label, l.label) {
+		ir, err := findIrrep(sub, l.label)
+		if err != nil {
+			return nil, err
+		}
+		for i := range sub.Irreps {
+			if sub.Irreps[i].Label == ir.Label {
 				copies[i] += n
-				found = true
 			}
 		}
-		if !found {
-			return fmt.Errorf("%s has no irrep %q: it has %s", sub.Symbol, l.label, strings.Join(labels, " "))
-		}
 	}
-	for _, d := range descents {
-		t.lifts = append(t.lifts, work.LiftContent(d, copies))
-	}
-	return nil
+	return copies, nil
 }
 
 func (t *translation) text(g *work.Group) string {
@@ -194,11 +214,18 @@ func liftSentence(l *work.Lift, symbol, from string) string {
 	case len(ways) == 0:
 		return "no set of irreps of " + symbol + " goes over into these"
 	case len(ways) == 1:
+		if l.Descent == nil {
+			return ways[0] + " in " + symbol + ", and nothing else up to Φ"
+		}
 		return ways[0] + " in " + symbol + ", and nothing else"
 	case l.More:
 		return strings.Join(ways, ", ") + " … in " + symbol + ": there are more ways; give the labels of one degenerate set alone"
 	default:
 		last := len(ways) - 1
+		if l.Descent == nil {
+			return strings.Join(ways[:last], ", ") + " or " + ways[last] + " in " + symbol + ", up to Φ: " + from +
+				" does not tell the angular momenta about the axis apart"
+		}
 		why := fmt.Sprintf("they go over into the same irreps of %s, since they differ only in the characters of %s, of which %s has none",
 			from, strings.Join(l.Telling, ", "), from)
 		return strings.Join(ways[:last], ", ") + " or " + ways[last] + " in " + symbol + ": " + why
@@ -260,7 +287,10 @@ func (t *translation) document() *translationDocument {
 		d.Here = append(d.Here, l.String())
 	}
 	for _, l := range t.lifts {
-		lift := liftDocument{Operations: strings.Fields(operationNames(l.Descent)), Ways: [][]contentDocument{}, Telling: append([]string{}, l.Telling...), Complete: !l.More}
+		lift := liftDocument{Operations: []string{}, Ways: [][]contentDocument{}, Telling: append([]string{}, l.Telling...), Complete: !l.More}
+		if l.Descent != nil {
+			lift.Operations = strings.Fields(operationNames(l.Descent))
+		}
 		for _, way := range l.Ways {
 			lift.Ways = append(lift.Ways, describeContent(way))
 		}
