@@ -311,6 +311,7 @@ func (l *ladder) groups(ctx context.Context, elements []*element, progress func(
 		}
 		progress(0.5 + 0.5*float64(i+1)/float64(len(elements)))
 	}
+	add(l.cloud.generate(nil, 1)) // every structure has the trivial group
 	return out, nil
 }
 

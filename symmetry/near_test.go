@@ -225,3 +225,12 @@ func TestShapeMeasuresAgreeWithThePublishedOnes(t *testing.T) {
 		}
 	}
 }
+
+// Without any near operation there is the trivial group, with nothing moved.
+func TestEveryStructureHasTheTrivialGroup(t *testing.T) {
+	points := []Point{at(0, 0, 0, 6), at(1.1, 0, 0, 1), at(0, 1.7, 0, 9), at(0, 0, 2.1, 17), at(-1, -1, -1, 35)}
+	list, err := Near(context.Background(), points, nil, 0, nil)
+	if err != nil || len(list) != 1 || list[0].Fit.Setting.Symbol != "C1" || list[0].Fit.Deviation > 1e-12 || list[0].Embedding != 1 {
+		t.Errorf("%v: %d groups", err, len(list))
+	}
+}
