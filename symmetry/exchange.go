@@ -81,6 +81,8 @@ func (e *Exchange) partners(here, there *Irrep, turn mgl64.Mat3) *mat.Dense {
 	}
 	share := functionShare(here, there, turn)
 	switch {
+	case d == 1 && here.totallySymmetric():
+		t.Set(0, 0, 1) // what every operation leaves has no sign of its own
 	case here.ComplexPair && share != nil:
 		t = alignPair(t, here, share)
 	case share != nil:
@@ -98,6 +100,15 @@ func (e *Exchange) partners(here, there *Irrep, turn mgl64.Mat3) *mat.Dense {
 	}
 	t.Apply(func(_, _ int, v float64) float64 { return tidyZero(tidy(v)) }, t)
 	return t
+}
+
+func (ir *Irrep) totallySymmetric() bool {
+	for _, x := range ir.Characters {
+		if x != 1 {
+			return false
+		}
+	}
+	return true
 }
 
 // functionShare writes the first function of partner 1 that both frames know,

@@ -389,12 +389,21 @@ func (f *framing) difference(a, b mgl64.Mat3) string {
 	return names[least]
 }
 
-// byNumber chooses among equivalent turns: the point with the lowest number
-// comes to lie at the largest z, then x, then y; then the next point.
+// byNumber chooses among equivalent turns. Of the points that come to lie on
+// +z, else on +x, else in the half of xz with positive x, the lowest number
+// decides; then the point with the lowest number comes to lie at the largest z,
+// then x, then y; then the next point.
 func (f *framing) byNumber(turns []mgl64.Mat3) mgl64.Mat3 {
 	left := make([]mgl64.Mat3, 0, len(f.proper))
 	for _, g := range f.proper {
 		left = append(left, g.Mul3(turns[0]))
+	}
+	for _, there := range []func(mgl64.Vec3) bool{
+		func(v mgl64.Vec3) bool { return f.onZ(v) && v[2] > f.tolerance },
+		func(v mgl64.Vec3) bool { return f.onX(v) && v[0] > 0 },
+		func(v mgl64.Vec3) bool { return f.near(v[1]) && v[0] > f.tolerance },
+	} {
+		left = f.lowestNumber(left, there)
 	}
 	for _, v := range f.points {
 		if len(left) == 1 {
@@ -419,4 +428,21 @@ func (f *framing) byNumber(turns []mgl64.Mat3) mgl64.Mat3 {
 		left = kept
 	}
 	return left[0]
+}
+
+// lowestNumber keeps the turns that bring the point with the lowest number
+// somewhere; all, if none brings any there.
+func (f *framing) lowestNumber(turns []mgl64.Mat3, there func(mgl64.Vec3) bool) []mgl64.Mat3 {
+	for _, v := range f.points {
+		var kept []mgl64.Mat3
+		for _, t := range turns {
+			if there(t.Mul3x1(v)) {
+				kept = append(kept, t)
+			}
+		}
+		if kept != nil {
+			return kept
+		}
+	}
+	return turns
 }

@@ -120,6 +120,16 @@ func TestLowestNumberDecidesBetweenEquivalentAxes(t *testing.T) {
 	}
 }
 
+// fac-MA3B3: xz holds the first of the atoms that decide the sense of x.
+func TestLowestNumberOfTheDecidingAtomsLiesInXZ(t *testing.T) {
+	points := join([]Point{at(0, 0, 0, 27)},
+		[]Point{at(2, 0, 0, 7), at(0, 2, 0, 7), at(0, 0, 2, 7)}, []Point{at(-2.3, 0, 0, 17), at(0, -2.3, 0, 17), at(0, 0, -2.3, 17)})
+	fit := mustDetect(t, points, 0)
+	if v := fit.Ideal[4]; fit.Setting.Symbol != "C3v" || math.Abs(v[1]) > 1e-9 || v[0] <= 0 {
+		t.Errorf("%s with the first heavy ligand at %.3f", fit.Setting.Symbol, v)
+	}
+}
+
 // Naphthalene: z is the short axis, since two atoms lie on it and none on the
 // long one (the rule's own consequence, noted in the references).
 func TestNaphthaleneHasZAlongItsShortAxis(t *testing.T) {
