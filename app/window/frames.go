@@ -45,7 +45,6 @@ type frames struct {
 	ctx    context.Context
 	stop   context.CancelFunc
 	done   sync.WaitGroup
-	asked  atomic.Int64
 	count  atomic.Int64  // frames drawn
 	took   time.Duration // for the last frame; the drawing goroutine only
 
@@ -76,17 +75,18 @@ func newFrames(notify func(), failed func(any)) *frames {
 // ask takes the place of a request that nobody has begun yet. The toolkit's
 // goroutine only.
 func (f *frames) ask(r request) {
-	f.asked.Add(1)
-	select {
-	case <-f.want:
-	default:
-	}
-	f.want <- r
+	// A full frame that is being drawn is given up, before the request can
+	// begin: afterwards it might be this one.
 	f.mu.Lock()
 	if f.cancel != nil {
 		f.cancel()
 	}
 	f.mu.Unlock()
+	select {
+	case <-f.want:
+	default:
+	}
+	f.want <- r
 }
 
 // take returns the newest frame, which stays the caller's until the next call;
