@@ -335,20 +335,24 @@ func (u *ui) setBasis(list []string) {
 	u.do(study.StepBasis, s)
 }
 
-// typeBasis takes a typed selection. A fault of its spelling is shown beside
-// it and changes nothing.
+// typeBasis takes typed selections, with semicolons between them. A fault of
+// the spelling is shown beside them and changes nothing.
 func (u *ui) typeBasis(text string) {
-	text = strings.TrimSpace(text)
-	if text == "" {
-		return
-	}
-	if _, err := orbitals.ParseChoice(text); err != nil {
-		u.sayTyped(err.Error())
-		return
+	basis := slices.Clone(u.now().Basis)
+	for part := range strings.SplitSeq(text, ";") {
+		part = strings.TrimSpace(part)
+		if part == "" || slices.Contains(basis, part) {
+			continue
+		}
+		if _, err := orbitals.ParseChoice(part); err != nil {
+			u.sayTyped(err.Error())
+			return
+		}
+		basis = append(basis, part)
 	}
 	u.basis.SetText("")
-	if !slices.Contains(u.now().Basis, text) {
-		u.setBasis(append(slices.Clone(u.now().Basis), text))
+	if !slices.Equal(basis, u.now().Basis) {
+		u.setBasis(basis)
 	}
 }
 

@@ -165,13 +165,33 @@ func (u *ui) askOpen() {
 		})
 }
 
+// replaces tells whether a file of that name may be replaced: the first time
+// that one stands there it is asked for, and the same answer again is a yes.
+// asked remembers the name between the answers of one sheet.
+func replaces(path string, asked *string) (bool, error) {
+	if _, err := os.Stat(path); err != nil {
+		return false, nil
+	}
+	if *asked == path {
+		return true, nil
+	}
+	*asked = path
+	return false, fmt.Errorf("%s exists already; OK once more replaces it", filepath.Base(path))
+}
+
 func (u *ui) askSave() {
+	asked := ""
 	u.askPath("Save study", "The choices, as text that people can read. The coordinates stay in their own file.", u.folder()+"study"+study.Extension,
 		func(path string, done func(error)) {
 			if !strings.HasSuffix(path, study.Extension) {
 				path += study.Extension
 			}
-			done(export.WriteFile(path, false, func(w io.Writer) error {
+			force, err := replaces(path, &asked)
+			if err != nil {
+				done(err)
+				return
+			}
+			done(export.WriteFile(path, force, func(w io.Writer) error {
 				text, err := study.Encode(u.now())
 				if err == nil {
 					_, err = w.Write(text)
@@ -183,26 +203,32 @@ func (u *ui) askSave() {
 
 // askPicture saves what is shown, at twice the resolution of the screen.
 func (u *ui) askPicture() {
+	asked := ""
 	u.askPath("Save picture", "A PNG of the picture as it is seen, with twice as many pixels.", u.folder()+"picture.png",
 		func(path string, done func(error)) {
 			if !strings.HasSuffix(strings.ToLower(path), ".png") {
 				path += ".png"
 			}
+			force, err := replaces(path, &asked)
+			if err != nil {
+				done(err)
+				return
+			}
 			r := request{shown: u.view.shown, sight: u.view.sight, width: 2 * u.view.width, height: 2 * u.view.height, dpi: 2 * u.view.dpi()}
 			go func() {
-				err := savePicture(path, r)
+				err := savePicture(path, r, force)
 				u.post(func() { u.guard(func() { done(err) }) })
 			}()
 		})
 }
 
-func savePicture(path string, r request) (err error) {
+func savePicture(path string, r request, force bool) (err error) {
 	defer func() {
 		if fault := recover(); fault != nil {
 			err = fmt.Errorf("a fault of this program: %v", fault)
 		}
 	}()
-	if err := export.CheckTarget(path, false); err != nil {
+	if err := export.CheckTarget(path, force); err != nil {
 		return err
 	}
 	var live picture.Live
@@ -215,7 +241,7 @@ func savePicture(path string, r request) (err error) {
 	if img, err = p.Draw(context.Background()); err != nil {
 		return err
 	}
-	return export.WriteFile(path, false, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi) })
+	return export.WriteFile(path, force, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi) })
 }
 
 // keysText is what Help shows.

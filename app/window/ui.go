@@ -113,7 +113,7 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.fault.least = fyne.NewSize(100, 54)
 	u.fault.Hide()
 	u.basis = widget.NewEntry()
-	u.basis.SetPlaceHolder("type: Cl:sigma, 2-4:pz …")
+	u.basis.SetPlaceHolder("Cl:sigma; 2-4:pz …")
 	u.basis.OnChanged = func(string) { u.sayTyped("") }
 	u.basis.OnSubmitted = func(text string) { u.guard(func() { u.typeBasis(text) }) }
 	win.SetContent(u.assemble())
