@@ -88,9 +88,13 @@ func ledgerText(l *work.Ledger) string {
 	fmt.Fprintf(&b, "\nProjection of %s (%s) onto %s, weighed with %s\n",
 		notation.Phi(l.Ledger.Function), table.FunctionName(l.Basis, f), l.Irrep.Label, weight)
 	b.WriteString(table.Ledger(l).Text())
-	if l.Norm == 0 {
+	switch {
+	case l.Norm == 0 && !l.ByCharacter() && l.Irrep.Dimension > 1:
+		fmt.Fprintf(&b, "\nThe sum is zero: the function has no part in partner %d of this irrep. It may have one in another (--element), or in none (--character tells).\n",
+			l.Element[1]+1)
+	case l.Norm == 0:
 		b.WriteString("\nThe sum is zero: the function has no part in this irrep.\n")
-	} else {
+	default:
 		fmt.Fprintf(&b, "\nNorm of the sum: %s\n", normText(l.Norm))
 	}
 	return b.String()

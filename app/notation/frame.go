@@ -2,6 +2,7 @@ package notation
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -207,18 +208,23 @@ func toward(fit *symmetry.Fit, names []string, axis int) string {
 // choice.
 func Source(rule symmetry.Rule) string {
 	var parts []string
+	add := func(text string) {
+		if !slices.Contains(parts, text) {
+			parts = append(parts, text)
+		}
+	}
 	for _, key := range rule.Sources {
 		switch key {
-		case symmetry.SourceDepartmentPage:
-			parts = append(parts, "a chemistry department's web page")
 		case symmetry.SourceMulliken:
-			parts = append(parts, "R. S. Mulliken, J. Chem. Phys. 23, 1997 (1955), as quoted elsewhere")
-		case symmetry.SourceCommon:
-			parts = append(parts, "common practice")
+			add("R. S. Mulliken, J. Chem. Phys. 23, 1997 (1955), as quoted elsewhere")
+		case symmetry.SourceCommon, symmetry.SourceDepartmentPage:
+			// What a department teaches on its page is common practice; a
+			// page is nothing that a reader could look up years later.
+			add("common practice")
 		case symmetry.SourceOwn:
-			parts = append(parts, "own choice")
+			add("own choice")
 		default:
-			parts = append(parts, key)
+			add(key)
 		}
 	}
 	return strings.Join(parts, "; ")

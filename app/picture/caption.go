@@ -63,6 +63,9 @@ func orbitalCaption(o *work.Orbitals, orbital *orbitals.GroupOrbital, look study
 	functions := basisText(o.Basis, orbital.Coefficients)
 	switch {
 	case !ok || notation.Width(form.String()) > longestForm:
+		if len(functions) > 0 {
+			lines = append(lines, captionLine{text: functions, size: captionSize})
+		}
 	case len(form.Terms) == 1 && !form.Terms[0].Negative && len(functions) > 0:
 		lines = append(lines, captionLine{text: functions, size: captionSize})
 	default:
