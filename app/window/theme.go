@@ -29,13 +29,6 @@ type look struct {
 	scale  float32
 }
 
-var typefaces = map[assets.Style]fyne.Resource{
-	assets.Regular:     fyne.NewStaticResource("regular.ttf", assets.Font(assets.Regular)),
-	assets.Bold:        fyne.NewStaticResource("bold.ttf", assets.Font(assets.Bold)),
-	assets.Oblique:     fyne.NewStaticResource("oblique.ttf", assets.Font(assets.Oblique)),
-	assets.BoldOblique: fyne.NewStaticResource("bold-oblique.ttf", assets.Font(assets.BoldOblique)),
-}
-
 // isDark tells whether the ground is dark.
 func (l look) isDark() bool {
 	switch l.chosen {
