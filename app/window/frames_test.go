@@ -15,7 +15,7 @@ func TestTheLastRequestIsAlwaysDrawn(t *testing.T) {
 	var ready atomic.Int64
 	f := newFrames(func() { ready.Add(1) }, func(fault any) { t.Error(fault) })
 	defer f.close()
-	for n := range 300 {
+	for n := range 60 {
 		last := 20 + n%7
 		for k := range 1 + n%4 {
 			f.ask(request{width: 10 + k, height: 10, dpi: 96, moving: (n+k)%3 == 0})
