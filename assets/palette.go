@@ -15,12 +15,12 @@ type Palette struct {
 	// Plus and Minus are the lobes of either sign. They differ by more than 20 in lightness (CIE L*), so that
 	// grey print keeps them apart.
 	Plus, Minus color.NRGBA
+	// Plane is the opacity of the plane of a reflection, drawn in Element with a full edge. Colours are mixed in
+	// linear light, so on a dark ground a small share looks as strong as a large one on a light ground.
+	Plane float64
 	// Outline is by how much outlines are wider than usual.
 	Outline float64
 }
-
-// PlaneOpacity is the opacity of the plane of a reflection, drawn in Palette.Element with a full edge.
-const PlaneOpacity = 0.18
 
 // Plus and Minus are blue and orange of M. Okabe, K. Ito, Color Universal Design (2002, revised 2008), told apart by
 // all common kinds of colour vision; on the dark ground both are lightened. The other colours are our own.
@@ -30,7 +30,7 @@ const PlaneOpacity = 0.18
 func Light() Palette {
 	return Palette{
 		Ground: rgb(0xFCFBF8), Panel: rgb(0xF3F1EC), Rule: rgb(0x8E8B83), Ink: rgb(0x1F2328), Quiet: rgb(0x5C6066),
-		Accent: rgb(0xA3417E), Element: rgb(0x007A5A), Plus: rgb(0x0072B2), Minus: rgb(0xE69F00), Outline: 1,
+		Accent: rgb(0xA3417E), Element: rgb(0x007A5A), Plus: rgb(0x0072B2), Minus: rgb(0xE69F00), Plane: 0.18, Outline: 1,
 	}
 }
 
@@ -39,7 +39,7 @@ func Light() Palette {
 func Dark() Palette {
 	return Palette{
 		Ground: rgb(0x14161A), Panel: rgb(0x1E2126), Rule: rgb(0x777C84), Ink: rgb(0xECE9E2), Quiet: rgb(0xA5A9AF),
-		Accent: rgb(0xE08BBE), Element: rgb(0x2FB58A), Plus: rgb(0x2B86C5), Minus: rgb(0xF2C14E), Outline: 1,
+		Accent: rgb(0xE08BBE), Element: rgb(0x2FB58A), Plus: rgb(0x2B86C5), Minus: rgb(0xF2C14E), Plane: 0.05, Outline: 1,
 	}
 }
 

@@ -72,6 +72,41 @@ func ParseChoice(text string) (Choice, error) {
 	return c, err
 }
 
+// SplitChoices takes several choices apart, none of which it checks. Between
+// two stands a semicolon, or a comma: a part with a colon begins a new choice,
+// together with the atoms right before it, as in "Cl:sigma, 2-4,7:px,py". After
+// the centre of a choice only the part with the colon does, since other
+// numbers belong to the centre: "C:sigma@2,3, 4:pz".
+func SplitChoices(text string) []string {
+	var all []string
+	for whole := range strings.SplitSeq(text, ";") {
+		var choice, atoms []string // atoms may belong to the next
+		centre := false
+		end := func() {
+			if c := strings.TrimSpace(strings.Join(choice, ",")); c != "" {
+				all = append(all, c)
+			}
+		}
+		for part := range strings.SplitSeq(whole, ",") {
+			bare := strings.TrimSpace(part)
+			switch {
+			case strings.Contains(part, ":"):
+				end()
+				choice, atoms = append(atoms, part), nil
+				centre = strings.Contains(part, "@")
+			case bare != "" && !centre && !('a' <= bare[0] && bare[0] <= 'z') || len(atoms) > 0:
+				atoms = append(atoms, part) // no function begins so
+			default:
+				choice = append(choice, part)
+				centre = strings.Contains(part, "@") || centre && startsWithDigit(bare)
+			}
+		}
+		choice = append(choice, atoms...)
+		end()
+	}
+	return all
+}
+
 // parseItems reads the functions of a choice. A part that starts with a digit
 // goes on with the atoms of a centre, since no function starts with one.
 func parseItems(text string) ([]item, error) {
@@ -127,6 +162,9 @@ func checkName(name string) error {
 	}
 	if name == "" {
 		return fmt.Errorf("a function is missing: choose a shell (s, p, d, f), one of its functions (px), sigma, pi, pi-in or pi-out")
+	}
+	if strings.Contains(name, ":") {
+		return fmt.Errorf("%s is no function: put a semicolon between two choices, such as F:sigma; 2-4:px,py", quote(name))
 	}
 	if l, ok := shellOf(strings.ToLower(name[:1])); ok && l > 0 && !strings.HasPrefix(name, "pi") {
 		return fmt.Errorf("%s is no function: those of the %s shell are %s", quote(name), functionNames[l][0][:1], strings.Join(functionNames[l], ", "))

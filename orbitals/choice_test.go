@@ -1,6 +1,7 @@
 package orbitals
 
 import (
+	"slices"
 	"strings"
 	"testing"
 
@@ -170,4 +171,32 @@ func FuzzChoice(f *testing.F) {
 			t.Fatalf("%q: the error is no line: %q", text, err)
 		}
 	})
+}
+
+func TestSeveralChoicesAreTakenApart(t *testing.T) {
+	singles := []string{"Cl:sigma", "2-4,7:px,py", "C:sigma@2-6,9,pz", "Fe:d", "orbit:2:pz", "all:s", "1:d", "C:pi@2"}
+	for _, one := range singles {
+		if got := SplitChoices(one); !slices.Equal(got, []string{one}) {
+			t.Errorf("%q: %q", one, got)
+		}
+		for _, two := range singles {
+			want := []string{one, two}
+			for _, between := range []string{";", " ; ", ",", ", "} {
+				if strings.Contains(between, ",") && strings.HasPrefix(one, "C:pi@2") && strings.HasPrefix(two, "2-4,7") {
+					continue // 2-4 may belong to the centre
+				}
+				if got := SplitChoices(one + between + two); !slices.Equal(got, want) {
+					t.Errorf("%q: %q", one+between+two, got)
+				}
+			}
+		}
+	}
+	for _, none := range []string{"", " ", ";", " ; ;"} {
+		if got := SplitChoices(none); len(got) != 0 {
+			t.Errorf("%q: %q", none, got)
+		}
+	}
+	if _, err := ParseChoice("C:pz Fe:d"); err == nil || !strings.Contains(err.Error(), "semicolon") {
+		t.Error(err)
+	}
 }

@@ -62,11 +62,20 @@ func checkBasis(cmd *cobra.Command, s *study.Study, required bool) error {
 	if required && len(s.Basis) == 0 {
 		return usagef("no functions are chosen: give --on ATOMS:FUNCTIONS, such as --on Cl:sigma; see %q", cmd.CommandPath()+" --help")
 	}
+	var list []string
 	for _, text := range s.Basis {
-		if _, err := orbitals.ParseChoice(text); err != nil {
-			return usagef("--on: %w", err)
+		choices := orbitals.SplitChoices(text)
+		if len(choices) == 0 {
+			choices = []string{text}
 		}
+		for _, choice := range choices {
+			if _, err := orbitals.ParseChoice(choice); err != nil {
+				return usagef("--on: %w", err)
+			}
+		}
+		list = append(list, choices...)
 	}
+	s.Basis = list
 	return nil
 }
 

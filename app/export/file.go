@@ -13,9 +13,12 @@ import (
 	"path/filepath"
 )
 
+// ErrExists is wrapped by the error for a file that is there already.
+var ErrExists = errors.New("exists already")
+
 // WriteFile writes a file whole or not at all: write fills a temporary file
 // in the same folder, which is flushed to the disk and then takes the name.
-// An existing file is left alone unless force is set. After an error nothing
+// An existing file is left alone unless force is set (ErrExists). After an error nothing
 // has changed and no temporary file is left.
 func WriteFile(path string, force bool, write func(io.Writer) error) error {
 	target, mode, err := checkTarget(path, force)
@@ -60,7 +63,7 @@ func checkTarget(path string, force bool) (target string, mode fs.FileMode, err 
 	case !info.Mode().IsRegular():
 		return "", 0, fmt.Errorf("cannot write %s: it is not an ordinary file", path)
 	case !force:
-		return "", 0, fmt.Errorf("%s exists already; --force overwrites it", path)
+		return "", 0, fmt.Errorf("%s %w; --force overwrites it", path, ErrExists)
 	}
 	target, err = filepath.EvalSymlinks(path)
 	if err != nil {
@@ -112,7 +115,7 @@ func takeName(temporary, target string, force bool) error {
 			return os.Remove(temporary)
 		}
 		if errors.Is(err, fs.ErrExist) {
-			return errors.New("it exists already; --force overwrites it")
+			return fmt.Errorf("it %w; --force overwrites it", ErrExists)
 		}
 	}
 	return os.Rename(temporary, target)

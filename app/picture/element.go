@@ -6,7 +6,6 @@ import (
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/work"
-	"lobewright/assets"
 	"lobewright/render"
 )
 
@@ -69,7 +68,7 @@ func (s *stage) addAxis(axis, middle mgl64.Vec3, reach float64) {
 // addPlane draws a plane through the origin as a translucent disc with a full
 // edge about its middle.
 func (s *stage) addPlane(normal, middle mgl64.Vec3, reach float64) {
-	s.scene.Add(render.Disc{Center: middle, Normal: normal, Radius: reach}, s.elementMaterial(assets.PlaneOpacity))
+	s.scene.Add(render.Disc{Center: middle, Normal: normal, Radius: reach}, s.elementMaterial(s.palette.Plane))
 	u, v := across(normal)
 	const corners = 96
 	rim := make([]mgl64.Vec3, corners)

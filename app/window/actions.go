@@ -335,24 +335,22 @@ func (u *ui) setBasis(list []string) {
 	u.do(study.StepBasis, s)
 }
 
-// typeBasis takes typed selections, with semicolons between them. A fault of
-// the spelling is shown beside them and changes nothing.
+// typeBasis takes one typed selection or several. A fault of their spelling is
+// shown beside them and changes nothing.
 func (u *ui) typeBasis(text string) {
-	basis := slices.Clone(u.now().Basis)
-	for part := range strings.SplitSeq(text, ";") {
-		part = strings.TrimSpace(part)
-		if part == "" || slices.Contains(basis, part) {
-			continue
-		}
-		if _, err := orbitals.ParseChoice(part); err != nil {
+	list := slices.Clone(u.now().Basis)
+	for _, choice := range orbitals.SplitChoices(text) {
+		if _, err := orbitals.ParseChoice(choice); err != nil {
 			u.sayTyped(err.Error())
 			return
 		}
-		basis = append(basis, part)
+		if !slices.Contains(list, choice) {
+			list = append(list, choice)
+		}
 	}
 	u.basis.SetText("")
-	if !slices.Equal(basis, u.now().Basis) {
-		u.setBasis(basis)
+	if len(list) > len(u.now().Basis) {
+		u.setBasis(list)
 	}
 }
 

@@ -167,9 +167,44 @@ func wrapPlain(text string, width, size float32) []string {
 	return append(lines, line)
 }
 
-// askPath asks for the path of a file, with completion by Tab and the entries
-// of the folder below.
+// askReplace asks whether a file may be written over, on top of the sheet that
+// asked for its name, which stays if it may not.
+func (u *ui) askReplace(path string, replace func()) {
+	under := u.win.Canvas().Focused()
+	var popup *widget.PopUp
+	back := func() {
+		popup.Hide()
+		if under != nil {
+			u.win.Canvas().Focus(under)
+		}
+	}
+	ok := newSheetButton("Replace", func() { back(); u.guard(replace) }, back)
+	ok.Importance = widget.HighImportance
+	cancel := newSheetButton("Cancel", back, back)
+	text := widget.NewLabel(filepath.Base(path) + " exists already. Replace it?")
+	text.Wrapping = fyne.TextWrapWord
+	popup = widget.NewModalPopUp(container.NewPadded(container.NewVBox(text,
+		container.NewBorder(nil, nil, nil, container.NewHBox(cancel, ok)))), u.win.Canvas())
+	popup.Show()
+	width := min(420*float32(u.zoom()), u.win.Canvas().Size().Width-40)
+	popup.Resize(fyne.NewSize(width, popup.MinSize().Height))
+	popup.Resize(fyne.NewSize(width, popup.MinSize().Height)) // the text has been wrapped
+	u.win.Canvas().Focus(ok)
+}
+
+// askPath asks for the path of a file that is there.
 func (u *ui) askPath(title, text, now string, answer func(path string, done func(error))) {
+	u.askAnyPath(title, text, now, "no such file", answer)
+}
+
+// askNewPath asks for the path of a file that is to be written.
+func (u *ui) askNewPath(title, text, now string, answer func(path string, done func(error))) {
+	u.askAnyPath(title, text, now, "a new file", answer)
+}
+
+// askAnyPath asks for a path, with completion by Tab and the entries of the
+// folder below; none is shown where there are none.
+func (u *ui) askAnyPath(title, text, now, none string, answer func(path string, done func(error))) {
 	list := widget.NewLabel("")
 	list.Wrapping = fyne.TextWrapWord
 	q := u.askLater(title, text, now, func(text string, done func(error)) {
@@ -183,7 +218,7 @@ func (u *ui) askPath(title, text, now string, answer func(path string, done func
 			text += "   …"
 		}
 		if text == "" {
-			text = "no such file"
+			text = none
 		}
 		list.SetText(text)
 		q.fitted()

@@ -7,13 +7,16 @@ import (
 	"errors"
 	"fmt"
 	"image"
+	"image/color"
 	"io"
 	"os"
 	"path/filepath"
 	"strings"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/layout"
 	"fyne.io/fyne/v2/widget"
 
 	"lobewright/app/export"
@@ -105,7 +108,12 @@ func (u *ui) openStudy(path string, done func(error)) {
 		u.tell(err, done)
 		return
 	}
-	u.try(s, done)
+	u.try(s, func(err error) {
+		if err == nil {
+			u.keepFile(expanded(path), s)
+		}
+		u.tell(err, done)
+	})
 }
 
 func cause(err error) string {
@@ -165,64 +173,81 @@ func (u *ui) askOpen() {
 		})
 }
 
-// replaces tells whether a file of that name may be replaced: the first time
-// that one stands there it is asked for, and the same answer again is a yes.
-// asked remembers the name between the answers of one sheet.
-func replaces(path string, asked *string) (bool, error) {
-	if _, err := os.Stat(path); err != nil {
-		return false, nil
-	}
-	if *asked == path {
-		return true, nil
-	}
-	*asked = path
-	return false, fmt.Errorf("%s exists already; OK once more replaces it", filepath.Base(path))
-}
-
+// askSave saves the study. Its own file is written over without a question.
 func (u *ui) askSave() {
-	asked := ""
-	u.askPath("Save study", "The choices, as text that people can read. The coordinates stay in their own file.", u.folder()+"study"+study.Extension,
+	now := u.folder() + "study" + study.Extension
+	if u.hasFile() {
+		now = u.studyFile
+	}
+	u.askNewPath("Save study", "The choices, as text that people can read. The coordinates stay in their own file.", now,
 		func(path string, done func(error)) {
 			if !strings.HasSuffix(path, study.Extension) {
 				path += study.Extension
 			}
-			force, err := replaces(path, &asked)
-			if err != nil {
+			s := u.now()
+			save := func(force bool, done func(error)) {
+				err := export.WriteFile(path, force, func(w io.Writer) error {
+					text, err := study.Encode(s)
+					if err == nil {
+						_, err = w.Write(text)
+					}
+					return err
+				})
+				if err == nil {
+					u.keepFile(path, s)
+				}
 				done(err)
+			}
+			if u.hasFile() && path == u.studyFile {
+				save(true, done)
 				return
 			}
-			done(export.WriteFile(path, force, func(w io.Writer) error {
-				text, err := study.Encode(u.now())
-				if err == nil {
-					_, err = w.Write(text)
-				}
-				return err
-			}))
+			u.replacing(path, save, done)
 		})
+}
+
+// keepFile remembers the file that a study was read from or saved to.
+func (u *ui) keepFile(path string, s study.Study) {
+	u.studyFile, u.studyOf = path, s.Structure+"\n"+s.Coordinates
+}
+
+// hasFile tells whether studyFile belongs to the study at hand, which an undo
+// may have changed for one of another structure.
+func (u *ui) hasFile() bool {
+	s := u.now()
+	return u.studyFile != "" && u.studyOf == s.Structure+"\n"+s.Coordinates
 }
 
 // askPicture saves what is shown, at twice the resolution of the screen.
 func (u *ui) askPicture() {
-	asked := ""
-	u.askPath("Save picture", "A PNG of the picture as it is seen, with twice as many pixels.", u.folder()+"picture.png",
+	u.askNewPath("Save picture", "A PNG of the picture as it is seen, with twice as many pixels.", u.folder()+"picture.png",
 		func(path string, done func(error)) {
 			if !strings.HasSuffix(strings.ToLower(path), ".png") {
 				path += ".png"
 			}
-			force, err := replaces(path, &asked)
-			if err != nil {
-				done(err)
-				return
-			}
 			r := request{shown: u.view.shown, sight: u.view.sight, width: 2 * u.view.width, height: 2 * u.view.height, dpi: 2 * u.view.dpi()}
-			go func() {
-				err := savePicture(path, r, force)
-				u.post(func() { u.guard(func() { done(err) }) })
-			}()
+			u.replacing(path, func(force bool, done func(error)) {
+				go func() {
+					err := savePicture(path, force, r)
+					u.post(func() { u.guard(func() { done(err) }) })
+				}()
+			}, done)
 		})
 }
 
-func savePicture(path string, r request, force bool) (err error) {
+// replacing saves a file; where one is there already, only after a question.
+// Without the person's consent nothing is done, and done is not called.
+func (u *ui) replacing(path string, save func(force bool, done func(error)), done func(error)) {
+	save(false, func(err error) {
+		if errors.Is(err, export.ErrExists) {
+			u.askReplace(path, func() { save(true, done) })
+			return
+		}
+		done(err)
+	})
+}
+
+func savePicture(path string, force bool, r request) (err error) {
 	defer func() {
 		if fault := recover(); fault != nil {
 			err = fmt.Errorf("a fault of this program: %v", fault)
@@ -244,29 +269,75 @@ func savePicture(path string, r request, force bool) (err error) {
 	return export.WriteFile(path, force, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi) })
 }
 
-// keysText is what Help shows.
-const keysText = `Picture
-drag  turn      right drag, Shift drag  move      wheel, + −  zoom
-double click on the ground, f  fit      x y z (Shift: from behind)  look along      a  along the operation's axis
-click  choose an atom or lobe and its function      Shift click  choose several atoms
-arrows  turn      Shift arrows  move
-Operation
-Space  play or pause      Home, End  start, end      . ,  next, before      n N  function
-Page down, Page up  group orbital
-Everywhere
-Tab  next region; arrows and Return within it      Ctrl O  open      Ctrl V  paste coordinates
-Ctrl Z, Ctrl Y  undo, redo      Alt  menu      Escape  close, stop`
+// keysText is what Help shows: what to do, and what comes of it. An entry
+// without meaning is a heading.
+var keysText = [][2]string{
+	{"Picture"},
+	{"drag, arrows", "turn"},
+	{"right drag, Shift drag, Shift arrows", "move"},
+	{"wheel, + −", "zoom"},
+	{"double click on the ground, f", "fit"},
+	{"x y z, with Shift from behind", "look along an axis of the frame"},
+	{"a", "look along the operation's axis"},
+	{"click", "choose an atom or lobe and its function"},
+	{"Shift click", "choose several atoms"},
+	{"Operation"},
+	{"Space", "play or pause"},
+	{"Home, End", "go to its start, its end"},
+	{". ,", "choose the next one, the one before"},
+	{"n N", "choose the next function, the one before"},
+	{"Page down, Page up", "choose the next group orbital, the one before"},
+	{"Everywhere"},
+	{"Tab", "next region; arrows and Return within it"},
+	{"Ctrl O, Ctrl V", "open a file, paste coordinates"},
+	{"Ctrl S, Ctrl E", "save the study, the picture"},
+	{"Ctrl Z, Ctrl Y", "undo, redo"},
+	{"Alt", "menu"},
+	{"Escape", "close, stop"},
+}
 
-func (u *ui) showKeys() { u.showText("Keys and mouse", keysText) }
+func (u *ui) showKeys() {
+	u.showSheet("Keys and mouse", keysTable(u))
+}
+
+// keysTable has two columns.
+func keysTable(u *ui) fyne.CanvasObject {
+	p, zoom := u.palette(), float32(u.zoom())
+	table := container.New(layout.NewFormLayout())
+	cell := func(words string, c color.Color, style fyne.TextStyle) {
+		t := canvas.NewText(words, c)
+		t.TextSize, t.TextStyle = textSize*zoom, style
+		table.Add(t)
+	}
+	for _, row := range keysText {
+		if row[1] == "" {
+			cell(row[0], p.Ink, fyne.TextStyle{Bold: true})
+			cell("", p.Ink, fyne.TextStyle{})
+			continue
+		}
+		cell(row[0], p.Ink, fyne.TextStyle{})
+		cell(row[1], p.Quiet, fyne.TextStyle{})
+	}
+	scroll := container.NewVScroll(container.NewPadded(table))
+	least := table.MinSize()
+	room := u.win.Canvas().Size()
+	scroll.SetMinSize(fyne.NewSize(0, min(least.Height+2*pad, room.Height-170*zoom)))
+	return scroll
+}
 
 func (u *ui) about() {
 	u.showText("Lobewright "+u.version, "From the coordinates of a molecule to its point group in a stated frame, to the group orbitals of its ligands, and to pictures of them.\n\nTypeface: DejaVu Sans 2.37; its licence goes with the program.")
 }
 
 func (u *ui) showText(title, text string) {
-	var popup *widget.PopUp
 	body := widget.NewLabel(text)
 	body.Wrapping = fyne.TextWrapWord
+	u.showSheet(title, body)
+}
+
+// showSheet shows something to read until it is closed.
+func (u *ui) showSheet(title string, body fyne.CanvasObject) {
+	var popup *widget.PopUp
 	hide := func() {
 		popup.Hide()
 		u.win.Canvas().Focus(u.view)

@@ -86,7 +86,7 @@ func (t *thumbs) get(orbital int, side float64) *image.RGBA {
 	job := thumbJob{key: key, scale: scale, shown: picture.Shown{
 		Group: o.Group, Basis: o.Basis, Coefficients: o.Projection.Orbitals[orbital].Coefficients,
 		Look: l, Palette: &palette,
-	}, sight: u.sights.sight(u.now().Camera, o.Group, o.Basis)}
+	}, sight: u.sights.sight(u.now().Camera, o.Group, o.Basis, false)}
 	// Small pictures are seen from the program's own place, whole.
 	job.sight = u.sights.best
 	select {

@@ -7,6 +7,7 @@ import (
 	"os"
 	"runtime"
 	"runtime/debug"
+	"strconv"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -39,29 +40,32 @@ type ui struct {
 	colours look
 	motion  bool // operations move; else they are shown as stills
 
-	view    *viewport
-	given   *pane // left
-	follows *pane // right: content and group orbitals
-	detail  *pane // right, below: the chosen group orbital
-	ledger  *pane // below: one column an operation
-	said    *pane // below: what the function has become
-	scrub   *scrubBar
-	angle   *scrubBar
-	tracks  []track
-	angles  *fyne.Container // angle with its name, for linear molecules
-	basis   *widget.Entry
-	fault   *pane // above basis: what is wrong with what was typed
-	play    *widget.Button
-	hints   *hintBox
-	thumbs  *thumbs
-	player  *player
-	items   menuItems
+	view      *viewport
+	given     *pane // left
+	follows   *pane // right: content and group orbitals
+	detail    *pane // right, below: the chosen group orbital
+	ledger    *pane // below: one column an operation
+	said      *pane // below: what the function has become
+	scrub     *scrubBar
+	angle     *scrubBar
+	tracks    []track
+	angles    *fyne.Container // angle with its name and value, for linear molecules
+	angleText *widget.Label
+	basis     *widget.Entry
+	fault     *pane // above basis: what is wrong with what was typed
+	play      *widget.Button
+	hints     *hintBox
+	thumbs    *thumbs
+	player    *player
+	items     menuItems
 
 	// typedProblem is what is wrong with the functions that were typed.
 	typedProblem string
 	// openProblem is what is wrong with the file that was to be opened last.
 	openProblem string
 	notice      string // a remark of the program itself
+	// studyFile is where the study was read from or saved to last; see hasFile.
+	studyFile, studyOf string
 
 	sights  sightCache
 	images  imageCache
@@ -107,13 +111,14 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.angle = newScrubBar(u, 359, 1)
 	u.angle.change = u.angled
 	u.angle.end = u.commit
-	u.angles = container.NewBorder(nil, nil, widget.NewLabel("φ"), nil, u.onTrack(u.angle))
+	u.angleText = widget.NewLabel(angleText(359))
+	u.angles = container.NewBorder(nil, nil, container.New(widest{}, u.angleText), nil, u.onTrack(u.angle))
 	u.angles.Hide()
 	u.fault = newPane(u.drawFault, u)
 	u.fault.least = fyne.NewSize(100, 54)
 	u.fault.Hide()
 	u.basis = widget.NewEntry()
-	u.basis.SetPlaceHolder("Cl:sigma; 2-4:pz …")
+	u.basis.SetPlaceHolder(typedExample)
 	u.basis.OnChanged = func(string) { u.sayTyped("") }
 	u.basis.OnSubmitted = func(text string) { u.guard(func() { u.typeBasis(text) }) }
 	win.SetContent(u.assemble())
@@ -130,6 +135,9 @@ func systemIsDark(app fyne.App) bool {
 	}
 	return app.Settings().ThemeVariant() == theme.VariantDark
 }
+
+// typedExample is shown where functions are typed, and may be typed as it is.
+const typedExample = "Cl:sigma; 1:d"
 
 // Widths and heights of the regions, in units.
 const (
@@ -161,6 +169,21 @@ func (u *ui) assemble() fyne.CanvasObject {
 		container.NewBorder(nil, nil, rule(), nil, right), u.view)
 	whole := container.NewBorder(nil, below, nil, nil, middle)
 	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
+}
+
+// angleText names the angle of an operation of a linear molecule.
+func angleText(degrees float64) string {
+	return "φ = " + strconv.FormatFloat(degrees, 'f', -1, 64) + "°"
+}
+
+// widest gives what shows an angle the room that the longest one needs.
+type widest struct{}
+
+func (widest) Layout(objects []fyne.CanvasObject, size fyne.Size) { stacked{}.Layout(objects, size) }
+
+func (widest) MinSize(objects []fyne.CanvasObject) fyne.Size {
+	least := widget.NewLabel(angleText(359)).MinSize()
+	return least.Max(objects[0].MinSize())
 }
 
 // shares lays its visible objects side by side by weights.
@@ -340,7 +363,7 @@ func (u *ui) show(moving bool) {
 	u.fading.apply(u, &shown)
 	u.view.shown = shown
 	if st.Group != nil {
-		u.view.sight = u.sights.sight(s.Camera, st.Group, shown.Basis)
+		u.view.sight = u.sights.sight(s.Camera, st.Group, shown.Basis, len(s.Basis) > 0 && shown.Basis == nil)
 		if u.glide != nil {
 			u.view.sight = u.glide.at(u.view.sight)
 		}
@@ -348,6 +371,9 @@ func (u *ui) show(moving bool) {
 	u.view.ask(moving || u.player.playing || u.glide != nil || shown.Fade < 1 && shown.Before != nil)
 	u.scrub.set(s.Moment)
 	u.angle.set(s.Angle)
+	if text := angleText(s.Angle); text != u.angleText.Text {
+		u.angleText.SetText(text)
+	}
 	if infinite := st.Group != nil && st.Group.Fit.Setting.Infinite(); infinite != u.angles.Visible() {
 		if infinite {
 			u.angles.Show()
@@ -416,18 +442,33 @@ func (u *ui) close() {
 	}
 }
 
-// A sightCache keeps what the program chooses of the camera for a structure
-// and a basis: choosing takes time.
+// A sightCache keeps what the program chooses of the camera for a structure:
+// choosing takes time, and what is shown already does not turn when other
+// functions are chosen.
 type sightCache struct {
-	group *work.Group
-	basis *work.Basis
-	best  picture.Orbit
+	group   *work.Group
+	basis   *work.Basis
+	best    picture.Orbit
+	settled bool // the functions that came with the structure have been seen
 }
 
-func (c *sightCache) sight(camera study.Camera, g *work.Group, b *work.Basis) picture.Orbit {
-	if c.group != g || c.basis != b {
-		c.group, c.basis, c.best = g, b, picture.BestOrbit(g, b)
+// sight is the view of a structure and the lobes of a basis, which may be nil;
+// awaited tells that the basis is still being computed.
+func (c *sightCache) sight(camera study.Camera, g *work.Group, b *work.Basis, awaited bool) picture.Orbit {
+	if c.group != g {
+		c.settled = false
 	}
+	switch {
+	case c.group != g || !c.settled && c.basis != b:
+		c.best = picture.BestOrbit(g, b)
+	case c.basis != b && b != nil:
+		// Only where lobes would reach out of the picture does it become wider.
+		const margin = 1.12
+		if wider := c.best.Fitted(g, b); wider.Span > margin*c.best.Span {
+			c.best = wider
+		}
+	}
+	c.group, c.basis, c.settled = g, b, c.settled || !awaited
 	return c.best.Seen(camera)
 }
 

@@ -699,7 +699,10 @@ func TestTheTypefaceHasEverySign(t *testing.T) {
 			}
 		}
 	}
-	check(keysText)
+	for _, row := range keysText {
+		check(row[0] + row[1])
+	}
+	check(typedExample)
 	for _, m := range b.win.MainMenu().Items {
 		check(m.Label)
 		for _, i := range m.Items {
