@@ -234,3 +234,20 @@ func BenchmarkLiveFrame(b *testing.B) {
 		}
 	}
 }
+
+// The arrow of a turn lies on the viewer's side, whichever way one looks, and
+// has the positive sense.
+func TestTheSenseOfATurnIsOnTheViewersSide(t *testing.T) {
+	axes := []mgl64.Vec3{{0, 0, 1}, {1, 0, 0}, mgl64.Vec3{1, 1, 1}.Normalize()}
+	for _, axis := range axes {
+		for _, toward := range []mgl64.Vec3{{3, 1, 2}, {-1, 4, 0.5}, {0, 0, 5}, {-2, -2, -2}, {}} {
+			u, v := senseAxes(axis, toward)
+			if d := u.Cross(v).Sub(axis).Len(); d > 1e-9 {
+				t.Errorf("axis %v seen from %v: the sense is off by %g", axis, toward, d)
+			}
+			if side := toward.Sub(axis.Mul(axis.Dot(toward))); side.Len() > 1e-9 && u.Dot(side.Normalize()) < 1-1e-9 {
+				t.Errorf("axis %v seen from %v: the arrow points along %v", axis, toward, u)
+			}
+		}
+	}
+}

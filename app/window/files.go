@@ -16,7 +16,6 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
-	"fyne.io/fyne/v2/layout"
 	"fyne.io/fyne/v2/widget"
 
 	"lobewright/app/export"
@@ -303,7 +302,7 @@ func (u *ui) showKeys() {
 // keysTable has two columns.
 func keysTable(u *ui) fyne.CanvasObject {
 	p, zoom := u.palette(), float32(u.zoom())
-	table := container.New(layout.NewFormLayout())
+	table := container.New(twoColumns{gap: 2 * pad * zoom})
 	cell := func(words string, c color.Color, style fyne.TextStyle) {
 		t := canvas.NewText(words, c)
 		t.TextSize, t.TextStyle = textSize*zoom, style
@@ -323,6 +322,40 @@ func keysTable(u *ui) fyne.CanvasObject {
 	room := u.win.Canvas().Size()
 	scroll.SetMinSize(fyne.NewSize(0, min(least.Height+2*pad, room.Height-170*zoom)))
 	return scroll
+}
+
+// twoColumns lays objects in rows of two, as close as lines of a text.
+type twoColumns struct{ gap float32 }
+
+// sizes are the width of the first column, that of both, and a row's height.
+func (c twoColumns) sizes(objects []fyne.CanvasObject) (first, both, row float32) {
+	second := float32(0)
+	for i, o := range objects {
+		m := o.MinSize()
+		if i%2 == 0 {
+			first = max(first, m.Width)
+		} else {
+			second = max(second, m.Width)
+		}
+		row = max(row, m.Height)
+	}
+	const lead = 1.25
+	return first, first + c.gap + second, lead * row
+}
+
+// Layout implements fyne.Layout.
+func (c twoColumns) Layout(objects []fyne.CanvasObject, _ fyne.Size) {
+	first, _, row := c.sizes(objects)
+	for i, o := range objects {
+		o.Resize(o.MinSize())
+		o.Move(fyne.NewPos(float32(i%2)*(first+c.gap), float32(i/2)*row))
+	}
+}
+
+// MinSize implements fyne.Layout.
+func (c twoColumns) MinSize(objects []fyne.CanvasObject) fyne.Size {
+	_, both, row := c.sizes(objects)
+	return fyne.NewSize(both, row*float32((len(objects)+1)/2))
 }
 
 func (u *ui) about() {
