@@ -80,6 +80,7 @@ func checkLedger(cmd *cobra.Command, s *study.Study) error {
 func ledgerText(l *work.Ledger) string {
 	var b strings.Builder
 	b.WriteString(titleText(l.Group))
+	b.WriteString("\nBasis\n" + table.Basis(l.Basis).Text())
 	f := l.Functions[l.Ledger.Function]
 	weight := "the character"
 	if !l.ByCharacter() {
@@ -88,16 +89,24 @@ func ledgerText(l *work.Ledger) string {
 	fmt.Fprintf(&b, "\nProjection of %s (%s) onto %s, weighed with %s\n",
 		notation.Phi(l.Ledger.Function), table.FunctionName(l.Basis, f), l.Irrep.Label, weight)
 	b.WriteString(table.Ledger(l).Text())
-	switch {
-	case l.Norm == 0 && !l.ByCharacter() && l.Irrep.Dimension > 1:
-		fmt.Fprintf(&b, "\nThe sum is zero: the function has no part in partner %d of this irrep. It may have one in another (--element), or in none (--character tells).\n",
-			l.Element[1]+1)
-	case l.Norm == 0:
-		b.WriteString("\nThe sum is zero: the function has no part in this irrep.\n")
-	default:
+	if l.Norm > 0 {
 		fmt.Fprintf(&b, "\nNorm of the sum: %s\n", normText(l.Norm))
+	} else {
+		b.WriteString("\n" + zeroText(l) + "\n")
 	}
 	return b.String()
+}
+
+// zeroText says what a sum of zero means: the element K,L leaves only what the
+// function has of partner L.
+func zeroText(l *work.Ledger) string {
+	const none = "The sum is zero: the function has no part in this irrep."
+	if len(l.Partners) == 0 || l.ByCharacter() {
+		return none
+	}
+	other := l.Partners[0] + 1
+	return fmt.Sprintf("The sum is zero: with the element %d,%d the function has no part in partner %d of this irrep. It has one in partner %d: try --element %d,%d.",
+		l.Element[0]+1, l.Element[1]+1, l.Element[1]+1, other, other, other)
 }
 
 // normText writes a norm in closed form too, where it has one.

@@ -1,6 +1,7 @@
 package notation
 
 import (
+	"regexp"
 	"strconv"
 	"strings"
 	"unicode"
@@ -34,12 +35,12 @@ func Phi(function int) string { return "φ" + strconv.Itoa(function+1) }
 // operations. What follows "toward" is the name of an atom: C2 is one there.
 func Sentence(s string) Text {
 	var t Text
-	before := ""
+	naming := false // words after "toward", "of", "lie" may be names of atoms
 	for _, word := range strings.SplitAfter(s, " ") {
 		core := strings.TrimRightFunc(word, func(r rune) bool { return unicode.IsSpace(r) || strings.ContainsRune(",;:.", r) })
 		rest := word[len(core):]
 		switch {
-		case before == "toward":
+		case naming && isAtomName(core):
 			t = t.Then(Words(core))
 		case isAxes(core):
 			t = t.Then(Text{{Text: core, Italic: true}})
@@ -49,10 +50,21 @@ func Sentence(s string) Text {
 			t = t.Then(Words(core))
 		}
 		t = t.Then(Words(rest))
-		before = core
+		switch core {
+		case "toward", "of", "lie", "lies":
+			naming = true
+		case "and":
+		default:
+			naming = naming && isAtomName(core)
+		}
 	}
 	return t
 }
+
+// isAtomName tells whether a word may name an atom: "C2", "Cl12".
+func isAtomName(word string) bool { return atomName.MatchString(word) }
+
+var atomName = regexp.MustCompile(`^[A-Z][a-z]?[0-9]+$`)
 
 // isAxes tells whether a word is x, y, z or a plane of two of them.
 func isAxes(word string) bool {

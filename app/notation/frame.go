@@ -2,6 +2,7 @@ package notation
 
 import (
 	"fmt"
+	"math"
 	"slices"
 	"strings"
 
@@ -84,7 +85,7 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 	}
 	switch fit.Rule.X {
 	case symmetry.XC2MostAtoms:
-		x = "x along the C2′ through most atoms" + rest("then the one whose vertical planes hold most atoms, then most bonds")
+		x = alongC2(fit, rest)
 	case symmetry.XPlaneMostAtoms:
 		x = "xz is the σv plane with most atoms" + rest("then most bonds")
 	case symmetry.XPlanarNormal:
@@ -130,6 +131,36 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 		x = fit.Rule.X
 	}
 	return z, x
+}
+
+// alongC2 says by what the C2 square to z that x lies along was chosen: by
+// nothing where they are equivalent, and never by atoms that it does not hold.
+func alongC2(fit *symmetry.Fit, rest func(string) string) string {
+	name, classes := "C2", map[int]bool{}
+	for _, op := range fit.Setting.Operations {
+		if op.Turn.Improper || op.Turn.Den != 2 || !isSquareTo(op.Axis, 2) {
+			continue
+		}
+		classes[op.Class] = true
+		if isAlong(op.Axis, 0) {
+			outer, _, _ := strings.Cut(op.Name, "(")
+			name = strings.ReplaceAll(outer, "'", "′")
+		}
+	}
+	held := false
+	for _, p := range fit.Ideal {
+		if isAlong(p, 0) && math.Abs(p[0]) > offOrigin {
+			return "x along the " + name + " through most atoms" + rest("then the one whose vertical planes hold most atoms, then most bonds")
+		}
+		held = held || isSquareTo(p, 1) && math.Abs(p[0]) > offOrigin
+	}
+	switch {
+	case len(classes) == 1:
+		return "x along a " + name + rest("all "+name+" are equivalent")
+	case held:
+		return "x along the " + name + " whose vertical plane holds most atoms" + rest("no atom lies on it, most bonds decide next")
+	}
+	return "x along a " + name + rest("no atom lies on it or in its vertical plane, most bonds decide")
 }
 
 // betweenWhat says which elements of an even group lie between the atoms.
@@ -192,16 +223,107 @@ func isAlong(v mgl64.Vec3, axis int) bool {
 	return true
 }
 
-// toward names the first atom on the positive half of an axis of the frame:
-// ", toward Cl2".
+// isSquareTo tells whether a vector other than zero has no part along an axis
+// of the frame.
+func isSquareTo(v mgl64.Vec3, axis int) bool {
+	return v.Len() > 1e-6 && math.Abs(v[axis]) < 1e-6
+}
+
+// offOrigin is how far from the origin (Å) a place has a direction.
+const offOrigin = 1e-3
+
+// toward says where the positive half of an axis of the frame points: ", +z
+// toward Cl2" if an atom lies on it. Else, where the group tells its two halves
+// apart, it names the atoms on its side (z) or in the plane xz (x).
 func toward(fit *symmetry.Fit, names []string, axis int) string {
-	const off = 1e-3 // Å, from the origin
+	letter := "xyz"[axis : axis+1]
 	for i, p := range fit.Ideal {
-		if i < len(names) && isAlong(p, axis) && p[axis] > off {
-			return fmt.Sprintf(", +%s toward %s", "xyz"[axis:axis+1], names[i])
+		if i < len(names) && isAlong(p, axis) && p[axis] > offOrigin {
+			return fmt.Sprintf(", +%s toward %s", letter, names[i])
 		}
 	}
+	if fit.Setting.Infinite() || len(names) < len(fit.Ideal) || turnsRound(fit.Setting, axis) {
+		return ""
+	}
+	if axis == 2 {
+		if side := sideOf(fit, names); side != "" {
+			return ", +z on the side of " + side
+		}
+		return ""
+	}
+	return inPlane(fit, names)
+}
+
+// turnsRound tells whether an operation takes an axis of the frame into its
+// opposite, so that nothing tells its two halves apart.
+func turnsRound(s *symmetry.Setting, axis int) bool {
+	for _, op := range s.Operations {
+		if op.Matrix.At(axis, axis) < -1+1e-6 {
+			return true
+		}
+	}
+	return false
+}
+
+// mostInSet is how many atoms are named to tell the sense of an axis.
+const mostInSet = 4
+
+// sideOf names the set of equivalent atoms farthest to the side of +z.
+func sideOf(fit *symmetry.Fit, names []string) string {
+	best := -1
+	for i, p := range fit.Ideal {
+		if p[2] > offOrigin && (best < 0 || p[2] > fit.Ideal[best][2]+offOrigin) {
+			best = i
+		}
+	}
+	if best < 0 {
+		return ""
+	}
+	var set []string
+	for i := range fit.Ideal {
+		if slices.ContainsFunc(fit.Permutations, func(p []int) bool { return p[best] == i }) {
+			set = append(set, names[i])
+		}
+	}
+	return listed(set)
+}
+
+// inPlane names the atoms in xz off the z axis, and those at +x.
+func inPlane(fit *symmetry.Fit, names []string) string {
+	var plus, minus []string
+	for i, p := range fit.Ideal {
+		switch {
+		case math.Abs(p[1]) > offOrigin:
+		case p[0] > offOrigin:
+			plus = append(plus, names[i])
+		case p[0] < -offOrigin:
+			minus = append(minus, names[i])
+		}
+	}
+	switch {
+	case len(plus) > 0:
+		return ", in xz at +x " + lie(len(plus)) + " " + listed(plus)
+	case len(minus) > 0:
+		return ", in xz at −x " + lie(len(minus)) + " " + listed(minus)
+	}
 	return ""
+}
+
+func lie(n int) string {
+	if n == 1 {
+		return "lies"
+	}
+	return "lie"
+}
+
+// listed joins names: "Cl3, Cl5 and Cl7", "C1, C2, C3 …".
+func listed(names []string) string {
+	if n := len(names); n > mostInSet {
+		return strings.Join(names[:mostInSet-1], ", ") + " …"
+	} else if n > 1 {
+		return strings.Join(names[:n-1], ", ") + " and " + names[n-1]
+	}
+	return names[0]
 }
 
 // Source says who published a rule, or that it is common practice or an own

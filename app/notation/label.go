@@ -2,6 +2,7 @@ package notation
 
 import (
 	"regexp"
+	"slices"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -157,6 +158,14 @@ func rotations(t Text) Text {
 // PlainPolynomial writes a function of an irrep for a terminal: powers as
 // superscript characters, a true minus ("x²−y²").
 func PlainPolynomial(s string) string { return Polynomial(s).String() }
+
+// Likest is the number of the function that a partner is best compared with,
+// of those that span its irrep: the first polynomial, or the first rotation
+// where there is nothing else. Functions of other partners at the same place
+// go with it.
+func Likest(functions []string) int {
+	return max(0, slices.IndexFunc(functions, func(f string) bool { return !strings.Contains(f, "R") }))
+}
 
 // splitFirst splits off the first letter of a label.
 func splitFirst(s string) (first, rest string) {

@@ -35,17 +35,44 @@ const (
 	captionMargin = 3.0
 )
 
-// moleculeCaption names structure and group, and the frame.
-func moleculeCaption(g *work.Group) caption {
+// narrowest is the width in millimetres from which a figure has room for the
+// line on the frame, and for the labels of all atoms.
+const narrowest = 60.0
+
+func isNarrow(s study.Study) bool { return s.Figure.TheWidth() < narrowest }
+
+// moleculeCaption names structure and group, the operation of which the
+// element is shown, and the frame.
+func moleculeCaption(g *work.Group, s study.Study) caption {
+	title := notation.Words(g.Molecule.Title + "   ").Then(notation.Group(g.Fit.Setting.Symbol))
 	return caption{
-		{text: notation.Words(g.Molecule.Title + "   ").Then(notation.Group(g.Fit.Setting.Symbol)), size: titleSize},
-		frameLine(g),
+		{text: title.Then(operationText(g, s.Operation)), size: titleSize},
+	}.withFrame(g, s)
+}
+
+// operationText names an operation of a group behind a title.
+func operationText(g *work.Group, name string) notation.Text {
+	if name == "" {
+		return nil
 	}
+	op, err := operationNamed(g.Fit.Setting, name)
+	if err != nil { // told where its element is drawn
+		return nil
+	}
+	return notation.Words("   ").Then(notation.Operation(op.Name))
+}
+
+// withFrame adds the line on the frame where there is room for it.
+func (c caption) withFrame(g *work.Group, s study.Study) caption {
+	if isNarrow(s) {
+		return c
+	}
+	return append(c, frameLine(g))
 }
 
 // orbitalCaption names a group orbital, writes it down, and explains signs and
 // sizes of lobes.
-func orbitalCaption(o *work.Orbitals, orbital *orbitals.GroupOrbital, look study.Look) caption {
+func orbitalCaption(o *work.Orbitals, orbital *orbitals.GroupOrbital, s study.Study) caption {
 	irrep := o.Irreps[orbital.Irrep]
 	var which []string
 	if irrep.Dimension > 1 {
@@ -58,6 +85,7 @@ func orbitalCaption(o *work.Orbitals, orbital *orbitals.GroupOrbital, look study
 	if len(which) > 0 {
 		title.text = title.text.Then(notation.Words("   " + strings.Join(which, ", ")))
 	}
+	title.text = title.text.Then(operationText(o.Group, s.Operation))
 	lines := caption{title}
 	form, ok := orbitals.FindClosedForm(orbital.Coefficients)
 	functions := basisText(o.Basis, orbital.Coefficients)
@@ -71,7 +99,7 @@ func orbitalCaption(o *work.Orbitals, orbital *orbitals.GroupOrbital, look study
 	default:
 		lines = append(lines, captionLine{text: notation.ClosedForm(form), size: captionSize, beside: functions})
 	}
-	return append(lines, captionLine{text: legendText(look), size: secondSize, quiet: true, legend: true}, frameLine(o.Group))
+	return append(lines, captionLine{text: legendText(s.Look), size: secondSize, quiet: true, legend: true}).withFrame(o.Group, s)
 }
 
 // longestForm is how many characters a closed form may have to stand below

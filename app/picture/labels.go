@@ -30,7 +30,7 @@ func runs(t notation.Text) []render.Run {
 }
 
 // labelled tells which atoms get a label: all in small structures, in larger
-// ones those that carry functions or, without functions, all but hydrogen, and
+// ones and in narrow pictures those that carry functions or, without functions, all but hydrogen, and
 // none where labels would hide what they name.
 func (s *stage) labelled(g *work.Group, carries []bool) []bool {
 	const few = 14
@@ -38,7 +38,7 @@ func (s *stage) labelled(g *work.Group, carries []bool) []bool {
 	n := 0
 	for i := range out {
 		switch {
-		case len(out) <= few:
+		case len(out) <= few && (carries == nil || !s.narrow):
 			out[i] = true
 		case carries != nil:
 			out[i] = carries[i]

@@ -47,7 +47,7 @@ func (p *Picture) Draw(ctx context.Context) (*image.RGBA, error) {
 func Molecule(g *work.Group, s study.Study) (*Picture, error) {
 	st := newStage(s)
 	st.addMolecule(g)
-	lines := moleculeCaption(g)
+	lines := moleculeCaption(g, s)
 	return st.finish(g, s, st.atoms, lines)
 }
 
@@ -57,11 +57,11 @@ func Orbital(o *work.Orbitals, orbital *orbitals.GroupOrbital, s study.Study) (*
 	st.carries = carriers(o.Basis)
 	st.addMolecule(o.Group)
 	st.addCombination(o.Group, mixtures(o.Basis, orbital.Coefficients))
-	return st.finish(o.Group, s, st.roomOf(o.Basis), orbitalCaption(o, orbital, s.Look))
+	return st.finish(o.Group, s, st.roomOf(o.Basis), orbitalCaption(o, orbital, s))
 }
 
 func newStage(s study.Study) *stage {
-	return &stage{palette: paletteOf(s.Look), look: s.Look}
+	return &stage{palette: paletteOf(s.Look), look: s.Look, narrow: isNarrow(s)}
 }
 
 // carriers marks the atoms that carry functions of a basis.
@@ -120,8 +120,12 @@ func (s *stage) finish(g *work.Group, st study.Study, room []ball, caption capti
 	if height == 0 {
 		height = suitingHeight(v, balls, width, st.Camera.Orthographic) + set.height
 	}
-	if height < set.height+minBody {
-		return nil, fmt.Errorf("a height of %g mm leaves no room for the picture above its caption; give at least %.0f mm, or leave the caption out",
+	switch {
+	case height >= set.height+minBody:
+	case st.Figure.Height == 0:
+		return nil, fmt.Errorf("a width of %.4g mm is too narrow for a picture; give at least %.0f mm", width, math.Ceil(minBody/leastHeight))
+	default:
+		return nil, fmt.Errorf("a height of %.4g mm leaves no room for the picture above its caption; give at least %.0f mm, or leave the caption out",
 			height, math.Ceil(set.height+minBody))
 	}
 	scr, err := newScreen(width, height, set.height, st.Figure.TheResolution())
@@ -144,6 +148,9 @@ func (s *stage) finish(g *work.Group, st study.Study, room []ball, caption capti
 
 // minBody is the least height in millimetres that the bodies need.
 const minBody = 12
+
+// leastHeight is the least height of the bodies' part of a picture, in widths.
+const leastHeight = 0.45
 
 // newScreen is the picture in pixels, less the caption at the bottom.
 func newScreen(width, height, captionHeight, dpi float64) (screen, error) {
@@ -175,7 +182,7 @@ func suitingHeight(v view, balls []ball, width float64, orthographic bool) float
 	high.bottom = float64(high.height)
 	b := newSight(cameraFor(v, balls, high, orthographic), high).bounds(balls)
 	body := (b.bottom-b.top)/high.pixelsPerMM + 2*topMargin
-	return min(max(body, 0.45*width), 1.05*width)
+	return min(max(body, leastHeight*width), 1.05*width)
 }
 
 // operationNamed finds an operation by its name.

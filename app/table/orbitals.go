@@ -132,7 +132,7 @@ func Orbitals(o *work.Orbitals) Table {
 // likeness is the simplest function that a partner transforms like.
 func likeness(irrep symmetry.Irrep, partner int) string {
 	if partner < len(irrep.Functions) && len(irrep.Functions[partner]) > 0 {
-		return notation.PlainPolynomial(irrep.Functions[partner][0])
+		return notation.PlainPolynomial(irrep.Functions[partner][notation.Likest(irrep.Functions[0])])
 	}
 	return ""
 }

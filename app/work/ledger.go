@@ -55,8 +55,28 @@ func (w *Work) ledgerOf(ctx context.Context, basis *Basis, p study.Projection) (
 		if err != nil {
 			return nil, blame(StageLedger, ConcernFunction, err)
 		}
-		return &Ledger{basis, ledger, setting.Irreps[irrep]}, nil
+		partners, err := partnersOf(representation, p.Function-1, irrep, setting.Irreps[irrep].Dimension)
+		if err != nil {
+			return nil, blame(StageLedger, ConcernFunction, err)
+		}
+		return &Ledger{basis, ledger, setting.Irreps[irrep], partners}, nil
 	})
+}
+
+// partnersOf lists the partners of an irrep in which a function has a part: of
+// partner l that is the sum with the matrix element l,l.
+func partnersOf(r *orbitals.Representation, function, irrep, dimension int) ([]int, error) {
+	var partners []int
+	for l := range dimension {
+		ledger, err := r.Ledger(function, irrep, [2]int{l, l})
+		if err != nil {
+			return nil, err
+		}
+		if ledger.Norm > 0 {
+			partners = append(partners, l)
+		}
+	}
+	return partners, nil
 }
 
 // checkFunction refuses a function, counted from 1, that a basis lacks.

@@ -102,6 +102,9 @@ type Ledger struct {
 	*Basis
 	*orbitals.Ledger
 	Irrep symmetry.Irrep
+	// Partners are those of the irrep, from 0, in which the function has a
+	// part. It has none in the irrep if there are none.
+	Partners []int
 }
 
 // Structure reads the structure of a study. The error is a *Problem around a

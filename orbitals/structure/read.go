@@ -87,7 +87,7 @@ func readCount(in *lines) (count, line int, err error) {
 		return 0, 0, in.fail(BadCount, in.number, wantCount, "expected the number of atoms, found %s",
 			found(strings.TrimSpace(text)))
 	case n < 1:
-		return 0, 0, in.fail(BadCount, in.number, wantCount, "the number of atoms is %d", n)
+		return 0, 0, in.fail(BadCount, in.number, wantCount, "the number of atoms is %d, it must be from 1 to %s", n, grouped(MaxAtoms))
 	}
 	return n, in.number, nil
 }
