@@ -99,6 +99,25 @@ func TestSentencesSetAxesAndOperations(t *testing.T) {
 	}
 }
 
+func TestSentencesSetNamesOfAtomsUpright(t *testing.T) {
+	got := brief(Sentence("x along a C2′ (all C2′ are equivalent), in xz at +x lie C2, C3 and C7; z along C5, +z toward C2, C4 of C3"))
+	want := "*x* along a *C*_[2]′ (all *C*_[2]′ are equivalent), in *xz* at +x lie C2, C3 and C7; *z* along *C*_[5], +z toward C2, C4 of C3"
+	if got != want {
+		t.Errorf("got  %s\nwant %s", got, want)
+	}
+}
+
+func TestAPolynomialIsLikerThanARotation(t *testing.T) {
+	for _, c := range []struct {
+		functions []string
+		want      int
+	}{{[]string{"Rx", "yz"}, 1}, {[]string{"z", "Rz"}, 0}, {[]string{"−2Rz+Rx+Ry"}, 0}} {
+		if got := Likest(c.functions); got != c.want {
+			t.Errorf("of %v number %d is taken, not %d", c.functions, got, c.want)
+		}
+	}
+}
+
 func TestClosedFormsHaveLoweredNumbers(t *testing.T) {
 	form, ok := orbitals.FindClosedForm([]float64{2 / math.Sqrt(6), -1 / math.Sqrt(6), -1 / math.Sqrt(6)})
 	if !ok {
