@@ -119,8 +119,9 @@ func frameLine(g *work.Group) captionLine {
 	return captionLine{text: text, size: secondSize, quiet: true}
 }
 
-// basisText says which functions occur in a combination, where that is short:
-// "φ1–φ4: σ on Cl2–Cl5", "φ1, φ6: dz² on Re1, Re2".
+// basisText says which functions on which atoms occur in a combination:
+// "φ1–φ4: σ on Cl2–Cl5", "φ1, φ6: dz² on Re1, Re2". Where that is too long the
+// numbers are left out, and then the names of the atoms: "s on 60 atoms".
 func basisText(b *work.Basis, coefficients []float64) notation.Text {
 	names := b.AtomNames()
 	var kinds []string
@@ -135,41 +136,62 @@ func basisText(b *work.Basis, coefficients []float64) notation.Text {
 		numbers[f.Name] = append(numbers[f.Name], strconv.Itoa(i+1))
 		atoms[f.Name] = append(atoms[f.Name], names[f.Site])
 	}
-	var t notation.Text
-	for i, kind := range kinds {
-		if i > 0 {
-			t = t.Then(notation.Words("; "))
-		}
-		for k, number := range ends(numbers[kind]) {
-			if k > 0 {
-				t = t.Then(notation.Words(joint(numbers[kind])))
+	list := func(numbered, named bool) notation.Text {
+		var t notation.Text
+		for i, kind := range kinds {
+			if i > 0 {
+				t = t.Then(notation.Words("; "))
 			}
-			t = t.Then(notation.PhiText(number))
+			if numbered {
+				for k, run := range runsOf(numbers[kind]) {
+					if k > 0 {
+						t = t.Then(notation.Words(", "))
+					}
+					t = t.Then(notation.PhiText(run[0]))
+					if len(run) > 1 {
+						t = t.Then(notation.Words("–"), notation.PhiText(run[1]))
+					}
+				}
+				t = t.Then(notation.Words(": "))
+			}
+			on := fmt.Sprintf(" on %d atoms", len(atoms[kind]))
+			if named {
+				var parts []string
+				for _, run := range runsOf(atoms[kind]) {
+					parts = append(parts, strings.Join(run, "–"))
+				}
+				on = " on " + strings.Join(parts, ", ")
+			}
+			t = t.Then(notation.Function(kind), notation.Words(on))
 		}
-		t = t.Then(notation.Words(": "), notation.Function(kind),
-			notation.Words(" on "+strings.Join(ends(atoms[kind]), joint(atoms[kind]))))
+		return t
 	}
-	if notation.Width(t.String()) > longestForm {
-		return nil
+	for _, t := range []notation.Text{list(true, true), list(false, true), list(false, false)} {
+		if notation.Width(t.String()) <= longestForm {
+			return t
+		}
 	}
-	return t
+	return nil
 }
 
-// ends are the first and the last entry of a list of which the others follow
-// from them, since their numbers run on; else the whole list.
-func ends(list []string) []string {
-	if len(list) > 2 && runsOn(list) {
-		return []string{list[0], list[len(list)-1]}
+// runsOf cuts a list of names into runs of three or more whose numbers run on,
+// of each the first and the last, and single names: C1, C2–C6, C12–C16.
+func runsOf(list []string) [][]string {
+	var runs [][]string
+	for len(list) > 0 {
+		n := 1
+		for n < len(list) && runsOn(list[:n+1]) {
+			n++
+		}
+		if n > 2 {
+			runs = append(runs, []string{list[0], list[n-1]})
+		} else {
+			n = 1
+			runs = append(runs, list[:1])
+		}
+		list = list[n:]
 	}
-	return list
-}
-
-// joint is what stands between the entries of ends.
-func joint(list []string) string {
-	if len(list) > 2 && runsOn(list) {
-		return "–"
-	}
-	return ", "
+	return runs
 }
 
 // runsOn tells whether a list of names that end in numbers, or of numbers, has

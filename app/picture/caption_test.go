@@ -50,3 +50,33 @@ func TestAWidthThatIsTooSmallIsNamed(t *testing.T) {
 		t.Error(err)
 	}
 }
+
+func TestNamesAreDrawnTogetherInRuns(t *testing.T) {
+	for list, want := range map[string]string{
+		"C2 C3 C4 C12 C13 C14": "C2–C4 C12–C14", "C1 C2 N3": "C1 C2 N3", "1 3 4 5 6": "1 3–6", "Cl5": "Cl5",
+	} {
+		var got []string
+		for _, run := range runsOf(strings.Fields(list)) {
+			got = append(got, strings.Join(run, "–"))
+		}
+		if strings.Join(got, " ") != want {
+			t.Errorf("%s: got %v, want %s", list, got, want)
+		}
+	}
+}
+
+func TestACaptionWithoutAFormTellsTheFunctions(t *testing.T) {
+	s := study.Study{Structure: "demo:sandwich-eclipsed", Basis: []string{"C:pz"}}
+	s.Projection.Irrep = "E1''"
+	o, err := newWork().Orbitals(t.Context(), s)
+	if err != nil {
+		t.Fatal(err)
+	}
+	orbital, err := o.Orbital(s.Projection)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if got := plain(orbitalCaption(o, orbital, s)); !strings.Contains(got, "on C2–C11") {
+		t.Errorf("got\n%s", got)
+	}
+}
