@@ -26,6 +26,10 @@ const (
 	maxBasis     = 256     // selections
 	maxAtoms     = 20_000  // chosen ones
 	maxNumber    = 1_000_000
+	maxRotations = 64
+	maxViews     = 64
+	maxLevels    = 1000
+	maxPixels    = 16_384
 	maxSize      = 1e5 // mm, dots per inch
 )
 
@@ -53,16 +57,28 @@ func (s Study) Check() error {
 	for i, e := range p.Element {
 		c.count(fmt.Sprintf("projection.element[%d]", i+1), e)
 	}
+	c.rotations("turn", s.Turn)
+	c.rotations("mixing", s.Mixing)
 	c.text("operation", s.Operation, maxName)
 	c.number("moment", s.Moment, 0, 1)
 	c.number("angle", s.Angle, 0, 360)
-	c.camera(s.Camera)
-	c.word("look.style", s.Look.Style, "lit", "ink")
-	c.word("look.ground", s.Look.Ground, "paper", "white", "dark", "transparent")
-	c.word("look.size", s.Look.Size, "length", "area", "volume")
-	c.number("figure.width", s.Figure.Width, 0, maxSize)
-	c.number("figure.height", s.Figure.Height, 0, maxSize)
-	c.number("figure.resolution", s.Figure.Resolution, 0, maxSize)
+	c.text("held.frame", s.Held.Frame, maxName)
+	c.text("held.z", s.Held.Z, maxName)
+	c.text("held.x", s.Held.X, maxName)
+	c.text("held.irrep", s.Held.Irrep, maxName)
+	c.count("held.copy", s.Held.Copy)
+	c.count("held.partner", s.Held.Partner)
+	c.count("central", s.Central)
+	c.text("subgroup", s.Subgroup, maxName)
+	c.camera("camera", s.Camera)
+	c.views(s.Views)
+	c.look(s.Look)
+	c.figure(s.Figure)
+	c.levels(s.Levels)
+	c.number("animation.seconds", s.Animation.Seconds, 0, 60)
+	c.number("animation.rate", s.Animation.Rate, 0, 60)
+	c.pixels("animation.width", s.Animation.Width)
+	c.pixels("animation.height", s.Animation.Height)
 	if c.err == nil {
 		return nil // not a nil *record.Error within an error
 	}
@@ -145,22 +161,88 @@ func (c *checker) atoms(atoms []int) {
 	}
 }
 
-func (c *checker) camera(v Camera) {
-	c.number("camera.azimuth", v.Azimuth, -360, 360)
-	c.number("camera.elevation", v.Elevation, -90, 90)
+func (c *checker) rotations(key string, rotations []PlaneRotation) {
+	if len(rotations) > maxRotations {
+		c.wrong(key, "there are %d rotations; there may be %d", len(rotations), maxRotations)
+	}
+	for i, r := range rotations {
+		key := fmt.Sprintf("%s[%d]", key, i+1)
+		c.number(key+".angle", r.Angle, -360, 360)
+		switch {
+		case r.From < 1 || r.From > maxNumber || r.To < 1 || r.To > maxNumber:
+			c.wrong(key, "from %d to %d is no rotation; functions count from 1", r.From, r.To)
+		case r.From == r.To:
+			c.wrong(key, "function %d cannot be turned into itself", r.From)
+		}
+	}
+}
+
+func (c *checker) views(views []View) {
+	if len(views) > maxViews {
+		c.wrong("views", "there are %d views; there may be %d", len(views), maxViews)
+	}
+	for i, v := range views {
+		key := fmt.Sprintf("views[%d]", i+1)
+		c.text(key+".name", v.Name, maxName)
+		if v.Name == "" {
+			c.wrong(key+".name", "a view needs a name")
+		}
+		c.camera(key+".camera", v.Camera)
+	}
+}
+
+func (c *checker) look(l Look) {
+	c.word("look.style", l.Style, "lit", "ink")
+	c.word("look.ground", l.Ground, "paper", "white", "dark", "transparent")
+	c.word("look.size", l.Size, "length", "area", "volume")
+	c.word("look.shape", l.Shape, "contour", "polar", "square")
+	c.word("look.signs", l.Signs, "hatching", "printed")
+}
+
+func (c *checker) figure(f Figure) {
+	c.word("figure.sheet", f.Sheet, "one", "all", "set", "operations", "molecule", "frames", "descent", "levels")
+	c.word("figure.font", f.Font, "sans", "serif")
+	c.number("figure.textSize", f.TextSize, 0, 200)
+	c.number("figure.width", f.Width, 0, maxSize)
+	c.number("figure.height", f.Height, 0, maxSize)
+	c.number("figure.resolution", f.Resolution, 0, maxSize)
+}
+
+func (c *checker) levels(levels []Level) {
+	if len(levels) > maxLevels {
+		c.wrong("levels", "there are %d levels; there may be %d", len(levels), maxLevels)
+	}
+	for i, l := range levels {
+		key := fmt.Sprintf("levels[%d]", i+1)
+		c.word(key+".side", l.Side, "group", "central")
+		c.text(key+".irrep", l.Irrep, maxName)
+		c.count(key+".copy", l.Copy)
+		c.number(key+".height", l.Height, 0, 100)
+	}
+}
+
+func (c *checker) pixels(key string, n int) {
+	if n < 0 || n > maxPixels {
+		c.wrong(key, "%d is no size in pixels; it may be %d", n, maxPixels)
+	}
+}
+
+func (c *checker) camera(key string, v Camera) {
+	c.number(key+".azimuth", v.Azimuth, -360, 360)
+	c.number(key+".elevation", v.Elevation, -90, 90)
 	if v.Rotation != [4]float64{} {
 		square := 0.0
 		for _, x := range v.Rotation {
 			square += x * x
 		}
 		if !(math.Abs(square-1) <= 1e-6) {
-			c.wrong("camera.rotation", "the squares add up to %.6g, not to 1", square)
+			c.wrong(key+".rotation", "the squares add up to %.6g, not to 1", square)
 		}
 	}
 	if v.Zoom != 0 {
-		c.number("camera.zoom", v.Zoom, MinZoom, MaxZoom)
+		c.number(key+".zoom", v.Zoom, MinZoom, MaxZoom)
 	}
 	for i, x := range v.Pan {
-		c.number(fmt.Sprintf("camera.pan[%d]", i+1), x, -MaxPan, MaxPan)
+		c.number(fmt.Sprintf("%s.pan[%d]", key, i+1), x, -MaxPan, MaxPan)
 	}
 }

@@ -6,7 +6,10 @@
 // the studies of one sitting, for undo and redo.
 package study
 
-import "slices"
+import (
+	"reflect"
+	"slices"
+)
 
 // A Study is all choices of one piece of work. Its zero value has every
 // default but no structure. Atoms, functions, copies, partners and matrix
@@ -48,6 +51,10 @@ type Study struct {
 	// Atoms are those chosen in the picture, rising. They decide nothing.
 	Atoms      []int      `record:"atoms"`
 	Projection Projection `record:"projection"`
+	// Turn rotates the partners of the chosen irrep into each other, and Mixing
+	// its copies; the rotations are carried out in their order.
+	Turn   []PlaneRotation `record:"turn"`
+	Mixing []PlaneRotation `record:"mixing"`
 	// Operation names the operation whose symmetry element is shown and which
 	// is played.
 	Operation string `record:"operation"`
@@ -55,10 +62,23 @@ type Study struct {
 	Moment float64 `record:"moment"`
 	// Angle is φ in degrees, for the operations C(φ), σv(φ) … of linear
 	// molecules: from 0 to 360.
-	Angle  float64 `record:"angle"`
-	Camera Camera  `record:"camera"`
-	Look   Look    `record:"look"`
-	Figure Figure  `record:"figure"`
+	Angle float64 `record:"angle"`
+	// Held is what is held beside the picture, to be compared with it.
+	Held Held `record:"held"`
+	// Central is the atom whose own functions are matched with the group
+	// orbitals; zero leaves the choice to the program.
+	Central int `record:"central"`
+	// Subgroup is a group into which the irreps are followed: "C4v", or
+	// "C4v:2" for the second embedding.
+	Subgroup string `record:"subgroup"`
+	Camera   Camera `record:"camera"`
+	// Views are cameras with names, kept to come back to.
+	Views  []View `record:"views"`
+	Look   Look   `record:"look"`
+	Figure Figure `record:"figure"`
+	// Levels are the heights that were set by hand on a sheet of levels.
+	Levels    []Level   `record:"levels"`
+	Animation Animation `record:"animation"`
 }
 
 // A Projection says what is projected and which result is looked at.
@@ -76,6 +96,33 @@ type Projection struct {
 	// ledger; zero stands for (1, 1). Character takes the character instead.
 	Element   [2]int `record:"element"`
 	Character bool   `record:"character"`
+}
+
+// A PlaneRotation turns two functions of an orthonormal set into each other:
+// From becomes cos·From + sin·To, and To becomes −sin·From + cos·To. Both count
+// from 1 and differ; Angle is in degrees, from −360 to 360.
+type PlaneRotation struct {
+	From  int     `record:"from"`
+	To    int     `record:"to"`
+	Angle float64 `record:"angle"`
+}
+
+// Held is a second frame or a second group orbital, held against the one in
+// force. Frame, Z and X are as in a Study, Irrep, Copy and Partner as in a
+// Projection.
+type Held struct {
+	Frame   string `record:"frame"`
+	Z       string `record:"z"`
+	X       string `record:"x"`
+	Irrep   string `record:"irrep"`
+	Copy    int    `record:"copy"`
+	Partner int    `record:"partner"`
+}
+
+// A View is a camera with the name under which it is found again.
+type View struct {
+	Name   string `record:"name"`
+	Camera Camera `record:"camera"`
 }
 
 // A Subject is what an operation is played on.
@@ -111,13 +158,51 @@ type Look struct {
 	// Size is what goes with |c| of a lobe: "length", "area" or "volume";
 	// empty stands for "length".
 	Size string `record:"size"`
+	// Shape is what a lobe is: "contour", a surface of equal value; "polar",
+	// as far from the atom as |Y| is large; "square", likewise with Y². Empty
+	// stands for "contour".
+	Shape string `record:"shape"`
+	// Signs tells the sign of a lobe a second time: "hatching" on the negative
+	// ones, or "printed" + and −; empty: by tone alone.
+	Signs string `record:"signs"`
+	// Nodes shows the nodal planes of the group orbital.
+	Nodes bool `record:"nodes"`
+	// Elements shows all symmetry elements, not only those of the operation.
+	Elements bool `record:"elements"`
+	// Coloured gives the atoms colours by element.
+	Coloured bool `record:"coloured"`
+	// Displacements shows how far the atoms are from the ideal structure.
+	Displacements bool `record:"displacements"`
+	// Split shows all partners of the set side by side.
+	Split bool `record:"split"`
 	// NoLabels and NoAxes leave the atoms' labels and the triad out.
 	NoLabels bool `record:"noLabels"`
 	NoAxes   bool `record:"noAxes"`
 }
 
-// A Figure says how large the picture is on paper.
+// A Figure says what a figure shows and how large it is on paper.
 type Figure struct {
+	// Sheet is what the panels show: "one" group orbital, "all" of a basis, all
+	// partners of one "set", the "operations" on the chosen function, the
+	// "molecule" with its symmetry elements, two "frames", the "descent" into
+	// Subgroup, or the "levels" of group orbitals and central orbitals. Empty
+	// stands for "one".
+	Sheet string `record:"sheet"`
+	// Slide makes the sheet 16:9, with text to be read from afar.
+	Slide bool `record:"slide"`
+	// Font is "sans" or "serif"; empty stands for "sans".
+	Font string `record:"font"`
+	// TextSize is in points; zero stands for 8, or 18 on a slide.
+	TextSize float64 `record:"textSize"`
+	// NoLetters, NoLegend, NoCard and NoCoefficients leave these out of a
+	// sheet: the letters of the panels, the legend of signs and sizes, the card
+	// with triad and rule, and the closed forms.
+	NoLetters      bool `record:"noLetters"`
+	NoLegend       bool `record:"noLegend"`
+	NoCard         bool `record:"noCard"`
+	NoCoefficients bool `record:"noCoefficients"`
+	// NoStudy keeps the study out of the files of figures.
+	NoStudy bool `record:"noStudy"`
 	// Width and Height are in millimetres, Resolution in dots per inch. Zero
 	// stands for the defaults, a zero Height for one that suits the content.
 	Width      float64 `record:"width"`
@@ -125,6 +210,30 @@ type Figure struct {
 	Resolution float64 `record:"resolution"`
 	// NoCaption leaves out the label and the legend below the picture.
 	NoCaption bool `record:"noCaption"`
+}
+
+// A Level is the height of a level in a sketch of interactions, set by hand: it
+// claims no energy. Height counts upward, in percent of the column's height.
+type Level struct {
+	// Side is "group" or "central".
+	Side string `record:"side"`
+	// Irrep and Copy say which level; copies count within the side.
+	Irrep  string  `record:"irrep"`
+	Copy   int     `record:"copy"`
+	Height float64 `record:"height"`
+}
+
+// An Animation says how an operation is written as a moving picture. Zeros
+// stand for the defaults.
+type Animation struct {
+	// Seconds is how long the operation takes, Rate the pictures in a second.
+	Seconds float64 `record:"seconds"`
+	Rate    float64 `record:"rate"`
+	// Width and Height are in pixels.
+	Width  int `record:"width"`
+	Height int `record:"height"`
+	// Once plays the operation once instead of again and again.
+	Once bool `record:"once"`
 }
 
 // DefaultTolerance (Å) is about the scatter of a good crystal structure, and
@@ -182,31 +291,20 @@ func (s Study) Opened(structure string) Study {
 		Camera:    Camera{Orthographic: s.Camera.Orthographic},
 		Look:      s.Look,
 		Figure:    s.Figure,
+		Animation: s.Animation,
 	}
 }
 
 // Equal tells whether two studies are the same choices.
 func (s Study) Equal(t Study) bool {
-	if !slices.Equal(s.Basis, t.Basis) || !slices.Equal(s.Atoms, t.Atoms) {
-		return false
-	}
-	return s.flat() == t.flat()
+	return slices.Equal(s.Basis, t.Basis) && slices.Equal(s.Atoms, t.Atoms) && slices.Equal(s.Views, t.Views) &&
+		slices.Equal(s.Turn, t.Turn) && slices.Equal(s.Mixing, t.Mixing) &&
+		slices.Equal(s.Levels, t.Levels) && reflect.DeepEqual(s.withoutLists(), t.withoutLists())
 }
 
-// A flat is a study without its lists, which == can compare.
-type flat struct {
-	structure, coordinates, core, ignore, as, frame, z, x, operation string
-	keepAxes                                                         bool
-	tolerance, moment, angle                                         float64
-	projection                                                       Projection
-	camera                                                           Camera
-	look                                                             Look
-	figure                                                           Figure
-}
-
-func (s Study) flat() flat {
-	return flat{
-		s.Structure, s.Coordinates, s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.Operation,
-		s.KeepAxes, s.Tolerance, s.Moment, s.Angle, s.Projection, s.Camera, s.Look, s.Figure,
-	}
+// withoutLists leaves out what may be empty in two ways, nil or of no length.
+func (s Study) withoutLists() Study {
+	s.Basis, s.Atoms, s.Views = nil, nil, nil
+	s.Turn, s.Mixing, s.Levels = nil, nil, nil
+	return s
 }

@@ -20,11 +20,144 @@ var full = Study{
 	Projection: Projection{Function: 3, Irrep: "Eu", Copy: 2, Partner: 1, Subject: SubjectFunction, Element: [2]int{2, 1}, Character: true},
 	Operation:  "C4^3(z)", Moment: 0.25, Angle: 60,
 	Camera: Camera{true, 30, -20, [4]float64{0.5, 0.5, -0.5, 0.5}, 2, [2]float64{0.5, -1}, true},
-	Look:   Look{"ink", "dark", "area", true, true},
-	Figure: Figure{85, 60, 600, true},
+	Turn:   []PlaneRotation{{1, 2, 45}}, Mixing: []PlaneRotation{{1, 3, -30}, {2, 1, 0.5}},
+	Held:    Held{"x-on-atoms", "C2(z)", "1,2", "A1g", 1, 2},
+	Central: 7, Subgroup: "C4v:2",
+	Views:     []View{{"from above", Camera{Set: true, Elevation: 90}}, {"default", Camera{}}},
+	Look:      Look{"ink", "dark", "area", "polar", "hatching", true, true, true, true, true, true, true},
+	Figure:    Figure{"levels", true, "serif", 9, true, true, true, true, true, 85, 60, 600, true},
+	Levels:    []Level{{"group", "Eg", 1, 25}},
+	Animation: Animation{2, 25, 800, 600, true},
+}
+
+// full1 is what version 1 knew of it.
+var full1 = Study{
+	Structure: full.Structure, Coordinates: full.Coordinates, Core: full.Core, Ignore: full.Ignore, Tolerance: full.Tolerance,
+	As: full.As, KeepAxes: true, Frame: full.Frame, Z: full.Z, X: full.X, Basis: full.Basis, Atoms: full.Atoms,
+	Projection: full.Projection, Operation: full.Operation, Moment: full.Moment, Angle: full.Angle, Camera: full.Camera,
+	Look:   Look{Style: "ink", Ground: "dark", Size: "area", NoLabels: true, NoAxes: true},
+	Figure: Figure{Width: 85, Height: 60, Resolution: 600, NoCaption: true},
 }
 
 const fullText = `{
+  "version": 2,
+  "structure": "pasted",
+  "coordinates": [
+    "1",
+    "xenon",
+    "Xe 0 0 0",
+    ""
+  ],
+  "core": "1-5",
+  "ignore": "H",
+  "tolerance": 0.05,
+  "as": "D4h:2",
+  "keepAxes": true,
+  "frame": "default",
+  "z": "C4(z)",
+  "x": "2",
+  "basis": ["Cl:sigma", "Cl:pi"],
+  "atoms": [2, 4],
+  "projection": {
+    "function": 3,
+    "irrep": "Eu",
+    "copy": 2,
+    "partner": 1,
+    "subject": "function",
+    "element": [2, 1],
+    "character": true
+  },
+  "turn": [{
+    "from": 1,
+    "to": 2,
+    "angle": 45
+  }],
+  "mixing": [{
+    "from": 1,
+    "to": 3,
+    "angle": -30
+  }, {
+    "from": 2,
+    "to": 1,
+    "angle": 0.5
+  }],
+  "operation": "C4^3(z)",
+  "moment": 0.25,
+  "angle": 60,
+  "held": {
+    "frame": "x-on-atoms",
+    "z": "C2(z)",
+    "x": "1,2",
+    "irrep": "A1g",
+    "copy": 1,
+    "partner": 2
+  },
+  "central": 7,
+  "subgroup": "C4v:2",
+  "camera": {
+    "set": true,
+    "azimuth": 30,
+    "elevation": -20,
+    "rotation": [0.5, 0.5, -0.5, 0.5],
+    "zoom": 2,
+    "pan": [0.5, -1],
+    "orthographic": true
+  },
+  "views": [{
+    "name": "from above",
+    "camera": {
+      "set": true,
+      "elevation": 90
+    }
+  }, {
+    "name": "default"
+  }],
+  "look": {
+    "style": "ink",
+    "ground": "dark",
+    "size": "area",
+    "shape": "polar",
+    "signs": "hatching",
+    "nodes": true,
+    "elements": true,
+    "coloured": true,
+    "displacements": true,
+    "split": true,
+    "noLabels": true,
+    "noAxes": true
+  },
+  "figure": {
+    "sheet": "levels",
+    "slide": true,
+    "font": "serif",
+    "textSize": 9,
+    "noLetters": true,
+    "noLegend": true,
+    "noCard": true,
+    "noCoefficients": true,
+    "noStudy": true,
+    "width": 85,
+    "height": 60,
+    "resolution": 600,
+    "noCaption": true
+  },
+  "levels": [{
+    "side": "group",
+    "irrep": "Eg",
+    "copy": 1,
+    "height": 25
+  }],
+  "animation": {
+    "seconds": 2,
+    "rate": 25,
+    "width": 800,
+    "height": 600,
+    "once": true
+  }
+}
+`
+
+const fullText1 = `{
   "version": 1,
   "structure": "pasted",
   "coordinates": [
@@ -111,8 +244,8 @@ func eachField(v reflect.Value, name string, visit func(string, reflect.Value)) 
 // TestFileOfVersion1IsRead holds the text itself: whatever the file becomes,
 // this one must be read.
 func TestFileOfVersion1IsRead(t *testing.T) {
-	s, err := Decode([]byte(fullText), "f")
-	if err != nil || !s.Equal(full) {
+	s, err := Decode([]byte(fullText1), "f")
+	if err != nil || !s.Equal(full1) {
 		t.Errorf("%v: %#v", err, s)
 	}
 }
@@ -167,6 +300,24 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 		"look.style":            func(s *Study) { s.Look.Style = "gaudy" },
 		"look.ground":           func(s *Study) { s.Look.Ground = "sky" },
 		"look.size":             func(s *Study) { s.Look.Size = "mass" },
+		"look.shape":            func(s *Study) { s.Look.Shape = "cube" },
+		"look.signs":            func(s *Study) { s.Look.Signs = "bells" },
+		"turn[1]":               func(s *Study) { s.Turn = []PlaneRotation{{1, 1, 3}} },
+		"turn[1].angle":         func(s *Study) { s.Turn = []PlaneRotation{{1, 2, 361}} },
+		"mixing":                func(s *Study) { s.Mixing = make([]PlaneRotation, 99) },
+		"mixing[2]":             func(s *Study) { s.Mixing = []PlaneRotation{{1, 2, 3}, {}} },
+		"held.frame":            func(s *Study) { s.Held.Frame = "\x00" },
+		"held.partner":          func(s *Study) { s.Held.Partner = -1 },
+		"central":               func(s *Study) { s.Central = -1 },
+		"subgroup":              func(s *Study) { s.Subgroup = "\x00" },
+		"views[1].name":         func(s *Study) { s.Views = []View{{}} },
+		"views[1].camera.zoom":  func(s *Study) { s.Views = []View{{"v", Camera{Zoom: 1e9}}} },
+		"figure.sheet":          func(s *Study) { s.Figure.Sheet = "bed" },
+		"figure.font":           func(s *Study) { s.Figure.Font = "comic" },
+		"levels[1].side":        func(s *Study) { s.Levels = []Level{{Side: "left"}} },
+		"levels[1].height":      func(s *Study) { s.Levels = []Level{{Height: 101}} },
+		"animation.rate":        func(s *Study) { s.Animation.Rate = 1e4 },
+		"animation.width":       func(s *Study) { s.Animation.Width = 1 << 20 },
 		"figure.width":          func(s *Study) { s.Figure.Width = -1 },
 		"figure.height":         func(s *Study) { s.Figure.Height = 1e9 },
 		"figure.resolution":     func(s *Study) { s.Figure.Resolution = math.NaN() },
@@ -188,11 +339,11 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 
 func TestAHandWrittenFileIsToldWhereItIsWrong(t *testing.T) {
 	for text, want := range map[string]string{
-		strings.Replace(fullText, "0.25", "25", 1):               "f:30: moment: 25 is too large; the most is 1",
-		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:42: look.style: "gaudy" is not known; there are lit, ink`,
-		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:37: camera.zoom: a number is due, not a list",
+		strings.Replace(fullText, "0.25", "25", 1):               "f:44: moment: 25 is too large; the most is 1",
+		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:75: look.style: "gaudy" is not known; there are lit, ink`,
+		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:61: camera.zoom: a number is due, not a list",
 		fullText[:300]: "f:19: the file is cut off here",
-		strings.Replace(fullText, `"version": 1`, `"version": 2`, 1): "f:2: version: 2 is newer than this program, which reads up to version 1",
+		strings.Replace(fullText, `"version": 2`, `"version": 3`, 1): "f:2: version: 3 is newer than this program, which reads up to version 2",
 	} {
 		s, err := Decode([]byte(text), "f")
 		if err == nil || err.Error() != want {
@@ -256,7 +407,7 @@ func TestPastedCoordinatesComeBack(t *testing.T) {
 }
 
 func TestAnotherStructureForgetsWhatWasAboutTheOldOne(t *testing.T) {
-	want := Study{Structure: "demo:cage", Camera: Camera{Orthographic: true}, Look: full.Look, Figure: full.Figure}
+	want := Study{Structure: "demo:cage", Camera: Camera{Orthographic: true}, Look: full.Look, Figure: full.Figure, Animation: full.Animation}
 	if got := full.Opened("demo:cage"); !reflect.DeepEqual(got, want) {
 		t.Errorf("%#v", got)
 	}
@@ -297,13 +448,24 @@ func anyStudy(t *rapid.T) Study {
 			count.Draw(t, "function"), name.Draw(t, "irrep"), count.Draw(t, "copy"), count.Draw(t, "partner"),
 			Subject(from("", "function", "orbital")), [2]int{count.Draw(t, "k"), count.Draw(t, "l")}, flag.Draw(t, "character"),
 		},
+		Turn:    []PlaneRotation{{1 + count.Draw(t, "from")/2, maxNumber, number(-360, 360)}},
+		Held:    Held{name.Draw(t, "held frame"), name.Draw(t, "held z"), name.Draw(t, "held x"), name.Draw(t, "held irrep"), count.Draw(t, "held copy"), count.Draw(t, "held partner")},
+		Central: count.Draw(t, "central"), Subgroup: name.Draw(t, "subgroup"),
+		Levels:    []Level{{from("group", "central"), name.Draw(t, "level"), count.Draw(t, "level copy"), number(0, 100)}},
+		Animation: Animation{number(0, 60), number(0, 60), rapid.IntRange(0, maxPixels).Draw(t, "width"), 7, flag.Draw(t, "once")},
 		Operation: name.Draw(t, "operation"), Moment: number(0, 1), Angle: number(0, 360),
 		Camera: Camera{
 			Set: flag.Draw(t, "set"), Azimuth: number(-360, 360), Elevation: number(-90, 90),
 			Zoom: number(MinZoom, MaxZoom), Pan: [2]float64{number(-10, 10), number(-10, 10)}, Orthographic: flag.Draw(t, "orthographic"),
 		},
-		Look:   Look{from("", "lit", "ink"), from("", "paper", "dark"), from("", "length"), flag.Draw(t, "labels"), flag.Draw(t, "axes")},
-		Figure: Figure{number(0, 300), number(0, 300), number(0, 1200), flag.Draw(t, "caption")},
+		Look: Look{
+			Style: from("", "lit", "ink"), Ground: from("", "paper", "dark"), Size: from("", "length"), Shape: from("", "polar", "square"),
+			Signs: from("", "printed"), Nodes: flag.Draw(t, "nodes"), Split: flag.Draw(t, "split"), NoLabels: flag.Draw(t, "labels"), NoAxes: flag.Draw(t, "axes"),
+		},
+		Figure: Figure{
+			Sheet: from("", "all", "frames"), Slide: flag.Draw(t, "slide"), Font: from("", "serif"), TextSize: number(0, 100), NoCard: flag.Draw(t, "card"),
+			Width: number(0, 300), Height: number(0, 300), Resolution: number(0, 1200), NoCaption: flag.Draw(t, "caption"),
+		},
 	}
 	for a := range rapid.IntRange(0, 5).Draw(t, "atoms") {
 		s.Atoms = append(s.Atoms, 2*a+1)
