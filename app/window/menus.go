@@ -73,12 +73,12 @@ func (u *ui) menus() *fyne.MainMenu {
 	demos.ChildMenu = u.demoMenu()
 	quit := item("Quit", u.quit)
 	quit.IsQuit = true
-	file := fyne.NewMenu("File",
+	file := fyne.NewMenu(say("menu.file"),
 		with(item("Open …", u.askOpen), fyne.KeyO, control), m.recent, demos, item("Paste coordinates   Ctrl+V", u.paste), rule(),
 		with(item("Save study as …", u.askSave), fyne.KeyS, control), with(item("Save picture as …", u.askPicture), fyne.KeyE, control), rule(), quit)
 
 	m.undo, m.redo = item("Undo", u.undo), item("Redo", u.redo)
-	edit := fyne.NewMenu("Edit", m.undo, m.redo, rule(),
+	edit := fyne.NewMenu(say("menu.edit"), m.undo, m.redo, rule(),
 		with(item("Type a selection of functions", func() { u.win.Canvas().Focus(u.basis) }), fyne.KeyB, control),
 		item("No functions", func() { u.setBasis(nil) }), rule(),
 		item("Axes …", u.askAxes), item("Core …", u.askCore), item("Spectators …", u.askIgnore), item("Tolerance …", u.askTolerance))
