@@ -44,7 +44,7 @@ var rooms = map[string][]string{
 	"work":     {"study"},
 	"picture":  {"study", "work", "notation"},
 	"table":    {"study", "work", "notation"},
-	"sheet":    {"study", "work", "notation"},
+	"sheet":    {"study", "work", "notation", "picture"},
 	"export":   {"study", "sheet", "picture"},
 	"command":  {"notation", "study", "session", "work", "picture", "table", "sheet", "export"},
 	"window":   {"notation", "study", "session", "work", "picture", "table", "sheet", "export"},

@@ -18,14 +18,16 @@ const signs = "αβγδεζηθικλμνξπρστυφχψωΓΔΘΛΣΠΦΨΩ"
 
 func TestEveryStyleHasEverySignThatIsPrinted(t *testing.T) {
 	for style := Regular; style <= BoldOblique; style++ {
-		f, err := sfnt.Parse(Font(style))
-		if err != nil {
-			t.Fatal(err)
-		}
-		var buffer sfnt.Buffer
-		for _, r := range signs {
-			if i, err := f.GlyphIndex(&buffer, r); err != nil || i == 0 {
-				t.Errorf("style %d lacks %q", style, r)
+		for _, file := range [][]byte{Font(style), Serif(style)} {
+			f, err := sfnt.Parse(file)
+			if err != nil {
+				t.Fatal(err)
+			}
+			var buffer sfnt.Buffer
+			for _, r := range signs {
+				if i, err := f.GlyphIndex(&buffer, r); err != nil || i == 0 {
+					t.Errorf("style %d lacks %q", style, r)
+				}
 			}
 		}
 	}

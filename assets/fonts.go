@@ -22,6 +22,14 @@ var (
 	oblique []byte
 	//go:embed fonts/DejaVuSans-BoldOblique.ttf
 	boldOblique []byte
+	//go:embed fonts/DejaVuSerif.ttf
+	serifRegular []byte
+	//go:embed fonts/DejaVuSerif-Bold.ttf
+	serifBold []byte
+	//go:embed fonts/DejaVuSerif-Italic.ttf
+	serifItalic []byte
+	//go:embed fonts/DejaVuSerif-BoldItalic.ttf
+	serifBoldItalic []byte
 	//go:embed fonts/LICENCE.txt
 	fontLicence string
 )
@@ -41,5 +49,19 @@ func Font(s Style) []byte {
 	return regular
 }
 
-// FontLicence returns the licence of the typeface, which must go where the typeface goes.
+// Serif is Font for DejaVu Serif 2.37, from the same makers under the same licence, for figures in journals that set
+// their text so.
+func Serif(s Style) []byte {
+	switch s {
+	case Bold:
+		return serifBold
+	case Oblique:
+		return serifItalic
+	case BoldOblique:
+		return serifBoldItalic
+	}
+	return serifRegular
+}
+
+// FontLicence returns the licence of the typefaces, which must go where they go.
 func FontLicence() string { return fontLicence }

@@ -69,6 +69,9 @@ type glyph struct {
 	index sfnt.GlyphIndex
 	x, y  float64
 	size  float64
+
+	rune    rune
+	advance float64
 }
 
 // setter lays out one text; its memory is used again.
@@ -144,8 +147,9 @@ func (s *setter) run(f *Fonts, cut int, text string, x, y, em float64) float64 {
 		if err != nil {
 			continue
 		}
-		s.glyphs = append(s.glyphs, glyph{face, g, x, y, em})
-		x += float64(adv) / 64 * scale
+		width := float64(adv) / 64 * scale
+		s.glyphs = append(s.glyphs, glyph{font: face, index: g, x: x, y: y, size: em, rune: c, advance: width})
+		x += width
 		prev, prevFont = g, face
 	}
 	return x

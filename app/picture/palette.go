@@ -15,6 +15,20 @@ var fonts = sync.OnceValues(func() (*render.Fonts, error) {
 		assets.Font(assets.Bold), assets.Font(assets.BoldOblique))
 })
 
+var serifs = sync.OnceValues(func() (*render.Fonts, error) {
+	return render.ParseFonts(assets.Serif(assets.Regular), assets.Serif(assets.Oblique),
+		assets.Serif(assets.Bold), assets.Serif(assets.BoldOblique))
+})
+
+// FontsOf are the built-in typefaces of a family: "serif", else sans. The error
+// is a fault of the program.
+func FontsOf(family string) (*render.Fonts, error) {
+	if family == "serif" {
+		return serifs()
+	}
+	return fonts()
+}
+
 // paletteOf chooses the colours for a ground.
 func paletteOf(look study.Look) assets.Palette {
 	switch look.Ground {
