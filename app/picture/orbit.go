@@ -6,6 +6,8 @@ import (
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/assets"
 	"lobewright/render"
 )
 
@@ -80,4 +82,36 @@ func (o Orbit) Between(to Orbit, share float64) Orbit {
 	to.Span = o.Span * math.Pow(to.Span/o.Span, share)
 	to.Distance = o.Distance * math.Pow(to.Distance/o.Distance, share)
 	return to
+}
+
+// Fitted is the orbit moved and scaled so that everything that can be shown
+// of a structure, and of the lobes of a basis (which may be nil), fills the
+// picture.
+func (o Orbit) Fitted(g *work.Group, basis *work.Basis) Orbit {
+	s := &stage{palette: assets.Light()}
+	if basis != nil {
+		s.carries = carriers(basis)
+	}
+	s.addMolecule(g)
+	room := s.atoms
+	if basis != nil {
+		room = append(room, s.roomOf(basis)...)
+	}
+	centre, radius := enclosing(room)
+	o.Target, o.Span, o.Distance = centre, 2*(overhang*radius+minOverhang)*1.12, distanceInRadii*radius
+	return o
+}
+
+// BestOrbit sees a structure, and the lobes of a basis (which may be nil),
+// from where they cover each other least.
+func BestOrbit(g *work.Group, basis *work.Basis) Orbit {
+	s := &stage{palette: assets.Light()}
+	var room []ball
+	if basis != nil {
+		s.carries = carriers(basis)
+		room = s.roomOf(basis)
+	}
+	s.addMolecule(g)
+	v := bestView(room, s.atoms)
+	return NewOrbit(v.azimuth, v.elevation).Fitted(g, basis)
 }
