@@ -40,14 +40,15 @@ var knows = map[string][]string{
 var rooms = map[string][]string{
 	"notation": {},
 	"study":    {},
-	"session":  {"study"},
+	"files":    {},
+	"session":  {"study", "files"},
 	"work":     {"study"},
 	"picture":  {"study", "work", "notation"},
 	"table":    {"study", "work", "notation"},
 	"sheet":    {"study", "work", "notation", "picture"},
-	"export":   {"study", "sheet", "picture"},
-	"command":  {"notation", "study", "session", "work", "picture", "table", "sheet", "export"},
-	"window":   {"notation", "study", "session", "work", "picture", "table", "sheet", "export"},
+	"export":   {"study", "sheet", "picture", "files"},
+	"command":  {"notation", "study", "session", "work", "picture", "table", "sheet", "export", "files"},
+	"window":   {"notation", "study", "session", "work", "picture", "table", "sheet", "export", "files"},
 }
 
 // onlyWindow are imports that app/window alone may have: the toolkit, and C, which needs a C compiler.
@@ -182,9 +183,9 @@ func TestABrokenArrowIsNamed(t *testing.T) {
 		{"app/work/a.go", source("lobewright/app/table"), "app/work/a.go: imports lobewright/app/table; app/work may know only study"},
 		{"app/picture/a.go", source("lobewright/app/work", "lobewright/app/notation", "lobewright/render"), ""},
 		{"app/picture/a.go", source("lobewright/app/sheet"), "app/picture/a.go: imports lobewright/app/sheet; app/picture may know only study, work, notation"},
-		{"app/export/a.go", source("lobewright/app/work"), "app/export/a.go: imports lobewright/app/work; app/export may know only study, sheet, picture"},
-		{"app/command/a.go", source("lobewright/app/window"), "app/command/a.go: imports lobewright/app/window; app/command may know only notation, study, session, work, picture, table, sheet, export"},
-		{"app/window/a.go", source("lobewright/app/command"), "app/window/a.go: imports lobewright/app/command; app/window may know only notation, study, session, work, picture, table, sheet, export"},
+		{"app/export/a.go", source("lobewright/app/work"), "app/export/a.go: imports lobewright/app/work; app/export may know only study, sheet, picture, files"},
+		{"app/command/a.go", source("lobewright/app/window"), "app/command/a.go: imports lobewright/app/window; app/command may know only notation, study, session, work, picture, table, sheet, export, files"},
+		{"app/window/a.go", source("lobewright/app/command"), "app/window/a.go: imports lobewright/app/command; app/window may know only notation, study, session, work, picture, table, sheet, export, files"},
 		{"app/window/a.go", source("lobewright/app"), "app/window/a.go: imports lobewright/app; nobody knows the program itself"},
 		{"app/extra/a.go", source("lobewright/app/study"), "app/extra/a.go: imports lobewright/app/study; app/extra is in no table of arrows"},
 		{"app/window/a.go", source("fyne.io/fyne/v2", "C"), ""},

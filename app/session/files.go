@@ -3,60 +3,23 @@ package session
 import (
 	"errors"
 	"fmt"
+	"io"
 	"io/fs"
 	"os"
 	"path/filepath"
 	"strconv"
 	"strings"
-	"sync/atomic"
+
+	"lobewright/app/files"
 )
 
-// partNumber tells apart the files that one process writes at once.
-var partNumber atomic.Int64
-
-// write replaces a file by a whole new one: written beside it, flushed to the
-// disk, renamed. After an error the old one is as it was. A symbolic link stays
-// one.
+// write replaces a file by a whole new one that only its owner may read.
 func write(path string, data []byte) error {
-	if target, err := filepath.EvalSymlinks(path); err == nil {
-		path = target
-	}
-	if err := writeBeside(path, data); err != nil {
-		return fmt.Errorf("cannot write %s: %w", path, cause(err))
-	}
-	return nil
-}
-
-func writeBeside(path string, data []byte) error {
-	part := fmt.Sprintf("%s.%d-%d%s", path, os.Getpid(), partNumber.Add(1), partEnding)
-	f, err := os.OpenFile(part, os.O_WRONLY|os.O_CREATE|os.O_TRUNC, 0o600)
-	if err != nil {
+	return files.Write(path, files.Options{Force: true, Mode: 0o600}, func(w io.Writer) error {
+		_, err := w.Write(data)
 		return err
-	}
-	_, err = f.Write(data)
-	if err == nil {
-		err = f.Sync()
-	}
-	if closing := f.Close(); err == nil {
-		err = closing
-	}
-	if err == nil {
-		err = os.Rename(part, path)
-	}
-	if err != nil {
-		os.Remove(part)
-		return err
-	}
-	// The new name is flushed too, where the system can do that; the file is
-	// whole in any case.
-	if folder, err := os.Open(filepath.Dir(path)); err == nil {
-		_ = folder.Sync()
-		folder.Close()
-	}
-	return nil
+	})
 }
-
-const partEnding = ".part"
 
 // removeParts removes what instances that were killed while writing have left
 // of this slot's files.
@@ -65,19 +28,8 @@ func (s *Session) removeParts() {
 		return // others may be writing
 	}
 	for _, extension := range []string{"lobewright", "running"} {
-		parts, _ := filepath.Glob(quotedPattern(s.path(extension)) + ".*" + partEnding)
-		for _, part := range parts {
-			os.Remove(part)
-		}
+		files.RemoveParts(s.path(extension))
 	}
-}
-
-// quotedPattern makes a pattern that matches a path alone.
-func quotedPattern(path string) string {
-	if os.PathSeparator == '\\' {
-		return path // there is no quoting, and hardly a bracket
-	}
-	return strings.NewReplacer(`\`, `\\`, "*", `\*`, "?", `\?`, "[", `\[`).Replace(path)
 }
 
 // openRegular opens an ordinary file. Others might hold the start up for ever.
@@ -99,20 +51,7 @@ func bare(path string, err error) error {
 	if err == nil {
 		return nil
 	}
-	return fmt.Errorf("%s: %w", filepath.Base(path), cause(err))
-}
-
-// cause is the reason within an error of the file system.
-func cause(err error) error {
-	var path *fs.PathError
-	var link *os.LinkError
-	switch {
-	case errors.As(err, &path):
-		return path.Err
-	case errors.As(err, &link):
-		return link.Err
-	}
-	return err
+	return fmt.Errorf("%s: %w", filepath.Base(path), files.Cause(err))
 }
 
 // mostAside is how many files of one name are kept aside; the last place is

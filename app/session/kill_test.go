@@ -14,6 +14,7 @@ import (
 	"testing"
 	"time"
 
+	"lobewright/app/files"
 	"lobewright/app/study"
 )
 
@@ -90,8 +91,8 @@ func TestKillsAtAnyMomentLeaveAWholeStudy(t *testing.T) {
 			if st, _ := s.Study(); st.Projection.Function != said || s.Slot() != 1 {
 				t.Errorf("study %d in slot %d is found", st.Projection.Function, s.Slot())
 			}
-			for _, name := range files(t, folder) {
-				if strings.HasSuffix(name, partEnding) && !strings.HasPrefix(name, "settings") {
+			for _, name := range fileNames(t, folder) {
+				if strings.HasSuffix(name, files.PartEnding) && !strings.HasPrefix(name, ".settings") {
 					t.Errorf("%s is left", name)
 				}
 			}

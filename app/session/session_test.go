@@ -14,6 +14,7 @@ import (
 	"testing"
 	"time"
 
+	"lobewright/app/files"
 	"lobewright/app/study"
 )
 
@@ -32,7 +33,7 @@ func someStudy(moment float64) study.Study {
 	return study.Study{Structure: "demo:cage", Basis: []string{"C:s"}, Operation: "C3(1)", Moment: moment}
 }
 
-func files(t *testing.T, folder string) []string {
+func fileNames(t *testing.T, folder string) []string {
 	t.Helper()
 	entries, err := os.ReadDir(folder)
 	if err != nil {
@@ -137,7 +138,7 @@ func TestSavingAtOnceAndAtTheEnd(t *testing.T) {
 		t.Errorf("saved at the end: %v", st.Moment)
 	}
 	want := []string{"work-1.lobewright", "work-1.lock", "work-1.running"}
-	if got := files(t, folder); !slices.Equal(got, want) {
+	if got := fileNames(t, folder); !slices.Equal(got, want) {
 		t.Errorf("the folder has %v", got)
 	}
 }
@@ -149,7 +150,7 @@ func TestTheFolderIsTheOneThatIsNamed(t *testing.T) {
 	if len(notes) > 0 || s.Close() != nil {
 		t.Error(notes)
 	}
-	if names := files(t, folder); !slices.Contains(names, "work-1.lock") {
+	if names := fileNames(t, folder); !slices.Contains(names, "work-1.lock") {
 		t.Errorf("%v", names)
 	}
 	t.Setenv(FolderVariable, "")
@@ -384,8 +385,8 @@ func TestAFailureIsReportedOnceAndSavingGoesOn(t *testing.T) {
 	if err := s.Close(); err != nil {
 		t.Error(err)
 	}
-	for _, name := range files(t, folder) {
-		if strings.HasSuffix(name, partEnding) {
+	for _, name := range fileNames(t, folder) {
+		if strings.HasSuffix(name, files.PartEnding) {
 			t.Errorf("%s is left", name)
 		}
 	}

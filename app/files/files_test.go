@@ -1,4 +1,4 @@
-package export
+package files
 
 import (
 	"errors"
@@ -33,17 +33,17 @@ func entries(t *testing.T, folder string) string {
 func TestAnExistingFileIsOverwrittenOnlyWithForce(t *testing.T) {
 	folder := t.TempDir()
 	path := filepath.Join(folder, "a.png")
-	if err := WriteFile(path, false, text("first")); err != nil {
+	if err := Write(path, Options{}, text("first")); err != nil {
 		t.Fatal(err)
 	}
-	err := WriteFile(path, false, text("second"))
+	err := Write(path, Options{}, text("second"))
 	if err == nil || !strings.Contains(err.Error(), "--force") {
 		t.Errorf("second write without force: error %v", err)
 	}
 	if got, _ := os.ReadFile(path); string(got) != "first" {
 		t.Errorf("the file now holds %q", got)
 	}
-	if err := WriteFile(path, true, text("third")); err != nil {
+	if err := Write(path, Options{Force: true}, text("third")); err != nil {
 		t.Fatal(err)
 	}
 	if got, _ := os.ReadFile(path); string(got) != "third" {
@@ -57,14 +57,14 @@ func TestAnExistingFileIsOverwrittenOnlyWithForce(t *testing.T) {
 func TestAFailedWriteChangesNothing(t *testing.T) {
 	folder := t.TempDir()
 	path := filepath.Join(folder, "a.png")
-	if err := WriteFile(path, false, text("old")); err != nil {
+	if err := Write(path, Options{}, text("old")); err != nil {
 		t.Fatal(err)
 	}
 	broken := func(w io.Writer) error {
 		io.WriteString(w, strings.Repeat("half ", 10000))
 		return errors.New("the picture cannot be drawn")
 	}
-	if err := WriteFile(path, true, broken); err == nil {
+	if err := Write(path, Options{Force: true}, broken); err == nil {
 		t.Error("no error from a failing writer")
 	}
 	if got, _ := os.ReadFile(path); string(got) != "old" {
@@ -78,7 +78,7 @@ func TestAFailedWriteChangesNothing(t *testing.T) {
 func TestAFileMadeInTheMeantimeIsKept(t *testing.T) {
 	path := filepath.Join(t.TempDir(), "a.png")
 	slow := func(w io.Writer) error { return os.WriteFile(path, []byte("theirs"), 0o666) }
-	if err := WriteFile(path, false, slow); err == nil || !strings.Contains(err.Error(), "--force") {
+	if err := Write(path, Options{}, slow); err == nil || !strings.Contains(err.Error(), "--force") {
 		t.Errorf("error %v", err)
 	}
 	if got, _ := os.ReadFile(path); string(got) != "theirs" {
@@ -93,7 +93,7 @@ func TestPlacesThatCannotBeWrittenAreNamedInOneLine(t *testing.T) {
 		t.Fatal(err)
 	}
 	for _, path := range []string{folder, filepath.Join(folder, "no", "a.png"), filepath.Join(file, "a.png"), os.DevNull} {
-		err := WriteFile(path, true, text("x"))
+		err := Write(path, Options{Force: true}, text("x"))
 		if err == nil {
 			t.Errorf("%s: no error", path)
 			continue
@@ -113,7 +113,7 @@ func TestALinkIsFollowedAndKept(t *testing.T) {
 	if err := os.Symlink("real", link); err != nil {
 		t.Skip(err)
 	}
-	if err := WriteFile(link, true, text("new")); err != nil {
+	if err := Write(link, Options{Force: true}, text("new")); err != nil {
 		t.Fatal(err)
 	}
 	info, err := os.Lstat(real)
@@ -125,5 +125,64 @@ func TestALinkIsFollowedAndKept(t *testing.T) {
 	}
 	if info, _ := os.Lstat(link); info.Mode().Type() != os.ModeSymlink {
 		t.Error("the link is gone")
+	}
+}
+
+func TestFilesThatBelongTogetherAreWrittenAllOrNone(t *testing.T) {
+	folder := t.TempDir()
+	paths := []string{filepath.Join(folder, "1.png"), filepath.Join(folder, "2.png"), filepath.Join(folder, "3.png")}
+	failing := func(i int, w io.Writer) error {
+		if i == 2 {
+			return errors.New("the third picture cannot be drawn")
+		}
+		return text("half")(w)
+	}
+	if err := WriteAll(paths, Options{}, failing); err == nil {
+		t.Error("no error from a failing writer")
+	}
+	if got := entries(t, folder); got != "" {
+		t.Errorf("the folder holds %s", got)
+	}
+	// Somebody takes the last name in the meantime.
+	taken := func(i int, w io.Writer) error {
+		if i == 2 {
+			return os.WriteFile(paths[2], []byte("theirs"), 0o666)
+		}
+		return text("ours")(w)
+	}
+	if err := WriteAll(paths, Options{}, taken); err == nil || !strings.Contains(err.Error(), "--force") {
+		t.Errorf("error %v", err)
+	}
+	if got := entries(t, folder); got != "3.png" {
+		t.Errorf("the folder holds %s", got)
+	}
+	if err := WriteAll(paths, Options{Force: true}, func(_ int, w io.Writer) error { return text("new")(w) }); err != nil {
+		t.Fatal(err)
+	}
+	if got, _ := os.ReadFile(paths[2]); string(got) != "new" || entries(t, folder) != "1.png 2.png 3.png" {
+		t.Errorf("%q, the folder holds %s", got, entries(t, folder))
+	}
+}
+
+func TestALinkToNothingIsTold(t *testing.T) {
+	link := filepath.Join(t.TempDir(), "link")
+	if err := os.Symlink("nowhere", link); err != nil {
+		t.Skip(err)
+	}
+	if err := Write(link, Options{Force: true}, text("x")); err == nil || !strings.Contains(err.Error(), "link to nowhere") {
+		t.Error(err)
+	}
+}
+
+func TestWhatKilledWritersHaveLeftIsRemoved(t *testing.T) {
+	folder := t.TempDir()
+	for _, name := range []string{".a.png.0123456789ab.part", ".a.png.other.part", ".b.png.0123456789ab.part", "a.png"} {
+		if err := os.WriteFile(filepath.Join(folder, name), nil, 0o666); err != nil {
+			t.Fatal(err)
+		}
+	}
+	RemoveParts(filepath.Join(folder, "a.png"))
+	if got := entries(t, folder); got != ".a.png.other.part .b.png.0123456789ab.part a.png" {
+		t.Errorf("the folder holds %s", got)
 	}
 }
