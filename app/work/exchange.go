@@ -3,6 +3,7 @@ package work
 import (
 	"fmt"
 
+	"lobewright/app/study"
 	"lobewright/symmetry"
 )
 
@@ -29,6 +30,48 @@ func (g *Group) Exchanges() []Exchange {
 		out = append(out, e)
 	}
 	return out
+}
+
+// Held is the second frame that a study holds against the one in force; nil if
+// it holds none. The error tells what is wrong with the choice.
+func (g *Group) Held(h study.Held) (*Exchange, error) {
+	if h.Frame == "" && h.Z == "" && h.X == "" {
+		return nil, nil
+	}
+	fit, err := g.framed(h.Frame, h.Z, h.X)
+	if err != nil {
+		return nil, err
+	}
+	turn := fit.Rotation.Mul3(g.Fit.Rotation.Transpose())
+	e := &Exchange{Frame: symmetry.Frame{Rule: fit.Rule, Turn: turn}, Fit: fit}
+	if !fit.Setting.Infinite() {
+		e.Names = symmetry.ExchangeNames(g.Fit.Setting, fit.Setting, turn)
+	}
+	return e, nil
+}
+
+// TryAxes tells whether a choice of axes, as in a Study, is possible for the
+// group. The error is a *Problem that says what would be.
+func (g *Group) TryAxes(frame, z, x string) error {
+	_, err := g.framed(frame, z, x)
+	return err
+}
+
+// framed is the group in a frame that is chosen as in a Study.
+func (g *Group) framed(frame, z, x string) (*symmetry.Fit, error) {
+	base := g.base
+	if base == nil {
+		base = g.Fit
+	}
+	if frame == symmetry.FrameDefault {
+		// The default rule, even where the axes are those of a larger group.
+		f, err := base.Frame(frame)
+		if err != nil {
+			return nil, blame(StageGroup, ConcernFrame, err)
+		}
+		return base.In(f), nil
+	}
+	return inFrame(base, g.Structure, g.Core, study.Study{Frame: frame, Z: z, X: x})
 }
 
 // A Renaming is a name here and elsewhere.

@@ -64,6 +64,10 @@ type Group struct {
 	Sites *orbitals.Sites
 	// Linear is C∞v or D∞h where a linear molecule is taken for a finite group.
 	Linear string
+
+	// base is the fit before the study's axes were laid: their names and
+	// directions are read in its frame.
+	base *symmetry.Fit
 }
 
 // AtomNames are the names of all atoms: symbol and number, from 1 ("Cl2").
@@ -170,18 +174,19 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Gr
 		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
-		fit, err := w.fit(ctx, read, core, s)
+		base, err := w.fit(ctx, read, core, s)
 		if err != nil {
 			return nil, err
 		}
-		if fit, err = inFrame(fit, read, core, s); err != nil {
+		fit, err := inFrame(base, read, core, s)
+		if err != nil {
 			return nil, err
 		}
 		sites, err := orbitals.NewSites(fit, core, read.Molecule, read.Bonds)
 		if err != nil {
 			return nil, blame(StageGroup, ConcernStructure, err)
 		}
-		g := &Group{Structure: read, Core: core, Fit: fit, Sites: sites}
+		g := &Group{Structure: read, Core: core, Fit: fit, Sites: sites, base: base}
 		if ladder := w.ladders.value; s.As != "" && !fit.Setting.Infinite() && ladder.Linear() != nil {
 			g.Linear = ladder.Linear().Setting.Symbol
 		}
