@@ -11,6 +11,9 @@ func TestASecondFrameIsNamedAsTheListOfFramesNamesIt(t *testing.T) {
 	w := demoWork()
 	for _, name := range []string{"demo:octahedron", "demo:square-plane", "demo:water", "demo:rod"} {
 		for _, first := range []string{"", "file"} {
+			if name == "demo:rod" && first != "" {
+				continue // it does not lie along the z of its file
+			}
 			g, err := w.Group(context.Background(), study.Study{Structure: name, Frame: first})
 			if err != nil {
 				t.Fatal(name, err)
