@@ -23,13 +23,18 @@ func (w *Work) advance(ctx context.Context, s study.Study, asked [stages]any, be
 		if asked[stage] == nil || !c.ready(stage) {
 			continue
 		}
-		progress.Stage = stage
+		progress.Stage, progress.Share = stage, 0
 		begin(progress, c)
-		err := w.step(ctx, s, stage, &c)
+		err := w.step(ctx, s, stage, &c, func(share float64) {
+			if share-progress.Share >= leastProgress {
+				progress.Share = share
+				begin(progress, c)
+			}
+		})
 		if cancelled(err) || ctx.Err() != nil {
 			return c, nil, false
 		}
-		progress.Done++
+		progress.Done, progress.Share = progress.Done+1, 0
 		var problem *Problem
 		if errors.As(err, &problem) {
 			problems = noted(problems, problem)
@@ -40,6 +45,9 @@ func (w *Work) advance(ctx context.Context, s study.Study, asked [stages]any, be
 	}
 	return c, problems, true
 }
+
+// leastProgress is the share of a stage that is worth telling of.
+const leastProgress = 0.02
 
 // ready tells whether the stages are there from which a stage goes out.
 func (c *chain) ready(stage Stage) bool {
@@ -59,7 +67,7 @@ func (c *chain) ready(stage Stage) bool {
 }
 
 // step computes one stage. The error is a *Problem or that of ctx.
-func (w *Work) step(ctx context.Context, s study.Study, stage Stage, c *chain) (err error) {
+func (w *Work) step(ctx context.Context, s study.Study, stage Stage, c *chain, share func(float64)) (err error) {
 	defer func() {
 		if value := recover(); value != nil {
 			err = caught(stage, value)
@@ -69,11 +77,17 @@ func (w *Work) step(ctx context.Context, s study.Study, stage Stage, c *chain) (
 		c.Structure, err = w.Structure(ctx, s)
 		return err
 	}
+	var ladder *Ladder
+	if stage == StageGroup {
+		if ladder, err = w.ladderFor(ctx, c.Structure, s, share); err != nil {
+			return err
+		}
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
 	switch stage {
 	case StageGroup:
-		c.Group, err = w.groupOf(ctx, c.Structure, s)
+		c.Group, err = w.groupOf(ctx, c.Structure, ladder, s)
 	case StageBasis:
 		c.Basis, err = w.basisOf(ctx, c.Group, s)
 	case StageOrbitals:

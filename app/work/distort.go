@@ -34,6 +34,17 @@ func (l *Ladder) Displacements(n *symmetry.Nearness) []mgl64.Vec3 {
 	return out
 }
 
+// Displacements are the ways (Å, in the working frame) from the ideal places of
+// the core atoms, in the order of Core, to those of the input.
+func (g *Group) Displacements() []mgl64.Vec3 {
+	out := make([]mgl64.Vec3, len(g.Core))
+	for k, i := range g.Core {
+		at := g.Fit.Rotation.Mul3x1(g.Molecule.Atoms[i].Position.Sub(g.Fit.Origin))
+		out[k] = at.Sub(g.Fit.Ideal[k])
+	}
+	return out
+}
+
 // Distortion resolves the displacement of the core from the ideal structure of
 // a group by symmetry: the amounts are the parts of the displacement along an
 // orthonormal set of symmetry coordinates, made by the same projection as group

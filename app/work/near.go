@@ -30,8 +30,6 @@ func (w *Work) Ladder(ctx context.Context, s study.Study, progress func(share fl
 	if err != nil {
 		return nil, err
 	}
-	w.mu.Lock()
-	defer w.mu.Unlock()
 	return w.ladderOf(ctx, read, s, progress)
 }
 
@@ -40,22 +38,66 @@ type ladderInputs struct {
 	core, ignore string
 }
 
+// ladderOf is called without the lock: a search may take long, and only those
+// who want a ladder wait for it.
 func (w *Work) ladderOf(ctx context.Context, read *Structure, s study.Study, progress func(float64)) (*Ladder, error) {
-	return w.ladders.get(ladderInputs{read, s.Core, s.Ignore}, func() (*Ladder, error) {
-		core, err := coreOf(read, s)
-		if err != nil {
-			return nil, err
-		}
-		points, links := points(read, core)
-		if fit, err := symmetry.Detect(points, links, symmetry.Options{}); err == nil && fit.Setting.Infinite() {
-			return &Ladder{read, core, []*symmetry.Nearness{infinitelyNear(fit, points)}}, nil
-		}
-		groups, err := symmetry.Near(ctx, points, links, 0, progress)
-		if err != nil {
-			return nil, blame(StageGroup, ConcernStructure, err)
-		}
-		return &Ladder{read, core, groups}, nil
-	})
+	inputs := ladderInputs{read, s.Core, s.Ignore}
+	if known := w.knownLadder(inputs); known != nil {
+		return known, nil
+	}
+	select {
+	case w.searching <- struct{}{}:
+		defer func() { <-w.searching }()
+	case <-ctx.Done():
+		return nil, ctx.Err()
+	}
+	if known := w.knownLadder(inputs); known != nil {
+		return known, nil
+	}
+	found, err := search(ctx, read, s, progress)
+	if err != nil {
+		return nil, err
+	}
+	w.mu.Lock()
+	defer w.mu.Unlock()
+	return w.ladders.get(inputs, func() (*Ladder, error) { return found, nil })
+}
+
+func (w *Work) knownLadder(inputs ladderInputs) *Ladder {
+	w.mu.Lock()
+	defer w.mu.Unlock()
+	if w.ladders.known && w.ladders.key == inputs {
+		return w.ladders.value
+	}
+	return nil
+}
+
+// ladderFor is the ladder that the group of a study is taken from; nil if the
+// study takes none. What is no symbol is told before anything is sought.
+func (w *Work) ladderFor(ctx context.Context, read *Structure, s study.Study, progress func(float64)) (*Ladder, error) {
+	if s.As == "" {
+		return nil, nil
+	}
+	if _, _, err := ParseEmbedding(s.As); err != nil {
+		return nil, blame(StageGroup, ConcernAs, err)
+	}
+	return w.ladderOf(ctx, read, s, progress)
+}
+
+func search(ctx context.Context, read *Structure, s study.Study, progress func(float64)) (*Ladder, error) {
+	core, err := coreOf(read, s)
+	if err != nil {
+		return nil, err
+	}
+	points, links := points(read, core)
+	if fit, err := symmetry.Detect(points, links, symmetry.Options{}); err == nil && fit.Setting.Infinite() {
+		return &Ladder{read, core, []*symmetry.Nearness{infinitelyNear(fit, points)}}, nil
+	}
+	groups, err := symmetry.Near(ctx, points, links, 0, progress)
+	if err != nil {
+		return nil, blame(StageGroup, ConcernStructure, err)
+	}
+	return &Ladder{read, core, groups}, nil
 }
 
 // infinitelyNear is the one entry for a linear molecule or an atom, whose

@@ -106,7 +106,7 @@ func TestTheOldStaysUntilTheNewIsThere(t *testing.T) {
 	if s.Play != nil || s.Orbital != nil || s.Ledger != nil {
 		t.Error("what is not asked for stays")
 	}
-	if *s.Progress != (Progress{StageStructure, 0, 4}) || s.Progress.Fraction() != 0 {
+	if *s.Progress != (Progress{StageStructure, 0, 4, 0}) || s.Progress.Fraction() != 0 {
 		t.Errorf("progress %+v", *s.Progress)
 	}
 	open()

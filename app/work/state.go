@@ -45,11 +45,14 @@ type Progress struct {
 	Stage Stage
 	// Done stages of Of are finished.
 	Done, Of int
+	// Share is how much of the stage at hand is done, from 0 to 1, where that
+	// is known.
+	Share float64
 }
 
 // Fraction is the share of stages that are finished. Stages take different
 // times, so it says little about the time that is left.
-func (p *Progress) Fraction() float64 { return float64(p.Done) / float64(max(p.Of, 1)) }
+func (p *Progress) Fraction() float64 { return (float64(p.Done) + p.Share) / float64(max(p.Of, 1)) }
 
 // Stale tells whether a stage has a result that is not that of Study: it is
 // being made anew, or cannot be made.

@@ -28,6 +28,10 @@ type Work struct {
 
 	reading atomic.Int64 // counts how often the structure at hand was read anew
 
+	// searching holds one: whoever searches for a ladder. The others wait there
+	// for what is found, and nobody waits with mu held.
+	searching chan struct{}
+
 	mu              sync.Mutex
 	reopened        stage[structureKey, *Structure]
 	structures      stage[structureKey, *Structure]
@@ -41,7 +45,9 @@ type Work struct {
 }
 
 // New returns a Work that reads structures from inputs and the file system.
-func New(inputs structure.Inputs) *Work { return &Work{inputs: inputs} }
+func New(inputs structure.Inputs) *Work {
+	return &Work{inputs: inputs, searching: make(chan struct{}, 1)}
+}
 
 // A Structure is a molecule as read.
 type Structure struct {
@@ -148,9 +154,13 @@ func (w *Work) Group(ctx context.Context, s study.Study) (*Group, error) {
 	if err != nil {
 		return nil, err
 	}
+	ladder, err := w.ladderFor(ctx, read, s, nil)
+	if err != nil {
+		return nil, err
+	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.groupOf(ctx, read, s)
+	return w.groupOf(ctx, read, ladder, s)
 }
 
 // The inputs of a stage are the very results that it goes out from, and the
@@ -163,8 +173,9 @@ type groupInputs struct {
 	tolerance                     float64
 }
 
-// groupOf and its like are called with the lock held.
-func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Group, error) {
+// groupOf and its like are called with the lock held. ladder is that of
+// ladderFor.
+func (w *Work) groupOf(ctx context.Context, read *Structure, ladder *Ladder, s study.Study) (*Group, error) {
 	inputs := groupInputs{read, s.Core, s.Ignore, s.As, s.Frame, s.Z, s.X, s.KeepAxes, s.TheTolerance()}
 	return w.groups.get(inputs, func() (*Group, error) {
 		core, err := coreOf(read, s)
@@ -174,7 +185,7 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Gr
 		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
-		base, err := w.fit(ctx, read, core, s)
+		base, err := fitOf(read, core, ladder, s)
 		if err != nil {
 			return nil, err
 		}
@@ -187,7 +198,7 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, s study.Study) (*Gr
 			return nil, blame(StageGroup, ConcernStructure, err)
 		}
 		g := &Group{Structure: read, Core: core, Fit: fit, Sites: sites, base: base}
-		if ladder := w.ladders.value; s.As != "" && !fit.Setting.Infinite() && ladder.Linear() != nil {
+		if ladder != nil && !fit.Setting.Infinite() && ladder.Linear() != nil {
 			g.Linear = ladder.Linear().Setting.Symbol
 		}
 		return g, nil
@@ -203,15 +214,11 @@ func coreOf(read *Structure, s study.Study) ([]int, error) {
 	return core, nil
 }
 
-// fit is the group in its default frame: the one that the core has within the
+// fitOf is the group in its default frame: the one that the core has within the
 // tolerance, or the one of the ladder that is chosen.
-func (w *Work) fit(ctx context.Context, read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
-	if s.As == "" {
+func fitOf(read *Structure, core []int, ladder *Ladder, s study.Study) (*symmetry.Fit, error) {
+	if ladder == nil {
 		return detect(read, core, s)
-	}
-	ladder, err := w.ladderOf(ctx, read, s, nil)
-	if err != nil {
-		return nil, err
 	}
 	return ladder.choose(s)
 }
