@@ -181,7 +181,7 @@ func (u *ui) functionAt(p picture.Picked, s study.Study) int {
 func (u *ui) nameOf(p picture.Picked) string {
 	if p.Element {
 		if op, ok := u.operation(); ok {
-			return op.Name + ": click to look along it"
+			return say("follows.lookAlong", op.Name)
 		}
 		return ""
 	}
@@ -382,10 +382,10 @@ func (u *ui) setTolerance(t float64) {
 }
 
 func (u *ui) askTolerance() {
-	u.ask("Tolerance", "How far may an atom lie from its ideal place, in Å?", strconv.FormatFloat(u.now().TheTolerance(), 'g', 6, 64), func(text string) error {
+	u.ask(say("given.askTolerance"), say("given.askToleranceText"), strconv.FormatFloat(u.now().TheTolerance(), 'g', 6, 64), func(text string) error {
 		t, err := strconv.ParseFloat(strings.TrimSpace(strings.TrimSuffix(strings.ReplaceAll(text, ",", "."), "Å")), 64)
 		if err != nil || !(t > 0) || t > 10 {
-			return errors.New("give a length in Å above 0, such as 0.02")
+			return errors.New(say("errors.tolerance"))
 		}
 		u.setTolerance(t)
 		return nil
@@ -416,7 +416,7 @@ func (u *ui) setAxes(frame, z, x string) {
 func (u *ui) askAxes() {
 	s := u.now()
 	now := strings.TrimSuffix(s.Z+"; "+s.X, "; ")
-	u.ask("Axes", "What z points along, then after a semicolon x: an operation (C4(z)), an atom (2), two atoms (2,3), or a vector in the axes of the file (1,0,0).", now, func(text string) error {
+	u.ask(say("frames.ask"), say("frames.askText"), now, func(text string) error {
 		z, x, _ := strings.Cut(text, ";")
 		z, x = strings.TrimSpace(z), strings.TrimSpace(x)
 		try := u.now()
@@ -431,14 +431,14 @@ func (u *ui) askAxes() {
 
 func (u *ui) askCore() {
 	s := u.now()
-	u.ask("Core", "Which atoms decide the group? Elements or numbers (Pt,2-5); empty: all", s.Core, func(text string) error {
+	u.ask(say("given.askCore"), say("given.askCoreText"), s.Core, func(text string) error {
 		return u.tryStudy(study.StepCore, func(s *study.Study) { s.Core, s.Ignore = strings.TrimSpace(text), "" })
 	})
 }
 
 func (u *ui) askIgnore() {
 	s := u.now()
-	u.ask("Spectators", "Which atoms do not decide the group? Elements or numbers (H,7-9); empty: none", s.Ignore, func(text string) error {
+	u.ask(say("given.askSpectators"), say("given.askSpectatorsText"), s.Ignore, func(text string) error {
 		return u.tryStudy(study.StepCore, func(s *study.Study) { s.Core, s.Ignore = "", strings.TrimSpace(text) })
 	})
 }

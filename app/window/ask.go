@@ -89,9 +89,9 @@ func (u *ui) askLater(title, text, now string, answer func(text string, done fun
 	q.fault = canvas.NewText("", p.Accent)
 	q.fault.TextSize = secondSize * float32(u.zoom())
 	head := widget.NewLabelWithStyle(title, fyne.TextAlignLeading, fyne.TextStyle{Bold: true})
-	ok := newSheetButton("OK", func() { u.guard(q.submit) }, q.close)
+	ok := newSheetButton(say("files.ok"), func() { u.guard(q.submit) }, q.close)
 	ok.Importance = widget.HighImportance
-	cancel := newSheetButton("Cancel", q.close, q.close)
+	cancel := newSheetButton(say("files.cancel"), q.close, q.close)
 	explain := widget.NewLabel(text)
 	explain.Wrapping = fyne.TextWrapWord
 	q.content = container.NewVBox(head, explain, q.entry, q.fault)
@@ -178,10 +178,10 @@ func (u *ui) askReplace(path string, replace func()) {
 			u.win.Canvas().Focus(under)
 		}
 	}
-	ok := newSheetButton("Replace", func() { back(); u.guard(replace) }, back)
+	ok := newSheetButton(say("files.replace"), func() { back(); u.guard(replace) }, back)
 	ok.Importance = widget.HighImportance
-	cancel := newSheetButton("Cancel", back, back)
-	text := widget.NewLabel(filepath.Base(path) + " exists already. Replace it?")
+	cancel := newSheetButton(say("files.cancel"), back, back)
+	text := widget.NewLabel(say("files.exists", filepath.Base(path)))
 	text.Wrapping = fyne.TextWrapWord
 	popup = widget.NewModalPopUp(container.NewPadded(container.NewVBox(text,
 		container.NewBorder(nil, nil, nil, container.NewHBox(cancel, ok)))), u.win.Canvas())
@@ -194,12 +194,12 @@ func (u *ui) askReplace(path string, replace func()) {
 
 // askPath asks for the path of a file that is there.
 func (u *ui) askPath(title, text, now string, answer func(path string, done func(error))) {
-	u.askAnyPath(title, text, now, "no such file", answer)
+	u.askAnyPath(title, text, now, say("files.noFile"), answer)
 }
 
 // askNewPath asks for the path of a file that is to be written.
 func (u *ui) askNewPath(title, text, now string, answer func(path string, done func(error))) {
-	u.askAnyPath(title, text, now, "a new file", answer)
+	u.askAnyPath(title, text, now, say("files.newFile"), answer)
 }
 
 // askAnyPath asks for a path, with completion by Tab and the entries of the

@@ -98,7 +98,7 @@ func (u *ui) tell(err error, done func(error)) {
 func (u *ui) openStudy(path string, done func(error)) {
 	f, err := os.Open(path)
 	if err != nil {
-		u.tell(errors.New("cannot open "+path+": "+cause(err)), done)
+		u.tell(errors.New(say("errors.cannotOpen", path, cause(err))), done)
 		return
 	}
 	defer f.Close()
@@ -126,7 +126,7 @@ func cause(err error) string {
 // openCoordinates takes pasted text.
 func (u *ui) openCoordinates(text string) {
 	if strings.TrimSpace(text) == "" {
-		u.tell(errors.New("the clipboard holds no text; copy lines \"El x y z\" with lengths in Å"), nil)
+		u.tell(errors.New(say("errors.emptyClipboard")), nil)
 		return
 	}
 	if path := strings.TrimSpace(text); !strings.Contains(path, "\n") && len(path) < 1000 {
@@ -134,7 +134,7 @@ func (u *ui) openCoordinates(text string) {
 		u.open(expanded(strings.TrimPrefix(path, "file://")), nil)
 		return
 	}
-	s, err := u.now().WithCoordinates("pasted", text)
+	s, err := u.now().WithCoordinates(say("files.pasted"), text)
 	if err != nil {
 		u.tell(err, nil)
 		return
@@ -162,10 +162,10 @@ func (u *ui) folder() string {
 }
 
 func (u *ui) askOpen() {
-	u.askPath("Open", "A file of coordinates (count, title, then El x y z in Å), a study, or ideal:OC-6. Tab completes.", u.folder(),
+	u.askPath(say("files.open"), say("files.openText"), u.folder(),
 		func(path string, done func(error)) {
 			if info, err := os.Stat(path); err == nil && info.IsDir() {
-				done(errors.New(path + " is a folder; type the name of a file in it"))
+				done(errors.New(say("errors.isFolder", path)))
 				return
 			}
 			u.open(path, done)
@@ -178,7 +178,7 @@ func (u *ui) askSave() {
 	if u.hasFile() {
 		now = u.studyFile
 	}
-	u.askNewPath("Save study", "The choices, as text that people can read. The coordinates stay in their own file.", now,
+	u.askNewPath(say("files.saveStudy"), say("files.saveStudyText"), now,
 		func(path string, done func(error)) {
 			if !strings.HasSuffix(path, study.Extension) {
 				path += study.Extension
@@ -219,7 +219,7 @@ func (u *ui) hasFile() bool {
 
 // askPicture saves what is shown, at twice the resolution of the screen.
 func (u *ui) askPicture() {
-	u.askNewPath("Save picture", "A PNG of the picture as it is seen, with twice as many pixels.", u.folder()+"picture.png",
+	u.askNewPath(say("files.savePicture"), say("files.savePictureText"), u.folder()+"picture.png",
 		func(path string, done func(error)) {
 			if !strings.HasSuffix(strings.ToLower(path), ".png") {
 				path += ".png"
@@ -249,7 +249,7 @@ func (u *ui) replacing(path string, save func(force bool, done func(error)), don
 func savePicture(path string, force bool, r request) (err error) {
 	defer func() {
 		if fault := recover(); fault != nil {
-			err = fmt.Errorf("a fault of this program: %v", fault)
+			err = errors.New(say("errors.faultHere", fmt.Sprint(fault)))
 		}
 	}()
 	if err := export.CheckTarget(path, force); err != nil {
@@ -268,35 +268,35 @@ func savePicture(path string, force bool, r request) (err error) {
 	return export.WriteFile(path, force, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi) })
 }
 
-// keysText is what Help shows: what to do, and what comes of it. An entry
-// without meaning is a heading.
+// keysText is what Help shows: what to do, and what comes of it, as keys of
+// texts. An entry without meaning is a heading.
 var keysText = [][2]string{
-	{"Picture"},
-	{"drag, arrows", "turn"},
-	{"right drag, Shift drag, Shift arrows", "move"},
-	{"wheel, + −", "zoom"},
-	{"double click on the ground, f", "fit"},
-	{"x y z, with Shift from behind", "look along an axis of the frame"},
-	{"a", "look along the operation's axis"},
-	{"click", "choose an atom or lobe and its function"},
-	{"Shift click", "choose several atoms"},
-	{"Operation"},
-	{"Space", "play or pause"},
-	{"Home, End", "go to its start, its end"},
-	{". ,", "choose the next one, the one before"},
-	{"n N", "choose the next function, the one before"},
-	{"Page down, Page up", "choose the next group orbital, the one before"},
-	{"Everywhere"},
-	{"Tab", "next region; arrows and Return within it"},
-	{"Ctrl O, Ctrl V", "open a file, paste coordinates"},
-	{"Ctrl S, Ctrl E", "save the study, the picture"},
-	{"Ctrl Z, Ctrl Y", "undo, redo"},
-	{"Alt", "menu"},
-	{"Escape", "close, stop"},
+	{"help.keysPicture"},
+	{"help.keysTurn", "help.keysTurnDoes"},
+	{"help.keysMove", "help.keysMoveDoes"},
+	{"help.keysZoom", "help.keysZoomDoes"},
+	{"help.keysFit", "help.keysFitDoes"},
+	{"help.keysAlong", "help.keysAlongDoes"},
+	{"help.keysAlongOperation", "help.keysAlongOperationDoes"},
+	{"help.keysClick", "help.keysClickDoes"},
+	{"help.keysClickMore", "help.keysClickMoreDoes"},
+	{"help.keysOperation"},
+	{"help.keysPlay", "help.keysPlayDoes"},
+	{"help.keysEnds", "help.keysEndsDoes"},
+	{"help.keysNextOperation", "help.keysNextOperationDoes"},
+	{"help.keysNextFunction", "help.keysNextFunctionDoes"},
+	{"help.keysNextOrbital", "help.keysNextOrbitalDoes"},
+	{"help.keysEverywhere"},
+	{"help.keysTab", "help.keysTabDoes"},
+	{"help.keysOpen", "help.keysOpenDoes"},
+	{"help.keysSave", "help.keysSaveDoes"},
+	{"help.keysUndo", "help.keysUndoDoes"},
+	{"help.keysMenu", "help.keysMenuDoes"},
+	{"help.keysEscape", "help.keysEscapeDoes"},
 }
 
 func (u *ui) showKeys() {
-	u.showSheet("Keys and mouse", keysTable(u))
+	u.showSheet(say("menu.keys"), keysTable(u))
 }
 
 // keysTable has two columns.
@@ -310,12 +310,12 @@ func keysTable(u *ui) fyne.CanvasObject {
 	}
 	for _, row := range keysText {
 		if row[1] == "" {
-			cell(row[0], p.Ink, fyne.TextStyle{Bold: true})
+			cell(say(row[0]), p.Ink, fyne.TextStyle{Bold: true})
 			cell("", p.Ink, fyne.TextStyle{})
 			continue
 		}
-		cell(row[0], p.Ink, fyne.TextStyle{})
-		cell(row[1], p.Quiet, fyne.TextStyle{})
+		cell(say(row[0]), p.Ink, fyne.TextStyle{})
+		cell(say(row[1]), p.Quiet, fyne.TextStyle{})
 	}
 	scroll := container.NewVScroll(container.NewPadded(table))
 	least := table.MinSize()
@@ -359,7 +359,7 @@ func (c twoColumns) MinSize(objects []fyne.CanvasObject) fyne.Size {
 }
 
 func (u *ui) about() {
-	u.showText("Lobewright "+u.version, "From the coordinates of a molecule to its point group in a stated frame, to the group orbitals of its ligands, and to pictures of them.\n\nTypeface: DejaVu Sans 2.37; its licence goes with the program.")
+	u.showText("Lobewright "+u.version, say("help.about"))
 }
 
 func (u *ui) showText(title, text string) {
@@ -375,7 +375,7 @@ func (u *ui) showSheet(title string, body fyne.CanvasObject) {
 		popup.Hide()
 		u.win.Canvas().Focus(u.view)
 	}
-	done := newSheetButton("Close", hide, hide)
+	done := newSheetButton(say("help.close"), hide, hide)
 	popup = widget.NewModalPopUp(container.NewPadded(container.NewVBox(
 		widget.NewLabelWithStyle(title, fyne.TextAlignLeading, fyne.TextStyle{Bold: true}), body,
 		container.NewBorder(nil, nil, nil, done))), u.win.Canvas())

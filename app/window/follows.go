@@ -33,16 +33,16 @@ func (u *ui) drawFollows(b *board) {
 	s, st := u.now(), u.state
 	defer func() { u.follows.extent = y + pad + u.follows.scroll }()
 	if len(s.Basis) == 0 || st.Orbitals == nil {
-		text := "Group orbitals appear here as soon as a basis is chosen."
+		text := say("follows.none")
 		if st.Progress != nil {
-			text = "computing …"
+			text = say("follows.computing")
 		}
 		y = b.paragraph(pad, y+textSize, width, notation.Words(text), quiet)
 		return
 	}
 	o := st.Orbitals
 	if st.Stale(work.StageOrbitals) {
-		y = b.paragraph(pad, y+secondSize, width, notation.Words("These belong to the choices before."), accent)
+		y = b.paragraph(pad, y+secondSize, width, notation.Words(say("follows.stale")), accent)
 	}
 	y = b.paragraph(pad, y+textSize, width, contentText(o), plain)
 	if p := st.Problem(work.ConcernIrrep); p != nil {
@@ -58,7 +58,7 @@ func (u *ui) drawFollows(b *board) {
 	for i := 0; i < len(list); {
 		n := o.Irreps[list[i].Irrep].Dimension
 		if copies++; copies > mostCopies {
-			y = b.paragraph(pad, y+secondSize, width, notation.Words(fmt.Sprintf("%d more group orbitals: the command project lists all", len(list)-i)), quiet)
+			y = b.paragraph(pad, y+secondSize, width, notation.Words(say("follows.more", len(list)-i)), quiet)
 			break
 		}
 		y = u.drawCopy(b, y, width, o, list[i:i+n], i, chosen)
@@ -95,7 +95,7 @@ func (u *ui) drawCopy(b *board, y, width float64, o *work.Orbitals, partners []o
 	y += 6
 	w := b.text(pad, y+headSize, notation.OrbitalText(irrep.Label), label)
 	if n := o.Content[partners[0].Irrep]; n > 1 {
-		b.text(pad+w+10, y+headSize, notation.Words(fmt.Sprintf("copy %d of %d", partners[0].Copy+1, n)), quiet)
+		b.text(pad+w+10, y+headSize, notation.Words(say("follows.copy", partners[0].Copy+1, n)), quiet)
 	}
 	y += headSize + 8
 	const gap = 6
@@ -132,10 +132,10 @@ func (u *ui) drawCopy(b *board, y, width float64, o *work.Orbitals, partners []o
 // likeness is the simplest function that a partner transforms like.
 func likeness(irrep symmetry.Irrep, partner int) notation.Text {
 	if partner < len(irrep.Functions) && len(irrep.Functions[partner]) > 0 {
-		return notation.Words("like ").Then(notation.Polynomial(irrep.Functions[partner][0]))
+		return fill(say("partners.like"), notation.Polynomial(irrep.Functions[partner][0]))
 	}
 	if irrep.Dimension > 1 {
-		return notation.Words(fmt.Sprint("partner ", partner+1))
+		return notation.Words(say("partners.partner", partner+1))
 	}
 	return nil
 }
@@ -159,10 +159,10 @@ func (u *ui) drawDetail(b *board) {
 		w := b.text(pad, y+headSize, notation.OrbitalText(irrep.Label), head)
 		var which []string
 		if irrep.Dimension > 1 {
-			which = append(which, fmt.Sprintf("partner %d of %d", o.Partner+1, irrep.Dimension))
+			which = append(which, say("partners.partnerOf", o.Partner+1, irrep.Dimension))
 		}
 		if n := st.Orbitals.Content[o.Irrep]; n > 1 {
-			which = append(which, fmt.Sprintf("copy %d of %d", o.Copy+1, n))
+			which = append(which, say("follows.copy", o.Copy+1, n))
 		}
 		b.text(pad+w+10, y+headSize, notation.Words(strings.Join(which, ", ")), quiet)
 		y += headSize + 12
@@ -170,7 +170,7 @@ func (u *ui) drawDetail(b *board) {
 		formula.whole = true
 		y = b.paragraph(pad, y+textSize-4, width, combinationText(o.Coefficients), formula)
 		if f := irrepFunctions(irrep, o.Partner); f != nil {
-			y = b.paragraph(pad, y+2, width, notation.Words("transforms like ").Then(f), quiet)
+			y = b.paragraph(pad, y+2, width, fill(say("partners.transforms"), f), quiet)
 		}
 		y = u.drawMatrix(b, y, irrep)
 		return
@@ -180,12 +180,12 @@ func (u *ui) drawDetail(b *board) {
 		}
 		f := st.Basis.Functions[s.Projection.Function-1]
 		w := b.text(pad, y+headSize, notation.PhiText(fmt.Sprint(s.Projection.Function)), head)
-		b.text(pad+w+10, y+headSize, notation.Function(f.Name).Then(notation.Words(" on "+st.Basis.AtomNames()[f.Site])), plain)
+		b.text(pad+w+10, y+headSize, fill(say("follows.functionOn"), notation.Function(f.Name), notation.Words(st.Basis.AtomNames()[f.Site])), plain)
 		y += headSize + 10
-		y = b.paragraph(pad, y+secondSize, width, notation.Words("One function of the basis. Choose an operation below to see where it goes, or a group orbital above."), quiet)
+		y = b.paragraph(pad, y+secondSize, width, notation.Words(say("follows.oneFunction")), quiet)
 		return
 	}
-	y = b.paragraph(pad, y+secondSize, width, notation.Words("Choose a function (left, or its atom in the picture) or a group orbital (above)."), quiet)
+	y = b.paragraph(pad, y+secondSize, width, notation.Words(say("follows.choose")), quiet)
 }
 
 // combinationText is the closed form, or the sum with decimals.
@@ -236,7 +236,7 @@ func (u *ui) drawMatrix(b *board, y float64, irrep symmetry.Irrep) float64 {
 	plain := style{size: textSize, color: b.palette.Ink}
 	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
 	y += 6
-	w := b.text(pad, y+secondSize, notation.Words("matrix of ").Then(notation.Operation(op.Name)), quiet)
+	w := b.text(pad, y+secondSize, fill(say("partners.matrix"), notation.Operation(op.Name)), quiet)
 	if d == 1 {
 		b.text(pad+w+10, y+secondSize+1, notation.Words(entry(m.At(0, 0))), style{size: textSize, color: b.palette.Ink, align: -1})
 		return y + 22

@@ -3,7 +3,7 @@
 package window
 
 import (
-	"fmt"
+	"math"
 	"path/filepath"
 	"slices"
 	"strconv"
@@ -81,7 +81,7 @@ func (d *givenDrawing) messages() {
 		}
 		top := d.y
 		d.words(text, d.accent)
-		d.words("Click to dismiss", d.quiet)
+		d.words(say("errors.dismiss"), d.quiet)
 		d.board.spot(spot{x: pad - 4, y: top, width: d.width + 8, height: d.y - top, name: name, do: func() {
 			forget()
 			d.ui.given.Update()
@@ -93,11 +93,11 @@ func (d *givenDrawing) messages() {
 }
 
 func (d *givenDrawing) empty() {
-	d.words("Nothing is open", d.strong)
+	d.words(say("given.nothing"), d.strong)
 	d.y += 4
 	d.problem(work.ConcernStructure)
 	if d.state.Progress == nil {
-		d.words("Open a file of coordinates (Ctrl+O), drop one here, paste coordinates (Ctrl+V), or take a demonstration from the menu File.", d.quiet)
+		d.words(say("given.nothingText"), d.quiet)
 	}
 }
 
@@ -118,7 +118,7 @@ func (d *givenDrawing) structure() {
 	d.line(formula.Then(notation.Words(d.board.clipped(source, max(60, room), d.quiet))), d.quiet)
 	d.problem(work.ConcernStructure, work.ConcernCore, work.ConcernIgnore, work.ConcernProgram)
 	if n := len(s.Molecule.Atoms); st.Group != nil && len(st.Group.Core) < n {
-		d.words(fmt.Sprintf("core: %d of %d atoms", len(st.Group.Core), n), d.quiet)
+		d.words(say("given.coreOf", len(st.Group.Core), n), d.quiet)
 	}
 	if p := st.Progress; p != nil {
 		d.progress(p)
@@ -132,8 +132,15 @@ func (d *givenDrawing) progress(p *work.Progress) {
 	d.board.fill(pad, d.y, d.width*min(1, p.Fraction()), 4, d.board.palette.Accent)
 	d.y += 8
 	top := d.y
-	d.words("computing "+p.Stage.String()+" … click to stop", d.quiet)
+	d.words(say("given.computing", say(stageTexts[p.Stage])), d.quiet)
 	d.board.spot(spot{x: pad - 4, y: top - 14, width: d.width + 8, height: d.y - top + 14, name: "stop", do: d.service.Cancel})
+}
+
+// stageTexts are the keys of what is being computed.
+var stageTexts = map[work.Stage]string{
+	work.StageStructure: "given.stageStructure", work.StageGroup: "given.stageGroup", work.StageBasis: "given.stageBasis",
+	work.StageOrbitals: "given.stageOrbitals", work.StageOrbital: "given.stageOrbital", work.StageLedger: "given.stageLedger",
+	work.StagePlay: "given.stagePlay",
 }
 
 // formulaText sets a formula with its numbers lowered.
@@ -158,26 +165,26 @@ func (d *givenDrawing) group() {
 		symbol.color = d.board.palette.Quiet
 	}
 	x := pad + d.board.text(pad, d.y+groupSize, notation.Group(fit.Setting.Symbol), symbol)
-	count := "infinitely many operations"
+	count := say("given.infinite")
 	if !fit.Setting.Infinite() {
-		count = strconv.Itoa(fit.Setting.Order()) + " operations"
+		count = say("given.operations", fit.Setting.Order())
 		if fit.Setting.Order() == 1 {
-			count = "1 operation"
+			count = say("given.oneOperation")
 		}
 	}
 	d.board.text(x+10, d.y+groupSize, notation.Words(count), d.quiet)
 	d.y += groupSize + 10
-	off := fmt.Sprintf("off by %s Å", notation.Decimal(fit.Deviation, 3))
+	off := say("given.off", notation.Decimal(fit.Deviation, 3))
 	if fit.Deviation >= 0.0005 && fit.Worst < len(st.Group.Core) {
-		off += ", most at " + st.Group.CoreNames()[fit.Worst]
+		off = say("given.offMost", notation.Decimal(fit.Deviation, 3), st.Group.CoreNames()[fit.Worst])
 	}
 	d.words(off, d.plain)
 	d.tolerance()
 	if fit.Doubtful {
-		d.words("Another group lies within a factor of three of this tolerance.", d.accent)
+		d.words(say("given.doubtful"), d.accent)
 	}
 	if st.Stale(work.StageGroup) {
-		d.words("This is the group of the choices before.", d.accent)
+		d.words(say("given.stale"), d.accent)
 	}
 }
 
@@ -188,11 +195,11 @@ func (d *givenDrawing) tolerance() {
 	now := d.now().TheTolerance()
 	d.y += 2
 	x := float64(pad)
-	x += d.board.text(x, d.y+textSize, notation.Words("allowed "), d.plain)
+	x += d.board.text(x, d.y+textSize, notation.Words(say("given.allowed")+" "), d.plain)
 	value := notation.Minus(strconv.FormatFloat(now, 'g', 4, 64)) + " Å"
 	w := d.board.text(x, d.y+textSize, notation.Words(value), d.plain)
 	d.board.fill(x, d.y+textSize+3, w, 1, d.board.palette.Rule)
-	d.board.spot(spot{x: x - 3, y: d.y - 3, width: w + 6, height: 22, name: "tolerance", hint: "type how far an atom may lie from its ideal place", do: d.askTolerance})
+	d.board.spot(spot{x: x - 3, y: d.y - 3, width: w + 6, height: 22, name: "tolerance", hint: say("given.allowedHint"), do: d.askTolerance})
 	x += w + 10
 	step := func(sign, name string, to float64, ok bool) {
 		var do func()
@@ -219,14 +226,14 @@ func (d *givenDrawing) tolerance() {
 
 func (d *givenDrawing) frameOfAxes() {
 	fit := d.state.Group.Fit
-	d.heading("Frame")
+	d.heading(say("frames.heading"))
 	convention := notation.Convention(fit, d.state.Group.CoreNames())
 	for _, clause := range strings.Split(convention, "; ") {
 		if clause != "" {
 			d.line(notation.Sentence(clause), d.plain)
 		}
 	}
-	d.words("rule: "+notation.Source(fit.Rule), d.quiet)
+	d.words(say("frames.rule", notation.Source(fit.Rule)), d.quiet)
 	for _, tie := range notation.Ties(fit.Ties) {
 		d.words(tie, d.quiet)
 	}
@@ -255,9 +262,9 @@ func (d *givenDrawing) frames() {
 			continue
 		}
 		now := s.Frame == name || s.Frame == "" && name == symmetry.FrameDefault
-		offer(name, "axes by the rule "+name+" ("+notation.Source(f.Rule)+")", now && !byHand, func() { d.chooseFrame(name) })
+		offer(name, say("frames.ruleHint", name, notation.Source(f.Rule)), now && !byHand, func() { d.chooseFrame(name) })
 	}
-	offer("by hand …", "say what z and x point along", byHand, d.askAxes)
+	offer(say("frames.byHand"), say("frames.byHandHint"), byHand, d.askAxes)
 	d.y += chipHeight + 4
 }
 
@@ -294,19 +301,18 @@ func drawChip(b *board, x, y, width float64, t notation.Text, size float64, c ch
 
 // kinds are the sets of functions that have a chip.
 var kinds = []struct{ word, hint string }{
-	{"s", "s on every %s"}, {"p", "px, py, pz on every %s"}, {"d", "all d on every %s"}, {"f", "all f on every %s"},
-	{"sigma", "σ on every %s: p toward the atom bonded to (s on hydrogen)"}, {"pi", "π on every %s: the two p square to σ"},
+	{"s", "given.everyS"}, {"p", "given.everyP"}, {"d", "given.everyD"}, {"f", "given.everyF"}, {"sigma", "given.everySigma"}, {"pi", "given.everyPi"},
 }
 
 func (d *givenDrawing) functions() {
-	d.heading("Basis")
+	d.heading(say("given.basis"))
 	d.y += 2
 	g, s := d.state.Group, d.now()
 	var rows []basisRow
 	for _, i := range g.Core {
 		symbol := g.Molecule.Atoms[i].Element.Symbol()
 		if !slices.ContainsFunc(rows, func(r basisRow) bool { return r.atoms == symbol }) {
-			rows = append(rows, basisRow{symbol, symbol})
+			rows = append(rows, basisRow{symbol, symbol, false})
 		}
 	}
 	const most = 8
@@ -314,7 +320,7 @@ func (d *givenDrawing) functions() {
 		rows = rows[:most]
 	}
 	if len(s.Atoms) > 0 {
-		rows = append(rows, basisRow{atomsText(s.Atoms), "chosen"})
+		rows = append(rows, basisRow{atomsText(s.Atoms), say("given.chosen"), true})
 	}
 	known := map[string]bool{}
 	for _, r := range rows {
@@ -326,7 +332,7 @@ func (d *givenDrawing) functions() {
 			w := d.board.measure(notation.Words(entry), d.plain)
 			d.board.text(pad, d.y+16, notation.Words(d.board.clipped(entry, d.width-32, d.plain)), d.plain)
 			d.chip(pad+min(w, d.width-32)+8, d.y, 24, notation.Words("×"), chip{
-				name: "remove " + entry, hint: "take it out of the basis", do: func() { d.removeBasis(entry) },
+				name: "remove " + entry, hint: say("given.takeOut"), do: func() { d.removeBasis(entry) },
 			})
 			d.y += chipHeight + 4
 		}
@@ -338,31 +344,31 @@ func (d *givenDrawing) functions() {
 		}
 		d.list(b)
 	} else if len(s.Basis) == 0 {
-		d.words("Choose functions here, or type them below.", d.quiet)
+		d.words(say("given.noBasis"), d.quiet)
 	}
 }
 
 // A basisRow is the chips of an element or of chosen atoms.
-type basisRow struct{ atoms, label string }
+type basisRow struct {
+	atoms, label string
+	chosen       bool
+}
 
 func (d *givenDrawing) basisRow(r basisRow, s study.Study, known map[string]bool) {
-	d.board.text(pad, d.y+17, notation.Words(d.board.clipped(r.label, 40, d.plain)), d.plain)
+	d.board.text(pad, d.y+17, notation.Words(d.board.clipped(r.label, 66, d.plain)), d.plain)
 	x := pad + 34.0
-	if r.label == "chosen" {
-		x = pad + 50
+	if r.chosen {
+		x = pad + max(34, math.Ceil(d.board.measure(notation.Words(r.label), d.plain))+6)
 	}
 	w := (pad + d.width - x - 5*3) / 6
 	for _, k := range kinds {
 		entry := r.atoms + ":" + k.word
 		known[entry] = true
 		what := r.label
-		if what == "chosen" {
-			what = "chosen atom"
+		if r.chosen {
+			what = say("given.chosenAtom")
 		}
-		hint := k.hint
-		if strings.Contains(hint, "%s") {
-			hint = fmt.Sprintf(hint, what)
-		}
+		hint := say(k.hint, what)
 		d.chip(x, d.y, w, kindText(k.word), chip{
 			name: "basis " + entry, hint: hint,
 			on: slices.Contains(s.Basis, entry), do: func() { d.toggleBasis(entry) },
@@ -399,7 +405,7 @@ func (d *givenDrawing) list(b *work.Basis) {
 		}
 		label := notation.PhiText(strconv.Itoa(i + 1))
 		drawChip(d.board, x, d.y, width, label, textSize, chip{
-			name: "function " + strconv.Itoa(i+1), hint: fmt.Sprintf("φ%d: %s on %s", i+1, notation.Function(f.Name).String(), names[f.Site]),
+			name: "function " + strconv.Itoa(i+1), hint: say("given.functionHint", i+1, notation.Function(f.Name).String(), names[f.Site]),
 			on: s.Projection.TheSubject() == study.SubjectFunction && s.Projection.Function == i+1,
 			do: func() { d.chooseFunction(i + 1) },
 		})
@@ -411,9 +417,9 @@ func (d *givenDrawing) list(b *work.Basis) {
 
 func functionsHead(n int) string {
 	if n == 1 {
-		return "1 function"
+		return say("given.oneFunction")
 	}
-	return fmt.Sprintf("%d functions; choose one to watch", n)
+	return say("given.functions", n)
 }
 
 // atomsText writes atoms, counted from 1, as a selection takes them: "2-4,7".

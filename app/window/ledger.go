@@ -66,15 +66,15 @@ func operationHint(op work.Operation) string {
 	degrees := notation.Short(op.Angle*180/math.Pi, 1) + "°"
 	switch {
 	case op.HasCentre():
-		return "inversion through the origin"
+		return say("ledger.inversion")
 	case op.HasAxis() && op.HasPlane():
-		return "turn by " + degrees + " about " + axis + ", then reflection in the plane square to it"
+		return say("ledger.improper", degrees, axis)
 	case op.HasAxis():
-		return "turn by " + degrees + " about " + axis
+		return say("ledger.turn", degrees, axis)
 	case op.HasPlane():
-		return "reflection in the plane with the normal " + axis
+		return say("ledger.reflection", axis)
 	}
-	return "identity: nothing moves"
+	return say("ledger.identity")
 }
 
 // An imageCache holds what every operation makes of what is chosen, set as
@@ -154,7 +154,7 @@ func partnerText(number string) notation.Text {
 // are.
 func combination(terms []orbitals.Term, name func(number string) notation.Text, most int) notation.Text {
 	if len(terms) > most {
-		return notation.Words(fmt.Sprintf("sum of %d", len(terms)))
+		return notation.Words(say("ledger.sumOf", len(terms)))
 	}
 	return setCombination(terms, name, shortCoefficient)
 }
@@ -203,7 +203,7 @@ func (u *ui) sentence() notation.Text {
 		return notation.Words(p.Error())
 	}
 	if !ok || st.Group == nil {
-		return notation.Words("Choose an operation to play it.")
+		return notation.Words(say("ledger.choose"))
 	}
 	name := notation.Operation(op.Name)
 	if op.Family {
@@ -212,21 +212,21 @@ func (u *ui) sentence() notation.Text {
 	subject := u.subjectText()
 	switch {
 	case s.Moment > 0 && s.Moment < 1:
-		return name.Then(notation.Words(": " + stepText(op, s.Moment)))
+		return fill(say("ledger.now"), name, notation.Words(stepText(op, s.Moment)))
 	case len(subject) == 0:
 		if s.Moment == 0 {
-			return name.Then(notation.Words(" " + ": choose a function or a group orbital to see where it goes"))
+			return fill(say("ledger.noSubject"), name)
 		}
-		return name.Then(notation.Words(" is done"))
+		return fill(say("ledger.done"), name)
 	}
 	image := u.imageText(op)
 	if len(image) == 0 {
 		return name
 	}
 	if s.Moment == 0 {
-		return name.Then(notation.Words(" carries "), subject, notation.Words(" into "), image)
+		return fill(say("ledger.carries"), name, subject, image)
 	}
-	return name.Then(notation.Words(": "), subject, notation.Words(" has become "), image)
+	return fill(say("ledger.become"), name, subject, image)
 }
 
 // familyText names an operation of a linear molecule with its angle.
@@ -243,17 +243,17 @@ func stepText(op work.Operation, moment float64) string {
 	}
 	switch {
 	case op.HasCentre():
-		return "through the centre"
+		return say("ledger.throughCentre")
 	case op.Steps() == 2 && moment <= 0.5:
-		return "first the turn, " + degrees(2*moment) + " of " + degrees(1)
+		return say("ledger.firstTurn", degrees(2*moment), degrees(1))
 	case op.Steps() == 2:
-		return "then the reflection in the plane square to the axis"
+		return say("ledger.thenReflection")
 	case op.HasAxis():
-		return "turned by " + degrees(moment) + " of " + degrees(1)
+		return say("ledger.turned", degrees(moment), degrees(1))
 	case op.HasPlane():
-		return "through the plane"
+		return say("ledger.throughPlane")
 	}
-	return "nothing moves"
+	return say("ledger.nothingMoves")
 }
 
 // subjectText names what is chosen.
@@ -264,8 +264,8 @@ func (u *ui) subjectText() notation.Text {
 	}
 	if s.Projection.TheSubject() == study.SubjectFunction {
 		f := st.Basis.Functions[s.Projection.Function-1]
-		return notation.PhiText(fmt.Sprint(s.Projection.Function)).Then(
-			notation.Words(" ("), notation.Function(f.Name), notation.Words(" on "+st.Basis.AtomNames()[f.Site]+")"))
+		return fill(say("ledger.functionOn"), notation.PhiText(fmt.Sprint(s.Projection.Function)), notation.Function(f.Name),
+			notation.Words(st.Basis.AtomNames()[f.Site]))
 	}
 	o := u.orbital()
 	irrep := st.Orbitals.Irreps[o.Irrep]
@@ -287,9 +287,9 @@ func (u *ui) imageText(op work.Operation) notation.Text {
 		terms, name = partnerImage(st.Orbitals, o, op.Index), partnerText
 		if st.Orbitals.Irreps[o.Irrep].Dimension == 1 {
 			if len(terms) == 1 && terms[0].Coefficient < 0 {
-				return notation.Words("its negative")
+				return notation.Words(say("ledger.negative"))
 			}
-			return notation.Words("itself")
+			return notation.Words(say("ledger.itself"))
 		}
 	case u.images.basis == st.Basis && op.Index >= 0 && s.Projection.TheSubject() == study.SubjectFunction:
 		terms = u.images.representation.Image(op.Index, s.Projection.Function-1)
@@ -312,7 +312,7 @@ func (u *ui) imageText(op work.Operation) notation.Text {
 	// The function that it has become is named, where it is one.
 	if s.Projection.TheSubject() == study.SubjectFunction && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
 		f := st.Basis.Functions[terms[0].Function]
-		t = t.Then(notation.Words(" ("), notation.Function(f.Name), notation.Words(" on "+st.Basis.AtomNames()[f.Site]+")"))
+		t = fill(say("ledger.functionOn"), t, notation.Function(f.Name), notation.Words(st.Basis.AtomNames()[f.Site]))
 	}
 	return t
 }

@@ -3,8 +3,10 @@
 package window
 
 import (
+	"strings"
 	"sync/atomic"
 
+	"lobewright/app/notation"
 	"lobewright/assets"
 )
 
@@ -27,4 +29,16 @@ func say(key string, arguments ...any) string {
 		texts = &english
 	}
 	return texts.Say(key, arguments...)
+}
+
+// fill puts set texts in the places {} of a sentence, in their order.
+func fill(sentence string, parts ...notation.Text) notation.Text {
+	var t notation.Text
+	for i, words := range strings.Split(sentence, "{}") {
+		if i > 0 && i <= len(parts) {
+			t = t.Then(parts[i-1])
+		}
+		t = t.Then(notation.Words(words))
+	}
+	return t
 }

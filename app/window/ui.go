@@ -57,7 +57,8 @@ type ui struct {
 	hints     *hintBox
 	thumbs    *thumbs
 	player    *player
-	items     menuItems
+	commands  []commandMenu
+	menusSaid string // the state that the menus show
 
 	// typedProblem is what is wrong with the functions that were typed.
 	typedProblem string
@@ -122,7 +123,7 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.basis.OnChanged = func(string) { u.sayTyped("") }
 	u.basis.OnSubmitted = func(text string) { u.guard(func() { u.typeBasis(text) }) }
 	win.SetContent(u.assemble())
-	win.SetMainMenu(u.menus())
+	win.SetMainMenu(u.mainMenu())
 	u.addShortcuts()
 	return u
 }
@@ -137,7 +138,7 @@ func systemIsDark(app fyne.App) bool {
 }
 
 // typedExample is shown where functions are typed, and may be typed as it is.
-const typedExample = "Cl:sigma; 1:d"
+const typedExample = "Cl:sigma; 1:d" // no words: it is typed
 
 // Widths and heights of the regions, in units.
 const (
@@ -277,7 +278,7 @@ func (u *ui) deliver(st *work.State) {
 	}
 	u.state = st
 	if p := st.Problem(work.ConcernProgram); p != nil {
-		u.notice = "a fault of this program: " + p.Error() + "; the study is saved"
+		u.notice = say("errors.fault", p.Error(), say("errors.saved"))
 		_ = u.session.SaveNow()
 	}
 	if before.Group != st.Group && st.Group != nil {
@@ -398,11 +399,11 @@ func (u *ui) guard(f func()) {
 
 func (u *ui) failed(fault any) {
 	trace()
-	saved := "the study is saved"
+	saved := say("errors.saved")
 	if err := u.session.SaveNow(); err != nil {
-		saved = "the study could not be saved: " + err.Error()
+		saved = say("errors.notSaved", err.Error())
 	}
-	u.notice = fmt.Sprintf("a fault of this program: %v; %s", fault, saved)
+	u.notice = say("errors.fault", fmt.Sprint(fault), saved)
 	fmt.Fprintln(os.Stderr, "lobewright: "+strings.ReplaceAll(u.notice, "\n", " "))
 	u.given.Update()
 }

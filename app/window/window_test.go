@@ -21,6 +21,7 @@ import (
 	"lobewright/app/session"
 	"lobewright/app/study"
 	"lobewright/app/work"
+	"lobewright/assets"
 )
 
 // A bench is a window under the toolkit's test driver. What other goroutines
@@ -664,7 +665,7 @@ func heap() int64 {
 
 func TestEveryStepHasAText(t *testing.T) {
 	for _, s := range study.Steps() {
-		if stepTexts[s] == "" {
+		if key := stepTexts[s]; key == "" || say(key) == key {
 			t.Errorf("step %q has no text", s)
 		}
 	}
@@ -699,8 +700,10 @@ func TestTheTypefaceHasEverySign(t *testing.T) {
 			}
 		}
 	}
-	for _, row := range keysText {
-		check(row[0] + row[1])
+	for _, l := range assets.Languages() {
+		for _, text := range assets.TextsIn(l) {
+			check(text)
+		}
 	}
 	check(typedExample)
 	for _, m := range b.win.MainMenu().Items {
@@ -732,8 +735,9 @@ func TestTheTypefaceHasEverySign(t *testing.T) {
 }
 
 // Nothing on a pane reaches over its edge sideways, at the least size of the
-// window.
+// window, in any language.
 func TestNothingIsCutAtTheSides(t *testing.T) {
+	defer speak(assets.English)
 	b := newBench(t, t.TempDir())
 	for name := range demoStudies {
 		b.open(name)
@@ -742,11 +746,14 @@ func TestNothingIsCutAtTheSides(t *testing.T) {
 			if which == 1 {
 				b.nextOrbital(1)
 			}
-			for side, p := range map[string]*pane{"left": b.given, "right": b.follows, "detail": b.detail} {
-				board := p.lay()
-				for _, text := range textsOf(board) {
-					if text.left < 0 || text.right > board.width+0.5 {
-						t.Errorf("%s, %s: %q goes from %.0f to %.0f of %.0f", name, side, text.words, text.left, text.right, board.width)
+			for _, l := range assets.Languages() {
+				speak(l)
+				for side, p := range map[string]*pane{"left": b.given, "right": b.follows, "detail": b.detail} {
+					board := p.lay()
+					for _, text := range textsOf(board) {
+						if text.left < 0 || text.right > board.width+0.5 {
+							t.Errorf("%s, %s, %s: %q goes from %.0f to %.0f of %.0f", name, l, side, text.words, text.left, text.right, board.width)
+						}
 					}
 				}
 			}
