@@ -61,7 +61,9 @@ along the C2 or the plane on x.
 				return err
 			}
 			if len(args) == 1 {
-				s.Structure = args[0]
+				if err := p.open(cmd, &s, args[0]); err != nil {
+					return err
+				}
 			}
 			list, err := p.descend(cmd.Context(), s, choice)
 			if err != nil {

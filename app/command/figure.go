@@ -30,7 +30,9 @@ the same place at the same scale.
   lobewright figure complex.xyz --operation "C2'(x)" -o axis.png`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			if err := checkFigure(cmd, &s, output); err != nil {
 				return err
 			}
@@ -56,6 +58,7 @@ the same place at the same scale.
 	flags.BoolVar(&s.Camera.Orthographic, "orthographic", false, "draw without perspective")
 	flags.BoolVar(&s.Look.NoLabels, "no-labels", false, "leave out the atoms' labels")
 	flags.BoolVar(&s.Look.NoAxes, "no-axes", false, "leave out the axes in the corner")
+	noStudyFlag(flags, &s)
 	flags.BoolVar(&s.Figure.NoCaption, "no-caption", false, "leave out the caption")
 	return cmd
 }
@@ -94,12 +97,16 @@ func (p *program) figure(ctx context.Context, s study.Study, output string, forc
 	if err := export.CheckTarget(output, force); err != nil {
 		return err
 	}
+	carried, err := p.carried(ctx, s)
+	if err != nil {
+		return err
+	}
 	img, err := pic.Draw(ctx)
 	if err != nil {
 		return err
 	}
 	return export.WriteFile(output, force, func(w io.Writer) error {
-		return export.EncodePNG(w, img, pic.Resolution)
+		return export.EncodePNG(w, img, pic.Resolution, carried)
 	})
 }
 

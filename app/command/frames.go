@@ -37,7 +37,9 @@ says by which they were given:
   lobewright frames ideal:OC-6 --translate "b1u, b2u, b3u" --from D2h`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			if err := checkFrame(&s); err != nil {
 				return err
 			}

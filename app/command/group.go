@@ -27,7 +27,9 @@ operation, the classes, and the irreps with their characters and matrices.
   lobewright group complex.xyz --json > complex.json`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			if err := checkFrame(&s); err != nil {
 				return err
 			}

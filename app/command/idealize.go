@@ -29,7 +29,9 @@ theirs.
   lobewright idealize complex.xyz --as D4h --input-axes > d4h.xyz`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			if err := checkFrame(&s); err != nil {
 				return err
 			}

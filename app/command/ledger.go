@@ -28,7 +28,9 @@ character (--character). The sum is Σ D(R)_KL · R φ over the operations R.
   lobewright ledger ring.xyz --on C:pz --function 1 --irrep "E1''" --character --json`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			if err := checkLedger(cmd, &s); err != nil {
 				return err
 			}
@@ -64,7 +66,7 @@ func checkLedger(cmd *cobra.Command, s *study.Study) error {
 	}
 	projection := s.Projection
 	switch {
-	case !cmd.Flags().Changed("function"):
+	case projection.Function == 0 && !cmd.Flags().Changed("function"):
 		return usagef("no function is chosen: give --function N, counted as project lists them")
 	case projection.Function < 1:
 		return usagef("--function: functions count from 1")

@@ -38,7 +38,9 @@ the second. idealize writes the ideal structure.
   lobewright project complex.xyz --as D4h:2 --on O:sigma`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			l, err := p.ladder(cmd.Context(), s)
 			if err != nil {
 				return err

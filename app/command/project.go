@@ -29,7 +29,9 @@ matrices of the irrep.
   lobewright project ring.xyz --on C:pz --json`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			if err := checkBasis(cmd, &s, true); err != nil {
 				return err
 			}

@@ -15,6 +15,8 @@ STRUCTURE is
                the distance if you like (ideal:OC-6  ideal:OC-6,Co,N,1.96), or
                a planar ring (ideal:ring-5,C)
   demo:NAME    an embedded demonstration; "lobewright demo" lists them
+  a figure     that this program has made: the work that it shows, with all
+               choices; flags that are given count above them
 `
 
 const selectionHelp = `

@@ -51,7 +51,7 @@ func mayBeStructure(cmd *cobra.Command, args []string) error {
 }
 
 func readsLikeStructure(arg string) bool {
-	if strings.HasPrefix(arg, "demo:") || strings.HasPrefix(arg, "ideal:") || strings.ContainsAny(arg, `/\`) || strings.HasSuffix(arg, ".xyz") {
+	if strings.HasPrefix(arg, "demo:") || strings.HasPrefix(arg, "ideal:") || strings.ContainsAny(arg, `/\`) || strings.HasSuffix(arg, ".xyz") || isFigure(arg) {
 		return true
 	}
 	info, err := os.Stat(arg)

@@ -14,7 +14,7 @@ func TestPNGCarriesItsResolutionAndReadsBack(t *testing.T) {
 	img := image.NewRGBA(image.Rect(0, 0, 5, 3))
 	img.SetRGBA(2, 1, color.RGBA{10, 20, 30, 255})
 	var out bytes.Buffer
-	if err := EncodePNG(&out, img, 300); err != nil {
+	if err := EncodePNG(&out, img, 300, nil); err != nil {
 		t.Fatal(err)
 	}
 	chunks := map[string][]byte{}

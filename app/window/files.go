@@ -19,6 +19,7 @@ import (
 	"fyne.io/fyne/v2/widget"
 
 	"lobewright/app/export"
+	"lobewright/app/files"
 	"lobewright/app/picture"
 	"lobewright/app/study"
 	"lobewright/app/work"
@@ -55,7 +56,7 @@ func (u *ui) openDemo(name string) {
 // the work; else a message stands where the path was typed, or on top of the
 // left pane, and nothing changes.
 func (u *ui) open(structure string, done func(error)) {
-	if strings.HasSuffix(structure, study.Extension) {
+	if export.CarriesStudy(structure) && !strings.HasPrefix(structure, "demo:") && !strings.HasPrefix(structure, "ideal:") {
 		u.openStudy(structure, done)
 		return
 	}
@@ -95,32 +96,23 @@ func (u *ui) tell(err error, done func(error)) {
 	}
 }
 
+// openStudy opens a study file, or the work that a figure shows.
 func (u *ui) openStudy(path string, done func(error)) {
-	f, err := os.Open(path)
-	if err != nil {
-		u.tell(errors.New(say("errors.cannotOpen", path, cause(err))), done)
+	if _, err := os.Stat(path); err != nil {
+		u.tell(errors.New(say("errors.cannotOpen", path, files.Cause(err))), done)
 		return
 	}
-	defer f.Close()
-	s, err := study.Read(f, filepath.Base(path))
+	s, err := export.StudyIn(path)
 	if err != nil {
 		u.tell(err, done)
 		return
 	}
 	u.try(s, func(err error) {
-		if err == nil {
+		if err == nil && strings.HasSuffix(path, study.Extension) {
 			u.keepFile(expanded(path), s)
 		}
 		u.tell(err, done)
 	})
-}
-
-func cause(err error) string {
-	var path *os.PathError
-	if errors.As(err, &path) {
-		return path.Err.Error()
-	}
-	return err.Error()
 }
 
 // openCoordinates takes pasted text.
@@ -225,9 +217,10 @@ func (u *ui) askPicture() {
 				path += ".png"
 			}
 			r := request{shown: u.view.shown, sight: u.view.sight, width: 2 * u.view.width, height: 2 * u.view.height, dpi: 2 * u.view.dpi()}
+			carried := u.carried()
 			u.replacing(path, func(force bool, done func(error)) {
 				go func() {
-					err := savePicture(path, force, r)
+					err := savePicture(path, force, r, carried)
 					u.post(func() { u.guard(func() { done(err) }) })
 				}()
 			}, done)
@@ -246,7 +239,7 @@ func (u *ui) replacing(path string, save func(force bool, done func(error)), don
 	})
 }
 
-func savePicture(path string, force bool, r request) (err error) {
+func savePicture(path string, force bool, r request, carried []byte) (err error) {
 	defer func() {
 		if fault := recover(); fault != nil {
 			err = errors.New(say("errors.faultHere", fmt.Sprint(fault)))
@@ -265,7 +258,7 @@ func savePicture(path string, force bool, r request) (err error) {
 	if img, err = p.Draw(context.Background()); err != nil {
 		return err
 	}
-	return export.WriteFile(path, force, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi) })
+	return export.WriteFile(path, force, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi, carried) })
 }
 
 // keysText is what Help shows: what to do, and what comes of it, as keys of
