@@ -20,7 +20,12 @@ TEST_THERE    := command -v gap >/dev/null && command -v Xvfb >/dev/null && comm
 VERSION := $(shell git describe --tags --always --dirty 2>/dev/null || echo devel)
 BUILD    = $(GO) build -buildvcs=false -ldflags "-X main.version=$(VERSION)"
 
-.PHONY: run build test lint unit fuzz bench packages clean help
+# Where make install puts things. DESTDIR stands before it in the making of packages.
+PREFIX ?= /usr/local
+SHARE   = $(DESTDIR)$(PREFIX)/share
+ICONS  := 16 32 48 64 128 256 512
+
+.PHONY: run build test lint unit fuzz bench packages install uninstall clean help
 .DEFAULT_GOAL := help
 .NOTPARALLEL:
 
@@ -87,6 +92,38 @@ endef
 packages:
 	@$(call ensure,$(TEST_PACKAGES),$(TEST_THERE))
 	@$(call ensure,$(WINDOW_PACKAGES),$(WINDOW_THERE))
+
+install: ## build with the window and install for all users: program, manual page, shell completions, desktop entry, icons
+	@$(call ensure,$(WINDOW_PACKAGES),$(WINDOW_THERE)) && cgo=1 || { cgo=0; echo "without them there is no window, only the command line"; }; \
+	echo "== build"; CGO_ENABLED=$$cgo $(BUILD) -o lobewright ./app
+	install -D -m 755 lobewright $(DESTDIR)$(PREFIX)/bin/lobewright
+	install -d $(SHARE)/man/man1 $(SHARE)/bash-completion/completions $(SHARE)/zsh/site-functions $(SHARE)/fish/vendor_completions.d
+	./lobewright manual > $(SHARE)/man/man1/lobewright.1
+	./lobewright completion bash > $(SHARE)/bash-completion/completions/lobewright
+	./lobewright completion zsh > $(SHARE)/zsh/site-functions/_lobewright
+	./lobewright completion fish > $(SHARE)/fish/vendor_completions.d/lobewright.fish
+	install -D -m 644 assets/desktop/lobewright.desktop $(SHARE)/applications/lobewright.desktop
+	install -D -m 644 assets/desktop/lobewright.metainfo.xml $(SHARE)/metainfo/example.lobewright.Lobewright.metainfo.xml
+	install -D -m 644 assets/desktop/lobewright.xml $(SHARE)/mime/packages/lobewright.xml
+	install -D -m 644 assets/desktop/lobewright.svg $(SHARE)/icons/hicolor/scalable/apps/lobewright.svg
+	for n in $(ICONS); do install -D -m 644 assets/desktop/lobewright-$$n.png $(SHARE)/icons/hicolor/$${n}x$$n/apps/lobewright.png || exit 1; done
+	@$(call refresh)
+
+uninstall: ## remove what install put there
+	rm -f $(DESTDIR)$(PREFIX)/bin/lobewright $(SHARE)/man/man1/lobewright.1 $(SHARE)/bash-completion/completions/lobewright \
+	  $(SHARE)/zsh/site-functions/_lobewright $(SHARE)/fish/vendor_completions.d/lobewright.fish $(SHARE)/applications/lobewright.desktop \
+	  $(SHARE)/metainfo/example.lobewright.Lobewright.metainfo.xml $(SHARE)/mime/packages/lobewright.xml \
+	  $(SHARE)/icons/hicolor/scalable/apps/lobewright.svg $(foreach n,$(ICONS),$(SHARE)/icons/hicolor/$(n)x$(n)/apps/lobewright.png)
+	@$(call refresh)
+
+# The desktop keeps lists of what is installed; a package's own scripts make them anew where DESTDIR is set.
+define refresh
+if [ -z "$(DESTDIR)" ]; then \
+  ! command -v update-desktop-database >/dev/null || update-desktop-database -q $(SHARE)/applications; \
+  ! command -v update-mime-database >/dev/null || update-mime-database $(SHARE)/mime; \
+  ! command -v gtk-update-icon-cache >/dev/null || gtk-update-icon-cache -q -t $(SHARE)/icons/hicolor; \
+fi || true
+endef
 
 clean: ## remove what was built and drawn
 	rm -rf lobewright out

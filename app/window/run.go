@@ -20,6 +20,7 @@ import (
 	"lobewright/app/session"
 	"lobewright/app/study"
 	_ "lobewright/app/window/language" // before the toolkit
+	"lobewright/assets"
 )
 
 // name is what the window system knows the program by.
@@ -60,6 +61,7 @@ func Run(ctx context.Context, o Options) (err error) {
 		Migrations: map[string]bool{"fyneDo": true},
 	})
 	a := app.New()
+	a.SetIcon(fyne.NewStaticResource("lobewright.png", assets.Icon()))
 	kept, notes := session.Open(session.Options{Interval: time.Second})
 	win := a.NewWindow(name)
 	release()
