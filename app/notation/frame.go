@@ -8,26 +8,38 @@ import (
 
 	"github.com/go-gl/mathgl/mgl64"
 
+	"lobewright/assets"
 	"lobewright/symmetry"
 )
 
-// Convention says in words where x, y and z point and by which rule. names
-// are those of the points of the fit ("Cl2"); with them it also says toward
-// which atoms the axes point.
+// Convention says in words where x, y and z point and by which rule, in
+// English. names are those of the points of the fit ("Cl2"); with them it also
+// says toward which atoms the axes point.
 func Convention(fit *symmetry.Fit, names []string) string {
-	z, x := axisRules(fit, true)
-	z += toward(fit, names, 2)
+	return ConventionIn(english(), fit, names)
+}
+
+// ConventionIn is Convention in the language of the texts.
+func ConventionIn(t assets.Texts, fit *symmetry.Fit, names []string) string {
+	z, x := axisRules(t, fit, true)
+	z += toward(t, fit, names, 2)
 	if x != "" {
-		x += toward(fit, names, 0)
+		x += toward(t, fit, names, 0)
 	}
 	return joinClauses(z, x)
 }
 
 // ShortConvention is Convention without what settles rare cases and without
 // atoms, for captions.
-func ShortConvention(fit *symmetry.Fit) string {
-	return joinClauses(axisRules(fit, false))
+func ShortConvention(fit *symmetry.Fit) string { return ShortConventionIn(english(), fit) }
+
+// ShortConventionIn is ShortConvention in the language of the texts.
+func ShortConventionIn(t assets.Texts, fit *symmetry.Fit) string {
+	return joinClauses(axisRules(t, fit, false))
 }
+
+// english are the texts that the commands speak.
+func english() assets.Texts { return assets.TextsIn(assets.English) }
 
 func joinClauses(z, x string) string {
 	if x == "" {
@@ -38,7 +50,7 @@ func joinClauses(z, x string) string {
 
 // axisRules says where z and x point. The rest of a rule, which decides only
 // where its first part does not, is left out unless asked for.
-func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
+func axisRules(t assets.Texts, fit *symmetry.Fit, whole bool) (z, x string) {
 	rest := func(s string) string {
 		if whole {
 			return " (" + s + ")"
@@ -47,84 +59,84 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 	}
 	switch fit.Rule.Z {
 	case symmetry.ZPrincipal:
-		z = "z along " + axisName(fit.Setting) + rest("the axis of the highest order")
+		z = t.Say("axes.zAlong", axisName(fit.Setting)) + rest(t.Say("axes.highestOrder"))
 	case symmetry.ZMostAtoms:
-		z = "z along the C2 through most atoms" + rest("then most bonds, then the larger extent")
+		z = t.Say("axes.zMostAtoms") + rest(t.Say("axes.thenBondsExtent"))
 	case symmetry.ZPlanarC2:
-		z = "z along the C2 in the molecular plane through most atoms" + rest("then most bonds, then the larger extent")
+		z = t.Say("axes.zPlanar") + rest(t.Say("axes.thenBondsExtent"))
 	case symmetry.ZPlaneNormal:
-		z = "z square to the mirror plane"
+		z = t.Say("axes.zPlaneNormal")
 	case symmetry.ZSmallestMoment:
-		z = "z along the axis of the smallest principal moment of inertia"
+		z = t.Say("axes.zSmallestMoment")
 	case symmetry.ZCubic:
-		z = "x, y and z along the three " + cubicAxes(fit.Setting.Symbol) + " axes"
+		z = t.Say("axes.zCubic", cubicAxes(fit.Setting.Symbol))
 	case symmetry.ZIcosahedral:
-		z = "x, y and z along three C2 axes, C5 axes along (0, ±1, ±(1 + √5)/2) and cyclic permutations"
+		z = t.Say("axes.zIcosahedral")
 	case symmetry.ZMolecularAxis:
-		z = "z along the molecular axis"
+		z = t.Say("axes.zMolecular")
 	case symmetry.ZInput:
-		z = "x, y and z as in the input"
+		z = t.Say("axes.zInput")
 	case symmetry.ZC3Axis:
-		z = "z along a C3"
+		z = t.Say("axes.zC3")
 	case symmetry.ZC2Axis:
-		z = "z along a C2" + rest("one that is no power of a C4")
+		z = t.Say("axes.zC2") + rest(t.Say("axes.noPower"))
 	case symmetry.ZC5Axis:
-		z = "z along a C5"
+		z = t.Say("axes.zC5")
 	case symmetry.ZExplicit:
-		z = "z and x as given"
+		z = t.Say("axes.given")
 		if name := axisName(fit.Setting); name != "C1" {
-			z += rest("z along " + name)
+			z += rest(t.Say("axes.zAlong", name))
 		}
 	case symmetry.XPermuted:
-		z = permutation(fit.Rule.Name)
+		z = permutation(t, fit.Rule.Name)
 	default:
 		if group, held := strings.CutPrefix(fit.Rule.Z, "held:"); held {
-			return "z and x as near as can be to those of " + group + ", which holds this group", ""
+			return t.Say("axes.held", group), ""
 		}
 		z = fit.Rule.Z
 	}
 	switch fit.Rule.X {
 	case symmetry.XC2MostAtoms:
-		x = alongC2(fit, rest)
+		x = alongC2(t, fit, rest)
 	case symmetry.XPlaneMostAtoms:
-		x = "xz is the σv plane with most atoms" + rest("then most bonds")
+		x = t.Say("axes.xzSigmaV") + rest(t.Say("axes.thenBonds"))
 	case symmetry.XPlanarNormal:
-		x = "x square to the molecular plane"
+		x = t.Say("axes.xPlanarNormal")
 	case symmetry.XYZMostAtoms:
-		x = "yz is the plane with most atoms" + rest("then most bonds")
+		x = t.Say("axes.yzMost") + rest(t.Say("axes.thenBonds"))
 	case symmetry.XFirstOrbit:
-		x = "xz holds the first atom of the largest set of equivalent atoms off the axis"
+		x = t.Say("axes.xzFirst")
 	case symmetry.XSmallerMoment:
-		x = "x along the axis of the smaller moment of inertia in the plane"
+		x = t.Say("axes.xSmaller")
 	case symmetry.XLargestMoment:
-		x = "x along the axis of the largest principal moment of inertia"
+		x = t.Say("axes.xLargest")
 	case symmetry.XThreefold:
-		x = "an atom of the first set on threefold axes lies along (1, 1, 1)"
+		x = t.Say("axes.xThreefold")
 	case symmetry.XFree:
-		x = "x in any direction square to it"
+		x = t.Say("axes.xFree")
 	case symmetry.XPlaneXZ:
-		x = "xz is the plane with most atoms" + rest("then most bonds")
+		x = t.Say("axes.xzMost") + rest(t.Say("axes.thenBonds"))
 	case symmetry.XBetween:
-		x = "x between the atoms" + rest(betweenWhat(fit.Setting))
+		x = t.Say("axes.xBetween") + rest(betweenWhat(t, fit.Setting))
 	case symmetry.XC2OnY:
-		x = "y along the C2 that the default rule puts on x"
+		x = t.Say("axes.yC2")
 	case symmetry.XSigmaYZ:
-		x = "yz is the σv plane that the default rule puts in xz"
+		x = t.Say("axes.yzSigma")
 	case symmetry.XSigmaDXZ:
-		x = "xz is a σd plane" + rest("the C2′ lie between the planes")
+		x = t.Say("axes.xzSigmaD") + rest(t.Say("axes.c2Between"))
 	case symmetry.XExchanged:
-		x = "x and y exchanged" + rest("turned by 90° about z from the default")
+		x = t.Say("axes.xExchanged") + rest(t.Say("axes.turned90"))
 	case symmetry.XC2Across:
-		x = "x along a C2 square to it"
+		x = t.Say("axes.xC2Across")
 	case symmetry.XHoldsC2:
-		x = "xz holds the axis that the default rule puts on z"
+		x = t.Say("axes.xzHolds")
 	case symmetry.XOtherSetting:
-		x = "turned by 90° about z from the default" + rest("C5 axes along (±(1 + √5)/2, 0, ±1) and cyclic permutations")
+		x = t.Say("axes.turned90") + rest(t.Say("axes.otherC5"))
 	case symmetry.XInputLabels:
-		x = "the axes of the group lie along them and the irreps are labelled by them"
+		x = t.Say("axes.inputLabels")
 	case symmetry.XInput:
 		if fit.Rule.Name == symmetry.FrameFile {
-			x = "the irreps are labelled as by the default rule"
+			x = t.Say("axes.labelsDefault")
 		}
 	case symmetry.XEquivalent, symmetry.XExplicit, symmetry.XPermuted, "":
 	default:
@@ -135,7 +147,7 @@ func axisRules(fit *symmetry.Fit, whole bool) (z, x string) {
 
 // alongC2 says by what the C2 square to z that x lies along was chosen: by
 // nothing where they are equivalent, and never by atoms that it does not hold.
-func alongC2(fit *symmetry.Fit, rest func(string) string) string {
+func alongC2(t assets.Texts, fit *symmetry.Fit, rest func(string) string) string {
 	name, classes := "C2", map[int]bool{}
 	for _, op := range fit.Setting.Operations {
 		if op.Turn.Improper || op.Turn.Den != 2 || !isSquareTo(op.Axis, 2) {
@@ -150,35 +162,35 @@ func alongC2(fit *symmetry.Fit, rest func(string) string) string {
 	held := false
 	for _, p := range fit.Ideal {
 		if isAlong(p, 0) && math.Abs(p[0]) > offOrigin {
-			return "x along the " + name + " through most atoms" + rest("then the one whose vertical planes hold most atoms, then most bonds")
+			return t.Say("axes.c2Most", name) + rest(t.Say("axes.c2MostThen"))
 		}
 		held = held || isSquareTo(p, 1) && math.Abs(p[0]) > offOrigin
 	}
 	switch {
 	case len(classes) == 1:
-		return "x along a " + name + rest("all "+name+" are equivalent")
+		return t.Say("axes.c2Any", name) + rest(t.Say("axes.c2All", name))
 	case held:
-		return "x along the " + name + " whose vertical plane holds most atoms" + rest("no atom lies on it, most bonds decide next")
+		return t.Say("axes.c2Plane", name) + rest(t.Say("axes.c2PlaneThen"))
 	}
-	return "x along a " + name + rest("no atom lies on it or in its vertical plane, most bonds decide")
+	return t.Say("axes.c2Any", name) + rest(t.Say("axes.c2None"))
 }
 
 // betweenWhat says which elements of an even group lie between the atoms.
-func betweenWhat(s *symmetry.Setting) string {
+func betweenWhat(t assets.Texts, s *symmetry.Setting) string {
 	if strings.HasSuffix(s.Symbol, "v") {
-		return "xz is the σ plane that the default rule calls σd"
+		return t.Say("axes.betweenV")
 	}
-	return "along the C2 that the default rule calls C2″"
+	return t.Say("axes.betweenH")
 }
 
 // permutation says, of a rule for D2 or D2h, which axes of the default rule
 // become x, y and z.
-func permutation(name string) string {
+func permutation(t assets.Texts, name string) string {
 	axes := strings.TrimPrefix(name, "axes-")
 	if len(axes) != 3 {
 		return name
 	}
-	return fmt.Sprintf("x, y and z are the %c, %c and %c of the default rule", axes[0], axes[1], axes[2])
+	return t.Say("axes.permuted", axes[0], axes[1], axes[2])
 }
 
 // axisName names the axis along z: "C4", or "S4" where an improper rotation
@@ -235,23 +247,23 @@ const offOrigin = 1e-3
 // toward says where the positive half of an axis of the frame points: ", +z
 // toward Cl2" if an atom lies on it. Else, where the group tells its two halves
 // apart, it names the atoms on its side (z) or in the plane xz (x).
-func toward(fit *symmetry.Fit, names []string, axis int) string {
+func toward(t assets.Texts, fit *symmetry.Fit, names []string, axis int) string {
 	letter := "xyz"[axis : axis+1]
 	for i, p := range fit.Ideal {
 		if i < len(names) && isAlong(p, axis) && p[axis] > offOrigin {
-			return fmt.Sprintf(", +%s toward %s", letter, names[i])
+			return t.Say("axes.toward", letter, names[i])
 		}
 	}
 	if fit.Setting.Infinite() || len(names) < len(fit.Ideal) || turnsRound(fit.Setting, axis) {
 		return ""
 	}
 	if axis == 2 {
-		if side := sideOf(fit, names); side != "" {
-			return ", +z on the side of " + side
+		if side := sideOf(t, fit, names); side != "" {
+			return t.Say("axes.onSide", side)
 		}
 		return ""
 	}
-	return inPlane(fit, names)
+	return inPlane(t, fit, names)
 }
 
 // turnsRound tells whether an operation takes an axis of the frame into its
@@ -269,7 +281,7 @@ func turnsRound(s *symmetry.Setting, axis int) bool {
 const mostInSet = 4
 
 // sideOf names the set of equivalent atoms farthest to the side of +z.
-func sideOf(fit *symmetry.Fit, names []string) string {
+func sideOf(t assets.Texts, fit *symmetry.Fit, names []string) string {
 	best := -1
 	for i, p := range fit.Ideal {
 		if p[2] > offOrigin && (best < 0 || p[2] > fit.Ideal[best][2]+offOrigin) {
@@ -285,11 +297,11 @@ func sideOf(fit *symmetry.Fit, names []string) string {
 			set = append(set, names[i])
 		}
 	}
-	return listed(set)
+	return listed(t, set)
 }
 
 // inPlane names the atoms in xz off the z axis, and those at +x.
-func inPlane(fit *symmetry.Fit, names []string) string {
+func inPlane(t assets.Texts, fit *symmetry.Fit, names []string) string {
 	var plus, minus []string
 	for i, p := range fit.Ideal {
 		switch {
@@ -302,33 +314,37 @@ func inPlane(fit *symmetry.Fit, names []string) string {
 	}
 	switch {
 	case len(plus) > 0:
-		return ", in xz at +x " + lie(len(plus)) + " " + listed(plus)
+		return t.Say(onePlural(len(plus), "axes.onePlus", "axes.morePlus"), listed(t, plus))
 	case len(minus) > 0:
-		return ", in xz at −x " + lie(len(minus)) + " " + listed(minus)
+		return t.Say(onePlural(len(minus), "axes.oneMinus", "axes.moreMinus"), listed(t, minus))
 	}
 	return ""
 }
 
-func lie(n int) string {
+// onePlural chooses between the keys for one thing and for several.
+func onePlural(n int, one, more string) string {
 	if n == 1 {
-		return "lies"
+		return one
 	}
-	return "lie"
+	return more
 }
 
 // listed joins names: "Cl3, Cl5 and Cl7", "C1, C2, C3 …".
-func listed(names []string) string {
+func listed(t assets.Texts, names []string) string {
 	if n := len(names); n > mostInSet {
 		return strings.Join(names[:mostInSet-1], ", ") + " …"
 	} else if n > 1 {
-		return strings.Join(names[:n-1], ", ") + " and " + names[n-1]
+		return t.Say("axes.and", strings.Join(names[:n-1], ", "), names[n-1])
 	}
 	return names[0]
 }
 
 // Source says who published a rule, or that it is common practice or an own
-// choice.
-func Source(rule symmetry.Rule) string {
+// choice, in English.
+func Source(rule symmetry.Rule) string { return SourceIn(english(), rule) }
+
+// SourceIn is Source in the language of the texts.
+func SourceIn(t assets.Texts, rule symmetry.Rule) string {
 	var parts []string
 	add := func(text string) {
 		if !slices.Contains(parts, text) {
@@ -338,13 +354,13 @@ func Source(rule symmetry.Rule) string {
 	for _, key := range rule.Sources {
 		switch key {
 		case symmetry.SourceMulliken:
-			add("R. S. Mulliken, J. Chem. Phys. 23, 1997 (1955), as quoted elsewhere")
+			add(t.Say("axes.mulliken"))
 		case symmetry.SourceCommon, symmetry.SourceDepartmentPage:
 			// What a department teaches on its page is common practice; a
 			// page is nothing that a reader could look up years later.
-			add("common practice")
+			add(t.Say("axes.common"))
 		case symmetry.SourceOwn:
-			add("own choice")
+			add(t.Say("axes.own"))
 		default:
 			add(key)
 		}
@@ -352,37 +368,41 @@ func Source(rule symmetry.Rule) string {
 	return strings.Join(parts, "; ")
 }
 
-// Ties says what the rule left open and how it was settled, a sentence each.
-func Ties(ties []symmetry.Tie) []string {
+// Ties says what the rule left open and how it was settled, a sentence each,
+// in English.
+func Ties(ties []symmetry.Tie) []string { return TiesIn(english(), ties) }
+
+// TiesIn is Ties in the language of the texts.
+func TiesIn(t assets.Texts, ties []symmetry.Tie) []string {
 	var out []string
-	for _, t := range ties {
-		out = append(out, tieOpen(t.What)+": "+tieSettled(t.Settled))
+	for _, tie := range ties {
+		out = append(out, tieOpen(t, tie.What)+": "+tieSettled(t, tie.Settled))
 	}
 	return out
 }
 
-func tieOpen(what string) string {
+func tieOpen(t assets.Texts, what string) string {
 	switch what {
 	case symmetry.TieOrigin:
-		return "the rule leaves several origins"
+		return t.Say("axes.tieOrigin")
 	case symmetry.TieZAxis:
-		return "the rule leaves several axes for z"
+		return t.Say("axes.tieZ")
 	case symmetry.TieZSense:
-		return "the rule leaves open which way z points"
+		return t.Say("axes.tieZSense")
 	case symmetry.TieXAxis:
-		return "the rule leaves several directions for x"
+		return t.Say("axes.tieX")
 	case symmetry.TieXSense:
-		return "the rule leaves open which way x points"
+		return t.Say("axes.tieXSense")
 	}
 	return what
 }
 
-func tieSettled(how string) string {
+func tieSettled(t assets.Texts, how string) string {
 	switch how {
 	case symmetry.SettledByCoordinates:
-		return "taken is the frame in which the sorted coordinates of the atoms are the larger"
+		return t.Say("axes.byCoordinates")
 	case symmetry.SettledByNumber:
-		return "the atom with the lowest number decides"
+		return t.Say("axes.byNumber")
 	}
 	return how
 }

@@ -1,16 +1,21 @@
 package notation
 
 import (
-	"fmt"
 	"slices"
 	"strings"
 
+	"lobewright/assets"
 	"lobewright/orbitals"
 )
 
-// Note is the sentence for a remark on a basis. choices are the selections as
-// they were written; names are those of all atoms ("Cl2").
+// Note is the sentence for a remark on a basis, in English. choices are the
+// selections as they were written; names are those of all atoms ("Cl2").
 func Note(n orbitals.Note, b *orbitals.Basis, choices, names []string) string {
+	return NoteIn(english(), n, b, choices, names)
+}
+
+// NoteIn is Note in the language of the texts.
+func NoteIn(t assets.Texts, n orbitals.Note, b *orbitals.Basis, choices, names []string) string {
 	choice := ""
 	if n.Choice < len(choices) {
 		choice = choices[n.Choice] + ": "
@@ -20,19 +25,19 @@ func Note(n orbitals.Note, b *orbitals.Basis, choices, names []string) string {
 		var functions []string
 		for _, i := range n.Functions {
 			f := b.Functions[i]
-			functions = append(functions, f.Name+" on "+names[f.Site])
+			functions = append(functions, t.Say("notes.functionOn", f.Name, names[f.Site]))
 		}
-		return choice + "completed with " + enumerate(functions) + ", into which operations carry the chosen functions"
+		return choice + t.Say("notes.completed", enumerate(t, functions))
 	case orbitals.NoteContained:
 		var functions []string
 		for k, name := range n.Names {
-			functions = append(functions, name+" on "+names[n.Atoms[k]])
+			functions = append(functions, t.Say("notes.functionOn", name, names[n.Atoms[k]]))
 		}
-		return choice + "left out " + enumerate(functions) + ", contained in functions chosen before"
+		return choice + t.Say("notes.contained", enumerate(t, functions))
 	case orbitals.NoteSpectators:
-		return choice + "left out " + enumerate(atomNames(n.Atoms, names)) + ", spectators that operations carry to no atom"
+		return choice + t.Say("notes.spectators", enumerate(t, atomNames(n.Atoms, names)))
 	case orbitals.NoteCentreCarried:
-		return choice + "on " + enumerate(atomNames(n.Atoms, names)) + " the functions point to an image of the chosen centre"
+		return choice + t.Say("notes.centreCarried", enumerate(t, atomNames(n.Atoms, names)))
 	}
 	return choice + string(n.Key)
 }
@@ -49,13 +54,13 @@ func atomNames(atoms []int, names []string) []string {
 const mostNamed = 8
 
 // enumerate joins a few names and counts the others.
-func enumerate(list []string) string {
+func enumerate(t assets.Texts, list []string) string {
 	list = slices.Clone(list)
 	if n := len(list); n > mostNamed+1 {
-		list = append(list[:mostNamed:mostNamed], fmt.Sprintf("%d more", n-mostNamed))
+		list = append(list[:mostNamed:mostNamed], t.Say("notes.more", n-mostNamed))
 	}
 	if n := len(list); n > 1 {
-		return strings.Join(list[:n-1], ", ") + " and " + list[n-1]
+		return t.Say("axes.and", strings.Join(list[:n-1], ", "), list[n-1])
 	}
 	return strings.Join(list, "")
 }

@@ -261,7 +261,7 @@ func TestTooManyInstancesRunWithoutSaving(t *testing.T) {
 func TestSettingsAreSharedByAllInstances(t *testing.T) {
 	folder := t.TempDir()
 	first, second := start(t, folder), start(t, folder)
-	all := Preferences{Theme: ThemeContrast, Scale: 1.5, NoMotion: true, Width: 1280, Height: 800.5}
+	all := Preferences{Theme: ThemeContrast, Scale: 1.5, NoMotion: true, Width: 1280, Height: 800.5, Language: "de", Shown: true}
 	if err := first.SetPreferences(all); err != nil {
 		t.Fatal(err)
 	}

@@ -24,6 +24,11 @@ type Preferences struct {
 	// Width and Height are those of the window; zero stands for the default.
 	Width  float64 `record:"width"`
 	Height float64 `record:"height"`
+	// Language is that of the window: en, de; empty as the system has it.
+	Language string `record:"language"`
+	// Shown tells that the steps of the first start were gone through or sent
+	// away, and do not come back by themselves.
+	Shown bool `record:"shown"`
 }
 
 // A Theme is a choice of colours for the window.
@@ -72,6 +77,11 @@ func (s settings) Check() error {
 	case ThemeSystem, ThemeLight, ThemeDark, ThemeContrast:
 	default:
 		return record.Wrong("preferences.theme", "%.40q is not known; there are light, dark, contrast", string(p.Theme))
+	}
+	switch p.Language {
+	case "", "en", "de":
+	default:
+		return record.Wrong("preferences.language", "%.40q is not known; there are en, de", p.Language)
 	}
 	if p.Scale != 0 && !(p.Scale >= MinScale && p.Scale <= MaxScale) {
 		return record.Wrong("preferences.scale", "%g is out of range; it goes from %g to %g", p.Scale, float64(MinScale), float64(MaxScale))

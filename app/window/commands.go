@@ -190,6 +190,7 @@ func (u *ui) viewCommands() []*command {
 			u.themeCommand("menu.themeDark", session.ThemeDark), u.themeCommand("menu.themeContrast", session.ThemeContrast),
 		}},
 		{key: "menu.textSize", menu: u.sizeCommands()},
+		{key: "menu.language", menu: u.languageCommands()},
 		{key: "menu.motion", on: func() bool { return u.motion }, do: func() {
 			u.motion = !u.motion
 			u.preferences(func(p *session.Preferences) { p.NoMotion = !u.motion })

@@ -90,7 +90,7 @@ func (u *ui) tell(err error, done func(error)) {
 		return
 	}
 	if err != nil {
-		u.openProblem = err.Error()
+		u.openProblem = say("errors.aboutOpening", err.Error())
 		u.given.scrollTo(0)
 		u.given.Update()
 	}

@@ -46,7 +46,7 @@ func (u *ui) drawFollows(b *board) {
 	}
 	y = b.paragraph(pad, y+textSize, width, contentText(o), plain)
 	if p := st.Problem(work.ConcernIrrep); p != nil {
-		y = b.paragraph(pad, y, width, notation.Words(p.Error()), accent)
+		y = b.paragraph(pad, y, width, problemWords(p), accent)
 	}
 	y += 2
 	chosen := u.orbital()

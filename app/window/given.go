@@ -68,7 +68,7 @@ func (d *givenDrawing) heading(text string) {
 func (d *givenDrawing) problem(concerns ...work.Concern) {
 	for _, c := range concerns {
 		if p := d.state.Problem(c); p != nil {
-			d.words(p.Error(), d.accent)
+			d.words(problemText(p), d.accent)
 		}
 	}
 }
@@ -227,14 +227,14 @@ func (d *givenDrawing) tolerance() {
 func (d *givenDrawing) frameOfAxes() {
 	fit := d.state.Group.Fit
 	d.heading(say("frames.heading"))
-	convention := notation.Convention(fit, d.state.Group.CoreNames())
+	convention := notation.ConventionIn(texts(), fit, d.state.Group.CoreNames())
 	for _, clause := range strings.Split(convention, "; ") {
 		if clause != "" {
 			d.line(notation.Sentence(clause), d.plain)
 		}
 	}
-	d.words(say("frames.rule", notation.Source(fit.Rule)), d.quiet)
-	for _, tie := range notation.Ties(fit.Ties) {
+	d.words(say("frames.rule", notation.SourceIn(texts(), fit.Rule)), d.quiet)
+	for _, tie := range notation.TiesIn(texts(), fit.Ties) {
 		d.words(tie, d.quiet)
 	}
 	d.problem(work.ConcernFrame, work.ConcernZ, work.ConcernX)
@@ -262,7 +262,7 @@ func (d *givenDrawing) frames() {
 			continue
 		}
 		now := s.Frame == name || s.Frame == "" && name == symmetry.FrameDefault
-		offer(name, say("frames.ruleHint", name, notation.Source(f.Rule)), now && !byHand, func() { d.chooseFrame(name) })
+		offer(name, say("frames.ruleHint", name, notation.SourceIn(texts(), f.Rule)), now && !byHand, func() { d.chooseFrame(name) })
 	}
 	offer(say("frames.byHand"), say("frames.byHandHint"), byHand, d.askAxes)
 	d.y += chipHeight + 4
@@ -340,7 +340,7 @@ func (d *givenDrawing) functions() {
 	d.problem(work.ConcernBasis)
 	if b := d.state.Basis; b != nil && len(s.Basis) > 0 {
 		for _, n := range b.Notes {
-			d.words(notation.Note(n, b.Basis, s.Basis, g.AtomNames()), d.quiet)
+			d.words(notation.NoteIn(texts(), n, b.Basis, s.Basis, g.AtomNames()), d.quiet)
 		}
 		d.list(b)
 	} else if len(s.Basis) == 0 {

@@ -200,7 +200,7 @@ func (u *ui) sentence() notation.Text {
 	s, st := u.now(), u.state
 	op, ok := u.operation()
 	if p := st.Problem(work.ConcernOperation); p != nil {
-		return notation.Words(p.Error())
+		return problemWords(p)
 	}
 	if !ok || st.Group == nil {
 		return notation.Words(say("ledger.choose"))

@@ -22,13 +22,15 @@ func speak(l assets.Language) {
 
 // say is the text of a key in the language in force; English unless speak was
 // called.
-func say(key string, arguments ...any) string {
-	texts := spoken.Load()
-	if texts == nil {
-		english := assets.TextsIn(assets.English)
-		texts = &english
+func say(key string, arguments ...any) string { return texts().Say(key, arguments...) }
+
+// texts are those of the language in force, for sentences that other packages
+// make.
+func texts() assets.Texts {
+	if t := spoken.Load(); t != nil {
+		return *t
 	}
-	return texts.Say(key, arguments...)
+	return assets.TextsIn(assets.English)
 }
 
 // fill puts set texts in the places {} of a sentence, in their order.

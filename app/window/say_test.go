@@ -95,7 +95,7 @@ func TestEveryKeyHasATextAndEveryTextIsUsed(t *testing.T) {
 }
 
 // elsewhere are the files of texts that other packages than this one use.
-var elsewhere = map[string]bool{}
+var elsewhere = map[string]bool{"axes": true, "notes": true}
 
 // literalAt is the place of the first argument if it is that literal.
 func literalAt(call *ast.CallExpr, text string) token.Pos {
@@ -202,5 +202,41 @@ func TestPartsStandInSentences(t *testing.T) {
 	got := fill("{} carries {} into {}", notation.Words("a"), notation.Words("b"), notation.Words("c")).String()
 	if got != "a carries b into c" {
 		t.Error(got)
+	}
+}
+
+func TestTheWholeWindowSpeaksTheChosenLanguage(t *testing.T) {
+	defer speak(assets.English)
+	b := newBench(t, t.TempDir())
+	b.open("square-plane")
+	b.setLanguage(string(assets.German))
+	if got := b.win.MainMenu().Items[0].Label; got != "Datei" {
+		t.Errorf("the first menu is %q", got)
+	}
+	said := b.sentence().String()
+	if !strings.Contains(said, "aus ") && !strings.Contains(said, "führt") {
+		t.Errorf("it says %q", said)
+	}
+	english := regexp.MustCompile(`\b(the|of|and|with|along|rule|axis|are|operations|functions|on)\b`)
+	for _, p := range []*pane{b.given, b.follows, b.detail, b.ledger, b.said} {
+		board := p.lay()
+		for _, s := range board.scene.Shapes {
+			// The title of the molecule is the file's.
+			if text := textOf(s.Geometry); english.MatchString(text) && !strings.Contains(b.state.Group.Molecule.Title, strings.TrimSpace(text)) {
+				t.Errorf("it shows %q", text)
+			}
+		}
+		for _, s := range board.spots {
+			if english.MatchString(s.hint) {
+				t.Errorf("it hints %q", s.hint)
+			}
+		}
+	}
+	if kept := b.session.Preferences().Language; kept != "de" {
+		t.Errorf("%q is kept", kept)
+	}
+	b.setLanguage(string(assets.English))
+	if got := b.win.MainMenu().Items[0].Label; got != "File" {
+		t.Errorf("the first menu is %q", got)
 	}
 }
