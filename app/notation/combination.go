@@ -54,6 +54,23 @@ func Combination(terms []orbitals.Term, write Coefficient) []string {
 	return parts
 }
 
+// CombinationText sets a sum of functions on one line, each named by name from
+// its number, counted from 1.
+func CombinationText(terms []orbitals.Term, name func(number string) Text, write Coefficient) Text {
+	var t Text
+	for _, part := range Combination(terms, write) {
+		if len(t) > 0 {
+			t = t.Then(Words(" "))
+		}
+		before, number, named := strings.Cut(part, "φ")
+		t = t.Then(Words(Minus(before)))
+		if named {
+			t = t.Then(name(number))
+		}
+	}
+	return t
+}
+
 // Terms makes a sparse sum of a list of coefficients, one a function.
 func Terms(coefficients []float64) []orbitals.Term {
 	var terms []orbitals.Term

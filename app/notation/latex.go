@@ -1,10 +1,13 @@
 package notation
 
-import "strings"
+import (
+	"strings"
+	"unicode"
+)
 
 // LaTeX writes t as the inside of a formula (math mode, without dollar
-// signs): italic runs as variables, upright ones in \mathrm. Only commands
-// of LaTeX's base are used.
+// signs): italic runs as variables, upright ones in \mathrm, words in \mbox,
+// roots and cosines as such. Only commands of LaTeX's base are used.
 func (t Text) LaTeX() string {
 	var b strings.Builder
 	for i := 0; i < len(t); {
@@ -25,27 +28,97 @@ func (t Text) LaTeX() string {
 }
 
 func latexRun(r Run) string {
-	body := latexLetters.Replace(r.Text)
-	if !r.Italic && needsUpright(r.Text) {
-		return `\mathrm{` + body + `}`
+	switch {
+	case r.Italic:
+		return latexFormula(r.Text)
+	case isProse(r.Text):
+		return `\mbox{` + LaTeXWords(r.Text) + `}`
+	case strings.ContainsFunc(strings.ReplaceAll(r.Text, "cos", ""), isLatin):
+		return `\mathrm{` + latexLetters.Replace(r.Text) + `}`
 	}
-	return body
+	return latexFormula(r.Text)
 }
 
-// needsUpright tells whether a run has letters that math mode would slant.
-func needsUpright(s string) bool {
-	return strings.ContainsFunc(s, func(r rune) bool {
-		return r >= 'a' && r <= 'z' || r >= 'A' && r <= 'Z' || r == ' '
-	})
+// isLatin tells the letters that math mode would slant.
+func isLatin(r rune) bool { return r >= 'a' && r <= 'z' || r >= 'A' && r <= 'Z' }
+
+// isProse tells whether a run has words with blanks between, which math mode
+// would swallow.
+func isProse(s string) bool {
+	return strings.Contains(s, " ") && strings.ContainsFunc(strings.ReplaceAll(s, "cos", ""), isLatin)
 }
 
-// latexLetters writes the signs that this program prints. The superscript
-// digits occur only within indices.
+// latexFormula writes numbers in closed form: √3/2, √(5 + √5), 2cos(2π/7).
+func latexFormula(s string) string {
+	before, after, found := strings.Cut(s, "√")
+	out := latexLetters.Replace(before)
+	if !found {
+		return out
+	}
+	under, rest := leadingDigits(after), ""
+	if strings.HasPrefix(after, "(") {
+		end := closing(after)
+		under, rest = after[1:end], strings.TrimPrefix(after[end:], ")")
+	} else {
+		rest = after[len(under):]
+	}
+	return out + `\sqrt{` + latexFormula(under) + `}` + latexFormula(rest)
+}
+
+// closing is the place of the bracket that closes the first one; the length of
+// s where there is none.
+func closing(s string) int {
+	depth := 0
+	for i, r := range s {
+		switch r {
+		case '(':
+			depth++
+		case ')':
+			if depth--; depth == 0 {
+				return i
+			}
+		}
+	}
+	return len(s)
+}
+
+// latexLetters writes in math mode the signs that this program prints. The
+// superscript digits occur only within indices.
 var latexLetters = strings.NewReplacer(
 	"′", "'", "″", "''", "‴", "'''", "−", "-",
-	"²", "^2", "³", "^3",
-	"σ", `\sigma `, "π", `\pi `, "δ", `\delta `, "φ", `\varphi `, "γ", `\gamma `,
+	"²", "^2", "³", "^3", "cos", `\cos `,
+	"σ", `\sigma `, "π", `\pi `, "δ", `\delta `, "φ", `\varphi `, "γ", `\gamma `, "ψ", `\psi `,
 	"Σ", `\Sigma `, "Π", `\Pi `, "Δ", `\Delta `, "Φ", `\Phi `, "Γ", `\Gamma `,
-	"∞", `\infty `, "∥", `\parallel `, "⊥", `\perp `, "½", `\tfrac12 `, "°", `^\circ `,
-	"·", `\cdot `, "±", `\pm `, "≤", `\le `, "≥", `\ge `, "√", `\surd `,
+	"∞", `\infty `, "∥", `\parallel `, "⊥", `\perp `, "½", `\frac{1}{2}`, "°", `^\circ `,
+	"·", `\cdot `, "±", `\pm `, "≤", `\le `, "≥", `\ge `, "≈", `\approx `, "√", `\surd `, "×", `\times `,
+	"→", `\to `, "⇒", `\Rightarrow `, "…", `\ldots `, "⊕", `\oplus `, "Å", `\mbox{\AA}`,
+	`\`, `\backslash `, "{", `\{`, "}", `\}`, "$", `\$`, "~", `\sim `, "^", `\wedge `,
 	"%", `\%`, "#", `\#`, "&", `\&`, "_", `\_`)
+
+// LaTeXWords writes a sentence, a name or a title outside of formulas. What
+// LaTeX would take for commands is escaped; signs that its text typefaces lack
+// become formulas. Letters with accents stay: LaTeX reads UTF-8.
+func LaTeXWords(s string) string {
+	var b strings.Builder
+	for _, r := range s {
+		c := string(r)
+		switch escaped, special := latexSpecial[r]; {
+		case special:
+			b.WriteString(escaped)
+		case unicode.IsControl(r):
+			b.WriteByte(' ')
+		default:
+			if math := latexLetters.Replace(c); math != c {
+				c = "$" + strings.TrimRight(math, " ") + "$"
+			}
+			b.WriteString(c)
+		}
+	}
+	return b.String()
+}
+
+var latexSpecial = map[rune]string{
+	'\\': `\textbackslash{}`, '{': `\{`, '}': `\}`, '$': `\$`, '&': `\&`, '#': `\#`, '%': `\%`, '_': `\_`,
+	'^': `\textasciicircum{}`, '~': `\textasciitilde{}`, '<': `$<$`, '>': `$>$`, '|': `$|$`,
+	'Å': `\AA{}`, '…': `\ldots{}`, '–': `--`, '²': `$^2$`, '³': `$^3$`,
+}

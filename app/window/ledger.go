@@ -156,7 +156,7 @@ func combination(terms []orbitals.Term, name func(number string) notation.Text, 
 	if len(terms) > most {
 		return notation.Words(say("ledger.sumOf", len(terms)))
 	}
-	return setCombination(terms, name, shortCoefficient)
+	return notation.CombinationText(terms, name, shortCoefficient)
 }
 
 // shortCoefficient is exact where that is short.
@@ -165,22 +165,6 @@ func shortCoefficient(x float64) string {
 		return exact
 	}
 	return notation.Short(x, 3)
-}
-
-// setCombination sets a sum with its functions named by name.
-func setCombination(terms []orbitals.Term, name func(number string) notation.Text, write notation.Coefficient) notation.Text {
-	var t notation.Text
-	for _, part := range notation.Combination(terms, write) {
-		if len(t) > 0 {
-			t = t.Then(notation.Words(" "))
-		}
-		before, number, named := strings.Cut(part, "φ")
-		t = t.Then(notation.Words(notation.Minus(before)))
-		if named {
-			t = t.Then(name(number))
-		}
-	}
-	return t
 }
 
 // drawSaid draws the sentence that says what the function has become.
@@ -308,7 +292,7 @@ func (u *ui) imageText(op work.Operation) notation.Text {
 	if op.Family {
 		write = shortCoefficient // for any angle there is some long cosine
 	}
-	t := setCombination(terms, name, write)
+	t := notation.CombinationText(terms, name, write)
 	// The function that it has become is named, where it is one.
 	if s.Projection.TheSubject() == study.SubjectFunction && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
 		f := st.Basis.Functions[terms[0].Function]
