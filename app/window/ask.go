@@ -3,7 +3,6 @@
 package window
 
 import (
-	"os"
 	"path/filepath"
 	"slices"
 	"strings"
@@ -30,6 +29,7 @@ type answerEntry struct {
 	widget.Entry
 	escape func()
 	tab    func()
+	move   func(by int) // through a list below
 }
 
 // TypedKey implements fyne.Focusable.
@@ -39,6 +39,14 @@ func (e *answerEntry) TypedKey(k *fyne.KeyEvent) {
 		e.escape()
 	case k.Name == fyne.KeyTab && e.tab != nil:
 		e.tab()
+	case e.move != nil && k.Name == fyne.KeyDown:
+		e.move(1)
+	case e.move != nil && k.Name == fyne.KeyUp:
+		e.move(-1)
+	case e.move != nil && k.Name == fyne.KeyPageDown:
+		e.move(10)
+	case e.move != nil && k.Name == fyne.KeyPageUp:
+		e.move(-10)
 	default:
 		e.Entry.TypedKey(k)
 	}
@@ -118,14 +126,15 @@ func (q *question) close() {
 	q.u.win.Canvas().Focus(q.u.view)
 }
 
-func (q *question) submit() {
-	q.asked(q.entry.Text, func(err error) {
-		if err == nil {
-			q.close()
-			return
-		}
-		q.say(err.Error())
-	})
+func (q *question) submit() { q.asked(q.entry.Text, q.answered) }
+
+// answered closes the sheet, or says what is wrong.
+func (q *question) answered(err error) {
+	if err == nil {
+		q.close()
+		return
+	}
+	q.say(err.Error())
 }
 
 // say shows what is wrong, in as many lines as the sheet is wide.
@@ -190,106 +199,4 @@ func (u *ui) askReplace(path string, replace func()) {
 	popup.Resize(fyne.NewSize(width, popup.MinSize().Height))
 	popup.Resize(fyne.NewSize(width, popup.MinSize().Height)) // the text has been wrapped
 	u.win.Canvas().Focus(ok)
-}
-
-// askPath asks for the path of a file that is there.
-func (u *ui) askPath(title, text, now string, answer func(path string, done func(error))) {
-	u.askAnyPath(title, text, now, say("files.noFile"), answer)
-}
-
-// askNewPath asks for the path of a file that is to be written.
-func (u *ui) askNewPath(title, text, now string, answer func(path string, done func(error))) {
-	u.askAnyPath(title, text, now, say("files.newFile"), answer)
-}
-
-// askAnyPath asks for a path, with completion by Tab and the entries of the
-// folder below; none is shown where there are none.
-func (u *ui) askAnyPath(title, text, now, none string, answer func(path string, done func(error))) {
-	list := widget.NewLabel("")
-	list.Wrapping = fyne.TextWrapWord
-	q := u.askLater(title, text, now, func(text string, done func(error)) {
-		answer(expanded(strings.TrimSpace(text)), done)
-	}, list)
-	show := func(path string) {
-		names := completions(path)
-		const most = 24
-		text := strings.Join(names[:min(most, len(names))], "   ")
-		if len(names) > most {
-			text += "   …"
-		}
-		if text == "" {
-			text = none
-		}
-		list.SetText(text)
-		q.fitted()
-	}
-	q.entry.OnChanged = func(s string) { u.guard(func() { show(s) }) }
-	q.entry.tab = func() {
-		u.guard(func() {
-			if longer := completed(q.entry.Text); longer != q.entry.Text {
-				q.entry.SetText(longer)
-				q.entry.CursorColumn = len([]rune(longer))
-				q.entry.Refresh()
-			}
-		})
-	}
-	show(now)
-}
-
-// expanded replaces a leading ~ by the home folder and makes a path absolute;
-// names such as "demo:water" stay.
-func expanded(path string) string {
-	if path == "" || strings.HasPrefix(path, "demo:") || strings.HasPrefix(path, "ideal:") {
-		return path
-	}
-	if home, err := os.UserHomeDir(); err == nil && (path == "~" || strings.HasPrefix(path, "~/")) {
-		path = filepath.Join(home, path[1:])
-	}
-	if absolute, err := filepath.Abs(path); err == nil {
-		return absolute
-	}
-	return path
-}
-
-// completions are the entries of a folder that go on from what is typed;
-// folders end in a slash and come first.
-func completions(typed string) []string {
-	folder, begin := filepath.Split(typed)
-	in := expanded(folder)
-	if folder == "" {
-		in = "."
-	}
-	entries, err := os.ReadDir(in)
-	if err != nil {
-		return nil
-	}
-	var folders, files []string
-	for _, e := range entries {
-		name := e.Name()
-		if !strings.HasPrefix(name, begin) || strings.HasPrefix(name, ".") && !strings.HasPrefix(begin, ".") {
-			continue
-		}
-		if info, err := os.Stat(filepath.Join(in, name)); err == nil && info.IsDir() {
-			folders = append(folders, name+"/")
-		} else {
-			files = append(files, name)
-		}
-	}
-	return append(folders, files...)
-}
-
-// completed is what is typed, with what all completions go on with.
-func completed(typed string) string {
-	names := completions(typed)
-	if len(names) == 0 {
-		return typed
-	}
-	common := names[0]
-	for _, n := range names[1:] {
-		for !strings.HasPrefix(n, common) {
-			common = common[:len(common)-1]
-		}
-	}
-	folder, _ := filepath.Split(typed)
-	return folder + common
 }

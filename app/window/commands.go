@@ -128,7 +128,8 @@ func (u *ui) fileCommands() []*command {
 		{key: "menu.demos", menu: u.demoCommands()},
 		(&command{key: "menu.paste", do: u.paste}).byHand("menu.keyPaste"),
 		rule,
-		(&command{key: "menu.saveStudy", do: u.askSave}).withKey(fyne.KeyS, control),
+		(&command{key: "menu.saveStudy", do: u.save}).withKey(fyne.KeyS, control),
+		(&command{key: "menu.saveStudyAs", do: u.askSave}).withKey(fyne.KeyS, control|shift),
 		(&command{key: "menu.savePicture", do: u.askPicture}).withKey(fyne.KeyE, control),
 		rule,
 		quit,
@@ -252,6 +253,8 @@ func (u *ui) figureCommands() []*command {
 
 func (u *ui) helpCommands() []*command {
 	return []*command{
+		(&command{key: "menu.everything", do: u.showEverything}).withKey(fyne.KeyF, control),
+		rule,
 		(&command{key: "menu.keys", do: u.showKeys}).withKey(fyne.KeyH, control|shift),
 		{key: "menu.about", do: u.about},
 	}

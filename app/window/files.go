@@ -12,6 +12,7 @@ import (
 	"os"
 	"path/filepath"
 	"strings"
+	"time"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -110,6 +111,8 @@ func (u *ui) openStudy(path string, done func(error)) {
 	u.try(s, func(err error) {
 		if err == nil && strings.HasSuffix(path, study.Extension) {
 			u.keepFile(expanded(path), s)
+			_ = u.session.AddRecent(expanded(path))
+			u.updateMenus()
 		}
 		u.tell(err, done)
 	})
@@ -164,7 +167,55 @@ func (u *ui) askOpen() {
 		})
 }
 
-// askSave saves the study. Its own file is written over without a question.
+// save saves the study to its own file without a question, or asks for one.
+func (u *ui) save() {
+	if !u.hasFile() {
+		u.askSave()
+		return
+	}
+	if err := u.writeStudy(u.studyFile, true); err != nil {
+		u.notice = say("errors.aboutSaving", err.Error())
+		u.given.Update()
+		return
+	}
+	u.remark(say("files.saved", filepath.Base(u.studyFile)))
+}
+
+// writeStudy writes the study at hand, over a file that is there only if told.
+func (u *ui) writeStudy(path string, force bool) error {
+	s := u.now()
+	err := export.WriteFile(path, force, func(w io.Writer) error {
+		text, err := study.Encode(s)
+		if err == nil {
+			_, err = w.Write(text)
+		}
+		return err
+	})
+	if err == nil {
+		u.keepFile(path, s)
+		_ = u.session.AddRecent(path)
+		u.updateMenus()
+	}
+	return err
+}
+
+// remark shows a few words at the foot of the picture for a while.
+func (u *ui) remark(text string) {
+	at := u.app.Driver().AbsolutePositionForObject(u.view)
+	size := u.view.Size()
+	u.hints.show(text, fyne.NewPos(at.X+20, at.Y+size.Height-80))
+	const long = 4 * time.Second
+	time.AfterFunc(long, func() {
+		u.post(func() {
+			if u.hints.text.Text == text && !u.closing {
+				u.hints.show("", fyne.Position{})
+			}
+		})
+	})
+}
+
+// askSave asks for the file of the study. Its own file is written over without
+// a question.
 func (u *ui) askSave() {
 	now := u.folder() + "study" + study.Extension
 	if u.hasFile() {
@@ -175,20 +226,7 @@ func (u *ui) askSave() {
 			if !strings.HasSuffix(path, study.Extension) {
 				path += study.Extension
 			}
-			s := u.now()
-			save := func(force bool, done func(error)) {
-				err := export.WriteFile(path, force, func(w io.Writer) error {
-					text, err := study.Encode(s)
-					if err == nil {
-						_, err = w.Write(text)
-					}
-					return err
-				})
-				if err == nil {
-					u.keepFile(path, s)
-				}
-				done(err)
-			}
+			save := func(force bool, done func(error)) { done(u.writeStudy(path, force)) }
 			if u.hasFile() && path == u.studyFile {
 				save(true, done)
 				return
