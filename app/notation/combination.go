@@ -2,6 +2,7 @@ package notation
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"lobewright/orbitals"
@@ -17,6 +18,32 @@ func ExactCoefficient(x float64) string {
 		return exact
 	}
 	return Decimal(x, 4)
+}
+
+// OneKind is ExactCoefficient for a sum whose numbers are of one kind besides
+// halves and roots. Where it would mix numbers with √5 and cosines, all are
+// written as cosines; where it would mix closed forms and decimals, all are
+// decimals.
+func OneKind(terms []orbitals.Term) Coefficient {
+	all := func(forms ...func(float64) string) bool {
+		return !slices.ContainsFunc(terms, func(t orbitals.Term) bool { return firstForm(math.Abs(t.Coefficient), forms) == "" })
+	}
+	switch {
+	case all(halves, roots, golden):
+		return ExactCoefficient
+	case all(halves, roots, cosines):
+		return func(x float64) string { return firstForm(x, []func(float64) string{halves, roots, cosines}) }
+	}
+	return DecimalCoefficient
+}
+
+func firstForm(x float64, forms []func(float64) string) string {
+	for _, form := range forms {
+		if s := form(x); s != "" {
+			return s
+		}
+	}
+	return ""
 }
 
 // DecimalCoefficient writes whole numbers as such, others with three decimals.

@@ -50,19 +50,24 @@ func isProse(s string) bool {
 
 // latexFormula writes numbers in closed form: √3/2, √(5 + √5), 2cos(2π/7).
 func latexFormula(s string) string {
-	before, after, found := strings.Cut(s, "√")
+	before, under, rest, found := cutRoot(s)
 	out := latexLetters.Replace(before)
 	if !found {
 		return out
 	}
-	under, rest := leadingDigits(after), ""
+	return out + `\sqrt{` + latexFormula(under) + `}` + latexFormula(rest)
+}
+
+// cutRoot cuts a formula at its first root into what stands before it, what
+// stands under it, digits or what is in brackets, and the rest.
+func cutRoot(s string) (before, under, rest string, found bool) {
+	before, after, found := strings.Cut(s, "√")
 	if strings.HasPrefix(after, "(") {
 		end := closing(after)
-		under, rest = after[1:end], strings.TrimPrefix(after[end:], ")")
-	} else {
-		rest = after[len(under):]
+		return before, after[1:end], strings.TrimPrefix(after[end:], ")"), found
 	}
-	return out + `\sqrt{` + latexFormula(under) + `}` + latexFormula(rest)
+	under = leadingDigits(after)
+	return before, under, after[len(under):], found
 }
 
 // closing is the place of the bracket that closes the first one; the length of
@@ -100,6 +105,9 @@ var latexLetters = strings.NewReplacer(
 // become formulas. Letters with accents stay: LaTeX reads UTF-8.
 func LaTeXWords(s string) string {
 	var b strings.Builder
+	if before, under, rest, found := cutRoot(s); found && under != "" {
+		return LaTeXWords(before) + `$\sqrt{` + latexFormula(under) + `}$` + LaTeXWords(rest)
+	}
 	for _, r := range s {
 		c := string(r)
 		switch escaped, special := latexSpecial[r]; {

@@ -127,3 +127,26 @@ func TestClosedFormsHaveLoweredNumbers(t *testing.T) {
 		t.Errorf("set as %s", got)
 	}
 }
+
+// The images of partners under turns by 36° hold (1 + √5)/4 beside √(10 − 2√5)/4,
+// which is cos 3π/10: one line has one kind of numbers.
+func TestASumHasOneKindOfNumbers(t *testing.T) {
+	turned := func(angle float64) []orbitals.Term {
+		return []orbitals.Term{{Function: 0, Coefficient: math.Cos(angle)}, {Function: 1, Coefficient: -math.Sin(angle)}}
+	}
+	for _, c := range []struct {
+		terms []orbitals.Term
+		want  string
+	}{
+		{turned(math.Pi / 5), "cos(π/5) φ1 − cos(3π/10) φ2"},
+		{turned(math.Pi / 3), "1/2 φ1 − √3/2 φ2"},
+		{turned(math.Pi / 4), "√2/2 φ1 − √2/2 φ2"},
+		{turned(1), "0.540 φ1 − 0.841 φ2"},
+		{[]orbitals.Term{{Function: 0, Coefficient: (1 + math.Sqrt(5)) / 4}, {Function: 1, Coefficient: -0.5}}, "(1 + √5)/4 φ1 − 1/2 φ2"},
+		{[]orbitals.Term{{Function: 0, Coefficient: 0.5}, {Function: 1, Coefficient: 0.123}}, "0.500 φ1 + 0.123 φ2"},
+	} {
+		if got := CombinationText(c.terms, PhiText, OneKind(c.terms)).String(); got != c.want {
+			t.Errorf("written %q, want %q", got, c.want)
+		}
+	}
+}

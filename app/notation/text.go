@@ -69,6 +69,19 @@ func (t Text) add(r Run) Text {
 	return append(t, r)
 }
 
+// Fill puts set texts in the places {} of a sentence, in their order. A place
+// that is left over stays empty.
+func Fill(sentence string, parts ...Text) Text {
+	var t Text
+	for i, words := range strings.Split(sentence, "{}") {
+		if i > 0 && i <= len(parts) {
+			t = t.Then(parts[i-1])
+		}
+		t = t.Then(Words(words))
+	}
+	return t
+}
+
 // String is the characters of t without their places; digits that stand
 // raised become superscript characters.
 func (t Text) String() string {

@@ -3,7 +3,6 @@
 package window
 
 import (
-	"strings"
 	"sync/atomic"
 
 	"lobewright/app/notation"
@@ -35,12 +34,5 @@ func texts() assets.Texts {
 
 // fill puts set texts in the places {} of a sentence, in their order.
 func fill(sentence string, parts ...notation.Text) notation.Text {
-	var t notation.Text
-	for i, words := range strings.Split(sentence, "{}") {
-		if i > 0 && i <= len(parts) {
-			t = t.Then(parts[i-1])
-		}
-		t = t.Then(notation.Words(words))
-	}
-	return t
+	return notation.Fill(sentence, parts...)
 }
