@@ -95,3 +95,16 @@ func Harmonics(l int, direction mgl64.Vec3) []float64 {
 	}
 	panic(fmt.Sprintf("orbitals: shell %d has no named functions", l))
 }
+
+// AzimuthalParts are the parts that a function has of cos mφ and of sin mφ
+// about z, for m > 0; both are 0 where its shell has none.
+func AzimuthalParts(f Function, m int) (cosine, sine float64) {
+	if m < 1 || m > f.Shell {
+		return 0, 0
+	}
+	return f.Vector[partnerIndex(f.Shell, m, 0)], f.Vector[partnerIndex(f.Shell, m, 1)]
+}
+
+// Order is m of a function of shell l, by its index in FunctionNames: positive
+// for cos mφ, negative for sin |m|φ.
+func Order(l, index int) int { return orders[l][index] }

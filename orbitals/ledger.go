@@ -3,6 +3,8 @@ package orbitals
 import (
 	"fmt"
 	"math"
+
+	"lobewright/symmetry"
 )
 
 // ByCharacter as the element of a Ledger weighs the operations with the
@@ -33,13 +35,18 @@ type LedgerRow struct {
 // matrix elements, or ByCharacter. Without partners to tell apart (dimension 1)
 // the two are the same.
 func (r *Representation) Ledger(function, irrep int, element [2]int) (*Ledger, error) {
-	if function < 0 || function >= r.Size() {
-		return nil, fmt.Errorf("there is no function %d: the basis has functions 1 to %d", function+1, r.Size())
-	}
 	if irrep < 0 || irrep >= len(r.setting.Irreps) {
 		return nil, fmt.Errorf("there is no irrep %d: %s has %d", irrep+1, r.setting.Symbol, len(r.setting.Irreps))
 	}
-	a := r.setting.Irreps[irrep]
+	return r.LedgerIn(function, irrep, r.setting.Irreps[irrep], element)
+}
+
+// LedgerIn is Ledger with the irrep of that index in partners of its own, as
+// Irrep.WithPartners makes them.
+func (r *Representation) LedgerIn(function, irrep int, a symmetry.Irrep, element [2]int) (*Ledger, error) {
+	if function < 0 || function >= r.Size() {
+		return nil, fmt.Errorf("there is no function %d: the basis has functions 1 to %d", function+1, r.Size())
+	}
 	k, l := element[0], element[1]
 	if element != ByCharacter && (min(k, l) < 0 || max(k, l) >= a.Dimension) {
 		return nil, fmt.Errorf("%s has no matrix element [%d,%d]: its matrices have %d rows and columns", a.Label, k+1, l+1, a.Dimension)

@@ -14,7 +14,7 @@ import (
 type GroupOrbital struct {
 	Irrep         int // index in Projection.Irreps
 	Copy, Partner int
-	Orbit         int       // the orbit of functions on which the copy lives
+	Orbit         int       // the orbit of functions on which the copy lives, −1 where copies are mixed
 	Coefficients  []float64 // one a function
 }
 

@@ -12,7 +12,7 @@ import (
 // what became known and why the rest did not; done is false if ctx was
 // cancelled.
 func (w *Work) advance(ctx context.Context, s study.Study, asked [stages]any, begin func(Progress, chain)) (c chain, problems []*Problem, done bool) {
-	order := []Stage{StageStructure, StageGroup, StageBasis, StageOrbitals, StageOrbital, StageLedger, StagePlay}
+	order := []Stage{StageStructure, StageGroup, StageBasis, StageOrbitals, StageOrbital, StageLedger, StagePlay, StageMatch}
 	progress := Progress{}
 	for _, key := range asked {
 		if key != nil {
@@ -91,13 +91,17 @@ func (w *Work) step(ctx context.Context, s study.Study, stage Stage, c *chain, s
 	case StageBasis:
 		c.Basis, err = w.basisOf(ctx, c.Group, s)
 	case StageOrbitals:
-		c.Orbitals, err = w.orbitalsOf(ctx, c.Basis)
+		if c.Orbitals, err = w.orbitalsOf(ctx, c.Basis); err == nil {
+			c.Orbitals, err = w.turnedOf(c.Orbitals, s)
+		}
 	case StageOrbital:
 		c.Orbital, err = c.Orbitals.Orbital(s.Projection)
 	case StageLedger:
-		c.Ledger, err = w.ledgerOf(ctx, c.Basis, s.Projection)
+		c.Ledger, err = w.ledgerOf(ctx, c.Basis, s)
 	case StagePlay:
 		err = w.playWhatIsThere(ctx, s, c)
+	case StageMatch:
+		c.Match, err = w.matchOf(ctx, c.Orbitals, s)
 	}
 	return blame(stage, ConcernProgram, err)
 }

@@ -43,15 +43,26 @@ func (w *Work) keyOfBasis(s study.Study) basisKey {
 // feed.
 func joinBasis(s study.Study) string { return strings.Join(s.Basis, "\n") }
 
-type orbitalKey struct {
+// orbitalsKey has, beside the basis, only what is turned or mixed, so that
+// choosing another group orbital projects nothing anew.
+type orbitalsKey struct {
 	basisKey
+	turn string
+}
+
+func (w *Work) keyOfOrbitals(s study.Study) orbitalsKey {
+	return orbitalsKey{w.keyOfBasis(s), turnKey(s)}
+}
+
+type orbitalKey struct {
+	orbitalsKey
 	irrep         string
 	copy, partner int
 }
 
 func (w *Work) keyOfOrbital(s study.Study) orbitalKey {
 	p := s.Projection
-	return orbitalKey{w.keyOfBasis(s), p.Irrep, max(p.Copy, 1), max(p.Partner, 1)}
+	return orbitalKey{w.keyOfOrbitals(s), p.Irrep, max(p.Copy, 1), max(p.Partner, 1)}
 }
 
 type ledgerKey struct {
@@ -59,11 +70,12 @@ type ledgerKey struct {
 	function int
 	irrep    string
 	element  [2]int
+	turn     string
 }
 
 func (w *Work) keyOfLedger(s study.Study) ledgerKey {
 	p := s.Projection
-	return ledgerKey{w.keyOfBasis(s), p.Function, p.Irrep, p.TheElement()}
+	return ledgerKey{w.keyOfBasis(s), p.Function, p.Irrep, p.TheElement(), turnKey(s)}
 }
 
 type playKey struct {
@@ -95,3 +107,10 @@ func angleOf(s study.Study) float64 {
 	}
 	return 0
 }
+
+type matchKey struct {
+	orbitalsKey
+	central int
+}
+
+func (w *Work) keyOfMatch(s study.Study) matchKey { return matchKey{w.keyOfOrbitals(s), s.Central} }

@@ -19,7 +19,7 @@ func (w *Work) Ledger(ctx context.Context, s study.Study) (*Ledger, error) {
 	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.ledgerOf(ctx, basis, s.Projection)
+	return w.ledgerOf(ctx, basis, s)
 }
 
 type ledgerInputs struct {
@@ -27,10 +27,12 @@ type ledgerInputs struct {
 	function int
 	irrep    string
 	element  [2]int
+	turn     string
 }
 
-func (w *Work) ledgerOf(ctx context.Context, basis *Basis, p study.Projection) (*Ledger, error) {
-	return w.ledgers.get(ledgerInputs{basis, p.Function, p.Irrep, p.TheElement()}, func() (*Ledger, error) {
+func (w *Work) ledgerOf(ctx context.Context, basis *Basis, s study.Study) (*Ledger, error) {
+	p := s.Projection
+	return w.ledgers.get(ledgerInputs{basis, p.Function, p.Irrep, p.TheElement(), turnKey(s)}, func() (*Ledger, error) {
 		setting := basis.Fit.Setting
 		if setting.Infinite() {
 			return nil, blame(StageLedger, ConcernStructure, fmt.Errorf(
@@ -43,7 +45,11 @@ func (w *Work) ledgerOf(ctx context.Context, basis *Basis, p study.Projection) (
 		if err != nil {
 			return nil, blame(StageLedger, ConcernIrrep, err)
 		}
-		element, err := elementOf(p, setting.Irreps[irrep])
+		turned, err := turnedIrrep(setting.Irreps[irrep], s.Turn)
+		if err != nil {
+			return nil, blame(StageLedger, ConcernPartner, err)
+		}
+		element, err := elementOf(p, turned)
 		if err != nil {
 			return nil, blame(StageLedger, ConcernElement, err)
 		}
@@ -51,24 +57,24 @@ func (w *Work) ledgerOf(ctx context.Context, basis *Basis, p study.Projection) (
 		if err != nil {
 			return nil, err
 		}
-		ledger, err := representation.Ledger(p.Function-1, irrep, element)
+		ledger, err := representation.LedgerIn(p.Function-1, irrep, turned, element)
 		if err != nil {
 			return nil, blame(StageLedger, ConcernFunction, err)
 		}
-		partners, err := partnersOf(representation, p.Function-1, irrep, setting.Irreps[irrep].Dimension)
+		partners, err := partnersOf(representation, p.Function-1, irrep, turned)
 		if err != nil {
 			return nil, blame(StageLedger, ConcernFunction, err)
 		}
-		return &Ledger{basis, ledger, setting.Irreps[irrep], partners}, nil
+		return &Ledger{basis, ledger, turned, partners}, nil
 	})
 }
 
 // partnersOf lists the partners of an irrep in which a function has a part: of
 // partner l that is the sum with the matrix element l,l.
-func partnersOf(r *orbitals.Representation, function, irrep, dimension int) ([]int, error) {
+func partnersOf(r *orbitals.Representation, function, irrep int, a symmetry.Irrep) ([]int, error) {
 	var partners []int
-	for l := range dimension {
-		ledger, err := r.Ledger(function, irrep, [2]int{l, l})
+	for l := range a.Dimension {
+		ledger, err := r.LedgerIn(function, irrep, a, [2]int{l, l})
 		if err != nil {
 			return nil, err
 		}

@@ -23,13 +23,14 @@ const (
 	StageOrbital                // choosing a group orbital
 	StageLedger                 // projecting one function, operation by operation
 	StagePlay                   // what an operation makes of what is chosen
+	StageMatch                  // pairing group orbitals with functions of the central atom
 
 	stages = iota
 )
 
 // String is the key of the stage.
 func (s Stage) String() string {
-	return [stages]string{"structure", "group", "basis", "orbitals", "orbital", "ledger", "play"}[s]
+	return [stages]string{"structure", "group", "basis", "orbitals", "orbital", "ledger", "play", "match"}[s]
 }
 
 // A Concern is the key of the choice that a problem is about.
@@ -52,6 +53,7 @@ const (
 	ConcernPartner   Concern = "partner"
 	ConcernElement   Concern = "element"
 	ConcernOperation Concern = "operation"
+	ConcernCentral   Concern = "central"
 	// ConcernProgram is a fault of this program; Err wraps a *PanicError.
 	ConcernProgram Concern = "program"
 )

@@ -29,7 +29,7 @@ func TestEveryResultIsDelivered(t *testing.T) {
 	f := newFace(t, assets.Demos())
 	f.Request(wholeStudy)
 	s := f.settled()
-	if s.has() != [stages]bool{true, true, true, true, true, true, true} || s.AnyStale() || len(s.Problems) > 0 || !s.Study.Equal(wholeStudy) {
+	if s.has() != [stages]bool{true, true, true, true, true, true, true, true} || s.AnyStale() || len(s.Problems) > 0 || !s.Study.Equal(wholeStudy) {
 		t.Fatalf("%+v", s)
 	}
 	if s.Group.Fit.Setting.Symbol != "D4h" || s.Orbitals.Irreps[s.Orbital.Irrep].Label != "Eu" || s.Orbital.Partner != 1 || len(s.Ledger.Rows) != 16 || s.Play.Operation.Name != "C4(z)" {
@@ -78,7 +78,7 @@ func TestLinearMoleculesHaveNoLedgerAndNoProblem(t *testing.T) {
 	f := newFace(t, assets.Demos())
 	f.Request(study.Study{Structure: "demo:rod", Basis: []string{"C:p"}, Operation: "C(φ)", Angle: 90, Projection: study.Projection{Function: 1, Irrep: "Πu"}})
 	s := f.settled()
-	if s.has() != [stages]bool{true, true, true, true, true, false, true} || len(s.Problems) > 0 || s.AnyStale() {
+	if s.has() != [stages]bool{true, true, true, true, true, false, true, true} || len(s.Problems) > 0 || s.AnyStale() {
 		t.Fatalf("%+v", s)
 	}
 	turned := s.Study
@@ -106,7 +106,7 @@ func TestTheOldStaysUntilTheNewIsThere(t *testing.T) {
 	if s.Play != nil || s.Orbital != nil || s.Ledger != nil {
 		t.Error("what is not asked for stays")
 	}
-	if *s.Progress != (Progress{StageStructure, 0, 4, 0}) || s.Progress.Fraction() != 0 {
+	if *s.Progress != (Progress{StageStructure, 0, 5, 0}) || s.Progress.Fraction() != 0 {
 		t.Errorf("progress %+v", *s.Progress)
 	}
 	open()
@@ -172,24 +172,24 @@ func TestCancellingKeepsWhatIsThere(t *testing.T) {
 // what is blamed, that it is told once, and what stays: the old results of the
 // stages that fail, marked, and no mark on the others.
 func TestProblemsAreTiedToWhatTheyAreAbout(t *testing.T) {
-	S, G, B, O, C, L, P := StageStructure, StageGroup, StageBasis, StageOrbitals, StageOrbital, StageLedger, StagePlay
+	S, G, B, O, C, L, P, M := StageStructure, StageGroup, StageBasis, StageOrbitals, StageOrbital, StageLedger, StagePlay, StageMatch
 	for _, c := range []struct {
 		concern Concern
 		change  func(*study.Study)
 		stale   []Stage
 	}{
-		{ConcernStructure, func(s *study.Study) { s.Structure = "demo:nothing" }, []Stage{S, G, B, O, C, L, P}},
-		{ConcernStructure, func(s *study.Study) { s.Coordinates = "2\nbroken\nH 0 0" }, []Stage{S, G, B, O, C, L, P}},
-		{ConcernCore, func(s *study.Study) { s.Core = "Xx" }, []Stage{G, B, O, C, L, P}},
-		{ConcernCore, func(s *study.Study) { s.Core, s.Ignore = "9", "Cl" }, []Stage{G, B, O, C, L, P}},
-		{ConcernCore, func(s *study.Study) { s.Core, s.Ignore = "Cl", "Cl" }, []Stage{G, B, O, C, L, P}},
-		{ConcernIgnore, func(s *study.Study) { s.Ignore = "9" }, []Stage{G, B, O, C, L, P}},
-		{ConcernIgnore, func(s *study.Study) { s.Core, s.Ignore = "Cl", "9" }, []Stage{G, B, O, C, L, P}},
-		{ConcernIgnore, func(s *study.Study) { s.Ignore = "all" }, []Stage{G, B, O, C, L, P}},
-		{ConcernTolerance, func(s *study.Study) { s.Structure, s.Tolerance = "demo:water", 1 }, []Stage{G, B, O, C, L, P}},
-		{ConcernTolerance, func(s *study.Study) { s.Tolerance = -1 }, []Stage{G, B, O, C, L, P}},
-		{ConcernFrame, func(s *study.Study) { s.Frame = "crooked" }, []Stage{G, B, O, C, L, P}},
-		{ConcernBasis, func(s *study.Study) { s.Basis = []string{"Cl:sigma", "Cl:g"} }, []Stage{B, O, C, L}},
+		{ConcernStructure, func(s *study.Study) { s.Structure = "demo:nothing" }, []Stage{S, G, B, O, C, L, P, M}},
+		{ConcernStructure, func(s *study.Study) { s.Coordinates = "2\nbroken\nH 0 0" }, []Stage{S, G, B, O, C, L, P, M}},
+		{ConcernCore, func(s *study.Study) { s.Core = "Xx" }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernCore, func(s *study.Study) { s.Core, s.Ignore = "9", "Cl" }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernCore, func(s *study.Study) { s.Core, s.Ignore = "Cl", "Cl" }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernIgnore, func(s *study.Study) { s.Ignore = "9" }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernIgnore, func(s *study.Study) { s.Core, s.Ignore = "Cl", "9" }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernIgnore, func(s *study.Study) { s.Ignore = "all" }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernTolerance, func(s *study.Study) { s.Structure, s.Tolerance = "demo:water", 1 }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernTolerance, func(s *study.Study) { s.Tolerance = -1 }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernFrame, func(s *study.Study) { s.Frame = "crooked" }, []Stage{G, B, O, C, L, P, M}},
+		{ConcernBasis, func(s *study.Study) { s.Basis = []string{"Cl:sigma", "Cl:g"} }, []Stage{B, O, C, L, M}},
 		{ConcernFunction, func(s *study.Study) { s.Projection.Function = 5 }, []Stage{L}},
 		{ConcernFunction, func(s *study.Study) { s.Projection = study.Projection{Function: 5} }, nil},
 		{ConcernIrrep, func(s *study.Study) { s.Projection.Irrep = "A2u" }, []Stage{C}},

@@ -7,7 +7,7 @@ import (
 
 // Results are what follows from a study, as far as it is known. They always
 // fit together: Basis belongs to Group, Orbitals and Ledger to Basis, Orbital
-// to Orbitals, and Play to Group and, where it has a subject, to Basis. Only
+// to Orbitals, Match too, and Play to Group and, where it has a subject, to Basis. Only
 // Structure may be newer than Group, if the group of the new one cannot be
 // found; pictures go out from Group.
 //
@@ -21,6 +21,7 @@ type Results struct {
 	Orbital   *orbitals.GroupOrbital
 	Ledger    *Ledger
 	Play      *Play
+	Match     *Match
 }
 
 // A State is how far the work on the newest study has come. It is never changed
@@ -76,6 +77,7 @@ func (r *Results) has() [stages]bool {
 	return [stages]bool{
 		StageStructure: r.Structure != nil, StageGroup: r.Group != nil, StageBasis: r.Basis != nil,
 		StageOrbitals: r.Orbitals != nil, StageOrbital: r.Orbital != nil, StageLedger: r.Ledger != nil, StagePlay: r.Play != nil,
+		StageMatch: r.Match != nil,
 	}
 }
 
@@ -101,7 +103,8 @@ func (w *Work) keysOf(s study.Study) [stages]any {
 		return k
 	}
 	k[StageBasis] = w.keyOfBasis(s)
-	k[StageOrbitals] = k[StageBasis]
+	k[StageOrbitals] = w.keyOfOrbitals(s)
+	k[StageMatch] = w.keyOfMatch(s)
 	if s.Projection.Irrep == "" {
 		return k
 	}
@@ -144,6 +147,9 @@ func settle(old, next chain, asked [stages]any) chain {
 	}
 	if keep(StagePlay, old.Play != nil && old.Play.Group == out.Group && (old.Play.Basis == nil || old.Play.Basis == out.Basis)) {
 		out.Play = old.Play
+	}
+	if keep(StageMatch, old.Orbitals == out.Orbitals) {
+		out.Match = old.Match
 	}
 	return out
 }

@@ -40,6 +40,8 @@ type Work struct {
 	bases           stage[basisInputs, *Basis]
 	representations stage[*Basis, *orbitals.Representation]
 	projections     stage[*Basis, *Orbitals]
+	turned          stage[turnedInputs, *Orbitals]
+	matches         stage[matchInputs, *Match]
 	ledgers         stage[ledgerInputs, *Ledger]
 	plays           stage[playInputs, *Play]
 }
@@ -289,7 +291,9 @@ func (w *Work) representationOf(ctx context.Context, basis *Basis) (*orbitals.Re
 	})
 }
 
-// Orbitals projects the basis onto every irrep.
+// Orbitals projects the basis onto every irrep. Where the study turns partners
+// or mixes copies of the chosen irrep, they are so, and so is everything that
+// goes out from them.
 func (w *Work) Orbitals(ctx context.Context, s study.Study) (*Orbitals, error) {
 	basis, err := w.Basis(ctx, s)
 	if err != nil {
@@ -297,7 +301,11 @@ func (w *Work) Orbitals(ctx context.Context, s study.Study) (*Orbitals, error) {
 	}
 	w.mu.Lock()
 	defer w.mu.Unlock()
-	return w.orbitalsOf(ctx, basis)
+	all, err := w.orbitalsOf(ctx, basis)
+	if err != nil {
+		return nil, err
+	}
+	return w.turnedOf(all, s)
 }
 
 func (w *Work) orbitalsOf(ctx context.Context, basis *Basis) (*Orbitals, error) {

@@ -75,3 +75,33 @@ func (e Element) Radius() float64 {
 	}
 	return radii[e-1]
 }
+
+// Period is the row of the periodic table, from 1; 0 for what is no element.
+func (e Element) Period() int {
+	if !e.Valid() {
+		return 0
+	}
+	period := 1
+	for _, last := range periodEnds {
+		if int(e) > last {
+			period++
+		}
+	}
+	return period
+}
+
+// periodEnds are the atomic numbers of the noble gases.
+var periodEnds = [...]int{2, 10, 18, 36, 54, 86, 118}
+
+// Valence is the principal quantum number of the shell l of an element that takes
+// part in bonds, as common practice has it: n for s and p in period n; n − 1
+// for d and n − 2 for f, but n and n − 1 in the groups from boron to neon, whose
+// inner d shell is filled; never less than l + 1.
+func (e Element) Valence(l int) int {
+	n := e.Period()
+	inner := max(0, l-1)
+	if end := periodEnds[max(n, 1)-1]; n > 1 && int(e) > end-6 && inner > 0 {
+		inner--
+	}
+	return max(l+1, n-inner)
+}
