@@ -68,7 +68,9 @@ figures of the demonstrations into the folder out instead.`,
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error {
 		return usagef("%w; see %q", err, cmd.CommandPath()+" --help")
 	})
-	root.AddCommand(p.groupCommand(), p.projectCommand(), p.matchCommand(), p.ledgerCommand(), p.figureCommand(), p.windowCommand(), p.demoCommand(), p.framesCommand(), p.multiplyCommand(), p.descendCommand(), p.nearCommand(), p.idealizeCommand(), p.manualCommand())
+	root.AddCommand(p.groupCommand(), p.projectCommand(), p.matchCommand(), p.ledgerCommand(), p.tableCommand(), p.figureCommand(),
+		p.windowCommand(), p.demoCommand(), p.framesCommand(), p.multiplyCommand(), p.descendCommand(), p.nearCommand(), p.idealizeCommand(),
+		p.manualCommand())
 	completions(root, p)
 	return root
 }
