@@ -256,7 +256,7 @@ func (p *program) table(ctx context.Context, cmd *cobra.Command, o *tableOrder, 
 				return err
 			}
 			if g.Fit.Setting.Infinite() {
-				return fmt.Errorf("--of %s: %s has infinitely many operations; --as D4h or another finite group gives a table", k.name, g.Fit.Setting.Symbol)
+				return fmt.Errorf("--of %s: %s has infinitely many operations; content, orbitals and coefficients can be had, and the others of a finite group: %s", k.name, g.Fit.Setting.Symbol, finiteInstead(g.Fit.Setting.Symbol))
 			}
 		}
 		grid, err := k.make(ctx, p, s, o.texts.Say)
@@ -273,4 +273,16 @@ func (p *program) table(ctx context.Context, cmd *cobra.Command, o *tableOrder, 
 		_, err := io.WriteString(w, text)
 		return err
 	})
+}
+
+// finiteInstead is what to write to have a finite group in the place of an
+// infinite one.
+func finiteInstead(symbol string) string {
+	switch symbol {
+	case "C∞v":
+		return "--as C4v"
+	case "D∞h":
+		return "--as D4h"
+	}
+	return "--as Oh"
 }

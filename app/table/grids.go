@@ -284,7 +284,8 @@ func FramesGrid(exchanges []work.Exchange, say Say) Grid {
 	}
 	for i, irrep := range here.Irreps {
 		for _, e := range exchanges[1:] {
-			if m := e.Names.Partners[i]; !isIdentity(m) {
+			// The sign of a single function says nothing.
+			if m := e.Names.Partners[i]; irrep.Dimension > 1 && !isIdentity(m) {
 				out.Notes = append(out.Notes, partnersNote(irrep.Label, e.Frame.Rule.Name, m, say))
 			}
 		}
