@@ -31,6 +31,8 @@ const (
 	StepPerspective Step = "perspective"
 	StepLook        Step = "look"
 	StepFigure      Step = "figure"
+	StepAtomTable   Step = "atomTable" // atoms typed in a table
+	StepView        Step = "view"      // a view kept or forgotten
 )
 
 // Steps lists every step.
@@ -38,7 +40,7 @@ func Steps() []Step {
 	return []Step{
 		StepChange, StepOpen, StepCore, StepTolerance, StepFrame, StepBasis, StepAtoms, StepFunction, StepIrrep,
 		StepPartner, StepElement, StepOperation, StepPlay, StepScrub, StepAngle, StepOrbit, StepZoom, StepPan,
-		StepFit, StepAlong, StepPerspective, StepLook, StepFigure,
+		StepFit, StepAlong, StepPerspective, StepLook, StepFigure, StepAtomTable, StepView,
 	}
 }
 

@@ -49,6 +49,7 @@ func newChooser(u *ui) *chooser {
 			}
 			name.SetText(row.name)
 			beside.SetText(row.beside)
+			box.Layout.Layout(box.Objects, box.Size()) // beside has another width
 		})
 	c.list.HideSeparators = true
 	c.list.OnSelected = func(i widget.ListItemID) {

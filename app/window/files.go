@@ -73,6 +73,7 @@ func (u *ui) try(s study.Study, done func(error)) {
 		u.guard(func() {
 			if err == nil {
 				u.openProblem = ""
+				u.studyFile = "" // whoever opened a study's own file says so after this
 				u.do(study.StepOpen, s)
 				if s.Coordinates == "" {
 					_ = u.session.AddRecent(s.Structure)
@@ -237,14 +238,14 @@ func (u *ui) askSave() {
 
 // keepFile remembers the file that a study was read from or saved to.
 func (u *ui) keepFile(path string, s study.Study) {
-	u.studyFile, u.studyOf = path, s.Structure+"\n"+s.Coordinates
+	u.studyFile, u.studyOf = path, s.Structure
 }
 
 // hasFile tells whether studyFile belongs to the study at hand, which an undo
 // may have changed for one of another structure.
 func (u *ui) hasFile() bool {
 	s := u.now()
-	return u.studyFile != "" && u.studyOf == s.Structure+"\n"+s.Coordinates
+	return u.studyFile != "" && u.studyOf == s.Structure
 }
 
 // askPicture saves what is shown, at twice the resolution of the screen.

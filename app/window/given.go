@@ -4,7 +4,6 @@ package window
 
 import (
 	"math"
-	"path/filepath"
 	"slices"
 	"strconv"
 	"strings"
@@ -108,10 +107,7 @@ func (d *givenDrawing) structure() {
 		s = st.Group.Structure
 	}
 	d.words(d.board.clipped(s.Molecule.Title, 2.6*d.width, d.strong), d.strong)
-	source := d.now().Structure
-	if filepath.IsAbs(source) {
-		source = filepath.Base(source)
-	}
+	source := sourceText(d.now())
 	formula := formulaText(s.Molecule.Formula()).Then(notation.Words("   "))
 	room := d.width - d.board.measure(formula, d.quiet)
 	d.y += 2

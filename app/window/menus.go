@@ -20,7 +20,7 @@ var stepTexts = map[study.Step]string{
 	study.StepIrrep: "menu.stepIrrep", study.StepPartner: "menu.stepPartner", study.StepElement: "menu.stepElement",
 	study.StepOperation: "menu.stepOperation", study.StepPlay: "menu.stepPlay", study.StepScrub: "menu.stepScrub", study.StepAngle: "menu.stepAngle",
 	study.StepOrbit: "menu.stepOrbit", study.StepZoom: "menu.stepZoom", study.StepPan: "menu.stepPan", study.StepFit: "menu.stepFit", study.StepAlong: "menu.stepAlong",
-	study.StepPerspective: "menu.stepPerspective", study.StepLook: "menu.stepLook", study.StepFigure: "menu.stepFigure", study.StepChange: "menu.stepChange",
+	study.StepPerspective: "menu.stepPerspective", study.StepLook: "menu.stepLook", study.StepFigure: "menu.stepFigure", study.StepChange: "menu.stepChange", study.StepAtomTable: "menu.stepAtomTable", study.StepView: "menu.stepView",
 }
 
 // A hiddenShortcut works like any other. The toolkit writes shortcuts that it

@@ -42,6 +42,13 @@ type pane struct {
 	extent   float64 // of the content
 	focused  bool
 	onHint   func(text string, at fyne.Position)
+
+	// What a pane may do with keys beyond moving its mark; any may be nil. A
+	// function that returns false leaves the key to the pane.
+	onKey    func(*fyne.KeyEvent) bool
+	onRune   func(rune) bool
+	holdsTab func() bool // the Tab key is its own
+	onLeave  func()      // the keyboard goes elsewhere
 }
 
 func newPane(content func(b *board), u *ui) *pane {
@@ -316,14 +323,31 @@ func (p *pane) FocusGained() {
 // FocusLost implements fyne.Focusable.
 func (p *pane) FocusLost() {
 	p.focused = false
+	if p.onLeave != nil {
+		p.guard(p.onLeave)
+	}
 	p.Update()
 }
 
 // TypedRune implements fyne.Focusable.
-func (p *pane) TypedRune(rune) {}
+func (p *pane) TypedRune(r rune) {
+	if p.onRune != nil {
+		p.guard(func() { p.onRune(r) })
+	}
+}
+
+// AcceptsTab implements fyne.Tabbable.
+func (p *pane) AcceptsTab() bool { return p.holdsTab != nil && p.holdsTab() }
 
 // TypedKey implements fyne.Focusable.
 func (p *pane) TypedKey(e *fyne.KeyEvent) {
+	used := false
+	if p.onKey != nil {
+		p.guard(func() { used = p.onKey(e) })
+	}
+	if used {
+		return
+	}
 	switch e.Name {
 	case fyne.KeyReturn, fyne.KeyEnter, fyne.KeySpace:
 		if s, ok := p.spotNamed(p.mark); ok && s.do != nil {

@@ -41,11 +41,12 @@ type ui struct {
 	motion  bool // operations move; else they are shown as stills
 
 	view      *viewport
-	given     *pane // left
-	follows   *pane // right: content and group orbitals
-	detail    *pane // right, below: the chosen group orbital
-	ledger    *pane // below: one column an operation
-	said      *pane // below: what the function has become
+	given     *pane      // left
+	atoms     *atomTable // in the place of given while atoms are edited
+	follows   *pane      // right: content and group orbitals
+	detail    *pane      // right, below: the chosen group orbital
+	ledger    *pane      // below: one column an operation
+	said      *pane      // below: what the function has become
 	scrub     *scrubBar
 	angle     *scrubBar
 	tracks    []track
@@ -97,6 +98,7 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.view = u.newView()
 	u.given = newPane(u.drawGiven, u)
 	u.given.least = fyne.NewSize(leftWidth, 100)
+	u.atoms = newAtomTable(u)
 	u.follows = newPane(u.drawFollows, u)
 	u.follows.least = fyne.NewSize(rightWidth, 100)
 	u.detail = newPane(u.drawDetail, u)
@@ -164,7 +166,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.onTrack(u.scrub), u.angles)
 	row := container.NewBorder(nil, nil, controls, nil, container.New(&shares{weights: []float32{1, 1.1}}, bars, u.said))
 	below := container.NewVBox(rule(), u.ledger, rule(), container.NewPadded(row))
-	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, u.given)
+	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane))
 	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
 	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
 		container.NewBorder(nil, nil, rule(), nil, right), u.view)
@@ -263,6 +265,10 @@ func (u *ui) changed() {
 
 func (u *ui) refreshPanes() {
 	u.given.Update()
+	if u.atoms.pane.Visible() {
+		u.atoms.follow()
+		u.atoms.pane.Update()
+	}
 	u.follows.Update()
 	u.detail.Update()
 	u.ledger.Update()
