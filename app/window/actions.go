@@ -59,6 +59,9 @@ func (u *ui) newView() *viewport {
 	}
 	v.zoomAt = func(factor, x, y float64) {
 		u.stopGlide()
+		if factor = u.limited(factor); factor == 1 {
+			return
+		}
 		u.history.Begin(study.StepZoom)
 		perPixel := v.sight.PerPixel(v.width, v.height)
 		at := [2]float64{(x - float64(v.width)/2) * perPixel, (float64(v.height)/2 - y) * perPixel}

@@ -190,6 +190,10 @@ func (u *ui) viewCommands() []*command {
 			u.do(study.StepPerspective, s)
 		}},
 		rule,
+		(&command{key: "menu.keepView", do: u.askView}).withKey(fyne.KeyD, control),
+		{key: "menu.views", refresh: u.viewCommandsKept},
+		{key: "menu.forgetView", refresh: u.viewCommandsForget},
+		rule,
 		{key: "menu.colours", menu: []*command{
 			u.themeCommand("menu.themeSystem", session.ThemeSystem), u.themeCommand("menu.themeLight", session.ThemeLight),
 			u.themeCommand("menu.themeDark", session.ThemeDark), u.themeCommand("menu.themeContrast", session.ThemeContrast),
