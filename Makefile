@@ -10,10 +10,13 @@ BENCH    ?= .
 WINDOW_PACKAGES  := gcc pkg-config libgl1-mesa-dev xorg-dev libgl1-mesa-dri
 WINDOW_LIBRARIES := gl x11 xcursor xi xinerama xrandr xxf86vm
 WINDOW_THERE     := pkg-config --exists $(WINDOW_LIBRARIES)
-# The tests need a computer algebra system, which checks the class functions of every group, and a display in memory
-# with a hand that moves its mouse and types.
-TEST_PACKAGES := gap-core gap-character-tables xvfb xdotool
-TEST_THERE    := command -v gap >/dev/null && command -v Xvfb >/dev/null && command -v xdotool >/dev/null
+# The tests need a computer algebra system, which checks the class functions of every group, a display in memory with a
+# hand that moves its mouse and types, and general readers of the files that the program writes.
+TEST_PACKAGES := gap-core gap-character-tables xvfb xdotool poppler-utils librsvg2-bin ffmpeg pngcheck imagemagick
+TEST_PROGRAMS := gap Xvfb xdotool pdftoppm rsvg-convert ffprobe pngcheck identify
+TEST_THERE    := command -v $(TEST_PROGRAMS) | wc -l | grep -qx $(words $(TEST_PROGRAMS))
+# The validator of GLB files comes from npm, where there is one; without it that test is skipped.
+VALIDATOR     := gltf-validator@2.0.0-dev.3.10
 
 # The program is stamped with the state of the checkout; -buildvcs would fail in a checkout of another user. No flag here
 # changes how packages are compiled, so that tests and program share the toolkit, which takes minutes.
@@ -56,7 +59,7 @@ lint: ## gofmt, go vet, staticcheck
 # Elsewhere the tests of the real window are skipped where there is no display in memory, but not here.
 unit: ## every test
 	@echo "== go test"
-	LOBEWRIGHT_NEEDS_DISPLAY=1 LOBEWRIGHT_NEEDS_GAP=1 $(GO) test -timeout 15m ./...
+	LOBEWRIGHT_NEEDS_DISPLAY=1 LOBEWRIGHT_NEEDS_GAP=1 LOBEWRIGHT_NEEDS_READERS=1 $(GO) test -timeout 15m ./...
 	@echo "== go test -race, where several goroutines share state"
 	$(GO) test -race -timeout 15m ./app/study/... ./app/work ./app/session
 
@@ -91,6 +94,9 @@ endef
 
 packages:
 	@$(call ensure,$(TEST_PACKAGES),$(TEST_THERE))
+	@test -d .tools/node_modules/gltf-validator || { command -v npm >/dev/null && \
+	npm install --prefix .tools --no-save --no-audit --no-fund --silent $(VALIDATOR); } || \
+	echo "npm cannot install $(VALIDATOR); the test that needs it is skipped"
 	@$(call ensure,$(WINDOW_PACKAGES),$(WINDOW_THERE))
 
 install: ## build with the window and install for all users: program, manual page, shell completions, desktop entry, icons

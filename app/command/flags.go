@@ -187,9 +187,11 @@ func (o oneOf) Type() string { return "word" }
 
 type wordError struct{ words []string }
 
-func (w wordError) Error() string {
+func (w wordError) Error() string { return "must be " + w.list() }
+
+func (w wordError) list() string {
 	last := len(w.words) - 1
-	return "must be " + strings.Join(w.words[:last], ", ") + " or " + w.words[last]
+	return strings.Join(w.words[:last], ", ") + " or " + w.words[last]
 }
 
 type flagError string

@@ -69,6 +69,7 @@ figures of the demonstrations into the folder out instead.`,
 		return usagef("%w; see %q", err, cmd.CommandPath()+" --help")
 	})
 	root.AddCommand(p.groupCommand(), p.projectCommand(), p.matchCommand(), p.ledgerCommand(), p.tableCommand(), p.figureCommand(),
+		p.animationCommand(),
 		p.windowCommand(), p.demoCommand(), p.framesCommand(), p.multiplyCommand(), p.descendCommand(), p.nearCommand(), p.idealizeCommand(),
 		p.manualCommand())
 	completions(root, p)

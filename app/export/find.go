@@ -313,3 +313,10 @@ func pdfLength(dictionary []byte) (int, bool) {
 	}
 	return n, true
 }
+
+// uuidBox is a box with a study.
+func uuidBox(study []byte) []byte {
+	out := binary.BigEndian.AppendUint32(nil, uint32(8+16+len(study)))
+	out = append(append(out, "uuid"...), studyUUID[:]...)
+	return append(out, study...)
+}

@@ -8,6 +8,7 @@ import (
 	"os"
 	"path/filepath"
 	"strings"
+	"unicode/utf16"
 
 	"lobewright/app/files"
 	"lobewright/app/study"
@@ -165,4 +166,22 @@ func expanded(z io.Reader) ([]byte, error) {
 		return nil, errors.New("the study in it is damaged")
 	}
 	return data, nil
+}
+
+// ascii writes the characters of a study beyond ASCII as JSON's escapes, for
+// formats that take no others.
+func ascii(study []byte) []byte {
+	out := make([]byte, 0, len(study))
+	for _, r := range string(study) {
+		switch {
+		case r < 0x80:
+			out = append(out, byte(r))
+		case r < 0x10000:
+			out = fmt.Appendf(out, `\u%04x`, r)
+		default:
+			high, low := utf16.EncodeRune(r)
+			out = fmt.Appendf(out, `\u%04x\u%04x`, high, low)
+		}
+	}
+	return out
 }

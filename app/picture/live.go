@@ -46,6 +46,7 @@ type Live struct {
 	labels map[int]labelOffset
 	group  *work.Group
 	room   room
+	steady bool // labels stay where they stand
 }
 
 type meshPair struct{ plus, minus *render.Mesh }
@@ -101,7 +102,7 @@ func (l *Live) Frame(shown Shown, orbit Orbit, width, height int, dpi float64, q
 		l.fill(s, shown, f.Camera.Eye.Sub(f.Camera.Target), quick)
 		s.liveTriad(f)
 		if !shown.Look.NoLabels {
-			l.addLabels(s, shown, f, quick, fonts)
+			l.addLabels(s, shown, f, quick || l.steady, fonts)
 		}
 	}
 	f.Scene = s.scene
