@@ -32,7 +32,9 @@ most bonds, unless --central chooses.
   lobewright match complex.xyz --on Cl:pi --central 1 --json`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			s.Structure = args[0]
+			if err := p.open(cmd, &s, args[0]); err != nil {
+				return err
+			}
 			if err := checkBasis(cmd, &s, true); err != nil {
 				return err
 			}
