@@ -61,6 +61,9 @@ const (
 	scriptSize = 0.7
 	subDrop    = 0.2
 	superRise  = 0.36
+
+	powerSize = 0.58 // of a power within an index, larger than a raised sign of the index's size
+	powerRise = 0.02
 )
 
 // glyph is a sign in its place: x and y in the units of the layout, y up.
@@ -101,6 +104,8 @@ func (s *setter) layout(f *Fonts, runs []Run, size float64) {
 			em, y = size*scriptSize, -size*subDrop
 		case Super:
 			em, y = size*scriptSize, size*superRise
+		case SubSuper:
+			em, y = size*powerSize, size*powerRise
 		}
 		k := 0
 		if r.Italic {

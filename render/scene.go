@@ -199,6 +199,9 @@ const (
 	OnLine Script = iota
 	Sub
 	Super
+	// SubSuper is raised within a lowered index, as the power in the index of
+	// d with z².
+	SubSuper
 )
 
 func (Sphere) geometry()   {}

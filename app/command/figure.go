@@ -7,27 +7,51 @@ import (
 	"strings"
 
 	"github.com/spf13/cobra"
+	"github.com/spf13/pflag"
 
 	"lobewright/app/export"
-	"lobewright/app/picture"
+	"lobewright/app/sheet"
 	"lobewright/app/study"
 )
+
+// sheetHelp explains the kinds of sheets.
+const sheetHelp = `
+A figure is a sheet of panels, all from one place and at one scale:
+  one          one group orbital (--irrep, --copy, --partner)
+  all          all group orbitals of the functions, a row an irrep; what there
+               is with --on and without --irrep
+  set          all partners of one irrep (--irrep, --copy)
+  operations   a panel for each operation, by class, that shows where it carries
+               a function (--function) or a group orbital (--irrep)
+  molecule     the structure with its axes and a panel for each class of
+               symmetry elements
+  frames       the structure in two frames (the second by --second)
+  descent      what becomes of irreps and group orbitals in --subgroup
+  levels       columns of levels for a sketch of interactions: group orbitals,
+               and orbitals of a central atom (--central) that go with them
+`
 
 func (p *program) figureCommand() *cobra.Command {
 	var s study.Study
 	var output string
 	var force bool
 	cmd := &cobra.Command{
-		Use:   "figure STRUCTURE [--on ATOMS:FUNCTIONS --irrep LABEL] -o FILE.png",
-		Short: "Draw the molecule with its axes, or one group orbital",
-		Long: `Draw a picture as a PNG file: with --on and --irrep one group orbital, without
-them the molecule with its axes. All group orbitals of one basis are seen from
-the same place at the same scale.
-` + structureHelp + selectionHelp,
+		Use:   "figure STRUCTURE [--on ATOMS:FUNCTIONS] [--sheet KIND] -o FILE.png",
+		Short: "Draw a sheet of panels: group orbitals, operations, axes, frames, levels",
+		Long: `Draw a figure for print or for a slide as a PNG file: with --on all group orbitals
+of the functions, with --irrep one of them, without functions the molecule with
+its axes.
+` + structureHelp + selectionHelp + sheetHelp,
 		Example: `  lobewright figure complex.xyz -o complex.png
+  lobewright figure complex.xyz --on Cl:sigma -o all.png
+  lobewright figure complex.xyz --on Cl:sigma,pi --width 180 --dpi 600 -o page.png
   lobewright figure complex.xyz --on Cl:sigma --irrep Eu --copy 1 --partner 2 -o eu-2.png
-  lobewright figure complex.xyz --on Cl:sigma --irrep B1g --look ink --width 85 --dpi 600 -o b1g.png
-  lobewright figure complex.xyz --operation "C2'(x)" -o axis.png`,
+  lobewright figure complex.xyz --on Cl:sigma --sheet set --irrep Eu --slide -o eu.png
+  lobewright figure complex.xyz --on Cl:sigma --sheet operations --function 2 -o strip.png
+  lobewright figure complex.xyz --sheet molecule --look ink --width 120 -o elements.png
+  lobewright figure complex.xyz --sheet frames --second between -o frames.png
+  lobewright figure complex.xyz --on Cl:sigma --sheet descent --subgroup C2v -o descent.png
+  lobewright figure complex.xyz --on Cl:sigma --sheet levels -o levels.png`,
 		Args: oneStructure,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			if err := p.open(cmd, &s, args[0]); err != nil {
@@ -42,25 +66,59 @@ the same place at the same scale.
 	flags := cmd.Flags()
 	groupFlags(flags, &s)
 	basisFlag(flags, &s)
+	shownFlags(flags, &s)
+	flags.StringVarP(&output, "output", "o", "", "`FILE` to write; it must end in .png")
+	flags.BoolVar(&force, "force", false, "overwrite an existing file")
+	pageFlags(flags, &s)
+	lookFlags(flags, &s)
+	return cmd
+}
+
+// shownFlags say what a sheet shows.
+func shownFlags(flags *pflag.FlagSet, s *study.Study) {
+	flags.Var(oneOf{&s.Figure.Sheet, append([]string{""}, sheetKinds...)}, "sheet",
+		"`KIND` of sheet: "+strings.Join(sheetKinds, ", ")+" (default: what suits the other flags)")
 	flags.StringVar(&s.Projection.Irrep, "irrep", "", "`LABEL` of the irrep of the group orbital")
 	flags.IntVar(&s.Projection.Copy, "copy", 1, "which `N` of several copies of the irrep")
 	flags.IntVar(&s.Projection.Partner, "partner", 1, "which `N` of the partners of a degenerate irrep")
+	flags.IntVar(&s.Projection.Function, "function", 0, "which `N` of the functions the operations carry (default 1)")
 	flags.StringVar(&s.Operation, "operation", "", "`NAME` of an operation whose symmetry element is shown")
-	flags.StringVarP(&output, "output", "o", "", "`FILE` to write; it must end in .png")
-	flags.BoolVar(&force, "force", false, "overwrite an existing file")
-	flags.Var(&positive{&s.Figure.Width, study.DefaultWidth}, "width", "width in `MM`")
-	flags.Float64Var(&s.Figure.Height, "height", 0, "height in `MM` (default: what suits the content)")
-	flags.Var(&positive{&s.Figure.Resolution, study.DefaultResolution}, "dpi", "resolution in `DOTS` per inch")
-	flags.Var(oneOf{&s.Look.Style, []string{"lit", "ink"}}, "look", "`LOOK` of the bodies, lit (soft light) or ink (flat tones with outlines)")
-	flags.Var(oneOf{&s.Look.Ground, []string{"paper", "white", "dark", "transparent"}}, "ground", "`GROUND` of the picture, paper, white, dark or transparent")
-	flags.Var(oneOf{&s.Look.Size, []string{"length", "area", "volume"}}, "size", "`MEASURE` of a lobe that goes with |c|, length, area or volume")
+	flags.StringVar(&s.Held.Frame, "second", "", "`RULE` that puts the axes of the second frame")
+	flags.StringVar(&s.Subgroup, "subgroup", "", "`GROUP` to descend to: C4v, or C4v:2 for the second way")
+	flags.IntVar(&s.Central, "central", 0, "which `ATOM` is the central one (default: the one that all operations leave)")
+}
+
+var sheetKinds = []string{sheet.One, sheet.All, sheet.Set, sheet.Operations, sheet.Molecule, sheet.Frames, sheet.Descent, sheet.Levels}
+
+// pageFlags say how large a sheet is and what stands on it.
+func pageFlags(flags *pflag.FlagSet, s *study.Study) {
+	f := &s.Figure
+	flags.Var(&positive{&f.Width, study.DefaultWidth}, "width", "width in `MM`, such as 85, 120 or 180")
+	flags.Float64Var(&f.Height, "height", 0, "height in `MM` (default: what suits the content)")
+	flags.BoolVar(&f.Slide, "slide", false, "a page of 16:9 with text of 18 pt")
+	flags.Var(&positive{&f.Resolution, study.DefaultResolution}, "dpi", "resolution in `DOTS` per inch")
+	flags.Var(oneOf{&f.Font, []string{"sans", "serif"}}, "font", "`FAMILY` of the text, sans (DejaVu Sans) or serif (DejaVu Serif)")
+	flags.Float64Var(&f.TextSize, "text", 0, "size of the text in `POINTS` (default 8, on a slide 18)")
+	flags.BoolVar(&f.NoLetters, "no-letters", false, "leave out the letters of the panels")
+	flags.BoolVar(&f.NoLegend, "no-legend", false, "leave out the legend of signs and sizes")
+	flags.BoolVar(&f.NoCard, "no-card", false, "leave out the axes with their rule and the atoms' names beside them")
+	flags.BoolVar(&f.NoCoefficients, "no-coefficients", false, "leave out the closed forms")
+	flags.BoolVar(&f.NoCaption, "no-caption", false, "leave out all captions")
+	noStudyFlag(flags, s)
+}
+
+// lookFlags say how the bodies look and from where they are seen.
+func lookFlags(flags *pflag.FlagSet, s *study.Study) {
+	l := &s.Look
+	flags.Var(oneOf{&l.Style, []string{"lit", "ink"}}, "look", "`LOOK` of the bodies, lit (soft light) or ink (flat tones with outlines)")
+	flags.Var(oneOf{&l.Ground, []string{"paper", "white", "dark", "transparent"}}, "ground", "`GROUND` of the picture, paper, white, dark or transparent")
+	flags.Var(oneOf{&l.Size, []string{"length", "area", "volume"}}, "size", "`MEASURE` of a lobe that goes with |c|, length, area or volume")
+	flags.Var(oneOf{&l.Shape, []string{"contour", "polar", "square"}}, "shape", "`SHAPE` of a lobe: contour of the function, polar plot of |Y|, or of its square")
+	flags.Var(oneOf{&l.Signs, []string{"tones", "hatching", "printed"}}, "signs", "what tells the `SIGN` of a lobe: tones alone, also hatching, or + and − printed")
 	flags.Var(viewFlag{&s.Camera}, "view", "see from `AZIMUTH,ELEVATION` in degrees, counted from x to y and up to z")
 	flags.BoolVar(&s.Camera.Orthographic, "orthographic", false, "draw without perspective")
-	flags.BoolVar(&s.Look.NoLabels, "no-labels", false, "leave out the atoms' labels")
-	flags.BoolVar(&s.Look.NoAxes, "no-axes", false, "leave out the axes in the corner")
-	noStudyFlag(flags, &s)
-	flags.BoolVar(&s.Figure.NoCaption, "no-caption", false, "leave out the caption")
-	return cmd
+	flags.BoolVar(&l.NoLabels, "no-labels", false, "leave out the atoms' labels")
+	flags.BoolVar(&l.NoAxes, "no-axes", false, "leave out the axes")
 }
 
 func checkFigure(cmd *cobra.Command, s *study.Study, output string) error {
@@ -69,6 +127,10 @@ func checkFigure(cmd *cobra.Command, s *study.Study, output string) error {
 	}
 	flags := cmd.Flags()
 	projects := flags.Changed("irrep") || flags.Changed("copy") || flags.Changed("partner")
+	kind := s.Figure.Sheet
+	if s.Look.Signs == "tones" {
+		s.Look.Signs = ""
+	}
 	switch {
 	case output == "":
 		return usagef("no file to write: give -o FILE.png")
@@ -76,21 +138,33 @@ func checkFigure(cmd *cobra.Command, s *study.Study, output string) error {
 		return usagef("-o %s: the name must end in .png, the one format there is", output)
 	case flags.Changed("height") && !(s.Figure.Height > 0):
 		return usagef("--height: must be a number greater than 0")
+	case flags.Changed("text") && !(s.Figure.TextSize >= 4 && s.Figure.TextSize <= 72):
+		return usagef("--text: must be a size from 4 to 72 points")
 	case len(s.Basis) == 0 && projects:
 		return usagef("--irrep, --copy and --partner choose a group orbital of functions: give --on ATOMS:FUNCTIONS too")
 	case s.Projection.Copy < 1:
 		return usagef("--copy: copies count from 1")
 	case s.Projection.Partner < 1:
 		return usagef("--partner: partners count from 1")
-	case len(s.Basis) > 0 && s.Projection.Irrep == "":
-		return usagef("--on needs --irrep LABEL, such as --irrep Eu; project lists the group orbitals")
+	case flags.Changed("function") && s.Projection.Function < 1:
+		return usagef("--function: functions count from 1")
+	case len(s.Basis) == 0 && (kind == sheet.One || kind == sheet.All || kind == sheet.Set || kind == sheet.Operations || kind == sheet.Levels):
+		return usagef("--sheet %s shows functions: give --on ATOMS:FUNCTIONS too", kind)
+	case (kind == sheet.One || kind == sheet.Set) && s.Projection.Irrep == "":
+		return usagef("--sheet %s needs --irrep LABEL, such as --irrep Eu; project lists the group orbitals", kind)
+	case len(s.Basis) > 0 && kind == "" && s.Projection.Irrep == "" && projects:
+		return usagef("--copy and --partner need --irrep LABEL, such as --irrep Eu; project lists the group orbitals")
+	case kind == sheet.Descent && s.Subgroup == "":
+		return usagef("--sheet descent needs --subgroup GROUP, such as --subgroup C2v; descend lists them")
+	case kind == sheet.Frames && s.Held.Frame == "":
+		return usagef("--sheet frames needs --second RULE for the second frame; frames lists the rules")
 	}
 	return nil
 }
 
 // figure draws what a study shows into a file.
 func (p *program) figure(ctx context.Context, s study.Study, output string, force bool) error {
-	pic, err := p.picture(ctx, s)
+	made, err := p.sheet(ctx, s)
 	if err != nil {
 		return err
 	}
@@ -101,32 +175,28 @@ func (p *program) figure(ctx context.Context, s study.Study, output string, forc
 	if err != nil {
 		return err
 	}
-	img, err := pic.Draw(ctx)
+	dpi := s.Figure.TheResolution()
+	img, err := made.Paint(ctx, dpi)
 	if err != nil {
 		return err
 	}
+	for _, n := range made.Notes {
+		p.note("%s", n)
+	}
 	return export.WriteFile(output, force, func(w io.Writer) error {
-		return export.EncodePNG(w, img, pic.Resolution, carried)
+		return export.EncodePNG(w, img, dpi, carried)
 	})
 }
 
-// picture makes the scene that a study shows: a group orbital if one is
-// chosen, else the molecule.
-func (p *program) picture(ctx context.Context, s study.Study) (*picture.Picture, error) {
+// sheet lays out what a study shows. What is wrong with structure or functions
+// is told as the other commands do.
+func (p *program) sheet(ctx context.Context, s study.Study) (*sheet.Sheet, error) {
 	if len(s.Basis) == 0 {
-		g, err := p.group(ctx, s)
-		if err != nil {
+		if _, err := p.group(ctx, s); err != nil {
 			return nil, err
 		}
-		return picture.Molecule(g, s)
-	}
-	o, err := p.orbitals(ctx, s)
-	if err != nil {
+	} else if _, err := p.orbitals(ctx, s); err != nil {
 		return nil, err
 	}
-	orbital, err := o.Orbital(s.Projection)
-	if err != nil {
-		return nil, err
-	}
-	return picture.Orbital(o, orbital, s)
+	return sheet.Make(ctx, p.work, s)
 }

@@ -33,7 +33,6 @@ type stage struct {
 	scene   render.Scene
 	palette assets.Palette
 	look    study.Look
-	narrow  bool // no room for the labels of all atoms
 	// atoms are the balls of all atoms; lobes those of what is drawn on them.
 	// elements those at the rim of symmetry elements.
 	atoms, lobes, elements []ball

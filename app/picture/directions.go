@@ -2,14 +2,28 @@ package picture
 
 import (
 	"math"
+	"sync"
 
 	"github.com/go-gl/mathgl/mgl64"
 )
 
 // directions is a triangulated unit sphere: an icosahedron whose faces are
 // halved `times` times along their edges. Triangles run counterclockwise seen
-// from outside.
+// from outside. The slices are shared and must not be changed.
 func directions(times int) (points []mgl64.Vec3, triangles [][3]int) {
+	return halved[min(times, len(halved)-1)]()
+}
+
+// halved are the spheres that are in use, each made once.
+var halved = [...]func() ([]mgl64.Vec3, [][3]int){
+	sync.OnceValues(func() ([]mgl64.Vec3, [][3]int) { return newDirections(0) }),
+	sync.OnceValues(func() ([]mgl64.Vec3, [][3]int) { return newDirections(1) }),
+	sync.OnceValues(func() ([]mgl64.Vec3, [][3]int) { return newDirections(2) }),
+	sync.OnceValues(func() ([]mgl64.Vec3, [][3]int) { return newDirections(3) }),
+	sync.OnceValues(func() ([]mgl64.Vec3, [][3]int) { return newDirections(4) }),
+}
+
+func newDirections(times int) (points []mgl64.Vec3, triangles [][3]int) {
 	points, triangles = icosahedron()
 	for range times {
 		middles := map[[2]int]int{}

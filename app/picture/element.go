@@ -5,7 +5,6 @@ import (
 
 	"github.com/go-gl/mathgl/mgl64"
 
-	"lobewright/app/work"
 	"lobewright/render"
 )
 
@@ -15,36 +14,6 @@ const (
 	minOverhang = 0.25 // Å
 	rimRoom     = 0.02 // Å, radius of the balls that stand for their ends
 )
-
-// addElement draws the symmetry element of an operation: an axis for a
-// rotation, a plane for a reflection, both for an improper rotation, the
-// centre for the inversion. An empty name draws nothing.
-func (s *stage) addElement(g *work.Group, name string) error {
-	if name == "" {
-		return nil
-	}
-	op, err := operationNamed(g.Fit.Setting, name)
-	if err != nil {
-		return err
-	}
-	centre, reach := enclosing(append(append([]ball(nil), s.atoms...), s.lobes...))
-	reach = overhang*reach + minOverhang
-	turns := op.Turn.Num != 0
-	inverts := turns && op.Turn.Improper && 2*op.Turn.Num == op.Turn.Den
-	switch {
-	case inverts:
-		s.addCentre()
-	case op.Axis.Len() == 0: // E has no element
-	default:
-		if turns {
-			s.addAxis(op.Axis, op.Axis.Mul(op.Axis.Dot(centre)), reach)
-		}
-		if op.Turn.Improper {
-			s.addPlane(op.Axis, centre.Sub(op.Axis.Mul(op.Axis.Dot(centre))), reach)
-		}
-	}
-	return nil
-}
 
 func (s *stage) elementMaterial(opacity float64) render.Material {
 	return render.Material{Color: paint(s.palette.Element), Opacity: opacity, Flat: true, NoOutline: true}

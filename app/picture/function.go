@@ -71,73 +71,44 @@ func sizing(size string) func(float64) float64 {
 	return func(x float64) float64 { return x }
 }
 
-// addCombination draws the lobes of a combination of functions.
-func (s *stage) addCombination(g *work.Group, parts []mixture) {
-	largest := 0.0
-	for _, m := range parts {
-		largest = max(largest, m.amplitude())
-	}
-	unit, size := lobeUnit(g, s.carries), sizing(s.look.Size)
-	detail := fine
-	if len(parts) > maxFine {
-		detail = coarse
-	}
-	for _, m := range parts {
-		if share := m.amplitude() / largest; share > negligible {
-			s.addMixture(g.Sites.Positions[m.site], m, unit*size(share), detail)
-		}
-	}
-}
-
 // maxFine is how many atoms may have finely cut lobes; with more of them each
 // is small on the picture.
 const maxFine = 24
-
-// addMixture draws the lobes on one atom; length is that of the longest.
-func (s *stage) addMixture(at mgl64.Vec3, m mixture, length float64, detail detail) {
-	if m.shell == 0 {
-		// A sphere as wide as a lobe is long.
-		s.scene.Add(render.Sphere{Center: at, Radius: length / 2}, s.lobeMaterial(m.vector[0]))
-		s.lobes = append(s.lobes, ball{at, length / 2})
-		return
-	}
-	plus, minus, turn := shapeOf(m, detail)
-	place := &render.Affine{Linear: turn.Mul(length), Shift: at}
-	for sign, mesh := range []*render.Mesh{plus, minus} {
-		if mesh != nil {
-			s.scene.Add(mesh, s.lobeMaterial(1-2*float64(sign)))
-			s.scene.Shapes[len(s.scene.Shapes)-1].Transform = place
-		}
-	}
-	for _, b := range lobeBalls(m.angular(), m.shell) {
-		s.lobes = append(s.lobes, ball{at.Add(b.centre.Mul(length)), b.radius * length})
-	}
-}
 
 func (s *stage) lobeMaterial(sign float64) render.Material {
 	colour := s.palette.Plus
 	if sign < 0 {
 		colour = s.palette.Minus
 	}
-	return render.Solid(paint(colour))
+	m := render.Solid(paint(colour))
+	if sign < 0 && s.look.Signs == "hatching" {
+		m.Hatch = render.Hatch{Width: hatchLine, Color: paint(s.palette.Ink)}
+	}
+	return m
 }
 
 // shapeOf returns the meshes of a mixture and the rotation that brings them
 // into the scene. All p functions share one pair of meshes.
-func shapeOf(m mixture, detail detail) (plus, minus *render.Mesh, turn mgl64.Mat3) {
+func shapeOf(m mixture, form form) (plus, minus *render.Mesh, turn mgl64.Mat3) {
 	if m.shell == 1 {
-		plus, minus = pLobes[detail]()
+		plus, minus = pLobes[form]()
 		return plus, minus, turnFromZ(mgl64.Vec3{m.vector[0], m.vector[1], m.vector[2]}.Normalize())
 	}
-	plus, minus = lobes(m.angular(), m.shell, detail)
+	plus, minus = lobes(m.angular(), m.shell, form)
 	return plus, minus, mgl64.Ident3()
 }
 
 // pLobes are the lobes of pz, cut once.
-var pLobes = map[detail]func() (plus, minus *render.Mesh){
-	fine:   sync.OnceValues(func() (plus, minus *render.Mesh) { return lobes(alongZ, 1, fine) }),
-	coarse: sync.OnceValues(func() (plus, minus *render.Mesh) { return lobes(alongZ, 1, coarse) }),
-}
+var pLobes = func() map[form]func() (plus, minus *render.Mesh) {
+	all := map[form]func() (plus, minus *render.Mesh){}
+	for _, shape := range []string{contoured, polar, square} {
+		for _, detail := range []detail{fine, coarse} {
+			f := form{shape, detail}
+			all[f] = sync.OnceValues(func() (plus, minus *render.Mesh) { return lobes(alongZ, 1, f) })
+		}
+	}
+	return all
+}()
 
 func alongZ(d mgl64.Vec3) float64 { return d[2] }
 
@@ -153,8 +124,14 @@ func turnFromZ(to mgl64.Vec3) mgl64.Mat3 {
 // lobeBalls stand for the lobes of an angular function where views and labels
 // are chosen: one ball at each maximum of |Y|, several along a ring. Lengths
 // are those of lobes.
-func lobeBalls(y angular, shell int) []ball {
-	const half, narrow = 0.55, 0.38 // the middle and half the width of a lobe
+func lobeBalls(y angular, shell int, shape string) []ball {
+	half, narrow, power, least := 0.55, 0.38, 1.0, contourOf(shell).level // the middle and half the width of a lobe
+	switch shape {
+	case polar:
+		half, narrow, least = 0.5, 0.45, 0.1
+	case square:
+		half, narrow, power, least = 0.55, 0.33, 2, 0.1
+	}
 	points, triangles := directions(2)
 	y = normalized(y)
 	highest := make([]bool, len(points))
@@ -174,8 +151,8 @@ func lobeBalls(y angular, shell int) []ball {
 	}
 	var out []ball
 	for i, p := range points {
-		if highest[i] && values[i] > contourOf(shell).level {
-			out = append(out, ball{p.Mul(half * values[i]), narrow * values[i]})
+		if size := math.Pow(values[i], power); highest[i] && size > least {
+			out = append(out, ball{p.Mul(half * size), narrow * size})
 		}
 	}
 	return out

@@ -5,7 +5,6 @@ import (
 
 	"github.com/go-gl/mathgl/mgl64"
 
-	"lobewright/app/notation"
 	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/assets"
@@ -47,6 +46,7 @@ type Live struct {
 	group  *work.Group
 	room   room
 	steady bool // labels stay where they stand
+	balls  basisBalls
 }
 
 type meshPair struct{ plus, minus *render.Mesh }
@@ -100,6 +100,7 @@ func (l *Live) Frame(shown Shown, orbit Orbit, width, height int, dpi float64, q
 			l.group, l.labels = shown.Group, nil
 		}
 		l.fill(s, shown, f.Camera.Eye.Sub(f.Camera.Target), quick)
+		spaceHatching(s.scene.Shapes, 25.4/dpi/orbit.PerPixel(width, height))
 		s.liveTriad(f)
 		if !shown.Look.NoLabels {
 			l.addLabels(s, shown, f, quick || l.steady, fonts)
@@ -188,9 +189,6 @@ func (s *stage) liveTriad(f *Frame) {
 	s.corner = rectangle{left: 0, right: side, top: float64(f.Height) - side, bottom: float64(f.Height)}
 }
 
-// Runs is a text as the renderer sets it.
-func Runs(t notation.Text) []render.Run { return runs(t) }
-
 // Fonts are the built-in typefaces. The error is a fault of the program.
 func Fonts() (*render.Fonts, error) { return fonts() }
 
@@ -198,6 +196,6 @@ func Fonts() (*render.Fonts, error) { return fonts() }
 // the most common lobes. Without it the first picture makes them.
 func Prepare() {
 	_, _ = fonts()
-	pLobes[coarse]()
-	pLobes[fine]()
+	pLobes[formOf(contoured, coarse)]()
+	pLobes[formOf(contoured, fine)]()
 }

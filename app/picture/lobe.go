@@ -12,10 +12,13 @@ import (
 // lobes returns the closed surfaces of the positive and of the negative lobes
 // of an angular function of a shell, about a nucleus at the origin. The farthest point
 // of the larger lobes has the distance 1. A surface without lobes is nil.
-func lobes(y angular, shell int, detail detail) (plus, minus *render.Mesh) {
+func lobes(y angular, shell int, form form) (plus, minus *render.Mesh) {
 	y = normalized(y)
+	if form.shape != contoured {
+		return polarPlot(y, +1, form), polarPlot(y, -1, form)
+	}
 	c := contourOf(shell)
-	return surface(newField(c, y, +1), detail), surface(newField(c, y, -1), detail)
+	return surface(newField(c, y, +1), form.detail), surface(newField(c, y, -1), form.detail)
 }
 
 // detail is how finely lobes are cut into triangles.

@@ -27,7 +27,7 @@ func shellNamed(name string) int { return strings.Index("spdf", name[:1]) }
 
 func TestLobesAreClosedAndWoundOutward(t *testing.T) {
 	for name, y := range shapes {
-		plus, minus := lobes(y, shellNamed(name), coarse)
+		plus, minus := lobes(y, shellNamed(name), formOf(contoured, coarse))
 		for _, mesh := range []*render.Mesh{plus, minus} {
 			if mesh == nil {
 				t.Fatalf("%s: a sign has no lobes", name)
@@ -67,7 +67,7 @@ func vertex(mesh *render.Mesh, i uint32) mgl64.Vec3 {
 
 func TestLobesHaveTheSignOfTheFunctionAndReachOne(t *testing.T) {
 	for name, y := range shapes {
-		plus, minus := lobes(y, shellNamed(name), coarse)
+		plus, minus := lobes(y, shellNamed(name), formOf(contoured, coarse))
 		farthest := 0.0
 		for sign, mesh := range map[float64]*render.Mesh{+1: plus, -1: minus} {
 			for i := range mesh.Positions {
@@ -89,7 +89,7 @@ func TestLobesHaveTheSignOfTheFunctionAndReachOne(t *testing.T) {
 func TestALobeTapersToTheNucleus(t *testing.T) {
 	// Not one of two touching balls: their widest place is half-way out, and
 	// there they are as wide as they are long.
-	plus, _ := lobes(shapes["pz"], 1, fine)
+	plus, _ := lobes(shapes["pz"], 1, formOf(contoured, fine))
 	widest, at := 0.0, 0.0
 	for i := range plus.Positions {
 		p := vertex(plus, uint32(i))
@@ -108,7 +108,7 @@ func TestALobeTapersToTheNucleus(t *testing.T) {
 
 func TestMeshNormalsPointOutward(t *testing.T) {
 	for name, y := range shapes {
-		plus, _ := lobes(y, shellNamed(name), coarse)
+		plus, _ := lobes(y, shellNamed(name), formOf(contoured, coarse))
 		wrong := 0
 		for _, tri := range plus.Triangles {
 			a, b, c := vertex(plus, tri[0]), vertex(plus, tri[1]), vertex(plus, tri[2])

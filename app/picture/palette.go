@@ -70,3 +70,11 @@ func matt(c render.Color) render.Material { return render.Material{Color: c, Opa
 func flat(c color.NRGBA) render.Material {
 	return render.Material{Color: paint(c), Opacity: 1, Flat: true, NoOutline: true}
 }
+
+// OnLobe is the colour in which the sign of a lobe is printed on it.
+func OnLobe(p assets.Palette, sign int) color.NRGBA {
+	if sign > 0 {
+		return color.NRGBA{255, 255, 255, 255}
+	}
+	return assets.Light().Ink
+}

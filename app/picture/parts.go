@@ -120,7 +120,7 @@ func (l *Live) addParts(s *stage, g *work.Group, parts []part, by mgl64.Mat3, op
 			s.lobes = append(s.lobes, ball{place.Apply(at), p.length / 2})
 			continue
 		}
-		plus, minus, turn := l.shapeOf(p.mixture, detail)
+		plus, minus, turn := l.shapeOf(p.mixture, formOf(s.look.Shape, detail))
 		length := p.length
 		if opacity < 1 {
 			length *= ghostSize
@@ -163,6 +163,7 @@ func (s *stage) fadedLobe(sign, flip, opacity float64) render.Material {
 			m.Color = blend(m.Color, grey, 2*flip)
 		} else {
 			m.Color = blend(grey, other, 2*flip-1)
+			m.Hatch = s.lobeMaterial(-sign).Hatch
 		}
 	}
 	m.Opacity = opacity
@@ -178,25 +179,25 @@ func blend(a, b render.Color, share float64) render.Color {
 const maxMeshes = 300
 
 // shapeOf is the function of this name with the meshes kept.
-func (l *Live) shapeOf(m mixture, detail detail) (plus, minus *render.Mesh, turn mgl64.Mat3) {
+func (l *Live) shapeOf(m mixture, form form) (plus, minus *render.Mesh, turn mgl64.Mat3) {
 	if m.shell == 1 {
-		return shapeOf(m, detail)
+		return shapeOf(m, form)
 	}
-	key := meshKey(m, detail)
+	key := meshKey(m, form)
 	pair, ok := l.meshes[key]
 	if !ok {
 		if len(l.meshes) >= maxMeshes || l.meshes == nil {
 			l.meshes = make(map[string]meshPair)
 		}
-		pair.plus, pair.minus, _ = shapeOf(m, detail)
+		pair.plus, pair.minus, _ = shapeOf(m, form)
 		l.meshes[key] = pair
 	}
 	return pair.plus, pair.minus, mgl64.Ident3()
 }
 
 // meshKey tells mixtures apart whose shapes differ to the eye.
-func meshKey(m mixture, detail detail) string {
-	key := []byte{byte(m.shell), byte(detail.halvings)}
+func meshKey(m mixture, form form) string {
+	key := []byte{byte(m.shell), byte(form.halvings), form.shape[0]}
 	a := m.amplitude()
 	for _, x := range m.vector {
 		key = binary.AppendVarint(key, int64(math.Round(512*x/a)))

@@ -3,7 +3,6 @@ package picture
 import (
 	"context"
 	"image"
-	"image/color"
 	"math"
 	"testing"
 
@@ -18,39 +17,62 @@ import (
 
 func newWork() *work.Work { return work.New(structure.Inputs{Demo: assets.Demos()}) }
 
-// pictureOf makes the picture of a group orbital, or of the molecule where no
-// irrep is given.
-func pictureOf(t testing.TB, s study.Study) *Picture {
+// A shown is a body on a panel 80 mm wide.
+type shown struct {
+	*Body
+	view  Viewpoint
+	panel Panel
+}
+
+// bodyOf makes the body of a group orbital, or of the molecule where no irrep
+// is given, with the elements of the operation that is chosen.
+func bodyOf(t testing.TB, s study.Study) shown {
 	t.Helper()
 	ctx, w := context.Background(), newWork()
-	var p *Picture
-	var err error
-	if s.Projection.Irrep == "" {
-		g, e := w.Group(ctx, s)
-		if e != nil {
-			t.Fatal(e)
-		}
-		p, err = Molecule(g, s)
-	} else {
-		o, e := w.Orbitals(ctx, s)
-		if e != nil {
-			t.Fatal(e)
-		}
-		orbital, e := o.Orbital(s.Projection)
-		if e != nil {
-			t.Fatal(e)
-		}
-		p, err = Orbital(o, orbital, s)
-	}
+	var maker Maker
+	var out shown
+	g, err := w.Group(ctx, s)
 	if err != nil {
 		t.Fatal(err)
 	}
-	return p
+	if s.Projection.Irrep == "" {
+		out.Body = maker.Molecule(g, s)
+	} else {
+		o, err := w.Orbitals(ctx, s)
+		if err != nil {
+			t.Fatal(err)
+		}
+		orbital, err := o.Orbital(s.Projection)
+		if err != nil {
+			t.Fatal(err)
+		}
+		out.Body = maker.Lobes(o.Basis, orbital.Coefficients, s)
+	}
+	out.view = NewViewpoint(s.Camera, out.Body)
+	if s.Operation != "" {
+		op, err := g.Operation(s.Operation, 0)
+		if err != nil {
+			t.Fatal(err)
+		}
+		out.AddElements([]work.Operation{op}, out.view, false)
+		out.view = NewViewpoint(s.Camera, out.Body)
+	}
+	const width, margin = 80.0, 6.0
+	scale := (width - 2*margin) / out.view.Width
+	out.panel = Panel{Width: width, Height: out.view.Height*scale + 2*margin, Scale: scale}
+	return out
 }
 
-func draw(t testing.TB, p *Picture) *image.RGBA {
+const testDPI = 150
+
+func draw(t testing.TB, p shown) *image.RGBA {
 	t.Helper()
-	img, err := p.Draw(context.Background())
+	perMM := testDPI / 25.4
+	pic := Picture{
+		Scene: p.Scene(p.panel.Scale), Camera: p.view.Camera(p.panel), Look: p.Look(),
+		Width: int(p.panel.Width * perMM), Height: int(p.panel.Height * perMM), Resolution: testDPI,
+	}
+	img, err := pic.Draw(context.Background())
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -59,8 +81,8 @@ func draw(t testing.TB, p *Picture) *image.RGBA {
 
 // signAt tells whether the pixel at a point of the scene is of the colour of
 // positive (+1) or negative (−1) lobes, or neither.
-func signAt(p *Picture, img *image.RGBA, at mgl64.Vec3) int {
-	x, y, _, _ := p.Camera.Project(at, p.Width, p.Height)
+func signAt(p shown, img *image.RGBA, at mgl64.Vec3) int {
+	x, y, _, _ := p.view.Camera(p.panel).Project(at, img.Rect.Dx(), img.Rect.Dy())
 	c := img.RGBAAt(int(x), int(y))
 	switch {
 	case int(c.B) > int(c.R)+60: // blue
@@ -77,29 +99,31 @@ func TestLobesShowTheSignsOfAWorkedCase(t *testing.T) {
 	// x the inner lobes are positive and the outer ones negative, and on y the
 	// other way round; Eu, partner 2, has no lobes on x and (φ2 − φ4)/√2 on y.
 	const bond, inner, outer = 2.31, 0.55, 0.6
-	for _, c := range []struct {
-		irrep   string
-		partner int
-		signs   [4]int // of the inner lobes on +x, +y, −x, −y
-	}{
-		{"A1g", 1, [4]int{1, 1, 1, 1}},
-		{"B1g", 1, [4]int{1, -1, 1, -1}},
-		{"Eu", 1, [4]int{1, 0, -1, 0}},
-		{"Eu", 2, [4]int{0, 1, 0, -1}},
-	} {
-		s := study.Study{
-			Structure: "demo:square-plane", Basis: []string{"Cl:sigma"},
-			Projection: study.Projection{Irrep: c.irrep, Partner: c.partner},
-			Look:       study.Look{NoLabels: true}, Camera: study.Camera{Set: true, Azimuth: 45, Elevation: 60},
-		}
-		p := pictureOf(t, s)
-		img := draw(t, p)
-		for k, axis := range []mgl64.Vec3{{1, 0, 0}, {0, 1, 0}, {-1, 0, 0}, {0, -1, 0}} {
-			if got := signAt(p, img, axis.Mul(bond-inner)); got != c.signs[k] {
-				t.Errorf("%s, partner %d: the inner lobe on %v has sign %d, want %d", c.irrep, c.partner, axis, got, c.signs[k])
+	for _, shape := range []string{"contour", "polar", "square"} {
+		for _, c := range []struct {
+			irrep   string
+			partner int
+			signs   [4]int // of the inner lobes on +x, +y, −x, −y
+		}{
+			{"A1g", 1, [4]int{1, 1, 1, 1}},
+			{"B1g", 1, [4]int{1, -1, 1, -1}},
+			{"Eu", 1, [4]int{1, 0, -1, 0}},
+			{"Eu", 2, [4]int{0, 1, 0, -1}},
+		} {
+			s := study.Study{
+				Structure: "demo:square-plane", Basis: []string{"Cl:sigma"},
+				Projection: study.Projection{Irrep: c.irrep, Partner: c.partner},
+				Look:       study.Look{Shape: shape}, Camera: study.Camera{Set: true, Azimuth: 45, Elevation: 60},
 			}
-			if got := signAt(p, img, axis.Mul(bond+outer)); got != -c.signs[k] {
-				t.Errorf("%s, partner %d: the outer lobe on %v has sign %d, want %d", c.irrep, c.partner, axis, got, -c.signs[k])
+			p := bodyOf(t, s)
+			img := draw(t, p)
+			for k, axis := range []mgl64.Vec3{{1, 0, 0}, {0, 1, 0}, {-1, 0, 0}, {0, -1, 0}} {
+				if got := signAt(p, img, axis.Mul(bond-inner)); got != c.signs[k] {
+					t.Errorf("%s, %s, partner %d: the inner lobe on %v has sign %d, want %d", shape, c.irrep, c.partner, axis, got, c.signs[k])
+				}
+				if got := signAt(p, img, axis.Mul(bond+outer)); got != -c.signs[k] {
+					t.Errorf("%s, %s, partner %d: the outer lobe on %v has sign %d, want %d", shape, c.irrep, c.partner, axis, got, -c.signs[k])
+				}
 			}
 		}
 	}
@@ -107,10 +131,10 @@ func TestLobesShowTheSignsOfAWorkedCase(t *testing.T) {
 
 // lobeLengths are the lengths of the lobes in a scene, longest first in the
 // order of their atoms.
-func lobeLengths(p *Picture) []float64 {
+func lobeLengths(p shown) []float64 {
 	var out []float64
 	seen := map[*render.Affine]bool{}
-	for _, s := range p.Scene.Shapes {
+	for _, s := range p.stage.scene.Shapes {
 		if _, isMesh := s.Geometry.(*render.Mesh); isMesh && !seen[s.Transform] {
 			seen[s.Transform] = true
 			out = append(out, math.Cbrt(math.Abs(s.Transform.Linear.Det())))
@@ -127,7 +151,7 @@ func TestTheSizeOfALobeGoesWithItsCoefficient(t *testing.T) {
 			Structure: "demo:octahedron", Basis: []string{"C:sigma"},
 			Projection: study.Projection{Irrep: "Eg"}, Look: study.Look{Size: size},
 		}
-		lengths := lobeLengths(pictureOf(t, s))
+		lengths := lobeLengths(bodyOf(t, s))
 		if len(lengths) != 6 {
 			t.Fatalf("%d lobes", len(lengths))
 		}
@@ -140,14 +164,6 @@ func TestTheSizeOfALobeGoesWithItsCoefficient(t *testing.T) {
 				t.Errorf("size %q: lobe %d is %.4f Å long, want %.4f", size, i+1, l, want)
 			}
 		}
-	}
-}
-
-func TestPicturesAreOfTheSizeAsked(t *testing.T) {
-	s := study.Study{Structure: "demo:water", Figure: study.Figure{Width: 85, Height: 60, Resolution: 300}}
-	p := pictureOf(t, s)
-	if p.Width != 1004 || p.Height != 709 { // 85/25.4·300, 60/25.4·300
-		t.Errorf("%d × %d pixels", p.Width, p.Height)
 	}
 }
 
@@ -165,113 +181,148 @@ var scenes = map[string]study.Study{
 	"atom":     {Structure: "ideal:ring-3,Xe", Core: "1"},
 }
 
-func TestBodiesStayInThePictureAndOutOfTheTriadsCorner(t *testing.T) {
+func TestBodiesStayOnTheirPanel(t *testing.T) {
 	for name, s := range scenes {
-		for _, width := range []float64{40, 85, 180} {
-			s.Figure.Width = width
-			p := pictureOf(t, s)
-			length := triadShare * float64(min(p.Width, p.Height)) * 25.4 / p.Resolution
-			for i, shape := range p.Scene.Shapes {
-				sphere, ok := shape.Geometry.(render.Sphere)
-				if !ok || shape.Place != nil {
-					continue
-				}
-				d := newSight(p.Camera, screen{width: p.Width, height: p.Height}).disc(ball{sphere.Center, sphere.Radius})
-				whole := rectangle{0, float64(p.Width), 0, float64(p.Height)}
-				if d.x-d.radius < whole.left || d.x+d.radius > whole.right || d.y-d.radius < whole.top || d.y+d.radius > whole.bottom {
-					t.Errorf("%s at %g mm: body %d reaches out of the picture", name, width, i)
-				}
-				// The triad has its origin near the lower left corner; half of
-				// its length beyond is letters.
-				perMM := p.Resolution / 25.4
-				triad := rectangle{0, 1.2 * length * perMM, float64(p.Height) - 1.2*length*perMM, float64(p.Height)}
-				if triad.distance(d.x, d.y) < d.radius {
-					t.Errorf("%s at %g mm: body %d lies over the triad", name, width, i)
+		for _, parallel := range []bool{false, true} {
+			s.Camera.Orthographic = parallel
+			p := bodyOf(t, s)
+			img := draw(t, p)
+			ground := img.RGBAAt(0, 0)
+			for x := range img.Rect.Dx() {
+				for y := range img.Rect.Dy() {
+					if x > 0 && x < img.Rect.Dx()-1 && y > 0 && y < img.Rect.Dy()-1 {
+						continue
+					}
+					if img.RGBAAt(x, y) != ground {
+						t.Fatalf("%s: a body reaches the rim at %d, %d", name, x, y)
+					}
 				}
 			}
 		}
 	}
 }
 
-func TestLabelsDoNotOverlap(t *testing.T) {
-	for name, s := range scenes {
-		p := pictureOf(t, s)
-		var boxes []rectangle
-		perMM := p.Resolution / 25.4
-		for _, shape := range p.Scene.Shapes {
-			text, ok := shape.Geometry.(render.Text)
-			if !ok || shape.Place != nil {
-				continue
-			}
-			width, ascent, _ := p.Scene.Fonts.Measure(text.Runs, text.Size)
-			x, y, _, _ := p.Camera.Project(text.At, p.Width, p.Height)
-			x, y = x+text.OffsetX*perMM, y-text.OffsetY*perMM
-			box := rectangle{x, x + width*perMM, y - ascent*perMM, y}
-			for _, other := range boxes {
-				if box.overlaps(other) {
-					t.Errorf("%s: two labels overlap", name)
-				}
-			}
-			boxes = append(boxes, box)
-			if box.left < 0 || box.right > float64(p.Width) || box.top < 0 || box.bottom > float64(p.Height) {
-				t.Errorf("%s: a label reaches out of the picture", name)
-			}
-		}
-	}
-}
-
-func TestPartnersAreSeenFromOnePlace(t *testing.T) {
-	s := scenes["sandwich"]
-	first, second := s, s
-	first.Projection.Partner = 1
-	a, b := pictureOf(t, first), pictureOf(t, second)
-	if a.Camera != b.Camera && a.Height == b.Height {
-		t.Errorf("cameras differ: %+v and %+v", a.Camera, b.Camera)
-	}
-}
-
-func TestTheSamePictureGivesTheSamePixels(t *testing.T) {
-	s := scenes["benzene"]
-	s.Figure.Resolution = 100
-	a, b := draw(t, pictureOf(t, s)), draw(t, pictureOf(t, s))
-	for i := range a.Pix {
-		if a.Pix[i] != b.Pix[i] {
-			t.Fatalf("byte %d is %d and %d", i, a.Pix[i], b.Pix[i])
-		}
-	}
-}
-
-func TestGroundsAndLooksAreWhatTheyAreCalled(t *testing.T) {
-	for ground, want := range map[string]color.RGBA{
-		"":            {0xFC, 0xFB, 0xF8, 0xFF},
-		"white":       {0xFF, 0xFF, 0xFF, 0xFF},
-		"dark":        {0x14, 0x16, 0x1A, 0xFF},
-		"transparent": {0, 0, 0, 0},
-	} {
-		for _, style := range []string{"", "ink"} {
-			s := scenes["water"]
-			s.Look = study.Look{Ground: ground, Style: style}
-			s.Figure.Resolution = 72
-			if got := draw(t, pictureOf(t, s)).RGBAAt(1, 1); got != want {
-				t.Errorf("ground %q, look %q: the corner is %v, want %v", ground, style, got, want)
-			}
-		}
-	}
-}
-
-func TestImpossiblePicturesAreRefused(t *testing.T) {
-	g, err := newWork().Group(context.Background(), study.Study{Structure: "demo:water"})
+func TestNamesTouchNoBodyAndNoOtherName(t *testing.T) {
+	fonts, err := FontsOf("")
 	if err != nil {
 		t.Fatal(err)
 	}
-	for _, s := range []study.Study{
-		{Figure: study.Figure{Height: 5}},
-		{Figure: study.Figure{Width: 1e6}},
-		{Figure: study.Figure{Width: 1e-9, NoCaption: true}},
-		{Operation: "C3(z)"},
-	} {
-		if _, err := Molecule(g, s); err == nil {
-			t.Errorf("%+v: no error", s)
+	const size = 8
+	for name, s := range scenes {
+		p := bodyOf(t, s)
+		labels, missing, err := p.Labels(t.Context(), p.view, p.panel, size, fonts, nil)
+		if err != nil {
+			t.Fatal(err)
 		}
+		if len(missing) > 0 {
+			t.Logf("%s: no room for %v", name, missing)
+		}
+		img := draw(t, p)
+		ground := img.RGBAAt(0, 0)
+		perMM := testDPI / 25.4
+		for i, l := range labels {
+			w, up, _ := fonts.Measure(l.Runs, l.Size)
+			box := Box{l.X, l.Y - up, w, up}
+			if box.X < 0 || box.Y < 0 || box.X+box.W > p.panel.Width || box.Y+box.H > p.panel.Height {
+				t.Errorf("%s: %v reaches out of the panel", name, l.Runs)
+			}
+			for _, o := range labels[:i] {
+				ow, oup, _ := fonts.Measure(o.Runs, o.Size)
+				if box.meets(Box{o.X, o.Y - oup, ow, oup}) {
+					t.Errorf("%s: %v and %v overlap", name, l.Runs, o.Runs)
+				}
+			}
+			if s.Operation != "" {
+				continue // one may write on a plane
+			}
+			for x := int(box.X * perMM); x < int((box.X+box.W)*perMM); x++ {
+				for y := int(box.Y * perMM); y < int((box.Y+box.H)*perMM); y++ {
+					if img.RGBAAt(x, y) != ground {
+						t.Fatalf("%s: the name %v lies over a body", name, l.Runs)
+					}
+				}
+			}
+		}
+	}
+}
+
+func TestZoomAndPanAreKept(t *testing.T) {
+	s := scenes["water"]
+	p := bodyOf(t, s)
+	s.Camera.Zoom, s.Camera.Pan = 2, [2]float64{0.3, -0.2}
+	q := bodyOf(t, s)
+	q.panel = p.panel
+	o := ball{centre: mgl64.Vec3{0, 0, 0}}
+	a, b := p.view.on(p.panel, o), q.view.on(q.panel, o)
+	k := p.panel.Scale
+	wantX, wantY := p.panel.Width/2+2*(a.x-p.panel.Width/2)+2*0.3*k, p.panel.Height/2+2*(a.y-p.panel.Height/2)+2*0.2*k
+	if math.Abs(b.x-wantX) > 0.5 || math.Abs(b.y-wantY) > 0.5 {
+		t.Errorf("the origin lies at %.2f, %.2f mm, want %.2f, %.2f", b.x, b.y, wantX, wantY)
+	}
+}
+
+func TestAChosenRotationIsSeen(t *testing.T) {
+	s := scenes["water"]
+	rows := mgl64.Rotate3DX(0.3).Mul3(mgl64.Rotate3DY(1.1)).Mul3(mgl64.Rotate3DZ(-0.4))
+	s.Camera = s.Camera.WithView(rows)
+	p := bodyOf(t, s)
+	if got := p.view.Camera(p.panel).Rotation(); !close3(got, rows) {
+		t.Errorf("seen along %v, want %v", got, rows)
+	}
+}
+
+func close3(a, b mgl64.Mat3) bool {
+	for i := range a {
+		if math.Abs(a[i]-b[i]) > 1e-6 {
+			return false
+		}
+	}
+	return true
+}
+
+func TestPrintedSignsStandInLobesOfTheirSign(t *testing.T) {
+	fonts, err := FontsOf("")
+	if err != nil {
+		t.Fatal(err)
+	}
+	s := scenes["sandwich"]
+	s.Look.Signs = "printed"
+	p := bodyOf(t, s)
+	signs := p.Signs(p.view, p.panel, 8, fonts)
+	if len(signs) < 6 {
+		t.Errorf("only %d signs", len(signs))
+	}
+	img := draw(t, p)
+	perMM := testDPI / 25.4
+	for _, l := range signs {
+		w, up, _ := fonts.Measure(l.Runs, l.Size)
+		c := img.RGBAAt(int((l.X+w/2)*perMM), int((l.Y-up/2)*perMM))
+		if blue := int(c.B) > int(c.R)+60; blue != (l.Sign > 0) {
+			t.Errorf("sign %d stands on %v", l.Sign, c)
+		}
+	}
+}
+
+func TestHatchingMarksNegativeLobesAlone(t *testing.T) {
+	s := scenes["sandwich"]
+	s.Look.Signs = "hatching"
+	p := bodyOf(t, s)
+	hatched, plain := 0, 0
+	for _, shape := range p.Scene(p.panel.Scale).Shapes {
+		if _, lobe := shape.Geometry.(*render.Mesh); !lobe {
+			continue
+		}
+		negative := shape.Material.Color == paint(p.stage.palette.Minus)
+		if (shape.Material.Hatch.Period > 0) != negative {
+			t.Errorf("a lobe of colour %v has the hatching %+v", shape.Material.Color, shape.Material.Hatch)
+		}
+		if negative {
+			hatched++
+		} else {
+			plain++
+		}
+	}
+	if hatched == 0 || plain == 0 {
+		t.Errorf("%d hatched and %d plain lobes", hatched, plain)
 	}
 }

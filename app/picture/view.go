@@ -32,12 +32,19 @@ func (v view) up() mgl64.Vec3 {
 	return up.Sub(back.Mul(up.Dot(back))).Normalize()
 }
 
-// viewOf takes the view that a study asks for, or the one that shows most.
-func viewOf(c study.Camera, lobes, atoms []ball) view {
-	if c.Set {
-		return view{mgl64.DegToRad(c.Azimuth), mgl64.DegToRad(c.Elevation)}
+// viewOf takes the view that a study asks for, or the one that shows most, as
+// rows right, up and back.
+func viewOf(c study.Camera, lobes, atoms []ball) mgl64.Mat3 {
+	if rows, chosen := c.View(); chosen {
+		return rows
 	}
-	return bestView(lobes, atoms)
+	return bestView(lobes, atoms).rows()
+}
+
+// rows are the directions right, up and back of the view.
+func (v view) rows() mgl64.Mat3 {
+	back, up := v.back(), v.up()
+	return mgl64.Mat3FromRows(up.Cross(back), up, back)
 }
 
 // bestView tries views from the octant in which x points to the viewer's left
@@ -123,46 +130,9 @@ type screen struct {
 	pixelsPerMM              float64
 }
 
-// maxScale is how many millimetres an ångström may take: small molecules do not
-// swell to fill the picture.
-const maxScale = 22
-
 // distanceInRadii is how far the eye is, in radii of the scene: near enough
 // for depth, far enough to keep parallel bonds nearly parallel.
 const distanceInRadii = 7
-
-// cameraFor places the camera so that all balls fill the screen's rectangle.
-func cameraFor(v view, balls []ball, s screen, orthographic bool) render.Camera {
-	centre, radius := enclosing(balls)
-	distance := distanceInRadii * radius
-	back, up := v.back(), v.up()
-	right := up.Cross(back)
-	target := centre
-	build := func(scale float64) render.Camera {
-		// scale is in pixels for a length of 1 at the target.
-		c := render.Camera{Eye: target.Add(back.Mul(distance)), Target: target, Up: up}
-		if orthographic {
-			c.Height = float64(s.height) / scale
-		} else {
-			c.FovY = 2 * math.Atan(float64(s.height)/(2*scale*distance))
-		}
-		return c
-	}
-	largest := maxScale * s.pixelsPerMM
-	scale := (s.bottom - s.top) / (2 * radius)
-	// Scale and middle are found in turn; perspective makes them depend on
-	// each other a little.
-	for range 6 {
-		b := newSight(build(scale), s).bounds(balls)
-		scale *= min((s.right-s.left)/(b.right-b.left), (s.bottom-s.top)/(b.bottom-b.top))
-		scale = min(scale, largest)
-		b = newSight(build(scale), s).bounds(balls)
-		dx := (b.left+b.right)/2 - (s.left+s.right)/2
-		dy := (b.top+b.bottom)/2 - (s.top+s.bottom)/2
-		target = target.Add(right.Mul(dx / scale)).Sub(up.Mul(dy / scale))
-	}
-	return build(scale)
-}
 
 type rectangle struct{ left, right, top, bottom float64 }
 
@@ -198,17 +168,6 @@ func (v sight) disc(b ball) disc {
 		scale = v.height / (2 * math.Tan(v.camera.FovY/2) * -q[2])
 	}
 	return disc{v.width/2 + q[0]*scale, v.height/2 - q[1]*scale, b.radius * scale}
-}
-
-// bounds is the smallest rectangle around all balls on the picture.
-func (v sight) bounds(balls []ball) rectangle {
-	r := rectangle{math.Inf(1), math.Inf(-1), math.Inf(1), math.Inf(-1)}
-	for _, b := range balls {
-		d := v.disc(b)
-		r.left, r.right = min(r.left, d.x-d.radius), max(r.right, d.x+d.radius)
-		r.top, r.bottom = min(r.top, d.y-d.radius), max(r.bottom, d.y+d.radius)
-	}
-	return r
 }
 
 // enclosing is a ball around all balls: about their common middle.

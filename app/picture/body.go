@@ -1,0 +1,214 @@
+package picture
+
+import (
+	"math"
+
+	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/app/notation"
+	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/assets"
+	"lobewright/render"
+)
+
+// A Body is what one panel of a figure shows: bodies in the working frame,
+// without type.
+type Body struct {
+	stage *stage
+	group *work.Group
+	// room are the balls that have to be seen besides the atoms: the lobes of
+	// any group orbital of the basis, so that all of them are seen from one
+	// place and at one size.
+	room  []ball
+	signs []signMark
+	// key names only atoms that carry functions.
+	key  bool
+	axes []axisEnd
+}
+
+// A signMark is a place in a lobe where its sign can be printed.
+type signMark struct {
+	ball
+	sign float64
+	id   int
+}
+
+// A Maker makes bodies. It keeps the meshes of lobes from one to the next and
+// serves one goroutine at a time.
+type Maker struct {
+	live Live
+}
+
+// Molecule is the structure alone.
+func (m *Maker) Molecule(g *work.Group, s study.Study) *Body {
+	st := newStage(s)
+	st.addMolecule(g)
+	return &Body{stage: st, group: g}
+}
+
+// Lobes is a combination of the functions of a basis on the structure.
+func (m *Maker) Lobes(b *work.Basis, coefficients []float64, s study.Study) *Body {
+	body := m.bare(b, s)
+	m.add(body, b, coefficients, work.Operation{}, false)
+	return body
+}
+
+// Moved is a combination carried by an operation, with its start as a ghost.
+// The operation's symmetry elements are not part of it.
+func (m *Maker) Moved(b *work.Basis, coefficients []float64, op work.Operation, s study.Study) *Body {
+	body := m.bare(b, s)
+	m.add(body, b, coefficients, op, true)
+	return body
+}
+
+// Carriers is the structure with the atoms that carry functions drawn as below
+// lobes, and with the room that the lobes take.
+//
+// Only atoms with functions are named on it.
+func (m *Maker) Carriers(b *work.Basis, s study.Study) *Body {
+	body := m.bare(b, s)
+	body.key = true
+	return body
+}
+
+func (m *Maker) bare(b *work.Basis, s study.Study) *Body {
+	st := newStage(s)
+	st.carries = carriers(b)
+	st.addMolecule(b.Group)
+	return &Body{stage: st, group: b.Group, room: m.live.roomBalls(st, b)}
+}
+
+// roomBalls keeps the balls of the last basis.
+func (l *Live) roomBalls(s *stage, b *work.Basis) []ball {
+	if l.balls.basis != b || l.balls.shape != s.look.Shape {
+		l.balls = basisBalls{b, s.look.Shape, s.roomOf(b)}
+	}
+	return l.balls.balls
+}
+
+type basisBalls struct {
+	basis *work.Basis
+	shape string
+	balls []ball
+}
+
+func (m *Maker) add(body *Body, b *work.Basis, coefficients []float64, op work.Operation, moved bool) {
+	detail := fine
+	if len(b.Functions) > maxFine {
+		detail = coarse
+	}
+	s := body.stage
+	parts := m.live.parts(s, Shown{Group: b.Group, Basis: b, Coefficients: coefficients})
+	by := mgl64.Ident3()
+	if moved && op.Steps() > 0 {
+		m.live.addParts(s, b.Group, parts, by, ghostOpacity, coarse)
+		by = op.At(1)
+	}
+	m.live.addParts(s, b.Group, parts, by, 1, detail)
+	place := render.Linear(by)
+	for _, p := range parts {
+		at := b.Group.Sites.Positions[p.site]
+		if p.length <= 0 || p.amplitude() == 0 {
+			continue
+		}
+		if p.shell == 0 {
+			body.signs = append(body.signs, signMark{ball{place.Apply(at), p.length / 2}, p.vector[0], lobeID(p.site)})
+			continue
+		}
+		if s.look.Signs != "printed" {
+			continue
+		}
+		y := p.angular()
+		for _, l := range lobeBalls(y, p.shell, s.look.Shape) {
+			mark := ball{place.Apply(at.Add(l.centre.Mul(p.length))), l.radius * p.length}
+			body.signs = append(body.signs, signMark{mark, y(l.centre.Normalize()), lobeID(p.site)})
+		}
+	}
+}
+
+// AddElements draws the symmetry elements of operations, each once, as far as
+// they reach beyond everything that the body shows. The sense of a rotation is
+// drawn too if sense is set.
+func (b *Body) AddElements(operations []work.Operation, v Viewpoint, sense bool) {
+	centre, radius := enclosing(b.must())
+	reach := overhang*radius + minOverhang
+	s := b.stage
+	var axes, planes []work.Operation
+	has := func(list []work.Operation, o work.Operation) bool {
+		for _, p := range list {
+			if math.Abs(p.Axis.Dot(o.Axis)) > 1-1e-6 {
+				return true
+			}
+		}
+		return false
+	}
+	centred := false
+	for _, o := range operations {
+		if o.HasCentre() && !centred {
+			centred = true
+			s.addCentre()
+		}
+		along := o.Axis.Mul(o.Axis.Dot(centre))
+		if o.HasPlane() && !has(planes, o) {
+			planes = append(planes, o)
+			s.addPlane(o.Axis, centre.Sub(along), reach)
+		}
+		if o.HasAxis() && !has(axes, o) {
+			axes = append(axes, o)
+			s.addAxis(o.Axis, along, reach)
+			if sense {
+				s.addSense(o, along, reach, v.rows.Row(2))
+			}
+		}
+	}
+}
+
+// Look is how the body is drawn.
+func (b *Body) Look() render.Look { return lookOf(b.stage.look, b.stage.palette) }
+
+// Palette is the body's palette.
+func (b *Body) Palette() assets.Palette { return b.stage.palette }
+
+// Scene is the body for a scale in millimetres an ångström, which gives the
+// hatching its distances.
+func (b *Body) Scene(scale float64) render.Scene {
+	scene := render.Scene{Shapes: append([]render.Shape(nil), b.stage.scene.Shapes...)}
+	spaceHatching(scene.Shapes, scale)
+	return scene
+}
+
+// must are all balls that have to be seen.
+func (b *Body) must() []ball {
+	return append(append(append([]ball(nil), b.stage.atoms...), b.room...), b.stage.elements...)
+}
+
+// PaletteOf is the palette for a look.
+func PaletteOf(look study.Look) assets.Palette { return paletteOf(look) }
+
+// AddAxes draws arrows along x, y and z from the origin, a little beyond the
+// atoms, with letters at their ends.
+func (b *Body) AddAxes(letters [3]notation.Text) {
+	const beyond, least = 1.22, 0.6 // of the atoms' reach; Å
+	reach := 0.0
+	for _, a := range b.stage.atoms {
+		reach = max(reach, a.centre.Len())
+	}
+	reach = max(least, beyond*reach)
+	const radius = 0.022 // of the length
+	ink := flat(b.stage.palette.Ink)
+	for i := range letters {
+		var tip mgl64.Vec3
+		tip[i] = reach
+		b.stage.scene.Add(render.Arrow{To: tip, Radius: radius * reach / 2, HeadLength: 0.1 * reach, HeadRadius: 0.03 * reach}, ink)
+		end := ball{tip, 0.02 * reach}
+		b.stage.elements = append(b.stage.elements, end)
+		b.axes = append(b.axes, axisEnd{end, letters[i]})
+	}
+}
+
+// An axisEnd is where the letter of an axis stands.
+type axisEnd struct {
+	ball
+	letter notation.Text
+}

@@ -1,0 +1,288 @@
+package sheet
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"math"
+
+	"lobewright/app/picture"
+	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/assets"
+)
+
+// The kinds of sheets, as study.Figure.Sheet names them.
+const (
+	One        = "one"        // one group orbital
+	All        = "all"        // all group orbitals of a basis
+	Set        = "set"        // all partners of one irrep
+	Operations = "operations" // where each operation carries a function
+	Molecule   = "molecule"   // the structure with axes and symmetry elements
+	Frames     = "frames"     // two frames side by side
+	Descent    = "descent"    // irreps followed into a subgroup
+	Levels     = "levels"     // levels of group orbitals and central orbitals
+)
+
+// Make lays out the sheet that a study asks for. Where it asks for none it is
+// the group orbital of the irrep chosen, all group orbitals where there is a
+// basis only, and else the structure with its axes. The error is that of the
+// results (see work), or one line that tells what the sheet needs.
+func Make(ctx context.Context, w *work.Work, s study.Study) (*Sheet, error) {
+	m, err := newMaker(ctx, w, s)
+	if err != nil {
+		return nil, err
+	}
+	sheet, err := m.make()
+	if m.height > 0 && isTooSmall(err) {
+		if m, err = newMaker(ctx, w, s); err != nil {
+			return nil, err
+		}
+		m.cardless = true
+		m.note("axes, legend and names of atoms left out, there is no room for them")
+		sheet, err = m.make()
+	}
+	return sheet, err
+}
+
+func (m *maker) make() (*Sheet, error) {
+	s := m.study
+	kind := Kind(s)
+	if kind != Molecule && kind != Frames && kind != Descent && len(s.Basis) == 0 {
+		return nil, fmt.Errorf("a sheet of this kind (%s) shows functions, and none are chosen", kind)
+	}
+	switch kind {
+	case One, Set:
+		return m.orbitals(kind == Set)
+	case All:
+		return m.all()
+	case Operations:
+		return m.operations()
+	case Molecule:
+		return m.molecule(s.Figure.Sheet == Molecule)
+	case Frames:
+		return m.frames()
+	case Descent:
+		return m.descent()
+	case Levels:
+		return m.levels()
+	}
+	return nil, fmt.Errorf("%q is no kind of sheet", kind)
+}
+
+// Kind is the kind of sheet that a study asks for.
+func Kind(s study.Study) string {
+	switch {
+	case s.Figure.Sheet != "":
+		return s.Figure.Sheet
+	case len(s.Basis) == 0:
+		return Molecule
+	case s.Projection.Irrep == "":
+		return All
+	}
+	return One
+}
+
+// A maker lays out one sheet.
+type maker struct {
+	typesetter
+	ctx     context.Context
+	work    *work.Work
+	study   study.Study
+	figure  study.Figure
+	palette assets.Palette
+	bodies  picture.Maker
+
+	width  float64 // of the page, mm
+	height float64 // mm; 0 is free
+	margin float64 // around everything
+	size   float64 // of the text, pt
+	notes  []string
+	// cardless leaves the card out, where a page of a fixed height has no room
+	// for it.
+	cardless bool
+	texts    map[float64]cardTexts
+}
+
+// The size of a slide: 13⅓ × 7½ inches, common practice for 16:9.
+const (
+	slideWidth = 338.67
+	slideSize  = 18 // pt
+	textSize   = 8  // pt
+	smallText  = 7  // pt, where the sheet is narrow
+	narrow     = 60 // mm
+	leastWidth = 25 // mm, of a sheet
+)
+
+func newMaker(ctx context.Context, w *work.Work, s study.Study) (*maker, error) {
+	fonts, err := picture.FontsOf(s.Figure.Font)
+	if err != nil {
+		return nil, fmt.Errorf("the built-in typefaces cannot be read: %w", err)
+	}
+	f := s.Figure
+	m := &maker{
+		typesetter: typesetter{fonts}, ctx: ctx, work: w, study: s, figure: f, palette: picture.PaletteOf(s.Look),
+		width: f.Width, height: f.Height, size: f.TextSize,
+	}
+	switch {
+	case f.Slide && m.width == 0:
+		m.width = slideWidth
+	case m.width == 0:
+		m.width = f.TheWidth()
+	}
+	if f.Slide && m.height == 0 {
+		m.height = m.width * 9 / 16
+	}
+	if m.size == 0 {
+		switch {
+		case f.Slide:
+			m.size = slideSize
+		case m.width < narrow:
+			m.size = smallText
+		default:
+			m.size = textSize
+		}
+	}
+	m.margin = min(3, m.width/25)
+	if f.Slide {
+		m.margin = m.width / 34
+	}
+	if m.width < leastWidth {
+		return nil, fmt.Errorf("a width of %.4g mm is too narrow for a picture; give at least %d mm", m.width, leastWidth)
+	}
+	return m, nil
+}
+
+// The styles of type.
+func (m *maker) title() style { return style{size: 1.125 * m.size, color: m.palette.Ink} }
+func (m *maker) text() style  { return style{size: m.size, color: m.palette.Ink} }
+func (m *maker) quiet() style { return style{size: 0.875 * m.size, color: m.palette.Quiet} }
+func (m *maker) letter() style {
+	return style{size: 1.125 * m.size, color: m.palette.Ink, bold: true}
+}
+
+// inner is the width between the margins.
+func (m *maker) inner() float64 { return m.width - 2*m.margin }
+
+// room is the height that the content may have: what a fixed page leaves, or
+// about what a page of a journal can give.
+func (m *maker) room() float64 {
+	if m.height > 0 {
+		return m.height - 2*m.margin
+	}
+	const tallest, shape = 240.0, 1.35
+	return min(tallest, max(shape*m.width, 110)) - 2*m.margin
+}
+
+// finish puts the content on its page.
+func (m *maker) finish(title string, content block) (*Sheet, error) {
+	height := m.height
+	if height == 0 {
+		height = math.Ceil((content.h+2*m.margin)*100) / 100
+	}
+	const slack = 0.01 // mm, of sums
+	if content.h > height-2*m.margin+slack {
+		return nil, tooSmall(fmt.Sprintf("a height of %.4g mm is too low for this sheet; give at least %.0f mm, or leave captions out",
+			height, math.Ceil(content.h+2*m.margin)))
+	}
+	if content.w > m.inner()+slack {
+		return nil, fmt.Errorf("a width of %.4g mm is too narrow for this sheet; give at least %.0f mm, or a smaller text",
+			m.width, math.Ceil(content.w+2*m.margin))
+	}
+	page := block{}
+	page.put(content, m.margin+(m.inner()-content.w)/2, (height-content.h)/2)
+	sheet := &Sheet{
+		Width: m.width, Height: height, Ground: m.palette.Ground, Font: "sans", Title: title, Items: page.items, Notes: m.notes,
+	}
+	if m.figure.Font == "serif" {
+		sheet.Font = "serif"
+	}
+	if m.study.Look.Ground == "transparent" {
+		sheet.Ground.A = 0
+	}
+	if _, _, err := sheet.Pixels(m.figure.TheResolution()); err != nil {
+		return nil, err
+	}
+	return sheet, m.ctx.Err()
+}
+
+// note says something that the sheet leaves out.
+func (m *maker) note(format string, arguments ...any) {
+	m.notes = append(m.notes, fmt.Sprintf(format, arguments...))
+}
+
+// group is the study's group.
+func (m *maker) group() (*work.Group, error) { return m.work.Group(m.ctx, m.study) }
+
+// tooSmall is the error of a page on which a sheet has no room.
+type tooSmall string
+
+// Error implements error.
+func (e tooSmall) Error() string { return string(e) }
+
+func isTooSmall(err error) bool {
+	var e tooSmall
+	return errors.As(err, &e)
+}
+
+// errTooSmall is refused where panels would be too small to show anything.
+const errTooSmall = tooSmall("there is no room for the panels: give a larger width or height, or a smaller text")
+
+// panel is a body on paper with its labels.
+func (m *maker) panel(body *picture.Body, v picture.Viewpoint, p picture.Panel, name string, named bool) (block, error) {
+	out := block{w: p.Width, h: p.Height, items: []Item{&Panel{
+		Rect: Rect{0, 0, p.Width, p.Height}, Name: name, Scene: body.Scene(p.Scale), Camera: v.Camera(p), Look: body.Look(),
+	}}}
+	var labels []picture.Label
+	if named && !m.study.Look.NoLabels {
+		var missing []string
+		var err error
+		labels, missing, err = body.Labels(m.ctx, v, p, m.size, m.fonts, nil)
+		if err != nil {
+			return out, err
+		}
+		if len(missing) > 0 {
+			m.note("no room for the names of %s beside the atoms", enumerated(missing))
+		}
+	} else {
+		labels = body.Signs(v, p, m.size, m.fonts)
+	}
+	for _, l := range labels {
+		out.items = append(out.items, m.label(l)...)
+	}
+	return out, nil
+}
+
+// label is a placed label as items.
+func (m *maker) label(l picture.Label) []Item {
+	const lead = 0.18 // mm
+	var out []Item
+	if l.Leader != nil {
+		out = append(out, Line{Points: l.Leader, Width: lead, Color: m.palette.Ink})
+	}
+	colour := m.palette.Ink
+	if l.Sign != 0 {
+		colour = picture.OnLobe(m.palette, l.Sign)
+	}
+	return append(out, Text{X: l.X, Y: l.Y, Runs: l.Runs, Size: l.Size, Color: colour})
+}
+
+// enumerated lists a few names and counts the others.
+func enumerated(names []string) string {
+	const most = 8
+	if n := len(names); n > most {
+		return fmt.Sprintf("%d atoms", n)
+	}
+	out := ""
+	for i, n := range names {
+		switch {
+		case i == 0:
+		case i == len(names)-1:
+			out += " and "
+		default:
+			out += ", "
+		}
+		out += n
+	}
+	return out
+}
