@@ -49,7 +49,7 @@ its axes.
   lobewright figure complex.xyz --on Cl:sigma --sheet set --irrep Eu --slide -o eu.png
   lobewright figure complex.xyz --on Cl:sigma --sheet operations --function 2 -o strip.png
   lobewright figure complex.xyz --sheet molecule --look ink --width 120 -o elements.png
-  lobewright figure complex.xyz --sheet frames --second between -o frames.png
+  lobewright figure complex.xyz --sheet frames --second x-between -o frames.png
   lobewright figure complex.xyz --on Cl:sigma --sheet descent --subgroup C2v -o descent.png
   lobewright figure complex.xyz --on Cl:sigma --sheet levels -o levels.png`,
 		Args: oneStructure,

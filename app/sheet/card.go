@@ -151,6 +151,10 @@ func (m *maker) drawCard(c card, at placedCard, p plan) (block, error) {
 // cardText sets the lines of a card; torn tells that a word did not fit.
 func (m *maker) cardText(c card, width float64) (out block, torn bool) {
 	put := func(t notation.Text, s style) {
+		// A long name is set smaller before it is cut.
+		for s.size > 0.9*m.size && m.tears(t, s, width) {
+			s.size *= 0.93
+		}
 		torn = torn || m.tears(t, s, width)
 		out.put(m.paragraph(t, s, width), 0, out.h)
 	}

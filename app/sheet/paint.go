@@ -22,7 +22,7 @@ func (s *Sheet) Pixels(dpi float64) (width, height int, err error) {
 	case !(w >= 1) || !(h >= 1):
 		return 0, 0, fmt.Errorf("%.4g mm × %.4g mm at %g dots per inch are less than a pixel", s.Width, s.Height, dpi)
 	case w > render.MaxSide || h > render.MaxSide:
-		return 0, 0, fmt.Errorf("%.4g mm × %.4g mm at %g dots per inch are %.0f × %.0f pixels; each side may have %d",
+		return 0, 0, fmt.Errorf("%g mm × %.5g mm at %g dots per inch are %.0f × %.0f pixels; each side may have %d",
 			s.Width, s.Height, dpi, w, h, render.MaxSide)
 	}
 	return int(w), int(h), nil
