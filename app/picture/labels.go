@@ -59,14 +59,9 @@ func (s *stage) bondDiscs(g *work.Group, seen sight) []disc {
 	return out
 }
 
-type labelPlace struct {
-	rectangle
-	cost float64
-}
-
 // covers counts how deep a label would lie in bodies, and forbids other labels
 // and the rim of the picture.
-func (p labelPlace) covers(obstacles []disc, taken []rectangle, scr screen) float64 {
+func (p rectangle) covers(obstacles []disc, taken []rectangle, scr screen) float64 {
 	cost := 0.0
 	for _, d := range obstacles {
 		// How deep the disc reaches into the label, in heights of the label.
@@ -79,7 +74,7 @@ func (p labelPlace) covers(obstacles []disc, taken []rectangle, scr screen) floa
 	}
 	const rim = 0.5 // mm
 	edge := rim * scr.pixelsPerMM
-	if p.left < edge || p.right > float64(scr.width)-edge || p.top < edge || p.bottom > scr.bottom+4*scr.pixelsPerMM {
+	if p.left < edge || p.right > float64(scr.width)-edge || p.top < edge || p.bottom > float64(scr.height)+4*scr.pixelsPerMM {
 		cost += 100
 	}
 	return cost

@@ -16,7 +16,7 @@ const liveLabel = 9
 // while the picture moves; at rest a label moves only where that uncovers it.
 func (l *Live) addLabels(s *stage, shown Shown, f *Frame, quick bool, fonts *render.Fonts) {
 	perMM := f.Quality.DPI / 25.4
-	scr := screen{width: f.Width, height: f.Height, right: float64(f.Width), bottom: float64(f.Height), pixelsPerMM: perMM}
+	scr := screen{width: f.Width, height: f.Height, pixelsPerMM: perMM}
 	seen := newSight(f.Camera, scr)
 	var obstacles []disc
 	if !quick {
@@ -73,7 +73,7 @@ func (l *Live) labelPlace(atom int, around disc, width, height float64, obstacle
 		return rectangleAt(old)
 	}
 	cost := func(o labelOffset) float64 {
-		return labelPlace{rectangle: rectangleAt(o)}.covers(obstacles, taken, scr)
+		return rectangleAt(o).covers(obstacles, taken, scr)
 	}
 	best, least := old, math.Inf(1)
 	if known {

@@ -122,12 +122,10 @@ func largestBall(balls []ball) float64 {
 // In larger structures no view shows everything anyway.
 const maxBallsCompared = 250
 
-// A screen is the picture in pixels, with the rectangle in which the bodies
-// have to lie.
+// A screen is the picture in pixels.
 type screen struct {
-	width, height            int
-	left, right, top, bottom float64
-	pixelsPerMM              float64
+	width, height int
+	pixelsPerMM   float64
 }
 
 // distanceInRadii is how far the eye is, in radii of the scene: near enough

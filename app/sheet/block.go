@@ -19,17 +19,6 @@ func (b *block) put(o block, x, y float64) {
 // grow makes the block at least as large as w and h.
 func (b *block) grow(w, h float64) { b.w, b.h = max(b.w, w), max(b.h, h) }
 
-// below puts another block under everything, after a gap.
-func (b *block) below(o block, gap float64) {
-	if len(o.items) == 0 {
-		return
-	}
-	if b.h > 0 {
-		b.h += gap
-	}
-	b.put(o, 0, b.h)
-}
-
 // moved is an item elsewhere.
 func moved(item Item, dx, dy float64) Item {
 	shifted := func(points [][2]float64) [][2]float64 {
