@@ -122,10 +122,12 @@ func largestBall(balls []ball) float64 {
 // In larger structures no view shows everything anyway.
 const maxBallsCompared = 250
 
-// A screen is the picture in pixels.
+// A screen is the picture in pixels, with the rectangle in which the bodies
+// have to lie.
 type screen struct {
-	width, height int
-	pixelsPerMM   float64
+	width, height            int
+	left, right, top, bottom float64
+	pixelsPerMM              float64
 }
 
 // distanceInRadii is how far the eye is, in radii of the scene: near enough
@@ -166,6 +168,17 @@ func (v sight) disc(b ball) disc {
 		scale = v.height / (2 * math.Tan(v.camera.FovY/2) * -q[2])
 	}
 	return disc{v.width/2 + q[0]*scale, v.height/2 - q[1]*scale, b.radius * scale}
+}
+
+// bounds is the smallest rectangle around all balls on the picture.
+func (v sight) bounds(balls []ball) rectangle {
+	r := rectangle{math.Inf(1), math.Inf(-1), math.Inf(1), math.Inf(-1)}
+	for _, b := range balls {
+		d := v.disc(b)
+		r.left, r.right = min(r.left, d.x-d.radius), max(r.right, d.x+d.radius)
+		r.top, r.bottom = min(r.top, d.y-d.radius), max(r.bottom, d.y+d.radius)
+	}
+	return r
 }
 
 // enclosing is a ball around all balls: about their common middle.
