@@ -17,14 +17,16 @@ import (
 
 func (p *program) animationCommand() *cobra.Command {
 	var s study.Study
+	var several many
 	var output string
 	var force bool
 	cmd := &cobra.Command{
-		Use:   "animation STRUCTURE --on ATOMS:FUNCTIONS --operation NAME -o FILE.gif",
+		Use:   "animation STRUCTURE… --on ATOMS:FUNCTIONS --operation NAME -o FILE.gif",
 		Short: "Write an operation, played on a function or a group orbital, as a moving picture",
 		Long: `Write an operation as a moving picture: it carries the chosen function, or with
 --irrep a group orbital, and what was at the start stays as a ghost. An improper
-rotation turns first and is then reflected.
+rotation turns first and is then reflected. Several structures need ` + namePlace + ` in the
+name of FILE.
 
 The ending of FILE chooses the format
   .gif         plays everywhere; 255 colours chosen for these pictures
@@ -38,15 +40,13 @@ The ending of FILE chooses the format
   lobewright animation complex.xyz --on Cl:sigma --irrep Eu --partner 2 --operation "S4(z)" --size 1280x720 -o s4.mp4
   lobewright animation complex.xyz --on Cl:sigma --operation "C4(z)" --seconds 2.4 --once -o c4.glb
   lobewright animation c4.gif --operation i -o i.gif`,
-		Args: oneStructure,
+		Args: several.args,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if err := p.open(cmd, &s, args[0]); err != nil {
-				return err
-			}
-			if err := checkAnimation(cmd, &s, output); err != nil {
-				return err
-			}
-			return p.animation(cmd.Context(), s, output, force)
+			return p.eachStudy(cmd, args, &several, &s, output,
+				func(s *study.Study, output string) error { return checkAnimation(cmd, s, output) },
+				func(ctx context.Context, p *program, s study.Study, output string) error {
+					return p.animation(ctx, s, output, force)
+				})
 		},
 	}
 	flags := cmd.Flags()
@@ -72,6 +72,7 @@ The ending of FILE chooses the format
 	flags.BoolVar(&s.Look.NoAxes, "no-axes", false, "leave out the axes in the corner")
 	flags.BoolVar(&s.Figure.NoCaption, "no-caption", false, "leave out the caption")
 	noStudyFlag(flags, &s)
+	several.flags(flags)
 	return cmd
 }
 

@@ -59,9 +59,21 @@ func nameOf(structure string) string {
 	return strings.TrimSuffix(base, filepath.Ext(base))
 }
 
-// severalStructures is the rule for the arguments of commands that write files.
-func severalStructures(cmd *cobra.Command, args []string) error {
-	if len(args) == 0 {
+// many are the structures of a command that writes files, and how they are
+// worked at.
+type many struct {
+	list    string
+	workers int
+}
+
+func (m *many) flags(flags *pflag.FlagSet) {
+	flags.StringVar(&m.list, "list", "", "`FILE` that names more structures, one a line")
+	flags.IntVar(&m.workers, "jobs", 0, "how many structures to work at together, `N` (default: one for each core)")
+}
+
+// args is the rule for the arguments: at least one structure, or a list.
+func (m *many) args(cmd *cobra.Command, args []string) error {
+	if len(args) == 0 && m.list == "" {
 		return oneStructure(cmd, args)
 	}
 	seen := 0
@@ -76,9 +88,25 @@ func severalStructures(cmd *cobra.Command, args []string) error {
 	return nil
 }
 
-// jobsFlag is how many structures are worked at together.
-func jobsFlag(flags *pflag.FlagSet, workers *int) {
-	flags.IntVar(workers, "jobs", 0, "how many structures to work at together, `N` (default: one for each core)")
+// eachStudy opens every structure with what the flags say, checks the choices
+// and makes a file of them. bound is the study that the flags write to; check
+// may settle what they leave open.
+func (p *program) eachStudy(cmd *cobra.Command, args []string, m *many, bound *study.Study, output string,
+	check func(s *study.Study, output string) error, do func(ctx context.Context, p *program, s study.Study, output string) error) error {
+	structures, err := listed(args, m.list)
+	if err != nil {
+		return err
+	}
+	return p.each(cmd.Context(), structures, output, m.workers, func(ctx context.Context, p *program, j job) error {
+		s, err := p.opened(cmd, bound, j.structure)
+		if err != nil {
+			return err
+		}
+		if err := check(&s, j.output); err != nil {
+			return err
+		}
+		return do(ctx, p, s, j.output)
+	})
 }
 
 // each does the same for one structure or for many. Of many, several are worked
@@ -200,21 +228,39 @@ func (b *batch) wipe() {
 // them.
 func (b *batch) account(ctx context.Context) error {
 	b.wipe()
+	good := b.done - b.failed
+	if err := b.wrongForAll(); err != nil && ctx.Err() == nil {
+		return err
+	}
 	for i, err := range b.faults {
 		if err != nil && ctx.Err() == nil {
 			fmt.Fprintf(b.Err, "%s: %s\n", oneLine(b.jobs[i].structure), oneLine(strings.TrimPrefix(err.Error(), b.jobs[i].structure+": ")))
 		}
 	}
-	good := b.done - b.failed
 	switch {
 	case ctx.Err() != nil:
-		fmt.Fprintf(b.Err, "%d of %d were finished\n", good, len(b.jobs))
+		fmt.Fprintf(b.Err, "finished: %d of %d\n", good, len(b.jobs))
 		return ctx.Err()
 	case b.failed > 0:
-		return fmt.Errorf("%d of %d structures failed, %d were finished", b.failed, len(b.jobs), good)
+		return fmt.Errorf("%d of %d structures failed; finished: %d", b.failed, len(b.jobs), good)
 	}
 	fmt.Fprintf(b.Err, "all %d structures are finished\n", len(b.jobs))
 	return nil
+}
+
+// wrongForAll is the fault of the command line that all jobs have in common, or
+// nil.
+func (b *batch) wrongForAll() error {
+	first := b.faults[0]
+	if first == nil || !isUsage(first) {
+		return nil
+	}
+	for _, err := range b.faults {
+		if err == nil || err.Error() != first.Error() {
+			return nil
+		}
+	}
+	return first
 }
 
 // named writes whole lines to the error stream, each with the name of a
@@ -257,9 +303,6 @@ func (p *program) opened(cmd *cobra.Command, bound *study.Study, structure strin
 	before := *bound
 	defer func() { *bound = before }()
 	if err := p.open(cmd, bound, structure); err != nil {
-		return study.Study{}, err
-	}
-	if err := checkBasis(cmd, bound, false); err != nil {
 		return study.Study{}, err
 	}
 	return *bound, nil

@@ -48,7 +48,7 @@ func TestOneThatFailsDoesNotHoldUpTheOthers(t *testing.T) {
 		return nil
 	})
 	slices.Sort(made)
-	if !slices.Equal(made, []string{"a.png", "d.png"}) || err == nil || err.Error() != "2 of 4 structures failed, 2 were finished" {
+	if !slices.Equal(made, []string{"a.png", "d.png"}) || err == nil || err.Error() != "2 of 4 structures failed; finished: 2" {
 		t.Errorf("%v %v", made, err)
 	}
 	for _, line := range []string{"b: line 3: no number\n", "c: internal error: oh\n", "a: note: seen\n"} {
@@ -85,7 +85,7 @@ func TestAnInterruptionEndsTheBatch(t *testing.T) {
 		stop()
 		return nil
 	})
-	if made != 1 || !errors.Is(err, context.Canceled) || out.String() != "1 of 3 were finished\n" {
+	if made != 1 || !errors.Is(err, context.Canceled) || out.String() != "finished: 1 of 3\n" {
 		t.Errorf("%d %v %q", made, err, out.String())
 	}
 }

@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"io"
 	"path/filepath"
+	"slices"
 	"strings"
 
 	"github.com/spf13/cobra"
@@ -99,20 +100,19 @@ func tableKinds() []tableKind {
 	}
 }
 
-// A tableOrder is what a command line asks for.
+// A tableOrder says how tables are written.
 type tableOrder struct {
-	study  study.Study
-	kinds  []tableKind
 	format table.Format
 	texts  assets.Texts
 	force  bool
 }
 
 func (p *program) tableCommand() *cobra.Command {
-	var o tableOrder
+	var s study.Study
+	var several many
 	var of []string
-	var format, language, output, list string
-	var workers int
+	var format, language, output string
+	var force bool
 	var names, about []string
 	for _, k := range tableKinds() {
 		names = append(names, k.name)
@@ -134,49 +134,35 @@ TABLE is one of these, or several with commas between them:
   lobewright table complex.xyz --on Cl:sigma --of coefficients -o coefficients.csv
   lobewright table ring.xyz --on C:pz --of ledger --function 1 --irrep "E1''" --format markdown
   lobewright table *.xyz --of characters,operations -o 'tables/{name}.tex'`,
-		Args: func(cmd *cobra.Command, args []string) error {
-			if list != "" {
-				return nil
-			}
-			return severalStructures(cmd, args)
-		},
+		Args: several.args,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			structures, err := listed(args, list)
-			if err != nil {
+			if output == "" && (len(args) > 1 || several.list != "") {
+				return usagef("several structures need files to be written to: give -o with %s in the name", namePlace)
+			}
+			order := tableOrder{texts: assets.TextsIn(assets.Language(language)), format: table.Format(format), force: force}
+			if err := order.settleFormat(cmd, output); err != nil {
 				return err
 			}
-			if len(of) == 0 {
-				of = []string{"characters"}
-				if len(o.study.Basis) > 0 {
-					of = []string{"orbitals"}
-				}
-			}
-			if err := o.check(cmd, of, format, output); err != nil {
-				return err
-			}
-			o.texts = assets.TextsIn(assets.Language(language))
-			if output == "" && len(structures) > 1 {
-				return usagef("%d structures need files to be written to: give -o with %s in the name", len(structures), namePlace)
-			}
-			return p.each(cmd.Context(), structures, output, workers, func(ctx context.Context, p *program, j job) error {
-				return p.table(ctx, cmd, &o, j)
-			})
+			return p.eachStudy(cmd, args, &several, &s, output,
+				func(s *study.Study, _ string) error { return checkTables(cmd, s, of) },
+				func(ctx context.Context, p *program, s study.Study, output string) error {
+					return p.tables(ctx, s, of, order, output)
+				})
 		},
 	}
 	flags := cmd.Flags()
-	groupFlags(flags, &o.study)
-	basisFlag(flags, &o.study)
+	groupFlags(flags, &s)
+	basisFlag(flags, &s)
 	flags.StringSliceVar(&of, "of", nil, "`TABLE` to write: "+strings.Join(names, ", ")+" (default characters, or orbitals with --on)")
 	flags.Var(oneOf{&format, formatNames()}, "format", "`FORMAT` in the place of the one that the ending of the file tells: text, csv, markdown or latex")
 	flags.Var(oneOf{&language, []string{string(assets.English), string(assets.German)}}, "language", "`LANGUAGE` of heads and titles, en or de")
-	flags.IntVar(&o.study.Projection.Function, "function", 0, "number `N` of the function of the basis, for a ledger")
-	flags.StringVar(&o.study.Projection.Irrep, "irrep", "", "`LABEL` of the irrep, for a ledger")
-	flags.Var(elementFlag{&o.study.Projection.Element}, "element", "matrix element `K,L` that weighs the operations of a ledger (default 1,1)")
-	flags.BoolVar(&o.study.Projection.Character, "character", false, "weigh a ledger with the character in the place of a matrix element")
+	flags.IntVar(&s.Projection.Function, "function", 0, "number `N` of the function of the basis, for a ledger")
+	flags.StringVar(&s.Projection.Irrep, "irrep", "", "`LABEL` of the irrep, for a ledger")
+	flags.Var(elementFlag{&s.Projection.Element}, "element", "matrix element `K,L` that weighs the operations of a ledger (default 1,1)")
+	flags.BoolVar(&s.Projection.Character, "character", false, "weigh a ledger with the character in the place of a matrix element")
 	flags.StringVarP(&output, "output", "o", "", "`FILE` to write, ending in .txt, .csv, .md or .tex (default: print)")
-	flags.BoolVar(&o.force, "force", false, "overwrite an existing file")
-	flags.StringVar(&list, "list", "", "`FILE` that names more structures, one a line")
-	jobsFlag(flags, &workers)
+	flags.BoolVar(&force, "force", false, "overwrite an existing file")
+	several.flags(flags)
 	_ = cmd.RegisterFlagCompletionFunc("of", cobra.FixedCompletions(names, cobra.ShellCompDirectiveNoFileComp))
 	return cmd
 }
@@ -191,88 +177,109 @@ func formatNames() (names []string) {
 // tableEndings tell the format of a file by its ending.
 var tableEndings = map[string]table.Format{".txt": table.FormatText, ".csv": table.FormatCSV, ".md": table.FormatMarkdown, ".tex": table.FormatLaTeX}
 
-// check reads what of the order is words, before anything is computed.
-func (o *tableOrder) check(cmd *cobra.Command, of []string, format, output string) error {
-	if err := checkBasis(cmd, &o.study, false); err != nil {
-		return err
+// settleFormat chooses the format by the ending of the file unless a flag does.
+func (o *tableOrder) settleFormat(cmd *cobra.Command, output string) error {
+	if output == "" || cmd.Flags().Changed("format") {
+		return nil
 	}
-	kinds := tableKinds()
-	for _, name := range of {
-		found := false
-		for _, k := range kinds {
-			if k.name != strings.TrimSpace(name) {
-				continue
-			}
-			found = true
-			o.kinds = append(o.kinds, k)
-			if k.ledger {
-				if err := checkLedger(cmd, &o.study); err != nil {
-					return err
-				}
-			}
+	byEnding, known := tableEndings[strings.ToLower(filepath.Ext(output))]
+	if !known {
+		return usagef("-o %s: the name must end in .txt, .csv, .md or .tex, or --format must tell the format", output)
+	}
+	o.format = byEnding
+	return nil
+}
+
+// chosen are the tables that are asked for, or those that suit a study.
+func chosen(s study.Study, of []string) ([]tableKind, error) {
+	if len(of) == 0 {
+		of = []string{"characters"}
+		if len(s.Basis) > 0 {
+			of = []string{"orbitals"}
 		}
-		if !found {
+	}
+	var kinds []tableKind
+	for _, name := range of {
+		i := slices.IndexFunc(tableKinds(), func(k tableKind) bool { return k.name == strings.TrimSpace(name) })
+		if i < 0 {
 			var names []string
-			for _, k := range kinds {
+			for _, k := range tableKinds() {
 				names = append(names, k.name)
 			}
-			return usagef("--of %s: there is no such table; there are %s", name, strings.Join(names, ", "))
+			return nil, usagef("--of %s: there is no such table; there are %s", name, strings.Join(names, ", "))
 		}
+		kinds = append(kinds, tableKinds()[i])
 	}
-	o.format = table.Format(format)
-	if output != "" && !cmd.Flags().Changed("format") {
-		ending := strings.ToLower(filepath.Ext(output))
-		byEnding, known := tableEndings[ending]
-		if !known {
-			return usagef("-o %s: the name must end in .txt, .csv, .md or .tex, or --format must tell the format", output)
+	return kinds, nil
+}
+
+// checkTables tells what of the choices is missing or wrong before anything is
+// computed.
+func checkTables(cmd *cobra.Command, s *study.Study, of []string) error {
+	kinds, err := chosen(*s, of)
+	if err != nil {
+		return err
+	}
+	for _, k := range kinds {
+		switch {
+		case k.ledger:
+			err = checkLedger(cmd, s)
+		case k.basis && len(s.Basis) == 0:
+			err = usagef("--of %s needs functions: give --on ATOMS:FUNCTIONS, such as --on Cl:sigma", k.name)
+		default:
+			err = checkBasis(cmd, s, false)
 		}
-		o.format = byEnding
-	}
-	if o.format == table.FormatCSV && len(o.kinds) > 1 {
-		return usagef("--of: a CSV file holds one table, and %d are asked for", len(o.kinds))
+		if err != nil {
+			return err
+		}
 	}
 	return nil
 }
 
-// table makes the tables of one structure.
-func (p *program) table(ctx context.Context, cmd *cobra.Command, o *tableOrder, j job) error {
-	s, err := p.opened(cmd, &o.study, j.structure)
+// tables makes the tables of one structure.
+func (p *program) tables(ctx context.Context, s study.Study, of []string, o tableOrder, output string) error {
+	kinds, err := chosen(s, of)
 	if err != nil {
 		return err
 	}
-	if j.output != "" {
-		if err := export.CheckTarget(j.output, o.force); err != nil {
+	if o.format == table.FormatCSV && len(kinds) > 1 {
+		return usagef("--of: a CSV file holds one table, and %d are asked for", len(kinds))
+	}
+	if output != "" {
+		if err := export.CheckTarget(output, o.force); err != nil {
 			return err
 		}
 	}
 	var parts []string
-	for _, k := range o.kinds {
-		if k.basis && len(s.Basis) == 0 {
-			return usagef("--of %s needs functions: give --on ATOMS:FUNCTIONS, such as --on Cl:sigma", k.name)
-		}
-		if k.finite {
-			g, err := p.group(ctx, s)
-			if err != nil {
-				return err
-			}
-			if g.Fit.Setting.Infinite() {
-				return fmt.Errorf("--of %s: %s has infinitely many operations; content, orbitals and coefficients can be had, and the others of a finite group: %s", k.name, g.Fit.Setting.Symbol, finiteInstead(g.Fit.Setting.Symbol))
-			}
-		}
-		grid, err := k.make(ctx, p, s, o.texts.Say)
+	for _, k := range kinds {
+		grid, err := p.grid(ctx, s, k, o.texts.Say)
 		if err != nil {
 			return err
 		}
 		parts = append(parts, grid.As(o.format))
 	}
 	text := strings.Join(parts, "\n")
-	if j.output == "" {
+	if output == "" {
 		return p.write(text)
 	}
-	return export.WriteFile(j.output, o.force, func(w io.Writer) error {
+	return export.WriteFile(output, o.force, func(w io.Writer) error {
 		_, err := io.WriteString(w, text)
 		return err
 	})
+}
+
+// grid makes one table.
+func (p *program) grid(ctx context.Context, s study.Study, k tableKind, say table.Say) (table.Grid, error) {
+	if k.finite {
+		g, err := p.work.Group(ctx, s)
+		if err != nil {
+			return table.Grid{}, err
+		}
+		if symbol := g.Fit.Setting.Symbol; g.Fit.Setting.Infinite() {
+			return table.Grid{}, fmt.Errorf("--of %s: %s has infinitely many operations; content, orbitals and coefficients can be had, and the others of a finite group: %s", k.name, symbol, finiteInstead(symbol))
+		}
+	}
+	return k.make(ctx, p, s, say)
 }
 
 // finiteInstead is what to write to have a finite group in the place of an
