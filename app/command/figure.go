@@ -33,14 +33,15 @@ A figure is a sheet of panels, all from one place and at one scale:
 
 func (p *program) figureCommand() *cobra.Command {
 	var s study.Study
+	var several many
 	var output string
 	var force bool
 	cmd := &cobra.Command{
-		Use:   "figure STRUCTURE [--on ATOMS:FUNCTIONS] [--sheet KIND] -o FILE.png",
+		Use:   "figure STRUCTURE… [--on ATOMS:FUNCTIONS] [--sheet KIND] -o FILE.png",
 		Short: "Draw a sheet of panels: group orbitals, operations, axes, frames, levels",
 		Long: `Draw a figure for print or for a slide as a PNG file: with --on all group orbitals
 of the functions, with --irrep one of them, without functions the molecule with
-its axes.
+its axes. Several structures need ` + namePlace + ` in the name of FILE.
 ` + structureHelp + selectionHelp + sheetHelp,
 		Example: `  lobewright figure complex.xyz -o complex.png
   lobewright figure complex.xyz --on Cl:sigma -o all.png
@@ -52,20 +53,19 @@ its axes.
   lobewright figure complex.xyz --sheet frames --second x-between -o frames.png
   lobewright figure complex.xyz --on Cl:sigma --sheet descent --subgroup C2v -o descent.png
   lobewright figure complex.xyz --on Cl:sigma --sheet levels -o levels.png`,
-		Args: oneStructure,
+		Args: several.args,
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if err := p.open(cmd, &s, args[0]); err != nil {
-				return err
-			}
-			if err := checkFigure(cmd, &s, output); err != nil {
-				return err
-			}
-			return p.figure(cmd.Context(), s, output, force)
+			return p.eachStudy(cmd, args, &several, &s, output,
+				func(s *study.Study, output string) error { return checkFigure(cmd, s, output) },
+				func(ctx context.Context, p *program, s study.Study, output string) error {
+					return p.figure(ctx, s, output, force)
+				})
 		},
 	}
 	flags := cmd.Flags()
 	groupFlags(flags, &s)
 	basisFlag(flags, &s)
+	several.flags(flags)
 	shownFlags(flags, &s)
 	flags.StringVarP(&output, "output", "o", "", "`FILE` to write; it must end in .png")
 	flags.BoolVar(&force, "force", false, "overwrite an existing file")
