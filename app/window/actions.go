@@ -511,6 +511,8 @@ func (u *ui) key(e *fyne.KeyEvent) bool {
 		u.nextOrbital(1)
 	case fyne.KeyEscape:
 		u.escape()
+	case fyne.KeyF1:
+		u.showHelp()
 	default:
 		return false
 	}

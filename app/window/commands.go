@@ -131,6 +131,8 @@ func (u *ui) fileCommands() []*command {
 		(&command{key: "menu.saveStudy", do: u.save}).withKey(fyne.KeyS, control),
 		(&command{key: "menu.saveStudyAs", do: u.askSave}).withKey(fyne.KeyS, control|shift),
 		(&command{key: "menu.savePicture", do: u.askPicture}).withKey(fyne.KeyE, control),
+		(&command{key: "menu.copyPicture", do: u.copyPicture}).withKey(fyne.KeyC, control|shift),
+		{key: "menu.copyTable", menu: u.copyCommands()},
 		rule,
 		quit,
 	}
@@ -263,6 +265,8 @@ func (u *ui) helpCommands() []*command {
 	return []*command{
 		(&command{key: "menu.everything", do: u.showEverything}).withKey(fyne.KeyF, control),
 		rule,
+		(&command{key: "menu.regionHelp", do: u.showHelp}).byHand("F1"),
+		{key: "menu.firstSteps", do: u.steps.beginOnDemo},
 		(&command{key: "menu.keys", do: u.showKeys}).withKey(fyne.KeyH, control|shift),
 		{key: "menu.about", do: u.about},
 	}

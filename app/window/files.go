@@ -3,10 +3,8 @@
 package window
 
 import (
-	"context"
 	"errors"
 	"fmt"
-	"image"
 	"image/color"
 	"io"
 	"os"
@@ -21,7 +19,6 @@ import (
 
 	"lobewright/app/export"
 	"lobewright/app/files"
-	"lobewright/app/picture"
 	"lobewright/app/study"
 	"lobewright/app/work"
 )
@@ -174,6 +171,15 @@ func (u *ui) save() {
 		u.askSave()
 		return
 	}
+	if c := u.changedFile; c != nil && c.path == u.studyFile && !c.gone {
+		u.askReplace(u.studyFile, u.saveOver) // another program has written it
+		return
+	}
+	u.saveOver()
+}
+
+// saveOver writes over the study's own file.
+func (u *ui) saveOver() {
 	if err := u.writeStudy(u.studyFile, true); err != nil {
 		u.notice = say("errors.aboutSaving", err.Error())
 		u.given.Update()
@@ -194,6 +200,9 @@ func (u *ui) writeStudy(path string, force bool) error {
 	})
 	if err == nil {
 		u.keepFile(path, s)
+		u.watchFiles()
+		u.watch.accept(path)
+		u.changedFile = nil
 		_ = u.session.AddRecent(path)
 		u.updateMenus()
 	}
@@ -287,17 +296,7 @@ func savePicture(path string, force bool, r request, carried []byte) (err error)
 	if err := export.CheckTarget(path, force); err != nil {
 		return err
 	}
-	var live picture.Live
-	f, err := live.Frame(r.shown, r.sight, r.width, r.height, r.dpi, false)
-	if err != nil {
-		return err
-	}
-	p := picture.Picture{Scene: f.Scene, Camera: f.Camera, Look: f.Look, Width: r.width, Height: r.height, Resolution: r.dpi}
-	var img *image.RGBA
-	if img, err = p.Draw(context.Background()); err != nil {
-		return err
-	}
-	return export.WriteFile(path, force, func(w io.Writer) error { return export.EncodePNG(w, img, r.dpi, carried) })
+	return export.WriteFile(path, force, func(w io.Writer) error { return drawPNG(w, r, carried) })
 }
 
 // keysText is what Help shows: what to do, and what comes of it, as keys of
@@ -403,9 +402,13 @@ func (u *ui) showText(title, text string) {
 // showSheet shows something to read until it is closed.
 func (u *ui) showSheet(title string, body fyne.CanvasObject) {
 	var popup *widget.PopUp
+	u.afterSheet = nil
 	hide := func() {
 		popup.Hide()
-		u.win.Canvas().Focus(u.view)
+		if u.afterSheet == nil {
+			u.afterSheet = u.view
+		}
+		u.win.Canvas().Focus(u.afterSheet)
 	}
 	done := newSheetButton(say("help.close"), hide, hide)
 	popup = widget.NewModalPopUp(container.NewPadded(container.NewVBox(

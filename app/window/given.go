@@ -81,12 +81,13 @@ func (d *givenDrawing) messages() {
 		top := d.y
 		d.words(text, d.accent)
 		d.words(say("errors.dismiss"), d.quiet)
-		d.board.spot(spot{x: pad - 4, y: top, width: d.width + 8, height: d.y - top, name: name, do: func() {
+		d.board.spot(spot{x: pad - 4, y: top, width: d.width + 8, height: d.y - top, name: name, hint: say("errors.dismiss"), do: func() {
 			forget()
 			d.ui.given.Update()
 		}})
 		d.y += 8
 	}
+	d.drawChanged()
 	dismissable("dismiss open", d.openProblem, func() { d.ui.openProblem = "" })
 	dismissable("dismiss notice", d.notice, func() { d.ui.notice = "" })
 }
@@ -129,7 +130,7 @@ func (d *givenDrawing) progress(p *work.Progress) {
 	d.y += 8
 	top := d.y
 	d.words(say("given.computing", say(stageTexts[p.Stage])), d.quiet)
-	d.board.spot(spot{x: pad - 4, y: top - 14, width: d.width + 8, height: d.y - top + 14, name: "stop", do: d.service.Cancel})
+	d.board.spot(spot{x: pad - 4, y: top - 14, width: d.width + 8, height: d.y - top + 14, name: "stop", hint: say("given.stopHint"), do: d.service.Cancel})
 }
 
 // stageTexts are the keys of what is being computed.
@@ -197,12 +198,12 @@ func (d *givenDrawing) tolerance() {
 	d.board.fill(x, d.y+textSize+3, w, 1, d.board.palette.Rule)
 	d.board.spot(spot{x: x - 3, y: d.y - 3, width: w + 6, height: 22, name: "tolerance", hint: say("given.allowedHint"), do: d.askTolerance})
 	x += w + 10
-	step := func(sign, name string, to float64, ok bool) {
+	step := func(sign, name, hint string, to float64, ok bool) {
 		var do func()
 		if ok {
 			do = func() { d.setTolerance(to) }
 		}
-		d.chip(x, d.y-4, 24, notation.Words(sign), chip{name: name, do: do, off: !ok})
+		d.chip(x, d.y-4, 24, notation.Words(sign), chip{name: name, hint: say(hint), do: do, off: !ok})
 		x += 28
 	}
 	below, above := 0.0, 0.0
@@ -214,8 +215,8 @@ func (d *givenDrawing) tolerance() {
 			above = t
 		}
 	}
-	step("−", "tolerance less", below, below > 0)
-	step("+", "tolerance more", above, above > 0)
+	step("−", "tolerance less", "given.lessHint", below, below > 0)
+	step("+", "tolerance more", "given.moreHint", above, above > 0)
 	d.y += textSize + 10
 	d.problem(work.ConcernTolerance)
 }

@@ -49,10 +49,11 @@ type pane struct {
 	onRune   func(rune) bool
 	holdsTab func() bool // the Tab key is its own
 	onLeave  func()      // the keyboard goes elsewhere
+	onHelp   func()
 }
 
 func newPane(content func(b *board), u *ui) *pane {
-	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint}
+	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint, onHelp: u.showHelp}
 	p.raster = canvas.NewRaster(p.generate)
 	p.ExtendBaseWidget(p)
 	return p
@@ -370,6 +371,8 @@ func (p *pane) TypedKey(e *fyne.KeyEvent) {
 		p.scrollTo(0)
 	case fyne.KeyEnd:
 		p.scrollTo(math.Inf(1))
+	case fyne.KeyF1:
+		p.onHelp()
 	}
 }
 

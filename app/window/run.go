@@ -150,6 +150,9 @@ func (u *ui) begin(structure string) {
 			u.start(restored)
 		} else {
 			u.start(demoStudy(study.Study{}, firstDemo))
+			if !u.session.Preferences().Shown {
+				u.steps.begin()
+			}
 		}
 		return
 	}

@@ -173,7 +173,7 @@ func TestTheCodeHoldsNoTextsForPeople(t *testing.T) {
 			t.Errorf("%v: %q belongs to assets/texts", at, text)
 			return
 		}
-		if !word.MatchString(text) || slices.Contains(noWords, text) {
+		if _, key := assets.TextsIn(assets.English)[text]; key || !word.MatchString(text) || slices.Contains(noWords, text) {
 			return
 		}
 		shown := slices.Contains(showing, called(within))

@@ -6,6 +6,7 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/container"
+	"fyne.io/fyne/v2/driver/desktop"
 	"fyne.io/fyne/v2/widget"
 )
 
@@ -15,10 +16,13 @@ type scrubBar struct {
 	change  func(float64)
 	end     func()
 	setting bool
+	hint    string // key
+	onHint  func(text string, at fyne.Position)
+	help    func()
 }
 
-func newScrubBar(u *ui, most, step float64) *scrubBar {
-	s := &scrubBar{}
+func newScrubBar(u *ui, most, step float64, hint string) *scrubBar {
+	s := &scrubBar{hint: hint, onHint: u.hint, help: u.showHelp}
 	s.Min, s.Max, s.Step = 0, most, step
 	s.OnChanged = func(v float64) {
 		if !s.setting {
@@ -32,6 +36,27 @@ func newScrubBar(u *ui, most, step float64) *scrubBar {
 	}
 	s.ExtendBaseWidget(s)
 	return s
+}
+
+// MouseIn implements desktop.Hoverable.
+func (s *scrubBar) MouseIn(e *desktop.MouseEvent) {
+	s.Slider.MouseIn(e)
+	s.onHint(say(s.hint), e.AbsolutePosition)
+}
+
+// MouseOut implements desktop.Hoverable.
+func (s *scrubBar) MouseOut() {
+	s.Slider.MouseOut()
+	s.onHint("", fyne.Position{})
+}
+
+// TypedKey implements fyne.Focusable.
+func (s *scrubBar) TypedKey(e *fyne.KeyEvent) {
+	if e.Name == fyne.KeyF1 {
+		s.help()
+		return
+	}
+	s.Slider.TypedKey(e)
 }
 
 // set shows a value without telling of a change.

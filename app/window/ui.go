@@ -52,9 +52,9 @@ type ui struct {
 	tracks    []track
 	angles    *fyne.Container // angle with its name and value, for linear molecules
 	angleText *widget.Label
-	basis     *widget.Entry
+	basis     *hintEntry
 	fault     *pane // above basis: what is wrong with what was typed
-	play      *widget.Button
+	play      *hintButton
 	hints     *hintBox
 	thumbs    *thumbs
 	player    *player
@@ -68,6 +68,11 @@ type ui struct {
 	notice      string // a remark of the program itself
 	// studyFile is where the study was read from or saved to last; see hasFile.
 	studyFile, studyOf string
+
+	watch       *fileWatch
+	changedFile *changedFile // on the disk, by another program
+	steps       *firstSteps
+	afterSheet  fyne.Focusable // gets the keyboard back when a text is closed
 
 	sights  sightCache
 	images  imageCache
@@ -93,6 +98,8 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.history = study.NewHistory(study.Study{})
 	u.service = work.NewService(work.New(structure.Inputs{Demo: assets.Demos()}), post, func(st *work.State) { u.guard(func() { u.deliver(st) }) })
 	u.hints = newHintBox(u)
+	u.steps = newFirstSteps(u)
+	u.watch = newFileWatch(lookInterval, u.fileChanged)
 	u.thumbs = newThumbs(u)
 	u.player = newPlayer(u)
 	u.view = u.newView()
@@ -108,10 +115,10 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.ledger.least = fyne.NewSize(200, ledgerHeight)
 	u.said = newPane(u.drawSaid, u)
 	u.said.least = fyne.NewSize(160, 36)
-	u.scrub = newScrubBar(u, 1, 0.01)
+	u.scrub = newScrubBar(u, 1, 0.01, "ledger.scrubHint")
 	u.scrub.change = u.scrubbed
 	u.scrub.end = u.commit
-	u.angle = newScrubBar(u, 359, 1)
+	u.angle = newScrubBar(u, 359, 1, "ledger.angleHint")
 	u.angle.change = u.angled
 	u.angle.end = u.commit
 	u.angleText = widget.NewLabel(angleText(359))
@@ -120,7 +127,8 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.fault = newPane(u.drawFault, u)
 	u.fault.least = fyne.NewSize(100, 54)
 	u.fault.Hide()
-	u.basis = widget.NewEntry()
+	u.basis = &hintEntry{hint: "given.typeHint", onHint: u.hint, help: u.showHelp}
+	u.basis.ExtendBaseWidget(u.basis)
 	u.basis.SetPlaceHolder(typedExample)
 	u.basis.OnChanged = func(string) { u.sayTyped("") }
 	u.basis.OnSubmitted = func(text string) { u.guard(func() { u.typeBasis(text) }) }
@@ -151,16 +159,11 @@ const (
 )
 
 func (u *ui) assemble() fyne.CanvasObject {
-	button := func(icon fyne.Resource, do func()) *widget.Button {
-		b := widget.NewButtonWithIcon("", icon, func() { u.guard(do) })
-		b.Importance = widget.LowImportance
-		return b
-	}
-	u.play = button(theme.MediaPlayIcon(), u.togglePlay)
+	u.play = u.newIconButton(theme.MediaPlayIcon(), "ledger.playHint", u.togglePlay)
 	controls := container.NewHBox(
-		button(theme.MediaSkipPreviousIcon(), func() { u.jump(0) }),
+		u.newIconButton(theme.MediaSkipPreviousIcon(), "ledger.startHint", func() { u.jump(0) }),
 		u.play,
-		button(theme.MediaSkipNextIcon(), func() { u.jump(1) }),
+		u.newIconButton(theme.MediaSkipNextIcon(), "ledger.endHint", func() { u.jump(1) }),
 	)
 	rule := func() fyne.CanvasObject { return widget.NewSeparator() }
 	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.onTrack(u.scrub), u.angles)
@@ -169,7 +172,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane))
 	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
 	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
-		container.NewBorder(nil, nil, rule(), nil, right), u.view)
+		container.NewBorder(nil, nil, rule(), nil, right), u.steps.over(u.view))
 	whole := container.NewBorder(nil, below, nil, nil, middle)
 	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
 }
@@ -245,6 +248,7 @@ func (u *ui) do(step study.Step, s study.Study) {
 	u.player.stop()
 	u.history.Do(step, s)
 	u.changed()
+	u.steps.did(step)
 }
 
 // commit ends a gesture.
@@ -258,6 +262,7 @@ func (u *ui) changed() {
 	s := u.now()
 	u.hints.show("", fyne.Position{})
 	u.session.Keep(s)
+	u.watchFiles()
 	u.service.Request(s)
 	u.show(false)
 	u.refreshPanes()
@@ -436,6 +441,7 @@ func (u *ui) close() {
 		return
 	}
 	u.closing = true
+	u.watch.close()
 	u.player.stop()
 	u.service.Close()
 	u.view.frames.close()
