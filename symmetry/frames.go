@@ -241,12 +241,12 @@ func (f *Fit) FrameAlong(z, x mgl64.Vec3) (Frame, error) {
 		}
 		up = z.Normalize()
 	}
-	allowed := f.Setting.axesForZ()
+	allowed := f.Setting.AxesForZ()
 	up, ok := nearestLine(up, allowed)
 	if !ok {
 		return Frame{}, fmt.Errorf("z cannot lie there in %s: %s", f.Setting.Symbol, f.Setting.possible(allowed, "z"))
 	}
-	across := f.Setting.linesForX(up)
+	across := f.Setting.LinesForX(up)
 	side := mgl64.Vec3{}
 	switch {
 	case x != (mgl64.Vec3{}):
@@ -285,10 +285,10 @@ func nearestLine(v mgl64.Vec3, lines []mgl64.Vec3) (mgl64.Vec3, bool) {
 	return v, false
 }
 
-// axesForZ are the lines along which z can lie: the principal axis, one of the
+// AxesForZ are the lines along which z can lie: the principal axis, one of the
 // axes of D2, D2h, cubic and icosahedral groups, the normal of the plane of
 // Cs; none for C1 and Ci, where every line will do.
-func (s *Setting) axesForZ() []mgl64.Vec3 {
+func (s *Setting) AxesForZ() []mgl64.Vec3 {
 	k := s.kind
 	var out []mgl64.Vec3
 	add := func(a mgl64.Vec3) {
@@ -314,8 +314,8 @@ func (s *Setting) axesForZ() []mgl64.Vec3 {
 	return out
 }
 
-// linesForX are the lines square to z along a C2 or in a plane of the group.
-func (s *Setting) linesForX(z mgl64.Vec3) []mgl64.Vec3 {
+// LinesForX are the lines square to z along a C2 or in a plane of the group.
+func (s *Setting) LinesForX(z mgl64.Vec3) []mgl64.Vec3 {
 	var out []mgl64.Vec3
 	add := func(a mgl64.Vec3) {
 		for _, l := range out {

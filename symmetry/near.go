@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"slices"
 	"sort"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -378,12 +379,14 @@ func (l *ladder) subgroups(ctx context.Context, group []*element, add func([]*el
 }
 
 // standsAmong tells whether the same group with the same ideal points was found
-// before: near a line or a plane, different elements may lead there.
+// before, in an embedding of the same kind: near a line or a plane different
+// elements may lead there, and in an exactly symmetric structure all subgroups
+// that its operations carry into each other do.
 func (p *placed) standsAmong(earlier []*placed) bool {
 next:
 	for i := len(earlier) - 1; i >= 0 && earlier[i].deviation > p.deviation-1e-6; i-- {
 		q := earlier[i]
-		if q.kind != p.kind {
+		if q.kind != p.kind || !p.liesAlike(q) {
 			continue
 		}
 		for k := range p.ideal {
@@ -396,6 +399,48 @@ next:
 		return true
 	}
 	return false
+}
+
+// alikeTolerance is the share by which sums of squares of ways may differ that
+// alike operations carry the points: far less than tells two embeddings apart.
+const alikeTolerance = 0.01
+
+// liesAlike tells whether two embeddings of one group may be carried into each
+// other by an operation of a larger one: whether their operations are alike one
+// by one, and carry the points as far.
+func (p *placed) liesAlike(q *placed) bool {
+	a, b := p.signature(), q.signature()
+	for r := range a {
+		for i := 3; i < len(a[r]); i++ {
+			if math.Abs(a[r][i]-b[r][i]) > alikeTolerance*(1+math.Abs(a[r][i])) {
+				return false
+			}
+		}
+		if !slices.Equal(a[r][:3], b[r][:3]) {
+			return false
+		}
+	}
+	return true
+}
+
+// signature has of each operation, sorted, the trace in thousandths, the
+// determinant, how many points stay in place, Σ|R·P−P|² (Å²) and Σ|R·P−P|⁴.
+func (p *placed) signature() [][5]float64 {
+	list := make([][5]float64, len(p.matrices))
+	for r, m := range p.matrices {
+		s := [5]float64{math.Round(1000 * m.Trace()), math.Round(m.Det())}
+		for k, v := range p.ideal {
+			if int(p.permutations[r][k]) == k {
+				s[2]++
+			}
+			d := m.Mul3x1(v).Sub(v)
+			s[3] += d.Dot(d)
+			s[4] += d.Dot(d) * d.Dot(d)
+		}
+		list[r] = s
+	}
+	slices.SortFunc(list, func(a, b [5]float64) int { return slices.Compare(a[:], b[:]) })
+	return list
 }
 
 // sorted writes the groups in their default frames, by rising deviation, then

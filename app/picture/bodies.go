@@ -40,6 +40,8 @@ type stage struct {
 	corner rectangle
 	// carries marks the atoms with functions; nil without a basis.
 	carries []bool
+	// named are the symmetry elements whose names are written.
+	named []namedElement
 }
 
 // addMolecule draws the atoms and bonds of a structure.

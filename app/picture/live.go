@@ -5,6 +5,7 @@ import (
 
 	"github.com/go-gl/mathgl/mgl64"
 
+	"lobewright/app/notation"
 	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/assets"
@@ -33,7 +34,11 @@ type Shown struct {
 	Moment    float64
 	// Marked are atoms that are chosen, from 0.
 	Marked []int
-	Look   study.Look
+	// Held, if not nil, shows the axes of a second frame too.
+	Held *work.Exchange
+	// Notes are lines in the upper left corner.
+	Notes []notation.Text
+	Look  study.Look
 	// Palette, if not nil, takes the place of the one that Look asks for.
 	Palette *assets.Palette
 }
@@ -101,9 +106,13 @@ func (l *Live) Frame(shown Shown, orbit Orbit, width, height int, dpi float64, q
 		}
 		l.fill(s, shown, f.Camera.Eye.Sub(f.Camera.Target), quick)
 		spaceHatching(s.scene.Shapes, 25.4/dpi/orbit.PerPixel(width, height))
-		s.liveTriad(f)
+		s.liveTriad(f, shown.Held)
+		s.liveNotes(f, shown.Notes)
 		if !shown.Look.NoLabels {
 			l.addLabels(s, shown, f, quick || l.steady, fonts)
+		}
+		if shown.Look.Elements {
+			s.addElementNames(f, fonts)
 		}
 	}
 	f.Scene = s.scene
@@ -123,6 +132,12 @@ func (l *Live) fill(s *stage, shown Shown, toward mgl64.Vec3, quick bool) {
 			m.ID = i + 1
 			s.scene.Shapes[i].Material = m
 		}
+	}
+	if shown.Look.Displacements {
+		s.addDisplacements(g)
+	}
+	if shown.Look.Elements {
+		l.addElements(s, shown)
 	}
 	if shown.Operation != nil {
 		s.addMotion(*shown.Operation, l.roomOf(s, shown), toward)
@@ -167,26 +182,36 @@ func (l *Live) roomOf(s *stage, shown Shown) room {
 }
 
 // liveTriad draws the axes in the lower left corner.
-func (s *stage) liveTriad(f *Frame) {
+func (s *stage) liveTriad(f *Frame, held *work.Exchange) {
 	if s.look.NoAxes {
 		return
 	}
 	const length, inset = 9.0, 6.0 // mm
 	ink := flat(s.palette.Ink)
 	place := render.Place{OffsetX: length + inset, OffsetY: length + inset, Unit: length, Turn: true}
-	for i, letter := range []string{"x", "y", "z"} {
-		var e mgl64.Vec3
-		e[i] = 1
-		for _, g := range []render.Geometry{
-			render.Arrow{To: e, Radius: axisWidth / 2 / length, HeadLength: 0.2, HeadRadius: 0.06},
-			render.Text{At: e.Mul(triadLetter), Runs: []render.Run{{Text: letter, Italic: true}}, Size: liveLabel, Fixed: true, Through: true},
-		} {
+	for _, mark := range triadMarks(held) {
+		for _, g := range mark.triadShapes(length, axisWidth, liveLabel) {
 			at := place
 			s.scene.Shapes = append(s.scene.Shapes, render.Shape{Geometry: g, Material: ink, Place: &at})
 		}
 	}
 	side := 2 * (length*triadLetter + inset) * f.Quality.DPI / 25.4
 	s.corner = rectangle{left: 0, right: side, top: float64(f.Height) - side, bottom: float64(f.Height)}
+}
+
+// liveNotes writes lines into the upper left corner.
+func (s *stage) liveNotes(f *Frame, notes []notation.Text) {
+	const inset, line = 4.0, 5.0 // mm
+	for i, note := range notes {
+		s.scene.Shapes = append(s.scene.Shapes, render.Shape{
+			Geometry: render.Text{
+				Runs: runs(note), Size: liveLabel, AlignX: -1, AlignY: 1, Fixed: true, Through: true,
+				Halo: haloWidth, HaloColor: paint(s.palette.Ground),
+			},
+			Material: flat(s.palette.Quiet),
+			Place:    &render.Place{Y: 1, OffsetX: inset, OffsetY: -inset - line*float64(i), Unit: 1},
+		})
+	}
 }
 
 // Fonts are the built-in typefaces. The error is a fault of the program.

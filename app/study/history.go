@@ -33,6 +33,9 @@ const (
 	StepFigure      Step = "figure"
 	StepAtomTable   Step = "atomTable" // atoms typed in a table
 	StepView        Step = "view"      // a view kept or forgotten
+	StepAs          Step = "as"
+	StepHeld        Step = "held"
+	StepSubgroup    Step = "subgroup"
 )
 
 // Steps lists every step.
@@ -40,7 +43,7 @@ func Steps() []Step {
 	return []Step{
 		StepChange, StepOpen, StepCore, StepTolerance, StepFrame, StepBasis, StepAtoms, StepFunction, StepIrrep,
 		StepPartner, StepElement, StepOperation, StepPlay, StepScrub, StepAngle, StepOrbit, StepZoom, StepPan,
-		StepFit, StepAlong, StepPerspective, StepLook, StepFigure, StepAtomTable, StepView,
+		StepFit, StepAlong, StepPerspective, StepLook, StepFigure, StepAtomTable, StepView, StepAs, StepHeld, StepSubgroup,
 	}
 }
 

@@ -404,16 +404,7 @@ func (u *ui) chooseFrame(name string) {
 	u.setAxes(name, "", "")
 }
 
-func (u *ui) setAxes(frame, z, x string) {
-	s := u.now()
-	s.Frame, s.Z, s.X = frame, z, x
-	s.Operation, s.Moment = "", 0
-	s.Projection.Irrep, s.Projection.Copy, s.Projection.Partner = "", 0, 0
-	if s.Projection.Function > 0 {
-		s.Projection.Subject = study.SubjectFunction
-	}
-	u.do(study.StepFrame, s)
-}
+func (u *ui) setAxes(frame, z, x string) { _ = u.tryAxes(frame, z, x) }
 
 // askAxes asks for z and x.
 func (u *ui) askAxes() {
@@ -427,8 +418,7 @@ func (u *ui) askAxes() {
 		if err := try.Check(); err != nil {
 			return err
 		}
-		u.setAxes("", z, x)
-		return nil
+		return u.tryAxes("", z, x)
 	})
 }
 
@@ -585,5 +575,7 @@ func (u *ui) escape() {
 	case u.history.Open():
 		u.history.Cancel()
 		u.changed()
+	case u.pages.open != noPage:
+		u.pages.turnTo(noPage)
 	}
 }

@@ -59,6 +59,7 @@ func (u *ui) showAtoms() {
 	}
 	t.wrote, t.of = "\x00", ""
 	t.follow()
+	u.pages.turnTo(noPage)
 	u.given.Hide()
 	t.pane.Show()
 	t.mark(0, 1)

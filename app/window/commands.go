@@ -167,9 +167,7 @@ func (u *ui) editCommands() []*command {
 }
 
 func (u *ui) axesCommands() []*command {
-	return []*command{
-		{key: "menu.axesByHand", do: u.askAxes},
-	}
+	return append(u.frameCommands(), rule, &command{key: "menu.axesByHand", do: u.askAxes})
 }
 
 func (u *ui) viewCommands() []*command {

@@ -37,6 +37,7 @@ type givenDrawing struct {
 	*ui
 	*board
 	y, width                           float64
+	left                               float64 // what lines are moved to the right by
 	plain, quiet, head, strong, accent style
 }
 
@@ -50,7 +51,7 @@ func (d *givenDrawing) styles(b *board) {
 
 // line sets one paragraph and goes on below it.
 func (d *givenDrawing) line(t notation.Text, s style) {
-	d.y = d.board.paragraph(pad, d.y+s.size, d.width, t, s) - s.size
+	d.y = d.board.paragraph(pad+d.left, d.y+s.size, d.width, t, s) - s.size
 }
 
 func (d *givenDrawing) words(text string, s style) { d.line(notation.Words(text), s) }
@@ -177,12 +178,26 @@ func (d *givenDrawing) group() {
 	}
 	d.words(off, d.plain)
 	d.tolerance()
+	d.takenFor()
 	if fit.Doubtful {
 		d.words(say("given.doubtful"), d.accent)
 	}
 	if st.Stale(work.StageGroup) {
 		d.words(say("given.stale"), d.accent)
 	}
+}
+
+// takenFor says that the group is one of the ladder, with a way back.
+func (d *givenDrawing) takenFor() {
+	as := d.now().As
+	if as == "" {
+		return
+	}
+	label := notation.Words(say("frames.asNow", as) + "  ×")
+	w := d.board.measure(label, d.quiet) + 16
+	drawChip(d.board, pad, d.y, w, label, secondSize, chip{name: "group none", hint: say("frames.asFoundHint"), on: true, do: func() { d.takeGroup("") }})
+	d.y += chipHeight + 6
+	d.problem(work.ConcernAs)
 }
 
 // tolerances are the steps that the two signs walk through, in Å.
@@ -234,6 +249,9 @@ func (d *givenDrawing) frameOfAxes() {
 	for _, tie := range notation.TiesIn(texts(), fit.Ties) {
 		d.words(tie, d.quiet)
 	}
+	if d.pages.axesProblem != "" {
+		d.words(d.pages.axesProblem, d.accent)
+	}
 	d.problem(work.ConcernFrame, work.ConcernZ, work.ConcernX)
 	d.frames()
 }
@@ -261,7 +279,12 @@ func (d *givenDrawing) frames() {
 		now := s.Frame == name || s.Frame == "" && name == symmetry.FrameDefault
 		offer(name, say("frames.ruleHint", name, notation.SourceIn(texts(), f.Rule)), now && !byHand, func() { d.chooseFrame(name) })
 	}
-	offer(say("frames.byHand"), say("frames.byHandHint"), byHand, d.askAxes)
+	offer(say("frames.byHand"), say("frames.byHandHint"), byHand, func() { d.pages.turnTo(axesPage) })
+	d.y += chipHeight + 10
+	x = pad
+	offer(say("frames.toLadder"), say("frames.toLadderHint"), s.As != "", func() { d.pages.turnTo(ladderPage) })
+	offer(say("frames.toSecond"), say("frames.toSecondHint"), s.Held.Frame != "" || s.Held.Z != "" || s.Held.X != "", func() { d.pages.turnTo(secondPage) })
+	offer(say("frames.toSubgroups"), say("frames.toSubgroupsHint"), s.Subgroup != "", func() { d.pages.turnTo(subgroupsPage) })
 	d.y += chipHeight + 4
 }
 

@@ -21,6 +21,7 @@ var stepTexts = map[study.Step]string{
 	study.StepOperation: "menu.stepOperation", study.StepPlay: "menu.stepPlay", study.StepScrub: "menu.stepScrub", study.StepAngle: "menu.stepAngle",
 	study.StepOrbit: "menu.stepOrbit", study.StepZoom: "menu.stepZoom", study.StepPan: "menu.stepPan", study.StepFit: "menu.stepFit", study.StepAlong: "menu.stepAlong",
 	study.StepPerspective: "menu.stepPerspective", study.StepLook: "menu.stepLook", study.StepFigure: "menu.stepFigure", study.StepChange: "menu.stepChange", study.StepAtomTable: "menu.stepAtomTable", study.StepView: "menu.stepView",
+	study.StepAs: "frames.stepAs", study.StepHeld: "frames.stepHeld", study.StepSubgroup: "frames.stepSubgroup",
 }
 
 // A hiddenShortcut works like any other. The toolkit writes shortcuts that it

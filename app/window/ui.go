@@ -35,6 +35,7 @@ type ui struct {
 
 	session *session.Session
 	history *study.History
+	work    *work.Work
 	service *work.Service
 	state   *work.State // the newest; never nil
 	colours look
@@ -43,6 +44,7 @@ type ui struct {
 	view      *viewport
 	given     *pane      // left
 	atoms     *atomTable // in the place of given while atoms are edited
+	pages     pages      // in the place of given: all about frames
 	follows   *pane      // right: content and group orbitals
 	detail    *pane      // right, below: the chosen group orbital
 	ledger    *pane      // below: one column an operation
@@ -96,7 +98,8 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	app.Settings().SetTheme(u.colours)
 
 	u.history = study.NewHistory(study.Study{})
-	u.service = work.NewService(work.New(structure.Inputs{Demo: assets.Demos()}), post, func(st *work.State) { u.guard(func() { u.deliver(st) }) })
+	u.work = work.New(structure.Inputs{Demo: assets.Demos()})
+	u.service = work.NewService(u.work, post, func(st *work.State) { u.guard(func() { u.deliver(st) }) })
 	u.hints = newHintBox(u)
 	u.steps = newFirstSteps(u)
 	u.watch = newFileWatch(lookInterval, u.fileChanged)
@@ -106,6 +109,7 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.given = newPane(u.drawGiven, u)
 	u.given.least = fyne.NewSize(leftWidth, 100)
 	u.atoms = newAtomTable(u)
+	u.newPages()
 	u.follows = newPane(u.drawFollows, u)
 	u.follows.least = fyne.NewSize(rightWidth, 100)
 	u.detail = newPane(u.drawDetail, u)
@@ -169,7 +173,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.onTrack(u.scrub), u.angles)
 	row := container.NewBorder(nil, nil, controls, nil, container.New(&shares{weights: []float32{1, 1.1}}, bars, u.said))
 	below := container.NewVBox(rule(), u.ledger, rule(), container.NewPadded(row))
-	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane))
+	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane, u.pages.pane))
 	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
 	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
 		container.NewBorder(nil, nil, rule(), nil, right), u.steps.over(u.view))
@@ -264,6 +268,7 @@ func (u *ui) changed() {
 	u.session.Keep(s)
 	u.watchFiles()
 	u.service.Request(s)
+	u.pages.changed()
 	u.show(false)
 	u.refreshPanes()
 }
@@ -274,6 +279,7 @@ func (u *ui) refreshPanes() {
 		u.atoms.follow()
 		u.atoms.pane.Update()
 	}
+	u.pages.pane.Update()
 	u.follows.Update()
 	u.detail.Update()
 	u.ledger.Update()
@@ -372,6 +378,7 @@ func (u *ui) show(moving bool) {
 	if op, ok := u.operation(); ok {
 		shown.Operation, shown.Moment = &op, s.Moment
 	}
+	u.pages.show(&shown)
 	u.fading.apply(u, &shown)
 	u.view.shown = shown
 	if st.Group != nil {
@@ -444,6 +451,7 @@ func (u *ui) close() {
 	u.watch.close()
 	u.player.stop()
 	u.service.Close()
+	u.pages.search.Close()
 	u.view.frames.close()
 	u.thumbs.close()
 	p := u.session.Preferences()

@@ -570,7 +570,7 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 		fyne.KeyPageUp, fyne.KeyPageDown, fyne.KeyEscape, fyne.KeyTab, fyne.KeyF5,
 	}
 	demos := []string{"square-plane", "water", "rod", "tetrahedron", "cyanide", "trimer"}
-	panes := []*pane{b.given, b.follows, b.ledger, b.detail, b.said}
+	panes := []*pane{b.given, b.pages.pane, b.follows, b.ledger, b.detail, b.said}
 	at := func(s fyne.Size) fyne.Position { return fyne.NewPos(s.Width*r.Float32(), s.Height*r.Float32()) }
 	buttons := []desktop.MouseButton{desktop.MouseButtonPrimary, desktop.MouseButtonSecondary, desktop.MouseButtonTertiary}
 	for n := range events {
@@ -601,7 +601,7 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 		case 13:
 			v.TypedRune([]rune("+-fxyzXYZa.,nN0?é")[r.IntN(17)])
 		case 14:
-			switch r.IntN(8) {
+			switch r.IntN(9) {
 			case 0:
 				b.openDemo(demos[r.IntN(len(demos))])
 			case 1:
@@ -618,6 +618,8 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 				b.setTolerance(tolerances[r.IntN(len(tolerances))])
 			case 7:
 				b.scrub.SetValue(r.Float64())
+			case 8:
+				b.pages.turnTo(page(r.IntN(5)))
 			}
 		case 15:
 			if r.IntN(10) == 0 {

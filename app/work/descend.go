@@ -100,3 +100,106 @@ func operationList(s *symmetry.Setting, operations []int) string {
 	}
 	return strings.Join(names, ", ")
 }
+
+// An Embedded is one way in which a subgroup lies in a group.
+type Embedded struct {
+	*symmetry.Descent
+	// Embedding counts, from 1, the ways in which subgroups of this symbol lie
+	// in the group, as Descents lists them; Of is how many there are.
+	Embedding, Of int
+}
+
+// Name is what Study.Subgroup takes: "C4v", or "C4v:2".
+func (e Embedded) Name() string {
+	if e.Embedding == 1 {
+		return e.Subgroup.Symbol
+	}
+	return fmt.Sprintf("%s:%d", e.Subgroup.Symbol, e.Embedding)
+}
+
+// Subgroups lists the subgroups of a finite group, one a conjugacy class and
+// without the group itself, by falling order. It takes up to a third of a second for the largest groups.
+func Subgroups(s *symmetry.Setting) ([]Embedded, error) {
+	classes, err := s.Subgroups()
+	if err != nil {
+		return nil, err
+	}
+	var symbols []string
+	order := map[string]int{}
+	for _, set := range classes {
+		d, err := s.Descend(set)
+		if err != nil {
+			return nil, err
+		}
+		if symbol := d.Subgroup.Symbol; order[symbol] == 0 && len(set) < s.Order() {
+			order[symbol] = len(set)
+			symbols = append(symbols, symbol)
+		}
+	}
+	slices.SortStableFunc(symbols, func(a, b string) int { return order[b] - order[a] })
+	var out []Embedded
+	for _, symbol := range symbols {
+		list, err := s.Descents(symbol)
+		if err != nil {
+			return nil, err
+		}
+		for i, d := range list {
+			out = append(out, Embedded{d, i + 1, len(list)})
+		}
+	}
+	return out, nil
+}
+
+// Holding narrows a list of subgroups to those that hold some operations, each
+// in the conjugate that does.
+func Holding(s *symmetry.Setting, list []Embedded, keep []int) ([]Embedded, error) {
+	if len(keep) == 0 {
+		return list, nil
+	}
+	var out []Embedded
+	for _, e := range list {
+		d, err := holding(s, e.Descent, keep)
+		if err != nil {
+			return nil, err
+		}
+		if d != nil {
+			out = append(out, Embedded{d, e.Embedding, e.Of})
+		}
+	}
+	return out, nil
+}
+
+// FindSubgroup returns the group of a ladder that is a subgroup of g, or one that
+// g's operations carry it into, which is no other to the eye: its operations
+// carry the core atoms by the same permutations, and are improper where these
+// are. It is nil if there is none.
+func (l *Ladder) FindSubgroup(g *Group, d *symmetry.Descent) *symmetry.Nearness {
+	setting := g.Fit.Setting
+	for x := range setting.Operations {
+		var operations []int
+		for _, o := range d.Operations {
+			operations = append(operations, setting.Product(setting.Product(x, o), setting.Inverse(x)))
+		}
+		for _, n := range l.Groups {
+			if n.Fit.Setting.Symbol == d.Subgroup.Symbol && n.Fit.Setting.Order() == len(operations) && carriesAlike(n.Fit, g.Fit, operations) {
+				return n
+			}
+		}
+	}
+	return nil
+}
+
+// carriesAlike tells whether each of some operations of one fit carries the
+// points as an operation of another does.
+func carriesAlike(n, fit *symmetry.Fit, operations []int) bool {
+	for _, o := range operations {
+		found := false
+		for r, q := range n.Permutations {
+			found = found || n.Setting.Operations[r].Turn.Improper == fit.Setting.Operations[o].Turn.Improper && slices.Equal(fit.Permutations[o], q)
+		}
+		if !found {
+			return false
+		}
+	}
+	return true
+}

@@ -18,6 +18,7 @@ type Share struct {
 	Irrep         string
 	Copy, Partner int     // from 0
 	Amount        float64 // Å
+	Dimension     int     // of the irrep
 }
 
 // noDistortion (Å) is what rounding leaves of a distortion that is none.
@@ -127,8 +128,37 @@ func shares(projection *orbitals.Projection, d []float64) []Share {
 			amount += c * d[i]
 		}
 		if math.Abs(amount) > noDistortion {
-			out = append(out, Share{projection.Irreps[o.Irrep].Label, o.Copy, o.Partner, amount})
+			irrep := projection.Irreps[o.Irrep]
+			out = append(out, Share{irrep.Label, o.Copy, o.Partner, amount, irrep.Dimension})
 		}
+	}
+	return out
+}
+
+// A Portion is the part of a distortion that belongs to one irrep, all copies
+// together: the square roots of sums of squares.
+type Portion struct {
+	Irrep  string
+	Amount float64 // Å
+	// Partners has the part of each partner, in Å.
+	Partners []float64
+}
+
+// DistortionByIrrep adds up the shares of a distortion irrep by irrep, in their
+// order.
+func DistortionByIrrep(shares []Share) []Portion {
+	var out []Portion
+	place := map[string]int{}
+	for _, s := range shares {
+		at, known := place[s.Irrep]
+		if !known {
+			at = len(out)
+			place[s.Irrep] = at
+			out = append(out, Portion{Irrep: s.Irrep, Partners: make([]float64, s.Dimension)})
+		}
+		p := &out[at]
+		p.Partners[s.Partner] = math.Hypot(p.Partners[s.Partner], s.Amount)
+		p.Amount = math.Hypot(p.Amount, s.Amount)
 	}
 	return out
 }

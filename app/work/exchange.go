@@ -3,6 +3,8 @@ package work
 import (
 	"fmt"
 
+	"github.com/go-gl/mathgl/mgl64"
+
 	"lobewright/app/study"
 	"lobewright/symmetry"
 )
@@ -30,6 +32,15 @@ func (g *Group) Exchanges() []Exchange {
 		out = append(out, e)
 	}
 	return out
+}
+
+// Here is the frame in force as an Exchange with itself.
+func (g *Group) Here() Exchange {
+	e := Exchange{Frame: symmetry.Frame{Rule: g.Fit.Rule, Turn: mgl64.Ident3()}, Fit: g.Fit}
+	if !g.Fit.Setting.Infinite() {
+		e.Names = symmetry.ExchangeNames(g.Fit.Setting, g.Fit.Setting, e.Frame.Turn)
+	}
+	return e
 }
 
 // Held is the second frame that a study holds against the one in force; nil if

@@ -1,6 +1,7 @@
 package work
 
 import (
+	"cmp"
 	"context"
 	"errors"
 	"fmt"
@@ -135,6 +136,27 @@ func ParseEmbedding(text string) (symbol string, embedding int, err error) {
 		return "", 0, err
 	}
 	return setting.Symbol, embedding, nil
+}
+
+// ByOrder are the groups, by index, from the largest to the smallest: ways in
+// which one lies in the structure together, the nearest first.
+func (l *Ladder) ByOrder() []int {
+	nearest := map[string]int{}
+	order := make([]int, len(l.Groups))
+	for i, n := range l.Groups {
+		order[i] = i
+		if n.Embedding == 1 {
+			nearest[n.Fit.Setting.Symbol] = i
+		}
+	}
+	slices.SortStableFunc(order, func(a, b int) int {
+		x, y := l.Groups[a], l.Groups[b]
+		return cmp.Or(
+			cmp.Compare(y.Fit.Setting.Order(), x.Fit.Setting.Order()),
+			cmp.Compare(nearest[x.Fit.Setting.Symbol], nearest[y.Fit.Setting.Symbol]),
+			cmp.Compare(x.Embedding, y.Embedding))
+	})
+	return order
 }
 
 // Find returns the group "D4h" or "D4h:2" of the ladder.

@@ -1,0 +1,66 @@
+package picture
+
+import (
+	"math"
+
+	"lobewright/app/work"
+	"lobewright/render"
+)
+
+// Displacements are drawn from the surface of an atom at its ideal place toward
+// where it is in the input.
+const (
+	leastDisplaced = 5e-4 // Å, of the longest: less is nothing to show
+	arrowLength    = 0.3  // Å, of the longest at the least: shorter is not seen
+	arrowRadius    = 0.035
+	arrowHead      = 0.16
+	arrowHeadWide  = 0.09
+	leastArrow     = 0.06 // Å, of any arrow: the smaller ones are left out
+)
+
+// displacementFactors are the factors by which arrows are drawn longer than the
+// displacements are: numbers that can be read in a caption.
+var displacementFactors = []float64{1, 2, 5, 10, 20, 50, 100, 200, 500, 1000}
+
+// DisplacementScale tells by which factor the arrows of displacements are drawn
+// longer than these are, and how long the longest displacement is, in Å. The
+// factor is 0 where nothing is displaced.
+func DisplacementScale(g *work.Group) (factor, longest float64) {
+	for _, d := range g.Displacements() {
+		longest = max(longest, d.Len())
+	}
+	if longest < leastDisplaced {
+		return 0, longest
+	}
+	for _, f := range displacementFactors {
+		factor = f
+		if f*longest >= arrowLength {
+			break
+		}
+	}
+	return factor, longest
+}
+
+// addDisplacements draws the way of each core atom from its ideal place to that
+// of the input, longer by the factor of DisplacementScale. It needs the balls of
+// the atoms.
+func (s *stage) addDisplacements(g *work.Group) {
+	factor, _ := DisplacementScale(g)
+	if factor == 0 {
+		return
+	}
+	m := matt(paint(s.palette.Accent))
+	for k, d := range g.Displacements() {
+		length := factor * d.Len()
+		if length < leastArrow {
+			continue
+		}
+		way := d.Normalize()
+		atom := s.atoms[g.Core[k]]
+		from := atom.centre.Add(way.Mul(0.9 * atom.radius))
+		to := atom.centre.Add(way.Mul(atom.radius + length))
+		head := math.Min(arrowHead, 0.6*length)
+		s.scene.Add(render.Arrow{From: from, To: to, Radius: arrowRadius, HeadLength: head, HeadRadius: arrowHeadWide * head / arrowHead}, m)
+		s.elements = append(s.elements, ball{to, rimRoom})
+	}
+}

@@ -1,0 +1,478 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"slices"
+	"strconv"
+	"strings"
+
+	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/widget"
+	"github.com/go-gl/mathgl/mgl64"
+	"gonum.org/v1/gonum/mat"
+
+	"lobewright/app/notation"
+	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/orbitals"
+	"lobewright/symmetry"
+)
+
+// subgroups keeps the subgroups of the group that is shown, and how the list is
+// narrowed.
+type subgroups struct {
+	setting *symmetry.Setting // whose list it is, or is being made
+	list    []work.Embedded   // nil until it is made
+	problem string
+
+	// keep are operations, by name, that the subgroup holds; leave atoms, from
+	// 0, that it leaves in place.
+	keep  []string
+	leave []int
+
+	// narrowed is the list by keep and leave.
+	narrowed    []work.Embedded
+	narrowedFor string
+
+	// taken says why a subgroup cannot be used.
+	taken string
+}
+
+// want has the list made, beside the toolkit, if it is not that of the group.
+func (c *subgroups) want(u *ui) {
+	g := u.state.Group
+	if g == nil || g.Fit.Setting == c.setting || g.Fit.Setting.Infinite() {
+		return
+	}
+	setting := g.Fit.Setting
+	*c = subgroups{setting: setting}
+	go func() {
+		list, err := listSubgroups(setting)
+		u.post(func() {
+			u.guard(func() {
+				if u.closing || c.setting != setting {
+					return
+				}
+				c.list = list
+				if err != nil {
+					c.problem = err.Error()
+				}
+				u.pages.pane.Update()
+			})
+		})
+	}()
+}
+
+// listSubgroups turns a panic, which nobody could catch there, into an error.
+func listSubgroups(s *symmetry.Setting) (list []work.Embedded, err error) {
+	defer func() {
+		if fault := recover(); fault != nil {
+			list, err = []work.Embedded{}, faultError{fault}
+		}
+	}()
+	return work.Subgroups(s)
+}
+
+// narrow is the list of those subgroups that hold what is kept.
+func (c *subgroups) narrow(g *work.Group) []work.Embedded {
+	key := strings.Join(c.keep, " ") + "|" + atomsText(c.leave)
+	if c.narrowed != nil && c.narrowedFor == key {
+		return c.narrowed
+	}
+	var keep []int
+	for _, name := range c.keep {
+		if o, err := g.Operation(name, 0); err == nil {
+			keep = append(keep, o.Index)
+		}
+	}
+	list, err := work.Holding(c.setting, c.list, keep)
+	if err == nil && len(c.leave) > 0 {
+		// All that leaves the atoms in place, and what is within that.
+		stay := g.Leaving(c.leave)
+		d, wrong := c.setting.Descend(stay)
+		if wrong == nil {
+			list = slices.DeleteFunc(slices.Clone(list), func(e work.Embedded) bool {
+				return slices.ContainsFunc(e.Operations, func(o int) bool { return !slices.Contains(stay, o) })
+			})
+			list = placeFirst(list, d)
+		}
+	}
+	c.narrowed, c.narrowedFor = list, key
+	return list
+}
+
+// placeFirst puts a subgroup first, where it may stand already in another of
+// its conjugates.
+func placeFirst(list []work.Embedded, d *symmetry.Descent) []work.Embedded {
+	embedding, of := 1, 1
+	for i, e := range list {
+		if slices.Equal(e.Operations, d.Operations) {
+			return append([]work.Embedded{e}, slices.Delete(slices.Clone(list), i, i+1)...)
+		}
+	}
+	return append([]work.Embedded{{Descent: d, Embedding: embedding, Of: of}}, list...)
+}
+
+// allSubgroups is the page of subgroups and of what becomes of everything
+// there.
+func (d *pageDrawing) allSubgroups() {
+	g := d.state.Group
+	if g == nil {
+		return
+	}
+	if g.Fit.Setting.Infinite() {
+		d.linearSubgroups(g)
+		return
+	}
+	c := &d.pages.subgroups
+	c.want(d.ui)
+	d.narrowing(g)
+	if c.problem != "" {
+		d.words(c.problem, d.accent)
+	}
+	if c.taken != "" {
+		d.words(c.taken, d.accent)
+	}
+	if c.list == nil {
+		d.words(say("frames.listing"), d.quiet)
+		return
+	}
+	list := c.narrow(g)
+	s := d.now()
+	var chosen *work.Embedded
+	x := float64(pad)
+	for i, e := range list {
+		name := e.Name()
+		on := s.Subgroup == name && (chosen == nil)
+		if on {
+			chosen = &list[i]
+		}
+		label := notation.Group(e.Subgroup.Symbol)
+		if e.Of > 1 {
+			label = label.Then(notation.Words(" " + strconv.Itoa(e.Embedding)))
+		}
+		d.choice(&x, label, chip{
+			name: "subgroup " + name, hint: say("frames.subgroupHint", keptText(e.Descent)), on: on, do: func() { d.chooseSubgroup(name) },
+		})
+	}
+	d.endChoices()
+	if len(list) == 0 {
+		d.words(say("frames.noSubgroup"), d.quiet)
+	}
+	if chosen == nil {
+		d.words(say("frames.chooseSubgroup"), d.quiet)
+		return
+	}
+	d.descent(g, *chosen)
+}
+
+// keptText lists the operations that a subgroup holds.
+func keptText(d *symmetry.Descent) string {
+	const most = 8
+	var names []string
+	for i, o := range d.Operations {
+		if i == most {
+			names = append(names, "…")
+			break
+		}
+		names = append(names, notation.Operation(d.Group.Operations[o].Name).String())
+	}
+	return strings.Join(names, "  ")
+}
+
+// narrowing offers to keep operations and to leave atoms in place.
+func (d *pageDrawing) narrowing(g *work.Group) {
+	c := &d.pages.subgroups
+	d.words(say("frames.subgroupsText"), d.quiet)
+	d.y += 4
+	x := float64(pad)
+	for _, name := range c.keep {
+		name := name
+		d.choice(&x, fill(say("frames.keeps"), notation.Operation(name)).Then(notation.Words("  ×")), chip{name: "drop " + name, hint: say("frames.dropHint"), on: true, do: func() {
+			c.keep = slices.DeleteFunc(c.keep, func(n string) bool { return n == name })
+		}})
+	}
+	if len(c.leave) > 0 {
+		names := g.AtomNames()
+		var list []string
+		for _, a := range c.leave {
+			list = append(list, names[a])
+		}
+		d.choice(&x, notation.Words(say("frames.leaves", strings.Join(list, ", "))+"  ×"), chip{name: "drop atoms", hint: say("frames.dropHint"), on: true, do: func() { c.leave = nil }})
+	}
+	at := d.y
+	d.choice(&x, notation.Words(say("frames.keepOperation")), chip{name: "keep operation", hint: say("frames.keepOperationHint"), do: func() { d.ui.operationMenu(at) }})
+	d.choice(&x, notation.Words(say("frames.leaveAtom")), chip{name: "leave atom", hint: say("frames.leaveAtomHint"), do: func() { d.ui.atomMenu(at) }})
+	d.endChoices()
+}
+
+// operationMenu offers every operation to be kept.
+func (u *ui) operationMenu(y float64) {
+	g := u.state.Group
+	if g == nil || g.Fit.Setting.Infinite() {
+		return
+	}
+	c := &u.pages.subgroups
+	var items []*fyne.MenuItem
+	for _, o := range g.Fit.Setting.Operations {
+		name := o.Name
+		if name == "E" || slices.Contains(c.keep, name) {
+			continue
+		}
+		items = append(items, fyne.NewMenuItem(notation.Operation(name).String(), func() {
+			u.guard(func() { c.keep = append(c.keep, name); u.pages.pane.Update() })
+		}))
+	}
+	u.menuOnPage(items, y)
+}
+
+// atomMenu offers every kind of place of the core, and the atoms that are
+// chosen, to be left in place.
+func (u *ui) atomMenu(y float64) {
+	g := u.state.Group
+	if g == nil {
+		return
+	}
+	c := &u.pages.subgroups
+	names := g.AtomNames()
+	const most = 60
+	var items []*fyne.MenuItem
+	add := func(label string, atoms []int) {
+		items = append(items, fyne.NewMenuItem(label, func() {
+			u.guard(func() { c.leave = atoms; u.pages.pane.Update() })
+		}))
+	}
+	if marked := u.now().Atoms; len(marked) > 0 {
+		var atoms []int
+		var list []string
+		for _, a := range marked {
+			if a <= len(names) {
+				atoms = append(atoms, a-1)
+				list = append(list, names[a-1])
+			}
+		}
+		add(say("frames.chosenAtoms", strings.Join(list, ", ")), atoms)
+	}
+	for i, a := range g.Core {
+		if i < most {
+			add(names[a], []int{a})
+		}
+	}
+	u.menuOnPage(items, y)
+}
+
+// menuOnPage shows a menu at a height of the page.
+func (u *ui) menuOnPage(items []*fyne.MenuItem, y float64) {
+	if len(items) == 0 {
+		return
+	}
+	at := fyne.CurrentApp().Driver().AbsolutePositionForObject(u.pages.pane)
+	z := u.zoom()
+	widget.ShowPopUpMenuAtPosition(fyne.NewMenu("", items...), u.win.Canvas(), at.AddXY(float32(pad*z), float32((y+chipHeight)*z)))
+}
+
+func (u *ui) chooseSubgroup(name string) {
+	s := u.now()
+	if s.Subgroup == name {
+		name = ""
+	}
+	s.Subgroup = name
+	u.pages.subgroups.taken = ""
+	u.do(study.StepSubgroup, s)
+}
+
+// descent shows one subgroup: its operations and axes, the correlation of the
+// irreps, and how partners go over.
+func (d *pageDrawing) descent(g *work.Group, e work.Embedded) {
+	title := notation.Group(g.Fit.Setting.Symbol).Then(notation.Words(" → "), notation.Group(e.Subgroup.Symbol))
+	if e.Of > 1 {
+		title = title.Then(notation.Words("   " + say("frames.embedding", e.Embedding, e.Of)))
+	}
+	d.y += 6
+	d.line(title, style{size: groupSize, color: d.board.palette.Ink, align: -1})
+	d.y += 4
+	var kept notation.Text
+	for i, o := range e.Operations {
+		name, there := g.Fit.Setting.Operations[o].Name, e.Subgroup.Operations[e.Images[i]].Name
+		if i > 0 {
+			kept = kept.Then(notation.Words("  "))
+		}
+		kept = kept.Then(notation.Operation(name))
+		if there != name {
+			kept = kept.Then(notation.Words("\u00a0→\u00a0"), notation.Operation(there))
+		}
+	}
+	d.line(kept, d.plain)
+	d.y += 2
+	if e.Rotation.Trace() < 3-1e-9 {
+		d.line(say3(say("frames.subgroupAxes"), e.Rotation), d.quiet)
+	} else {
+		d.words(say("frames.subgroupSameAxes"), d.quiet)
+	}
+	d.y += 4
+	x := float64(pad)
+	d.choice(&x, notation.Words(say("frames.useGroup")), chip{name: "use group", hint: say("frames.useGroupHint"), do: func() { d.ui.useSubgroup(e.Descent) }})
+	d.endChoices()
+	d.correlation(g.Fit.Setting.Symbol, g.Fit.Setting.Irreps, e.Subgroup, e.Correlation, e.Partners)
+}
+
+// say3 fills a sentence with where x, y and z of a frame lie in another.
+func say3(sentence string, m mgl64.Mat3) notation.Text {
+	var parts []notation.Text
+	for i := range 3 {
+		r := m.Row(i)
+		parts = append(parts, notation.Words(notation.Vector(r[:], 3)))
+	}
+	return fill(sentence, parts...)
+}
+
+const contentColumn = 66
+
+// correlation is a table of what each irrep becomes, with the partners below
+// where they are not the same.
+func (d *pageDrawing) correlation(symbol string, irreps []symmetry.Irrep, sub *symmetry.Setting, contents [][]symmetry.Content, partners []*mat.Dense) {
+	y := d.y + secondSize
+	d.board.text(pad, y, notation.Group(symbol), d.quiet)
+	d.board.text(pad+contentColumn, y, notation.Group(sub.Symbol), d.quiet)
+	d.y += secondSize + 6
+	d.board.fill(pad, d.y, d.width, 1, d.board.palette.Rule)
+	d.y += 3
+	for i, ir := range irreps {
+		d.board.text(pad, d.y+textSize, notation.Irrep(ir.Label), d.strong)
+		var t notation.Text
+		for _, c := range contents[i] {
+			if len(t) > 0 {
+				t = t.Then(notation.Words(" + "))
+			}
+			if c.Copies > 1 {
+				t = t.Then(notation.Words(strconv.Itoa(c.Copies) + "\u00a0"))
+			}
+			t = t.Then(notation.Irrep(c.Irrep.Label))
+		}
+		d.board.text(pad+contentColumn, d.y+textSize, t, d.plain)
+		d.y += textSize + 6
+		if over := goingOver(contents[i], partners[i]); len(over) > 0 {
+			d.left = contentColumn
+			d.width -= contentColumn
+			d.line(over, d.quiet)
+			d.left, d.width = 0, d.width+contentColumn
+			d.y += 2
+		}
+	}
+}
+
+// goingOver writes the partners of an irrep as combinations of the subgroup's;
+// nothing where they are those in their order, or where there is one only.
+func goingOver(content []symmetry.Content, partners *mat.Dense) notation.Text {
+	n, _ := partners.Dims()
+	if n < 2 {
+		return nil
+	}
+	var names []notation.Text
+	for _, c := range content {
+		for number := range c.Copies {
+			for k := range c.Irrep.Dimension {
+				name := notation.Irrep(c.Irrep.Label)
+				if c.Irrep.Dimension > 1 {
+					name = name.Then(notation.Words(":" + strconv.Itoa(k+1)))
+				}
+				if c.Copies > 1 {
+					name = notation.Words(strconv.Itoa(number+1) + "\u00a0").Then(name)
+				}
+				names = append(names, name)
+			}
+		}
+	}
+	var t notation.Text
+	for k := range n {
+		var terms []orbitals.Term
+		for l := range n {
+			if c := partners.At(l, k); c > 1e-9 || c < -1e-9 {
+				terms = append(terms, orbitals.Term{Function: l, Coefficient: c})
+			}
+		}
+		if k > 0 {
+			t = t.Then(notation.Words(",  "))
+		}
+		t = t.Then(partnerText(itoa(k+1)), notation.Words("\u00a0=\u00a0"), notation.CombinationText(terms, func(number string) notation.Text {
+			if i, err := strconv.Atoi(number); err == nil && i <= len(names) {
+				return names[i-1]
+			}
+			return notation.Words(number)
+		}, shortCoefficient))
+	}
+	return t
+}
+
+// useSubgroup takes the structure for a subgroup of its group, as soon as the
+// ladder is known, in which it stands.
+func (u *ui) useSubgroup(d *symmetry.Descent) {
+	g := u.state.Group
+	if g == nil {
+		return
+	}
+	u.pages.subgroups.taken = ""
+	u.pages.wanted = &wantedGroup{group: g, descent: d}
+	if n := u.pages.nearby; n.Ladder != nil && n.Ladder.Structure == g.Structure && slices.Equal(n.Ladder.Core, g.Core) {
+		u.pages.takeWanted()
+		return
+	}
+	u.pages.subgroups.taken = say("frames.searching")
+	u.pages.search.Want(u.now())
+	if n := u.pages.nearby; n.Cancelled || n.Problem != nil {
+		u.pages.search.Again(u.now())
+	}
+}
+
+// A wantedGroup is a subgroup that is to be used when the ladder is known.
+type wantedGroup struct {
+	group   *work.Group
+	descent *symmetry.Descent
+}
+
+// takeWanted uses the subgroup that is wanted.
+func (p *pages) takeWanted() {
+	w := p.wanted
+	p.wanted = nil
+	if w == nil || w.group != p.u.state.Group {
+		return
+	}
+	p.subgroups.taken = ""
+	n := p.nearby.Ladder.FindSubgroup(w.group, w.descent)
+	if n == nil {
+		p.subgroups.taken = say("frames.notInLadder", w.descent.Subgroup.Symbol)
+		p.pane.Update()
+		return
+	}
+	p.u.takeGroup(asText(n))
+}
+
+// linearSubgroups is the page for a linear molecule, whose subgroups cannot be
+// listed: the groups with the same z that are met most.
+func (d *pageDrawing) linearSubgroups(g *work.Group) {
+	symbol := g.Fit.Setting.Symbol
+	d.words(say("frames.linearSubgroups"), d.quiet)
+	d.y += 6
+	s := d.now()
+	x := float64(pad)
+	for _, sub := range linearGroups[symbol] {
+		sub := sub
+		d.choice(&x, notation.Group(sub), chip{name: "subgroup " + sub, on: s.Subgroup == sub, do: func() { d.chooseSubgroup(sub) }})
+	}
+	d.endChoices()
+	if s.Subgroup == "" {
+		return
+	}
+	const most = 4
+	l, err := symmetry.DescendLinear(symbol, s.Subgroup, most)
+	if err != nil {
+		d.words(err.Error(), d.accent)
+		return
+	}
+	d.y += 6
+	x = pad
+	d.choice(&x, notation.Words(say("frames.useGroup")), chip{name: "use group", hint: say("frames.useGroupHint"), do: func() { d.takeGroup(s.Subgroup) }})
+	d.endChoices()
+	d.correlation(symbol, l.Irreps, l.Subgroup, l.Correlation, l.Partners)
+}
