@@ -70,6 +70,9 @@ func (s *stage) addMolecule(g *work.Group) {
 		radius := share * g.Molecule.Atoms[i].Element.Radius()
 		s.atoms = append(s.atoms, ball{p, radius})
 		m := matt(mixed(s.palette.Quiet, s.palette.Ground, tone(i)))
+		if s.look.Coloured {
+			m = matt(s.atomColour(g.Molecule.Atoms[i].Element, core[i]))
+		}
 		m.ID = i + 1
 		s.scene.Add(render.Sphere{Center: p, Radius: radius}, m)
 	}
@@ -77,6 +80,15 @@ func (s *stage) addMolecule(g *work.Group) {
 		m := matt(mixed(s.palette.Quiet, s.palette.Ground, max(tone(b[0]), tone(b[1]))+0.1))
 		s.scene.Add(render.Cylinder{A: g.Sites.Positions[b[0]], B: g.Sites.Positions[b[1]], Radius: bondThickness / 2}, m)
 	}
+}
+
+// atomColour is the colour of an element; spectators are paler.
+func (s *stage) atomColour(e structure.Element, core bool) render.Color {
+	share := 0.0
+	if !core {
+		share = 0.55
+	}
+	return mixed(s.palette.Atom(e.Place()), s.palette.Ground, share)
 }
 
 // lobeUnit is the length of the longest lobe: a share of the nearest distance

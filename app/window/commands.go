@@ -255,6 +255,7 @@ func (u *ui) figureCommands() []*command {
 				s.Look.Style = "ink"
 			}
 		}),
+		look("menu.coloured", func() bool { return u.now().Look.Coloured }, func(s *study.Study) { s.Look.Coloured = !s.Look.Coloured }),
 		look("menu.labels", func() bool { return !u.now().Look.NoLabels }, func(s *study.Study) { s.Look.NoLabels = !s.Look.NoLabels }),
 	}
 }
