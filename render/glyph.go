@@ -42,6 +42,9 @@ func (f *Fonts) Glyphs(runs []Run, size float64) []Glyph {
 	return out
 }
 
+// Index is the number of the sign in the font of its cut.
+func (g Glyph) Index() int { return int(g.index) }
+
 // A Segment is a piece of an outline.
 type Segment struct {
 	// Kind is 'M' (begin a closed piece), 'L' (straight line), 'Q' (quadratic

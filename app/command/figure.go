@@ -3,13 +3,13 @@ package command
 import (
 	"context"
 	"io"
-	"path/filepath"
 	"strings"
 
 	"github.com/spf13/cobra"
 	"github.com/spf13/pflag"
 
 	"lobewright/app/export"
+	"lobewright/app/files"
 	"lobewright/app/sheet"
 	"lobewright/app/study"
 )
@@ -39,20 +39,26 @@ func (p *program) figureCommand() *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "figure STRUCTURE… [--on ATOMS:FUNCTIONS] [--sheet KIND] -o FILE.png",
 		Short: "Draw a sheet of panels: group orbitals, operations, axes, frames, levels",
-		Long: `Draw a figure for print or for a slide as a PNG file: with --on all group orbitals
-of the functions, with --irrep one of them, without functions the molecule with
-its axes. Several structures need ` + namePlace + ` in the name of FILE.
+		Long: `Draw a figure for print or for a slide: with --on all group orbitals of the
+functions, with --irrep one of them, without functions the molecule with its
+axes. Several structures need ` + namePlace + ` in the name of FILE.
+
+The ending of FILE chooses the format
+  .png         a picture of --dpi dots per inch
+  .svg         text and lines as vectors, bodies as pictures of --dpi
+  .pdf         the same, with text that can be searched and copied
 ` + structureHelp + selectionHelp + sheetHelp,
 		Example: `  lobewright figure complex.xyz -o complex.png
   lobewright figure complex.xyz --on Cl:sigma -o all.png
-  lobewright figure complex.xyz --on Cl:sigma,pi --width 180 --dpi 600 -o page.png
+  lobewright figure complex.xyz --on Cl:sigma,pi --width 180 --dpi 600 -o page.pdf
   lobewright figure complex.xyz --on Cl:sigma --irrep Eu --copy 1 --partner 2 -o eu-2.png
   lobewright figure complex.xyz --on Cl:sigma --sheet set --irrep Eu --slide -o eu.png
   lobewright figure complex.xyz --on Cl:sigma --sheet operations --function 2 -o strip.png
-  lobewright figure complex.xyz --sheet molecule --look ink --width 120 -o elements.png
+  lobewright figure complex.xyz --sheet molecule --look ink --width 120 -o elements.svg
   lobewright figure complex.xyz --sheet frames --second x-between -o frames.png
   lobewright figure complex.xyz --on Cl:sigma --sheet descent --subgroup C2v -o descent.png
-  lobewright figure complex.xyz --on Cl:sigma --sheet levels -o levels.png`,
+  lobewright figure complex.xyz --on Cl:sigma --sheet levels -o levels.png
+  lobewright figure page.pdf --look ink -o page-ink.pdf`,
 		Args: several.args,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			return p.eachStudy(cmd, args, &several, &s, output,
@@ -67,7 +73,7 @@ its axes. Several structures need ` + namePlace + ` in the name of FILE.
 	basisFlag(flags, &s)
 	several.flags(flags)
 	shownFlags(flags, &s)
-	flags.StringVarP(&output, "output", "o", "", "`FILE` to write; it must end in .png")
+	flags.StringVarP(&output, "output", "o", "", "`FILE` to write; its ending chooses the format: .png, .svg or .pdf")
 	flags.BoolVar(&force, "force", false, "overwrite an existing file")
 	pageFlags(flags, &s)
 	lookFlags(flags, &s)
@@ -134,8 +140,8 @@ func checkFigure(cmd *cobra.Command, s *study.Study, output string) error {
 	switch {
 	case output == "":
 		return usagef("no file to write: give -o FILE.png")
-	case !strings.EqualFold(filepath.Ext(output), ".png"):
-		return usagef("-o %s: the name must end in .png, the one format there is", output)
+	case !export.IsSheetFile(output):
+		return usagef("-o %s: the name must end in %s", output, wordError{export.SheetEndings}.list())
 	case flags.Changed("height") && !(s.Figure.Height > 0):
 		return usagef("--height: must be a number greater than 0")
 	case flags.Changed("text") && !(s.Figure.TextSize >= 4 && s.Figure.TextSize <= 72):
@@ -168,23 +174,18 @@ func (p *program) figure(ctx context.Context, s study.Study, output string, forc
 	if err != nil {
 		return err
 	}
-	if err := export.CheckTarget(output, force); err != nil {
+	if err := files.Check(output, force); err != nil {
 		return err
 	}
 	carried, err := p.carried(ctx, s)
 	if err != nil {
 		return err
 	}
-	dpi := s.Figure.TheResolution()
-	img, err := made.Paint(ctx, dpi)
-	if err != nil {
-		return err
-	}
 	for _, n := range made.Notes {
 		p.note("%s", n)
 	}
-	return export.WriteFile(output, force, func(w io.Writer) error {
-		return export.EncodePNG(w, img, dpi, carried)
+	return files.Write(output, files.Options{Force: force}, func(w io.Writer) error {
+		return export.WriteSheet(ctx, w, made, output, s.Figure.TheResolution(), carried)
 	})
 }
 

@@ -47,28 +47,36 @@ func inFolder(t *testing.T) (file string) {
 	return file
 }
 
+// TestAFigureIsMadeAnewFromItselfWithTheSameBytes goes from each format to each.
 func TestAFigureIsMadeAnewFromItselfWithTheSameBytes(t *testing.T) {
 	file := inFolder(t)
-	command(t, "figure", file, "--on", "H:s", "--irrep", "B2", "--look", "ink", "--view", "30,20", "--dpi", "60", "-o", "old.png")
+	endings := export.SheetEndings
+	for _, e := range endings {
+		command(t, "figure", file, "--on", "H:s", "--irrep", "B2", "--look", "ink", "--view", "30,20", "--dpi", "60", "-o", "old"+e)
+	}
 	if err := os.Remove(file); err != nil {
 		t.Fatal(err)
 	}
-	command(t, "figure", "old.png", "-o", "new.png")
-	before, _ := os.ReadFile("old.png")
-	after, _ := os.ReadFile("new.png")
-	if len(before) == 0 || !bytes.Equal(before, after) {
-		t.Errorf("%d bytes became %d others", len(before), len(after))
-	}
-	s, err := export.StudyIn("old.png")
-	if err != nil {
-		t.Fatal(err)
-	}
-	encoded, err := study.Encode(s)
-	if err != nil || bytes.Contains(encoded, []byte("somebody")) || s.Structure != "water.xyz" || s.Coordinates == "" {
-		t.Errorf("%v: %s", err, encoded)
-	}
-	if bytes.Contains(before, []byte("somebody")) {
-		t.Error("the file tells a path")
+	for _, from := range endings {
+		s, err := export.StudyIn("old" + from)
+		if err != nil {
+			t.Fatal(err)
+		}
+		encoded, err := study.Encode(s)
+		if err != nil || bytes.Contains(encoded, []byte("somebody")) || s.Structure != "water.xyz" || s.Coordinates == "" {
+			t.Errorf("%s: %v: %s", from, err, encoded)
+		}
+		for _, to := range endings {
+			command(t, "figure", "old"+from, "--force", "-o", "new"+to)
+			before, _ := os.ReadFile("old" + to)
+			after, _ := os.ReadFile("new" + to)
+			if len(before) == 0 || !bytes.Equal(before, after) {
+				t.Errorf("%s made from %s has %d bytes and is not the one with %d", to, from, len(after), len(before))
+			}
+			if bytes.Contains(before, []byte("somebody")) {
+				t.Errorf("%s tells a path", to)
+			}
+		}
 	}
 }
 

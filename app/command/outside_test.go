@@ -2,6 +2,9 @@ package command
 
 import (
 	"bytes"
+	"image"
+	"image/png"
+	"math"
 	"os"
 	"os/exec"
 	"path/filepath"
@@ -117,6 +120,104 @@ func TestMovingPicturesAreReadByOtherPrograms(t *testing.T) {
 			validateGLB(t, modules, file)
 		}
 	})
+}
+
+func TestSheetsAreReadByOtherPrograms(t *testing.T) {
+	t.Chdir(t.TempDir())
+	make := func(file string, more ...string) string {
+		command(t, append([]string{"figure", "demo:square-plane", "--on", "Cl:sigma", "--dpi", "150", "--width", "120", "-o", file}, more...)...)
+		return file
+	}
+	t.Run("PNG", func(t *testing.T) {
+		if out := reader(t, "identify", "-units", "PixelsPerInch", "-format", "%wx? %x %[colorspace]", make("a.png")); !strings.HasPrefix(out, "709x? 150.0") || !strings.HasSuffix(out, " sRGB") {
+			t.Error(out)
+		}
+		if out := reader(t, "pngcheck", "-q", "a.png", make("transparent.png", "--ground", "transparent", "--look", "ink")); strings.Contains(out, "ERROR") {
+			t.Error(out)
+		}
+	})
+	t.Run("PDF", func(t *testing.T) {
+		make("a.pdf")
+		fonts := strings.Split(strings.TrimSpace(reader(t, "pdffonts", "a.pdf")), "\n")
+		for _, line := range fonts[2:] {
+			if !strings.Contains(line, "DejaVuSans") || !strings.Contains(line, "yes yes yes") { // embedded, a subset, with Unicode
+				t.Error(line)
+			}
+		}
+		if len(fonts) < 4 {
+			t.Errorf("fonts: %q", fonts)
+		}
+		if out := reader(t, "pdftotext", "-layout", "a.pdf", "-"); !strings.Contains(out, "b1g") || !strings.Contains(out, "(φ1 − φ3)/√2") {
+			t.Errorf("text: %s", out)
+		}
+		if out := reader(t, "pdfinfo", "a.pdf"); strings.Contains(out, "CreationDate") || !strings.Contains(out, "Page size:       340.157 x") {
+			t.Error(out)
+		}
+		reader(t, "pdfdetach", "-save", "1", "-o", "study.lobewright", "a.pdf")
+		if got, want := command(t, "project", "study.lobewright"), command(t, "project", "a.pdf"); got != want {
+			t.Errorf("the attached study gives\n%s", got)
+		}
+		if out := reader(t, "pdftoppm", "-r", "150", "-png", "-singlefile", "a.pdf", "from-pdf"); out != "" {
+			t.Errorf("pdftoppm says %s", out)
+		}
+		alike(t, make("b.png"), "from-pdf.png")
+	})
+	t.Run("SVG", func(t *testing.T) {
+		if out := reader(t, "rsvg-convert", "-d", "150", "-p", "150", "-o", "from-svg.png", make("a.svg")); out != "" {
+			t.Errorf("rsvg-convert says %s", out)
+		}
+		alike(t, make("c.png"), "from-svg.png")
+	})
+}
+
+// alike compares two pictures of a sheet: another program sets edges a little
+// otherwise, but bodies and type lie in the same places.
+func alike(t *testing.T, ours, theirs string) {
+	t.Helper()
+	var pictures [2]image.Image
+	for i, file := range []string{ours, theirs} {
+		f, err := os.Open(file)
+		if err != nil {
+			t.Fatal(err)
+		}
+		pictures[i], err = png.Decode(f)
+		f.Close()
+		if err != nil {
+			t.Fatal(err)
+		}
+	}
+	a, b := pictures[0].Bounds(), pictures[1].Bounds()
+	if d := a.Dx() - b.Dx(); d < -1 || d > 1 {
+		t.Errorf("%v and %v", a, b)
+	}
+	// Tones in squares of 8 pixels.
+	const side = 8
+	mean := func(p image.Image, x, y int) (out [3]float64) {
+		for d := range side * side {
+			r, g, b, _ := p.At(x+d%side, y+d/side).RGBA()
+			for i, v := range []uint32{r, g, b} {
+				out[i] += float64(v>>8) / side / side
+			}
+		}
+		return out
+	}
+	worst, off, all := 0.0, 0, 0
+	for y := 0; y+side < min(a.Dy(), b.Dy()); y += side {
+		for x := 0; x+side < min(a.Dx(), b.Dx()); x += side {
+			m, n := mean(pictures[0], x, y), mean(pictures[1], x, y)
+			d := 0.0
+			for i := range m {
+				d = max(d, math.Abs(m[i]-n[i]))
+			}
+			worst = max(worst, d)
+			if all++; d > 12 {
+				off++
+			}
+		}
+	}
+	if worst > 60 || off > all/25 {
+		t.Errorf("%s: %d of %d squares differ, by up to %.0f of 255", theirs, off, all, worst)
+	}
 }
 
 // TestEveryMovingPictureIsMadeAnewFromEveryOther: any format carries the whole

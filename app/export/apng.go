@@ -43,7 +43,7 @@ func (f *Film) EncodeAPNG(ctx context.Context, w io.Writer, study []byte) error 
 		if k == 0 {
 			data.kind, data.sequence = "IDAT", nil
 		}
-		rows := newRows(data, part.Dx(), f.Opaque)
+		rows := newRows(data, part.Dx(), depthOf(f.Opaque))
 		for y := part.Min.Y; y < part.Max.Y; y++ {
 			rows.write(img.Pix[img.PixOffset(part.Min.X, y):])
 		}
@@ -51,7 +51,11 @@ func (f *Film) EncodeAPNG(ctx context.Context, w io.Writer, study []byte) error 
 			before = image.NewRGBA(img.Rect)
 		}
 		copy(before.Pix, img.Pix)
-		return rows.close()
+		if err := rows.close(); err != nil {
+			return err
+		}
+		data.flush()
+		return c.err
 	})
 	if err != nil {
 		return err

@@ -27,7 +27,7 @@ type PNG struct {
 }
 
 // bandBytes is about the memory that a band of a picture may take.
-const bandBytes = 8 << 20
+const bandBytes = 64 << 20
 
 // Encode writes the picture band by band, marked as sRGB. The error is that of
 // w or of Paint.
@@ -38,7 +38,7 @@ func (p PNG) Encode(w io.Writer) error {
 		return c.err
 	}
 	data := &chunkStream{chunks: c, kind: "IDAT"}
-	rows := newRows(data, p.Width, p.Opaque)
+	rows := newRows(data, p.Width, depthOf(p.Opaque))
 	band := max(1, min(p.Height, bandBytes/(4*max(1, p.Width))))
 	img := image.NewRGBA(image.Rect(0, 0, p.Width, band))
 	for y := 0; y < p.Height; y += band {
@@ -55,6 +55,7 @@ func (p PNG) Encode(w io.Writer) error {
 	if err := rows.close(); err != nil {
 		return err
 	}
+	data.flush()
 	c.chunk("IEND", nil)
 	return c.err
 }
@@ -174,48 +175,53 @@ func (s *chunkStream) flush() {
 
 // rows filters and compresses the rows of a picture.
 type rows struct {
-	stream    *chunkStream
 	z         *zlib.Writer
 	depth     int // bytes a pixel
 	now, last []byte
 	filtered  [5][]byte // by filter, each with the filter's number in front
 }
 
-func newRows(stream *chunkStream, width int, opaque bool) *rows {
-	r := &rows{stream: stream, z: zlib.NewWriter(stream), depth: 4}
+// depthOf is how many bytes a pixel has.
+func depthOf(opaque bool) int {
 	if opaque {
-		r.depth = 3
+		return 3
 	}
-	r.now, r.last = make([]byte, width*r.depth), make([]byte, width*r.depth)
+	return 4
+}
+
+// newRows writes to w, for pixels of four bytes with the opacity last, of three
+// without it, or of the opacity alone.
+func newRows(w io.Writer, width, depth int) *rows {
+	r := &rows{z: zlib.NewWriter(w), depth: depth}
+	r.now, r.last = make([]byte, width*depth), make([]byte, width*depth)
 	for i := range r.filtered {
-		r.filtered[i] = make([]byte, 1+width*r.depth)
+		r.filtered[i] = make([]byte, 1+width*depth)
 		r.filtered[i][0] = byte(i)
 	}
 	return r
 }
 
 // write adds a row of premultiplied pixels; it may be longer than the row.
+// An error of the writer below is returned by close.
 func (r *rows) write(rgba []byte) {
 	r.now, r.last = r.last, r.now
-	if r.depth == 3 {
-		for i, j := 0, 0; i < len(r.now); i, j = i+3, j+4 {
-			r.now[i], r.now[i+1], r.now[i+2] = rgba[j], rgba[j+1], rgba[j+2]
-		}
-	} else {
-		for i := 0; i < len(r.now); i += 4 {
-			unmultiply(r.now[i:i+4:i+4], rgba[i:i+4:i+4])
+	for i, j := 0, 0; i < len(r.now); i, j = i+r.depth, j+4 {
+		from := rgba[j : j+4 : j+4]
+		switch {
+		case r.depth == 1:
+			r.now[i] = from[3]
+		case from[3] == 255:
+			copy(r.now[i:i+r.depth], from)
+		default:
+			var pixel [4]byte
+			unmultiply(pixel[:], from)
+			copy(r.now[i:i+r.depth], pixel[:])
 		}
 	}
-	_, _ = r.z.Write(r.best()) // an error is kept by the chunks
+	_, _ = r.z.Write(r.best())
 }
 
-func (r *rows) close() error {
-	if err := r.z.Close(); err != nil {
-		return err
-	}
-	r.stream.flush()
-	return r.stream.chunks.err
-}
+func (r *rows) close() error { return r.z.Close() }
 
 // unmultiply takes the opacity out of a colour.
 func unmultiply(to, from []byte) {
@@ -223,8 +229,6 @@ func unmultiply(to, from []byte) {
 	switch a {
 	case 0:
 		to[0], to[1], to[2] = 0, 0, 0
-	case 255:
-		to[0], to[1], to[2] = from[0], from[1], from[2]
 	default:
 		for i := range 3 {
 			to[i] = uint8(min(255, (uint32(from[i])*255+a/2)/a))

@@ -52,6 +52,9 @@ func carrying(t testing.TB, data []byte) map[string][]byte {
 		setExtras(d, data)
 		return gltf.NewEncoder(b).Encode(d)
 	})
+	for _, name := range SheetEndings[1:] {
+		encode("a"+name, func(b *bytes.Buffer) error { return WriteSheet(ctx, b, someSheet(), name, 72, data) })
+	}
 	encode("a.mp4", func(b *bytes.Buffer) error {
 		b.Write([]byte{0, 0, 0, 16, 'f', 't', 'y', 'p', 'i', 's', 'o', 'm', 0, 0, 0, 0})
 		b.Write([]byte{0, 0, 0, 1, 'm', 'd', 'a', 't', 0, 0, 0, 0, 0, 0, 0, 17, 7})
