@@ -27,6 +27,14 @@ type Shown struct {
 	// sign changes fades through grey.
 	Before []float64
 	Fade   float64
+	// Full, if not 0, is the coefficient that gets a lobe of full length, so
+	// that pictures of different sums have one scale. Otherwise the largest of
+	// each does.
+	Full float64
+	// Traveller, if not nil, are coefficients of what the Operation carries
+	// instead: it is drawn like a ghost, in the size of a function by itself,
+	// and the lobes stay where they are.
+	Traveller []float64
 	// Operation, if not nil, shows its symmetry elements, and Moment, from 0
 	// to 1, how far it has carried the lobes; after 0 their start stays as a
 	// ghost.
@@ -151,6 +159,12 @@ func (l *Live) fill(s *stage, shown Shown, toward mgl64.Vec3, quick bool) {
 	}
 	parts := l.parts(s, shown)
 	at := mgl64.Ident3()
+	if len(shown.Traveller) == len(shown.Coefficients) && shown.Operation != nil {
+		l.addParts(s, g, parts, at, 1, detail)
+		carried := Shown{Group: g, Basis: shown.Basis, Coefficients: shown.Traveller}
+		l.addParts(s, g, l.parts(s, carried), shown.Operation.At(shown.Moment), ghostOpacity, coarse)
+		return
+	}
 	if shown.Operation != nil && shown.Moment > 0 {
 		l.addParts(s, g, parts, at, ghostOpacity, coarse)
 		at = shown.Operation.At(shown.Moment)

@@ -54,3 +54,31 @@ func Eased(t float64) float64 {
 	t = min(max(t, 0), 1)
 	return t * t * (3 - 2*t)
 }
+
+// Times of a sum that grows operation by operation. The first operations are
+// played as ever, so that one sees what happens; the others quickly, but never
+// more than two a second: a sum that is 0 now and then must not flicker.
+const (
+	SlowSteps = 3
+	quickStep = 500 * time.Millisecond
+	growth    = 400 * time.Millisecond
+)
+
+// StepDuration is how long step n, counted from 0, of a growing sum takes.
+func StepDuration(op work.Operation, n int) time.Duration {
+	if n < SlowSteps {
+		return Duration(op) + growth
+	}
+	return quickStep
+}
+
+// StepMoment is how far the operation of step n has come after a time, and how
+// far the sum has grown, both from 0 to 1. In a slow step the sum grows when
+// the function has arrived, in a quick one while it arrives.
+func StepMoment(op work.Operation, n int, elapsed time.Duration) (moment, grown float64) {
+	if n < SlowSteps {
+		return Moment(op, elapsed), Eased(float64(elapsed-Duration(op)) / float64(growth))
+	}
+	share := float64(elapsed) / float64(quickStep)
+	return Moment(op, time.Duration(share/0.7*float64(Duration(op)))), Eased((share - 0.4) / 0.6)
+}

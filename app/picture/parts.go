@@ -23,15 +23,17 @@ func (l *Live) parts(s *stage, shown Shown) []part {
 	unit, size := lobeUnit(shown.Group, s.carries), sizing(s.look.Size)
 	now := mixtures(shown.Basis, shown.Coefficients)
 	share := func(ms []mixture) func(mixture) float64 {
-		largest := 0.0
+		full := shown.Full
 		for _, m := range ms {
-			largest = max(largest, m.amplitude())
+			if shown.Full == 0 {
+				full = max(full, m.amplitude())
+			}
 		}
 		return func(m mixture) float64 {
-			if largest == 0 {
+			if full == 0 {
 				return 0
 			}
-			return size(m.amplitude() / largest)
+			return size(m.amplitude() / full)
 		}
 	}
 	nowShare := share(now)

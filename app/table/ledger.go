@@ -17,9 +17,9 @@ type Say func(key string, arguments ...any) string
 func LedgerGrid(l *work.Ledger, say Say) Grid {
 	f := l.Functions[l.Ledger.Function]
 	g := Grid{
-		Title: notation.Fill(say("ledger.tableTitle"), notation.PhiText(fmt.Sprint(l.Ledger.Function+1)), notation.Function(f.Name),
+		Title: notation.Fill(say("table.ledgerTitle"), notation.PhiText(fmt.Sprint(l.Ledger.Function+1)), notation.Function(f.Name),
 			notation.Words(l.AtomNames()[f.Site]), notation.Irrep(l.Irrep.Label), WeightText(l, say)),
-		Head:  []Cell{Words(say("ledger.class")), Words(say("ledger.operation")), Words(say("ledger.image")), Words(say("ledger.weight")), Words(say("ledger.sumSoFar"))},
+		Head:  []Cell{Words(say("table.class")), Words(say("table.operation")), Words(say("table.image")), Words(say("table.weight")), Words(say("table.sumSoFar"))},
 		Align: []Align{Left, Left, Left, Right, Left},
 	}
 	setting := l.Fit.Setting
@@ -30,9 +30,9 @@ func LedgerGrid(l *work.Ledger, say Say) Grid {
 			Sum(sum, notation.OneKind(sum)))
 	}
 	if result := l.Result(); result != nil {
-		g.Notes = append(g.Notes, notation.Fill(say("ledger.tableNorm"), notation.Words(NormText(l.Norm)), CombinationForm(result)))
+		g.Notes = append(g.Notes, notation.Fill(say("table.ledgerNorm"), notation.Words(NormText(l.Norm)), CombinationForm(result)))
 	} else {
-		g.Notes = append(g.Notes, notation.Words(say("ledger.tableZero")))
+		g.Notes = append(g.Notes, notation.Words(say("table.ledgerZero")))
 	}
 	return g
 }
@@ -41,9 +41,9 @@ func LedgerGrid(l *work.Ledger, say Say) Grid {
 // counted from 1, or the character.
 func WeightText(l *work.Ledger, say Say) notation.Text {
 	if l.ByCharacter() {
-		return notation.Words(say("ledger.theCharacter"))
+		return notation.Words(say("table.theCharacter"))
 	}
-	return notation.Words(say("ledger.theElement", l.Element[0]+1, l.Element[1]+1))
+	return notation.Words(say("table.theElement", l.Element[0]+1, l.Element[1]+1))
 }
 
 // NormText writes a length in closed form too, where it has one that is no

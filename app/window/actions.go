@@ -218,6 +218,9 @@ func (u *ui) chooseOrbital(irrep string, number, partner int) {
 	}
 	s.Projection.Irrep, s.Projection.Copy, s.Projection.Partner = irrep, number, partner
 	s.Projection.Subject, s.Moment = study.SubjectOrbital, 0
+	if !s.Projection.Character {
+		s.Projection.Element = elementFor(partner)
+	}
 	u.fade()
 	u.do(step, s)
 }
@@ -252,18 +255,27 @@ func (u *ui) nextFunction(by int) {
 	u.chooseFunction((u.now().Projection.Function-1+by+n)%n + 1)
 }
 
-// nextOperation goes to another operation without playing it.
-func (u *ui) nextOperation(by int) {
+// nextOperation goes to another operation and plays it, as a click on its
+// column does. While a sum grows it goes a step of the sum.
+func (u *ui) nextOperation(by int) { u.operationFrom(u.now().Operation, by) }
+
+// operationFrom is nextOperation from any operation, or from none.
+func (u *ui) operationFrom(name string, by int) {
 	if u.state.Group == nil {
 		return
 	}
-	s := u.now()
-	list := u.state.Group.Operations(s.Angle)
-	at := slices.IndexFunc(list, func(o work.Operation) bool { return o.Name == s.Operation })
+	if u.tally.ledger != nil && !u.tally.done {
+		u.tally.stepBy(by)
+		return
+	}
+	list := u.state.Group.Operations(u.now().Angle)
+	at := slices.IndexFunc(list, func(o work.Operation) bool { return o.Name == name })
 	if at < 0 && by < 0 {
 		at = 0
 	}
-	u.chooseOperation(list[(at+by+len(list))%len(list)].Name)
+	next := list[(at+by+len(list))%len(list)].Name
+	u.playOperation(next)
+	u.ledger.mark = "operation " + next
 }
 
 // firstAngle (degrees) is φ for the operations of a linear molecule until a
@@ -532,6 +544,12 @@ func (u *ui) typed(r rune) bool {
 		u.along(mgl64.Vec3{0, 0, -1})
 	case 'a':
 		u.alongOperation()
+	case 'o':
+		u.tally.start()
+	case '>':
+		u.tally.faster(1)
+	case '<':
+		u.tally.faster(-1)
 	case '.':
 		u.nextOperation(1)
 	case ',':
@@ -570,6 +588,8 @@ func (u *ui) escape() {
 	switch {
 	case u.win.Canvas().Overlays().Top() != nil:
 		u.win.Canvas().Overlays().Top().Hide()
+	case u.tally.ledger != nil:
+		u.tally.stop()
 	case u.player.playing:
 		u.player.stop()
 	case u.history.Open():

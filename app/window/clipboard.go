@@ -159,6 +159,7 @@ func (u *ui) tables() []copyTable {
 		{"menu.tableContent", content(func() table.Grid { return table.ContentGrid(u.state.Orbitals, say) })},
 		{"menu.tableOrbitals", content(func() table.Grid { return table.OrbitalsGrid(u.state.Orbitals, say) })},
 		{"menu.tableCoefficients", content(func() table.Grid { return table.CoefficientsGrid(u.state.Orbitals, say) })},
+		{"ledger.theTable", u.ledgerTable},
 	}
 }
 

@@ -223,7 +223,7 @@ func (u *ui) sizeCommands() []*command {
 }
 
 func (u *ui) playCommands() []*command {
-	return []*command{
+	return append([]*command{
 		(&command{key: "menu.playOrPause", do: u.togglePlay}).withKey(fyne.KeyP, control).byHand("menu.keySpace"),
 		(&command{key: "menu.toStart", do: func() { u.jump(0) }}).byHand("menu.keyHome"),
 		(&command{key: "menu.toEnd", do: func() { u.jump(1) }}).byHand("menu.keyEnd"),
@@ -234,7 +234,8 @@ func (u *ui) playCommands() []*command {
 		(&command{key: "menu.previousFunction", do: func() { u.nextFunction(-1) }}).byHand("N"),
 		(&command{key: "menu.nextOrbital", do: func() { u.nextOrbital(1) }}).byHand("menu.keyPageDown"),
 		(&command{key: "menu.previousOrbital", do: func() { u.nextOrbital(-1) }}).byHand("menu.keyPageUp"),
-	}
+		rule,
+	}, u.tallyCommands()...)
 }
 
 func (u *ui) figureCommands() []*command {

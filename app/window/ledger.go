@@ -3,60 +3,215 @@
 package window
 
 import (
-	"fmt"
 	"math"
 	"strings"
 
+	"fyne.io/fyne/v2"
+
 	"lobewright/app/notation"
-	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/orbitals"
 )
 
+// Sizes of the ledger, in units.
+const (
+	classRow  = 19.0
+	ledgerRow = 28.0
+	headWidth = 132.0
+	classGap  = 9.0
+	// ledgerHeight has the classes, four rows, and room for the scroll bar.
+	ledgerHeight = classRow + 4*ledgerRow + 9
+)
+
 // drawLedger draws the pane below: a column for every individual operation,
-// class by class, with what it makes of the chosen function or group orbital.
+// class by class, with what it makes of the chosen function, its weight, and
+// the sum up to it. Everything stands in one picture.
 func (u *ui) drawLedger(b *board) {
-	const row = 28
-	x := pad - u.ledger.scroll
+	u.ledger.inset = headWidth
+	x := headWidth + pad/2 - u.ledger.scroll
 	defer func() { u.ledger.extent = x + pad + u.ledger.scroll }()
-	g := u.state.Group
-	if g == nil {
+	if u.state.Group == nil {
 		return
 	}
-	s := u.now()
-	plain := style{size: textSize, color: b.palette.Ink}
-	second := style{size: secondSize, color: b.palette.Quiet}
-	operations := g.Operations(s.Angle)
-	class := -1
-	for i, op := range operations {
-		if op.Index >= 0 && op.Class != class {
+	sheet := u.sheetOf(b.measure)
+	at, growing := u.tally.column()
+	height := sheet.rows() * ledgerRow
+	class, began := -1, x
+	for i, c := range sheet.columns {
+		if c.class != class && c.class >= 0 {
 			if class >= 0 {
-				b.fill(x+2, 8, 1, 2*row-8, faint(b.palette.Rule, 0xA0))
-				x += 5
+				u.drawClass(b, sheet.classes[class], began, x)
+				b.fill(x+classGap/2, 5, 1, classRow+height-8, faint(b.palette.Rule, 0xA0))
+				x += classGap
 			}
-			class = op.Class
+			class, began = c.class, x
 		}
-		name, image := notation.Operation(op.Name), u.images.image(u, i)
-		w := math.Ceil(max(44, b.measure(name, plain)+16, b.measure(image, second)+12))
-		if x+w > 0 && x < b.width {
-			chosen := s.Operation == op.Name
-			ink := plain
-			if chosen {
-				b.fill(x, 3, w, 2*row, b.palette.Accent)
-				ink.color = b.palette.Ground
-			}
-			b.text(x+w/2, 3+19, name, ink)
-			below := second
-			if chosen {
-				below.color = b.palette.Ground
-			}
-			b.text(x+w/2, 3+row+17, image, below)
-			if p := u.state.Problem(work.ConcernOperation); p != nil && chosen {
-				b.frame(x, 3, w, 2*row, 2, b.palette.Ink)
-			}
+		if x+c.width > headWidth && x < b.width {
+			u.drawColumn(b, c, x, height, growing && i > at)
 		}
-		b.spot(spot{x: x, y: 3, width: w, height: 2 * row, name: "operation " + op.Name, hint: operationHint(op), do: func() { u.playOperation(op.Name) }})
-		x += w
+		name := c.op.Name
+		b.spot(spot{x: x, y: classRow, width: c.width, height: height, name: "operation " + name, hint: c.hint, do: func() { u.playOperation(name) }})
+		x += c.width
+	}
+	if class >= 0 {
+		u.drawClass(b, sheet.classes[class], began, x)
+	}
+	x = u.drawEnd(b, sheet, x+pad)
+	u.drawHeads(b, sheet)
+}
+
+// drawClass writes the name of a class over its columns, where they are seen.
+func (u *ui) drawClass(b *board, name string, from, to float64) {
+	from, to = max(from, headWidth), min(to, b.width)
+	t := notation.Operation(name)
+	s := style{size: secondSize, color: b.palette.Quiet}
+	if w := b.measure(t, s); to-from > w {
+		b.text((from+to)/2, 14, t, s)
+	}
+	b.fill(from+4, classRow-1, to-from-8, 1, faint(b.palette.Rule, 0x80))
+}
+
+// drawColumn draws one operation; what a growing sum has not come to yet is
+// left out of it.
+func (u *ui) drawColumn(b *board, c ledgerColumn, x, height float64, awaited bool) {
+	chosen := u.now().Operation == c.op.Name
+	ink := style{size: textSize, color: b.palette.Ink}
+	second := style{size: secondSize, color: b.palette.Ink}
+	if chosen {
+		b.fill(x, classRow+ledgerRow, c.width, height-ledgerRow, faint(b.palette.Accent, 0x28))
+		b.fill(x, classRow, c.width, ledgerRow, b.palette.Accent)
+		ink.color = b.palette.Ground
+		if p := u.state.Problem(work.ConcernOperation); p != nil {
+			b.frame(x, classRow, c.width, height, 2, b.palette.Ink)
+		}
+	}
+	middle := x + c.width/2
+	for i, t := range c.set {
+		s := second
+		if i == 0 {
+			s = ink
+		}
+		// Text lies over everything, so what reached under the heads is left out.
+		if i == 3 && awaited || middle-b.measure(t, s)/2 < headWidth+2 {
+			continue
+		}
+		b.text(middle, classRow+float64(i)*ledgerRow+18, t, s)
+	}
+	if c.mark != "" && x+c.width-12 > headWidth {
+		b.text(x+c.width-3, classRow+2*ledgerRow+11, notation.Words(c.mark), style{size: 9, color: b.palette.Accent, align: 1, bold: true})
+	}
+}
+
+// drawEnd draws what stands after the last column and returns where it ends.
+func (u *ui) drawEnd(b *board, sheet *ledgerSheet, x float64) float64 {
+	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
+	if sheet.remark != "" {
+		// Below the rows that there are, where they are seen.
+		b.paragraph(headWidth+pad/2, classRow+sheet.rows()*ledgerRow+18, b.width-headWidth-2*pad, notation.Words(sheet.remark), quiet)
+		return x
+	}
+	if _, growing := u.tally.column(); growing && !u.tally.finished() {
+		return x + u.endWidth(b, sheet)
+	}
+	plain := style{size: secondSize, color: b.palette.Ink, align: -1}
+	if len(sheet.end) > 0 {
+		b.fill(x-pad/2, 5, 1, classRow+4*ledgerRow-8, b.palette.Rule)
+	}
+	for i, line := range sheet.end {
+		s := plain
+		if line.do != nil {
+			s.color = b.palette.Accent
+		}
+		y := classRow + float64(i)*ledgerRow
+		if x < b.width && x > headWidth-4 {
+			b.text(x+4, y+18, line.text, s)
+		}
+		if line.do != nil || line.hint != "" {
+			name := line.name
+			if name == "" {
+				name = "ledger end " + letterOf(i)
+			}
+			b.spot(spot{x: x, y: y, width: b.measure(line.text, s) + 8, height: ledgerRow, name: name, hint: line.hint, do: line.do})
+		}
+	}
+	return x + u.endWidth(b, sheet)
+}
+
+func (u *ui) endWidth(b *board, sheet *ledgerSheet) float64 {
+	w := 0.0
+	for _, line := range sheet.end {
+		w = max(w, b.measure(line.text, style{size: secondSize}))
+	}
+	return w + 8
+}
+
+// drawHeads draws the names of the rows on the left; columns pass under them.
+func (u *ui) drawHeads(b *board, sheet *ledgerSheet) {
+	b.fill(0, 0, headWidth, classRow+4*ledgerRow+9, b.palette.Panel)
+	b.fill(headWidth-1, 5, 1, classRow+4*ledgerRow-8, b.palette.Rule)
+	b.spot(spot{width: headWidth, height: classRow + 4*ledgerRow, name: "ledger heads"})
+	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
+	for i, head := range sheet.heads {
+		y := classRow + float64(i)*ledgerRow
+		s := quiet
+		if i == 2 && sheet.ledger != nil {
+			s.color = b.palette.Accent
+			head = head.Then(notation.Words("  ▾"))
+			b.spot(spot{x: 4, y: y + 2, width: headWidth - 10, height: ledgerRow - 4, name: "ledger weight", hint: say("ledger.chooseWeight"), do: u.offerWeights})
+		}
+		b.text(pad, y+18, head, s)
+	}
+	if sheet.ledger != nil {
+		b.text(pad, 14, notation.Words(say("ledger.copyTable")), style{size: secondSize, color: b.palette.Accent, align: -1})
+		b.spot(spot{x: 4, y: 0, width: headWidth - 10, height: classRow, name: "ledger copy", hint: say("ledger.copyHint"), do: u.offerCopies})
+	}
+}
+
+// ledgerKeys serves the keys of the ledger while an operation is marked, and
+// tells whether it did.
+func (u *ui) ledgerKeys(e *fyne.KeyEvent) bool {
+	marked, onColumn := strings.CutPrefix(u.ledger.mark, "operation ")
+	if !onColumn {
+		marked = u.now().Operation
+	}
+	onColumn = onColumn || u.ledger.mark == ""
+	switch e.Name {
+	case fyne.KeyRight:
+		if onColumn {
+			u.operationFrom(marked, 1)
+		}
+		return onColumn
+	case fyne.KeyLeft:
+		if onColumn {
+			u.operationFrom(marked, -1)
+		}
+		return onColumn
+	case fyne.KeyHome:
+		u.edgeOperation(false)
+	case fyne.KeyEnd:
+		u.edgeOperation(true)
+	case fyne.KeyEscape:
+		u.escape()
+	default:
+		return false
+	}
+	return true
+}
+
+// edgeOperation plays the first operation or the last.
+func (u *ui) edgeOperation(last bool) {
+	if u.state.Group == nil {
+		return
+	}
+	list := u.state.Group.Operations(u.now().Angle)
+	op := list[0]
+	if last {
+		op = list[len(list)-1]
+	}
+	u.playOperation(op.Name)
+	u.ledger.mark = "operation " + op.Name
+	if last {
+		u.ledger.scrollTo(math.Inf(1))
 	}
 }
 
@@ -77,8 +232,8 @@ func operationHint(op work.Operation) string {
 	return say("ledger.identity")
 }
 
-// An imageCache holds what every operation makes of what is chosen, set as
-// text. The representation is made in the background.
+// An imageCache holds the representation of the basis, from which images are
+// read. It is made in the background.
 type imageCache struct {
 	basis          *work.Basis
 	representation *orbitals.Representation
@@ -112,26 +267,6 @@ func (c *imageCache) update(u *ui) {
 	}()
 }
 
-// image is what operation number i makes of what is chosen.
-func (c *imageCache) image(u *ui, i int) notation.Text {
-	s, st := u.now(), u.state
-	if st.Basis == nil || len(s.Basis) == 0 || st.Group.Fit.Setting.Infinite() {
-		return nil
-	}
-	switch s.Projection.TheSubject() {
-	case study.SubjectFunction:
-		n := s.Projection.Function
-		if c.basis == st.Basis && n >= 1 && n <= len(st.Basis.Functions) {
-			return combination(c.representation.Image(i, n-1), notation.PhiText, 2)
-		}
-	case study.SubjectOrbital:
-		if o := u.orbital(); o != nil {
-			return combination(partnerImage(st.Orbitals, o, i), partnerText, 3)
-		}
-	}
-	return nil
-}
-
 // partnerImage is what an operation makes of a partner, among the partners of
 // its copy.
 func partnerImage(o *work.Orbitals, orbital *orbitals.GroupOrbital, operation int) []orbitals.Term {
@@ -145,158 +280,10 @@ func partnerImage(o *work.Orbitals, orbital *orbitals.GroupOrbital, operation in
 	return terms
 }
 
-// partnerText names a partner.
-func partnerText(number string) notation.Text {
-	return notation.Text{{Text: "ψ", Italic: true}, {Text: number, Place: notation.Sub}}
-}
-
-// combination sets a sum of few terms; of more than most only how many there
-// are.
-func combination(terms []orbitals.Term, name func(number string) notation.Text, most int) notation.Text {
-	if len(terms) > most {
-		return notation.Words(say("ledger.sumOf", len(terms)))
-	}
-	return notation.CombinationText(terms, name, shortCoefficient)
-}
-
 // shortCoefficient is exact where that is short.
 func shortCoefficient(x float64) string {
-	if exact := notation.ExactCoefficient(x); notation.Width(exact) <= 5 {
+	if exact := notation.ExactCoefficient(x); notation.Width(exact) <= 8 {
 		return exact
 	}
 	return notation.Short(x, 3)
-}
-
-// drawSaid draws the sentence that says what the function has become.
-func (u *ui) drawSaid(b *board) {
-	ink := style{size: textSize, color: b.palette.Ink, align: -1}
-	lines := 1.0
-	t := u.sentence()
-	if b.measure(t, ink) > b.width-pad {
-		lines = 2
-	}
-	b.paragraph(pad/2, b.height/2+0.36*textSize-(lines-1)*0.7*textSize, b.width-pad, t, ink)
-}
-
-// sentence says what happens, and at the end what has become of what was
-// chosen.
-func (u *ui) sentence() notation.Text {
-	s, st := u.now(), u.state
-	op, ok := u.operation()
-	if p := st.Problem(work.ConcernOperation); p != nil {
-		return problemWords(p)
-	}
-	if !ok || st.Group == nil {
-		return notation.Words(say("ledger.choose"))
-	}
-	name := notation.Operation(op.Name)
-	if op.Family {
-		name = familyText(op, s.Angle)
-	}
-	subject := u.subjectText()
-	switch {
-	case s.Moment > 0 && s.Moment < 1:
-		return fill(say("ledger.now"), name, notation.Words(stepText(op, s.Moment)))
-	case len(subject) == 0:
-		if s.Moment == 0 {
-			return fill(say("ledger.noSubject"), name)
-		}
-		return fill(say("ledger.done"), name)
-	}
-	image := u.imageText(op)
-	if len(image) == 0 {
-		return name
-	}
-	if s.Moment == 0 {
-		return fill(say("ledger.carries"), name, subject, image)
-	}
-	return fill(say("ledger.become"), name, subject, image)
-}
-
-// familyText names an operation of a linear molecule with its angle.
-func familyText(op work.Operation, angle float64) notation.Text {
-	before, after, _ := strings.Cut(op.Name, "φ")
-	t := notation.Operation(strings.TrimSuffix(before, "("))
-	return t.Then(notation.Words("(" + notation.Short(angle, 1) + "°" + after))
-}
-
-// stepText says what happens at a moment.
-func stepText(op work.Operation, moment float64) string {
-	degrees := func(share float64) string {
-		return notation.Decimal(share*op.Angle*180/math.Pi, 0) + "°"
-	}
-	switch {
-	case op.HasCentre():
-		return say("ledger.throughCentre")
-	case op.Steps() == 2 && moment <= 0.5:
-		return say("ledger.firstTurn", degrees(2*moment), degrees(1))
-	case op.Steps() == 2:
-		return say("ledger.thenReflection")
-	case op.HasAxis():
-		return say("ledger.turned", degrees(moment), degrees(1))
-	case op.HasPlane():
-		return say("ledger.throughPlane")
-	}
-	return say("ledger.nothingMoves")
-}
-
-// subjectText names what is chosen.
-func (u *ui) subjectText() notation.Text {
-	s, st := u.now(), u.state
-	if u.coefficients() == nil {
-		return nil
-	}
-	if s.Projection.TheSubject() == study.SubjectFunction {
-		f := st.Basis.Functions[s.Projection.Function-1]
-		return fill(say("ledger.functionOn"), notation.PhiText(fmt.Sprint(s.Projection.Function)), notation.Function(f.Name),
-			notation.Words(st.Basis.AtomNames()[f.Site]))
-	}
-	o := u.orbital()
-	irrep := st.Orbitals.Irreps[o.Irrep]
-	t := notation.OrbitalText(irrep.Label)
-	if irrep.Dimension > 1 {
-		t = t.Then(notation.Words(" "), partnerText(fmt.Sprint(o.Partner+1)))
-	}
-	return t
-}
-
-// imageText writes what the operation makes of what is chosen.
-func (u *ui) imageText(op work.Operation) notation.Text {
-	s, st := u.now(), u.state
-	name := notation.PhiText
-	var terms []orbitals.Term
-	switch p := st.Play; {
-	case s.Projection.TheSubject() == study.SubjectOrbital && op.Index >= 0:
-		o := u.orbital()
-		terms, name = partnerImage(st.Orbitals, o, op.Index), partnerText
-		if st.Orbitals.Irreps[o.Irrep].Dimension == 1 {
-			if len(terms) == 1 && terms[0].Coefficient < 0 {
-				return notation.Words(say("ledger.negative"))
-			}
-			return notation.Words(say("ledger.itself"))
-		}
-	case u.images.basis == st.Basis && op.Index >= 0 && s.Projection.TheSubject() == study.SubjectFunction:
-		terms = u.images.representation.Image(op.Index, s.Projection.Function-1)
-	case p != nil && p.Operation.Name == op.Name && p.Operation.Angle == op.Angle && p.Subject == s.Projection.TheSubject():
-		terms = p.Terms
-		if len(p.Partners) > 0 {
-			terms, name = p.Partners, partnerText
-			if st.Orbitals != nil && p.Orbital != nil && st.Orbitals.Irreps[p.Orbital.Irrep].Dimension == 1 {
-				name = func(string) notation.Text { return notation.OrbitalText(st.Orbitals.Irreps[p.Orbital.Irrep].Label) }
-			}
-		}
-	default:
-		return nil
-	}
-	write := notation.ExactCoefficient
-	if op.Family {
-		write = shortCoefficient // for any angle there is some long cosine
-	}
-	t := notation.CombinationText(terms, name, write)
-	// The function that it has become is named, where it is one.
-	if s.Projection.TheSubject() == study.SubjectFunction && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
-		f := st.Basis.Functions[terms[0].Function]
-		t = fill(say("ledger.functionOn"), t, notation.Function(f.Name), notation.Words(st.Basis.AtomNames()[f.Site]))
-	}
-	return t
 }

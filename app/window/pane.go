@@ -29,7 +29,10 @@ type pane struct {
 
 	// sideways panes scroll along x, others along y.
 	sideways bool
-	least    fyne.Size
+	// inset is the width, in units, of what stays on the left when the rest
+	// scrolls sideways.
+	inset float64
+	least fyne.Size
 
 	raster   *canvas.Raster
 	image    *image.RGBA
@@ -252,8 +255,8 @@ func (p *pane) show(s spot) {
 	w, h := p.size()
 	const margin = 12
 	if p.sideways {
-		if s.x < margin {
-			p.scrollTo(p.scroll + s.x - margin)
+		if s.x < p.inset+margin {
+			p.scrollTo(p.scroll + s.x - margin - p.inset)
 		} else if s.x+s.width > w-margin {
 			p.scrollTo(p.scroll + s.x + s.width - w + margin)
 		}

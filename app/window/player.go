@@ -99,6 +99,7 @@ func (p *player) tick() {
 
 // stop ends the playing where it is.
 func (p *player) stop() {
+	p.u.tally.drop()
 	if !p.playing {
 		return
 	}
@@ -111,18 +112,23 @@ func (p *player) stop() {
 
 // label makes the button show what it does.
 func (p *player) label() {
-	if p.u.play == nil || p.shown == p.playing {
+	playing := p.playing || p.u.tally.playing
+	if p.u.play == nil || p.shown == playing {
 		return
 	}
-	p.shown = p.playing
+	p.shown = playing
 	icon := theme.MediaPlayIcon()
-	if p.playing {
+	if playing {
 		icon = theme.MediaPauseIcon()
 	}
 	p.u.play.SetIcon(icon)
 }
 
 func (u *ui) togglePlay() {
+	if u.tally.ledger != nil && !u.tally.done {
+		u.tally.toggle()
+		return
+	}
 	if u.player.playing {
 		u.player.stop()
 	} else {

@@ -242,6 +242,12 @@ func TestARealHandWorksInARealWindow(t *testing.T) {
 	r.click("scrub") // its middle
 	half := r.saved("the middle of the operation", func(s study.Study) bool { return s.Moment > 0.3 && s.Moment < 0.7 })
 
+	// The last irrep stands below what is seen of the pane.
+	r.mu.Lock()
+	above := r.spots[orbitalName(0, 0, 0)]
+	r.mu.Unlock()
+	r.do("mousemove", above[0], above[1], "click", "--repeat", 8, 5)
+	time.Sleep(500 * time.Millisecond)
 	r.click(orbitalName(9, 0, 1)) // Eu is the last irrep of D4h
 	r.saved("the partner", func(s study.Study) bool { return s.Projection.Irrep == "Eu" && s.Projection.Partner == 2 })
 	r.do("key", "ctrl+z")

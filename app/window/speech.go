@@ -49,6 +49,7 @@ func (u *ui) setLanguage(chosen string) {
 	speakToolkit(l)
 	u.win.SetMainMenu(u.mainMenu())
 	u.menusSaid = ""
+	u.oneByOne.SetText(say("ledger.oneByOne"))
 	u.hints.show("", fyne.Position{})
 	u.win.Content().Refresh()
 	u.show(false)

@@ -57,6 +57,7 @@ type ui struct {
 	basis     *hintEntry
 	fault     *pane // above basis: what is wrong with what was typed
 	play      *hintButton
+	oneByOne  *hintButton
 	hints     *hintBox
 	thumbs    *thumbs
 	player    *player
@@ -78,6 +79,8 @@ type ui struct {
 
 	sights  sightCache
 	images  imageCache
+	book    ledgerBook
+	tally   *tally
 	glide   *glide
 	fading  *fading
 	closing bool
@@ -104,7 +107,7 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.steps = newFirstSteps(u)
 	u.watch = newFileWatch(lookInterval, u.fileChanged)
 	u.thumbs = newThumbs(u)
-	u.player = newPlayer(u)
+	u.player, u.tally = newPlayer(u), newTally(u)
 	u.view = u.newView()
 	u.given = newPane(u.drawGiven, u)
 	u.given.least = fyne.NewSize(leftWidth, 100)
@@ -116,6 +119,7 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.detail.least = fyne.NewSize(rightWidth, 176)
 	u.ledger = newPane(u.drawLedger, u)
 	u.ledger.sideways = true
+	u.ledger.onKey = u.ledgerKeys
 	u.ledger.least = fyne.NewSize(200, ledgerHeight)
 	u.said = newPane(u.drawSaid, u)
 	u.said.least = fyne.NewSize(160, 36)
@@ -156,18 +160,20 @@ const typedExample = "Cl:sigma; 1:d" // no words: it is typed
 
 // Widths and heights of the regions, in units.
 const (
-	leftWidth    = 250
-	rightWidth   = 262
-	pad          = 12
-	ledgerHeight = 70
+	leftWidth  = 250
+	rightWidth = 262
+	pad        = 12
 )
 
 func (u *ui) assemble() fyne.CanvasObject {
 	u.play = u.newIconButton(theme.MediaPlayIcon(), "ledger.playHint", u.togglePlay)
+	u.oneByOne = u.newIconButton(nil, "ledger.oneByOneHint", u.tally.start)
+	u.oneByOne.SetText(say("ledger.oneByOne"))
 	controls := container.NewHBox(
 		u.newIconButton(theme.MediaSkipPreviousIcon(), "ledger.startHint", func() { u.jump(0) }),
 		u.play,
 		u.newIconButton(theme.MediaSkipNextIcon(), "ledger.endHint", func() { u.jump(1) }),
+		u.oneByOne,
 	)
 	rule := func() fyne.CanvasObject { return widget.NewSeparator() }
 	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.onTrack(u.scrub), u.angles)
@@ -306,6 +312,9 @@ func (u *ui) deliver(st *work.State) {
 		u.thumbs.forget()
 	}
 	u.images.update(u)
+	if u.tally.ledger != nil && u.tally.ledger != st.Ledger {
+		u.tally.drop()
+	}
 	u.show(false)
 	u.refreshPanes()
 	if before.Orbital != st.Orbital && st.Orbital != nil {
@@ -380,6 +389,7 @@ func (u *ui) show(moving bool) {
 	}
 	u.pages.show(&shown)
 	u.fading.apply(u, &shown)
+	u.tally.apply(&shown)
 	u.view.shown = shown
 	if st.Group != nil {
 		u.view.sight = u.sights.sight(s.Camera, st.Group, shown.Basis, len(s.Basis) > 0 && shown.Basis == nil)
@@ -387,7 +397,7 @@ func (u *ui) show(moving bool) {
 			u.view.sight = u.glide.at(u.view.sight)
 		}
 	}
-	u.view.ask(moving || u.player.playing || u.glide != nil || shown.Fade < 1 && shown.Before != nil)
+	u.view.ask(moving || u.player.playing || u.tally.playing || u.glide != nil || shown.Fade < 1 && shown.Before != nil)
 	u.scrub.set(s.Moment)
 	u.angle.set(s.Angle)
 	if text := angleText(s.Angle); text != u.angleText.Text {

@@ -173,7 +173,7 @@ func TestTheSentenceSaysWhatTheFunctionHasBecome(t *testing.T) {
 	b.chooseOrbital("Eu", 1, 1)
 	b.chooseOperation("C2(z)")
 	b.jump(1)
-	if got, want := b.sentence().String(), "C2(z): eu ψ1 has become −ψ1"; got != want {
+	if got, want := b.sentence().String(), "C2(z): eu(x) has become −eu(x)"; got != want {
 		t.Errorf("%s\nwant %s", got, want)
 	}
 	b.chooseOrbital("B1g", 1, 1)
