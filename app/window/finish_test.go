@@ -257,6 +257,8 @@ func TestAPictureGoesToTheClipboardOrToAFile(t *testing.T) {
 func TestTablesAreCopiedInEveryFormat(t *testing.T) {
 	b := newBench(t, t.TempDir())
 	b.open("square-plane")
+	b.chooseOrbital("Eu", 1, 1)
+	b.until("the ledger", func() bool { return b.theLedger() != nil })
 	n := 0
 	for _, c := range b.everything() {
 		if !strings.HasPrefix(c.place, say("menu.file")+" › "+say("menu.copyTable")) {
@@ -269,7 +271,7 @@ func TestTablesAreCopiedInEveryFormat(t *testing.T) {
 			t.Errorf("%s, %s: %q", c.place, c.name, got)
 		}
 	}
-	if n != 24 {
+	if n != 28 {
 		t.Errorf("%d commands copy tables", n)
 	}
 }

@@ -76,6 +76,13 @@ func TestTheLedgerSaysWhyNothingIsLeft(t *testing.T) {
 	if marks := []string{s.columns[0].mark, s.columns[1].mark, s.columns[2].mark, s.columns[3].mark}; !slices.Equal(marks, []string{"a", "b", "b", "a"}) {
 		t.Errorf("the marks are %q", marks)
 	}
+	// The same from the menu of the row of weights.
+	b.project("demo:water", "H:s", "A1", 1, [2]int{})
+	b.run(b.irrepCommands()[1])
+	b.until("A2", func() bool { return b.theLedger() != nil })
+	if p := b.now().Projection; p.Irrep != "A2" || p.TheSubject() != study.SubjectFunction {
+		t.Errorf("the menu chooses %+v", p)
+	}
 	s = b.project("ideal:TPY-3,N,H,1.01", "H:s", "E", 1, [2]int{2, 2})
 	ends := s.ends()
 	if got, want := ends[len(ends)-1], "φ1 has no part in e(y), but one in e(x)"; got != want {

@@ -129,6 +129,8 @@ func (u *ui) makeSheet(measure func(notation.Text, style) float64) *ledgerSheet 
 		sheet.heads[2] = notation.Irrep(l.Irrep.Label).Then(notation.Words("  "), weightShort(l))
 		sheet.heads[3] = fill(say("ledger.sumOfFunction"), f)
 		marks = cancelMarks(l)
+	} else if u.state.Basis != nil && len(u.now().Basis) > 0 && !g.Fit.Setting.Infinite() {
+		sheet.heads[2] = notation.Words(say("ledger.onto"))
 	}
 	for i, op := range g.Operations(u.now().Angle) {
 		c := ledgerColumn{op: op, class: op.Class, mark: marks[i]}

@@ -6,6 +6,7 @@ import (
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/widget"
 
+	"lobewright/app/notation"
 	"lobewright/app/study"
 	"lobewright/app/table"
 )
@@ -46,6 +47,31 @@ func (u *ui) weightCommands() []*command {
 	}
 	return append(out, &command{key: "ledger.character", do: func() { u.weighWith([2]int{}, true) },
 		on: func() bool { return u.now().Projection.Character }})
+}
+
+// irrepCommands choose an irrep to project the function onto: those too of
+// which the basis has no group orbital.
+func (u *ui) irrepCommands() []*command {
+	g := u.state.Group
+	if g == nil || g.Fit.Setting.Infinite() {
+		return []*command{{key: "ledger.noIrrep", can: func() bool { return false }}}
+	}
+	var out []*command
+	for _, irrep := range g.Fit.Setting.Irreps {
+		label := irrep.Label
+		out = append(out, &command{key: "ledger.irrep", more: []any{notation.Irrep(label).String()}, do: func() { u.projectOnto(label) },
+			on: func() bool { return u.now().Projection.Irrep == label }})
+	}
+	return out
+}
+
+// projectOnto chooses an irrep and keeps the function, the first unless one is
+// chosen.
+func (u *ui) projectOnto(label string) {
+	s := u.now()
+	p := study.Projection{Function: max(1, s.Projection.Function), Irrep: label, Subject: study.SubjectFunction, Character: s.Projection.Character}
+	s.Projection, s.Moment = p, 0
+	u.do(study.StepIrrep, s)
 }
 
 // chosenIrrep is the dimension of the irrep that is projected onto.
@@ -89,8 +115,15 @@ func (u *ui) copyLedger(f table.Format) {
 }
 
 // offerWeights and offerCopies open their commands beside the ledger.
-func (u *ui) offerWeights() { u.offer(u.weightCommands(), "ledger weight") }
-func (u *ui) offerCopies()  { u.offer(u.ledgerCopies(), "ledger copy") }
+func (u *ui) offerWeights() {
+	list := u.irrepCommands()
+	if _, chosen := u.chosenIrrep(); chosen {
+		list = append(u.weightCommands(), rule, &command{key: "ledger.onto", menu: list})
+	}
+	u.offer(list, "ledger weight")
+}
+
+func (u *ui) offerCopies() { u.offer(u.ledgerCopies(), "ledger copy") }
 
 // offer shows commands as a menu at a spot of the ledger.
 func (u *ui) offer(list []*command, at string) {
@@ -98,8 +131,10 @@ func (u *ui) offer(list []*command, at string) {
 	menu := fyne.NewMenu("")
 	for _, c := range list {
 		item := u.makeItem(c)
-		item.Checked = c.on != nil && c.on()
-		item.Disabled = c.can != nil && !c.can()
+		if c != rule {
+			item.Checked = c.on != nil && c.on()
+			item.Disabled = c.can != nil && !c.can()
+		}
 		menu.Items = append(menu.Items, item)
 	}
 	s, _ := u.ledger.spotNamed(at)
@@ -119,6 +154,7 @@ func (u *ui) tallyCommands() []*command {
 		(&command{key: "ledger.oneByOne", do: u.tally.start, can: func() bool { return running() || u.theLedger() != nil }}).byHand("o"),
 		(&command{key: "ledger.faster", do: func() { u.tally.faster(1) }}).byHand(">"),
 		(&command{key: "ledger.slower", do: func() { u.tally.faster(-1) }}).byHand("<"),
+		{key: "ledger.onto", refresh: u.irrepCommands},
 		{key: "ledger.weigh", refresh: u.weightCommands},
 	}
 }
