@@ -143,3 +143,9 @@ func (u *ui) imageText(op work.Operation) notation.Text {
 	}
 	return t
 }
+
+// partnerText names a partner by its number alone, where its irrep is named
+// beside it.
+func partnerText(number string) notation.Text {
+	return notation.Text{{Text: "ψ", Italic: true}, {Text: number, Place: notation.Sub}}
+}
