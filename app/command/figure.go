@@ -105,6 +105,8 @@ func pageFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.Var(&positive{&f.Resolution, study.DefaultResolution}, "dpi", "resolution in `DOTS` per inch")
 	flags.Var(oneOf{&f.Font, []string{"sans", "serif"}}, "font", "`FAMILY` of the text, sans (DejaVu Sans) or serif (DejaVu Serif)")
 	flags.Float64Var(&f.TextSize, "text", 0, "size of the text in `POINTS` (default 8, on a slide 18)")
+	flags.BoolVar(&s.Look.Elements, "elements", false, "draw all symmetry elements with their names")
+	flags.BoolVar(&s.Look.Displacements, "displacements", false, "draw arrows from the ideal places of the atoms to those of the input")
 	flags.BoolVar(&f.NoLetters, "no-letters", false, "leave out the letters of the panels")
 	flags.BoolVar(&f.NoLegend, "no-legend", false, "leave out the legend of signs and sizes")
 	flags.BoolVar(&f.NoCard, "no-card", false, "leave out the axes with their rule and the atoms' names beside them")

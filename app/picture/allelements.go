@@ -99,7 +99,7 @@ func (s *stage) addElementNames(f *Frame, fonts *render.Fonts) {
 	taken := []rectangle{s.corner}
 	for _, n := range s.named {
 		text := runs(n.name)
-		width, ascent, _ := fonts.Measure(text, elementLabel)
+		width, ascent, _ := fonts.Measure(text, elementSize)
 		width, ascent = (width+0.4)*perMM, (ascent+0.4)*perMM
 		at, found := n.points[0], false
 		var place rectangle
@@ -123,10 +123,10 @@ func (s *stage) addElementNames(f *Frame, fonts *render.Fonts) {
 		}
 		taken = append(taken, place)
 		s.scene.Add(render.Text{
-			At: at, Runs: text, Size: elementLabel, Halo: haloWidth, HaloColor: paint(s.palette.Ground), Through: true, Fixed: true,
+			At: at, Runs: text, Size: elementSize, Halo: haloWidth, HaloColor: paint(s.palette.Ground), Through: true, Fixed: true,
 		}, flat(s.palette.Element))
 	}
 }
 
-// elementLabel is the size of the names of elements, in points.
-const elementLabel = 8.5
+// elementSize is the size of the names of elements, in points.
+const elementSize = 8.5

@@ -44,13 +44,29 @@ type Maker struct {
 func (m *Maker) Molecule(g *work.Group, s study.Study) *Body {
 	st := newStage(s)
 	st.addMolecule(g)
-	return &Body{stage: st, group: g}
+	body := &Body{stage: st, group: g}
+	body.addStudied()
+	return body
+}
+
+// addStudied adds what the look asks for beside bodies: displacements and all
+// symmetry elements.
+func (b *Body) addStudied() {
+	s := b.stage
+	if s.look.Displacements {
+		s.addDisplacements(b.group)
+	}
+	if s.look.Elements {
+		centre, radius := enclosing(b.must())
+		s.allElements(b.group, centre, overhang*radius+minOverhang)
+	}
 }
 
 // Lobes is a combination of the functions of a basis on the structure.
 func (m *Maker) Lobes(b *work.Basis, coefficients []float64, s study.Study) *Body {
 	body := m.bare(b, s)
 	m.add(body, b, coefficients, work.Operation{}, false)
+	body.addStudied()
 	return body
 }
 

@@ -3,6 +3,8 @@ package picture
 import (
 	"math"
 
+	"github.com/go-gl/mathgl/mgl64"
+
 	"lobewright/app/work"
 	"lobewright/render"
 )
@@ -41,9 +43,25 @@ func DisplacementScale(g *work.Group) (factor, longest float64) {
 	return factor, longest
 }
 
+// rimOf is how far from an atom's centre, in a direction, the atom and the lobes
+// on it end.
+func (s *stage) rimOf(atom ball, way mgl64.Vec3) float64 {
+	rim := atom.radius
+	for _, l := range s.lobes {
+		to := l.centre.Sub(atom.centre)
+		along := to.Dot(way)
+		aside := to.Sub(way.Mul(along)).Len()
+		// Only lobes that reach the atom are on it.
+		if to.Len() <= 1.5*l.radius+atom.radius && aside < l.radius {
+			rim = max(rim, along+math.Sqrt(l.radius*l.radius-aside*aside))
+		}
+	}
+	return rim
+}
+
 // addDisplacements draws the way of each core atom from its ideal place to that
-// of the input, longer by the factor of DisplacementScale. It needs the balls of
-// the atoms.
+// of the input, longer by the factor of DisplacementScale, outside of the atom
+// and of the lobes on it. It needs the balls of both.
 func (s *stage) addDisplacements(g *work.Group) {
 	factor, _ := DisplacementScale(g)
 	if factor == 0 {
@@ -57,8 +75,9 @@ func (s *stage) addDisplacements(g *work.Group) {
 		}
 		way := d.Normalize()
 		atom := s.atoms[g.Core[k]]
-		from := atom.centre.Add(way.Mul(0.9 * atom.radius))
-		to := atom.centre.Add(way.Mul(atom.radius + length))
+		rim := s.rimOf(atom, way)
+		from := atom.centre.Add(way.Mul(0.9 * rim))
+		to := atom.centre.Add(way.Mul(rim + length))
 		head := math.Min(arrowHead, 0.6*length)
 		s.scene.Add(render.Arrow{From: from, To: to, Radius: arrowRadius, HeadLength: head, HeadRadius: arrowHeadWide * head / arrowHead}, m)
 		s.elements = append(s.elements, ball{to, rimRoom})

@@ -142,7 +142,7 @@ func (l *Live) fill(s *stage, shown Shown, toward mgl64.Vec3, quick bool) {
 		}
 	}
 	if shown.Look.Displacements {
-		s.addDisplacements(g)
+		defer func() { s.addDisplacements(g) }() // when the lobes are there
 	}
 	if shown.Look.Elements {
 		l.addElements(s, shown)

@@ -17,6 +17,8 @@ type Label struct {
 	X, Y float64
 	// Leader, if there is one, is a line from the label to what it names.
 	Leader [][2]float64
+	// Element marks the name of a symmetry element.
+	Element bool
 	// Sign is +1 or −1 for the printed sign of a lobe, 0 for an atom's name.
 	Sign int
 	// Size is in points.
@@ -82,10 +84,37 @@ func (b *Body) Labels(ctx context.Context, v Viewpoint, p Panel, size float64, f
 		}
 		labels = append(labels, Label{Runs: runs, X: box.X, Y: box.Y + ascent, Leader: leader, Size: size})
 	}
+	for _, n := range s.named {
+		if label, ok := b.elementName(n, v, p, size, fonts, m, middle, taken); ok {
+			taken = append(taken, Box{label.X, label.Y - label.Size*mmPerPoint, label.width, label.Size * mmPerPoint})
+			labels = append(labels, label.Label)
+		}
+	}
 	if s.look.Signs == "printed" {
 		labels = append(labels, b.printedSigns(v, p, size, fonts, m)...)
 	}
 	return labels, missing, nil
+}
+
+// An elementLabel is a label with its width in millimetres.
+type elementLabel struct {
+	Label
+	width float64
+}
+
+// elementName places the name of a symmetry element beside the first of its
+// points where there is room near by.
+func (b *Body) elementName(n namedElement, v Viewpoint, p Panel, size float64, fonts *render.Fonts, m mask, middle disc, taken []Box) (elementLabel, bool) {
+	const share = 0.85 // of the size of atoms' names
+	text := runs(n.name)
+	width, ascent, _ := fonts.Measure(text, share*size)
+	for _, point := range n.points {
+		box, leader, ok := m.place(v.on(p, ball{point, rimRoom}), middle, width, ascent, taken)
+		if ok && leader == nil {
+			return elementLabel{Label{Runs: text, X: box.X, Y: box.Y + ascent, Size: share * size, Element: true}, width}, true
+		}
+	}
+	return elementLabel{}, false
 }
 
 // Signs are the printed signs alone, for panels without names.

@@ -1,6 +1,7 @@
 package sheet
 
 import (
+	"fmt"
 	"math"
 
 	"lobewright/app/notation"
@@ -168,6 +169,11 @@ func (m *maker) cardText(c card, width float64) (out block, torn bool) {
 		torn = torn || m.tears(m.legendText(), m.quiet(), width)
 		out.put(m.legend(width), 0, out.h)
 	}
+	if m.study.Look.Displacements && !m.figure.NoLegend {
+		if note := displacementText(c.group); note != nil {
+			put(note, m.quiet())
+		}
+	}
 	if !m.figure.NoCard && !c.bare && m.width >= narrow {
 		put(notation.Group(c.group.Fit.Setting.Symbol).Then(notation.Words(": "), notation.Sentence(notation.ShortConvention(c.group.Fit))), m.quiet())
 	}
@@ -230,6 +236,19 @@ func (m *maker) hatched(x, y, radius float64) []Item {
 		out = append(out, Line{Points: [][2]float64{{x - half, y + share*radius}, {x + half, y + share*radius}}, Width: 0.1, Color: m.palette.Ink})
 	}
 	return out
+}
+
+// displacementText says what the arrows on atoms mean; nil where there are none.
+func displacementText(g *work.Group) notation.Text {
+	factor, longest := picture.DisplacementScale(g)
+	if factor == 0 {
+		return nil
+	}
+	times := ""
+	if factor != 1 {
+		times = fmt.Sprintf(" × %g", factor)
+	}
+	return notation.Words(fmt.Sprintf("arrows: displacements from the ideal places%s, the longest %s\u00a0Å", times, notation.Decimal(longest, 3)))
 }
 
 // legendText says what the size and the shape of a lobe mean.

@@ -261,6 +261,9 @@ func (m *maker) label(l picture.Label) []Item {
 		out = append(out, Line{Points: l.Leader, Width: lead, Color: m.palette.Ink})
 	}
 	colour := m.palette.Ink
+	if l.Element {
+		colour = m.palette.Element
+	}
 	if l.Sign != 0 {
 		colour = picture.OnLobe(m.palette, l.Sign)
 	}

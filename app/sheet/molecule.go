@@ -25,8 +25,11 @@ func (m *maker) molecule(elements bool) (*Sheet, error) {
 		return m.single(g, first, card{group: g, lines: []cardLine{{first.title, m.title()}}}, "the structure in its axes")
 	}
 	r := row{unit: 1}
+	alone := m.study // each panel has the elements of its class
+	alone.Look.Elements = false
+	first.body = m.bodies.Molecule(g, alone)
 	for _, k := range kinds {
-		r.cells = append(r.cells, cell{body: m.bodies.Molecule(g, m.study), title: k.title, name: k.name})
+		r.cells = append(r.cells, cell{body: m.bodies.Molecule(g, alone), title: k.title, name: k.name})
 	}
 	v := picture.NewViewpoint(m.study.Camera, r.cells[0].body)
 	bodies := []*picture.Body{first.body}

@@ -74,12 +74,12 @@ func rulesOf(g *work.Group) []symmetry.Frame {
 func (d *pageDrawing) ruleRow(name string, g *work.Group, f symmetry.Frame, on bool, do func()) {
 	d.row(name, "", on, do, func() {
 		d.words(f.Rule.Name, d.strong)
-		for _, clause := range strings.Split(notation.Convention(g.Fit.In(f), g.CoreNames()), "; ") {
+		for _, clause := range strings.Split(notation.ConventionIn(texts(), g.Fit.In(f), g.CoreNames()), "; ") {
 			if clause != "" {
 				d.line(notation.Sentence(clause), d.plain)
 			}
 		}
-		d.words(notation.Source(f.Rule), d.quiet)
+		d.words(notation.SourceIn(texts(), f.Rule), d.quiet)
 	})
 }
 

@@ -4,6 +4,7 @@ package window
 
 import (
 	"math"
+	"strconv"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -62,7 +63,7 @@ func (d *pageDrawing) secondFrame() {
 			continue // it is the one in force
 		}
 		d.choice(&x, notation.Words(name), chip{
-			name: "second " + name, hint: say("frames.ruleHint", name, notation.Source(f.Rule)),
+			name: "second " + name, hint: say("frames.ruleHint", name, notation.SourceIn(texts(), f.Rule)),
 			on: s.Held.Frame == name && !byHand, do: func() { d.hold(name, "", "") },
 		})
 	}
@@ -75,12 +76,12 @@ func (d *pageDrawing) secondFrame() {
 		return
 	}
 	d.heading(say("frames.secondAxes"))
-	for _, clause := range strings.Split(notation.Convention(e.Fit, g.CoreNames()), "; ") {
+	for _, clause := range strings.Split(notation.ConventionIn(texts(), e.Fit, g.CoreNames()), "; ") {
 		if clause != "" {
 			d.line(notation.Sentence(clause), d.plain)
 		}
 	}
-	d.words(say("frames.rule", notation.Source(e.Frame.Rule)), d.quiet)
+	d.words(say("frames.rule", notation.SourceIn(texts(), e.Frame.Rule)), d.quiet)
 	if e.Names == nil {
 		d.words(say("frames.sameNames"), d.quiet)
 		return
@@ -188,8 +189,11 @@ func (d *pageDrawing) exchange(g *work.Group, e *work.Exchange) {
 		y := d.y + textSize
 		d.board.text(pad, y, notation.Irrep(ir.Label), ink)
 		d.board.text(pad+thereColumn, y, notation.Irrep(other.Label), ink)
-		d.board.text(pad+partnerColumn, y, partnersText(e, i), d.quiet)
-		d.y += textSize + 6
+		d.left, d.width = partnerColumn, d.width-partnerColumn
+		d.y += textSize - secondSize
+		d.line(partnersText(e, i), d.quiet)
+		d.left, d.width = 0, d.width+partnerColumn
+		d.y += 3
 	}
 	d.y += 4
 	for _, text := range whyTexts(here, e) {
@@ -265,9 +269,14 @@ func axesChange(e *work.Exchange) notation.Text {
 	case symmetry.TurnCycle:
 		return fill(say("frames.turnCycle"), letter(c.Axes[0]), letter(c.Axes[1]), letter(c.Axes[2]))
 	case symmetry.TurnAbout:
-		return fill(say("frames.turnAbout"), letter(c.Axes[0]), notation.Words(notation.Decimal(c.Angle, 1)))
+		return fill(say("frames.turnAbout"), letter(c.Axes[0]), notation.Words(degrees(c.Angle)))
 	}
-	return fill(say("frames.turnOther"), notation.Words(notation.Decimal(c.Angle, 1)))
+	return fill(say("frames.turnOther"), notation.Words(degrees(c.Angle)))
+}
+
+// degrees writes an angle in degrees to a tenth.
+func degrees(angle float64) string {
+	return notation.Minus(strconv.FormatFloat(math.Round(10*angle)/10, 'f', -1, 64))
 }
 
 // whyTexts say of every irrep that changes its name why it does.
@@ -304,8 +313,8 @@ func namesText(g *work.Group, e *work.Exchange) string {
 	both := []work.Exchange{g.Here(), *e}
 	var b strings.Builder
 	line := func(s string) { b.WriteString(s + "\n") }
-	line(g.Fit.Setting.Symbol + ": " + notation.Convention(g.Fit, g.CoreNames()))
-	line(e.Frame.Rule.Name + ": " + notation.Convention(e.Fit, g.CoreNames()))
+	line(g.Fit.Setting.Symbol + ": " + notation.ConventionIn(texts(), g.Fit, g.CoreNames()))
+	line(e.Frame.Rule.Name + ": " + notation.ConventionIn(texts(), e.Fit, g.CoreNames()))
 	line(axesChange(e).String())
 	line("")
 	line(table.IrrepNames(both).Text())

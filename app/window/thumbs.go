@@ -82,7 +82,7 @@ func (t *thumbs) get(orbital int, side float64) *image.RGBA {
 	o := u.state.Orbitals
 	palette := u.palette()
 	l := u.now().Look
-	l.NoLabels, l.NoAxes = true, true
+	l.NoLabels, l.NoAxes, l.Elements, l.Displacements = true, true, false, false
 	job := thumbJob{key: key, scale: scale, shown: picture.Shown{
 		Group: o.Group, Basis: o.Basis, Coefficients: o.Projection.Orbitals[orbital].Coefficients,
 		Look: l, Palette: &palette,
