@@ -20,3 +20,8 @@ func maskFour(k *kernel) bool
 //
 //go:noescape
 func skyEight(k *skyKernel)
+
+// lookEight is lookPlain, eight sights at a time.
+//
+//go:noescape
+func lookEight(s *sights)

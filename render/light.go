@@ -93,24 +93,6 @@ func (l *light) sightAt(x, y float32) (a, b float32) {
 	return (l.cx - x) * l.invF, (y - l.cy) * l.invF
 }
 
-// gleam returns the highlight of a surface, where nl is the cosine between
-// its unit normal and the key light and nv the product of the normal with
-// (a, b, 1). Most places are far from the highlight and cost next to nothing.
-func (l *light) gleam(a, b, nl, nv float32) float32 {
-	// The cosine with the direction half way, (nl + nv/v)/|L + V|, is at
-	// most half the sum times what |L + V| can be less than 2.
-	if nl+nv < l.glintSum {
-		return 0
-	}
-	il := 1 / sqrt32(a*a+b*b+1)
-	lv := (l.kx*a + l.ky*b + l.kz) * il
-	nh := (nl + nv*il) / sqrt32(2.000001+2*lv)
-	if nh < l.glint {
-		return 0
-	}
-	return l.specular * power(nh, l.shine)
-}
-
 func sqrt32(v float32) float32 { return float32(math.Sqrt(float64(v))) }
 
 // power returns x to a whole power.
@@ -126,52 +108,4 @@ func power(x float32, n int) float32 {
 		}
 		x *= x
 	}
-}
-
-// shadePlace returns the colour of a slot's surface at a place of the canvas.
-// It is where the looks part.
-func (t *tile) shadePlace(k uint32, x, y float32) (r, g, b float32) {
-	s := &t.slots[k]
-	p := &t.f.parts[s.part]
-	nx, ny, nz, side := t.lookAt(s, p, x, y)
-	r, g, b = p.col[0], p.col[1], p.col[2]
-	if p.hatch.period > 0 {
-		if w := t.hatching(s, p, x, y); w > 0 {
-			h := &p.hatch.col
-			r, g, b = r+(h[0]-r)*w, g+(h[1]-g)*w, b+(h[2]-b)*w
-		}
-	}
-	if p.flat {
-		return r, g, b
-	}
-	l := &t.f.light
-	va, vb := l.sightAt(x+float32(t.x), y+float32(t.y))
-	nv := nx*va + ny*vb + nz
-	q := nx*nx + ny*ny + nz*nz
-	if !(q > 1e-36) {
-		nx, ny, nz = va, vb, 1
-		q = va*va + vb*vb + 1
-		nv, side = q, 0
-	}
-	inv := 1 / sqrt32(q)
-	if side == 0 && nv < 0 || side < 0 && l.style != Plain || side != 0 && l.style == Plain && nv < 0 {
-		inv = -inv
-	}
-	nl := (nx*l.kx + ny*l.ky + nz*l.kz) * inv
-	nv *= inv
-	switch l.style {
-	case Ink:
-		m := t.tone(s, p, nl, x, y)
-		return r * m, g * m, b * m
-	case Lit:
-		d := t.lit(s.part, nx*inv, ny*inv, nz*inv, nl, x, y)
-		h := l.gleam(va, vb, nl, nv) * p.gloss * min(d, 1)
-		return r*d + h, g*d + h, b*d + h
-	}
-	d := l.ambient
-	if nl > 0 {
-		d += l.diffuse * nl
-	}
-	h := l.gleam(va, vb, nl, nv)
-	return r*d + h, g*d + h, b*d + h
 }

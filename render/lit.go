@@ -281,8 +281,9 @@ func (k *skyKernel) skyPlain(blocks []float32) {
 }
 
 // lit returns the share of its colour that a place shows in the lit look; the
-// normal is of unit length.
-func (t *tile) lit(part int32, nx, ny, nz, nl, x, y float32) float32 {
+// normal is of unit length, (x, y) a place of the whole picture and n the
+// nearness there.
+func (t *tile) lit(part int32, nx, ny, nz, nl, x, y, n float32) float32 {
 	l := &t.f.light
 	// Light that reaches a little round the edge of night.
 	const wrap = 0.3
@@ -295,7 +296,7 @@ func (t *tile) lit(part int32, nx, ny, nz, nl, x, y float32) float32 {
 	}
 	if sh := t.f.shades.near; l.shade > 0 && len(sh) > 0 && sh[part].count > 0 {
 		k := &t.sky
-		k.x, k.y, k.z = l.spot(&t.f.projs[0], x+float32(t.x), y+float32(t.y), t.surf.n)
+		k.x, k.y, k.z = l.spot(&t.f.projs[0], x, y, n)
 		k.nx, k.ny, k.nz = nx, ny, nz
 		d *= 1 - l.shade*k.hidden(&sh[part])
 	}

@@ -47,7 +47,8 @@ func (r *Renderer) Pick(scene *Scene, camera Camera, quality Quality, width, hei
 	if found >= 0 && scene.Shapes[f.parts[found].shape].Material.ID == 0 {
 		found = -1
 	}
-	if t.anyFrag {
+	if t.anyFrag || len(t.wides) > 0 {
+		t.layWides(i, i%t.side, i/t.side, true)
 		for k := t.first[i]; k >= 0; k = t.frags[k].next {
 			fr := &t.frags[k]
 			p := t.slots[fr.slot].part

@@ -42,6 +42,8 @@ type part struct {
 	nrm    [9]float32  // normals to camera space, rows
 	vert0  int         // place of the first vertex in the frame's list
 	chunk0 int32       // of its vertices
+	smooth bool        // the normal is mixed from those of the corners
+	turn   float32     // 1 for a closed surface, -1 for a reflected one, 0 for others
 }
 
 type hatch struct {
@@ -293,5 +295,12 @@ func (f *frame) addMesh(p part, m Affine, g *Mesh) {
 	p.vert0 = f.nVert
 	f.nVert += len(g.Positions)
 	p.cull = g.Closed && !p.layered
+	p.smooth = g.Normals != nil && p.hatch.period == 0 && !p.flat
+	if g.Closed {
+		p.turn = 1
+		if p.mirrored {
+			p.turn = -1
+		}
+	}
 	f.parts = append(f.parts, p)
 }

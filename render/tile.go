@@ -38,10 +38,14 @@ type tile struct {
 	deep      bool // shading needs the nearness
 	inks      []inkFrag
 	samples   [16][4]float32
-	panes     []paneColor     // of the translucent discs
-	last      [maxEven]uint32 // the even discs of the pixel before, from the front
-	lastCount int
-	lastPixel uint32
+	panes     []paneColor // of the translucent discs
+	wides     []wide
+	last      stack // the even discs of the pixel before
+	calm      bool  // all pixels without other layers are calmPixel
+	calmPixel uint32
+	sights    sights
+	tasks     []task
+	shares    []share
 	sorted    []int32
 	colors    [][4]float32
 	lines     inkTile
@@ -77,6 +81,7 @@ type frag struct {
 	n      float32 // nearness at the pixel's middle
 	nx, ny float32 // its growth to the right and down
 	a      float32 // opacity of a line
+	sight  int32   // that shows its colour
 }
 
 // drawTile draws one tile of the frame into the destination.
@@ -109,6 +114,7 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	t.sx = f.sx
 	t.rim = 0.5 / float32(int(1)<<t.lg)
 	t.deep = f.light.style == Lit
+	t.sights.ready(f)
 	n := t.side * t.side
 	t.keys = grow(t.keys, n<<t.lg)
 	t.first = grow(t.first, n)
@@ -131,7 +137,7 @@ func (t *tile) reset() {
 	t.frags = t.frags[:0]
 	t.inks = t.inks[:0]
 	t.panes = t.panes[:0]
-	t.lastCount = 0
+	t.wides = t.wides[:0]
 	t.anyFrag = false
 }
 

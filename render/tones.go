@@ -7,9 +7,6 @@ package render
 func (t *tile) inkWhole(i, px, py int) (r, g, b float32) {
 	c := &t.lines.cells[i]
 	p := &t.f.parts[c.part]
-	if p.hatch.period > 0 {
-		return t.shadePlace(c.slot, float32(px)+0.5, float32(py)+0.5)
-	}
 	if p.flat {
 		return p.col[0], p.col[1], p.col[2]
 	}
