@@ -6,15 +6,23 @@ import "golang.org/x/sys/cpu"
 // assembly; without them the plain Go code does the same.
 var useVectors = cpu.X86.HasAVX2
 
-// drawFour is drawPlain for four samples a pixel, two pixels at a time.
+// setupEight is setup for eight triangles of the frame's list. The bits of the
+// result are the triangles that are too large for it.
 //
 //go:noescape
-func drawFour(k *kernel) bool
+func setupEight(s *triEight) uint32
+
+// drawEight is drawPlain for four samples a pixel, two pixels at a time, for
+// those of eight triangles that have a bit in todo; what it returns has a bit
+// for those that were seen.
+//
+//go:noescape
+func drawEight(s *triEight, todo uint32) uint32
 
 // maskFour is maskPlain for four samples a pixel, two pixels at a time.
 //
 //go:noescape
-func maskFour(k *kernel) bool
+func maskFour(s *triEight, lane int) bool
 
 // skyEight is skyPlain, eight balls at a time.
 //

@@ -4,28 +4,19 @@
 // 0 1 | 4 5 || 2 3 | 6 7 (sample of the first pixel, or 4 + sample of the
 // second), so that interleaving with the slot gives the order in memory.
 
-// Sample places in the grid of 1/256, x and y, by lane:
+// Sample places in the grid of 1/256, x in the lower and y in the upper half, by
+// lane:
 // lanes 0 1 2 3: first pixel 0 1, second pixel 0 1
 // lanes 4 5 6 7: first pixel 2 3, second pixel 2 3
-DATA sampleX<>+0(SB)/4, $96
-DATA sampleX<>+4(SB)/4, $224
-DATA sampleX<>+8(SB)/4, $352
-DATA sampleX<>+12(SB)/4, $480
-DATA sampleX<>+16(SB)/4, $32
-DATA sampleX<>+20(SB)/4, $160
-DATA sampleX<>+24(SB)/4, $288
-DATA sampleX<>+28(SB)/4, $416
-GLOBL sampleX<>(SB), RODATA|NOPTR, $32
-
-DATA sampleY<>+0(SB)/4, $32
-DATA sampleY<>+4(SB)/4, $96
-DATA sampleY<>+8(SB)/4, $32
-DATA sampleY<>+12(SB)/4, $96
-DATA sampleY<>+16(SB)/4, $160
-DATA sampleY<>+20(SB)/4, $224
-DATA sampleY<>+24(SB)/4, $160
-DATA sampleY<>+28(SB)/4, $224
-GLOBL sampleY<>(SB), RODATA|NOPTR, $32
+DATA sampleXY<>+0(SB)/4, $0x00200060
+DATA sampleXY<>+4(SB)/4, $0x006000e0
+DATA sampleXY<>+8(SB)/4, $0x00200160
+DATA sampleXY<>+12(SB)/4, $0x006001e0
+DATA sampleXY<>+16(SB)/4, $0x00a00020
+DATA sampleXY<>+20(SB)/4, $0x00e000a0
+DATA sampleXY<>+24(SB)/4, $0x00a00120
+DATA sampleXY<>+28(SB)/4, $0x00e001a0
+GLOBL sampleXY<>(SB), RODATA|NOPTR, $32
 
 // The same as float32 in pixels.
 DATA sampleXF<>+0(SB)/4, $0x3ec00000 // 0.375
@@ -53,7 +44,7 @@ GLOBL one<>(SB), RODATA|NOPTR, $4
 DATA two<>+0(SB)/4, $0x40000000
 GLOBL two<>(SB), RODATA|NOPTR, $4
 
-// Registers of both functions:
+// Registers of both functions; R12 points to the triangle's lane in the block:
 // Y0 Y1 Y2   edge functions of the row's first pair
 // Y3 Y4 Y5   edge functions of the pair
 // Y6         n0 + gy·y of the row; Y7 x of the pair
@@ -61,60 +52,57 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 // Y12        slot
 // Y11 Y13 Y14 Y15 scratch
 #define PREPARE \
-	VMOVDQU      sampleX<>(SB), Y13; \
-	VMOVDQU      sampleY<>(SB), Y14; \
+	VMOVDQU      sampleXY<>(SB), Y13; \
 	EDGE(0, Y0, Y8); \
-	EDGE(4, Y1, Y9); \
-	EDGE(8, Y2, Y10); \
-	VBROADCASTSS 40(DI), Y11; \
+	EDGE(32, Y1, Y9); \
+	EDGE(64, Y2, Y10); \
+	VBROADCASTSS 320(R12), Y11; \
 	VMOVUPS      Y11, gx-64(SP); \
-	VPBROADCASTD 56(DI), Y12; \
-	MOVL         60(DI), R8; \
-	MOVL         64(DI), R9; \
-	MOVQ         72(DI), SI; \
-	MOVQ         80(DI), R10; \
-	VBROADCASTSS 52(DI), Y15; \
+	MOVL         448(R12), R8; \
+	MOVL         480(R12), R9; \
+	MOVLQSX      512(R12), SI; \
+	ADDQ         552(DI), SI; \
+	MOVQ         560(DI), R10; \
+	VBROADCASTSS 416(R12), Y15; \
 	VADDPS       sampleYF<>(SB), Y15, Y15; \
 	VMOVUPS      Y15, rowY-32(SP)
 
 // EDGE readies one edge: value at the samples, growth over two pixels.
 #define EDGE(o, val, step) \
-	VPBROADCASTD (12+o)(DI), step; \
-	VPMULLD      Y13, step, val; \
-	VPBROADCASTD (24+o)(DI), Y15; \
-	VPMULLD      Y14, Y15, Y15; \
+	VPBROADCASTD (96+o)(R12), step; \
+	VPMADDWD     Y13, step, val; \
+	VPBROADCASTD (192+o)(R12), Y15; \
 	VPADDD       Y15, val, val; \
-	VPBROADCASTD o(DI), Y15; \
-	VPADDD       Y15, val, val; \
-	VPSLLD       $9, step, step
+	VPSLLD       $16, step, step; \
+	VPSRAD       $7, step, step
 
 // ROW readies a row: copies the edge functions, finds n0 + gy·y and x.
 #define ROW \
 	VMOVDQA      Y0, Y3; \
 	VMOVDQA      Y1, Y4; \
 	VMOVDQA      Y2, Y5; \
-	VBROADCASTSS 44(DI), Y6; \
+	VBROADCASTSS 352(R12), Y6; \
 	VMULPS       rowY-32(SP), Y6, Y6; \
-	VBROADCASTSS 36(DI), Y15; \
+	VBROADCASTSS 288(R12), Y15; \
 	VADDPS       Y6, Y15, Y6; \
-	VBROADCASTSS 48(DI), Y7; \
+	VBROADCASTSS 384(R12), Y7; \
 	VADDPS       sampleXF<>(SB), Y7, Y7; \
 	VMOVUPS      Y7, pairX-128(SP)
 
 // DOWN goes to the next row: the edge functions grow by 256·b, y by 1.
 #define DOWN \
-	VPBROADCASTD 24(DI), Y15; \
-	VPSLLD       $8, Y15, Y15; \
-	VPADDD       Y15, Y0, Y0; \
-	VPBROADCASTD 28(DI), Y15; \
-	VPSLLD       $8, Y15, Y15; \
-	VPADDD       Y15, Y1, Y1; \
-	VPBROADCASTD 32(DI), Y15; \
-	VPSLLD       $8, Y15, Y15; \
-	VPADDD       Y15, Y2, Y2; \
+	FALL(0, Y0); \
+	FALL(32, Y1); \
+	FALL(64, Y2); \
 	VBROADCASTSS one<>(SB), Y15; \
 	VADDPS       rowY-32(SP), Y15, Y15; \
 	VMOVUPS      Y15, rowY-32(SP)
+
+#define FALL(o, val) \
+	VPBROADCASTD (96+o)(R12), Y15; \
+	VPSRAD       $16, Y15, Y15; \
+	VPSLLD       $8, Y15, Y15; \
+	VPADDD       Y15, val, val
 
 // RIGHT goes to the next pair.
 #define RIGHT \
@@ -125,11 +113,23 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 	VADDPS       Y15, Y7, Y7; \
 	VMOVUPS      Y7, pairX-128(SP)
 
-// func drawFour(k *kernel) bool
-TEXT ·drawFour(SB), NOSPLIT, $128-9
-	MOVQ k+0(FP), DI
+// func drawEight(s *triEight, todo uint32) uint32
+TEXT ·drawEight(SB), NOSPLIT, $136-20
+	MOVQ s+0(FP), DI
+	MOVQ DI, R12
+	XORL R13, R13
+	MOVL R13, hits-136(SP)
+
+drawLane:
+	MOVL  todo+8(FP), AX
+	BTL   R13, AX
+	JCC   drawOther
+	MOVL  448(R12), AX
+	TESTL AX, AX
+	JLE   drawOther
 	PREPARE
-	XORL AX, AX
+	VPBROADCASTD 576(DI), Y12
+	XORL  AX, AX
 
 drawRow:
 	ROW
@@ -172,21 +172,37 @@ drawNext:
 	ADDQ $64, BX
 	DECL CX
 	JNZ  drawPair
+	DECL R8
+	JZ   drawn
 	DOWN
 	ADDQ R10, SI
-	DECL R8
-	JNZ  drawRow
-	VZEROUPPER
+	JMP  drawRow
+
+drawn:
 	TESTL AX, AX
-	SETNE AX
-	MOVB AX, ret+8(FP)
+	JZ    drawOther
+	INCL  576(DI)                 // the next slot
+	MOVL  hits-136(SP), AX
+	BTSL  R13, AX
+	MOVL  AX, hits-136(SP)
+
+drawOther:
+	ADDQ $4, R12
+	INCL R13
+	CMPL R13, $8
+	JNE  drawLane
+	VZEROUPPER
+	MOVL hits-136(SP), AX
+	MOVL AX, ret+16(FP)
 	RET
 
-// func maskFour(k *kernel) bool
-TEXT ·maskFour(SB), NOSPLIT, $128-9
-	MOVQ k+0(FP), DI
+// func maskFour(s *triEight, lane int) bool
+TEXT ·maskFour(SB), NOSPLIT, $136-17
+	MOVQ s+0(FP), DI
+	MOVQ lane+8(FP), AX
+	LEAQ (DI)(AX*4), R12
 	PREPARE
-	MOVQ 88(DI), R12
+	MOVQ 568(DI), DI              // masks
 	XORL AX, AX
 	VPCMPEQD Y12, Y12, Y12
 
@@ -224,8 +240,8 @@ maskPair:
 	ORL       R11, AX
 
 maskNext:
-	MOVB R11, (R12)
-	INCQ R12
+	MOVB R11, (DI)
+	INCQ DI
 	RIGHT
 	ADDQ $64, BX
 	DECL CX
@@ -237,59 +253,5 @@ maskNext:
 	VZEROUPPER
 	TESTL AX, AX
 	SETNE AX
-	MOVB AX, ret+8(FP)
-	RET
-
-// func skyEight(k *skyKernel)
-TEXT ·skyEight(SB), NOSPLIT, $0-8
-	MOVQ k+0(FP), DI
-	VBROADCASTSS 0(DI), Y0
-	VBROADCASTSS 4(DI), Y1
-	VBROADCASTSS 8(DI), Y2
-	VBROADCASTSS 12(DI), Y3
-	VBROADCASTSS 16(DI), Y4
-	VBROADCASTSS 20(DI), Y5
-	MOVQ 24(DI), SI
-	MOVQ 32(DI), CX
-	VBROADCASTSS 40(DI), Y6
-	VXORPS Y7, Y7, Y7             // sums
-	VXORPS Y8, Y8, Y8             // 0
-
-skyBlock:
-	VMOVUPS (SI), Y9
-	VSUBPS  Y0, Y9, Y9            // dx
-	VMOVUPS 32(SI), Y10
-	VSUBPS  Y1, Y10, Y10
-	VMOVUPS 64(SI), Y11
-	VSUBPS  Y2, Y11, Y11
-	VMOVUPS 96(SI), Y12           // r
-	VMULPS  Y9, Y9, Y13
-	VMULPS  Y10, Y10, Y14
-	VADDPS  Y14, Y13, Y13
-	VMULPS  Y11, Y11, Y14
-	VADDPS  Y14, Y13, Y13         // d2
-	VMULPS  Y12, Y12, Y14
-	VMAXPS  Y14, Y13, Y13
-	VMULPS  Y3, Y9, Y9
-	VMULPS  Y4, Y10, Y10
-	VADDPS  Y10, Y9, Y9
-	VMULPS  Y5, Y11, Y11
-	VADDPS  Y11, Y9, Y9           // h
-	VADDPS  Y12, Y9, Y9
-	VMAXPS  Y8, Y9, Y9
-	VSQRTPS Y13, Y14
-	VADDPS  Y12, Y14, Y14
-	VDIVPS  Y14, Y9, Y9           // up
-	VMOVUPS 128(SI), Y14
-	VDIVPS  Y13, Y14, Y14
-	VSUBPS  Y6, Y14, Y14
-	VMAXPS  Y8, Y14, Y14          // share
-	VMULPS  Y9, Y14, Y14
-	VMULPS  Y9, Y14, Y14
-	VADDPS  Y14, Y7, Y7
-	ADDQ    $160, SI
-	DECQ    CX
-	JNZ     skyBlock
-	VMOVUPS Y7, 44(DI)
-	VZEROUPPER
+	MOVB AX, ret+16(FP)
 	RET

@@ -4,7 +4,8 @@ package render
 
 var useVectors = false
 
-func drawFour(*kernel) bool { panic("unreachable") }
-func maskFour(*kernel) bool { panic("unreachable") }
-func skyEight(*skyKernel)   { panic("unreachable") }
-func lookEight(*sights)     { panic("unreachable") }
+func setupEight(*triEight) uint32        { panic("unreachable") }
+func drawEight(*triEight, uint32) uint32 { panic("unreachable") }
+func maskFour(*triEight, int) bool       { panic("unreachable") }
+func skyEight(*skyKernel)                { panic("unreachable") }
+func lookEight(*sights)                  { panic("unreachable") }

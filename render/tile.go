@@ -23,7 +23,6 @@ type tile struct {
 	// as their bits are.
 	keys        []uint64
 	empty       uint64
-	rim         float32
 	slots       []slot
 	front, back layer
 	frags       []frag
@@ -31,7 +30,7 @@ type tile struct {
 	anyFrag     bool
 	solidAny    bool // something opaque is on the canvas, or there is a far limit
 
-	kernel    kernel
+	tris      triEight
 	sky       skyKernel
 	surf      surf
 	free      bool // look beyond the edges of a triangle
@@ -112,7 +111,6 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	t.inner = out.Sub(image.Pt(t.x, t.y))
 	t.rows = [2]int{(t.y + t.clip.Min.Y) << t.lg, (t.y + t.clip.Max.Y) << t.lg}
 	t.sx = f.sx
-	t.rim = 0.5 / float32(int(1)<<t.lg)
 	t.deep = f.light.style == Lit
 	t.sights.ready(f)
 	n := t.side * t.side
@@ -121,6 +119,7 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	if len(t.front.at) != n {
 		t.front.at, t.back.at = make([]sheet, n), make([]sheet, n)
 	}
+	t.tris.ready(t)
 }
 
 // reset forgets what the canvas shows.
@@ -236,34 +235,23 @@ func (t *tile) batch(it *item, p *part, layered bool) {
 	b := &f.batches[it.batch]
 	tx, ty := (t.x+f.apron)/tileSide-b.rect.Min.X, (t.y+f.apron)/tileSide-b.rect.Min.Y
 	k := ty*b.rect.Dx() + tx
-	vs := f.verts[p.vert0 : p.vert0+len(p.mesh.Positions)]
-	tris := p.mesh.Triangles
+	tris, v0 := p.mesh.Triangles, uint32(p.vert0)
+	s := &t.tris
 	for _, e := range b.entries[b.offset[k]:b.offset[k+1]] {
-		var a, c, d *vert
-		if e&looseBit != 0 {
-			l := &b.loose[e&^looseBit]
-			a, c, d = &l.v[0], &l.v[1], &l.v[2]
-		} else {
-			tri := &tris[e]
-			a, c, d = &vs[tri[0]], &vs[tri[1]], &vs[tri[2]]
-		}
-		s := uint32(len(t.slots))
-		if !layered {
-			if t.triangle(a, c, d, s, nil) {
-				t.slots = append(t.slots, slot{it.part, it.batch, e})
-			}
+		if e&looseBit != 0 { // its corners are not in the list
+			t.drawBlock(it, p, layered)
+			s.ids[0], s.n = e, 1
+			t.drawBlock(it, p, layered)
 			continue
 		}
-		l := &t.front
-		if ((c.x-a.x)*(a.y-d.y)-(d.x-a.x)*(a.y-c.y) < 0) != p.mirrored {
-			l = &t.back
-		}
-		// Known before it is drawn: a layer may turn into fragments on the way.
-		t.slots = append(t.slots, slot{it.part, it.batch, e})
-		if !t.triangle(a, c, d, s, l) {
-			t.slots = t.slots[:s]
+		i := s.n & 7
+		tri := &tris[e]
+		s.a[i], s.b[i], s.c[i], s.ids[i] = v0+tri[0], v0+tri[1], v0+tri[2], e
+		if s.n++; s.n == 8 {
+			t.drawBlock(it, p, layered)
 		}
 	}
+	t.drawBlock(it, p, layered)
 }
 
 // cover adds one sample to a layer when nothing opaque hides it. A sample

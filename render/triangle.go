@@ -1,6 +1,9 @@
 package render
 
-import "math"
+import (
+	"math"
+	"math/bits"
+)
 
 // Vertices lie on a grid of 1/256 pixel, and which samples a triangle covers
 // is decided with whole numbers: a sample is inside where all three edge
@@ -24,98 +27,200 @@ type triEdges struct {
 	a, b, c [3]int64
 }
 
-// kernel is what the innermost loop needs. Its layout is known to the
-// assembly.
+// kernel is what the innermost loop needs of a triangle.
 type kernel struct {
-	e       [3]int32   // 0: edge functions at the corner of the first pixel
-	a, b    [3]int32   // 12, 24: their growth over a grid unit
-	n0      float32    // 36: nearness at the canvas's corner
-	gx, gy  float32    // 40, 44: its growth over a pixel
-	x, y    float32    // 48, 52: the first pixel
-	slot    uint32     // 56
-	rows    int32      // 60
-	pairs   int32      // 64: of pixels in a row
-	_       int32      // 68
-	keys    *uint64    // 72: of the first pixel
-	stride  int64      // 80: bytes from row to row
-	masks   *uint8     // 88: where a layer's masks go, one a pair
-	_       [4]float64 // spare
-	maskBuf [maxMasks]uint8
+	e           [3]int32 // edge functions at the corner of the first pixel
+	a, b        [3]int32 // their growth over a grid unit
+	n0          float32  // nearness at the canvas's corner
+	gx, gy      float32  // its growth over a pixel
+	x, y        float32  // the first pixel
+	at          int      // its first sample
+	slot        uint32
+	rows, pairs int32 // of pixels in a row
+}
+
+// triEight is a block of eight triangles, field by field; its layout is known
+// to the assembly.
+type triEight struct {
+	a, b, c     [8]uint32   // 0, 32, 64: corners in the frame's list of vertices
+	ab          [3][8]int32 // 96: growth of the edge functions, to the right in the lower half and down in the upper
+	e           [3][8]int32 // 192: as in kernel
+	n0, gx, gy  [8]float32  // 288, 320, 352
+	x, y        [8]float32  // 384, 416
+	rows, pairs [8]int32    // 448, 480: rows is -1 for large triangles
+	at          [8]int32    // 512: bytes from the first sample of the canvas
+	verts       *vert       // 544
+	keys        *uint64     // 552
+	stride      int64       // 560: bytes from row to row
+	masks       *uint8      // 568: where a layer's masks go, one a pair
+	slot        uint32      // 576: of the next triangle that is seen
+	ox, oy      float32     // 580, 584: place of the canvas
+	rim         int32       // 588: from a pixel's rim to the first sample
+	clip        [4]int32    // 592: first column and row, last column and row
+	side, shift int32       // 608, 612: of the canvas; log2 of the bytes of a pixel
+	ids         [8]uint32   // entries of the batch
+	n           int
+	maskBuf     [maxMasks]uint8
 }
 
 // maxMasks is the largest field of pixel pairs that the innermost loop takes.
 const maxMasks = 56 * 28
 
-// triangle draws a triangle: onto the samples when l is nil, otherwise into
-// the layer. It tells whether it reached a sample.
-func (t *tile) triangle(a, b, c *vert, slot uint32, l *layer) bool {
-	ox, oy := float32(t.x), float32(t.y)
-	fax, fay, fbx, fby, fcx, fcy := a.x-ox, a.y-oy, b.x-ox, b.y-oy, c.x-ox, c.y-oy
-	x0, x1 := min(fax, fbx, fcx), max(fax, fbx, fcx)
-	y0, y1 := min(fay, fby, fcy), max(fay, fby, fcy)
-	ux, uy := fbx-fax, fby-fay
-	vx, vy := fcx-fax, fcy-fay
-	det := ux*vy - vx*uy
-	un, vn := b.n-a.n, c.n-a.n
-	var gx, gy float32
-	if det > 1e-4 || det < -1e-4 {
-		inv := 1 / det
-		gx, gy = (un*vy-vn*uy)*inv, (vn*ux-un*vx)*inv
+// ready prepares for a canvas.
+func (s *triEight) ready(t *tile) {
+	s.n = 0
+	s.keys, s.stride = &t.keys[0], int64(t.side)<<(t.lg+3)
+	s.ox, s.oy = float32(t.x), float32(t.y)
+	s.rim = sub / 2 >> t.lg
+	s.clip = [4]int32{int32(t.clip.Min.X), int32(t.clip.Min.Y), int32(t.clip.Max.X - 1), int32(t.clip.Max.Y - 1)}
+	s.side, s.shift = int32(t.side), int32(t.lg+3)
+	s.masks = &s.maskBuf[0]
+	if len(t.f.verts) > 0 {
+		s.verts = &t.f.verts[0]
 	}
-	n0 := a.n - gx*fax - gy*fay
+}
 
-	// Large triangles, and all when there is more than one way to reach a
-	// sample, take the long way.
-	const wide = 96
-	if !(x0 > -wide && x1 < wide && y0 > -wide && y1 < wide) {
-		return t.large(a, b, c, n0, gx, gy, slot, l)
+// setup readies a triangle for the innermost loop. Triangles that are large
+// or lie far out get -1 rows.
+func (s *triEight) setup(i int, a, b, c *vert) {
+	ax, ay, bx, by, cx, cy := a.x-s.ox, a.y-s.oy, b.x-s.ox, b.y-s.oy, c.x-s.ox, c.y-s.oy
+	s.n0[i], s.gx[i], s.gy[i] = slopes(ax, ay, bx, by, cx, cy, a.n, b.n, c.n)
+	x0, x1, y0, y1 := min(ax, bx, cx), max(ax, bx, cx), min(ay, by, cy), max(ay, by, cy)
+	if !(x1-x0 < 100 && y1-y0 < 100 && min(x0, y0) > -100 && max(x1, y1) < 300) {
+		s.rows[i] = -1
+		return
 	}
-	k := &t.kernel
-	ax, ay := int32(fax*sub), int32(fay*sub)
-	bx, by := int32(fbx*sub), int32(fby*sub)
-	cx, cy := int32(fcx*sub), int32(fcy*sub)
-	if (bx-ax)*(cy-ay)-(cx-ax)*(by-ay) < 0 {
-		bx, by, cx, cy = cx, cy, bx, by
+	px, py := [3]int32{int32(ax * sub), int32(bx * sub), int32(cx * sub)}, [3]int32{int32(ay * sub), int32(by * sub), int32(cy * sub)}
+	if (px[1]-px[0])*(py[2]-py[0])-(px[2]-px[0])*(py[1]-py[0]) < 0 {
+		px[1], py[1], px[2], py[2] = px[2], py[2], px[1], py[1]
 	}
 	// No sample lies within half a sample row of a pixel's rim, but some lie
 	// just there.
-	rim := t.rim
-	px0, py0 := max(int(x0+rim+wide-0.5/sub)-wide, t.clip.Min.X)&^1, max(int(y0+rim+wide-0.5/sub)-wide, t.clip.Min.Y)
-	px1, py1 := min(int(x1-rim+wide+1)-wide-1, t.clip.Max.X-1), min(int(y1-rim+wide+1)-wide-1, t.clip.Max.Y-1)
-	if px1 < px0 || py1 < py0 {
-		return false
+	left, top := max((min(px[0], px[1], px[2])+s.rim-1)>>subBits, s.clip[0])&^1, max((min(py[0], py[1], py[2])+s.rim-1)>>subBits, s.clip[1])
+	right, low := min((max(px[0], px[1], px[2])-s.rim)>>subBits, s.clip[2]), min((max(py[0], py[1], py[2])-s.rim)>>subBits, s.clip[3])
+	s.rows[i] = low - top + 1
+	if right < left || low < top {
+		s.rows[i] = 0
 	}
-	if l != nil && (py1-py0+1)*((px1-px0)/2+1) > maxMasks {
-		return t.large(a, b, c, n0, gx, gy, slot, l)
-	}
-	sx, sy := int32(px0*sub), int32(py0*sub)
+	s.pairs[i] = (right-left)>>1 + 1
+	s.x[i], s.y[i] = float32(left), float32(top)
+	s.at[i] = (top*s.side + left) << s.shift
 	// The edge from P to Q has a = Py - Qy and b = Qx - Px.
-	k.a[0], k.b[0] = ay-by, bx-ax
-	k.a[1], k.b[1] = by-cy, cx-bx
-	k.a[2], k.b[2] = cy-ay, ax-cx
-	k.e[0] = k.a[0]*(sx-ax) + k.b[0]*(sy-ay) + onEdge(k.a[0], k.b[0])
-	k.e[1] = k.a[1]*(sx-bx) + k.b[1]*(sy-by) + onEdge(k.a[1], k.b[1])
-	k.e[2] = k.a[2]*(sx-cx) + k.b[2]*(sy-cy) + onEdge(k.a[2], k.b[2])
-	k.n0, k.gx, k.gy = n0, gx, gy
-	k.x, k.y = float32(px0), float32(py0)
-	k.slot, k.rows, k.pairs = slot, int32(py1-py0+1), int32((px1-px0)/2+1)
-	at := (py0*t.side + px0) << t.lg
-	k.keys, k.stride = &t.keys[at], int64(t.side)<<(t.lg+3)
-	if l == nil {
-		if t.lg == 2 && useVectors {
-			return drawFour(k)
-		}
-		return t.drawPlain(k, at)
+	for k := range 3 {
+		q := (k + 1) % 3
+		a, b := py[k]-py[q], px[q]-px[k]
+		s.e[k][i] = a*(left*sub-px[k]) + b*(top*sub-py[k]) + onEdge(a, b)
+		s.ab[k][i] = a&0xffff | b<<16
 	}
-	k.masks = &k.maskBuf[0]
+}
+
+// slopes returns the nearness of a triangle's plane at the canvas's corner
+// and its growth to the right and down.
+func slopes(ax, ay, bx, by, cx, cy, an, bn, cn float32) (n0, gx, gy float32) {
+	ux, uy, vx, vy := bx-ax, by-ay, cx-ax, cy-ay
+	det := float32(ux*vy) - float32(vx*uy)
+	un, vn := bn-an, cn-an
+	if det > 1e-4 || det < -1e-4 {
+		inv := 1 / det
+		gx, gy = float32(float32(un*vy)-float32(vn*uy))*inv, float32(float32(vn*ux)-float32(un*vx))*inv
+	}
+	return an - float32(gx*ax) - float32(gy*ay), gx, gy
+}
+
+// lane returns one of the eight triangles.
+func (s *triEight) lane(i int, slot uint32) kernel {
+	k := kernel{n0: s.n0[i], gx: s.gx[i], gy: s.gy[i], x: s.x[i], y: s.y[i], slot: slot, rows: s.rows[i], pairs: s.pairs[i]}
+	k.at = int(s.at[i]) >> 3
+	for j := range 3 {
+		k.e[j], k.a[j], k.b[j] = s.e[j][i], s.ab[j][i]<<16>>16, s.ab[j][i]>>16
+	}
+	return k
+}
+
+// corners returns the corners of one of the eight triangles, which may be one
+// of the batch's loose ones.
+func (s *triEight) corners(i int, verts []vert, loose []loose) (a, b, c *vert) {
+	if id := s.ids[i]; id&looseBit != 0 {
+		l := &loose[id&^looseBit]
+		return &l.v[0], &l.v[1], &l.v[2]
+	}
+	return &verts[s.a[i]], &verts[s.b[i]], &verts[s.c[i]]
+}
+
+// drawBlock draws the triangles of a block and adds a slot for each of those
+// that reach a sample: onto the samples, or into the layers.
+func (t *tile) drawBlock(it *item, p *part, layered bool) {
+	s := &t.tris
+	n := s.n
+	s.n = 0
+	if n == 0 {
+		return
+	}
+	verts, loose := t.f.verts, t.f.batches[it.batch].loose
+	large := uint32(1) // anything: look at every triangle
+	if s.ids[0]&looseBit != 0 || !useVectors {
+		for i := range n {
+			a, b, c := s.corners(i, verts, loose)
+			s.setup(i, a, b, c)
+		}
+	} else {
+		for i := n; i < 8; i++ {
+			s.a[i], s.b[i], s.c[i] = s.a[0], s.b[0], s.c[0]
+		}
+		large = setupEight(s)
+	}
+	if !layered && large == 0 && t.lg == 2 && useVectors {
+		s.slot = uint32(len(t.slots))
+		for seen := drawEight(s, 1<<n-1); seen != 0; seen &= seen - 1 {
+			t.slots = append(t.slots, slot{it.part, it.batch, s.ids[bits.TrailingZeros32(seen)&7]})
+		}
+		return
+	}
+	for i := range n {
+		if s.rows[i] == 0 {
+			continue
+		}
+		k := uint32(len(t.slots))
+		// Known before it is drawn: a layer may turn into fragments on the
+		// way.
+		t.slots = append(t.slots, slot{it.part, it.batch, s.ids[i]})
+		a, b, c := s.corners(i, verts, loose)
+		var l *layer
+		if layered {
+			l = &t.front
+			if ((b.x-a.x)*(a.y-c.y)-(c.x-a.x)*(a.y-b.y) < 0) != p.mirrored {
+				l = &t.back
+			}
+		}
+		if !t.triangle(i, a, b, c, k, l) {
+			t.slots = t.slots[:k]
+		}
+	}
+}
+
+// triangle draws a triangle of the block: onto the samples when l is nil,
+// otherwise into the layer. It tells whether it reached a sample.
+func (t *tile) triangle(i int, a, b, c *vert, slot uint32, l *layer) bool {
+	s := &t.tris
+	if s.rows[i] < 0 || l != nil && s.rows[i]*s.pairs[i] > maxMasks {
+		return t.large(a, b, c, s.n0[i], s.gx[i], s.gy[i], slot, l)
+	}
+	if l == nil && t.lg == 2 && useVectors {
+		s.slot = slot
+		return drawEight(s, 1<<i) != 0
+	}
+	k := s.lane(i, slot)
+	if l == nil {
+		return t.drawPlain(&k)
+	}
 	if t.lg == 2 && useVectors {
-		if !maskFour(k) {
+		if !maskFour(s, i) {
 			return false
 		}
-	} else if !t.maskPlain(k, at) {
+	} else if !t.maskPlain(&k) {
 		return false
 	}
-	return t.addMasks(k, py0*t.side+px0, l)
+	return t.addMasks(&k, l)
 }
 
 // onEdge is -1 for edges whose own samples belong to the neighbour.
@@ -128,7 +233,7 @@ func onEdge(a, b int32) int32 {
 
 // drawPlain draws a small triangle, sample by sample. drawFour does the same
 // for four samples a pixel.
-func (t *tile) drawPlain(k *kernel, at int) bool {
+func (t *tile) drawPlain(k *kernel) bool {
 	n := 1 << t.lg
 	hit := false
 	for r := range int(k.rows) {
@@ -141,7 +246,7 @@ func (t *tile) drawPlain(k *kernel, at int) bool {
 			y := k.y + float32(r) + (float32(s)+0.5)/float32(n)
 			row := k.n0 + k.gy*y
 			x := k.x + float32(t.sx[s&15])
-			i := at + r*t.side<<t.lg + s
+			i := k.at + r*t.side<<t.lg + s
 			for range 2 * int(k.pairs) {
 				if e0|e1|e2 >= 0 {
 					key := uint64(math.Float32bits(row+k.gx*x))<<32 | uint64(k.slot)
@@ -164,7 +269,7 @@ func (t *tile) drawPlain(k *kernel, at int) bool {
 // maskPlain finds which samples a small triangle covers in front of what is
 // there: for each pixel pair a byte for up to four samples a pixel. With more
 // samples it draws nothing and leaves them to addMasks.
-func (t *tile) maskPlain(k *kernel, at int) bool {
+func (t *tile) maskPlain(k *kernel) bool {
 	if t.lg > 2 {
 		return true
 	}
@@ -176,12 +281,12 @@ func (t *tile) maskPlain(k *kernel, at int) bool {
 			mask := uint8(0)
 			for q := range 2 {
 				for s := range n {
-					if t.inside(k, at, r, 2*p+q, s) {
+					if t.inside(k, r, 2*p+q, s) {
 						mask |= 1 << (4*q + s)
 					}
 				}
 			}
-			k.maskBuf[m] = mask
+			t.tris.maskBuf[m] = mask
 			any |= mask
 			m++
 		}
@@ -191,7 +296,7 @@ func (t *tile) maskPlain(k *kernel, at int) bool {
 
 // inside tells whether a sample of pixel (x, r) of the kernel's field is
 // covered and not hidden.
-func (t *tile) inside(k *kernel, at, r, x, s int) bool {
+func (t *tile) inside(k *kernel, r, x, s int) bool {
 	sy := int32(r*sub + (2*s+1)*sub/2>>t.lg)
 	sx := int32(x*sub) + int32(t.sx[s&15]*sub)
 	e0 := k.e[0] + k.a[0]*sx + k.b[0]*sy
@@ -202,14 +307,14 @@ func (t *tile) inside(k *kernel, at, r, x, s int) bool {
 	}
 	y := k.y + float32(r) + (float32(s)+0.5)/float32(int(1)<<t.lg)
 	n := (k.n0 + k.gy*y) + k.gx*(k.x+float32(x)+float32(t.sx[s&15]))
-	return int64(uint64(math.Float32bits(n))<<32|math.MaxUint32) > int64(t.keys[at+(r*t.side+x)<<t.lg+s])
+	return int64(uint64(math.Float32bits(n))<<32|math.MaxUint32) > int64(t.keys[k.at+(r*t.side+x)<<t.lg+s])
 }
 
 // addMasks adds the covered samples to a layer.
-func (t *tile) addMasks(k *kernel, pixel int, l *layer) bool {
+func (t *tile) addMasks(k *kernel, l *layer) bool {
 	hit := false
 	m := 0
-	at := pixel << t.lg
+	pixel := k.at >> t.lg
 	l.touch(pixel / t.side)
 	l.touch(pixel/t.side + int(k.rows) - 1)
 	for r := range int(k.rows) {
@@ -218,7 +323,7 @@ func (t *tile) addMasks(k *kernel, pixel int, l *layer) bool {
 				for q := range 2 {
 					mask := uint32(0)
 					for s := range 1 << t.lg {
-						if t.inside(k, at, r, 2*p+q, s) {
+						if t.inside(k, r, 2*p+q, s) {
 							mask |= 1 << s
 						}
 					}
@@ -229,7 +334,7 @@ func (t *tile) addMasks(k *kernel, pixel int, l *layer) bool {
 				}
 				continue
 			}
-			b := k.maskBuf[m]
+			b := t.tris.maskBuf[m]
 			m++
 			if b == 0 {
 				continue

@@ -1,0 +1,208 @@
+#include "textflag.h"
+#include "gather_amd64.h"
+
+DATA one<>+0(SB)/4, $0x3f800000
+GLOBL one<>(SB), RODATA|NOPTR, $4
+DATA unsign<>+0(SB)/4, $0x7fffffff
+GLOBL unsign<>(SB), RODATA|NOPTR, $4
+DATA least<>+0(SB)/4, $0x38d1b717 // 1e-4
+GLOBL least<>(SB), RODATA|NOPTR, $4
+DATA span<>+0(SB)/4, $0x42c80000 // 100
+GLOBL span<>(SB), RODATA|NOPTR, $4
+DATA farUp<>+0(SB)/4, $0xc2c80000 // -100
+GLOBL farUp<>(SB), RODATA|NOPTR, $4
+DATA farDown<>+0(SB)/4, $0x43960000 // 300
+GLOBL farDown<>(SB), RODATA|NOPTR, $4
+DATA grid<>+0(SB)/4, $0x43800000 // 256
+GLOBL grid<>(SB), RODATA|NOPTR, $4
+
+// SIDE finds the edge function from (px, py) to (qx, qy) at the corner of the
+// first pixel, Y4 and Y6, and its growth. Y15 is -1.
+#define SIDE(o, px, py, qx, qy) \
+	VPSUBD   qy, py, Y5; \
+	VPSUBD   px, qx, Y7; \
+	VPSUBD   px, Y4, Y10; \
+	VPMULLD  Y5, Y10, Y10; \
+	VPSUBD   py, Y6, Y11; \
+	VPMULLD  Y7, Y11, Y11; \
+	VPADDD   Y11, Y10, Y10; \
+	VPXOR    Y12, Y12, Y12; \
+	VPCMPGTD Y12, Y5, Y13; \
+	VPCMPEQD Y12, Y5, Y14; \
+	VPCMPGTD Y12, Y7, Y12; \
+	VPAND    Y12, Y14, Y14; \
+	VPOR     Y14, Y13, Y13; \
+	VPXOR    Y15, Y13, Y13; \
+	VPADDD   Y13, Y10, Y10; \
+	VMOVDQU  Y10, (192+o)(BX); \
+	VPSLLD   $16, Y7, Y7; \
+	VPSLLD   $16, Y5, Y5; \
+	VPSRLD   $16, Y5, Y5; \
+	VPOR     Y7, Y5, Y5; \
+	VMOVDQU  Y5, (96+o)(BX)
+
+// func setupEight(s *triEight) uint32
+TEXT ·setupEight(SB), NOSPLIT, $192-12
+	MOVQ s+0(FP), BX
+	MOVQ 544(BX), SI
+	FOUR(0, 0)
+	TURN(Y8, Y9, Y10)
+	VMOVUPS Y10, an-32(SP)
+	FOUR(32, 0)
+	TURN(Y11, Y12, Y10)
+	VMOVUPS Y10, bn-64(SP)
+	FOUR(64, 0)
+	TURN(Y13, Y14, Y10)
+	VBROADCASTSS 580(BX), Y0
+	VBROADCASTSS 584(BX), Y1
+	VSUBPS Y0, Y8, Y8
+	VSUBPS Y1, Y9, Y9
+	VSUBPS Y0, Y11, Y11
+	VSUBPS Y1, Y12, Y12
+	VSUBPS Y0, Y13, Y13
+	VSUBPS Y1, Y14, Y14
+	// Nearness over the picture.
+	VSUBPS Y8, Y11, Y0            // ux
+	VSUBPS Y9, Y12, Y1            // uy
+	VSUBPS Y8, Y13, Y2            // vx
+	VSUBPS Y9, Y14, Y3            // vy
+	VMOVUPS an-32(SP), Y15
+	VSUBPS Y15, Y10, Y10          // vn
+	VMOVUPS bn-64(SP), Y7
+	VSUBPS Y15, Y7, Y7            // un
+	VMULPS Y0, Y3, Y4
+	VMULPS Y2, Y1, Y5
+	VSUBPS Y5, Y4, Y4             // det
+	VBROADCASTSS unsign<>(SB), Y5
+	VANDPS Y5, Y4, Y5
+	VBROADCASTSS least<>(SB), Y6
+	VCMPPS $1, Y5, Y6, Y5         // large enough
+	VBROADCASTSS one<>(SB), Y6
+	VDIVPS Y4, Y6, Y4             // 1/det
+	VANDPS Y5, Y4, Y4
+	VMULPS Y7, Y3, Y5
+	VMULPS Y10, Y1, Y6
+	VSUBPS Y6, Y5, Y5
+	VMULPS Y4, Y5, Y5             // gx
+	VMULPS Y10, Y0, Y6
+	VMULPS Y7, Y2, Y7
+	VSUBPS Y7, Y6, Y6
+	VMULPS Y4, Y6, Y6             // gy
+	VMOVUPS Y5, 320(BX)
+	VMOVUPS Y6, 352(BX)
+	VMULPS Y8, Y5, Y5
+	VSUBPS Y5, Y15, Y15
+	VMULPS Y9, Y6, Y6
+	VSUBPS Y6, Y15, Y15
+	VMOVUPS Y15, 288(BX)          // n0
+	// Those that are too large for whole numbers of 16 bits.
+	VMINPS Y11, Y8, Y0
+	VMINPS Y13, Y0, Y0
+	VMAXPS Y11, Y8, Y1
+	VMAXPS Y13, Y1, Y1
+	VMINPS Y12, Y9, Y2
+	VMINPS Y14, Y2, Y2
+	VMAXPS Y12, Y9, Y3
+	VMAXPS Y14, Y3, Y3
+	VSUBPS Y0, Y1, Y4
+	VSUBPS Y2, Y3, Y5
+	VMAXPS Y5, Y4, Y4             // extent
+	VMINPS Y2, Y0, Y0
+	VMAXPS Y3, Y1, Y1
+	VBROADCASTSS span<>(SB), Y5
+	VCMPPS $5, Y5, Y4, Y4         // not less than span
+	VBROADCASTSS farUp<>(SB), Y5
+	VCMPPS $10, Y5, Y0, Y5        // not above
+	VORPS Y5, Y4, Y4
+	VBROADCASTSS farDown<>(SB), Y5
+	VCMPPS $5, Y5, Y1, Y5
+	VORPS Y5, Y4, Y4
+	VMOVUPS Y4, large-96(SP)
+	VMOVMSKPS Y4, AX
+	MOVL AX, ret+8(FP)
+	// Whole numbers of 1/256 pixel.
+	VBROADCASTSS grid<>(SB), Y0
+	VMULPS Y0, Y8, Y8
+	VMULPS Y0, Y9, Y9
+	VMULPS Y0, Y11, Y11
+	VMULPS Y0, Y12, Y12
+	VMULPS Y0, Y13, Y13
+	VMULPS Y0, Y14, Y14
+	VCVTTPS2DQ Y8, Y8
+	VCVTTPS2DQ Y9, Y9
+	VCVTTPS2DQ Y11, Y11
+	VCVTTPS2DQ Y12, Y12
+	VCVTTPS2DQ Y13, Y13
+	VCVTTPS2DQ Y14, Y14
+	VPSUBD Y8, Y11, Y0
+	VPSUBD Y9, Y14, Y1
+	VPMULLD Y1, Y0, Y0
+	VPSUBD Y8, Y13, Y1
+	VPSUBD Y9, Y12, Y2
+	VPMULLD Y2, Y1, Y1
+	VPSUBD Y1, Y0, Y4             // twice the area
+	VBLENDVPS Y4, Y13, Y11, Y0
+	VBLENDVPS Y4, Y14, Y12, Y1
+	VBLENDVPS Y4, Y11, Y13, Y2
+	VBLENDVPS Y4, Y12, Y14, Y3
+	// The field of pixels.
+	VPMINSD Y0, Y8, Y4
+	VPMINSD Y2, Y4, Y4
+	VPMAXSD Y0, Y8, Y5
+	VPMAXSD Y2, Y5, Y5
+	VPMINSD Y1, Y9, Y6
+	VPMINSD Y3, Y6, Y6
+	VPMAXSD Y1, Y9, Y7
+	VPMAXSD Y3, Y7, Y7
+	VPBROADCASTD 588(BX), Y10     // rim
+	VPCMPEQD Y15, Y15, Y15        // -1
+	VPADDD Y10, Y4, Y4
+	VPADDD Y15, Y4, Y4
+	VPSRAD $8, Y4, Y4
+	VPADDD Y10, Y6, Y6
+	VPADDD Y15, Y6, Y6
+	VPSRAD $8, Y6, Y6
+	VPSUBD Y10, Y5, Y5
+	VPSRAD $8, Y5, Y5
+	VPSUBD Y10, Y7, Y7
+	VPSRAD $8, Y7, Y7
+	VPBROADCASTD 592(BX), Y10
+	VPMAXSD Y10, Y4, Y4
+	VPADDD Y15, Y15, Y10          // -2
+	VPAND Y10, Y4, Y4             // first pixel, even
+	VPBROADCASTD 596(BX), Y10
+	VPMAXSD Y10, Y6, Y6
+	VPBROADCASTD 600(BX), Y10
+	VPMINSD Y10, Y5, Y5
+	VPBROADCASTD 604(BX), Y10
+	VPMINSD Y10, Y7, Y7
+	VPSUBD Y4, Y5, Y5
+	VPSUBD Y6, Y7, Y7
+	VPOR Y5, Y7, Y10
+	VPSRAD $31, Y10, Y10          // empty
+	VPSRAD $1, Y5, Y5
+	VPSUBD Y15, Y5, Y5
+	VMOVDQU Y5, 480(BX)           // pairs
+	VPSUBD Y15, Y7, Y7
+	VPANDN Y7, Y10, Y7
+	VPOR large-96(SP), Y7, Y7
+	VMOVDQU Y7, 448(BX)           // rows
+	VCVTDQ2PS Y4, Y5
+	VMOVUPS Y5, 384(BX)
+	VCVTDQ2PS Y6, Y5
+	VMOVUPS Y5, 416(BX)
+	VPBROADCASTD 608(BX), Y5
+	VPMULLD Y5, Y6, Y5
+	VPADDD Y4, Y5, Y5
+	MOVL 612(BX), AX
+	VMOVD AX, X7
+	VPSLLD X7, Y5, Y5
+	VMOVDQU Y5, 512(BX)
+	// Edges.
+	VPSLLD $8, Y4, Y4
+	VPSLLD $8, Y6, Y6
+	SIDE(0, Y8, Y9, Y0, Y1)
+	SIDE(32, Y0, Y1, Y2, Y3)
+	SIDE(64, Y2, Y3, Y8, Y9)
+	VZEROUPPER
+	RET
