@@ -39,42 +39,48 @@ DATA sampleYF<>+24(SB)/4, $0x3f200000
 DATA sampleYF<>+28(SB)/4, $0x3f600000
 GLOBL sampleYF<>(SB), RODATA|NOPTR, $32
 
-DATA one<>+0(SB)/4, $0x3f800000
-GLOBL one<>(SB), RODATA|NOPTR, $4
-DATA two<>+0(SB)/4, $0x40000000
-GLOBL two<>(SB), RODATA|NOPTR, $4
+DATA ones<>+0(SB)/8, $0x3f8000003f800000
+DATA ones<>+8(SB)/8, $0x3f8000003f800000
+DATA ones<>+16(SB)/8, $0x3f8000003f800000
+DATA ones<>+24(SB)/8, $0x3f8000003f800000
+GLOBL ones<>(SB), RODATA|NOPTR, $32
+DATA twos<>+0(SB)/8, $0x4000000040000000
+DATA twos<>+8(SB)/8, $0x4000000040000000
+DATA twos<>+16(SB)/8, $0x4000000040000000
+DATA twos<>+24(SB)/8, $0x4000000040000000
+GLOBL twos<>(SB), RODATA|NOPTR, $32
 
 // Registers of both functions; R12 points to the triangle's lane in the block:
 // Y0 Y1 Y2   edge functions of the row's first pair
 // Y3 Y4 Y5   edge functions of the pair
-// Y6         n0 + gy·y of the row; Y7 x of the pair
-// Y8 Y9 Y10  growth of the edge functions over two pixels
+// Y6         n0 + gy·y of the row; Y7 x of the pair; Y8 y of the row
+// Y11        growth of the nearness to the right
 // Y12        slot
-// Y11 Y13 Y14 Y15 scratch
+// Y9 Y10 Y13 Y14 Y15 scratch
+// The growth of the edge functions over two pixels is in the frame.
 #define PREPARE \
 	VMOVDQU      sampleXY<>(SB), Y13; \
-	EDGE(0, Y0, Y8); \
-	EDGE(32, Y1, Y9); \
-	EDGE(64, Y2, Y10); \
+	EDGE(0, Y0, step-32(SP)); \
+	EDGE(32, Y1, step-64(SP)); \
+	EDGE(64, Y2, step-96(SP)); \
 	VBROADCASTSS 320(R12), Y11; \
-	VMOVUPS      Y11, gx-64(SP); \
 	MOVL         448(R12), R8; \
 	MOVL         480(R12), R9; \
 	MOVLQSX      512(R12), SI; \
 	ADDQ         552(DI), SI; \
 	MOVQ         560(DI), R10; \
-	VBROADCASTSS 416(R12), Y15; \
-	VADDPS       sampleYF<>(SB), Y15, Y15; \
-	VMOVUPS      Y15, rowY-32(SP)
+	VBROADCASTSS 416(R12), Y8; \
+	VADDPS       sampleYF<>(SB), Y8, Y8
 
 // EDGE readies one edge: value at the samples, growth over two pixels.
 #define EDGE(o, val, step) \
-	VPBROADCASTD (96+o)(R12), step; \
-	VPMADDWD     Y13, step, val; \
+	VPBROADCASTD (96+o)(R12), Y14; \
+	VPMADDWD     Y13, Y14, val; \
 	VPBROADCASTD (192+o)(R12), Y15; \
 	VPADDD       Y15, val, val; \
-	VPSLLD       $16, step, step; \
-	VPSRAD       $7, step, step
+	VPSLLD       $16, Y14, Y14; \
+	VPSRAD       $7, Y14, Y14; \
+	VMOVDQU      Y14, step
 
 // ROW readies a row: copies the edge functions, finds n0 + gy·y and x.
 #define ROW \
@@ -82,21 +88,18 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 	VMOVDQA      Y1, Y4; \
 	VMOVDQA      Y2, Y5; \
 	VBROADCASTSS 352(R12), Y6; \
-	VMULPS       rowY-32(SP), Y6, Y6; \
+	VMULPS       Y8, Y6, Y6; \
 	VBROADCASTSS 288(R12), Y15; \
 	VADDPS       Y6, Y15, Y6; \
 	VBROADCASTSS 384(R12), Y7; \
-	VADDPS       sampleXF<>(SB), Y7, Y7; \
-	VMOVUPS      Y7, pairX-128(SP)
+	VADDPS       sampleXF<>(SB), Y7, Y7
 
 // DOWN goes to the next row: the edge functions grow by 256·b, y by 1.
 #define DOWN \
 	FALL(0, Y0); \
 	FALL(32, Y1); \
 	FALL(64, Y2); \
-	VBROADCASTSS one<>(SB), Y15; \
-	VADDPS       rowY-32(SP), Y15, Y15; \
-	VMOVUPS      Y15, rowY-32(SP)
+	VADDPS       ones<>(SB), Y8, Y8
 
 #define FALL(o, val) \
 	VPBROADCASTD (96+o)(R12), Y15; \
@@ -106,12 +109,10 @@ GLOBL two<>(SB), RODATA|NOPTR, $4
 
 // RIGHT goes to the next pair.
 #define RIGHT \
-	VPADDD       Y8, Y3, Y3; \
-	VPADDD       Y9, Y4, Y4; \
-	VPADDD       Y10, Y5, Y5; \
-	VBROADCASTSS two<>(SB), Y15; \
-	VADDPS       Y15, Y7, Y7; \
-	VMOVUPS      Y7, pairX-128(SP)
+	VPADDD       step-32(SP), Y3, Y3; \
+	VPADDD       step-64(SP), Y4, Y4; \
+	VPADDD       step-96(SP), Y5, Y5; \
+	VADDPS       twos<>(SB), Y7, Y7
 
 // func drawEight(s *triEight, todo uint32) uint32
 TEXT ·drawEight(SB), NOSPLIT, $136-20
@@ -143,35 +144,36 @@ drawPair:
 	CMPL      DX, $255
 	JEQ       drawNext
 	VPSRAD    $31, Y13, Y13       // all ones outside
-	VMULPS    gx-64(SP), Y7, Y14
+	VMULPS    Y11, Y7, Y14
 	VADDPS    Y14, Y6, Y14        // nearness
-	VPUNPCKHDQ Y13, Y13, Y11
-	VMOVDQU   Y11, out-96(SP)
+	VPUNPCKHDQ Y13, Y13, Y10
 	VPUNPCKLDQ Y13, Y13, Y13      // outside, first pixel
 	VPUNPCKLDQ Y14, Y12, Y15      // its keys
-	VMOVDQU   (BX), Y11
-	VPCMPGTQ  Y11, Y15, Y7
-	VPANDN    Y7, Y13, Y7         // seen
-	VMOVMSKPD Y7, R11
-	ORL       R11, AX
-	VBLENDVPD Y7, Y15, Y11, Y15
-	VMOVDQU   Y15, (BX)
-	VPUNPCKHDQ Y14, Y12, Y15      // keys of the second pixel
-	VMOVDQU   32(BX), Y11
-	VPCMPGTQ  Y11, Y15, Y7
-	VMOVDQU   out-96(SP), Y13
-	VPANDN    Y7, Y13, Y7
-	VMOVMSKPD Y7, R11
-	ORL       R11, AX
-	VBLENDVPD Y7, Y15, Y11, Y15
-	VMOVDQU   Y15, 32(BX)
-	VMOVUPS   pairX-128(SP), Y7
+	VPUNPCKHDQ Y14, Y12, Y14      // keys of the second pixel
+	VMOVDQU   (BX), Y9
+	VPCMPGTQ  Y9, Y15, Y9
+	VPANDN    Y9, Y13, Y13        // seen
+	VMOVDQU   32(BX), Y9
+	VPCMPGTQ  Y9, Y14, Y9
+	VPANDN    Y9, Y10, Y10
+	VMOVDQU (BX), Y9
+	VBLENDVPD Y13, Y15, Y9, Y15
+	VMOVDQU Y15, (BX)
+	VMOVDQU 32(BX), Y9
+	VBLENDVPD Y10, Y14, Y9, Y14
+	VMOVDQU Y14, 32(BX)
+	VPOR      Y13, Y10, Y10
+	VMOVMSKPD Y10, DX
+	ORL       DX, AX
 
 drawNext:
+	DECL CX
+	JZ   drawEnd
 	RIGHT
 	ADDQ $64, BX
-	DECL CX
-	JNZ  drawPair
+	JMP  drawPair
+
+drawEnd:
 	DECL R8
 	JZ   drawn
 	DOWN
@@ -218,7 +220,7 @@ maskPair:
 	VMOVMSKPS Y13, DX
 	CMPL      DX, $255
 	JEQ       maskNext
-	VMULPS    gx-64(SP), Y7, Y14
+	VMULPS    Y11, Y7, Y14
 	VADDPS    Y14, Y6, Y14
 	VPSRAD    $31, Y13, Y13
 	VPUNPCKLDQ Y14, Y12, Y15
