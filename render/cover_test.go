@@ -206,6 +206,17 @@ func TestVectorKernelEqualsPlainGo(t *testing.T) {
 					float32(c[0] + size*rng.NormFloat64()), float32(c[1] + size*rng.NormFloat64()), float32(c[2] + size*rng.NormFloat64())})
 			}
 			m.Triangles = append(m.Triangles, [3]uint32{uint32(3 * i), uint32(3*i + 1), uint32(3*i + 2)})
+			if round%3 > 0 { // with normals, and as if it had an inside
+				for range 3 {
+					m.Normals = append(m.Normals, [3]float32{float32(rng.NormFloat64()), float32(rng.NormFloat64()), float32(rng.NormFloat64())})
+				}
+			}
+			m.Closed = round%3 == 2
+			if i%10 == 0 {
+				s.Add(Sphere{c, size}, Solid(Color{90, 160, 40}))
+				s.Add(Cylinder{c, Vec3{rng.NormFloat64(), rng.NormFloat64(), 0}, size / 3}, Solid(Color{30, 60, 140}))
+				s.Add(Cone{c.Mul(-1), Vec3{rng.NormFloat64(), rng.NormFloat64(), 0}, size}, Solid(Color{130, 60, 140}))
+			}
 		}
 		mat := Solid(Color{200, 120, 40})
 		if round%2 == 1 {
@@ -216,7 +227,7 @@ func TestVectorKernelEqualsPlainGo(t *testing.T) {
 		for k, on := range []bool{true, false} {
 			useVectors = on
 			got[k] = newImage(99, 77)
-			if err := Draw(context.Background(), got[k], &s, Orbit(Vec3{}, 6, 0.3, float64(round), 0.5), PlainLook(white), Quality{Samples: 4}, Band{}); err != nil {
+			if err := Draw(context.Background(), got[k], &s, Orbit(Vec3{}, 6, 0.3, float64(round), 0.5), looks[round%len(looks)].look, Quality{Samples: 4}, Band{}); err != nil {
 				t.Fatal(err)
 			}
 		}

@@ -33,3 +33,8 @@ func skyEight(k *skyKernel)
 //
 //go:noescape
 func lookEight(s *sights)
+
+// rodFour is rodKernel.plain for the four samples of a pixel at once.
+//
+//go:noescape
+func rodFour(k *rodKernel)

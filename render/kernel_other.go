@@ -9,3 +9,4 @@ func drawEight(*triEight, uint32) uint32 { panic("unreachable") }
 func maskFour(*triEight, int) bool       { panic("unreachable") }
 func skyEight(*skyKernel)                { panic("unreachable") }
 func lookEight(*sights)                  { panic("unreachable") }
+func rodFour(*rodKernel)                 { panic("unreachable") }

@@ -29,47 +29,14 @@ func (t *tile) rowRange(y0, y1 float64) (int, int) {
 	return int(math.Min(hi, math.Max(lo, math.Floor(y0*r-0.5)))), int(math.Max(lo, math.Min(hi, math.Ceil(y1*r+0.5))))
 }
 
-// ball draws a sphere or ellipsoid that lies wholly in front of the eye.
-func (t *tile) ball(q *quadric, b *box, slot uint32) {
-	j0, j1 := t.rowRange(b.y0, b.y1)
-	step := 1 / float64(int(1)<<t.lg)
-	keys := t.keys
-	for j := j0; j < j1; j++ {
-		y := (float64(j) + 0.5) * step
-		l, r := q.span(y, b.x0, b.x1)
-		k := j & (1<<t.lg - 1)
-		x0, x1 := t.pixelRange(l, r, k)
-		if x0 >= x1 {
-			continue
-		}
-		dy := y - q.my
-		b0 := q.b[0] + q.b[2]*dy
-		c0, c1, c2 := q.q[0]+dy*(q.q[2]+q.q[5]*dy), q.q[1]+q.q[4]*dy, q.q[3]
-		row := (((j >> t.lg) - t.y) * t.side << t.lg) + k
-		dx := float64(t.x) + t.sx[k] - q.mx
-		for x := x0; x < x1; x++ {
-			u := float64(x) + dx
-			d := c0 + u*(c1+u*c2)
-			if d < 0 {
-				d = 0
-			}
-			n := b0 + q.b[1]*u + math.Sqrt(d)
-			key := uint64(math.Float32bits(float32(n)))<<32 | uint64(slot)
-			if p := &keys[row+x<<t.lg]; int64(key) > int64(*p) {
-				*p = key
-			}
-		}
-	}
-}
-
 // body draws any round body, opaque or as two layers.
 func (t *tile) body(q *quadric, p *part, slot uint32, layered bool) {
 	b := &p.box
 	j0, j1 := t.rowRange(b.y0, b.y1)
 	step := 1 / float64(int(1)<<t.lg)
 	nMax := t.f.projs[p.proj].nMax
-	if !layered && q.safe && q.mode == wallBetween && (q.slab == slabAhead || q.slab == slabAnyhow) {
-		t.rod(q, b, slot)
+	if !layered && q.safe && q.mode == wallBetween && q.slab != slabBetween {
+		t.round(q, b, slot)
 		return
 	}
 	for j := j0; j < j1; j++ {
@@ -103,57 +70,6 @@ func (t *tile) body(q *quadric, p *part, slot uint32, layered bool) {
 			if out > 0 && out <= nMax {
 				t.cover(&t.back, py, x, k, float32(out), slot+outKind)
 			}
-		}
-	}
-}
-
-// rod draws an opaque cylinder or cone that lies wholly in front of the eye.
-func (t *tile) rod(q *quadric, b *box, slot uint32) {
-	j0, j1 := t.rowRange(b.y0, b.y1)
-	step := 1 / float64(int(1)<<t.lg)
-	keys := t.keys
-	ahead := q.slab == slabAhead
-	for j := j0; j < j1; j++ {
-		y := (float64(j) + 0.5) * step
-		l, r := q.span(y, b.x0, b.x1)
-		k := j & (1<<t.lg - 1)
-		x0, x1 := t.pixelRange(l, r, k)
-		if x0 >= x1 {
-			continue
-		}
-		dy := y - q.my
-		c0, c1, c2 := q.q[0]+dy*(q.q[2]+q.q[5]*dy), q.q[1]+q.q[4]*dy, q.q[3]
-		u := float64(t.x+x0) + t.sx[k] - q.mx
-		wall, low, high := q.b.at(u, dy), q.s0.at(u, dy), q.s1.at(u, dy)
-		i := ((j>>t.lg-t.y)*t.side+x0)<<t.lg + k
-		for ; x0 < x1; x0++ {
-			d := c0 + u*(c1+u*c2)
-			s := 0.0
-			if d > 0 {
-				s = math.Sqrt(d)
-			} else if c2 >= 0 { // a cone whose span is not bounded
-				s = math.Inf(-1)
-			}
-			in, out := wall+s, wall-s
-			near, far, id := low, high, slot+capLow
-			if near < far {
-				near, far, id = far, near, slot+capHigh
-			}
-			if near >= in {
-				id = slot
-			}
-			in, out = min(in, near), max(out, far)
-			if in >= out && (!ahead || far > 0) {
-				key := uint64(math.Float32bits(float32(in)))<<32 | uint64(id)
-				if p := &keys[i]; int64(key) > int64(*p) {
-					*p = key
-				}
-			}
-			i += 1 << t.lg
-			u++
-			wall += q.b[1]
-			low += q.s0[1]
-			high += q.s1[1]
 		}
 	}
 }

@@ -31,6 +31,7 @@ type tile struct {
 	solidAny    bool // something opaque is on the canvas, or there is a far limit
 
 	tris      triEight
+	rods      rodKernel
 	sky       skyKernel
 	surf      surf
 	free      bool // look beyond the edges of a triangle
@@ -190,12 +191,7 @@ func (t *tile) opaque(it *item, p *part) {
 		for k := range uint32(surfaceKinds) {
 			t.slots = append(t.slots, slot{it.part, -1, k})
 		}
-		q := &f.quadrics[it.first]
-		if q.kind == rodSphere && q.mode == wallBetween && q.safe {
-			t.ball(q, &p.box, s)
-		} else {
-			t.body(q, p, s, false)
-		}
+		t.body(&f.quadrics[it.first], p, s, false)
 	case formDisc:
 		t.slots = append(t.slots, slot{it.part, -1, 0})
 		t.plate(&f.discs[it.first], p, false)
