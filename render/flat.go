@@ -82,12 +82,13 @@ func (f *frame) addDisc(p part, m Affine, g Disc) {
 	f.parts = append(f.parts, p)
 }
 
-// fills tells whether a rectangle of the picture lies wholly on the disc.
-func (d *disc) fills(x0, y0, x1, y1 float64) bool {
+// fills tells whether a rectangle of the picture lies wholly on the disc and
+// nearer than the limit nMin.
+func (d *disc) fills(x0, y0, x1, y1, nMin float64) bool {
 	for _, c := range [4][2]float64{{x0, y0}, {x1, y0}, {x0, y1}, {x1, y1}} {
 		x, y := c[0]-d.mx, c[1]-d.my
 		u, v, w := d.u[0]+d.u[1]*x+d.u[2]*y, d.v[0]+d.v[1]*x+d.v[2]*y, d.w[0]+d.w[1]*x+d.w[2]*y
-		if n := d.n[0] + d.n[1]*x + d.n[2]*y; !(n > 1e-12 && n <= d.nMax && w > 0 && u*u+v*v <= w*w) {
+		if n := d.n[0] + d.n[1]*x + d.n[2]*y; !(n > max(1e-12, nMin) && n <= d.nMax && w > 0 && u*u+v*v <= w*w) {
 			return false
 		}
 	}

@@ -81,7 +81,7 @@ func (t *tile) plate(d *disc, p *part, layered bool) {
 	step := 1 / float64(int(1)<<t.lg)
 	slot := uint32(len(t.slots) - 1)
 	if layered && d.hole < 0 {
-		t.pane(d, b, slot, t.f.ink.half > 0 && p.outline)
+		t.pane(d, p, slot, t.f.ink.half > 0 && p.outline)
 		return
 	}
 	var parts [2][2]float64

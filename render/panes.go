@@ -64,7 +64,8 @@ func (t *tile) evenColor(p *part) (c paneColor) {
 // pane draws a translucent disc without a hole. It is one sheet, so its
 // fragments are made at once, pixel row by pixel row, unless the layer is
 // wanted for an outline.
-func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
+func (t *tile) pane(d *disc, p *part, slot uint32, keep bool) {
+	b := &p.box
 	n := 1 << t.lg
 	y0, y1 := max(t.clip.Min.Y, int(math.Max(-1e6, b.y0))-t.y-1), min(t.clip.Max.Y, int(math.Min(1e6, b.y1))-t.y+2)
 	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
@@ -73,7 +74,7 @@ func (t *tile) pane(d *disc, b *box, slot uint32, keep bool) {
 	nx, ny := float32(d.n[1]), float32(d.n[2])
 	full := uint32(1)<<n - 1
 	area := t.clip
-	all := d.fills(float64(t.x), float64(t.y), float64(t.x+t.side), float64(t.y+t.side))
+	all := d.fills(float64(t.x), float64(t.y), float64(t.x+t.side), float64(t.y+t.side), t.f.projs[p.proj].nMin)
 	if keep = keep && (!all || t.solidAny); !keep {
 		area = t.inner
 		y0, y1 = max(y0, area.Min.Y), min(y1, area.Max.Y)
@@ -154,6 +155,12 @@ func (t *tile) ahead(keys []uint64, near, nx, ny float32) (mask uint32) {
 	return mask
 }
 
+// blank tells that the canvas shows nothing but its ground and the discs that
+// fill it, in one order, and returns its pixel.
+func (t *tile) blank() (uint32, bool) {
+	return t.calmPixel, t.calm && !t.anyFrag && !t.bodies
+}
+
 // layWides adds the discs that fill the canvas to the layers of a pixel,
 // where nothing opaque hides them; solid tells that there may be something.
 func (t *tile) layWides(i, px, py int, solid bool) {
@@ -202,7 +209,7 @@ type stack struct {
 func (t *tile) findCalm() {
 	t.calm = false
 	t.last.n = -1
-	if len(t.wides) == 0 || t.empty != 0 {
+	if len(t.wides) == 0 {
 		return
 	}
 	var first stack

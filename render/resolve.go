@@ -8,7 +8,11 @@ import (
 
 // fillGround fills a part of the picture with the ground.
 func (f *frame) fillGround(out image.Rectangle) {
-	px := f.groundPixel()
+	f.fill(out, f.groundPixel())
+}
+
+// fill fills a part of the picture with a pixel.
+func (f *frame) fill(out image.Rectangle, px [4]uint8) {
 	d := f.dst
 	at := out.Sub(f.rect.Min).Add(d.Rect.Min)
 	n := 4 * out.Dx()
@@ -64,6 +68,12 @@ func (t *tile) resolve(out image.Rectangle) {
 		t.drawInk()
 	}
 	t.findCalm()
+	if px, ok := t.blank(); ok {
+		var b [4]uint8
+		binary.LittleEndian.PutUint32(b[:], px)
+		f.fill(out, b)
+		return
+	}
 	at := f.dst.Rect.Min.Sub(f.rect.Min)
 	for y := out.Min.Y; y < out.Max.Y; y++ {
 		row := f.dst.Pix[f.dst.PixOffset(out.Min.X+at.X, y+at.Y):][:4*out.Dx()]
@@ -139,7 +149,7 @@ func (t *tile) wishRow(row []uint8, py, px int) {
 		}
 		if layered {
 			if len(t.wides) > 0 {
-				t.layWides(i, px, py, any != 0 || t.empty != 0)
+				t.layWides(i, px, py, any != 0)
 			}
 			t.wishFrags(t.first[i], px, py)
 		}

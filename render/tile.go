@@ -43,6 +43,7 @@ type tile struct {
 	last      stack // the even discs of the pixel before
 	calm      bool  // all pixels without other layers are calmPixel
 	calmPixel uint32
+	bodies    bool // something opaque is on the canvas
 	sights    sights
 	tasks     []task
 	shares    []share
@@ -162,7 +163,8 @@ func (t *tile) see(list []int32) {
 	for i := range t.first {
 		t.first[i] = -1
 	}
-	t.solidAny = len(t.slots) > 1 || t.empty != 0
+	t.bodies = len(t.slots) > 1
+	t.solidAny = t.bodies || t.empty != 0
 	last := int32(-1)
 	for _, k := range list {
 		it := &f.items[k]
