@@ -45,4 +45,14 @@ func TestGrowth(t *testing.T) {
 		wall, cpu := cost(&s, Orbit(Vec3{}, 5, 0.3, 0.4, 0.6), PlainLook(white), 1920, 1080, Quality{Samples: 4}, 3)
 		t.Logf("ball of %d triangles: wall %.1f ms, processor %.1f ms", len(m.Triangles), wall, cpu)
 	}
+	for _, n := range []int{1000, 10000, 50000} {
+		var s Scene
+		for i := range n {
+			a, z := 2.399963*float64(i), 1-(2*float64(i)+1)/float64(n)
+			k := math.Sqrt(1 - z*z)
+			s.Add(Sphere{Vec3{k * math.Cos(a), k * math.Sin(a), z}, 1.6 / math.Sqrt(float64(n))}, Solid(RGB(0x0072B2)))
+		}
+		wall, cpu := cost(&s, Orbit(Vec3{}, 5, 0.3, 0.4, 0.6), LitLook(white), 1920, 1080, Quality{Samples: 4}, 3)
+		t.Logf("lit, %d spheres: wall %.1f ms, processor %.1f ms", n, wall, cpu)
+	}
 }

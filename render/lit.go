@@ -1,6 +1,9 @@
 package render
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // The lit look shades a place by the bodies around it. Every body stands for
 // a few balls, and a ball of radius r at distance d, seen at an angle θ from
@@ -13,6 +16,7 @@ type shades struct {
 	balls []ball
 	first []int32 // of a part's own balls, and one more
 	near  []near  // the balls that matter to a part
+	tree  shadeTree
 }
 
 // near lists balls in blocks of eight: eight times x, then y, z, the radius,
@@ -75,12 +79,13 @@ func (r *Renderer) shadesOf() {
 		}
 	}
 	s.first = append(s.first, int32(len(s.balls)))
+	s.tree.build(s.balls)
 	s.near = grow(s.near[:cap(s.near)], len(f.parts))
 	r.phase(len(f.parts), r.nearJob)
 }
 
 // neighbours lists the balls that a part feels.
-func (r *Renderer) neighbours(_ *worker, i int) {
+func (r *Renderer) neighbours(worker *worker, i int) {
 	s := &r.frame.shades
 	out := &s.near[i]
 	out.blocks, out.count = out.blocks[:0], 0
@@ -93,11 +98,15 @@ func (r *Renderer) neighbours(_ *worker, i int) {
 	for k := range own[1:] {
 		c = around(c, own[1+k])
 	}
-	for k := range s.balls {
+	// In the order of the balls, so that sums do not depend on the tree; with
+	// a little more than the reach, for rounding.
+	worker.found = s.tree.around(0, c.center(), 1.06*c.r, worker.found[:0])
+	slices.Sort(worker.found)
+	for _, k := range worker.found {
 		b := &s.balls[k]
 		d := distance(&c, b) - 1.05*c.r
 		w := b.weight * b.r * b.r
-		if d > 0 && w <= faintest*d*d || k >= int(s.first[i]) && k < int(s.first[i+1]) {
+		if d > 0 && w <= faintest*d*d || k >= s.first[i] && k < s.first[i+1] {
 			continue
 		}
 		at := out.count % 8

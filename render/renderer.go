@@ -187,6 +187,7 @@ type worker struct {
 	tile   tile
 	bin    binScratch
 	typist typist
+	found  []int32 // balls
 }
 
 func (w *worker) work() {
