@@ -15,6 +15,12 @@ import (
 var figures = []struct{ file, line string }{
 	{"assets/readme/eu-1.png", "demo:square-plane --on Cl:sigma --irrep Eu --partner 1"},
 	{"assets/readme/eu-2.png", "demo:square-plane --on Cl:sigma --irrep Eu --partner 2"},
+	{"assets/readme/sheet.png", "demo:tetrahedron --on Cl:sigma,pi --width 180 --dpi 150"},
+	{"testdata/pictures/operations.png", "demo:square-plane --on Cl:sigma --sheet operations --width 120 --dpi 80 --signs printed"},
+	{"testdata/pictures/frames.png", "demo:water --on H:s --irrep B2 --sheet frames --second plane-xz --dpi 100 --shape polar"},
+	{"testdata/pictures/descent.png", "demo:tetrahedron --on Cl:sigma --sheet descent --subgroup C3v --dpi 100 --signs hatching"},
+	{"testdata/pictures/levels.png", "demo:tetrahedron --on Cl:sigma --sheet levels --dpi 100 --look ink --font serif"},
+	{"testdata/pictures/elements.png", "demo:water --sheet molecule --slide --dpi 50"},
 	{"testdata/pictures/molecule.png", "demo:sandwich-staggered --width 50 --dpi 100"},
 	{"testdata/pictures/s-dark.png", "demo:cage --on C:s --irrep T1u --width 50 --dpi 100 --ground dark"},
 	{"testdata/pictures/pi-ink.png", "demo:octahedron --on C:pi --irrep T2g --width 50 --dpi 100 --look ink"},

@@ -20,7 +20,9 @@ type Body struct {
 	// room are the balls that have to be seen besides the atoms: the lobes of
 	// any group orbital of the basis, so that all of them are seen from one
 	// place and at one size.
-	room  []ball
+	room []ball
+	// reach are balls that hold what room stands for whole.
+	reach []ball
 	signs []signMark
 	// key names only atoms that carry functions.
 	key  bool
@@ -92,21 +94,23 @@ func (m *Maker) bare(b *work.Basis, s study.Study) *Body {
 	st := newStage(s)
 	st.carries = carriers(b)
 	st.addMolecule(b.Group)
-	return &Body{stage: st, group: b.Group, room: m.live.roomBalls(st, b)}
+	kept := m.live.roomBalls(st, b)
+	return &Body{stage: st, group: b.Group, room: kept.balls, reach: kept.reach}
 }
 
 // roomBalls keeps the balls of the last basis.
-func (l *Live) roomBalls(s *stage, b *work.Basis) []ball {
+func (l *Live) roomBalls(s *stage, b *work.Basis) basisBalls {
 	if l.balls.basis != b || l.balls.shape != s.look.Shape {
-		l.balls = basisBalls{b, s.look.Shape, s.roomOf(b)}
+		l.balls = basisBalls{b, s.look.Shape, s.roomOf(b), s.reachOf(b)}
 	}
-	return l.balls.balls
+	return l.balls
 }
 
 type basisBalls struct {
 	basis *work.Basis
 	shape string
 	balls []ball
+	reach []ball
 }
 
 func (m *Maker) add(body *Body, b *work.Basis, coefficients []float64, op work.Operation, moved bool) {
@@ -196,7 +200,7 @@ func (b *Body) Scene(scale float64) render.Scene {
 
 // must are all balls that have to be seen.
 func (b *Body) must() []ball {
-	return append(append(append([]ball(nil), b.stage.atoms...), b.room...), b.stage.elements...)
+	return append(append(append([]ball(nil), b.stage.atoms...), b.reach...), b.stage.elements...)
 }
 
 // PaletteOf is the palette for a look.

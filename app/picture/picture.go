@@ -52,7 +52,18 @@ func carriers(b *work.Basis) []bool {
 // roomOf is the room that lobes of any group orbital of a basis can take. The
 // view and the scale follow from it, so that all of them, partners above all,
 // are seen from one place and at one size.
-func (s *stage) roomOf(b *work.Basis) []ball {
+func (s *stage) roomOf(b *work.Basis) []ball { return s.roomFor(b, 1) }
+
+// reachOf is roomOf with balls that hold the tips of the lobes.
+func (s *stage) reachOf(b *work.Basis) []ball {
+	beyond := 1.25 // a lobe reaches to 1, its ball to 0.93
+	if s.look.Shape == square {
+		beyond = 1.45
+	}
+	return s.roomFor(b, beyond)
+}
+
+func (s *stage) roomFor(b *work.Basis, beyond float64) []ball {
 	unit := lobeUnit(b.Group, s.carries)
 	var room []ball
 	for _, f := range b.Functions {
@@ -62,7 +73,7 @@ func (s *stage) roomOf(b *work.Basis) []ball {
 			continue
 		}
 		for _, l := range lobeBalls(f.Value, f.Shell, s.look.Shape) {
-			room = append(room, ball{at.Add(l.centre.Mul(unit)), l.radius * unit})
+			room = append(room, ball{at.Add(l.centre.Mul(unit)), beyond * l.radius * unit})
 		}
 	}
 	return room

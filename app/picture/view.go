@@ -103,11 +103,25 @@ func covered(v view, lobes, atoms []ball) float64 {
 	for i, a := range atoms {
 		for _, b := range atoms[:i] {
 			overlap(a, b, 0.4)
+			d := a.centre.Sub(b.centre)
+			if len(atoms) <= fewAtoms && d.Len() > 0 {
+				aside := d.Sub(back.Mul(d.Dot(back))).Len() / d.Len()
+				sum += behind * max(0, 1-aside/fairlyAside)
+			}
 		}
 	}
 	// What counts is the share of bodies that are covered.
 	return sum / math.Sqrt(float64(max(1, len(lobes)+len(atoms))))
 }
+
+// In structures of few atoms a view along the line between two of them costs as
+// much as covering behind lobes, and less so up to an angle of which this is
+// the sine.
+const (
+	fewAtoms    = 24
+	behind      = 1.5
+	fairlyAside = 0.5
+)
 
 func largestBall(balls []ball) float64 {
 	largest := 0.0

@@ -38,8 +38,8 @@ type placedCard struct {
 	text, triad block
 	// stacked has the text below key and triad; beside them otherwise.
 	stacked bool
-	// torn says that a word is wider than its column.
-	torn bool
+	// torn says that a word is wider than its column, keyless that the key is.
+	torn, keyless bool
 }
 
 const (
@@ -63,7 +63,7 @@ func (m *maker) placeCard(c card, p plan, width float64) placedCard {
 			Width: p.grid.view.Width*p.scale + 2*side, Height: p.grid.view.Height*p.scale + 1.5*side, Scale: p.scale,
 		}
 		if out.key.Width > width {
-			out.key = picture.Panel{}
+			out.key, out.keyless = picture.Panel{}, true
 		}
 	}
 	left := 0.0
@@ -73,7 +73,7 @@ func (m *maker) placeCard(c card, p plan, width float64) placedCard {
 		}
 	}
 	if left-innerGap > width {
-		out.key, left = picture.Panel{}, out.triad.w+innerGap
+		out.key, left, out.keyless = picture.Panel{}, out.triad.w+innerGap, true
 	}
 	textWidth := width - left
 	if out.stacked = textWidth < readable*m.size*mmPerPoint && out.key.Width > 0; out.stacked {

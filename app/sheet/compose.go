@@ -1,27 +1,38 @@
 package sheet
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // An option is a way to lay a sheet out.
 type option struct {
 	plan
 	card   placedCard
 	beside bool
+	// within names the atoms in the first panel instead of in a key.
+	within bool
 	height float64
 	score  float64
 }
 
 // How much smaller panels may be for what they keep: closed forms below them,
-// and a line of its own for each irrep. Found by looking.
+// and a line of its own for each irrep; and for a key that is saved. Found by
+// looking.
 const (
 	withoutForms = 0.5
 	sharedLines  = 0.55
 	brokenUnits  = 0.6
+	withoutKey   = 1.3
 )
 
 // compose lays out a grid with its card, with the largest panels that fit.
 func (m *maker) compose(g grid, c card) (block, error) {
-	best, ok := m.search(g, c, m.room())
+	room := m.room()
+	if g.flows && m.height == 0 {
+		room = max(room, min(tallestPage, 2.4*m.width)-2*m.margin) // a strip of many panels may be long
+	}
+	best, ok := m.search(g, c, room)
 	if !ok && m.height == 0 {
 		// More panels than a page of a journal takes: as low as can be.
 		best, ok = m.lowest(g, c)
@@ -31,6 +42,16 @@ func (m *maker) compose(g grid, c card) (block, error) {
 	}
 	if !best.forms && g.hasForms() && !m.figure.NoCoefficients && !m.figure.NoCaption {
 		m.note("coefficients left out, there is no room for them below the panels")
+	}
+	if best.card.keyless {
+		m.note("names of atoms left out, there is no room for a key")
+	}
+	if best.within {
+		// Rows are shared by all options.
+		best.grid.rows = slices.Clone(best.grid.rows)
+		best.grid.rows[0].cells = slices.Clone(best.grid.rows[0].cells)
+		best.grid.rows[0].cells[0].named = true
+		c.key = nil
 	}
 	drawn, err := m.draw(best.plan)
 	if err != nil {
@@ -118,12 +139,33 @@ func (m *maker) options(g grid, c card) []option {
 						o.score *= brokenUnits
 					}
 					out = append(out, o)
+					if large, ok := m.namedWithin(o, width, c); ok {
+						out = append(out, large)
+					}
 				}
 			}
 		}
 	}
 	return out
 }
+
+// namedWithin is an option with the names of the atoms in the first panel, where
+// panels are large enough for that.
+func (m *maker) namedWithin(o option, width float64, c card) (option, bool) {
+	if c.key == nil || m.figure.NoCard || m.study.Look.NoLabels || o.width < largePanel*m.size/textSize {
+		return o, false
+	}
+	g := o.grid
+	g.side = 0.7 * m.labelRoom(1)
+	p, ok := m.plan(g, width, o.columns, o.packed, o.forms)
+	o.plan, o.within = p, true
+	o.score *= withoutKey
+	return o, ok
+}
+
+// largePanel is the width in millimetres from which a panel has room for the
+// names of atoms in type of the usual size.
+const largePanel = 36.0
 
 // besideWidth is the width of a card beside the panels.
 func (m *maker) besideWidth() float64 { return min(0.34*m.inner(), 46+m.size*2) }
@@ -135,9 +177,12 @@ func (m *maker) measured(o option, c card) option {
 	if o.beside {
 		width = m.besideWidth()
 	}
+	if o.within {
+		c.key = nil
+	}
 	o.card = m.placeCard(c, o.plan, width)
 	switch {
-	case o.beside && o.card.torn:
+	case o.beside && (o.card.torn || o.card.keyless):
 		o.height = math.Inf(1)
 	case o.card.h == 0:
 		o.height = h
@@ -158,7 +203,8 @@ func (m *maker) search(g grid, c card, room float64) (option, bool) {
 			o.plan = p
 			return m.measured(o, c).height <= room
 		})
-		if !ok {
+		const share = 0.7 // of a panel's width that bodies with names beside them take
+		if !ok || o.within && max(p.grid.view.Width, p.grid.view.Height)*p.scale < share*largePanel*m.size/textSize {
 			continue
 		}
 		o.plan = p

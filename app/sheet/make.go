@@ -170,9 +170,12 @@ func (m *maker) room() float64 {
 	if m.height > 0 {
 		return m.height - 2*m.margin
 	}
-	const tallest, shape = 240.0, 1.35
-	return min(tallest, max(shape*m.width, 110)) - 2*m.margin
+	const shape = 1.7
+	return min(tallestPage, max(shape*m.width, 110)) - 2*m.margin
 }
+
+// tallestPage is what a page of a journal can give a figure, in millimetres.
+const tallestPage = 240.0
 
 // finish puts the content on its page.
 func (m *maker) finish(title string, content block) (*Sheet, error) {

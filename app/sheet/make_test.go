@@ -155,6 +155,42 @@ func TestNothingOverlapsOrIsCutOff(t *testing.T) {
 	}
 }
 
+func TestBodiesAreNotCutOffByTheirPanels(t *testing.T) {
+	const dpi = 100
+	for name, s := range kinds {
+		for _, shape := range []string{"contour", "square"} {
+			if s.Figure.Width = 120; s.Figure.Sheet == Operations && shape != "contour" {
+				continue
+			}
+			s.Look.Shape = shape
+			seen := map[string]bool{}
+			for _, item := range sheetOf(t, s).Items {
+				p, ok := item.(*Panel)
+				if !ok || seen[p.Name] || len(seen) > 6 {
+					continue
+				}
+				seen[p.Name] = true
+				img, err := p.Paint(t.Context(), dpi)
+				if err != nil {
+					t.Fatal(err)
+				}
+				w, h := img.Rect.Dx(), img.Rect.Dy()
+				ground := color.RGBA{0xFC, 0xFB, 0xF8, 0xFF}
+				for k := range 2 * (w + h) {
+					x, y := k%w, (k/w%2)*(h-1)
+					if k >= 2*w {
+						x, y = (k-2*w)/h*(w-1), (k-2*w)%h
+					}
+					if img.RGBAAt(x, y) != ground {
+						t.Errorf("%s, %s: %s reaches the rim of its panel at %d, %d of %d × %d", name, shape, p.Name, x, y, w, h)
+						break
+					}
+				}
+			}
+		}
+	}
+}
+
 func TestSlidesAreOfTheirShapeAndNothingOverlaps(t *testing.T) {
 	for name, s := range kinds {
 		for _, width := range []float64{0, 254} {
