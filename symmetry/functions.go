@@ -317,8 +317,15 @@ func combination(list []named, v *mat.VecDense) string {
 			terms = append(terms, term{c, list[i].name})
 		}
 	}
-	sort.SliceStable(terms, func(a, b int) bool { return math.Abs(terms[a].c) > math.Abs(terms[b].c)+negligible })
-	common := math.Abs(terms[len(terms)-1].c)
+	if len(list) != len(linears) {
+		// The term that gives a function its name comes first: 2z2-x2-y2. Sums
+		// of x, y and z keep their order.
+		sort.SliceStable(terms, func(a, b int) bool { return math.Abs(terms[a].c) > math.Abs(terms[b].c)+negligible })
+	}
+	common := math.Inf(1)
+	for _, t := range terms {
+		common = math.Min(common, math.Abs(t.c))
+	}
 	for _, t := range terms {
 		if multiple(t.c/common) == "" {
 			common = 1 // no common factor: each term has its own number

@@ -46,6 +46,8 @@ type Shown struct {
 	Held *work.Exchange
 	// Notes are lines in the upper left corner.
 	Notes []notation.Text
+	// Nodes are nodal planes to be drawn.
+	Nodes []work.NodalPlane
 	Look  study.Look
 	// Palette, if not nil, takes the place of the one that Look asks for.
 	Palette *assets.Palette
@@ -149,6 +151,10 @@ func (l *Live) fill(s *stage, shown Shown, toward mgl64.Vec3, quick bool) {
 	}
 	if shown.Operation != nil {
 		s.addMotion(*shown.Operation, l.roomOf(s, shown), toward)
+	}
+	if len(shown.Nodes) > 0 {
+		r := l.roomOf(s, shown)
+		s.addNodes(shown.Nodes, r.centre, nodeReach(r.radius))
 	}
 	if shown.Basis == nil || len(shown.Coefficients) == 0 {
 		return

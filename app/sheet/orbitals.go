@@ -82,6 +82,9 @@ func (m *maker) orbitalCell(o *work.Orbitals, orbital *orbitals.GroupOrbital) ce
 		body:  m.bodies.Lobes(o.Basis, orbital.Coefficients, m.study),
 		title: notation.OrbitalText(irrep.Label), name: notation.Orbital(irrep.Label),
 	}
+	if m.study.Look.Nodes {
+		c.body.AddNodes(o.NodalPlanes(orbital))
+	}
 	which := ""
 	if irrep.Dimension > 1 {
 		which = fmt.Sprintf("%d\u00a0of\u00a0%d", orbital.Partner+1, irrep.Dimension)

@@ -19,6 +19,9 @@ const (
 	StepIrrep       Step = "irrep"
 	StepPartner     Step = "partner"
 	StepElement     Step = "element"
+	StepTurn        Step = "turn"
+	StepMixing      Step = "mixing"
+	StepCentral     Step = "central"
 	StepOperation   Step = "operation"
 	StepPlay        Step = "play"
 	StepScrub       Step = "scrub"
@@ -42,7 +45,7 @@ const (
 func Steps() []Step {
 	return []Step{
 		StepChange, StepOpen, StepCore, StepTolerance, StepFrame, StepBasis, StepAtoms, StepFunction, StepIrrep,
-		StepPartner, StepElement, StepOperation, StepPlay, StepScrub, StepAngle, StepOrbit, StepZoom, StepPan,
+		StepPartner, StepElement, StepTurn, StepMixing, StepCentral, StepOperation, StepPlay, StepScrub, StepAngle, StepOrbit, StepZoom, StepPan,
 		StepFit, StepAlong, StepPerspective, StepLook, StepFigure, StepAtomTable, StepView, StepAs, StepHeld, StepSubgroup,
 	}
 }

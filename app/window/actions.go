@@ -54,7 +54,7 @@ func (u *ui) newView() *viewport {
 		camera(study.StepOrbit, func(c study.Camera) study.Camera { return c.Orbited(rows(), dx*perPixel, -dy*perPixel) })
 	}
 	v.panBy = func(dx, dy float64) {
-		perPixel := v.sight.PerPixel(v.width, v.height)
+		perPixel := v.perPixel()
 		camera(study.StepPan, func(c study.Camera) study.Camera { return c.Panned(dx*perPixel, -dy*perPixel) })
 	}
 	v.zoomAt = func(factor, x, y float64) {
@@ -63,8 +63,9 @@ func (u *ui) newView() *viewport {
 			return
 		}
 		u.history.Begin(study.StepZoom)
-		perPixel := v.sight.PerPixel(v.width, v.height)
-		at := [2]float64{(x - float64(v.width)/2) * perPixel, (float64(v.height)/2 - y) * perPixel}
+		perPixel := v.perPixel()
+		middle := v.cellAt(x, y)
+		at := [2]float64{(x - middle.x) * perPixel, (middle.y - y) * perPixel}
 		camera(study.StepZoom, func(c study.Camera) study.Camera { return c.ZoomedAt(factor, at) })
 		u.session.Keep(u.now())
 	}
@@ -216,6 +217,9 @@ func (u *ui) chooseOrbital(irrep string, number, partner int) {
 	if s.Projection.Irrep == irrep && s.Projection.Copy == number {
 		step = study.StepPartner
 	}
+	if s.Projection.Irrep != irrep {
+		s.Turn, s.Mixing = nil, nil // they are of the irrep before
+	}
 	s.Projection.Irrep, s.Projection.Copy, s.Projection.Partner = irrep, number, partner
 	s.Projection.Subject, s.Moment = study.SubjectOrbital, 0
 	if !s.Projection.Character {
@@ -343,6 +347,8 @@ func (u *ui) setBasis(list []string) {
 	s := u.now()
 	s.Basis = list
 	s.Projection = study.Projection{}
+	s.Turn, s.Mixing = nil, nil
+	s.Held.Irrep, s.Held.Copy, s.Held.Partner = "", 0, 0
 	s.Moment = 0
 	if len(list) > 0 {
 		s.Projection.Function, s.Projection.Subject = 1, study.SubjectFunction
@@ -485,7 +491,7 @@ func (u *ui) key(e *fyne.KeyEvent) bool {
 		u.moveBy(study.StepOrbit, func(c study.Camera, rows mgl64.Mat3) study.Camera { return c.Orbited(rows, x*step, y*step) })
 	}
 	pan := func(x, y float64) {
-		by := 24 * u.view.sight.PerPixel(u.view.width, u.view.height) * u.view.scale()
+		by := 24 * u.view.perPixel() * u.view.scale()
 		u.moveBy(study.StepPan, func(c study.Camera, _ mgl64.Mat3) study.Camera { return c.Panned(x*by, y*by) })
 	}
 	move := turn
@@ -554,6 +560,16 @@ func (u *ui) typed(r rune) bool {
 		u.nextOperation(1)
 	case ',':
 		u.nextOperation(-1)
+	case 'p':
+		u.toggleSplit()
+	case 'k':
+		u.toggleNodes()
+	case 'h':
+		u.holdOrbital()
+	case ']':
+		u.turnStep(1)
+	case '[':
+		u.turnStep(-1)
 	case 'n':
 		u.nextFunction(1)
 	case 'N':
@@ -578,7 +594,8 @@ func (u *ui) moveBy(step study.Step, change func(study.Camera, mgl64.Mat3) study
 }
 
 func (u *ui) zoomBy(factor float64) {
-	u.view.zoomAt(factor, float64(u.view.width)/2, float64(u.view.height)/2)
+	at := u.view.cellAt(0, 0)
+	u.view.zoomAt(factor, at.x, at.y)
 	u.updateMenus()
 }
 

@@ -43,6 +43,14 @@ type spot struct {
 	// hint is shown while the pointer rests there.
 	hint string
 	do   func()
+	// at is called in the place of do where the click matters: x and y are
+	// counted from the corner of the spot. drag follows the pointer with the
+	// button down, and release ends that.
+	at      func(x, y float64)
+	drag    func(x, y float64)
+	release func()
+	// step takes the keys left and right while the spot is marked.
+	step func(by int)
 }
 
 func (s spot) holds(x, y float64) bool {
@@ -233,4 +241,32 @@ func (b *board) paint(r *render.Renderer, dst *image.RGBA, scale float64) error 
 		draw.Draw(dst, i.img.Bounds().Add(at), i.img, image.Point{}, draw.Src)
 	}
 	return nil
+}
+
+// matrix sets a matrix, given by rows, in square brackets with its left upper
+// corner at x and y, and returns the place right of it.
+func (b *board) matrix(x, y float64, rows [][]float64, ink color.NRGBA) float64 {
+	const row = 18.0
+	plain := style{size: textSize, color: ink}
+	wide := 24.0
+	for _, r := range rows {
+		for _, v := range r {
+			wide = max(wide, b.measure(notation.Words(entry(v)), plain)+14)
+		}
+	}
+	for i, r := range rows {
+		for k, v := range r {
+			b.text(x+6+(float64(k)+0.5)*wide, y+row*float64(i)+14, notation.Words(entry(v)), plain)
+		}
+	}
+	tall := row*float64(len(rows)) + 4
+	right := x + 12 + float64(len(rows))*wide
+	for _, at := range []float64{x, right - 1} {
+		b.fill(at, y, 1, tall, ink)
+	}
+	for _, at := range []float64{y, y + tall - 1} {
+		b.fill(x, at, 4, 1, ink)
+		b.fill(right-4, at, 4, 1, ink)
+	}
+	return right
 }

@@ -115,6 +115,7 @@ func (u *ui) commandMenus() []commandMenu {
 		{"menu.axes", u.axesCommands()},
 		{"menu.view", u.viewCommands()},
 		{"menu.play", u.playCommands()},
+		{"partners.menu", u.partnerCommands()},
 		{"menu.figure", u.figureCommands()},
 		{"menu.help", u.helpCommands()},
 	}

@@ -27,7 +27,6 @@ const mostCopies = 400
 func (u *ui) drawFollows(b *board) {
 	y := pad - u.follows.scroll
 	width := b.width - 2*pad
-	plain := style{size: textSize, color: b.palette.Ink, align: -1}
 	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
 	accent := style{size: secondSize, color: b.palette.Accent, align: -1}
 	s, st := u.now(), u.state
@@ -44,7 +43,7 @@ func (u *ui) drawFollows(b *board) {
 	if st.Stale(work.StageOrbitals) {
 		y = b.paragraph(pad, y+secondSize, width, notation.Words(say("follows.stale")), accent)
 	}
-	y = b.paragraph(pad, y+textSize, width, contentText(o), plain)
+	y = u.drawContent(b, y, width, o)
 	if p := st.Problem(work.ConcernIrrep); p != nil {
 		y = b.paragraph(pad, y, width, problemWords(p), accent)
 	}
@@ -86,11 +85,20 @@ func contentText(o *work.Orbitals) notation.Text {
 	return t
 }
 
+// chosenSet names the place of the chosen copy, which does nothing by itself.
+const chosenSet = "chosen set"
+
 // drawCopy draws one copy: its label and a picture of every partner.
-func (u *ui) drawCopy(b *board, y, width float64, o *work.Orbitals, partners []orbitals.GroupOrbital, first int, chosen *orbitals.GroupOrbital) float64 {
+func (u *ui) drawCopy(b *board, y, width float64, o *work.Orbitals, partners []orbitals.GroupOrbital, first int, chosen *orbitals.GroupOrbital) (bottom float64) {
 	irrep := o.Irreps[partners[0].Irrep]
 	label := style{size: headSize, color: b.palette.Ink, align: -1}
 	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
+	if chosen != nil && chosen.Irrep == partners[0].Irrep && chosen.Copy == partners[0].Copy {
+		// What belongs to the choice is scrolled to as a whole.
+		at, top := len(b.spots), y
+		b.spot(spot{x: pad, y: y, width: width, name: chosenSet})
+		defer func() { b.spots[at].height = bottom - top }()
+	}
 	b.fill(pad, y, width, 1, faint(b.palette.Rule, 0x60))
 	y += 6
 	w := b.text(pad, y+headSize, notation.OrbitalText(irrep.Label), label)
@@ -126,13 +134,18 @@ func (u *ui) drawCopy(b *board, y, width float64, o *work.Orbitals, partners []o
 		b.spot(spot{x: x, y: y, width: side, height: side + 17, name: name, do: func() { u.chooseOrbital(irrep.Label, p.Copy+1, p.Partner+1) }})
 		x += side + gap
 	}
-	return y + side + 22
+	y += side + 22
+	y = u.drawWith(b, y, width, partners)
+	if chosen != nil && chosen.Irrep == partners[0].Irrep && chosen.Copy == partners[0].Copy {
+		y = u.drawSet(b, y, width, o, partners)
+	}
+	return y + 4
 }
 
 // likeness is the simplest function that a partner transforms like.
 func likeness(irrep symmetry.Irrep, partner int) notation.Text {
 	if partner < len(irrep.Functions) && len(irrep.Functions[partner]) > 0 {
-		return fill(say("partners.like"), notation.Polynomial(irrep.Functions[partner][0]))
+		return fill(say("partners.like"), notation.Polynomial(irrep.Functions[partner][notation.Likest(irrep.Functions[0])]))
 	}
 	if irrep.Dimension > 1 {
 		return notation.Words(say("partners.partner", partner+1))
@@ -168,11 +181,12 @@ func (u *ui) drawDetail(b *board) {
 		y += headSize + 12
 		formula := plain
 		formula.whole = true
-		y = b.paragraph(pad, y+textSize-4, width, combinationText(o.Coefficients), formula)
+		y = b.paragraph(pad, y+textSize-4, width, u.forms.text(o.Coefficients), formula)
 		if f := irrepFunctions(irrep, o.Partner); f != nil {
 			y = b.paragraph(pad, y+2, width, fill(say("partners.transforms"), f), quiet)
 		}
-		y = u.drawMatrix(b, y, irrep)
+		y = u.drawNodes(b, y, width, o)
+		y = u.drawMatrix(b, y, o)
 		return
 	case study.SubjectFunction:
 		if st.Basis == nil || s.Projection.Function > len(st.Basis.Functions) || len(s.Basis) == 0 {
@@ -226,39 +240,25 @@ func irrepFunctions(irrep symmetry.Irrep, partner int) notation.Text {
 }
 
 // drawMatrix shows the matrix of the operation at hand among the partners.
-func (u *ui) drawMatrix(b *board, y float64, irrep symmetry.Irrep) float64 {
+func (u *ui) drawMatrix(b *board, y float64, o *orbitals.GroupOrbital) float64 {
 	op, ok := u.operation()
-	if !ok || op.Index < 0 || op.Index >= len(irrep.Matrices) {
+	if !ok {
 		return y
 	}
-	m := irrep.Matrices[op.Index]
-	d := irrep.Dimension
-	plain := style{size: textSize, color: b.palette.Ink}
+	m := u.matrix(o, op)
+	if m == nil {
+		return y
+	}
 	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
 	y += 6
 	w := b.text(pad, y+secondSize, fill(say("partners.matrix"), notation.Operation(op.Name)), quiet)
-	if d == 1 {
-		b.text(pad+w+10, y+secondSize+1, notation.Words(entry(m.At(0, 0))), style{size: textSize, color: b.palette.Ink, align: -1})
+	if len(m) == 1 {
+		b.text(pad+w+10, y+secondSize+1, notation.Words(entry(m[0][0])), style{size: textSize, color: b.palette.Ink, align: -1})
 		return y + 22
 	}
 	y += secondSize + 6
-	cell, row := min(46, (b.width-2*pad)/float64(d)), 18.0
-	for i := range d {
-		for k := range d {
-			b.text(pad+6+(float64(k)+0.5)*cell, y+row*float64(i)+14, notation.Words(entry(m.At(i, k))), plain)
-		}
-	}
-	tall := row*float64(d) + 4
-	ink := b.palette.Ink
-	right := pad + 12 + float64(d)*cell
-	for _, x := range []float64{pad, right - 1} {
-		b.fill(x, y, 1, tall, ink)
-	}
-	b.fill(pad, y, 4, 1, ink)
-	b.fill(pad, y+tall-1, 4, 1, ink)
-	b.fill(right-4, y, 4, 1, ink)
-	b.fill(right-4, y+tall-1, 4, 1, ink)
-	return y + tall + 8
+	b.matrix(pad, y, m, b.palette.Ink)
+	return y + 18*float64(len(m)) + 12
 }
 
 // entry writes an entry of a matrix: in closed form where that is short.

@@ -10,12 +10,13 @@ import (
 	"time"
 
 	"lobewright/app/picture"
-	"lobewright/render"
 )
 
 // A request asks for one frame of the picture.
 type request struct {
-	shown         picture.Shown
+	shown picture.Shown
+	// beside are further pictures under the same camera.
+	beside        []picture.Shown
 	sight         picture.Orbit
 	width, height int
 	dpi           float64
@@ -25,7 +26,7 @@ type request struct {
 
 // A drawn frame is an image with the scene that it was drawn from.
 type drawn struct {
-	*picture.Frame
+	cells []drawnCell
 	image *image.RGBA
 	full  bool
 	// structure tells that it is not the mere ground.
@@ -119,10 +120,9 @@ func (f *frames) work() {
 		}
 	}()
 	var (
-		live     picture.Live
-		renderer render.Renderer
-		half     bool
-		next     *request
+		drawers []*drawer
+		half    bool
+		next    *request
 	)
 	for {
 		var r request
@@ -140,7 +140,7 @@ func (f *frames) work() {
 			if half {
 				q.width, q.height, q.dpi = (r.width+1)/2, (r.height+1)/2, r.dpi/2
 			}
-			if !f.draw(f.ctx, &live, &renderer, q, true) {
+			if !f.draw(f.ctx, &drawers, q, true) {
 				return
 			}
 			switch {
@@ -165,7 +165,7 @@ func (f *frames) work() {
 		if len(f.want) > 0 {
 			cancel()
 		}
-		ok := f.draw(ctx, &live, &renderer, r, false)
+		ok := f.draw(ctx, &drawers, r, false)
 		f.mu.Lock()
 		f.cancel = nil
 		f.mu.Unlock()
@@ -192,12 +192,8 @@ func (f *frames) waitTaken() {
 }
 
 // draw draws a frame and hands it over; false after close.
-func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.Renderer, r request, quick bool) bool {
+func (f *frames) draw(ctx context.Context, drawers *[]*drawer, r request, quick bool) bool {
 	began := time.Now()
-	frame, err := live.Frame(r.shown, r.sight, r.width, r.height, r.dpi, quick)
-	if err != nil {
-		return true
-	}
 	var d *drawn
 	select {
 	case d = <-f.free:
@@ -207,8 +203,8 @@ func (f *frames) draw(ctx context.Context, live *picture.Live, renderer *render.
 	if d == nil || d.image.Rect.Dx() != r.width || d.image.Rect.Dy() != r.height {
 		d = &drawn{image: image.NewRGBA(image.Rect(0, 0, r.width, r.height))}
 	}
-	d.Frame, d.full, d.structure = frame, !quick, r.shown.Group != nil
-	if err := renderer.Draw(ctx, d.image, &frame.Scene, frame.Camera, frame.Look, frame.Quality, render.Band{}); err != nil {
+	d.full, d.structure = !quick, r.shown.Group != nil
+	if err := drawCells(ctx, drawers, d, r, quick); err != nil {
 		f.free <- d
 		return f.ctx.Err() == nil
 	}

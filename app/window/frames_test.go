@@ -23,7 +23,7 @@ func TestTheLastRequestIsAlwaysDrawn(t *testing.T) {
 		f.ask(request{width: last, height: 10, dpi: 96, sight: picture.NewOrbit(0.1, 0.2), moving: n%2 == 0})
 		limit := time.Now().Add(5 * time.Second)
 		for {
-			if d := f.take(); d != nil && d.full && d.Width == last {
+			if d := f.take(); d != nil && d.full && d.image.Rect.Dx() == last {
 				break
 			}
 			if time.Now().After(limit) {

@@ -18,6 +18,7 @@ var stepTexts = map[study.Step]string{
 	study.StepOpen: "menu.stepOpen", study.StepCore: "menu.stepCore", study.StepTolerance: "menu.stepTolerance", study.StepFrame: "menu.stepFrame",
 	study.StepBasis: "menu.stepBasis", study.StepAtoms: "menu.stepAtoms", study.StepFunction: "menu.stepFunction",
 	study.StepIrrep: "menu.stepIrrep", study.StepPartner: "menu.stepPartner", study.StepElement: "menu.stepElement",
+	study.StepTurn: "partners.stepTurn", study.StepMixing: "partners.stepMixing", study.StepCentral: "partners.stepCentral",
 	study.StepOperation: "menu.stepOperation", study.StepPlay: "menu.stepPlay", study.StepScrub: "menu.stepScrub", study.StepAngle: "menu.stepAngle",
 	study.StepOrbit: "menu.stepOrbit", study.StepZoom: "menu.stepZoom", study.StepPan: "menu.stepPan", study.StepFit: "menu.stepFit", study.StepAlong: "menu.stepAlong",
 	study.StepPerspective: "menu.stepPerspective", study.StepLook: "menu.stepLook", study.StepFigure: "menu.stepFigure", study.StepChange: "menu.stepChange", study.StepAtomTable: "menu.stepAtomTable", study.StepView: "menu.stepView",

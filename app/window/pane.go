@@ -44,6 +44,8 @@ type pane struct {
 	scroll   float64
 	extent   float64 // of the content
 	focused  bool
+	dragging bool
+	held     string // the spot that is dragged
 	onHint   func(text string, at fyne.Position)
 
 	// What a pane may do with keys beyond moving its mark; any may be nil. A
@@ -56,7 +58,7 @@ type pane struct {
 }
 
 func newPane(content func(b *board), u *ui) *pane {
-	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint, onHelp: u.showHelp}
+	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint, onRune: u.typed, onHelp: u.showHelp}
 	p.raster = canvas.NewRaster(p.generate)
 	p.ExtendBaseWidget(p)
 	return p
@@ -205,7 +207,12 @@ func (p *pane) Tapped(e *fyne.PointEvent) {
 	p.focus()
 	if s, ok := p.spotAt(e.Position); ok && s.do != nil {
 		p.mark = s.name
-		p.guard(s.do)
+		if s.at != nil {
+			z := p.zoom()
+			p.guard(func() { s.at(float64(e.Position.X)/z-s.x, float64(e.Position.Y)/z-s.y) })
+		} else {
+			p.guard(s.do)
+		}
 		p.Update()
 	}
 }
@@ -227,6 +234,19 @@ func (p *pane) Scrolled(e *fyne.ScrollEvent) {
 
 // Dragged implements fyne.Draggable.
 func (p *pane) Dragged(e *fyne.DragEvent) {
+	if !p.dragging {
+		p.dragging = true
+		if s, ok := p.spotAt(e.Position.Subtract(e.Dragged)); ok && s.drag != nil {
+			p.held, p.mark = s.name, s.name
+		}
+	}
+	if p.held != "" {
+		if s, ok := p.spotNamed(p.held); ok && s.drag != nil {
+			z := p.zoom()
+			p.guard(func() { s.drag(float64(e.Position.X)/z-s.x, float64(e.Position.Y)/z-s.y) })
+		}
+		return
+	}
 	if p.sideways {
 		p.scrollTo(p.scroll - float64(e.Dragged.DX)/p.zoom())
 	} else {
@@ -235,7 +255,14 @@ func (p *pane) Dragged(e *fyne.DragEvent) {
 }
 
 // DragEnd implements fyne.Draggable.
-func (p *pane) DragEnd() {}
+func (p *pane) DragEnd() {
+	name := p.held
+	p.dragging, p.held = false, ""
+	if s, ok := p.spotNamed(name); name != "" && ok && s.release != nil {
+		p.guard(s.release)
+		p.Update()
+	}
+}
 
 func (p *pane) scrollTo(to float64) {
 	w, h := p.size()
@@ -359,9 +386,9 @@ func (p *pane) TypedKey(e *fyne.KeyEvent) {
 			p.Update()
 		}
 	case fyne.KeyRight:
-		p.move(1, 0)
+		p.sidestep(1)
 	case fyne.KeyLeft:
-		p.move(-1, 0)
+		p.sidestep(-1)
 	case fyne.KeyDown:
 		p.move(0, 1)
 	case fyne.KeyUp:
@@ -377,6 +404,16 @@ func (p *pane) TypedKey(e *fyne.KeyEvent) {
 	case fyne.KeyF1:
 		p.onHelp()
 	}
+}
+
+// sidestep steps what is marked if it has steps, else moves the mark.
+func (p *pane) sidestep(by int) {
+	if s, ok := p.spotNamed(p.mark); ok && s.step != nil {
+		p.guard(func() { s.step(by) })
+		p.Update()
+		return
+	}
+	p.move(float64(by), 0)
 }
 
 // move takes the keyboard's mark to the nearest spot in a direction.

@@ -73,6 +73,7 @@ var concernTexts = map[work.Concern]string{
 	work.ConcernZ: "errors.aboutFrame", work.ConcernX: "errors.aboutFrame", work.ConcernBasis: "errors.aboutBasis",
 	work.ConcernFunction: "errors.aboutFunction", work.ConcernIrrep: "errors.aboutOrbital", work.ConcernCopy: "errors.aboutOrbital",
 	work.ConcernPartner: "errors.aboutOrbital", work.ConcernElement: "errors.aboutOrbital", work.ConcernOperation: "errors.aboutOperation",
+	work.ConcernCentral: "errors.aboutOrbital",
 	work.ConcernProgram: "errors.aboutProgram",
 }
 

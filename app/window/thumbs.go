@@ -18,6 +18,7 @@ import (
 type thumbs struct {
 	u      *ui
 	images map[thumbKey]*image.RGBA
+	latest map[int]*image.RGBA // by group orbital: shown until the new one is drawn
 	asked  map[thumbKey]bool
 	want   chan thumbJob
 	ctx    context.Context
@@ -26,8 +27,12 @@ type thumbs struct {
 	round  int // raised when other group orbitals take the place of these
 }
 
+// mostThumbs bounds the pictures that are kept: turning a set makes many.
+const mostThumbs = 400
+
 type thumbKey struct {
 	orbital, pixels int
+	coefficients    uint64
 	palette         assets.Palette
 	round           int
 }
@@ -40,7 +45,7 @@ type thumbJob struct {
 }
 
 func newThumbs(u *ui) *thumbs {
-	t := &thumbs{u: u, want: make(chan thumbJob, 64)}
+	t := &thumbs{u: u, want: make(chan thumbJob, 64), latest: map[int]*image.RGBA{}}
 	t.ctx, t.stop = context.WithCancel(context.Background())
 	t.clear()
 	t.done.Add(1)
@@ -56,6 +61,7 @@ func (t *thumbs) clear() {
 func (t *thumbs) forget() {
 	t.round++
 	t.clear()
+	t.latest = map[int]*image.RGBA{}
 }
 
 func (t *thumbs) close() {
@@ -72,14 +78,18 @@ func (t *thumbs) get(orbital int, side float64) *image.RGBA {
 		scale = float64(c.Scale())
 	}
 	scale *= u.zoom()
-	key := thumbKey{orbital, int(math.Floor(side * scale)), u.palette(), t.round}
+	o := u.state.Orbitals
+	key := thumbKey{orbital, int(math.Floor(side * scale)), fingerprint(o.Projection.Orbitals[orbital].Coefficients), u.palette(), t.round}
 	if img := t.images[key]; img != nil {
 		return img
 	}
-	if t.asked[key] || key.pixels < 4 {
-		return nil
+	before := t.latest[orbital]
+	if before != nil && before.Rect.Dx() != key.pixels {
+		before = nil
 	}
-	o := u.state.Orbitals
+	if t.asked[key] || key.pixels < 4 {
+		return before
+	}
 	palette := u.palette()
 	l := u.now().Look
 	l.NoLabels, l.NoAxes, l.Elements, l.Displacements = true, true, false, false
@@ -94,7 +104,7 @@ func (t *thumbs) get(orbital int, side float64) *image.RGBA {
 		t.asked[key] = true
 	default: // it asks again when it is drawn again
 	}
-	return nil
+	return before
 }
 
 func (t *thumbs) work() {
@@ -125,7 +135,10 @@ func (t *thumbs) work() {
 		}
 		t.u.post(func() {
 			if job.key.round == t.round {
-				t.images[job.key] = img
+				if len(t.images) >= mostThumbs {
+					t.clear()
+				}
+				t.images[job.key], t.latest[job.key.orbital] = img, img
 				t.u.follows.Update()
 			}
 		})

@@ -47,8 +47,11 @@ type ui struct {
 	pages     pages      // in the place of given: all about frames
 	follows   *pane      // right: content and group orbitals
 	detail    *pane      // right, below: the chosen group orbital
-	ledger    *pane      // below: one column an operation
-	said      *pane      // below: what the function has become
+	beside    *pane      // below a split picture: the matrix
+	sets      setView
+	forms     formCache
+	ledger    *pane // below: one column an operation
+	said      *pane // below: what the function has become
 	scrub     *scrubBar
 	angle     *scrubBar
 	tracks    []track
@@ -117,6 +120,8 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.follows.least = fyne.NewSize(rightWidth, 100)
 	u.detail = newPane(u.drawDetail, u)
 	u.detail.least = fyne.NewSize(rightWidth, 176)
+	u.beside = newPane(u.drawBeside, u)
+	u.beside.Hide()
 	u.ledger = newPane(u.drawLedger, u)
 	u.ledger.sideways = true
 	u.ledger.onKey = u.ledgerKeys
@@ -182,7 +187,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane, u.pages.pane))
 	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
 	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
-		container.NewBorder(nil, nil, rule(), nil, right), u.steps.over(u.view))
+		container.NewBorder(nil, nil, rule(), nil, right), container.NewBorder(nil, u.beside, nil, nil, u.steps.over(u.view)))
 	whole := container.NewBorder(nil, below, nil, nil, middle)
 	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
 }
@@ -288,6 +293,7 @@ func (u *ui) refreshPanes() {
 	u.pages.pane.Update()
 	u.follows.Update()
 	u.detail.Update()
+	u.beside.Update()
 	u.ledger.Update()
 	u.said.Update()
 	u.updateMenus()
@@ -308,7 +314,7 @@ func (u *ui) deliver(st *work.State) {
 		u.win.SetTitle(title(st.Group))
 		u.session.Settled()
 	}
-	if before.Orbitals != st.Orbitals {
+	if before.Basis != st.Basis {
 		u.thumbs.forget()
 	}
 	u.images.update(u)
@@ -318,7 +324,10 @@ func (u *ui) deliver(st *work.State) {
 	u.show(false)
 	u.refreshPanes()
 	if before.Orbital != st.Orbital && st.Orbital != nil {
-		u.follows.reveal(orbitalName(st.Orbital.Irrep, st.Orbital.Copy, st.Orbital.Partner))
+		u.follows.reveal(chosenSet)
+		if u.now().Projection.TheSubject() != study.SubjectOrbital {
+			u.follows.reveal(orbitalName(st.Orbital.Irrep, st.Orbital.Copy, st.Orbital.Partner))
+		}
 	}
 }
 
@@ -390,7 +399,9 @@ func (u *ui) show(moving bool) {
 	u.pages.show(&shown)
 	u.fading.apply(u, &shown)
 	u.tally.apply(&shown)
-	u.view.shown = shown
+	shown.Nodes = u.nodes(s, u.orbital())
+	u.view.shown, u.view.beside = u.split(shown)
+	u.fitBeside()
 	if st.Group != nil {
 		u.view.sight = u.sights.sight(s.Camera, st.Group, shown.Basis, len(s.Basis) > 0 && shown.Basis == nil)
 		if u.glide != nil {

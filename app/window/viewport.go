@@ -29,8 +29,9 @@ type viewport struct {
 	post   func(func())
 
 	// What the picture shows; the owner sets them and calls ask.
-	shown picture.Shown
-	sight picture.Orbit
+	shown  picture.Shown
+	beside []picture.Shown // further pictures under the same camera
+	sight  picture.Orbit
 
 	width, height int // of the picture in pixels
 	picker        render.Renderer
@@ -103,7 +104,7 @@ func (v *viewport) ask(moving bool) {
 	if v.width < 2 || v.height < 2 {
 		return
 	}
-	v.frames.ask(request{shown: v.shown, sight: v.sight, width: v.width, height: v.height, dpi: v.dpi(), moving: moving})
+	v.frames.ask(request{shown: v.shown, beside: v.beside, sight: v.sight, width: v.width, height: v.height, dpi: v.dpi(), moving: moving})
 }
 
 // dpi gives millimetres and points of the picture their size: 96 an inch at a
@@ -153,9 +154,14 @@ func (v *viewport) pick(at fyne.Position, slack float64) (picture.Picked, bool) 
 	if d == nil || v.Size().Width < 1 {
 		return picture.Picked{Atom: -1}, false
 	}
-	s := float64(d.Width) / float64(v.Size().Width)
-	x, y := float64(at.X)*s, float64(at.Y)*s
-	return d.Pick(&v.picker, int(x), int(y), int(math.Ceil(slack*s)))
+	s := float64(d.image.Rect.Dx()) / float64(v.Size().Width)
+	x, y := int(float64(at.X)*s), int(float64(at.Y)*s)
+	for _, c := range d.cells {
+		if (image.Point{X: x, Y: y}).In(c.at) {
+			return c.frame.Pick(&v.picker, x-c.at.Min.X, y-c.at.Min.Y, int(math.Ceil(slack*s)))
+		}
+	}
+	return picture.Picked{Atom: -1}, false
 }
 
 // Distances in units, times.

@@ -509,12 +509,12 @@ func TestAClickInThePictureChoosesAnAtomsFunction(t *testing.T) {
 	b.view.generate(700, 600)
 	b.until("a full frame", func() bool {
 		d := b.view.frames.take()
-		return d != nil && d.full && d.Width == 700
+		return d != nil && d.full && d.image.Rect.Dx() == 700
 	})
 	d := b.view.frames.shown
 	s := b.view.scale()
 	for i := 1; i <= 4; i++ {
-		x, y, _, _ := d.Camera.Project(b.state.Group.Sites.Positions[i], 700, 600)
+		x, y, _, _ := d.cells[0].frame.Camera.Project(b.state.Group.Sites.Positions[i], 700, 600)
 		at := fyne.NewPos(float32(x/s), float32(y/s))
 		b.view.lastClick = time.Time{}
 		b.view.MouseDown(&desktop.MouseEvent{PointEvent: fyne.PointEvent{Position: at}, Button: desktop.MouseButtonPrimary})
@@ -601,7 +601,20 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 		case 13:
 			v.TypedRune([]rune("+-fxyzXYZa.,nN0?é")[r.IntN(17)])
 		case 14:
-			switch r.IntN(9) {
+			switch r.IntN(14) {
+			case 13:
+				b.turnStep(1 - 2*r.IntN(2))
+			case 9:
+				b.setTurn(400*r.Float64()-20, r.IntN(2) == 0)
+				b.setMixing(400 * r.Float64())
+			case 10:
+				b.toggleSplit()
+			case 11:
+				b.toggleNodes()
+				b.holdOrbital()
+			case 12:
+				p.Dragged(&fyne.DragEvent{PointEvent: fyne.PointEvent{Position: at(p.Size())}, Dragged: fyne.NewDelta(3, 1)})
+				p.DragEnd()
 			case 0:
 				b.openDemo(demos[r.IntN(len(demos))])
 			case 1:

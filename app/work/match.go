@@ -121,7 +121,7 @@ func centralFunctions(g *Group, atom int) (*Orbitals, error) {
 	if err != nil {
 		return nil, err
 	}
-	return &Orbitals{&Basis{g, basis}, projection}, nil
+	return &Orbitals{Basis: &Basis{g, basis}, Projection: projection}, nil
 }
 
 func (m *Match) pair() {

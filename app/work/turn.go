@@ -2,6 +2,7 @@ package work
 
 import (
 	"fmt"
+	"math"
 	"strings"
 
 	"gonum.org/v1/gonum/mat"
@@ -103,7 +104,7 @@ func (o *Orbitals) Turned(label string, turn, mixing []study.PlaneRotation) (*Or
 		p := *o.Projection
 		p.Irreps = append([]symmetry.Irrep(nil), o.Irreps...)
 		p.Irreps[a] = irrep.WithPartners(rows)
-		return &Orbitals{o.Basis, &p}, nil
+		return &Orbitals{Basis: o.Basis, Projection: &p, Plain: o}, nil
 	}
 	mix, err := Rotation(o.Content[a], mixing, irrep.Label+" has copies")
 	if err != nil {
@@ -137,7 +138,7 @@ func (o *Orbitals) Turned(label string, turn, mixing []study.PlaneRotation) (*Or
 			p.Orbitals[at].Coefficients, p.Orbitals[at].Orbit = sum, orbit
 		}
 	}
-	return &Orbitals{o.Basis, &p}, nil
+	return &Orbitals{Basis: o.Basis, Projection: &p, Plain: o}, nil
 }
 
 // of are the group orbitals of an irrep, by copy and partner.
@@ -174,4 +175,50 @@ func addTo(sum []float64, factor float64, v []float64) {
 	for i, x := range v {
 		sum[i] += factor * x
 	}
+}
+
+// unturned are the orbitals before anything was turned.
+func (o *Orbitals) unturned() *Orbitals {
+	if o.Plain != nil {
+		return o.Plain
+	}
+	return o
+}
+
+// LastTurn takes the last rotation off a list if it is one of a pair, from 1,
+// and returns its angle (degrees), 0 if it is not.
+func LastTurn(list []study.PlaneRotation, from, to int) (before []study.PlaneRotation, angle float64) {
+	if n := len(list); n > 0 && list[n-1].From == from && list[n-1].To == to {
+		return list[:n-1], list[n-1].Angle
+	}
+	return list, 0
+}
+
+// WithTurn is a list of rotations that ends with that of a pair, from 1, by an
+// angle in degrees: the last one of this pair is replaced. A turn by 0 is left
+// out.
+func WithTurn(list []study.PlaneRotation, from, to int, angle float64) []study.PlaneRotation {
+	before, _ := LastTurn(list, from, to)
+	angle = math.Mod(math.Mod(angle, 360)+360, 360)
+	out := append([]study.PlaneRotation(nil), before...)
+	if angle != 0 {
+		out = append(out, study.PlaneRotation{From: from, To: to, Angle: angle})
+	}
+	return out
+}
+
+// TurnMarks are the marks of the rotation of a pair, from 1, that ends the turn
+// of a study, or would. Their angles count from where the rotations before it
+// have left the partners.
+func (o *Orbitals) TurnMarks(s study.Study, from, to int) ([]Mark, error) {
+	before, _ := LastTurn(s.Turn, from, to)
+	base, err := o.unturned().Turned(s.Projection.Irrep, before, nil)
+	if err != nil {
+		return nil, err
+	}
+	a, err := FindIrrep(s.Projection.Irrep, o.Fit.Setting.Symbol, base.Irreps)
+	if err != nil {
+		return nil, err
+	}
+	return base.Marks(a, from-1, to-1), nil
 }

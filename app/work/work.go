@@ -107,6 +107,9 @@ type Basis struct {
 type Orbitals struct {
 	*Basis
 	*orbitals.Projection
+	// Plain are the same before partners were turned and copies mixed; nil if
+	// these are so.
+	Plain *Orbitals
 }
 
 // A Ledger is one projection, operation by operation.
@@ -326,6 +329,6 @@ func (w *Work) orbitalsOf(ctx context.Context, basis *Basis) (*Orbitals, error) 
 		if err != nil {
 			return nil, blame(StageOrbitals, ConcernBasis, err)
 		}
-		return &Orbitals{basis, projection}, nil
+		return &Orbitals{Basis: basis, Projection: projection}, nil
 	})
 }

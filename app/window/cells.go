@@ -1,0 +1,118 @@
+//go:build cgo && !nowindow
+
+package window
+
+import (
+	"context"
+	"image"
+	"image/draw"
+
+	"lobewright/app/picture"
+	"lobewright/render"
+)
+
+// A drawnCell is one of the pictures of a frame, with its place on the image.
+type drawnCell struct {
+	frame *picture.Frame
+	at    image.Rectangle
+}
+
+// A drawer draws one of several pictures. It keeps meshes, the places of labels
+// and an image from frame to frame, and must not be copied.
+type drawer struct {
+	live     picture.Live
+	renderer render.Renderer
+	image    *image.RGBA
+}
+
+// gutter is the width in pixels of the line between two pictures.
+const gutter = 1
+
+// cellsOf divides an image among n pictures of equal size, rows from the top,
+// in as many columns as make their short sides longest.
+func cellsOf(n, width, height int) []image.Rectangle {
+	columns, best := 1, 0
+	for c := 1; c <= n; c++ {
+		rows := (n + c - 1) / c
+		if side := min(width/c, height/rows); side > best {
+			columns, best = c, side
+		}
+	}
+	rows := (n + columns - 1) / columns
+	out := make([]image.Rectangle, n)
+	for i := range out {
+		c, r := i%columns, i/columns
+		out[i] = image.Rect(c*width/columns, r*height/rows, (c+1)*width/columns, (r+1)*height/rows)
+		if c > 0 {
+			out[i].Min.X += gutter
+		}
+		if r > 0 {
+			out[i].Min.Y += gutter
+		}
+	}
+	return out
+}
+
+// drawCells draws the pictures of a request one after the other.
+func drawCells(ctx context.Context, drawers *[]*drawer, d *drawn, r request, quick bool) error {
+	n := 1 + len(r.beside)
+	for len(*drawers) < n {
+		*drawers = append(*drawers, new(drawer))
+	}
+	d.cells = make([]drawnCell, 0, n)
+	if n > 1 && r.shown.Palette != nil {
+		// What is left between the pictures, and where there is none.
+		draw.Draw(d.image, d.image.Rect, image.NewUniform(r.shown.Palette.Rule), image.Point{}, draw.Src)
+	}
+	for i, at := range cellsOf(n, r.width, r.height) {
+		if at.Dx() < 2 || at.Dy() < 2 {
+			continue
+		}
+		w := (*drawers)[i]
+		shown := r.shown
+		if i > 0 {
+			shown = r.beside[i-1]
+		}
+		frame, err := w.live.Frame(shown, r.sight, at.Dx(), at.Dy(), r.dpi, quick)
+		if err != nil {
+			return err
+		}
+		into := d.image
+		if n > 1 {
+			if w.image == nil || w.image.Rect.Dx() != at.Dx() || w.image.Rect.Dy() != at.Dy() {
+				w.image = image.NewRGBA(image.Rect(0, 0, at.Dx(), at.Dy()))
+			}
+			into = w.image
+		}
+		if err := w.renderer.Draw(ctx, into, &frame.Scene, frame.Camera, frame.Look, frame.Quality, render.Band{}); err != nil {
+			return err
+		}
+		if n > 1 {
+			draw.Draw(d.image, at, into, image.Point{}, draw.Src)
+		}
+		d.cells = append(d.cells, drawnCell{frame, at})
+	}
+	return nil
+}
+
+// A place is a point of the picture in pixels.
+type place struct{ x, y float64 }
+
+// cellAt is the middle of the picture that holds a point, in pixels; of the
+// first one outside of all.
+func (v *viewport) cellAt(x, y float64) place {
+	cells := cellsOf(1+len(v.beside), v.width, v.height)
+	at := cells[0]
+	for _, c := range cells {
+		if (image.Point{X: int(x), Y: int(y)}).In(c) {
+			at = c
+		}
+	}
+	return place{float64(at.Min.X+at.Max.X) / 2, float64(at.Min.Y+at.Max.Y) / 2}
+}
+
+// perPixel is the length of a pixel at the middle of a picture, in Å.
+func (v *viewport) perPixel() float64 {
+	c := cellsOf(1+len(v.beside), v.width, v.height)[0]
+	return v.sight.PerPixel(c.Dx(), c.Dy())
+}
