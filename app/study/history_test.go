@@ -222,7 +222,7 @@ func TestStepsAreListedOnce(t *testing.T) {
 		}
 		seen[s] = true
 	}
-	if len(seen) != 28 {
+	if len(seen) != 31 {
 		t.Errorf("%d steps", len(seen))
 	}
 }
