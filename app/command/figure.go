@@ -125,7 +125,7 @@ func lookFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.Var(oneOf{&l.Signs, []string{"tones", "hatching", "printed"}}, "signs", "what tells the `SIGN` of a lobe: tones alone, also hatching, or + and − printed")
 	flags.Var(viewFlag{&s.Camera}, "view", "see from `AZIMUTH,ELEVATION` in degrees, counted from x to y and up to z")
 	flags.BoolVar(&s.Camera.Orthographic, "orthographic", false, "draw without perspective")
-	flags.BoolVar(&l.Nodes, "nodes", false, "draw the nodal planes that a group orbital has by symmetry")
+	flags.BoolVar(&l.Nodes, "nodes", false, "draw the nodal planes that the group orbital has by symmetry")
 	flags.BoolVar(&l.NoLabels, "no-labels", false, "leave out the atoms' labels")
 	flags.BoolVar(&l.NoAxes, "no-axes", false, "leave out the axes")
 }
