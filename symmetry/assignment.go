@@ -1,31 +1,9 @@
 package symmetry
 
-import (
-	"math"
-
-	"github.com/go-gl/mathgl/mgl64"
-)
+import "math"
 
 // neverAssigned is the cost of a pair that must not be.
 const neverAssigned = 1e12
-
-// assignment gives each point an image of its kind of its own, with the least
-// sum of squared distances; false if there is none.
-func (c *cloud) assignment(m mgl64.Mat3, image []int32) bool {
-	n := len(c.at)
-	cost := make([]float64, n*n)
-	for i, v := range c.at {
-		w := m.Mul3x1(v)
-		for j := range c.at {
-			cost[i*n+j] = neverAssigned
-			if c.kind[i] == c.kind[j] {
-				d := w.Sub(c.at[j])
-				cost[i*n+j] = d.Dot(d)
-			}
-		}
-	}
-	return leastCost(cost, image)
-}
 
 // leastCost assigns every row of an n×n table of costs a column of its own so
 // that the sum is the least (H. W. Kuhn, Naval Research Logistics Quarterly 2,

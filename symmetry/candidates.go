@@ -16,21 +16,26 @@ type element struct {
 	improper    bool
 	matrix      mgl64.Mat3
 	mismatch    float64 // Å, the farthest that an image lies from its point
+	free        bool    // other axes would do as well; set by best
 }
 
 // key is equal for equal elements. Points near one line can be carried alike by
 // a rotation about it and by one across it, or by a plane and by the
-// inversion; so the key tells large turns from small ones.
+// inversion; so the key tells large turns from small ones where the points go
+// back at the second time. Elsewhere they tell the turn, and a product of
+// matrices that go together badly would not.
 func (e *element) key() elementKey {
 	h := uint64(14695981039346656037) // FNV-1a
-	for _, p := range e.permutation {
+	back := true
+	for i, p := range e.permutation {
 		h = (h ^ uint64(p)) * 1099511628211
+		back = back && e.permutation[p] == int32(i)
 	}
 	cos := e.matrix.Trace() - 1
 	if e.improper {
 		cos += 2
 	}
-	return elementKey{h, e.improper, cos/2 < largeTurn}
+	return elementKey{h, e.improper, back && cos/2 < largeTurn}
 }
 
 // largeTurn is a cosine that no turn of a group with n up to MaxNearFold comes

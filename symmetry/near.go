@@ -40,11 +40,16 @@ type Nearness struct {
 // Near lists the finite groups, and their embeddings, that a set of points has
 // when no point moves by more than a limit (Å; 0 means DefaultNearness), none
 // changes its kind, and no two come nearer than 0.7 of their distance; by
-// rising deviation, then by falling order. Axes go up to n = MaxNearFold.
+// rising deviation, the larger group first among equals. Axes go up to n = MaxNearFold.
 //
-// Operations are sought from rotations, reflections and rotatory reflections
-// about axes spread evenly over the sphere, each improved by all points that
-// find an image; groups are what these generate, and all their subgroups.
+// Operations are sought from turns and rotatory reflections about axes spread
+// evenly over the sphere, so densely that each way in which one can carry the
+// points shows from some start (covers); each then gets the best of all axes.
+// Groups are what these generate, and all their subgroups. So the list depends
+// neither on the axes of the input nor on the order of the points, and of two
+// structures that are near to each other's groups both are told so. In sets of
+// more than smallCloud points only operations are sought that leave neighbours
+// neighbours.
 //
 // progress, if not nil, is told the share done, from 0 to 1. Near stops with
 // the error of ctx when that is cancelled. Other errors are those of Detect.
@@ -65,11 +70,10 @@ func Near(ctx context.Context, points []Point, links []Link, limit float64, prog
 	if _, straight := l.cloud.line(1e-6); straight {
 		return nil, fmt.Errorf("the points lie on one line: only finite groups are sought, and a linear set has infinitely many of them")
 	}
-	elements, err := l.elements(ctx, progress)
-	if err != nil {
+	if err := l.search(ctx, func(share float64) { progress(0.8 * share) }); err != nil {
 		return nil, err
 	}
-	groups, err := l.groups(ctx, elements, progress)
+	groups, err := l.groups(ctx, func(share float64) { progress(0.8 + 0.2*share) })
 	if err != nil {
 		return nil, err
 	}
@@ -81,157 +85,28 @@ type ladder struct {
 	cloud *cloud
 	limit float64
 	seen  map[elementKey]*placed
+	// generators has one element of each cyclic group found, of an order that
+	// is a power of a prime; pool has all of their powers, and others holds other
+	// elements. All have the matrices that are the best for them.
+	generators []*element
+	pool       map[elementKey]*element
+	others     map[elementKey]*element
+	tried      map[elementKey]bool
 }
 
-// axesTried spreads over half of the sphere, some 8° apart: an operation of a
-// structure is found if the start is nearer to it than half of the angle
-// between neighbouring atoms, as seen from the centre.
-const axesTried = 320
+// widened is the factor by which parts of a group may be farther than the
+// limit: its farthest point can be so in a subgroup, though not all together.
+const widened = 1.25
 
-// elements finds operations, each with the cyclic group that it generates
-// within the limit.
-func (l *ladder) elements(ctx context.Context, progress func(float64)) ([]*element, error) {
-	type found struct {
-		element   *element
-		deviation float64
-	}
-	var list []found
-	known := map[elementKey]bool{}
-	try := func(start mgl64.Mat3) {
-		e := l.settle(start)
-		if e == nil || known[e.key()] {
-			return
-		}
-		known[e.key()] = true
-		if e.order() > 2*MaxNearFold {
-			return
-		}
-		if p := l.place(l.cloud.generate([]*element{e}, 2*MaxNearFold)); p != nil {
-			list = append(list, found{e, p.deviation})
-		}
-	}
-	try(inversion)
-	for i := range axesTried {
-		if err := ctx.Err(); err != nil {
-			return nil, err
-		}
-		axis := spiral(i, axesTried)
-		for n := 1; n <= MaxNearFold; n++ {
-			turn := mgl64.QuatRotate(2*math.Pi/float64(n), axis).Mat4().Mat3()
-			if n > 1 {
-				try(turn)
-			}
-			if n != 2 { // S2 is the inversion
-				try(reflectionIn(axis).Mul3(turn))
-			}
-		}
-		progress(0.5 * float64(i+1) / axesTried)
-	}
-	sort.SliceStable(list, func(a, b int) bool { return list[a].deviation < list[b].deviation })
-	out := make([]*element, len(list))
-	for i, f := range list {
-		out[i] = f.element
-	}
-	return out, nil
-}
+// What takes the place of leastShare for parts of a group, and for a motion that
+// is not yet the best one.
+const (
+	leastPart  = 0.6
+	leastStart = 0.5
+)
 
-// spiral is the i-th of n directions spread evenly over the upper half of the
-// sphere (points of the golden angle on a spiral).
-func spiral(i, n int) mgl64.Vec3 {
-	z := 1 - (float64(i)+0.5)/float64(n)
-	azimuth := float64(i) * math.Pi * (3 - math.Sqrt(5))
-	r := math.Sqrt(1 - z*z)
-	return mgl64.Vec3{r * math.Cos(azimuth), r * math.Sin(azimuth), z}
-}
-
-func reflectionIn(normal mgl64.Vec3) mgl64.Mat3 {
-	m := mgl64.Ident3()
-	for r := range 3 {
-		for c := range 3 {
-			m.Set(r, c, m.At(r, c)-2*normal[r]*normal[c])
-		}
-	}
-	return m
-}
-
-// smallCloud is the number of points up to which more is tried: an assignment
-// that nearest images leave open is settled by the least sum of squares, and
-// groups are grown from every element, not only from those that no group holds
-// yet.
-const smallCloud = 40
-
-// settle improves a start by the images that it gives the points until they
-// stay the same; nil if they are not one to one or too far.
-func (l *ladder) settle(m mgl64.Mat3) *element {
-	c := l.cloud
-	improper := m.Det() < 0
-	n := len(c.at)
-	image, last := make([]int32, n), make([]int32, n)
-	all := make([]int, n)
-	for i := range all {
-		all[i] = i
-	}
-	reach := 2 * l.limit
-	for round := range 8 {
-		oneToOne := true
-		taken := make([]bool, n)
-		for i, v := range c.at {
-			// Most images lie near; only for the others is far looked.
-			w := m.Mul3x1(v)
-			j := c.nearest(w, c.kind[i], c.cell/2)
-			if j < 0 {
-				j = c.nearest(w, c.kind[i], 1.5*reach)
-			}
-			if j < 0 {
-				return nil
-			}
-			image[i] = int32(j)
-			oneToOne = oneToOne && !taken[j]
-			taken[j] = true
-		}
-		if !oneToOne {
-			if n > smallCloud {
-				if round == 7 {
-					return nil
-				}
-			} else if !c.assignment(m, image) {
-				return nil
-			}
-		}
-		if round > 0 && equalImages(image, last) {
-			if n > smallCloud && !oneToOne {
-				return nil
-			}
-			break
-		}
-		copy(last, image)
-		m = c.improve(m, all, image)
-	}
-	mismatch := 0.0
-	seen := make([]bool, n)
-	for i, j := range image {
-		mismatch = math.Max(mismatch, m.Mul3x1(c.at[i]).Sub(c.at[j]).Len())
-		if seen[j] {
-			return nil
-		}
-		seen[j] = true
-	}
-	if mismatch > 1.5*reach {
-		return nil
-	}
-	return &element{permutation: image, improper: improper, matrix: m, mismatch: mismatch}
-}
-
-func equalImages(a, b []int32) bool {
-	for i := range a {
-		if a[i] != b[i] {
-			return false
-		}
-	}
-	return true
-}
-
-// place fits a group, once; nil if it is too far or brings points together.
+// place fits a group, once; nil if it is too far or brings points together,
+// even if it were a part of another.
 func (l *ladder) place(group []*element) *placed {
 	if group == nil {
 		return nil
@@ -240,21 +115,21 @@ func (l *ladder) place(group []*element) *placed {
 	if p, ok := l.seen[key]; ok {
 		return p
 	}
-	p, ok := l.cloud.place(group)
-	if !ok || p.deviation > l.limit || !l.keepsApart(p) {
+	p, ok := l.cloud.placeFar(group)
+	if !ok || p.deviation > widened*l.limit || !l.keepsApart(p, leastPart) {
 		p = nil
 	}
 	l.seen[key] = p
 	return p
 }
 
-// keepsApart tells whether no two points come nearer than leastShare of their
+// keepsApart tells whether no two points come nearer than a share of their
 // distance.
-func (l *ladder) keepsApart(p *placed) bool {
+func (l *ladder) keepsApart(p *placed, share float64) bool {
 	c := l.cloud
-	// Only pairs that are near can lose so much by moving at most the limit
-	// each: d − 2·limit < 0.7·d.
-	far := 2 * l.limit / (1 - leastShare)
+	// Only pairs that are near can lose so much by moving at most the deviation
+	// each: d − 2·deviation < share·d.
+	far := 2 * p.deviation / (1 - share)
 	ok := true
 	for i := range c.at {
 		c.visit(c.at[i], far, func(j int) {
@@ -262,7 +137,7 @@ func (l *ladder) keepsApart(p *placed) bool {
 				return
 			}
 			before := c.at[i].Sub(c.at[j]).Len()
-			if p.ideal[i].Sub(p.ideal[j]).Len() < leastShare*before {
+			if p.ideal[i].Sub(p.ideal[j]).Len() < share*before {
 				ok = false
 			}
 		})
@@ -273,132 +148,80 @@ func (l *ladder) keepsApart(p *placed) bool {
 	return true
 }
 
-// mostGroups bounds the list; a structure of a few atoms that is near to many
-// groups has some hundreds.
-const mostGroups = 3000
+// equalDeviation (Å) is the difference below which deviations count as equal:
+// it comes from rounding.
+const equalDeviation = 1e-6
 
-// groups grows the largest groups that the elements generate within the limit,
-// from each element that no larger group holds yet, and lists all of their
-// subgroups that are near.
-func (l *ladder) groups(ctx context.Context, elements []*element, progress func(float64)) ([]*placed, error) {
-	covered := map[elementKey]bool{}
-	found := map[elementKey]bool{}
-	var out []*placed
-	add := func(group []*element) {
-		p := l.place(group)
-		if k := keyOf(group); p != nil && !found[k] && len(out) < mostGroups {
-			found[k] = true
-			out = append(out, p)
-		}
+// sorted writes the groups in their default frames, by rising deviation, among
+// equals the larger group first.
+func (l *ladder) sorted(groups []*placed, links []Link) []*Nearness {
+	sort.SliceStable(groups, func(a, b int) bool { return groups[a].deviation < groups[b].deviation })
+	spread := 0.0
+	for _, q := range l.cloud.at {
+		spread += q.Dot(q)
 	}
-	for i, e := range elements {
-		if err := ctx.Err(); err != nil {
-			return nil, err
+	count := map[string]int{}
+	var out []*Nearness
+	for len(groups) > 0 {
+		n := 1
+		for n < len(groups) && groups[n].deviation < groups[0].deviation+equalDeviation {
+			n++
 		}
-		if !covered[e.key()] || len(l.cloud.at) <= smallCloud {
-			largest, err := l.grow(ctx, e, elements)
-			if err != nil {
-				return nil, err
-			}
-			for _, g := range largest {
-				covered[g.key()] = true
-			}
-			if found[keyOf(largest)] {
+		equal := groups[:n]
+		groups = groups[n:]
+		sort.SliceStable(equal, func(a, b int) bool { return equal[a].before(equal[b]) })
+		for i, p := range equal {
+			if p.standsAmong(equal[:i]) {
 				continue
 			}
-			if err := l.subgroups(ctx, largest, add); err != nil {
-				return nil, err
-			}
+			fit := l.cloud.frame(p, links, l.limit)
+			count[fit.Setting.Symbol]++
+			out = append(out, &Nearness{
+				Fit: fit, Embedding: count[fit.Setting.Symbol], Axis: fit.Rotation.Row(2), Measure: 100 * p.misfit(l.cloud) / spread,
+			})
 		}
-		progress(0.5 + 0.5*float64(i+1)/float64(len(elements)))
 	}
-	add(l.cloud.generate(nil, 1)) // every structure has the trivial group
-	return out, nil
+	return out
 }
 
-// grow adds elements to the group of one, by rising deviation, each if the
-// whole stays near enough.
-func (l *ladder) grow(ctx context.Context, first *element, elements []*element) ([]*element, error) {
-	generators := []*element{first}
-	group := l.cloud.generate(generators, 4*MaxNearFold)
-	known := map[elementKey]bool{}
-	for _, g := range group {
-		known[g.key()] = true
+// before orders groups of equal deviation: the larger first, then by what they
+// do to the points.
+func (p *placed) before(q *placed) bool {
+	if a, b := len(p.matrices), len(q.matrices); a != b {
+		return a > b
 	}
-	for _, e := range elements {
-		if known[e.key()] {
-			continue
-		}
-		if err := ctx.Err(); err != nil {
-			return nil, err
-		}
-		larger := l.cloud.generate(append(generators[:len(generators):len(generators)], e), 120)
-		if l.place(larger) == nil {
-			continue
-		}
-		generators, group = append(generators, e), larger
-		for _, g := range group {
-			known[g.key()] = true
+	if p.kind != q.kind {
+		return p.kind.family > q.kind.family
+	}
+	for r := range p.permutations {
+		if c := slices.Compare(p.permutations[r], q.permutations[r]); c != 0 {
+			return c < 0
 		}
 	}
-	return group, nil
-}
-
-// subgroups hands every subgroup of a group of elements to a function, by the
-// group's own product table.
-func (l *ladder) subgroups(ctx context.Context, group []*element, add func([]*element)) error {
-	place := map[elementKey]int{}
-	for i, e := range group {
-		place[e.key()] = i
-	}
-	s := &Setting{Operations: make([]Operation, len(group)), product: make([][]int32, len(group))}
-	for i, e := range group {
-		s.product[i] = make([]int32, len(group))
-		for j, f := range group {
-			s.product[i][j] = int32(place[e.times(f).key()])
-		}
-	}
-	s.inverse = inverses(s.product)
-	classes, err := s.subgroups()
-	if err != nil {
-		return err
-	}
-	for _, class := range classes {
-		for _, set := range s.conjugates(class) {
-			if err := ctx.Err(); err != nil {
-				return err
-			}
-			var members []*element
-			for _, i := range set.members() {
-				members = append(members, group[i])
-			}
-			add(members)
-		}
-	}
-	return nil
+	return false
 }
 
 // standsAmong tells whether the same group with the same ideal points was found
 // before, in an embedding of the same kind: near a line or a plane different
-// elements may lead there, and in an exactly symmetric structure all subgroups
+// permutations lead there, and in an exactly symmetric structure all subgroups
 // that its operations carry into each other do.
 func (p *placed) standsAmong(earlier []*placed) bool {
-next:
-	for i := len(earlier) - 1; i >= 0 && earlier[i].deviation > p.deviation-1e-6; i-- {
-		q := earlier[i]
-		if q.kind != p.kind || !p.liesAlike(q) {
-			continue
+	for _, q := range earlier {
+		if q.kind == p.kind && p.sameIdeal(q) && p.liesAlike(q) {
+			return true
 		}
-		for k := range p.ideal {
-			a := p.rotation.Transpose().Mul3x1(p.ideal[k])
-			b := q.rotation.Transpose().Mul3x1(q.ideal[k])
-			if a.Sub(b).Len() > 1e-4 {
-				continue next
-			}
-		}
-		return true
 	}
 	return false
+}
+
+func (p *placed) sameIdeal(q *placed) bool {
+	turn := q.rotation.Mul3(p.rotation.Transpose())
+	for k, v := range p.ideal {
+		if turn.Mul3x1(v).Sub(q.ideal[k]).Len() > 1e-4 {
+			return false
+		}
+	}
+	return true
 }
 
 // alikeTolerance is the share by which sums of squares of ways may differ that
@@ -441,39 +264,4 @@ func (p *placed) signature() [][5]float64 {
 	}
 	slices.SortFunc(list, func(a, b [5]float64) int { return slices.Compare(a[:], b[:]) })
 	return list
-}
-
-// sorted writes the groups in their default frames, by rising deviation, then
-// by falling order; the trivial group, which every structure has, comes last
-// among equals.
-func (l *ladder) sorted(groups []*placed, links []Link) []*Nearness {
-	sort.SliceStable(groups, func(a, b int) bool {
-		p, q := groups[a], groups[b]
-		if math.Abs(p.deviation-q.deviation) > 1e-6 {
-			return p.deviation < q.deviation
-		}
-		return len(p.matrices) > len(q.matrices)
-	})
-	spread := 0.0
-	for _, q := range l.cloud.at {
-		spread += q.Dot(q)
-	}
-	count := map[string]int{}
-	var out []*Nearness
-	for i, p := range groups {
-		if p.standsAmong(groups[:i]) {
-			continue
-		}
-		fit := l.cloud.frame(p, links, l.limit)
-		sum := 0.0
-		for k, q := range l.cloud.at {
-			d := p.rotation.Mul3x1(q).Sub(p.ideal[k])
-			sum += d.Dot(d)
-		}
-		count[fit.Setting.Symbol]++
-		out = append(out, &Nearness{
-			Fit: fit, Embedding: count[fit.Setting.Symbol], Axis: fit.Rotation.Row(2), Measure: 100 * sum / spread,
-		})
-	}
-	return out
 }

@@ -111,34 +111,206 @@ func TestNoisyCageIsNearToAllSubgroupsOfItsGroup(t *testing.T) {
 	}
 }
 
-// Groups that are far off can be reached from several starts by way of
-// different assignments; those nearer than a quarter of an ångström are the
-// same in every orientation.
-func TestLadderIsTheSameInEveryOrientation(t *testing.T) {
-	rng := rand.New(rand.NewSource(23))
-	spell := func(list []*Nearness) string {
-		var out []string
-		for _, n := range list {
-			if n.Fit.Deviation < 0.25 {
-				out = append(out, fmt.Sprintf("%s %.5f", n.Fit.Setting.Symbol, n.Fit.Deviation+1e-7))
-			}
-		}
-		sort.Strings(out)
-		return strings.Join(out, ", ")
+// spellLadder lists groups with their deviations.
+func spellLadder(list []*Nearness) string {
+	var out []string
+	for _, n := range list {
+		out = append(out, fmt.Sprintf("%s %.5f", n.Fit.Setting.Symbol, n.Fit.Deviation+1e-7))
 	}
+	sort.Strings(out)
+	return strings.Join(out, ", ")
+}
+
+// However far off the groups are.
+func TestLadderIsTheSameInEveryOrientationAndOrder(t *testing.T) {
+	rng := rand.New(rand.NewSource(23))
 	for _, m := range publishedStructures(t) {
 		if len(m.Atoms) > 7 || strings.Contains(m.PointGroup, "∞") {
 			continue
 		}
 		points, _ := shuffled(m.points(t), 0.05, rng)
 		list := mustNear(t, points)
-		want := spell(list)
 		turned, _ := shuffled(points, 0, rng)
-		if got := spell(mustNear(t, turned)); got != want {
+		if got, want := spellLadder(mustNear(t, turned)), spellLadder(list); got != want {
 			t.Errorf("%s: %s\nturned: %s", m.Name, want, got)
 		}
 		if nearest(list, m.PointGroup) == nil {
 			t.Errorf("%s is not near to %s", m.Name, m.PointGroup)
+		}
+	}
+	for _, points := range [][]Point{sandwich(5, 0), sandwich(8, 0), cage60()} {
+		points, _ := shuffled(points, 0.05, rng)
+		turned, _ := shuffled(points, 0, rng)
+		if got, want := spellLadder(mustNear(t, turned)), spellLadder(mustNear(t, points)); got != want {
+			t.Errorf("%d points: %s\nturned: %s", len(points), want, got)
+		}
+	}
+}
+
+// sandwich is two rings CnHn, turned by an angle in degrees against each other,
+// with an atom between them; carbon atoms alone for n = 2.
+func sandwich(n int, angle float64) []Point {
+	out := []Point{at(0, 0, 0, 26)}
+	r := 0.7 / math.Sin(math.Pi/float64(n))
+	for i, z := range []float64{1.7, -1.7} {
+		out = append(out, ring(n, r, z, float64(i)*angle, 6)...)
+		if n > 2 {
+			out = append(out, ring(n, r+1, z, float64(i)*angle, 1)...)
+		}
+	}
+	return out
+}
+
+// Eclipsed and staggered rings are half-way from each other: each ring turns by
+// a quarter of its period, so every atom moves by r·sin(π/2n).
+func TestEclipsedAndStaggeredSandwichesAreNearToEachOther(t *testing.T) {
+	rng := rand.New(rand.NewSource(7))
+	for n := 2; n <= 8; n++ {
+		eclipsed, staggered := fmt.Sprintf("D%dh", n), fmt.Sprintf("D%dd", n)
+		far := 0.7/math.Sin(math.Pi/float64(n)) + 1
+		if n == 2 {
+			far = 0.7
+		}
+		far *= math.Sin(math.Pi / float64(2*n))
+		for _, c := range []struct {
+			angle float64
+			other string
+		}{{0, staggered}, {180 / float64(n), eclipsed}} {
+			for _, noise := range []float64{0, 0.05} {
+				if n == 2 && noise > 0 {
+					continue // pairs keep 0.707 of their distance as it is
+				}
+				points, _ := shuffled(sandwich(n, c.angle), noise, rng)
+				list := mustNear(t, points)
+				other := nearest(list, c.other)
+				if other == nil || math.Abs(other.Fit.Deviation-far) > 1e-6+noise {
+					t.Errorf("n = %d, turned by %g°, noise %g: %s is missing or not at %.3f Å: %v", n, c.angle, noise, c.other, far, other)
+				}
+			}
+		}
+	}
+	// Caps of two sorts, so that nothing exchanges them: Cnv to Cnv. The larger
+	// cap turns less.
+	for _, n := range []int{4, 7} {
+		points := sandwich(n, 0)
+		for i := range points {
+			if p := &points[i]; p.Kind == 1 && p.Position[2] < 0 {
+				p.Kind = 9
+				p.Position[0] *= 1.12
+				p.Position[1] *= 1.12
+			}
+		}
+		points, _ = shuffled(points, 0.02, rng)
+		symbol := fmt.Sprintf("C%dv", n)
+		ways := 0
+		for _, e := range mustNear(t, points) {
+			if e.Fit.Setting.Symbol == symbol {
+				ways++
+			}
+		}
+		if ways < 3 { // eclipsed, and turned to either side
+			t.Errorf("n = %d, two sorts of caps: %d ways to be %s", n, ways, symbol)
+		}
+	}
+}
+
+// If a structure A is near to a group, with B the ideal structure, B is near to
+// the group of A, provided that no point moves too far.
+func TestNearnessIsMutual(t *testing.T) {
+	rng := rand.New(rand.NewSource(11))
+	structures := [][]Point{sandwich(2, 0), sandwich(3, 0), randomWith(rng, "D3", 1), randomWith(rng, "S4", 2), randomWith(rng, "C3h", 1)}
+	for _, m := range publishedStructures(t) {
+		if n := len(m.Atoms); n > 3 && n < 7 && !strings.Contains(m.PointGroup, "∞") {
+			structures = append(structures, m.points(t))
+		}
+	}
+	tried := 0
+	for _, a := range structures {
+		fit := mustDetect(t, a, 1e-4)
+		symbol := fit.Setting.Symbol
+		for _, entry := range mustNear(t, a) {
+			if entry.Embedding > 1 || entry.Fit.Deviation < 0.05 {
+				continue
+			}
+			b := make([]Point, len(a))
+			for k, v := range entry.Fit.Ideal {
+				b[k] = Point{v, a[k].Kind}
+			}
+			// How far A's group is from B, if A's operations carry the points
+			// as they do there.
+			l := &ladder{cloud: newCloud(b), limit: DefaultNearness}
+			p, ok := l.cloud.place(elementsOf(fit, entry.Fit.Rotation))
+			if !ok || p.deviation > 0.95 || !l.keepsApart(p, 0.72) {
+				continue
+			}
+			tried++
+			back := nearest(mustNear(t, b), symbol)
+			if back == nil || back.Fit.Deviation > p.deviation+1e-6 {
+				t.Errorf("%s, %d atoms, is %.3f Å from %s, but not the other way round: %v, want %.3f Å",
+					symbol, len(a), entry.Fit.Deviation, entry.Fit.Setting.Symbol, back, p.deviation)
+			}
+		}
+	}
+	if tried < 15 {
+		t.Errorf("only %d pairs were tried", tried)
+	}
+}
+
+// elementsOf are the operations of a fit, with their matrices in other axes.
+func elementsOf(fit *Fit, rotation mgl64.Mat3) []*element {
+	turn := rotation.Mul3(fit.Rotation.Transpose())
+	var out []*element
+	for r, o := range fit.Setting.Operations {
+		e := &element{improper: o.Turn.Improper, matrix: turn.Mul3(o.Matrix).Mul3(turn.Transpose())}
+		for _, k := range fit.Permutations[r] {
+			e.permutation = append(e.permutation, int32(k))
+		}
+		out = append(out, e)
+	}
+	return out
+}
+
+// randomWith is a random set of points that has a group exactly, in so many
+// orbits of different kinds, with no two points too near.
+func randomWith(rng *rand.Rand, symbol string, orbits int) []Point {
+	s, err := New(symbol)
+	if err != nil {
+		panic(err)
+	}
+	for {
+		out := []Point{at(0, 0, 0, 26)}
+		for kind := range orbits {
+			v := mgl64.Vec3{rng.NormFloat64(), rng.NormFloat64(), rng.NormFloat64()}.Mul(1.8)
+			for _, o := range s.Operations {
+				out = append(out, Point{o.Matrix.Mul3x1(v), 6 + kind})
+			}
+		}
+		apart := true
+		for i, p := range out {
+			for _, q := range out[:i] {
+				apart = apart && p.Position.Sub(q.Position).Len() > 1.2
+			}
+		}
+		if apart {
+			return out
+		}
+	}
+}
+
+// Every point is moved by up to 0.2 Å; the points of a large set, where
+// neighbours must stay neighbours, by up to 0.1 Å.
+func TestPerturbedStructuresAreNearToTheirGroups(t *testing.T) {
+	rng := rand.New(rand.NewSource(5))
+	for _, symbol := range []string{"Ci", "Cs", "C2", "C3", "C5", "S4", "S6", "C2v", "C3v", "D2", "D3", "C2h", "C3h", "D2d", "D3d", "D5h", "T", "O"} {
+		ideal := randomWith(rng, symbol, 1)
+		noise := 0.2
+		if len(ideal) > smallCloud {
+			noise = 0.1
+		}
+		points, _ := shuffled(ideal, noise, rng)
+		n := nearest(mustNear(t, points), symbol)
+		if n == nil || n.Fit.Deviation > 0.6 {
+			t.Errorf("%s: %v", symbol, n)
 		}
 	}
 }

@@ -112,6 +112,9 @@ func (s *shapeSearch) overlap() (float64, mgl64.Mat3) {
 	return sum, out
 }
 
+// axesTried spreads over half of the sphere, some 8° apart.
+const axesTried = 320
+
 // improve assigns by the least sum of squares in many orientations, each
 // improved until the assignment stays.
 func (s *shapeSearch) improve() {

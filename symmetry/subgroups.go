@@ -1,6 +1,7 @@
 package symmetry
 
 import (
+	"encoding/binary"
 	"fmt"
 	"math/bits"
 	"sort"
@@ -14,6 +15,23 @@ func newOpSet(order int) opSet { return make(opSet, (order+63)/64) }
 func (o opSet) has(i int) bool { return o[i/64]>>(i%64)&1 == 1 }
 func (o opSet) add(i int)      { o[i/64] |= 1 << (i % 64) }
 
+// holds tells whether every operation of another set is in this one.
+func (o opSet) holds(other opSet) bool {
+	for w := range o {
+		if other[w]&^o[w] != 0 {
+			return false
+		}
+	}
+	return true
+}
+
+// remove takes out the operations of another set.
+func (o opSet) remove(other opSet) {
+	for w := range o {
+		o[w] &^= other[w]
+	}
+}
+
 func (o opSet) size() int {
 	n := 0
 	for _, w := range o {
@@ -22,13 +40,19 @@ func (o opSet) size() int {
 	return n
 }
 
-func (o opSet) key() string { return fmt.Sprint([]uint64(o)) }
+func (o opSet) key() string {
+	b := make([]byte, 0, 8*len(o))
+	for _, w := range o {
+		b = binary.LittleEndian.AppendUint64(b, w)
+	}
+	return string(b)
+}
 
 func (o opSet) members() []int {
 	var out []int
-	for i := range len(o) * 64 {
-		if o.has(i) {
-			out = append(out, i)
+	for i, w := range o {
+		for ; w != 0; w &= w - 1 {
+			out = append(out, 64*i+bits.TrailingZeros64(w))
 		}
 	}
 	return out

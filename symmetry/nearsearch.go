@@ -1,0 +1,126 @@
+package symmetry
+
+import (
+	"context"
+	"math"
+)
+
+// Starts lie so near together that the farthest point is off by no more than
+// startError (Å) from one to the next, but for the bounds on their number.
+const (
+	startError = 0.35
+	fewestAxes = 320
+	mostAxes   = 1500
+)
+
+// smallCloud is the number of points up to which every image within reach is
+// tried. In a larger set of points that lie close together a great many planes
+// and axes carry every point to one that is not far, though to no purpose: there
+// neighbours stay neighbours, and an image is hardly farther than the nearest.
+const smallCloud = 24
+
+// hardlyFarther (Å) is the margin within which a point has either of two images,
+// half-way between them but for noise and for the error of the start.
+const hardlyFarther = 0.45
+
+// search finds the operations that are powers of primes.
+func (l *ladder) search(ctx context.Context, progress func(float64)) error {
+	c := l.cloud
+	// n directions on the half of the sphere leave gaps of some 1.6/√n.
+	gap := 1.6 * c.farthest() / startError
+	n := min(max(fewestAxes, int(gap*gap)), mostAxes)
+	gap = 1.6 / math.Sqrt(float64(n))
+	allowed := make([]float64, len(c.at))
+	most := l.limit
+	if len(c.at) <= smallCloud/2 {
+		most *= widened // among few points that takes no time
+	}
+	for i, r := range c.radius {
+		allowed[i] = most + min(gap*r, startError)
+	}
+	s := newCovers(c, allowed, leastStart)
+	if len(c.at) > smallCloud {
+		s.shells()
+		s.margin = hardlyFarther
+	}
+	l.pool, l.others = map[elementKey]*element{}, map[elementKey]*element{}
+	l.tried = map[elementKey]bool{}
+	for k, t := range motionTypes {
+		first := len(l.generators)
+		for i := range n {
+			if err := ctx.Err(); err != nil {
+				return err
+			}
+			if t.fold == 2 && t.improper && i > 0 {
+				break // the inversion has no axis
+			}
+			s.try(t.at(spiral(i, n)), l.meet)
+			if i%16 == 0 {
+				progress((float64(k) + float64(i)/float64(n)) / float64(len(motionTypes)))
+			}
+		}
+		if found := l.generators[first:]; s.beside != nil && t.fold <= 2 && len(found) <= mostHalved {
+			s.halfWay(t, found, l.meet)
+		}
+	}
+	return nil
+}
+
+// mostHalved bounds the number of operations between which others are sought.
+const mostHalved = 100
+
+// halfWay seeks operations that go with some points as one of two operations
+// found, and with the others as the other one: two parts of a molecule that are
+// turned against each other have each its own.
+func (s *covers) halfWay(t motionType, list []*element, found func(m *motion, image []int32)) {
+	defer func() { s.choices = nil }()
+	for i, a := range list {
+		for _, b := range list[:i] {
+			u, v := a.axis(), b.axis()
+			if u.Dot(v) < 0 {
+				v = v.Mul(-1)
+			}
+			s.choices = [][]int32{a.permutation, b.permutation}
+			s.try(t.at(u.Add(v).Normalize()), found)
+		}
+	}
+}
+
+// meet takes an operation as a generator if its cyclic group is near.
+func (l *ladder) meet(m *motion, image []int32) {
+	e := &element{permutation: image, improper: m.improper, matrix: m.powers[1]}
+	if l.tried[e.key()] {
+		return
+	}
+	e.permutation = append([]int32(nil), image...)
+	// One of a lower order is a simpler operation, and found as that.
+	if l.admit(e) && e.order() == m.order {
+		l.generators = append(l.generators, e)
+	}
+}
+
+// admit takes an element and its powers into the pool if its cyclic group is
+// near, and gives it the best matrix.
+func (l *ladder) admit(e *element) bool {
+	if k := e.key(); l.tried[k] {
+		return l.pool[k] != nil
+	} else {
+		l.tried[k] = true
+	}
+	l.cloud.best(e)
+	group := l.cloud.generate([]*element{e}, 2*MaxNearFold)
+	if l.place(group) == nil {
+		return false
+	}
+	for _, g := range group {
+		k := g.key()
+		l.tried[k] = true
+		if l.pool[k] == nil {
+			// Powers have the axis of the whole: half-way, the best of their own
+			// may turn the other way round.
+			g.free = e.free
+			l.pool[k] = g
+		}
+	}
+	return true
+}
