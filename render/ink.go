@@ -410,9 +410,11 @@ func (t *tile) inkLayer(l *layer, part int32) {
 		}
 		b.on, b.at = true, min(1, max(0, at))
 		// A little nearer than the sheet, so that a line where it dips into a
-		// body is seen on both sides.
+		// body is seen on both sides; but facets at the rim are so steep that
+		// their slope says little.
 		z, zx, zy := t.plane(slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
-		b.near = z + 2*(abs32(zx)+abs32(zy)) + 4*f.pixelDepth(part, z)
+		d := f.pixelDepth(part, z)
+		b.near = z + min(2*(abs32(zx)+abs32(zy)), 10*d) + 4*d
 		any = true
 	}
 	for y := area.Min.Y; y < area.Max.Y; y++ {
