@@ -468,7 +468,9 @@ func (u *ui) tryStudy(step study.Step, change func(*study.Study)) error {
 func (u *ui) undo() {
 	u.player.stop()
 	from := u.view.sight
-	if _, ok := u.history.Undo(); ok {
+	if _, ok := u.history.Undo(); !ok {
+		u.remark(say("ledger.nothingToUndo")) // after a start too, where one might expect more
+	} else {
 		u.changed()
 		u.glideFrom(from)
 	}
@@ -477,7 +479,9 @@ func (u *ui) undo() {
 func (u *ui) redo() {
 	u.player.stop()
 	from := u.view.sight
-	if _, ok := u.history.Redo(); ok {
+	if _, ok := u.history.Redo(); !ok {
+		u.remark(say("ledger.nothingToRedo"))
+	} else {
 		u.changed()
 		u.glideFrom(from)
 	}

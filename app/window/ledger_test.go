@@ -294,3 +294,15 @@ func TestTheFamiliesOfALinearMoleculeHaveImages(t *testing.T) {
 		t.Errorf("it says %q with %v rows", sheet.remark, sheet.rows())
 	}
 }
+
+// The ledger is drawn when an operation is chosen, not with the frames that
+// play it.
+func BenchmarkDrawingTheLargestLedger(b *testing.B) {
+	w := newBench(b, b.TempDir())
+	w.project("demo:cage", "C:pz", "T1u", 1, [2]int{})
+	w.ledger.Resize(fyne.NewSize(1280, ledgerHeight))
+	for range b.N {
+		w.ledger.stale = true
+		w.ledger.generate(1280, int(ledgerHeight))
+	}
+}

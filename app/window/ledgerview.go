@@ -149,7 +149,7 @@ func (u *ui) makeSheet(measure func(notation.Text, style) float64) *ledgerSheet 
 		}
 		if l := sheet.ledger; l != nil {
 			row := l.Rows[i]
-			c.set[2] = notation.Words(shortCoefficientSigned(row.Weight))
+			c.set[2] = notation.Words(weightText(row.Weight))
 			sum := notation.Terms(row.Sum)
 			c.set[3] = abbreviated(sum, notation.PhiText)
 			lines = append(lines, say("ledger.hintSum", notation.CombinationText(sum, notation.PhiText, notation.OneKind(sum)).String()))
@@ -359,19 +359,25 @@ func (u *ui) amongText(l *work.Ledger) notation.Text {
 // zeroEnd says why nothing is left.
 func (u *ui) zeroEnd(l *work.Ledger) []ledgerEnd {
 	out := []ledgerEnd{{text: notation.Words(say("ledger.total") + " 0")}}
-	var sets []string
-	for i, c := range l.Cancelling() {
-		sets = append(sets, letterOf(i)+": "+strings.Join(u.rowNames(l, c.Rows), ", "))
-	}
+	sets := l.Cancelling()
 	const most = 4
-	shown := sets
+	var shown, all notation.Text
+	for i, c := range sets {
+		if i > 0 {
+			all = all.Then(notation.Words("; "))
+		}
+		all = all.Then(notation.Words(letterOf(i)+": "), rowNames(l, c.Rows))
+		if i < most {
+			shown = all
+		}
+	}
 	if len(sets) > most {
-		shown = append(append([]string(nil), sets[:most]...), "…")
+		shown = shown.Then(notation.Words("; …"))
 	}
 	if len(sets) == 0 {
 		out = append(out, ledgerEnd{text: notation.Words(say("ledger.allIdle"))})
 	} else {
-		out = append(out, ledgerEnd{text: notation.Words(say("ledger.cancel", strings.Join(shown, "; "))), hint: say("ledger.cancel", strings.Join(sets, "; "))})
+		out = append(out, ledgerEnd{text: fill(say("ledger.cancel"), shown), hint: fill(say("ledger.cancel"), all).String()})
 	}
 	if idle := l.Idle(); len(idle) > 0 && len(sets) > 0 {
 		out = append(out, ledgerEnd{text: notation.Words(say("ledger.idle", len(idle)))})
@@ -405,12 +411,15 @@ func (u *ui) nonePart(l *work.Ledger) notation.Text {
 }
 
 // rowNames are the names of the operations of some rows.
-func (u *ui) rowNames(l *work.Ledger, rows []int) []string {
-	var out []string
-	for _, r := range rows {
-		out = append(out, notation.Operation(l.Fit.Setting.Operations[l.Rows[r].Operation].Name).String())
+func rowNames(l *work.Ledger, rows []int) notation.Text {
+	var t notation.Text
+	for i, r := range rows {
+		if i > 0 {
+			t = t.Then(notation.Words(", "))
+		}
+		t = t.Then(notation.Operation(l.Fit.Setting.Operations[l.Rows[r].Operation].Name))
 	}
-	return out
+	return t
 }
 
 // orbitalText names a group orbital of the list at hand: its label, the copy
@@ -447,10 +456,15 @@ func partnerNames(irrep symmetry.Irrep) func(number string) notation.Text {
 	}
 }
 
-// shortCoefficientSigned is exact where that is short.
-func shortCoefficientSigned(x float64) string {
+// weightText is exact where that is not too long.
+func weightText(x float64) string {
+	sign := ""
 	if x < 0 {
-		return "−" + shortCoefficient(-x)
+		sign, x = "−", -x
 	}
-	return shortCoefficient(x)
+	const longest = 10 // (1 + √5)/4
+	if exact := notation.ExactCoefficient(x); notation.Width(exact) <= longest {
+		return sign + exact
+	}
+	return sign + notation.Short(x, 3)
 }

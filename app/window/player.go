@@ -36,7 +36,13 @@ func (p *player) start() {
 	p.stop()
 	s := u.now()
 	if !u.motion {
-		u.history.Do(study.StepPlay, p.nextStill(s))
+		// All at once, as stills; once more, back to the start.
+		if s.Moment >= 1 {
+			s.Moment = 0
+		} else {
+			s.Moment = 1
+		}
+		u.history.Do(study.StepPlay, s)
 		u.changed()
 		return
 	}
@@ -49,23 +55,6 @@ func (p *player) start() {
 	p.began = time.Now().Add(-picture.Elapsed(op, s.Moment))
 	p.clock = startClock(u.post, func() { u.guard(p.tick) })
 	p.label()
-}
-
-// nextStill goes from the start to the middle and to the end, with the end of
-// the first step of two between them.
-func (p *player) nextStill(s study.Study) study.Study {
-	stills := []float64{0.5, 1}
-	if op, ok := p.u.operation(); ok && op.Steps() == 2 {
-		stills = []float64{0.25, 0.5, 0.75, 1}
-	}
-	for _, m := range stills {
-		if s.Moment < m-1e-9 {
-			s.Moment = m
-			return s
-		}
-	}
-	s.Moment = 0
-	return s
 }
 
 func (p *player) tick() {

@@ -32,7 +32,7 @@ type step struct {
 func theSteps() []step {
 	return []step{
 		{"help.step1", "help.step1Text", []study.Step{study.StepBasis, study.StepFunction}, func(u *ui) { u.setBasis([]string{"Cl:sigma"}) }},
-		{"help.step2", "help.step2Text", []study.Step{study.StepOperation, study.StepPlay}, func(u *ui) { u.nextOperation(1); u.player.start() }},
+		{"help.step2", "help.step2Text", []study.Step{study.StepOperation, study.StepPlay}, func(u *ui) { u.nextOperation(1) }},
 		{"help.step3", "help.step3Text", []study.Step{study.StepIrrep, study.StepPartner}, func(u *ui) { u.nextOrbital(1) }},
 		{"help.step4", "help.step4Text", nil, nil},
 	}

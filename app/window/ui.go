@@ -401,6 +401,9 @@ func (u *ui) show(moving bool) {
 	u.tally.apply(&shown)
 	shown.Nodes = u.nodes(s, u.orbital())
 	u.view.shown, u.view.beside = u.split(shown)
+	if u.view.beside == nil {
+		u.view.shown, u.view.beside = u.stills(shown)
+	}
 	u.fitBeside()
 	if st.Group != nil {
 		u.view.sight = u.sights.sight(s.Camera, st.Group, shown.Basis, len(s.Basis) > 0 && shown.Basis == nil)
