@@ -48,8 +48,9 @@ const (
 	readable = 15  // width of a column that can be read, in sizes of its text
 )
 
-// placeCard decides the sizes of a card in a width.
-func (m *maker) placeCard(c card, p plan, width float64) placedCard {
+// placeCard decides the sizes of a card in a width, below the panels or beside
+// them.
+func (m *maker) placeCard(c card, p plan, width float64, beside bool) placedCard {
 	var out placedCard
 	if !c.wanted() || m.cardless {
 		return out
@@ -76,7 +77,7 @@ func (m *maker) placeCard(c card, p plan, width float64) placedCard {
 		out.key, left, out.keyless = picture.Panel{}, out.triad.w+innerGap, true
 	}
 	textWidth := width - left
-	if out.stacked = textWidth < readable*m.size*mmPerPoint && out.key.Width > 0; out.stacked {
+	if out.stacked = textWidth < readable*m.size*mmPerPoint && (out.key.Width > 0 || beside && left > 0); out.stacked {
 		textWidth = width
 	}
 	out.text, out.torn = m.keptText(c, textWidth)

@@ -40,6 +40,10 @@ func (m *maker) compose(g grid, c card) (block, error) {
 	if !ok {
 		return block{}, errTooSmall
 	}
+	const seen = 15.0 // mm, at 18 pt: less is not seen from afar
+	if m.height > 0 && !m.cardless && m.figure.Slide && g.cells() > 1 && max(g.view.Width, g.view.Height)*best.scale < seen {
+		return block{}, errTooSmall
+	}
 	if !best.forms && g.hasForms() && !m.figure.NoCoefficients && !m.figure.NoCaption {
 		m.note("coefficients left out, there is no room for them below the panels")
 	}
@@ -180,7 +184,7 @@ func (m *maker) measured(o option, c card) option {
 	if o.within {
 		c.key = nil
 	}
-	o.card = m.placeCard(c, o.plan, width)
+	o.card = m.placeCard(c, o.plan, width, o.beside)
 	switch {
 	case o.beside && (o.card.torn || o.card.keyless):
 		o.height = math.Inf(1)

@@ -234,7 +234,7 @@ func (m *maker) branches(g *work.Group, parents []parent, c *correlation, d card
 			panel = picture.Panel{Width: view.Width*scale + 1, Height: view.Height*scale + 0.7, Scale: scale}
 		}
 		pl.scale = scale
-		at = m.placeCard(d, pl, m.inner())
+		at = m.placeCard(d, pl, m.inner(), false)
 		rowHeight = max(panel.Height, s.line())
 		gap = 0.25 * s.line()
 		height = float64(rows)*(rowHeight+gap) + float64(len(parents)-1)*2*gap + s.line() + 1
@@ -245,7 +245,7 @@ func (m *maker) branches(g *work.Group, parents []parent, c *correlation, d card
 	}
 	scale := 1.0
 	if most > 0 {
-		widest := min((between-2*fan)/float64(most)-1, 0.5*between, usualPanel)
+		widest := min((between-2*fan)/float64(most)-1, 0.5*between, m.largest())
 		scale = min(maxScale, widest/view.Width)
 		if widest < leastPanel {
 			m.note("group orbitals left out, there is no room for them")

@@ -204,13 +204,13 @@ func (m *maker) sketch(left, right []level, view picture.Viewpoint, d card) (blo
 		}
 	}
 	rows := float64(max(len(left), len(right)))
-	line = max(3.2, min(9, 0.07*m.inner()))
+	line = max(3.2, min(9*m.weight(), 0.07*m.inner()))
 	fixed := columns[0].label + columns[1].label + 2*(line+4*levelClear)
 	const leastFan = 0.16 // of the width, for the lines between
 	free := m.inner() - fixed - leastFan*m.inner()
-	scale := min(maxScale, (min(free/2-1, usualPanel)-1)/view.Width)
+	scale := min(maxScale, (min(free/2-1, m.largest())-1)/view.Width)
 	pl := plan{grid: grid{view: view}, scale: scale}
-	at := m.placeCard(d, pl, m.inner())
+	at := m.placeCard(d, pl, m.inner(), false)
 	room := m.room() - at.h - cardGap
 	if pitch := room / rows; view.Height*scale+1.2 > pitch {
 		scale = (pitch - 1.2) / view.Height
@@ -315,10 +315,11 @@ func (m *maker) drawSketch(columns [2]column, view picture.Viewpoint, panel pict
 			out.put(caption, x(labelFrom, c.label), c.rows[i]-caption.h/2)
 			from := levelFrom + float64(c.most-1-c.slots[i])*slot
 			y := c.heights[i]
-			part := (line - levelGap*float64(l.dimension-1)) / float64(l.dimension)
+			gap := levelGap * m.weight()
+			part := (line - gap*float64(l.dimension-1)) / float64(l.dimension)
 			for k := range l.dimension {
-				a := x(from+float64(k)*(part+levelGap), part)
-				lines = append(lines, Line{Points: [][2]float64{{a, y}, {a + part, y}}, Width: levelWidth, Color: m.palette.Ink})
+				a := x(from+float64(k)*(part+gap), part)
+				lines = append(lines, Line{Points: [][2]float64{{a, y}, {a + part, y}}, Width: levelWidth * m.weight(), Color: m.palette.Ink})
 			}
 			if c.most == 1 && math.Abs(c.rows[i]-y) > 0.3 {
 				// The level stands elsewhere than its label.
@@ -331,7 +332,7 @@ func (m *maker) drawSketch(columns [2]column, view picture.Viewpoint, panel pict
 	for i, l := range columns[0].levels {
 		for k, r := range columns[1].levels {
 			if l.irrep == r.irrep {
-				lines = append(lines, Line{Points: [][2]float64{inner[0][i], inner[1][k]}, Width: tieWidth, Dash: []float64{1.1, 0.8}, Color: m.palette.Quiet})
+				lines = append(lines, Line{Points: [][2]float64{inner[0][i], inner[1][k]}, Width: tieWidth * m.weight(), Dash: []float64{1.1, 0.8}, Color: m.palette.Quiet})
 			}
 		}
 	}

@@ -10,6 +10,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/assets"
+	"lobewright/render"
 )
 
 // The kinds of sheets, as study.Figure.Sheet names them.
@@ -153,6 +154,30 @@ func newMaker(ctx context.Context, w *work.Work, s study.Study) (*maker, error) 
 	return m, nil
 }
 
+// weight is how much thicker lines are than on paper, where the type is made
+// to be read from afar.
+func (m *maker) weight() float64 { return max(1, 0.8*m.size/textSize) }
+
+// weigh thickens the lines of a panel.
+func (p *Panel) weigh(by float64) {
+	p.Look.OutlineWidth *= by
+	for i := range p.Scene.Shapes {
+		if l, ok := p.Scene.Shapes[i].Geometry.(render.Line); ok {
+			l.Width *= by
+			p.Scene.Shapes[i].Geometry = l
+		}
+	}
+}
+
+// largest is the width of a panel beyond which it is not enlarged where there
+// are several.
+func (m *maker) largest() float64 {
+	if m.figure.Slide {
+		return max(usualPanel, m.width/3)
+	}
+	return usualPanel
+}
+
 // The styles of type.
 func (m *maker) title() style { return style{size: 1.125 * m.size, color: m.palette.Ink} }
 func (m *maker) text() style  { return style{size: m.size, color: m.palette.Ink} }
@@ -233,9 +258,9 @@ const errTooSmall = tooSmall("there is no room for the panels: give a larger wid
 
 // panel is a body on paper with its labels.
 func (m *maker) panel(body *picture.Body, v picture.Viewpoint, p picture.Panel, name string, named bool) (block, error) {
-	out := block{w: p.Width, h: p.Height, items: []Item{&Panel{
-		Rect: Rect{0, 0, p.Width, p.Height}, Name: name, Scene: body.Scene(p.Scale), Camera: v.Camera(p), Look: body.Look(),
-	}}}
+	drawn := &Panel{Rect: Rect{0, 0, p.Width, p.Height}, Name: name, Scene: body.Scene(p.Scale), Camera: v.Camera(p), Look: body.Look()}
+	drawn.weigh(m.weight())
+	out := block{w: p.Width, h: p.Height, items: []Item{drawn}}
 	var labels []picture.Label
 	if named && !m.study.Look.NoLabels {
 		var missing []string

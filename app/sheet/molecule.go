@@ -39,7 +39,7 @@ func (m *maker) molecule(elements bool) (*Sheet, error) {
 	}
 	v = picture.NewViewpoint(m.study.Camera, bodies...)
 	key := first.body
-	content, err := m.compose(grid{rows: []row{r}, view: v, widest: usualPanel}, card{group: g, key: key, lines: []cardLine{{first.title, m.title()}}})
+	content, err := m.compose(grid{rows: []row{r}, view: v, widest: m.largest()}, card{group: g, key: key, lines: []cardLine{{first.title, m.title()}}})
 	if err != nil {
 		return nil, err
 	}

@@ -23,7 +23,7 @@ func (m *maker) operations() (*Sheet, error) {
 	if len(all) > mostPanels {
 		return nil, fmt.Errorf("%s has %d operations; a sheet holds %d panels", b.Fit.Setting.Symbol, len(all), mostPanels)
 	}
-	g := grid{flows: true, widest: usualPanel, unlettered: len(all) > 26}
+	g := grid{flows: true, widest: m.largest(), unlettered: len(all) > 26}
 	first := m.bodies.Lobes(b, subject.coefficients, m.study)
 	g.view = picture.NewViewpoint(m.study.Camera, first)
 	bodies := []*picture.Body{first}

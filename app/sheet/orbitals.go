@@ -17,7 +17,7 @@ func (m *maker) all() (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	g := grid{widest: usualPanel}
+	g := grid{widest: m.largest()}
 	for i, irrep := range o.Irreps {
 		r := row{label: notation.Irrep(irrep.Label), unit: irrep.Dimension}
 		for k := range o.Projection.Orbitals {
@@ -72,7 +72,7 @@ func (m *maker) orbitals(set bool) (*Sheet, error) {
 			r.cells = append(r.cells, m.orbitalCell(o, orbital))
 		}
 	}
-	return m.orbitalSheet(o, grid{rows: []row{r}, widest: usualPanel}, "the partners of "+label)
+	return m.orbitalSheet(o, grid{rows: []row{r}, widest: m.largest()}, "the partners of "+label)
 }
 
 // orbitalCell is the panel of a group orbital.

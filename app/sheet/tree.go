@@ -123,7 +123,7 @@ func (t tree) draw(parents []parent, c *correlation, view picture.Viewpoint) (bl
 }
 
 func (t tree) tie(points ...[2]float64) Line {
-	return Line{Points: points, Width: tieWidth, Color: t.palette.Quiet}
+	return Line{Points: points, Width: tieWidth * t.weight(), Color: t.palette.Quiet}
 }
 
 // spread moves places along a line apart until each two are at least a distance
