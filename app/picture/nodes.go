@@ -10,7 +10,7 @@ import (
 )
 
 // nodeOpacity keeps a nodal plane so light that lobes are seen through it.
-const nodeOpacity = 0.1
+const nodeOpacity = 0.07
 
 // addNodes draws nodal planes: light discs with a dashed rim, so that they are
 // not taken for the planes of operations.

@@ -130,7 +130,11 @@ func (u *ui) drawCopy(b *board, y, width float64, o *work.Orbitals, partners []o
 		} else {
 			b.frame(x, y, side, side, 1, faint(b.palette.Rule, 0x70))
 		}
-		b.text(x+side/2, y+side+13, likeness(irrep, p.Partner), style{size: secondSize, color: b.palette.Quiet})
+		under, small := likeness(irrep, p.Partner), style{size: secondSize, color: b.palette.Quiet}
+		if b.measure(under, small) > side+gap {
+			under = notation.Words(say("partners.partner", p.Partner+1)) // after a turn by any angle
+		}
+		b.text(x+side/2, y+side+13, under, small)
 		b.spot(spot{x: x, y: y, width: side, height: side + 17, name: name, do: func() { u.chooseOrbital(irrep.Label, p.Copy+1, p.Partner+1) }})
 		x += side + gap
 	}

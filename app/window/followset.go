@@ -86,10 +86,7 @@ func (u *ui) drawSet(b *board, y, width float64, o *work.Orbitals, partners []or
 	irrep := o.Irreps[partners[0].Irrep]
 	if len(partners) > 1 {
 		for _, p := range partners {
-			label := fill(say("partners.equals"), likeOnly(irrep.Functions, p.Partner))
-			if len(label) == 0 {
-				label = notation.Words(strconv.Itoa(p.Partner+1) + ": ")
-			}
+			label := fill(say("partners.equals"), u.shortName(b, irrep.Functions, p.Partner))
 			y = b.paragraph(pad, y+4, width, label.Then(u.forms.text(p.Coefficients)), formula)
 		}
 		y += 4
@@ -121,6 +118,22 @@ func likeOnly(functions [][]string, partner int) notation.Text {
 		return nil
 	}
 	return notation.Polynomial(functions[partner][notation.Likest(functions[0])])
+}
+
+// longestName is the width of a function that still stands for a partner in
+// sentences and matrices.
+const longestName = 72
+
+// shortName stands for a partner: the function that it is like, or, where one of
+// the set has none or a long one, its number.
+func (u *ui) shortName(b *board, functions [][]string, partner int) notation.Text {
+	for k := range functions {
+		f := likeOnly(functions, k)
+		if f == nil || b.measure(f, style{size: secondSize}) > longestName {
+			return notation.Text{{Text: "ψ", Italic: true}, {Text: strconv.Itoa(partner + 1), Place: notation.Sub}}
+		}
+	}
+	return likeOnly(functions, partner)
 }
 
 // mostPairs is how many of the functions that pair with each other are listed.

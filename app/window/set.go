@@ -75,7 +75,7 @@ func (u *ui) mixPair() (pair [2]int, ok bool) {
 // turnAngle is the angle, in degrees, that the slider of a pair shows.
 func turnAngle(list []study.PlaneRotation, pair [2]int) float64 {
 	_, angle := work.LastTurn(list, pair[0], pair[1])
-	return math.Mod(math.Mod(angle, 360)+360, 360)
+	return work.OneTurn(angle)
 }
 
 // turnMarks are the marks of the turn at hand, kept as long as they hold.

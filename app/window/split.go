@@ -152,10 +152,7 @@ func (u *ui) drawBeside(b *board) {
 	x += 20
 	irrep := u.state.Orbitals.Irreps[o.Irrep]
 	for k := range d {
-		from := likeOnly(irrep.Functions, k)
-		if from == nil {
-			from = notation.Words(say("partners.partner", k+1))
-		}
+		from := u.shortName(b, irrep.Functions, k)
 		t := from.Then(notation.Words(" → "))
 		first := true
 		for l := range d {
@@ -163,13 +160,7 @@ func (u *ui) drawBeside(b *board) {
 			if v < 1e-9 && v > -1e-9 {
 				continue
 			}
-			to := likeOnly(irrep.Functions, l)
-			if to == nil {
-				to = notation.Words(say("partners.partner", l+1))
-			}
-			if len(to) > 1 && v*v < 1-1e-9 {
-				to = notation.Words("(").Then(to, notation.Words(")"))
-			}
+			to := u.shortName(b, irrep.Functions, l)
 			t = t.Then(notation.Words(factor(v, first)), bracketed(to, v))
 			first = false
 		}
@@ -179,14 +170,13 @@ func (u *ui) drawBeside(b *board) {
 	}
 }
 
-// bracketed puts a sum that a minus stands before in brackets.
+// bracketed puts a sum that a factor other than 1 stands before in brackets.
 func bracketed(t notation.Text, v float64) notation.Text {
-	if v > -1+1e-9 {
+	if v > 1-1e-9 {
 		return t
 	}
-	s := t.String()
-	for i, r := range s {
-		if (r == '−' || r == '+') && (i > 0 || v < 0) {
+	for _, r := range t.String() {
+		if r == '−' || r == '+' {
 			return notation.Words("(").Then(t, notation.Words(")"))
 		}
 	}

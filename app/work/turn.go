@@ -199,7 +199,7 @@ func LastTurn(list []study.PlaneRotation, from, to int) (before []study.PlaneRot
 // out.
 func WithTurn(list []study.PlaneRotation, from, to int, angle float64) []study.PlaneRotation {
 	before, _ := LastTurn(list, from, to)
-	angle = math.Mod(math.Mod(angle, 360)+360, 360)
+	angle = OneTurn(angle)
 	out := append([]study.PlaneRotation(nil), before...)
 	if angle != 0 {
 		out = append(out, study.PlaneRotation{From: from, To: to, Angle: angle})
@@ -221,4 +221,13 @@ func (o *Orbitals) TurnMarks(s study.Study, from, to int) ([]Mark, error) {
 		return nil, err
 	}
 	return base.Marks(a, from-1, to-1), nil
+}
+
+// OneTurn is an angle in degrees from 0 to below 360; one that is there already
+// is not touched by rounding.
+func OneTurn(degrees float64) float64 {
+	if degrees >= 0 && degrees < 360 {
+		return degrees
+	}
+	return math.Mod(math.Mod(degrees, 360)+360, 360)
 }
