@@ -26,6 +26,9 @@ func TestMain(m *testing.M) {
 	if folder := os.Getenv(savesVariable); folder != "" {
 		saveForEver(folder)
 	}
+	if folder := os.Getenv(editsVariable); folder != "" {
+		editForEver(folder)
+	}
 	os.Exit(m.Run())
 }
 
@@ -75,7 +78,8 @@ func saveForEver(folder string) {
 // and holds that the file is whole each time, that it is the study of one
 // moment, and none from before the last that was said to be saved.
 func TestKillsAtAnyMomentLeaveAWholeStudy(t *testing.T) {
-	const folders, kills = 4, 10
+	const folders = 4
+	kills := killsWanted(t) / folders
 	for f := range folders {
 		t.Run(strconv.Itoa(f+1), func(t *testing.T) {
 			t.Parallel()
@@ -98,6 +102,88 @@ func TestKillsAtAnyMomentLeaveAWholeStudy(t *testing.T) {
 			}
 			t.Logf("%d kills among %d saves", kills, saves)
 		})
+	}
+}
+
+// killsVariable is how many kills a whole test has; without it a few do.
+const killsVariable = "LOBEWRIGHT_TEST_KILLS"
+
+func killsWanted(t *testing.T) int {
+	if n, err := strconv.Atoi(os.Getenv(killsVariable)); err == nil {
+		return n
+	}
+	if testing.Short() {
+		return 8
+	}
+	return 40
+}
+
+// editsVariable makes the test program edit studies in this folder, as a person
+// does, until it is killed.
+const editsVariable = "LOBEWRIGHT_TEST_EDITS"
+
+// editForEver edits as hands do, step by step and with undo, and leaves the
+// saving to the background. It says the number of each edit once it is done.
+func editForEver(folder string) {
+	s, notes := Open(Options{Folder: folder, Interval: 20 * time.Millisecond})
+	if len(notes) > 0 {
+		fmt.Println("note:", notes)
+		os.Exit(1)
+	}
+	s.Settled()
+	last, _ := s.Study()
+	h := study.NewHistory(last)
+	fmt.Println(last.Projection.Function)
+	for n := last.Projection.Function + 1; ; n++ {
+		switch {
+		case n%17 == 0: // a gesture of many small moves
+			h.Begin(study.StepOrbit)
+			for range 20 {
+				h.Set(numbered(n))
+				s.Keep(h.Now())
+			}
+			h.Commit()
+		case n%11 == 0: // there and back and there again
+			h.Do(study.StepAtomTable, numbered(n))
+			h.Undo()
+			s.Keep(h.Now())
+			h.Redo()
+		default:
+			h.Do(study.StepAtomTable, numbered(n))
+		}
+		s.Keep(h.Now())
+		fmt.Println(n)
+		time.Sleep(time.Millisecond)
+	}
+}
+
+// TestKillsWhileEditingLoseNoMoreThanASecond kills editing processes: the study
+// that is found is whole, and was at hand no longer than a second ago.
+func TestKillsWhileEditingLoseNoMoreThanASecond(t *testing.T) {
+	random := rand.New(rand.NewPCG(3, 4))
+	folder := t.TempDir()
+	for range killsWanted(t) / 2 {
+		n, times := killedIn(t, editsVariable, folder, time.Duration(random.Int64N(int64(300*time.Millisecond))))
+		data, err := os.ReadFile(filepath.Join(folder, "work-1.lobewright"))
+		if os.IsNotExist(err) && n < 40 {
+			continue // killed before anything was due to be saved
+		}
+		if err != nil {
+			t.Fatal(err)
+		}
+		st, err := study.Decode(data, "killed")
+		if err != nil {
+			t.Fatal(err)
+		}
+		found := st.Projection.Function
+		if found > n+1 || !st.Equal(numbered(found)) {
+			t.Fatalf("study %d is found after edit %d", found, n)
+		}
+		if next, known := times[found+1]; known {
+			if age := times[n].Sub(next); age > time.Second {
+				t.Errorf("edit %d is found, %v before the last one", found, age)
+			}
+		}
 	}
 }
 
@@ -132,8 +218,17 @@ func killOnce(t *testing.T, folder string, said int, after time.Duration) int {
 // and returns the last number that it said.
 func killed(t *testing.T, folder string, after time.Duration) int {
 	t.Helper()
+	last, _ := killedIn(t, savesVariable, folder, after)
+	return last
+}
+
+// killedIn is killed for what a variable says; times are when the numbers were
+// heard.
+func killedIn(t *testing.T, variable, folder string, after time.Duration) (last int, times map[int]time.Time) {
+	t.Helper()
+	times = map[int]time.Time{}
 	child := exec.Command(os.Args[0])
-	child.Env = append(os.Environ(), savesVariable+"="+folder)
+	child.Env = append(os.Environ(), variable+"="+folder)
 	out, err := child.StdoutPipe()
 	if err != nil {
 		t.Fatal(err)
@@ -142,7 +237,7 @@ func killed(t *testing.T, folder string, after time.Duration) int {
 		t.Fatal(err)
 	}
 	lines := bufio.NewScanner(out)
-	last := -1
+	last = -1
 	for lines.Scan() {
 		n, err := strconv.Atoi(lines.Text())
 		if err != nil {
@@ -152,8 +247,8 @@ func killed(t *testing.T, folder string, after time.Duration) int {
 		if last < 0 {
 			time.AfterFunc(after, func() { child.Process.Kill() })
 		}
-		last = n
+		last, times[n] = n, time.Now()
 	}
 	child.Wait()
-	return last
+	return last, times
 }

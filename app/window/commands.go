@@ -122,7 +122,7 @@ func (u *ui) commandMenus() []commandMenu {
 }
 
 func (u *ui) fileCommands() []*command {
-	quit := &command{key: "menu.quit", do: u.quit}
+	quit := (&command{key: "menu.quit", do: u.quit}).withKey(fyne.KeyQ, control)
 	return []*command{
 		(&command{key: "menu.open", do: u.askOpen}).withKey(fyne.KeyO, control),
 		{key: "menu.recent", refresh: u.recentCommands},

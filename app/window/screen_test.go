@@ -6,6 +6,7 @@ import (
 	"bufio"
 	"fmt"
 	"io"
+	"math/rand/v2"
 	"os"
 	"os/exec"
 	"path/filepath"
@@ -283,6 +284,66 @@ func TestARealHandWorksInARealWindow(t *testing.T) {
 	again.do("key", "alt")
 	if strings.Contains(again.said.String(), "fault") {
 		t.Error(again.said.String())
+	}
+}
+
+// Events at random in a real window, as many as the variable says: the program
+// goes on, says nothing of a fault, and answers at the end. Its memory is that
+// of the kernel's account.
+func TestRandomEventsDoNoHarmToARealWindow(t *testing.T) {
+	if os.Getenv(eventsVariable) == "" {
+		t.Skip(eventsVariable + " is not set")
+	}
+	events := eventsWanted(0)
+	s := newScreen(t, 1280, 800)
+	r := s.run(t.TempDir())
+	r.saved("the demonstration", func(s study.Study) bool { return s.Structure == "demo:"+firstDemo })
+	random := rand.New(rand.NewPCG(5, 6))
+	keys := []string{"Left", "Right", "Up", "Down", "space", "Home", "End", "Return", "Tab", "Escape", "Page_Up", "Page_Down", "F1", "x", "y", "z", "f", "a", "n",
+		"period", "comma", "plus", "minus", "ctrl+z", "ctrl+y", "ctrl+t", "ctrl+f", "ctrl+b", "ctrl+p", "1", "5", "C", "Escape", "Escape"}
+	for n := 0; n < events; {
+		var command []any // many to a call, which costs more than the events
+		for range 50 {
+			switch random.IntN(4) {
+			case 0:
+				command = append(command, "mousemove", strconv.Itoa(random.IntN(1280)), strconv.Itoa(40+random.IntN(760)))
+			case 1:
+				command = append(command, "click", strconv.Itoa([]int{1, 1, 1, 3, 4, 5}[random.IntN(6)]))
+			case 2:
+				command = append(command, "key", keys[random.IntN(len(keys))])
+			case 3:
+				command = append(command, "mousedown", "1", "mousemove_relative", "--", strconv.Itoa(random.IntN(41)-20), strconv.Itoa(random.IntN(41)-20), "mouseup", "1")
+			}
+			n++
+		}
+		s.do(command...)
+		select {
+		case <-r.done:
+			r.mu.Lock()
+			defer r.mu.Unlock()
+			t.Fatalf("after %d events the program has ended: %s", n, r.said.String())
+		default:
+		}
+	}
+	time.Sleep(2 * time.Second)
+	r.mu.Lock()
+	said := r.said.String()
+	r.mu.Unlock()
+	if strings.Contains(said, "fault") {
+		t.Error(said)
+	}
+	status, err := os.ReadFile("/proc/" + strconv.Itoa(r.cmd.Process.Pid) + "/status")
+	if err != nil {
+		t.Skip("there is no account of the program's memory")
+	}
+	for _, line := range strings.Split(string(status), "\n") {
+		if rest, ok := strings.CutPrefix(line, "VmRSS:"); ok {
+			kilobytes, _ := strconv.Atoi(strings.Fields(rest)[0])
+			t.Logf("after %d events the program holds %d MB", events, kilobytes/1024)
+			if kilobytes > 300*1024 {
+				t.Errorf("after %d events the program holds %d MB", events, kilobytes/1024)
+			}
+		}
 	}
 }
 

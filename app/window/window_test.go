@@ -8,6 +8,7 @@ import (
 	"path/filepath"
 	"runtime"
 	"slices"
+	"strconv"
 	"strings"
 	"testing"
 	"time"
@@ -560,12 +561,24 @@ func TestEverySpotCanBeReachedByKeys(t *testing.T) {
 	}
 }
 
-// All that a hand can do, ten thousand times at random.
-func TestRandomEventsDoNoHarm(t *testing.T) {
-	events := 10000
-	if testing.Short() {
-		events = 1000
+// eventsVariable is how many random events a whole test has; without it there
+// are fewer.
+const eventsVariable = "LOBEWRIGHT_TEST_EVENTS"
+
+func eventsWanted(usual int) int {
+	if n, err := strconv.Atoi(os.Getenv(eventsVariable)); err == nil {
+		return n
 	}
+	if testing.Short() {
+		return usual / 10
+	}
+	return usual
+}
+
+// All that a hand can do, thousands of times at random.
+func TestRandomEventsDoNoHarm(t *testing.T) {
+	defer speak(assets.English)
+	events := eventsWanted(5000)
 	before := runtime.NumGoroutine()
 	heapBefore := heap()
 	b := newBench(t, t.TempDir())
@@ -577,14 +590,14 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 		fyne.KeyPageUp, fyne.KeyPageDown, fyne.KeyEscape, fyne.KeyTab, fyne.KeyF5,
 	}
 	demos := []string{"square-plane", "water", "rod", "tetrahedron", "cyanide", "trimer"}
-	panes := []*pane{b.given, b.pages.pane, b.follows, b.ledger, b.detail, b.said}
+	panes := []*pane{b.given, b.atoms.pane, b.steps.pane, b.pages.pane, b.follows, b.ledger, b.detail, b.said}
 	at := func(s fyne.Size) fyne.Position { return fyne.NewPos(s.Width*r.Float32(), s.Height*r.Float32()) }
 	buttons := []desktop.MouseButton{desktop.MouseButtonPrimary, desktop.MouseButtonSecondary, desktop.MouseButtonTertiary}
 	for n := range events {
 		p := panes[r.IntN(len(panes))]
 		v := b.view
 		mouse := &desktop.MouseEvent{PointEvent: fyne.PointEvent{Position: at(v.Size())}, Button: buttons[r.IntN(3)]}
-		switch r.IntN(16) {
+		switch r.IntN(17) {
 		case 0, 1:
 			p.Tapped(&fyne.PointEvent{Position: at(p.Size())})
 		case 2:
@@ -641,6 +654,8 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 			case 8:
 				b.pages.turnTo(page(r.IntN(5)))
 			}
+		case 16:
+			b.somethingElse(r)
 		case 15:
 			if r.IntN(10) == 0 {
 				p.generate(1+r.IntN(400), 1+r.IntN(300))
@@ -664,6 +679,40 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 	}
 	if grown := heap() - heapBefore; grown > 150<<20 {
 		t.Errorf("the heap has grown by %d MiB", grown>>20)
+	}
+}
+
+// somethingElse types in what has the keyboard, does a command of the list, or
+// edits an atom.
+func (b *bench) somethingElse(r *rand.Rand) {
+	c := b.win.Canvas()
+	letters := []rune("C1.5-x, 0eH/~")
+	switch r.IntN(6) {
+	case 0:
+		list := b.everything()
+		if cmd := list[r.IntN(len(list))]; cmd.key != "menu.quit" && cmd.key != "menu.copyPicture" && cmd.key != "menu.savePicture" {
+			b.run(cmd.command)
+		}
+	case 1:
+		if !b.atoms.pane.Visible() {
+			b.showAtoms()
+		}
+	case 2:
+		if b.atoms.pane.Visible() {
+			press(b.atoms.pane, []fyne.KeyName{fyne.KeyReturn, fyne.KeyDown, fyne.KeyTab, fyne.KeyBackspace, fyne.KeyInsert, fyne.KeyEscape, fyne.KeyLeft}[r.IntN(7)])
+		}
+	case 3:
+		if b.atoms.pane.Visible() {
+			typeIn(b.atoms.pane, string(letters[r.IntN(len(letters))]))
+		}
+	case 4:
+		if f := c.Focused(); f != nil {
+			f.TypedRune(letters[r.IntN(len(letters))])
+		}
+	case 5:
+		if f := c.Focused(); f != nil {
+			f.TypedKey(&fyne.KeyEvent{Name: []fyne.KeyName{fyne.KeyDown, fyne.KeyUp, fyne.KeyEscape, fyne.KeyEscape, fyne.KeyF1, fyne.KeyRight}[r.IntN(6)]})
+		}
 	}
 }
 
