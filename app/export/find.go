@@ -145,7 +145,7 @@ func findInMP4(r io.ReaderAt, size int64) ([]byte, error) {
 				return nil, errCutOff
 			}
 			if id == studyUUID {
-				return held(r, at+begin+16, n-begin-16, maxStudy)
+				return held(r, at+begin+16, n-begin-16, int64(maxStudy))
 			}
 		}
 		at += n

@@ -39,7 +39,7 @@ func findInPNG(r io.ReaderAt, size int64) ([]byte, error) {
 
 // studyOfText reads an iTXt chunk of n bytes that begins at a place.
 func studyOfText(r io.ReaderAt, at, n int64) ([]byte, error) {
-	chunk, err := held(r, at+4, n+8, maxStudy)
+	chunk, err := held(r, at+4, n+8, int64(maxStudy))
 	if err != nil {
 		return nil, err
 	}

@@ -35,10 +35,12 @@ var ErrNoStudy = errors.New("carries no study; figures of this program do, unles
 
 // Limits of what is read of a figure.
 const (
-	maxFile  = 2 << 30   // bytes of a file that is only walked through
-	maxHeld  = 256 << 20 // bytes of a file that must be searched
-	maxStudy = study.MaxBytes
+	maxFile = 2 << 30   // bytes of a file that is only walked through
+	maxHeld = 256 << 20 // bytes of a file that must be searched
 )
+
+// maxStudy is the most bytes of a study; tests lower it.
+var maxStudy = study.MaxBytes
 
 // A carrier finds the study's file in a figure's bytes; nil if there is none.
 // The error is one line without the file's name.
@@ -158,7 +160,7 @@ var errCutOff = errors.New("the file is cut off")
 
 // expanded reads a compressed study up to its limit.
 func expanded(z io.Reader) ([]byte, error) {
-	data, err := io.ReadAll(io.LimitReader(z, maxStudy+1))
+	data, err := io.ReadAll(io.LimitReader(z, int64(maxStudy)+1))
 	switch {
 	case len(data) > maxStudy:
 		return nil, fmt.Errorf("the study is larger than %d bytes", maxStudy)
