@@ -61,3 +61,16 @@ func (m triadMark) triadShapes(length, width, size float64) []render.Geometry {
 	}
 	return append(out, render.Text{At: m.direction.Mul(triadLetter), Runs: runs(m.letters), Size: size, Fixed: true, Through: true})
 }
+
+// axisLetters are x, y and z with an index, which is empty for the frame in
+// force. It is a number and no prime: primes belong to irreps.
+func axisLetters(index string) [3]notation.Text {
+	var out [3]notation.Text
+	for i, letter := range []string{"x", "y", "z"} {
+		out[i] = notation.Text{{Text: letter, Italic: true}}
+		if index != "" {
+			out[i] = append(out[i], notation.Text{{Text: index, Place: notation.Sub}}...)
+		}
+	}
+	return out
+}

@@ -154,7 +154,7 @@ func (u *ui) drawHeads(b *board, sheet *ledgerSheet) {
 	for i, head := range sheet.heads {
 		y := classRow + float64(i)*ledgerRow
 		s := quiet
-		if i == 2 && len(head) > 0 {
+		if i == 2 && len(head) > 0 && !sheet.matrices {
 			s.color = b.palette.Accent
 			head = head.Then(notation.Words("  ▾"))
 			b.spot(spot{x: 4, y: y + 2, width: headWidth - 10, height: ledgerRow - 4, name: "ledger weight", hint: say("ledger.chooseWeight"), do: u.offerWeights})

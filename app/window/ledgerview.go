@@ -36,6 +36,8 @@ type ledgerSheet struct {
 	// is chosen, or if the group is infinite.
 	ledger *work.Ledger
 	end    []ledgerEnd
+	// matrices says that the third row has those of a linear molecule's irrep.
+	matrices bool
 	// remark stands in the place of the last two rows.
 	remark string
 }
@@ -46,6 +48,8 @@ func (l *ledgerSheet) rows() float64 {
 	switch {
 	case l.ledger != nil:
 		return 4
+	case l.matrices:
+		return 3
 	case len(l.heads[1]) > 0:
 		return 2
 	}
@@ -132,6 +136,9 @@ func (u *ui) makeSheet(measure func(notation.Text, style) float64) *ledgerSheet 
 	} else if u.state.Basis != nil && len(u.now().Basis) > 0 && !g.Fit.Setting.Infinite() {
 		sheet.heads[2] = notation.Words(say("ledger.onto"))
 	}
+	if irrep, ok := u.linearIrrep(); ok {
+		sheet.heads[2], sheet.matrices = fill(say("frames.matrixOf"), notation.Irrep(irrep)), true
+	}
 	for i, op := range g.Operations(u.now().Angle) {
 		c := ledgerColumn{op: op, class: op.Class, mark: marks[i]}
 		if op.Index < 0 {
@@ -146,6 +153,9 @@ func (u *ui) makeSheet(measure func(notation.Text, style) float64) *ledgerSheet 
 		lines := []string{operationHint(op)}
 		if full != "" {
 			lines = append(lines, say("ledger.hintImage", full))
+		}
+		if sheet.matrices {
+			c.set[2] = u.linearMatrix(op)
 		}
 		if l := sheet.ledger; l != nil {
 			row := l.Rows[i]
@@ -229,6 +239,9 @@ func (u *ui) imageOf(op work.Operation) (notation.Text, string) {
 	case u.orbital() != nil && op.Index >= 0:
 		o := u.orbital()
 		terms, name = partnerImage(st.Orbitals, o, op.Index), partnerNames(st.Orbitals.Irreps[o.Irrep])
+	case u.orbital() != nil:
+		o := u.orbital()
+		terms, name = u.linearImage(op, o), partnerNames(st.Orbitals.Irreps[o.Irrep])
 	}
 	if len(terms) == 0 {
 		return nil, ""

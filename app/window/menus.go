@@ -147,6 +147,7 @@ func (u *ui) setScale(scale float64) {
 func (u *ui) restyle() {
 	u.app.Settings().SetTheme(u.colours)
 	u.thumbs.forget()
+	u.scale.restyle(u)
 	for _, t := range u.tracks {
 		t.line.FillColor = u.palette().Rule
 	}

@@ -195,3 +195,29 @@ func TestALinearMoleculeIsTakenForFiniteGroups(t *testing.T) {
 		t.Errorf("C4v is not followed: %q", b.now().Subgroup)
 	}
 }
+
+func TestTheAngleOfALinearMoleculeIsTypedAndItsMatricesAreShown(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.start(study.Study{Structure: "demo:rod", Basis: []string{"C:p"}, Operation: "C(φ)", Angle: 50,
+		Projection: study.Projection{Irrep: "Πu", Copy: 1, Partner: 1, Subject: study.SubjectOrbital}})
+	b.settled("the rod")
+	b.askPhi()
+	sheet := b.win.Canvas().Overlays().Top()
+	if sheet == nil {
+		t.Fatal("nothing asks for the angle")
+	}
+	sheet.Hide()
+	s := b.now()
+	s.Angle = 90
+	b.do(study.StepAngle, s)
+	b.settled("90°")
+	if got := b.angleText.Text; got != "φ = 90°" {
+		t.Errorf("the angle is shown as %q", got)
+	}
+	ledger := b.sheetOf(newBoard(100, 100, b.palette()).measure)
+	for _, c := range ledger.columns {
+		if c.op.Name == "C(φ)" && (c.set[2].String() != "(0  −1 | 1  0)" || len(c.set[1]) == 0) {
+			t.Errorf("C(90°) has the matrix %q and the image %q", c.set[2], c.set[1])
+		}
+	}
+}

@@ -7,7 +7,6 @@ import (
 	"os"
 	"runtime"
 	"runtime/debug"
-	"strconv"
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -55,8 +54,9 @@ type ui struct {
 	scrub     *scrubBar
 	angle     *scrubBar
 	tracks    []track
+	scale     angleScale
 	angles    *fyne.Container // angle with its name and value, for linear molecules
-	angleText *widget.Label
+	angleText *widget.Button  // names the angle; a click asks for it
 	basis     *hintEntry
 	fault     *pane // above basis: what is wrong with what was typed
 	play      *hintButton
@@ -134,8 +134,8 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.angle = newScrubBar(u, 359, 1, "ledger.angleHint")
 	u.angle.change = u.angled
 	u.angle.end = u.commit
-	u.angleText = widget.NewLabel(angleText(359))
-	u.angles = container.NewBorder(nil, nil, container.New(widest{}, u.angleText), nil, u.onTrack(u.angle))
+	u.angleText = newAngleButton(u)
+	u.angles = container.NewBorder(nil, nil, container.New(widest{}, u.angleText), nil, u.onScale(u.angle))
 	u.angles.Hide()
 	u.fault = newPane(u.drawFault, u)
 	u.fault.least = fyne.NewSize(100, 54)
@@ -181,7 +181,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 		u.oneByOne,
 	)
 	rule := func() fyne.CanvasObject { return widget.NewSeparator() }
-	bars := container.New(&shares{weights: []float32{1, 0.7}}, u.onTrack(u.scrub), u.angles)
+	bars := container.New(&shares{weights: []float32{1, 1.1}}, u.onTrack(u.scrub), u.angles)
 	row := container.NewBorder(nil, nil, controls, nil, container.New(&shares{weights: []float32{1, 1.1}}, bars, u.said))
 	below := container.NewVBox(rule(), u.ledger, rule(), container.NewPadded(row))
 	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane, u.pages.pane))
@@ -190,21 +190,6 @@ func (u *ui) assemble() fyne.CanvasObject {
 		container.NewBorder(nil, nil, rule(), nil, right), container.NewBorder(nil, u.beside, nil, nil, u.steps.over(u.view)))
 	whole := container.NewBorder(nil, below, nil, nil, middle)
 	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
-}
-
-// angleText names the angle of an operation of a linear molecule.
-func angleText(degrees float64) string {
-	return "φ = " + strconv.FormatFloat(degrees, 'f', -1, 64) + "°"
-}
-
-// widest gives what shows an angle the room that the longest one needs.
-type widest struct{}
-
-func (widest) Layout(objects []fyne.CanvasObject, size fyne.Size) { stacked{}.Layout(objects, size) }
-
-func (widest) MinSize(objects []fyne.CanvasObject) fyne.Size {
-	least := widget.NewLabel(angleText(359)).MinSize()
-	return least.Max(objects[0].MinSize())
 }
 
 // shares lays its visible objects side by side by weights.
