@@ -61,8 +61,11 @@ func drawCells(ctx context.Context, drawers *[]*drawer, d *drawn, r request, qui
 	}
 	d.cells = make([]drawnCell, 0, n)
 	if n > 1 && r.shown.Palette != nil {
-		// What is left between the pictures, and where there is none.
+		// A line between the pictures; bare ground where there is none.
 		draw.Draw(d.image, d.image.Rect, image.NewUniform(r.shown.Palette.Rule), image.Point{}, draw.Src)
+		last := cellsOf(n, r.width, r.height)[n-1]
+		blank := image.Rect(last.Max.X+gutter, last.Min.Y, r.width, last.Max.Y)
+		draw.Draw(d.image, blank, image.NewUniform(r.shown.Palette.Ground), image.Point{}, draw.Src)
 	}
 	for i, at := range cellsOf(n, r.width, r.height) {
 		if at.Dx() < 2 || at.Dy() < 2 {

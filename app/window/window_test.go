@@ -619,9 +619,15 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 		case 12:
 			v.TypedKey(&fyne.KeyEvent{Name: keys[r.IntN(len(keys))]})
 		case 13:
-			v.TypedRune([]rune("+-fxyzXYZa.,nN0?é")[r.IntN(17)])
+			v.TypedRune([]rune("+-fxyzXYZa.,nN0?éoo<>")[r.IntN(21)])
 		case 14:
-			switch r.IntN(14) {
+			switch r.IntN(16) {
+			case 14:
+				list := append(b.weightCommands(), b.irrepCommands()...)
+				b.run(list[r.IntN(len(list))])
+			case 15:
+				b.tally.began = b.tally.began.Add(-time.Second)
+				b.tally.tick()
 			case 13:
 				b.turnStep(1 - 2*r.IntN(2))
 			case 9:
