@@ -147,7 +147,7 @@ func matrixText(m *mat.Dense) notation.Text {
 			if j > 0 {
 				text += "  "
 			}
-			text += shortCoefficientSigned(m.At(i, j))
+			text += weightText(m.At(i, j))
 		}
 	}
 	if n > 1 {
