@@ -65,11 +65,15 @@ type svgWriter struct {
 
 func (o *svgWriter) f(format string, args ...any) { fmt.Fprintf(o.w, format, args...) }
 
+// escaped writes a text between elements. There quotes and line ends may stand
+// as they are, and a study can be read by people.
 func escaped(s string) string {
 	var b strings.Builder
 	_ = xml.EscapeText(&b, []byte(s)) // memory takes everything
-	return strings.ReplaceAll(b.String(), "&#xA;", "\n")
+	return plainInText.Replace(b.String())
 }
+
+var plainInText = strings.NewReplacer("&#xA;", "\n", "&#34;", `"`, "&#39;", "'")
 
 // svgPaint is a colour as attributes, with a blank in front.
 func svgPaint(what string, c color.NRGBA) string {
