@@ -52,6 +52,14 @@ func (e *answerEntry) TypedKey(k *fyne.KeyEvent) {
 	}
 }
 
+// TappedSecondary implements fyne.SecondaryTappable. The toolkit (2.7.1) fails
+// on a nil pointer when the menu of an entry is asked for at the wrong moment;
+// then there is none.
+func (e *answerEntry) TappedSecondary(p *fyne.PointEvent) {
+	defer func() { _ = recover() }()
+	e.Entry.TappedSecondary(p)
+}
+
 // AcceptsTab implements fyne.Tabbable.
 func (e *answerEntry) AcceptsTab() bool { return e.tab != nil }
 

@@ -98,6 +98,12 @@ func (e *hintEntry) MouseMoved(*desktop.MouseEvent) {}
 // MouseOut implements desktop.Hoverable.
 func (e *hintEntry) MouseOut() { e.onHint("", fyne.Position{}) }
 
+// TappedSecondary implements fyne.SecondaryTappable. See answerEntry.
+func (e *hintEntry) TappedSecondary(p *fyne.PointEvent) {
+	defer func() { _ = recover() }()
+	e.Entry.TappedSecondary(p)
+}
+
 // TypedKey implements fyne.Focusable.
 func (e *hintEntry) TypedKey(k *fyne.KeyEvent) {
 	if k.Name == fyne.KeyF1 {

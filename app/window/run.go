@@ -38,6 +38,7 @@ func Run(ctx context.Context, o Options) (err error) {
 	log.SetOutput(said)
 	defer func() {
 		if fault := recover(); fault != nil {
+			trace()
 			// The toolkit panics where it finds no display.
 			err = fmt.Errorf("the window cannot be opened: %s", oneLine(fmt.Sprint(fault)))
 			if reason := said.reason(); reason != "" {
