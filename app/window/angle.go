@@ -147,7 +147,7 @@ func matrixText(m *mat.Dense) notation.Text {
 			if j > 0 {
 				text += "  "
 			}
-			text += weightText(m.At(i, j))
+			text += notation.Minus(notation.Short(m.At(i, j), 3)) // at any angle there is some long cosine
 		}
 	}
 	if n > 1 {
