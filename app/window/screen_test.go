@@ -235,6 +235,12 @@ func TestARealHandWorksInARealWindow(t *testing.T) {
 
 	r.click("basis Cl:sigma")
 	r.saved("the basis", func(s study.Study) bool { return len(s.Basis) == 1 && s.Basis[0] == "Cl:sigma" })
+	// The functions stand below what is seen of the pane.
+	r.mu.Lock()
+	above := r.spots["basis Cl:sigma"]
+	r.mu.Unlock()
+	r.do("mousemove", above[0], above[1], "click", "--repeat", 8, 5)
+	time.Sleep(500 * time.Millisecond)
 	r.click("function 2")
 	r.saved("the function", func(s study.Study) bool { return s.Projection.Function == 2 })
 	r.click("operation C4(z)")
@@ -245,7 +251,7 @@ func TestARealHandWorksInARealWindow(t *testing.T) {
 
 	// The last irrep stands below what is seen of the pane.
 	r.mu.Lock()
-	above := r.spots[orbitalName(0, 0, 0)]
+	above = r.spots[orbitalName(0, 0, 0)]
 	r.mu.Unlock()
 	r.do("mousemove", above[0], above[1], "click", "--repeat", 8, 5)
 	time.Sleep(500 * time.Millisecond)
