@@ -249,7 +249,8 @@ func (u *ui) figureCommands() []*command {
 		}}
 	}
 	ink := func() bool { return u.now().Look.Style == "ink" }
-	return []*command{
+	return append(u.sheetCommands(), []*command{
+		rule,
 		look("menu.ink", ink, func(s *study.Study) {
 			if s.Look.Style == "ink" {
 				s.Look.Style = ""
@@ -259,7 +260,7 @@ func (u *ui) figureCommands() []*command {
 		}),
 		look("menu.coloured", func() bool { return u.now().Look.Coloured }, func(s *study.Study) { s.Look.Coloured = !s.Look.Coloured }),
 		look("menu.labels", func() bool { return !u.now().Look.NoLabels }, func(s *study.Study) { s.Look.NoLabels = !s.Look.NoLabels }),
-	}
+	}...)
 }
 
 func (u *ui) helpCommands() []*command {

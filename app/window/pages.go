@@ -15,7 +15,8 @@ import (
 )
 
 // A page takes the place of the left pane while something about frames is
-// chosen. The picture stays beside it and follows.
+// chosen, or a figure is set. The picture, or the figure, stays beside it and
+// follows.
 type page int
 
 // The pages.
@@ -25,9 +26,11 @@ const (
 	ladderPage
 	secondPage
 	subgroupsPage
+	sheetPage
+	filmPage
 )
 
-// pages are the pages about frames with what they remember beside the study.
+// pages are the pages with what they remember beside the study.
 // They belong to the toolkit's goroutine.
 type pages struct {
 	u      *ui
@@ -44,6 +47,8 @@ type pages struct {
 
 	second    secondFrame
 	subgroups subgroups
+	preview   *preview
+	writing   writing
 	wanted    *wantedGroup // a subgroup that is to be used as soon as the ladder is known
 }
 
@@ -63,6 +68,7 @@ func (u *ui) newPages() {
 		return true
 	}
 	p.pane.Hide()
+	p.preview = newPreview(u)
 	p.search = work.NewSearch(u.work, u.post, func(n *work.Nearby) { u.guard(func() { p.found(n) }) })
 }
 
@@ -81,6 +87,7 @@ func (p *pages) turnTo(to page) {
 		p.u.given.Hide()
 		p.pane.Show()
 	}
+	p.preview.show(to == sheetPage)
 	p.changed()
 	p.u.win.Content().Refresh()
 	p.u.show(false)
@@ -171,6 +178,12 @@ func (u *ui) drawPage(b *board) {
 	case subgroupsPage:
 		d.title(say("frames.subgroupsTitle"))
 		d.allSubgroups()
+	case sheetPage:
+		d.title(say("figure.sheetTitle"))
+		d.sheetSettings()
+	case filmPage:
+		d.title(say("figure.filmTitle"))
+		d.filmSettings()
 	}
 	u.pages.pane.extent = d.y + pad + u.pages.pane.scroll
 }

@@ -20,6 +20,10 @@ func (u *ui) regionHelp() (title, text string) {
 		return "help.given", "help.givenText"
 	case u.atoms.pane:
 		return "help.atoms", "help.atomsText"
+	case u.pages.pane, u.pages.preview.pane:
+		if u.pages.open == sheetPage || u.pages.open == filmPage {
+			return "figure.help", "figure.helpText"
+		}
 	case u.follows:
 		return "help.follows", "help.followsText"
 	case u.detail:

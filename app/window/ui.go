@@ -187,7 +187,7 @@ func (u *ui) assemble() fyne.CanvasObject {
 	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane, u.pages.pane))
 	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
 	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
-		container.NewBorder(nil, nil, rule(), nil, right), container.NewBorder(nil, u.beside, nil, nil, u.steps.over(u.view)))
+		container.NewBorder(nil, nil, rule(), nil, right), container.NewBorder(nil, u.beside, nil, nil, u.steps.over(container.NewStack(u.view, u.pages.preview.pane))))
 	whole := container.NewBorder(nil, below, nil, nil, middle)
 	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
 }
@@ -276,6 +276,9 @@ func (u *ui) refreshPanes() {
 		u.atoms.pane.Update()
 	}
 	u.pages.pane.Update()
+	if u.pages.open == sheetPage {
+		u.pages.preview.pane.Update()
+	}
 	u.follows.Update()
 	u.detail.Update()
 	u.beside.Update()
@@ -461,6 +464,8 @@ func (u *ui) close() {
 	u.player.stop()
 	u.service.Close()
 	u.pages.search.Close()
+	u.pages.preview.close()
+	u.pages.writing.close()
 	u.view.frames.close()
 	u.thumbs.close()
 	p := u.session.Preferences()

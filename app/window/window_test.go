@@ -590,7 +590,7 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 		fyne.KeyPageUp, fyne.KeyPageDown, fyne.KeyEscape, fyne.KeyTab, fyne.KeyF5,
 	}
 	demos := []string{"square-plane", "water", "rod", "tetrahedron", "cyanide", "trimer"}
-	panes := []*pane{b.given, b.atoms.pane, b.steps.pane, b.pages.pane, b.follows, b.ledger, b.detail, b.said}
+	panes := []*pane{b.given, b.atoms.pane, b.steps.pane, b.pages.pane, b.pages.preview.pane, b.follows, b.ledger, b.detail, b.said}
 	at := func(s fyne.Size) fyne.Position { return fyne.NewPos(s.Width*r.Float32(), s.Height*r.Float32()) }
 	buttons := []desktop.MouseButton{desktop.MouseButtonPrimary, desktop.MouseButtonSecondary, desktop.MouseButtonTertiary}
 	for n := range events {
@@ -621,7 +621,9 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 		case 13:
 			v.TypedRune([]rune("+-fxyzXYZa.,nN0?éoo<>")[r.IntN(21)])
 		case 14:
-			switch r.IntN(16) {
+			switch r.IntN(17) {
+			case 16:
+				b.pages.turnTo(page(r.IntN(int(filmPage) + 1)))
 			case 14:
 				list := append(b.weightCommands(), b.irrepCommands()...)
 				b.run(list[r.IntN(len(list))])
