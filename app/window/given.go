@@ -4,6 +4,7 @@ package window
 
 import (
 	"math"
+	"regexp"
 	"slices"
 	"strconv"
 	"strings"
@@ -236,11 +237,17 @@ func (d *givenDrawing) tolerance() {
 	d.problem(work.ConcernTolerance)
 }
 
+// asides are remarks in brackets; those of the names of operations follow no
+// blank.
+var asides = regexp.MustCompile(` \([^()]*\)`)
+
 func (d *givenDrawing) frameOfAxes() {
 	fit := d.state.Group.Fit
 	d.heading(say("frames.heading"))
 	convention := notation.ConventionIn(texts(), fit, d.state.Group.CoreNames())
-	for _, clause := range strings.Split(convention, "; ") {
+	// How a rule settles ties stands on the page of the axes: here the functions
+	// below are to be in sight.
+	for _, clause := range strings.Split(asides.ReplaceAllString(convention, ""), "; ") {
 		if clause != "" {
 			d.line(notation.Sentence(clause), d.plain)
 		}
@@ -280,7 +287,7 @@ func (d *givenDrawing) frames() {
 		offer(name, say("frames.ruleHint", name, notation.SourceIn(texts(), f.Rule)), now && !byHand, func() { d.chooseFrame(name) })
 	}
 	offer(say("frames.byHand"), say("frames.byHandHint"), byHand, func() { d.pages.turnTo(axesPage) })
-	d.y += chipHeight + 10
+	d.y += chipHeight + 5
 	x = pad
 	offer(say("frames.toLadder"), say("frames.toLadderHint"), s.As != "", func() { d.pages.turnTo(ladderPage) })
 	offer(say("frames.toSecond"), say("frames.toSecondHint"), s.Held.Frame != "" || s.Held.Z != "" || s.Held.X != "", func() { d.pages.turnTo(secondPage) })
