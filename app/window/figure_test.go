@@ -76,6 +76,29 @@ func TestASheetIsPreviewedWhileItIsSet(t *testing.T) {
 	if b.previewed("the message") != nil || p.problem == "" {
 		t.Error("a descent without a subgroup is shown")
 	}
+	b.tap(b.pages.pane, "choose missing")
+	if b.pages.open != subgroupsPage || p.pane.Visible() {
+		t.Error("it does not lead to the page of subgroups")
+	}
+	s := b.now()
+	s.Subgroup = "C2v"
+	b.do(study.StepSubgroup, s)
+	if b.previewed("the descent") == nil || p.problem != "" {
+		t.Errorf("with a subgroup it says %q", p.problem)
+	}
+	// What is left out is said below.
+	b.tap(b.pages.pane, "kind all")
+	s = b.now()
+	s.Figure.Height = 45
+	b.do(study.StepFigure, s)
+	b.previewed("a low sheet")
+	said := false
+	for _, text := range textsOf(p.pane.lay()) {
+		said = said || len(p.made.Notes) == 1 && strings.Contains(p.made.Notes[0], text.words) && len(text.words) > 10
+	}
+	if !said {
+		t.Errorf("it does not say what is left out: %q, %q", p.problem, p.made.Notes)
+	}
 	press(b.pages.pane, fyne.KeyEscape)
 	if p.pane.Visible() || b.pages.open != noPage {
 		t.Error("Escape does not close the page")

@@ -68,6 +68,18 @@ func (u *ui) sheetCommands() []*command {
 	}
 }
 
+// cancelWriting names the spot that stops what is being written.
+const cancelWriting = "cancel writing"
+
+// handOver marks what has taken the place of the button that saves or cancels,
+// where the keyboard was on that.
+func (p *pages) handOver(name string) {
+	if slices.Contains([]string{"save sheet", "save film", cancelWriting}, p.pane.mark) {
+		p.pane.mark = name
+	}
+	p.pane.Update()
+}
+
 // saveRow is the button that saves, or how far it has come.
 func (d *pageDrawing) saveRow(name, hint string, ask func()) {
 	w := &d.pages.writing
@@ -76,7 +88,7 @@ func (d *pageDrawing) saveRow(name, hint string, ask func()) {
 		d.words(say("figure.writing", w.name), d.quiet)
 		d.y += 2
 		d.bar(w.share)
-		d.option(&x, "cancel writing", say("figure.cancel"), say("figure.cancelHint"), false, func() { w.stop() })
+		d.option(&x, cancelWriting, say("figure.cancel"), say("figure.cancelHint"), false, func() { w.stop() })
 		d.endChoices()
 		return
 	}
@@ -126,6 +138,7 @@ func (u *ui) askFigureFile(title, text, name string, endings []string, write fig
 		u.remark(say("figure.oneAtATime"))
 		return
 	}
+	u.hints.show("", fyne.Position{})
 	u.askNewPath(title, text, u.folder()+name, func(path string, done func(error)) {
 		ending := strings.ToLower(filepath.Ext(path))
 		if !slices.Contains(endings, ending) {
@@ -200,7 +213,7 @@ func (u *ui) startWriting(path string, force bool, write figureWriter) {
 		}()
 		u.post(func() { u.guard(func() { u.written(path, err, write) }) })
 	}()
-	u.pages.pane.Update()
+	u.pages.handOver(cancelWriting)
 }
 
 // written takes news of a file.
@@ -222,7 +235,11 @@ func (u *ui) written(path string, err error, write figureWriter) {
 	if u.pages.open == noPage && w.said != "" && !u.closing {
 		u.remark(w.said)
 	}
-	u.pages.pane.Update()
+	save := "save sheet"
+	if u.pages.open == filmPage {
+		save = "save film"
+	}
+	u.pages.handOver(save)
 }
 
 // writeFilm writes an animation; it is a figureWriter.

@@ -75,6 +75,10 @@ func (u *ui) newPages() {
 // turnTo opens a page, or closes the one that is open.
 func (p *pages) turnTo(to page) {
 	p.scroll[p.open] = p.pane.scroll
+	if to != p.open && !p.writing.running {
+		p.writing.said = ""
+	}
+	p.u.hints.show("", fyne.Position{})
 	p.open = to
 	p.pane.scroll, p.pane.mark, p.pane.hover = p.scroll[to], "", ""
 	if p.u.atoms.pane.Visible() {

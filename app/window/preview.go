@@ -138,7 +138,8 @@ func (p *preview) take(ctx context.Context, made *sheet.Sheet, img *image.RGBA, 
 	p.u.pages.pane.Update()
 }
 
-// make sets and paints a sheet as large as it fits its room.
+// make sets and paints a sheet as large as it fits its room. A very tall one
+// is scrolled: it would be too small to be read.
 func (p *preview) make(ctx context.Context, key previewKey) (made *sheet.Sheet, img *image.RGBA, err error) {
 	defer func() {
 		if fault := recover(); fault != nil {
@@ -154,9 +155,13 @@ func (p *preview) make(ctx context.Context, key previewKey) (made *sheet.Sheet, 
 		const sign = 6.2 // units a sign takes, about
 		lines += 1 + int(sign*float64(len(n))*key.scale/float64(key.width))
 	}
-	const inch = 25.4
-	height := max(float64(key.height)-float64(lines)*previewLine*key.scale, 0.4*float64(key.height))
-	dpi := min(float64(key.width)/made.Width, height/made.Height) * inch
+	height := float64(key.height)
+	if lines > 0 {
+		height = max(height-(float64(lines)*previewLine+pad)*key.scale, 0.4*height)
+	}
+	const inch, narrowest = 25.4, 0.4 // narrowest: of the room's width
+	wide := float64(key.width) / made.Width
+	dpi := max(min(wide, height/made.Height), narrowest*wide) * inch
 	img, err = made.Paint(ctx, dpi)
 	if err != nil {
 		return nil, nil, err
@@ -202,7 +207,11 @@ func (p *preview) draw(b *board) {
 	case p.running:
 		text, s = say("figure.makingAnew"), accent
 	case p.problem != "":
-		y := b.paragraph(pad, top+pad+textSize, b.width-2*pad, words(say("figure.problem", p.problem)), accent)
+		text = say("figure.problem", p.problem)
+		if why, _ := p.u.lacking(); why != "" {
+			text = why
+		}
+		y := b.paragraph(pad, top+pad+textSize, b.width-2*pad, words(text), accent)
 		p.pane.extent = y - top
 		return
 	case p.made != nil:

@@ -123,6 +123,15 @@ func (d *pageDrawing) sheetSettings() {
 		})
 	}
 	d.endChoices()
+	if why, where := d.lacking(); why != "" {
+		d.words(why, d.accent)
+		d.y += 2
+		if where != noPage {
+			x = pad
+			d.option(&x, "choose missing", say("figure.choose"), say("figure.chooseHint"), false, func() { d.pages.turnTo(where) })
+			d.endChoices()
+		}
+	}
 
 	d.label(say("figure.size"))
 	x = pad
@@ -192,6 +201,24 @@ func (d *pageDrawing) lookSettings(l study.Look) {
 	d.options("look", styleOptions, l.Style, func(w string) { d.setLook(func(l *study.Look) { l.Style = w }) })
 	d.label(say("figure.ground"))
 	d.options("ground", groundOptions, l.Ground, func(w string) { d.setLook(func(l *study.Look) { l.Ground = w }) })
+}
+
+// lacking says what must be chosen before a sheet of the kind at hand can be
+// set, and on which page; empty if nothing lacks.
+func (u *ui) lacking() (why string, where page) {
+	s := u.now()
+	kind := sheet.Kind(s)
+	switch {
+	case len(s.Basis) == 0 && kind != sheet.Molecule && kind != sheet.Frames && kind != sheet.Descent:
+		return say("figure.lacksFunctions"), noPage
+	case (kind == sheet.One || kind == sheet.Set) && s.Projection.Irrep == "":
+		return say("figure.lacksOrbital"), noPage
+	case kind == sheet.Frames && s.Held.Frame == "" && s.Held.Z == "" && s.Held.X == "":
+		return say("figure.lacksFrame"), secondPage
+	case kind == sheet.Descent && s.Subgroup == "":
+		return say("figure.lacksSubgroup"), subgroupsPage
+	}
+	return "", noPage
 }
 
 // kindKey is the key of the name of a kind.
