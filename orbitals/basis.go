@@ -33,8 +33,8 @@ type Function struct {
 	// Vector has the 2l+1 components along the functions of the shell, in
 	// the order of FunctionNames, in the working frame. Its length is 1.
 	Vector []float64
-	// Name is one of FunctionNames, "sigma", "pi1" or "pi2"; where a planar
-	// structure lies askew in its frame also "pi-in" or "pi-out".
+	// Name is one of FunctionNames, "sigma", "pi1", "pi2", or in a planar
+	// structure "pi-in", "pi-out".
 	Name string
 	Kind Kind
 	// Direction is where the positive lobe of a p function named relative

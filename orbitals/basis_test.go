@@ -43,10 +43,10 @@ func TestFunctionsStandInTheOrderOfTheChoice(t *testing.T) {
 		{[]string{"F:pz,s"}, "2pz 3pz 4pz 5pz 2s 3s 4s 5s"},
 		{[]string{"Xe:dz2", "F:sigma"}, "1dz2 2sigma 3sigma 4sigma 5sigma"},
 		{[]string{"F:pi"}, "2pi1 2pi2 3pi1 3pi2 4pi1 4pi2 5pi1 5pi2"},
-		{[]string{"F:pi-in"}, "2pi1 3pi1 4pi1 5pi1"},
-		{[]string{"F:pi-out"}, "2pi2 3pi2 4pi2 5pi2"},
+		{[]string{"F:pi-in"}, "2pi-in 3pi-in 4pi-in 5pi-in"},
+		{[]string{"F:pi-out"}, "2pi-out 3pi-out 4pi-out 5pi-out"},
 		{[]string{"F:pi2,pi1"}, "2pi2 3pi2 4pi2 5pi2 2pi1 3pi1 4pi1 5pi1"},
-		{[]string{"F:pi-in", "F:pi"}, "2pi1 3pi1 4pi1 5pi1 2pi2 3pi2 4pi2 5pi2"},
+		{[]string{"F:pi-in", "F:pi"}, "2pi-in 3pi-in 4pi-in 5pi-in 2pi2 3pi2 4pi2 5pi2"},
 		{[]string{"1:px"}, "1px 1py"},
 		{[]string{"Xe:dxz,dxy"}, "1dxz 1dyz 1dxy"},
 		{[]string{"2:px"}, "2px 3py 4px 5py"}, // all that the operations need
@@ -305,8 +305,11 @@ func TestPiInAndOutOfThePlane(t *testing.T) {
 			if along == 0 && math.Abs(out-1) > 1e-12 || along == 1 && out > 1e-12 {
 				t.Errorf("%s on atom %d points along %v", choice, f.Site+1, f.Direction)
 			}
-			if (f.Name == "pi1") != (along == 0) {
+			if "F:"+f.Name != choice {
 				t.Errorf("%s is %s", choice, f.Name)
+			}
+			if along == 0 && f.Direction[0] < 0 {
+				t.Errorf("%s on atom %d lies on the other side of the plane", choice, f.Site+1)
 			}
 		}
 	}
@@ -318,7 +321,7 @@ func TestPiInAndOutOfThePlane(t *testing.T) {
 			t.Errorf("%v", err)
 		}
 	}
-	// A plane askew in its frame: in and out get names of their own.
+	// A plane askew in its frame.
 	u := mgl64.Vec3{1, 2, -3}.Normalize()
 	v := u.Cross(mgl64.Vec3{0, 0, 1}).Normalize()
 	askew := sitesAt(t, "C1", fluorine, []mgl64.Vec3{u.Add(v.Mul(0.5)), v, u.Add(v).Mul(-0.7)})

@@ -242,8 +242,8 @@ func (b *builder) around(name string, k int, r mgl64.Vec3) ([]candidate, error) 
 		}
 		return []candidate{directed(k, nameSigma, KindSigma, r.Mul(-1), true)}, nil
 	}
-	pi1, pi2 := piDirections(r)
 	if name != namePiIn && name != namePiOut {
+		pi1, pi2 := piDirections(r)
 		return []candidate{
 			directed(k, namePi1, KindPi, pi1, name != namePi2),
 			directed(k, namePi2, KindPi, pi2, name != namePi1),
@@ -256,18 +256,11 @@ func (b *builder) around(name string, k int, r mgl64.Vec3) ([]candidate, error) 
 	if math.Abs(normal.Dot(r.Normalize())) > same {
 		return nil, fmt.Errorf("%s on %s: the atom or its centre lies outside the plane of the structure; choose pi, or a centre in the plane", name, b.atom(k))
 	}
-	out := name == namePiOut
-	switch {
-	case math.Abs(pi1.Dot(normal)) > 1-same:
-		return []candidate{directed(k, namePi1, KindPi, pi1, out), directed(k, namePi2, KindPi, pi2, !out)}, nil
-	case math.Abs(pi2.Dot(normal)) > 1-same:
-		return []candidate{directed(k, namePi1, KindPi, pi1, !out), directed(k, namePi2, KindPi, pi2, out)}, nil
-	default: // a plane askew in the frame
-		return []candidate{
-			directed(k, namePiIn, KindPi, normal.Cross(r), !out),
-			directed(k, namePiOut, KindPi, normal, out),
-		}, nil
-	}
+	// All on one side of the plane, so that equal signs are one lobe.
+	return []candidate{
+		directed(k, namePiIn, KindPi, normal.Cross(r), name == namePiIn),
+		directed(k, namePiOut, KindPi, normal, name == namePiOut),
+	}, nil
 }
 
 // directed is a p function with its positive lobe along a direction.

@@ -3,6 +3,7 @@ package symmetry
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 	"testing"
 
@@ -169,6 +170,31 @@ func TestPartnersAreKeptWhereTheAxesCoincide(t *testing.T) {
 				}
 			}
 		}
+	}
+}
+
+// On paper: the plane of C3v along the direction at 120° keeps (−1/2, √3/2) of
+// the partners x, y of E and turns (√3/2, 1/2) round. Each is written with its
+// largest coefficient positive, though the projection of x on the first is a
+// positive multiple of (1/2, −√3/2).
+func TestThePartnersOfASubgroupHaveTheirLargestCoefficientPositive(t *testing.T) {
+	s := mustNew(t, "C3v")
+	h := math.Sqrt(3) / 2
+	plane := s.find(func(o Operation) bool {
+		m := o.Matrix
+		return m.Det() < 0 && math.Abs(m.At(0, 0)+0.5) < 1e-9 && math.Abs(m.At(0, 1)+h) < 1e-9
+	})
+	d, err := s.Descend([]int{0, plane})
+	if err != nil {
+		t.Fatal(err)
+	}
+	e := slices.IndexFunc(s.Irreps, func(ir Irrep) bool { return ir.Label == "E" })
+	if got := spell(d.Correlation[e]); got != "A' A''" {
+		t.Fatalf("E goes over into %s", got)
+	}
+	want := mat.NewDense(2, 2, []float64{-0.5, h, h, 0.5})
+	if !mat.EqualApprox(d.Partners[e], want, 1e-12) {
+		t.Errorf("the partners are %v, not %v", mat.Formatted(d.Partners[e]), mat.Formatted(want))
 	}
 }
 

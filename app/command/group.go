@@ -124,8 +124,11 @@ func headText(g *work.Group) string {
 	if n := len(g.Core); n < len(g.Molecule.Atoms) {
 		fmt.Fprintf(&b, "Core         %s (%s)\n", numbers(fromOne(g.Core)), count(n, "atom"))
 	}
-	fmt.Fprintf(&b, "Deviation    %s Å at the most (atom %d; tolerance %s Å)\n",
-		notation.Decimal(fit.Deviation, 4), g.Core[fit.Worst]+1, trimmed(fit.Tolerance))
+	if far := notation.Decimal(fit.Deviation, 4); g.As != "" {
+		fmt.Fprintf(&b, "Deviation    as %s, atoms moved by up to %s Å (atom %d)\n", g.As, far, g.Core[fit.Worst]+1)
+	} else {
+		fmt.Fprintf(&b, "Deviation    %s Å at the most (atom %d; tolerance %s Å)\n", far, g.Core[fit.Worst]+1, trimmed(fit.Tolerance))
+	}
 	if fit.Doubtful {
 		b.WriteString("Doubtful     another group would be found within a factor of three of the tolerance\n")
 	}

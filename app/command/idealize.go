@@ -2,6 +2,7 @@ package command
 
 import (
 	"io"
+	"math"
 
 	"github.com/spf13/cobra"
 
@@ -65,7 +66,14 @@ func idealized(g *work.Group, inputAxes bool) *structure.Molecule {
 		if inputAxes {
 			v = back.Mul3x1(v).Add(g.Fit.Origin)
 		}
+		for k := range v {
+			v[k] = math.Round(v[k]*writtenParts)/writtenParts + 0 // no −0
+		}
 		m.Atoms = append(m.Atoms, structure.Atom{Element: g.Molecule.Atoms[i].Element, Position: v})
 	}
 	return m
 }
+
+// writtenParts (1/Å) is the last place of the coordinates that are written: the
+// group is exact to 1e-8 Å.
+const writtenParts = 1e8

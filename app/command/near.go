@@ -6,6 +6,7 @@ import (
 	"io"
 	"os"
 	"runtime"
+	"slices"
 	"strings"
 	"sync"
 	"time"
@@ -60,7 +61,7 @@ the second. idealize writes the ideal structure.
 	}
 	coreFlags(cmd.Flags(), &s)
 	jsonFlag(cmd.Flags(), &asJSON)
-	cmd.Flags().BoolVar(&all, "all", false, "list every embedding; else only the nearest of each group is resolved by symmetry")
+	cmd.Flags().BoolVar(&all, "all", false, "list every embedding, and the subgroups of the group that the structure has")
 	return cmd
 }
 
@@ -121,12 +122,29 @@ func ladderText(ctx context.Context, l *work.Ladder, all bool) (string, error) {
 	if n := len(l.Core); n < len(l.Molecule.Atoms) {
 		fmt.Fprintf(&b, "Core         %s (%s)\n", numbers(fromOne(l.Core)), count(n, "atom"))
 	}
-	show := func(i int) bool { return all || l.Groups[i].Embedding == 1 }
+	largest, below := l.Within()
+	var folded []string // the subgroups of what it has
+	for i, n := range l.Groups {
+		if symbol := n.Fit.Setting.Symbol; below[i] && !slices.Contains(folded, symbol) {
+			folded = append(folded, symbol)
+		}
+	}
+	shown := map[string]bool{}
+	lines := make([]bool, len(l.Groups))
+	for i, n := range l.Groups {
+		symbol := n.Fit.Setting.Symbol
+		lines[i] = all || !below[i] && !shown[symbol]
+		shown[symbol] = shown[symbol] || lines[i]
+	}
+	show := func(i int) bool { return lines[i] }
 	shares, err := distortions(ctx, l, show)
 	if err != nil {
 		return "", err
 	}
 	b.WriteString("\nGroups within 1 Å\n" + table.Ladder(l, shares, show).Text())
+	if folded != nil && !all {
+		fmt.Fprintf(&b, "\nWith %s it has the subgroups %s (--all lists them).\n", l.Groups[largest].Fit.Setting.Symbol, strings.Join(folded, " "))
+	}
 	if l.Linear() != nil {
 		b.WriteString("\nA linear molecule can be taken for any finite group with the same z (--as C2v); descend --to\ntells what its irreps become there.\n")
 	}

@@ -132,7 +132,7 @@ func TestAStructureIsTakenForAGroupThatItNearlyHas(t *testing.T) {
 		}
 		var g contractGroup
 		runJSON(t, &g, "group", "ideal.xyz", "--core", "1-7", "--tolerance", "1e-6")
-		if g.PointGroup != "D4h" || g.Deviation > 1e-9 {
+		if g.PointGroup != "D4h" || g.Deviation > 1e-7 {
 			t.Errorf("the ideal structure has %s, deviation %g", g.PointGroup, g.Deviation)
 		}
 		if axes == "" && farthest(g.Frame.Rotation, identity(3)) > 1e-6 {

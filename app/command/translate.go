@@ -2,6 +2,7 @@ package command
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 	"unicode"
 	"unicode/utf8"
@@ -44,6 +45,9 @@ func parseLevels(text string) ([]level, error) {
 			label := notation.PlainLabel(strings.TrimSpace(piece[len(digits):]))
 			if label == "" {
 				return nil, usagef("--translate: %q holds no label", piece)
+			}
+			if strings.ContainsAny(label, " \t") {
+				return nil, usagef("--translate: %q: commas are needed between labels, such as \"2 a1, 1 b1\"", piece)
 			}
 			out = append(out, level{digits, label})
 		}
@@ -113,19 +117,28 @@ func translated(g *work.Group, text, from string) (*translation, error) {
 func (t *translation) rename(list []work.Renaming, symbol string) error {
 	for _, l := range t.given {
 		found := false
-		var labels []string
+		var labels, order []string
 		for _, r := range list {
 			labels = append(labels, r.There)
+			order = append(order, r.Here)
 			if sameLabel(r.There, l.label) && !found {
 				t.here = append(t.here, level{l.number, asTyped(r.Here, l.label)})
 				found = true
 			}
 		}
 		if !found {
+			if sameSet(labels, order) {
+				labels = order // as they stand in the group's table
+			}
 			return fmt.Errorf("%s has no irrep %q by %s: it has %s", symbol, l.label, t.from, strings.Join(labels, " "))
 		}
 	}
 	return nil
+}
+
+// sameSet tells whether two lists hold the same labels, in any order.
+func sameSet(a, b []string) bool {
+	return slices.Equal(slices.Sorted(slices.Values(a)), slices.Sorted(slices.Values(b)))
 }
 
 // lift looks for the irreps of the full group in every embedding of a subgroup.

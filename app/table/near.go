@@ -3,6 +3,7 @@ package table
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"lobewright/app/notation"
 	"lobewright/app/work"
@@ -12,13 +13,24 @@ import (
 // with the distortion from each. shares has one list a group.
 func Ladder(l *work.Ladder, shares [][]work.Share, show func(i int) bool) Table {
 	t := Table{
-		Head:  []string{"group", "", "deviation Å", "measure", "axis in the input", "distortion by irrep, Å"},
-		Align: []Align{Left, Right, Right, Right},
+		Head:  []string{"group", "", "distortion by irrep, Å", "atom moves Å", "measure", "z in the input"},
+		Align: []Align{Left, Left, Left, Right, Right, Right},
+	}
+	degenerate := false
+	for i := range l.Groups {
+		if show(i) {
+			_, partners := Distortion(shares[i])
+			degenerate = degenerate || partners != ""
+		}
+	}
+	if degenerate {
+		t.Head = append(t.Head, "by partner, Å")
 	}
 	embeddings := map[string]int{}
 	for _, n := range l.Groups {
 		embeddings[n.Fit.Setting.Symbol]++
 	}
+	largest, below := l.Within()
 	for i, n := range l.Groups {
 		if !show(i) {
 			continue
@@ -28,7 +40,18 @@ func Ladder(l *work.Ladder, shares [][]work.Share, show func(i int) bool) Table 
 		if all := embeddings[symbol]; all > 1 {
 			which = fmt.Sprintf("%d of %d", n.Embedding, all)
 		}
-		t.Add(symbol, which, notation.Decimal(n.Fit.Deviation, 4), notation.Decimal(n.Measure, 4), notation.Vector(n.Axis[:], 3), Distortion(shares[i]))
+		if below[i] {
+			which = strings.TrimSpace(which + "  in " + l.Groups[largest].Fit.Setting.Symbol)
+		}
+		distortion, partners := Distortion(shares[i])
+		if distortion == "" {
+			distortion = "none"
+		}
+		row := []string{symbol, which, distortion, notation.Decimal(n.Fit.Deviation, 4), notation.Decimal(n.Measure, 4), notation.Vector(n.Axis[:], 3)}
+		if degenerate {
+			row = append(row, partners)
+		}
+		t.Add(row...)
 	}
 	return t
 }
@@ -37,9 +60,9 @@ func Ladder(l *work.Ladder, shares [][]work.Share, show func(i int) bool) Table 
 const leastShown = 5e-5
 
 // Distortion writes the shares of a distortion: for each irrep, all copies
-// together, the square root of the sum of the squares, with the partners of a
-// degenerate one in brackets.
-func Distortion(shares []work.Share) string {
+// together, the square root of the sum of the squares; and for each degenerate
+// one the same for its single partners.
+func Distortion(shares []work.Share) (byIrrep, byPartner string) {
 	var order []string
 	squares := map[string][]float64{} // by partner
 	for _, s := range shares {
@@ -51,27 +74,21 @@ func Distortion(shares []work.Share) string {
 		}
 		squares[s.Irrep][s.Partner] += s.Amount * s.Amount
 	}
-	text := ""
+	var irreps, partners []string
 	for _, label := range order {
 		sum := 0.0
-		partners := ""
+		var parts []string
 		for _, q := range squares[label] {
 			sum += q
-			if partners != "" {
-				partners += ", "
-			}
-			partners += notation.Decimal(math.Sqrt(q), 4)
+			parts = append(parts, notation.Decimal(math.Sqrt(q), 4))
 		}
 		if math.Sqrt(sum) < leastShown {
 			continue
 		}
-		if text != "" {
-			text += "  "
-		}
-		text += notation.Orbital(label) + " " + notation.Decimal(math.Sqrt(sum), 4)
-		if len(squares[label]) > 1 {
-			text += " (" + partners + ")"
+		irreps = append(irreps, notation.Orbital(label)+" "+notation.Decimal(math.Sqrt(sum), 4))
+		if len(parts) > 1 {
+			partners = append(partners, notation.Orbital(label)+" "+strings.Join(parts, ", "))
 		}
 	}
-	return text
+	return strings.Join(irreps, "  "), strings.Join(partners, "  ")
 }

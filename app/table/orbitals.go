@@ -43,10 +43,10 @@ func FunctionName(b *work.Basis, f orbitals.Function) string {
 }
 
 // Basis lists the functions with their atoms, where those that have one
-// point, and their orbits.
+// point, and the set of those that the operations carry into each other.
 func Basis(b *work.Basis) Table {
 	t := Table{
-		Head:  []string{"", "atom", "function", "orbit", "positive lobe"},
+		Head:  []string{"", "atom", "function", "set", "positive lobe"},
 		Align: []Align{Left, Right, Left, Right, Left},
 	}
 	pointed := false

@@ -28,7 +28,8 @@ func holds(larger *symmetry.Nearness, fit *symmetry.Fit) []int {
 	for r, o := range fit.Setting.Operations {
 		at := -1
 		for q, p := range big.Operations {
-			if p.Turn.Improper == o.Turn.Improper && slices.Equal(larger.Fit.Permutations[q], fit.Permutations[r]) {
+			// A plane and the inversion may carry the points alike, too.
+			if p.Turn.Improper == o.Turn.Improper && math.Abs(p.Matrix.Trace()-o.Matrix.Trace()) < 1e-6 && slices.Equal(larger.Fit.Permutations[q], fit.Permutations[r]) {
 				at = q
 				break
 			}

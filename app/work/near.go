@@ -188,6 +188,29 @@ func (l *Ladder) Find(text string) (*symmetry.Nearness, error) {
 	return nil, fmt.Errorf("the structure is not within %g Å of %s: it is of %s", symmetry.DefaultNearness, symbol, strings.Join(symbols, " "))
 }
 
+// Within finds the largest group that the structure has within the usual
+// tolerance (the nearest of several) and marks those of the ladder that are its
+// subgroups: these say nothing new.
+func (l *Ladder) Within() (largest int, below []bool) {
+	below = make([]bool, len(l.Groups))
+	largest = -1
+	for i, n := range l.Groups {
+		if n.Fit.Deviation > symmetry.DefaultTolerance || n.Fit.Setting.Infinite() {
+			continue
+		}
+		if largest < 0 || n.Fit.Setting.Order() > l.Groups[largest].Fit.Setting.Order() {
+			largest = i
+		}
+	}
+	if largest < 0 {
+		return largest, below
+	}
+	for i, n := range l.Groups {
+		below[i] = i != largest && !n.Fit.Setting.Infinite() && holds(l.Groups[largest], n.Fit) != nil
+	}
+	return largest, below
+}
+
 // Linear is the fit of a linear molecule, whose ladder is its one entry; else
 // nil.
 func (l *Ladder) Linear() *symmetry.Fit {

@@ -70,6 +70,8 @@ type Group struct {
 	// Sites holds every atom in the working frame, and where the operations
 	// carry it.
 	Sites *orbitals.Sites
+	// As is the group that the structure is taken for, if one was chosen: "D4h".
+	As string
 	// Linear is C∞v or D∞h where a linear molecule is taken for a finite group.
 	Linear string
 
@@ -203,6 +205,9 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, ladder *Ladder, s s
 			return nil, blame(StageGroup, ConcernStructure, err)
 		}
 		g := &Group{Structure: read, Core: core, Fit: fit, Sites: sites, base: base}
+		if ladder != nil {
+			g.As = fit.Setting.Symbol
+		}
 		if ladder != nil && !fit.Setting.Infinite() && ladder.Linear() != nil {
 			g.Linear = ladder.Linear().Setting.Symbol
 		}

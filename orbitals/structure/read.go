@@ -221,6 +221,13 @@ func (p *parser) element(text string) (Element, error) {
 		}
 		return e, nil
 	}
+	if head := strings.TrimRight(text, "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ'"); head != text {
+		symbol := strings.TrimRight(head, "0123456789")
+		if _, ok := ElementOf(symbol); ok && symbol != head {
+			return 0, p.in.fail(UnknownElement, p.in.number, "write "+head+" or "+symbol,
+				"unknown element %s: letters after the number are not read", found(text))
+		}
+	}
 	return 0, p.in.fail(UnknownElement, p.in.number, "write a symbol such as Fe, or an atomic number from 1 to 118",
 		"unknown element %s", found(text))
 }

@@ -125,6 +125,7 @@ func TestReadNamesWhatIsWrongAndWhere(t *testing.T) {
 		{"no count", "O 0 0 0\n", `test.xyz:1: expected the number of atoms, found "O 0 0 0"; line 1 must hold the number of atoms, line 2 a title`},
 		{"no count, atomic numbers", "8 0 0 0\n", `test.xyz:1: expected the number of atoms, found "8 0 0 0"; line 1 must hold the number of atoms, line 2 a title`},
 		{"count zero", "0\n\n", `test.xyz:1: the number of atoms is 0, it must be from 1 to 20,000; line 1 must hold the number of atoms, line 2 a title`},
+		{"letters after the number", "1\n\nH1a 0 0 0\n", `test.xyz:3: unknown element "H1a": letters after the number are not read; write H1 or H`},
 		{"count negative", "-3\n\n", `test.xyz:1: the number of atoms is -3, it must be from 1 to 20,000; line 1 must hold the number of atoms, line 2 a title`},
 		{"count broken", "3.5\n\n", `test.xyz:1: expected the number of atoms, found "3.5"; line 1 must hold the number of atoms, line 2 a title`},
 		{"count large", "1000000\n\n", `test.xyz:1: 1000000 atoms are too many; a structure may have up to 20,000`},
