@@ -160,14 +160,17 @@ func (m *maker) plan(g grid, width float64, columns int, packed, forms bool) (p 
 			p.apart = p.apart || len(c.which) > 0 && m.captionHead(c, p, "m").w > p.width
 		}
 	}
+	n := 0
 	for _, line := range p.lines {
 		head, foot := 0.0, 0.0
 		for _, s := range line {
 			c := g.rows[s.row].cells[s.cell]
 			caption, fits := m.caption(c, p, "z")
-			if !fits {
+			_, own := m.caption(c, p, letterOf(n)) // "m" and "aa" are wider
+			if !fits || !own {
 				return p, false
 			}
+			n++
 			foot = max(foot, caption.h)
 			if g.headed {
 				head = m.quiet().line() + headGap

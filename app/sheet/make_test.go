@@ -298,6 +298,21 @@ func TestASheetOfAllHasARowForEachIrrepAndAColumnForEachPartner(t *testing.T) {
 	}
 }
 
+func TestEveryPanelOfALargeSheetHasItsLetter(t *testing.T) {
+	s := sheetOf(t, study.Study{Structure: "demo:cage", Basis: []string{"C:s"}})
+	text := map[string]bool{}
+	for _, item := range s.Items {
+		if t, ok := item.(Text); ok && len(t.Runs) > 0 {
+			text[t.Runs[0].Text] = true
+		}
+	}
+	for n := range 60 {
+		if letter := letterOf(n); !text[letter] {
+			t.Errorf("the letter %s is missing", letter)
+		}
+	}
+}
+
 func TestAStripHasAPanelForEachOperationByClass(t *testing.T) {
 	s := study.Study{Structure: "demo:octahedron", Basis: []string{"C:sigma"}, Figure: study.Figure{Sheet: Operations, Width: 180}}
 	g, err := newWork().Group(t.Context(), s)
