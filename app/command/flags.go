@@ -2,6 +2,7 @@ package command
 
 import (
 	"math"
+	"slices"
 	"strconv"
 	"strings"
 
@@ -190,8 +191,9 @@ type wordError struct{ words []string }
 func (w wordError) Error() string { return "must be " + w.list() }
 
 func (w wordError) list() string {
-	last := len(w.words) - 1
-	return strings.Join(w.words[:last], ", ") + " or " + w.words[last]
+	words := slices.DeleteFunc(slices.Clone(w.words), func(s string) bool { return s == "" })
+	last := len(words) - 1
+	return strings.Join(words[:last], ", ") + " or " + words[last]
 }
 
 type flagError string

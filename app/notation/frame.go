@@ -104,6 +104,9 @@ func axisRules(t assets.Texts, fit *symmetry.Fit, whole bool) (z, x string) {
 		x = t.Say("axes.xPlanarNormal")
 	case symmetry.XYZMostAtoms:
 		x = t.Say("axes.yzMost") + rest(t.Say("axes.thenBonds"))
+		if planesHoldAlike(fit) {
+			x = t.Say("axes.xzHeavier") + rest(t.Say("axes.unlessBonds"))
+		}
 	case symmetry.XFirstOrbit:
 		x = t.Say("axes.xzFirst")
 	case symmetry.XSmallerMoment:
@@ -116,6 +119,9 @@ func axisRules(t assets.Texts, fit *symmetry.Fit, whole bool) (z, x string) {
 		x = t.Say("axes.xFree")
 	case symmetry.XPlaneXZ:
 		x = t.Say("axes.xzMost") + rest(t.Say("axes.thenBonds"))
+		if planesHoldAlike(fit) {
+			x = t.Say("axes.yzHeavier") + rest(t.Say("axes.unlessBonds"))
+		}
 	case symmetry.XBetween:
 		x = t.Say("axes.xBetween") + rest(betweenWhat(t, fit.Setting))
 	case symmetry.XC2OnY:
@@ -143,6 +149,23 @@ func axisRules(t assets.Texts, fit *symmetry.Fit, whole bool) (z, x string) {
 		x = fit.Rule.X
 	}
 	return z, x
+}
+
+// planesHoldAlike tells whether xz and yz hold equally many atoms off z, so that
+// their number decided nothing.
+func planesHoldAlike(fit *symmetry.Fit) bool {
+	counts := [2]int{}
+	for _, p := range fit.Ideal {
+		if isAlong(p, 2) || p.Len() < 1e-6 {
+			continue
+		}
+		for axis := range counts {
+			if isSquareTo(p, axis) {
+				counts[axis]++
+			}
+		}
+	}
+	return counts[0] == counts[1]
 }
 
 // alongC2 says by what the C2 square to z that x lies along was chosen: by

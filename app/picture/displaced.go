@@ -13,10 +13,10 @@ import (
 // where it is in the input.
 const (
 	leastDisplaced = 5e-4 // Å, of the longest: less is nothing to show
-	arrowLength    = 0.3  // Å, of the longest at the least: shorter is not seen
-	arrowRadius    = 0.035
-	arrowHead      = 0.16
-	arrowHeadWide  = 0.09
+	arrowLength    = 0.7  // Å, of the longest at the least: shorter is not seen
+	arrowRadius    = 0.06 // Å, more than of a bond, along which many arrows lie
+	arrowHead      = 0.22
+	arrowHeadWide  = 0.13
 	leastArrow     = 0.06 // Å, of any arrow: the smaller ones are left out
 )
 

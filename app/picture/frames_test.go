@@ -47,7 +47,7 @@ func TestArrowsShowTheDisplacementsByTheStatedFactor(t *testing.T) {
 	factor, longest := DisplacementScale(g)
 	// The mean distance is 2.1 Å: the two atoms on z lie 0.2 Å further out, the
 	// others 0.1 Å further in.
-	if math.Abs(longest-0.2) > 1e-3 || factor != 2 {
+	if math.Abs(longest-0.2) > 1e-3 || factor != 5 {
 		t.Fatalf("the longest displacement is %v Å, drawn %v times", longest, factor)
 	}
 	f, err := new(Live).Frame(Shown{Group: g, Look: study.Look{Displacements: true}}, BestOrbit(g, nil), 400, 400, 96, false)

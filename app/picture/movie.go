@@ -257,7 +257,7 @@ func functionsText(p *work.Play, terms []orbitals.Term, named bool) notation.Tex
 // orbitalBecomes sets a group orbital and its image: the label where there is
 // one partner, else the partners by number.
 func orbitalBecomes(p *work.Play) notation.Text {
-	label := notation.OrbitalText(p.Group.Fit.Setting.Irreps[p.Orbital.Irrep].Label)
+	label := notation.OrbitalText(p.Irrep.Label)
 	rows, _ := p.Matrix.Dims()
 	partner := func(number string) notation.Text {
 		if rows == 1 {

@@ -187,3 +187,18 @@ func TestAMovieThatIsTooSmallIsRefused(t *testing.T) {
 		t.Error(err)
 	}
 }
+
+func TestAPartnerOfALinearMoleculeHasACaption(t *testing.T) {
+	w := work.New(structure.Inputs{Demo: assets.Demos()})
+	for _, operation := range []string{"C(φ)", "σv(φ)"} {
+		s := study.Study{Structure: "demo:cyanide", Basis: []string{"N:p"}, Operation: operation, Angle: 90,
+			Projection: study.Projection{Irrep: "Π", Copy: 1, Partner: 1, Subject: study.SubjectOrbital}}
+		p, err := w.Play(context.Background(), s)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if text := orbitalBecomes(p).String(); !strings.HasPrefix(text, "π(1) → ") {
+			t.Errorf("%s: %s", operation, text)
+		}
+	}
+}

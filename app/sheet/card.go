@@ -245,7 +245,7 @@ func displacementText(g *work.Group) notation.Text {
 	if factor == 0 {
 		return nil
 	}
-	times := ""
+	times := ", true to scale"
 	if factor != 1 {
 		times = fmt.Sprintf(" × %g", factor)
 	}

@@ -10,6 +10,7 @@ import (
 
 	"lobewright/app/study"
 	"lobewright/orbitals"
+	"lobewright/symmetry"
 )
 
 // A Play is an operation with what it makes of the chosen function or group
@@ -28,6 +29,8 @@ type Play struct {
 	Function int
 	// Orbital is the subject or nil.
 	Orbital *orbitals.GroupOrbital
+	// Irrep is that of Orbital.
+	Irrep symmetry.Irrep
 	// Start and Image are coefficients, one a function of the basis, before and
 	// after.
 	Start, Image []float64
@@ -163,6 +166,7 @@ func (w *Work) playOrbital(ctx context.Context, all *Orbitals, projection study.
 		return err
 	}
 	p.Subject, p.Basis, p.Orbital, p.Start = study.SubjectOrbital, all.Basis, orbital, orbital.Coefficients
+	p.Irrep = all.Irreps[orbital.Irrep]
 	if p.Image, err = apply(images, orbital.Coefficients); err != nil {
 		return err
 	}
