@@ -40,6 +40,9 @@ type spot struct {
 	x, y, width, height float64
 	// name tells spots apart when the pane is drawn anew.
 	name string
+	// from is where a spot begins to be seen that reaches under what does not
+	// scroll.
+	from float64
 	// hint is shown while the pointer rests there.
 	hint string
 	do   func()
@@ -211,12 +214,23 @@ func (b *board) fill(x, y, width, height float64, c color.NRGBA) {
 	}
 }
 
+// fillFrom fills what of a rectangle lies right of a place.
+func (b *board) fillFrom(from, x, y, width, height float64, c color.NRGBA) {
+	left := max(x, from)
+	b.fill(left, y, x+width-left, height, c)
+}
+
+// frameFrom draws what of the outline of a rectangle lies right of a place.
+func (b *board) frameFrom(from, x, y, width, height, thick float64, c color.NRGBA) {
+	b.fillFrom(from, x, y, width, thick, c)
+	b.fillFrom(from, x, y+height-thick, width, thick, c)
+	b.fillFrom(from, x, y+thick, thick, height-2*thick, c)
+	b.fillFrom(from, x+width-thick, y+thick, thick, height-2*thick, c)
+}
+
 // frame draws the outline of a rectangle, within it.
 func (b *board) frame(x, y, width, height, thick float64, c color.NRGBA) {
-	b.fill(x, y, width, thick, c)
-	b.fill(x, y+height-thick, width, thick, c)
-	b.fill(x, y+thick, thick, height-2*thick, c)
-	b.fill(x+width-thick, y+thick, thick, height-2*thick, c)
+	b.frameFrom(x, x, y, width, height, thick, c)
 }
 
 func (b *board) image(x, y float64, img *image.RGBA) {

@@ -17,8 +17,9 @@ import (
 // A command is something that a person can have done. Menus, shortcuts and the
 // list of all commands are made from the same commands.
 type command struct {
-	key  string // of its text
-	more []any  // arguments of the text
+	key  string        // of its text
+	more []any         // arguments of the text
+	also func() string // other words that it is found by
 	do   func()
 
 	// A combination of keys, which works everywhere; key names without a
@@ -157,7 +158,7 @@ func (u *ui) editCommands() []*command {
 		(&command{key: "menu.typeBasis", do: func() { u.win.Canvas().Focus(u.basis) }}).withKey(fyne.KeyB, control),
 		{key: "menu.noBasis", do: func() { u.setBasis(nil) }},
 		rule,
-		(&command{key: "menu.atomTable", do: u.showAtoms, on: func() bool { return u.atoms.pane.Visible() }}).withKey(fyne.KeyT, control),
+		(&command{key: "menu.atomTable", also: func() string { return say("menu.atomTableAlso") }, do: u.showAtoms, on: func() bool { return u.atoms.pane.Visible() }}).withKey(fyne.KeyT, control),
 		{key: "menu.addAtom", do: u.atoms.add, can: u.atoms.pane.Visible},
 		{key: "menu.removeAtom", do: u.atoms.remove, can: u.atoms.pane.Visible},
 		rule,

@@ -27,8 +27,8 @@ func (u *ui) everything() []listedCommand {
 	return out
 }
 
-// found are the commands whose name or menu holds every word that is typed;
-// those whose name begins with the first word come first.
+// found are the commands whose name, menu or other words hold every word that is
+// typed; those whose name begins with the first word come first.
 func found(all []listedCommand, typed string) []listedCommand {
 	words := strings.Fields(strings.ToLower(typed))
 	rank := func(c listedCommand) int {
@@ -46,6 +46,9 @@ func found(all []listedCommand, typed string) []listedCommand {
 	var out []listedCommand
 	for _, c := range all {
 		text := strings.ToLower(c.name + " " + c.place + " " + c.keysText())
+		if c.also != nil {
+			text += " " + strings.ToLower(c.also())
+		}
 		if !slices.ContainsFunc(words, func(w string) bool { return !strings.Contains(text, w) }) {
 			out = append(out, c)
 		}
@@ -82,6 +85,10 @@ func (u *ui) showEverything() {
 				hide()
 				u.run(c.command)
 			}})
+		}
+		if len(rows) == 0 {
+			list.show([]choiceRow{{name: say("menu.everythingNone", typed), off: true}}, -1)
+			return
 		}
 		list.show(rows, 0)
 	}

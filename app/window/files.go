@@ -71,6 +71,11 @@ func (u *ui) try(s study.Study, done func(error)) {
 			if err == nil {
 				u.openProblem = ""
 				u.studyFile = "" // whoever opened a study's own file says so after this
+				if now := u.now(); s.Structure != now.Structure || s.Coordinates != now.Coordinates {
+					for _, p := range []*pane{u.ledger, u.follows, u.detail} {
+						p.scrollTo(0)
+					}
+				}
 				u.do(study.StepOpen, s)
 				if s.Coordinates == "" {
 					_ = u.session.AddRecent(s.Structure)

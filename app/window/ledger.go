@@ -41,7 +41,7 @@ func (u *ui) drawLedger(b *board) {
 		if c.class != class && c.class >= 0 {
 			if class >= 0 {
 				u.drawClass(b, sheet.classes[class], began, x)
-				b.fill(x+classGap/2, 5, 1, classRow+height-8, faint(b.palette.Rule, 0xA0))
+				b.fillFrom(headWidth, x+classGap/2, 5, 1, classRow+height-8, faint(b.palette.Rule, 0xA0))
 				x += classGap
 			}
 			class, began = c.class, x
@@ -50,7 +50,7 @@ func (u *ui) drawLedger(b *board) {
 			u.drawColumn(b, c, x, height, growing && i > at)
 		}
 		name := c.op.Name
-		b.spot(spot{x: x, y: classRow, width: c.width, height: height, name: "operation " + name, hint: c.hint, do: func() { u.playOperation(name) }})
+		b.spot(spot{x: x, y: classRow, width: c.width, height: height, from: headWidth, name: "operation " + name, hint: c.hint, do: func() { u.playOperation(name) }})
 		x += c.width
 	}
 	if class >= 0 {
@@ -78,11 +78,11 @@ func (u *ui) drawColumn(b *board, c ledgerColumn, x, height float64, awaited boo
 	ink := style{size: textSize, color: b.palette.Ink}
 	second := style{size: secondSize, color: b.palette.Ink}
 	if chosen {
-		b.fill(x, classRow+ledgerRow, c.width, height-ledgerRow, faint(b.palette.Accent, 0x28))
-		b.fill(x, classRow, c.width, ledgerRow, b.palette.Accent)
+		b.fillFrom(headWidth, x, classRow+ledgerRow, c.width, height-ledgerRow, faint(b.palette.Accent, 0x28))
+		b.fillFrom(headWidth, x, classRow, c.width, ledgerRow, b.palette.Accent)
 		ink.color = b.palette.Ground
 		if p := u.state.Problem(work.ConcernOperation); p != nil {
-			b.frame(x, classRow, c.width, height, 2, b.palette.Ink)
+			b.frameFrom(headWidth, x, classRow, c.width, height, 2, b.palette.Ink)
 		}
 	}
 	middle := x + c.width/2
@@ -115,7 +115,7 @@ func (u *ui) drawEnd(b *board, sheet *ledgerSheet, x float64) float64 {
 	}
 	plain := style{size: secondSize, color: b.palette.Ink, align: -1}
 	if len(sheet.end) > 0 {
-		b.fill(x-pad/2, 5, 1, classRow+4*ledgerRow-8, b.palette.Rule)
+		b.fillFrom(headWidth, x-pad/2, 5, 1, classRow+4*ledgerRow-8, b.palette.Rule)
 	}
 	for i, line := range sheet.end {
 		s := plain
@@ -131,7 +131,7 @@ func (u *ui) drawEnd(b *board, sheet *ledgerSheet, x float64) float64 {
 			if name == "" {
 				name = "ledger end " + letterOf(i)
 			}
-			b.spot(spot{x: x, y: y, width: b.measure(line.text, s) + 8, height: ledgerRow, name: name, hint: line.hint, do: line.do})
+			b.spot(spot{x: x, y: y, width: b.measure(line.text, s) + 8, height: ledgerRow, from: headWidth, name: name, hint: line.hint, do: line.do})
 		}
 	}
 	return x + u.endWidth(b, sheet)

@@ -169,20 +169,31 @@ func (u *ui) makeSheet(measure func(notation.Text, style) float64) *ledgerSheet 
 		sheet.columns = append(sheet.columns, c)
 	}
 	switch {
-	case g.Fit.Setting.Infinite():
-		sheet.remark = say("ledger.infinite", g.Fit.Setting.Symbol)
-	case sheet.ledger != nil:
+	case g.Fit.Setting.Infinite() || sheet.ledger == nil:
+		sheet.remark = u.ledgerNeed()
+	default:
 		sheet.end = u.ledgerEnd(sheet.ledger)
-	case len(u.now().Basis) == 0:
-		sheet.remark = say("ledger.needBasis")
-	case u.state.Problem(work.ConcernElement) != nil:
-		sheet.remark = u.state.Problem(work.ConcernElement).Error()
-	case u.now().Projection.Irrep == "":
-		sheet.remark = say("ledger.needIrrep")
-	case u.now().Projection.Function == 0:
-		sheet.remark = say("ledger.needFunction")
 	}
 	return sheet
+}
+
+// ledgerNeed says why no function is projected, or what must be chosen first;
+// it is empty if there is a projection or will be as soon as it is computed.
+func (u *ui) ledgerNeed() string {
+	s, g := u.now(), u.state.Group
+	switch {
+	case g != nil && g.Fit.Setting.Infinite():
+		return say("ledger.infinite", g.Fit.Setting.Symbol)
+	case len(s.Basis) == 0:
+		return say("ledger.needBasis")
+	case u.state.Problem(work.ConcernElement) != nil:
+		return u.state.Problem(work.ConcernElement).Error()
+	case s.Projection.Irrep == "":
+		return say("ledger.needIrrep")
+	case s.Projection.Function == 0:
+		return say("ledger.needFunction")
+	}
+	return ""
 }
 
 // columnWidth is that of the widest entry, and no less than columns need to be

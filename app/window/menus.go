@@ -64,7 +64,7 @@ func (u *ui) recentCommands() []*command {
 func (u *ui) demoCommands() []*command {
 	var out []*command
 	for _, d := range assets.DemoList() {
-		out = append(out, &command{key: "menu.demos", label: func() string { return d.Title }, do: func() { u.openDemo(d.Name) }})
+		out = append(out, &command{key: "menu.demos", label: func() string { return d.Title }, also: func() string { return d.Name }, do: func() { u.openDemo(d.Name) }})
 	}
 	return out
 }

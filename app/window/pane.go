@@ -149,10 +149,10 @@ func (p *pane) room(b *board) float64 {
 func (p *pane) decorate(b *board) {
 	for _, s := range b.spots {
 		if s.name == p.hover && s.do != nil {
-			b.fill(s.x, s.y, s.width, s.height, faint(b.palette.Ink, 0x12))
+			b.fillFrom(s.from, s.x, s.y, s.width, s.height, faint(b.palette.Ink, 0x12))
 		}
 		if s.name == p.mark && p.focused {
-			b.frame(s.x-1, s.y-1, s.width+2, s.height+2, 2, b.palette.Accent)
+			b.frameFrom(s.from, s.x-1, s.y-1, s.width+2, s.height+2, 2, b.palette.Accent)
 		}
 	}
 	if p.focused && p.mark == "" {
@@ -273,6 +273,9 @@ func (p *pane) scrollTo(to float64) {
 	to = min(max(0, to), max(0, p.extent-room))
 	if to != p.scroll {
 		p.scroll = to
+		if p.hover != "" {
+			p.MouseOut() // what the hint was about is elsewhere now
+		}
 		p.Update()
 	}
 }

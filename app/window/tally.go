@@ -81,6 +81,8 @@ func (t *tally) begin(still bool) {
 		t.run()
 		u.show(true)
 	}
+	u.detail.Update() // both have the matrix of the operation
+	u.beside.Update()
 	u.ledger.Update()
 	u.said.Update()
 }

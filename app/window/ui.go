@@ -174,6 +174,16 @@ func (u *ui) assemble() fyne.CanvasObject {
 	u.play = u.newIconButton(theme.MediaPlayIcon(), "ledger.playHint", u.togglePlay)
 	u.oneByOne = u.newIconButton(nil, "ledger.oneByOneHint", u.tally.start)
 	u.oneByOne.SetText(say("ledger.oneByOne"))
+	hint := u.oneByOne.hint
+	u.oneByOne.hint = func() string {
+		switch g := u.state.Group; {
+		case !u.oneByOne.Disabled():
+			return hint()
+		case g != nil && g.Fit.Setting.Infinite():
+			return say("ledger.oneByOneInfinite")
+		}
+		return u.ledgerNeed()
+	}
 	controls := container.NewHBox(
 		u.newIconButton(theme.MediaSkipPreviousIcon(), "ledger.startHint", func() { u.jump(0) }),
 		u.play,
@@ -284,7 +294,19 @@ func (u *ui) refreshPanes() {
 	u.beside.Update()
 	u.ledger.Update()
 	u.said.Update()
+	u.allowOneByOne()
 	u.updateMenus()
+}
+
+// allowOneByOne lets the sum be played where there is one.
+func (u *ui) allowOneByOne() {
+	can := u.tally.ledger != nil || u.ledgerNeed() == ""
+	switch {
+	case can && u.oneByOne.Disabled():
+		u.oneByOne.Enable()
+	case !can && !u.oneByOne.Disabled():
+		u.oneByOne.Disable()
+	}
 }
 
 // deliver takes new results.
