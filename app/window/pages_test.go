@@ -45,7 +45,7 @@ func TestARowOfTheLadderTakesTheStructureForItsGroup(t *testing.T) {
 		t.Fatalf("a click on Oh gives %s", got)
 	}
 	b.tap(b.pages.pane, "displacements")
-	if s := b.view.shown; !s.Look.Displacements || len(s.Notes) != 1 || !strings.Contains(s.Notes[0].String(), "× 2") {
+	if s := b.view.shown; !s.Look.Displacements || len(s.Notes) != 1 || !strings.Contains(s.Notes[0].String(), "× 5") {
 		t.Errorf("the arrows are explained by %q", s.Notes)
 	}
 	b.tap(b.pages.pane, "embeddings D4h")
