@@ -133,7 +133,11 @@ func TestAFileThatChangesOnTheDiskIsNoticed(t *testing.T) {
 	b.watch = newFileWatch(5*time.Millisecond, b.fileChanged)
 	file := filepath.Join(t.TempDir(), "w.xyz")
 	write := func(text string) {
-		if err := os.WriteFile(file, []byte(text), 0o666); err != nil {
+		// Whole at once: a look between emptying and writing would see two changes.
+		if err := os.WriteFile(file+".new", []byte(text), 0o666); err != nil {
+			t.Fatal(err)
+		}
+		if err := os.Rename(file+".new", file); err != nil {
 			t.Fatal(err)
 		}
 	}
