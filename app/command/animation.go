@@ -3,14 +3,12 @@ package command
 import (
 	"context"
 	"fmt"
-	"io"
 	"path/filepath"
 	"strings"
 
 	"github.com/spf13/cobra"
 
 	"lobewright/app/export"
-	"lobewright/app/files"
 	"lobewright/app/picture"
 	"lobewright/app/study"
 )
@@ -146,65 +144,7 @@ func (p *program) animation(ctx context.Context, s study.Study, output string, f
 	if err != nil {
 		return err
 	}
-	format := strings.ToLower(filepath.Ext(output))
-	if format == ".png" {
-		return p.pictures(ctx, s, movie, output, force)
-	}
-	if format == ".mp4" {
-		if err := export.CheckMP4(); err != nil {
-			return err
-		}
-	}
-	if err := files.Check(output, force); err != nil {
-		return err
-	}
-	carried, err := p.carried(ctx, s)
-	if err != nil {
-		return err
-	}
-	film := export.FilmOf(movie)
-	return files.Write(output, files.Options{Force: force}, func(w io.Writer) error {
-		switch format {
-		case ".apng":
-			return film.EncodeAPNG(ctx, w, carried)
-		case ".mp4":
-			rate := s.Animation.Rate
-			if rate == 0 {
-				rate = picture.DefaultMovieRate
-			}
-			return film.EncodeMP4(ctx, w, rate, carried)
-		case ".glb":
-			return export.EncodeGLB(w, movie, carried)
-		}
-		return film.EncodeGIF(ctx, w, carried)
-	})
-}
-
-// pictures writes each picture of a movie as a numbered file. Each carries the
-// study with its own moment.
-func (p *program) pictures(ctx context.Context, s study.Study, movie *picture.Movie, output string, force bool) error {
-	n := len(movie.Stills)
-	stem := strings.TrimSuffix(output, filepath.Ext(output))
-	paths := make([]string, n)
-	for k := range paths {
-		paths[k] = fmt.Sprintf("%s-%0*d%s", stem, len(fmt.Sprint(n)), k+1, filepath.Ext(output))
-		if err := files.Check(paths[k], force); err != nil {
-			return err
-		}
-	}
-	film := export.FilmOf(movie)
-	return files.WriteAll(paths, files.Options{Force: force}, func(k int, w io.Writer) error {
-		s.Moment = movie.Stills[k].Moment
-		carried, err := p.carried(ctx, s)
-		if err != nil {
-			return err
-		}
-		png, err := film.PNG(ctx, k, movie.Resolution, carried)
-		if err != nil {
-			return err
-		}
-		return png.Encode(w)
-	})
+	return export.WriteMovie(ctx, output, force, movie, export.FilmOf(movie), s, func(s study.Study) ([]byte, error) { return p.carried(ctx, s) })
 }
 
 // pixelsFlag is a size WIDTHxHEIGHT in pixels.

@@ -5,7 +5,6 @@ package window
 import (
 	"context"
 	"errors"
-	"fmt"
 	"image"
 	"io"
 	"path/filepath"
@@ -17,7 +16,6 @@ import (
 	"fyne.io/fyne/v2"
 
 	"lobewright/app/export"
-	"lobewright/app/files"
 	"lobewright/app/picture"
 	"lobewright/app/sheet"
 	"lobewright/app/study"
@@ -258,8 +256,7 @@ func (u *ui) writeFilm(ctx context.Context, path string, force bool, s study.Stu
 	film := export.FilmOf(movie)
 	n := len(film.Seconds)
 	total := n
-	ending := strings.ToLower(filepath.Ext(path))
-	if ending == ".gif" {
+	if strings.EqualFold(filepath.Ext(path), ".gif") {
 		const looks = 9 // at the colours, before
 		total += min(looks, n)
 	}
@@ -270,45 +267,5 @@ func (u *ui) writeFilm(ctx context.Context, path string, force bool, s study.Stu
 		share(float64(count.Add(1)) / float64(total))
 		return err
 	}
-	if ending == ".png" {
-		return writeStills(ctx, path, force, film, movie, s, structure)
-	}
-	carried := carriedOf(s, structure)
-	return export.WriteFile(path, force, func(w io.Writer) error {
-		switch ending {
-		case ".apng":
-			return film.EncodeAPNG(ctx, w, carried)
-		case ".mp4":
-			rate := s.Animation.Rate
-			if rate == 0 {
-				rate = picture.DefaultMovieRate
-			}
-			return film.EncodeMP4(ctx, w, rate, carried)
-		case ".glb":
-			return export.EncodeGLB(w, movie, carried)
-		}
-		return film.EncodeGIF(ctx, w, carried)
-	})
-}
-
-// writeStills writes each picture as a numbered file, which carries the study
-// with its own moment.
-func writeStills(ctx context.Context, path string, force bool, film *export.Film, movie *picture.Movie, s study.Study, structure *work.Structure) error {
-	n := len(movie.Stills)
-	stem := strings.TrimSuffix(path, filepath.Ext(path))
-	paths := make([]string, n)
-	for k := range paths {
-		paths[k] = fmt.Sprintf("%s-%0*d%s", stem, len(fmt.Sprint(n)), k+1, filepath.Ext(path))
-		if err := export.CheckTarget(paths[k], force); err != nil {
-			return err
-		}
-	}
-	return files.WriteAll(paths, files.Options{Force: force}, func(k int, w io.Writer) error {
-		s.Moment = movie.Stills[k].Moment
-		png, err := film.PNG(ctx, k, movie.Resolution, carriedOf(s, structure))
-		if err != nil {
-			return err
-		}
-		return png.Encode(w)
-	})
+	return export.WriteMovie(ctx, path, force, movie, film, s, func(s study.Study) ([]byte, error) { return carriedOf(s, structure), nil })
 }
