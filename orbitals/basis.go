@@ -1,10 +1,11 @@
 package orbitals
 
 import (
-	"fmt"
 	"math"
 
 	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/symmetry/message"
 )
 
 // A Kind tells functions apart that never share a group orbital.
@@ -110,7 +111,7 @@ func NewBasis(sites *Sites, choices ...Choice) (*Basis, error) {
 		}
 	}
 	if len(b.functions) == 0 {
-		return nil, fmt.Errorf("no functions are chosen: %s", choiceExample)
+		return nil, message.Errorf("no functions are chosen: %s", choiceExample)
 	}
 	b.noteCompletions(len(choices))
 	b.numberOrbits()
@@ -147,7 +148,7 @@ func (b *builder) addChoice(n int, c Choice) error {
 // out; what overlaps with them otherwise is refused.
 func (b *builder) merge(choice int, family []candidate) error {
 	if n := len(b.functions) + len(family); n > MaxFunctions {
-		return fmt.Errorf("%d functions are too many: at most %d can be projected together, so choose fewer atoms or functions", n, MaxFunctions)
+		return message.Errorf("%d functions are too many: at most %d can be projected together, so choose fewer atoms or functions", n, MaxFunctions)
 	}
 	left := Note{Key: NoteContained, Choice: choice}
 	for _, f := range family {
@@ -159,7 +160,7 @@ func (b *builder) merge(choice int, family []candidate) error {
 			b.asked = append(b.asked, f.asked)
 			b.choice = append(b.choice, choice)
 		case residual > same:
-			return fmt.Errorf("%s on %s overlaps with its %s, chosen before: choose either the %s functions or those relative to a centre there",
+			return message.Errorf("%s on %s overlaps with its %s, chosen before: choose either the %s functions or those relative to a centre there",
 				f.Name, b.atom(f.Site), b.functions[twin].Name, shellLetters[f.Shell:f.Shell+1])
 		case b.functions[twin].Name == f.Name && dot(b.functions[twin].Vector, f.Vector) > 1-same:
 			b.asked[twin] = b.asked[twin] || f.asked

@@ -2,12 +2,13 @@ package orbitals
 
 import (
 	"cmp"
-	"fmt"
 	"maps"
 	"math"
 	"slices"
 
 	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/symmetry/message"
 )
 
 // arms returns, for each atom of the orbits of the given atoms, its place
@@ -30,7 +31,7 @@ func (b *builder) arms(choice int, it item, atoms []int) (map[int]mgl64.Vec3, er
 	// In the order of the atoms, so that the same one is always named.
 	for _, k := range atoms {
 		if arms[k].Len() < onCentre {
-			return nil, fmt.Errorf("%s on %s has no direction, for the atom is on the centre: choose s, p, d or f functions there, or another centre with @",
+			return nil, message.Errorf("%s on %s has no direction, for the atom is on the centre: choose s, p, d or f functions there, or another centre with @",
 				it.name, b.atom(k))
 		}
 	}
@@ -162,7 +163,7 @@ func (b *builder) givenCentres(choice int, it item, atoms []int) (map[int]mgl64.
 			continue
 		}
 		if distance(start)-distance(reference[start]) < equallyNear {
-			return nil, fmt.Errorf("%s: %s and %s are equally near the centre, but operations that carry one to the other carry the centre elsewhere; choose one of them, or a centre that all operations leave",
+			return nil, message.Errorf("%s: %s and %s are equally near the centre, but operations that carry one to the other carry the centre elsewhere; choose one of them, or a centre that all operations leave",
 				it, b.atom(reference[start]), b.atom(start))
 		}
 		carried.Atoms = append(carried.Atoms, start)
@@ -199,7 +200,7 @@ func (b *builder) spread(it item, start int, centre mgl64.Vec3, exact bool, cent
 				centres[j], reference[j] = image, start
 				queue = append(queue, j)
 			case old.Sub(image).Len() > slack(exact):
-				return fmt.Errorf("%s on %s: operations that leave the atom in its place move this centre; choose one that they leave",
+				return message.Errorf("%s on %s: operations that leave the atom in its place move this centre; choose one that they leave",
 					it, b.atom(start))
 			}
 		}

@@ -1,10 +1,11 @@
 package orbitals
 
 import (
-	"fmt"
 	"strconv"
 	"strings"
 	"unicode/utf8"
+
+	"lobewright/symmetry/message"
 )
 
 // The names of functions relative to a centre, beside those of the axes.
@@ -48,7 +49,7 @@ const choiceExample = "write ATOMS:FUNCTIONS, such as F:sigma or 2-4:px,py"
 // numbers of its atoms, is checked by NewBasis.
 func ParseChoice(text string) (Choice, error) {
 	if len(text) > maxChoice {
-		return Choice{}, fmt.Errorf("a choice of %d characters is too long: the limit is %d", len(text), maxChoice)
+		return Choice{}, message.Errorf("a choice of %d characters is too long: the limit is %d", len(text), maxChoice)
 	}
 	text = strings.TrimSpace(text)
 	orbit := ""
@@ -60,11 +61,11 @@ func ParseChoice(text string) (Choice, error) {
 	atoms = strings.TrimSpace(atoms)
 	switch {
 	case text == "":
-		return Choice{}, fmt.Errorf("a choice of functions is empty: %s", choiceExample)
+		return Choice{}, message.Errorf("a choice of functions is empty: %s", choiceExample)
 	case !ok:
-		return Choice{}, fmt.Errorf("%s names no functions: %s", quote(text), choiceExample)
+		return Choice{}, message.Errorf("%s names no functions: %s", quote(text), choiceExample)
 	case atoms == "":
-		return Choice{}, fmt.Errorf("%s names no atoms: %s", quote(text), choiceExample)
+		return Choice{}, message.Errorf("%s names no atoms: %s", quote(text), choiceExample)
 	}
 	c := Choice{atoms: orbit + atoms}
 	var err error
@@ -123,10 +124,10 @@ func parseItems(text string) ([]item, error) {
 			return nil, err
 		}
 		if hasCentre && !isRelative(name) {
-			return nil, fmt.Errorf("%s has no centre: @ goes with sigma, pi, pi-in and pi-out", name)
+			return nil, message.Errorf("%s has no centre: @ goes with sigma, pi, pi-in and pi-out", name)
 		}
 		if hasCentre && centre == "" {
-			return nil, fmt.Errorf("%s@ names no atoms: the centre is the midpoint of atoms, such as %s@1 or %s@2-6", name, name, name)
+			return nil, message.Errorf("%s@ names no atoms: the centre is the midpoint of atoms, such as %s@1 or %s@2-6", name, name, name)
 		}
 		items = append(items, item{name, centre})
 	}
@@ -161,15 +162,15 @@ func checkName(name string) error {
 		return nil
 	}
 	if name == "" {
-		return fmt.Errorf("a function is missing: choose a shell (s, p, d, f), one of its functions (px), sigma, pi, pi-in or pi-out")
+		return message.Errorf("a function is missing: choose a shell (s, p, d, f), one of its functions (px), sigma, pi, pi-in or pi-out")
 	}
 	if strings.Contains(name, ":") {
-		return fmt.Errorf("%s is no function: put a semicolon between two choices, such as F:sigma; 2-4:px,py", quote(name))
+		return message.Errorf("%s is no function: put a semicolon between two choices, such as F:sigma; 2-4:px,py", quote(name))
 	}
 	if l, ok := shellOf(strings.ToLower(name[:1])); ok && l > 0 && !strings.HasPrefix(name, "pi") {
-		return fmt.Errorf("%s is no function: those of the %s shell are %s", quote(name), functionNames[l][0][:1], strings.Join(functionNames[l], ", "))
+		return message.Errorf("%s is no function: those of the %s shell are %s", quote(name), functionNames[l][0][:1], strings.Join(functionNames[l], ", "))
 	}
-	return fmt.Errorf("%s is no function: choose a shell (s, p, d, f), one of its functions (px, dxz, fxyz …), sigma, pi, pi-in or pi-out", quote(name))
+	return message.Errorf("%s is no function: choose a shell (s, p, d, f), one of its functions (px, dxz, fxyz …), sigma, pi, pi-in or pi-out", quote(name))
 }
 
 // String writes the choice as ParseChoice reads it.

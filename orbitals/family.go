@@ -10,6 +10,7 @@ import (
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/orbitals/structure"
+	"lobewright/symmetry/message"
 )
 
 // A builder gathers the functions of a Basis.
@@ -54,7 +55,7 @@ func (b *builder) parseAtoms(text string) ([]int, error) {
 	return structure.ParseAtoms(text, b.molecule, func(n int) ([]int, error) {
 		orbits := b.sites.Orbits()
 		if n > len(orbits) {
-			return nil, fmt.Errorf("there is no orbit %d: the structure has orbits 1 to %d", n, len(orbits))
+			return nil, message.Errorf("there is no orbit %d: the structure has orbits 1 to %d", n, len(orbits))
 		}
 		return orbits[n-1], nil
 	})
@@ -76,14 +77,14 @@ func (b *builder) atoms(choice int, text string) ([]int, error) {
 			case b.sites.hasImages(k):
 				in[k] = true
 			case startsWithDigit(strings.TrimSpace(term)):
-				return nil, fmt.Errorf("%s is a spectator and has no image under some operations, so it carries no functions: choose atoms of the core, or a core that holds it", b.atom(k))
+				return nil, message.Errorf("%s is a spectator and has no image under some operations, so it carries no functions: choose atoms of the core, or a core that holds it", b.atom(k))
 			default:
 				left[k] = true
 			}
 		}
 	}
 	if len(in) == 0 {
-		return nil, fmt.Errorf("all atoms of %s are spectators without images under some operations, so they carry no functions: choose atoms of the core, or a core that holds them", quote(text))
+		return nil, message.Errorf("all atoms of %s are spectators without images under some operations, so they carry no functions: choose atoms of the core, or a core that holds them", quote(text))
 	}
 	if len(left) > 0 {
 		b.notes = append(b.notes, Note{Key: NoteSpectators, Choice: choice, Atoms: sorted(left)})
@@ -141,7 +142,7 @@ func (b *builder) alongAxes(name string, atoms []int) (map[int][]candidate, erro
 }
 
 func tooMany(n int) error {
-	return fmt.Errorf("%d functions are too many: at most %d can be projected together, so choose fewer atoms or functions", n, MaxFunctions)
+	return message.Errorf("%d functions are too many: at most %d can be projected together, so choose fewer atoms or functions", n, MaxFunctions)
 }
 
 func unit(n, i int) []float64 {
@@ -183,7 +184,7 @@ func (b *builder) close(on map[int][]candidate) ([]candidate, error) {
 				}
 			}
 			if math.Abs(square-1) > same {
-				return nil, fmt.Errorf("%s on %s is carried by %s to another direction than %s has on %s: choose functions along the axes, or another centre with @",
+				return nil, message.Errorf("%s on %s is carried by %s to another direction than %s has on %s: choose functions along the axes, or another centre with @",
 					f.Name, b.atom(f.Site), c.name, f.Name, b.atom(target))
 			}
 		}
@@ -254,7 +255,7 @@ func (b *builder) around(name string, k int, r mgl64.Vec3) ([]candidate, error) 
 		return nil, err
 	}
 	if math.Abs(normal.Dot(r.Normalize())) > same {
-		return nil, fmt.Errorf("%s on %s: the atom or its centre lies outside the plane of the structure; choose pi, or a centre in the plane", name, b.atom(k))
+		return nil, message.Errorf("%s on %s: the atom or its centre lies outside the plane of the structure; choose pi, or a centre in the plane", name, b.atom(k))
 	}
 	// All on one side of the plane, so that equal signs are one lobe.
 	return []candidate{
@@ -310,12 +311,12 @@ func (s *Sites) plane() (mgl64.Vec3, error) {
 		}
 	}
 	if along.Len() < onSpot || normal.Len() < onSpot*along.Len() {
-		return mgl64.Vec3{}, fmt.Errorf("pi-in and pi-out need a plane, but the core atoms lie on a line: choose pi")
+		return mgl64.Vec3{}, message.Errorf("pi-in and pi-out need a plane, but the core atoms lie on a line: choose pi")
 	}
 	normal = normal.Normalize()
 	for _, p := range core {
 		if math.Abs(normal.Dot(p.Sub(core[0]))) > onSpot {
-			return mgl64.Vec3{}, fmt.Errorf("pi-in and pi-out need a planar structure: choose pi")
+			return mgl64.Vec3{}, message.Errorf("pi-in and pi-out need a planar structure: choose pi")
 		}
 	}
 	for _, axis := range []int{2, 0, 1} {

@@ -1,10 +1,10 @@
 package orbitals
 
 import (
-	"fmt"
 	"math"
 
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // ByCharacter as the element of a Ledger weighs the operations with the
@@ -36,7 +36,7 @@ type LedgerRow struct {
 // the two are the same.
 func (r *Representation) Ledger(function, irrep int, element [2]int) (*Ledger, error) {
 	if irrep < 0 || irrep >= len(r.setting.Irreps) {
-		return nil, fmt.Errorf("there is no irrep %d: %s has %d", irrep+1, r.setting.Symbol, len(r.setting.Irreps))
+		return nil, message.Errorf("there is no irrep %d: %s has %d", irrep+1, r.setting.Symbol, len(r.setting.Irreps))
 	}
 	return r.LedgerIn(function, irrep, r.setting.Irreps[irrep], element)
 }
@@ -45,11 +45,11 @@ func (r *Representation) Ledger(function, irrep int, element [2]int) (*Ledger, e
 // Irrep.WithPartners makes them.
 func (r *Representation) LedgerIn(function, irrep int, a symmetry.Irrep, element [2]int) (*Ledger, error) {
 	if function < 0 || function >= r.Size() {
-		return nil, fmt.Errorf("there is no function %d: the basis has functions 1 to %d", function+1, r.Size())
+		return nil, message.Errorf("there is no function %d: the basis has functions 1 to %d", function+1, r.Size())
 	}
 	k, l := element[0], element[1]
 	if element != ByCharacter && (min(k, l) < 0 || max(k, l) >= a.Dimension) {
-		return nil, fmt.Errorf("%s has no matrix element [%d,%d]: its matrices have %d rows and columns", a.Label, k+1, l+1, a.Dimension)
+		return nil, message.Errorf("%s has no matrix element [%d,%d]: its matrices have %d rows and columns", a.Label, k+1, l+1, a.Dimension)
 	}
 	ledger := &Ledger{Function: function, Irrep: irrep, Element: element}
 	sum := make([]float64, r.Size())

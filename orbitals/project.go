@@ -2,11 +2,11 @@ package orbitals
 
 import (
 	"cmp"
-	"fmt"
 	"math"
 	"slices"
 
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // A GroupOrbital is a normalized combination of the functions of a basis that
@@ -73,7 +73,7 @@ func Project(r *Representation) (*Projection, error) {
 			}
 		}
 		if len(found) != copies {
-			return nil, fmt.Errorf("the projection found %d copies of %s where the characters say %d", len(found), p.Irreps[a].Label, copies)
+			return nil, message.Errorf("the projection found %d copies of %s where the characters say %d", len(found), p.Irreps[a].Label, copies)
 		}
 		for c, f := range found {
 			for k, coefficients := range f.partners {

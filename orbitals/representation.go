@@ -1,13 +1,13 @@
 package orbitals
 
 import (
-	"fmt"
 	"math"
 	"slices"
 
 	"gonum.org/v1/gonum/mat"
 
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // A Term is a function, by index, with a coefficient.
@@ -46,17 +46,17 @@ func NewRepresentation(setting *symmetry.Setting, permutations [][]int, blocks [
 		return nil, infinite(setting)
 	}
 	if len(permutations) != setting.Order() || len(blocks) != setting.Order() {
-		return nil, fmt.Errorf("%s has %d operations, but %d permutations and %d blocks are given",
+		return nil, message.Errorf("%s has %d operations, but %d permutations and %d blocks are given",
 			setting.Symbol, setting.Order(), len(permutations), len(blocks))
 	}
 	m, _ := blocks[0].Dims()
 	n := len(permutations[0])
 	for r, p := range permutations {
 		if rows, columns := blocks[r].Dims(); rows != m || columns != m {
-			return nil, fmt.Errorf("the block of operation %d has %d rows and %d columns, not %d", r+1, rows, columns, m)
+			return nil, message.Errorf("the block of operation %d has %d rows and %d columns, not %d", r+1, rows, columns, m)
 		}
 		if !isPermutation(p, n) {
-			return nil, fmt.Errorf("the images of the %d sites under operation %d are no permutation", n, r+1)
+			return nil, message.Errorf("the images of the %d sites under operation %d are no permutation", n, r+1)
 		}
 	}
 	sites := make([]int, n*m)
@@ -72,7 +72,7 @@ func NewRepresentation(setting *symmetry.Setting, permutations [][]int, blocks [
 }
 
 func infinite(setting *symmetry.Setting) error {
-	return fmt.Errorf("%s has infinitely many operations, which cannot be listed", setting.Symbol)
+	return message.Errorf("%s has infinitely many operations, which cannot be listed", setting.Symbol)
 }
 
 func isPermutation(p []int, n int) bool {
@@ -138,7 +138,7 @@ func newRepresentation(setting *symmetry.Setting, sites []int, image func(r, fun
 			square = 0
 			image(r, of, add)
 			if math.Abs(square-1) > 1e-9 {
-				return nil, fmt.Errorf("operation %s carries function %d out of the set", setting.Operations[r].Name, of+1)
+				return nil, message.Errorf("operation %s carries function %d out of the set", setting.Operations[r].Name, of+1)
 			}
 			ends[of] = len(terms)
 		}
@@ -234,7 +234,7 @@ func content(setting *symmetry.Setting, characters []float64) ([]int, error) {
 		}
 		out[a] = int(math.Round(copies))
 		if math.Abs(copies-math.Round(copies)) > 1e-6 || out[a] < 0 {
-			return nil, fmt.Errorf("the functions hold %g copies of %s in %s: what the operations make of them is no representation of the group",
+			return nil, message.Errorf("the functions hold %g copies of %s in %s: what the operations make of them is no representation of the group",
 				copies, irrep.Label, setting.Symbol)
 		}
 	}

@@ -1,7 +1,6 @@
 package orbitals
 
 import (
-	"fmt"
 	"maps"
 	"math"
 	"slices"
@@ -10,6 +9,7 @@ import (
 
 	"lobewright/orbitals/structure"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // Sites are the atoms of a structure as the operations of a group see them.
@@ -35,7 +35,7 @@ type Sites struct {
 // of them if it brings it within fit.Tolerance of another of the same element.
 func NewSites(fit *symmetry.Fit, core []int, m *structure.Molecule, links [][2]int) (*Sites, error) {
 	if len(core) != len(fit.Ideal) {
-		return nil, fmt.Errorf("the group was found among %d atoms, but the core has %d", len(fit.Ideal), len(core))
+		return nil, message.Errorf("the group was found among %d atoms, but the core has %d", len(fit.Ideal), len(core))
 	}
 	n := len(m.Atoms)
 	s := &Sites{

@@ -1,13 +1,14 @@
 package symmetry
 
 import (
-	"fmt"
 	"math"
 	"sort"
 	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
 	"gonum.org/v1/gonum/mat"
+
+	"lobewright/symmetry/message"
 )
 
 // A Descent is one way in which a subgroup lies in a group, with what becomes
@@ -40,7 +41,7 @@ func (s *Setting) Descend(operations []int) (*Descent, error) {
 		set.add(o)
 	}
 	if !set.has(0) || s.generated(operations...).size() != set.size() {
-		return nil, fmt.Errorf("these operations of %s form no group", s.Symbol)
+		return nil, message.Errorf("these operations of %s form no group", s.Symbol)
 	}
 	list, err := s.placements(set)
 	if err != nil {
@@ -130,7 +131,7 @@ func (s *Setting) settingsOf(operations []int) (kind, []mgl64.Mat3, error) {
 	}
 	rec, ok := recognize(elements)
 	if !ok {
-		return kind{}, nil, fmt.Errorf("a subgroup of %s was not recognized", s.Symbol)
+		return kind{}, nil, message.Errorf("a subgroup of %s was not recognized", s.Symbol)
 	}
 	base := orthonormal(rec.axes())
 	var turns []mgl64.Mat3
@@ -314,7 +315,7 @@ func (s *Setting) Descents(symbol string) ([]*Descent, error) {
 		chosen = append(chosen, best)
 	}
 	if chosen == nil {
-		return nil, fmt.Errorf("%s is no subgroup of %s: its subgroups are %s", k.symbol(), s.Symbol, strings.Join(symbols, " "))
+		return nil, message.Errorf("%s is no subgroup of %s: its subgroups are %s", k.symbol(), s.Symbol, strings.Join(symbols, " "))
 	}
 	sort.SliceStable(chosen, func(a, b int) bool { return chosen[a].score() > chosen[b].score()+1e-9 })
 	out := make([]*Descent, len(chosen))

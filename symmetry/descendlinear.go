@@ -1,10 +1,11 @@
 package symmetry
 
 import (
-	"fmt"
 	"math"
 
 	"gonum.org/v1/gonum/mat"
+
+	"lobewright/symmetry/message"
 )
 
 // A LinearDescent tells what becomes of the irreps of a linear molecule in a
@@ -29,7 +30,7 @@ func DescendLinear(symbol, subgroup string, most int) (*LinearDescent, error) {
 		return nil, err
 	}
 	if group.family != linearPolar && group.family != linearCentral {
-		return nil, fmt.Errorf("%s is not the group of a linear molecule: C∞v and D∞h are", symbol)
+		return nil, message.Errorf("%s is not the group of a linear molecule: C∞v and D∞h are", symbol)
 	}
 	k, err := parseSymbol(subgroup)
 	if err != nil {
@@ -41,7 +42,7 @@ func DescendLinear(symbol, subgroup string, most int) (*LinearDescent, error) {
 		if group.family == linearCentral {
 			possible = "Cn, Cnv, Cnh, Dn, Dnh, Dnd, S2n, Cs and Ci"
 		}
-		return nil, fmt.Errorf("%s is no subgroup of %s with the same z: possible are %s", k.symbol(), symbol, possible)
+		return nil, message.Errorf("%s is no subgroup of %s with the same z: possible are %s", k.symbol(), symbol, possible)
 	}
 	d := &LinearDescent{Subgroup: newSetting(k)}
 	for _, ir := range linearIrreps(symbol, group.family == linearCentral, most) {

@@ -1,11 +1,11 @@
 package symmetry
 
 import (
-	"errors"
-	"fmt"
 	"math"
 
 	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/symmetry/message"
 )
 
 // DefaultTolerance (Å) is the farthest that a point may lie from its ideal
@@ -59,7 +59,7 @@ func Detect(points []Point, links []Link, options Options) (*Fit, error) {
 	reach := math.Min(2.5*doubtFactor*tolerance, closest/2)
 	list, ok := c.candidates(reach, closest)
 	if !ok {
-		return nil, fmt.Errorf("the points have more than %d operations: axes of a higher order than %d are not handled", 4*MaxFold, MaxFold)
+		return nil, message.Errorf("the points have more than %d operations: axes of a higher order than %d are not handled", 4*MaxFold, MaxFold)
 	}
 	best := c.strongest(list, tolerance)
 	fit := c.frame(best, links, tolerance)
@@ -79,9 +79,12 @@ type CloseError struct {
 }
 
 // Error counts the points from 1.
-func (e *CloseError) Error() string {
-	return fmt.Sprintf("tolerance %g Å is too large: points %d and %d of the same kind are only %.3f Å apart; take less than half of that",
-		e.Tolerance, e.A+1, e.B+1, e.Distance)
+func (e *CloseError) Error() string { return e.In(nil) }
+
+// In is Error in a language.
+func (e *CloseError) In(l *message.Language) string {
+	return message.Words("tolerance %g Å is too large: points %d and %d of the same kind are only %.3f Å apart; take less than half of that",
+		e.Tolerance, e.A+1, e.B+1, e.Distance).In(l)
 }
 
 // farAway (Å) is a coordinate beyond which a structure is no molecule and
@@ -90,22 +93,22 @@ const farAway = 1e6
 
 func check(points []Point, links []Link, tolerance float64) error {
 	if len(points) == 0 {
-		return errors.New("no points: a group needs at least one")
+		return message.Errorf("no points: a group needs at least one")
 	}
 	for i, p := range points {
 		for _, x := range p.Position {
 			if !(math.Abs(x) <= farAway) {
-				return fmt.Errorf("point %d: coordinate %g is not a number between −%g and %g Å", i+1, x, farAway, farAway)
+				return message.Errorf("point %d: coordinate %g is not a number between −%g and %g Å", i+1, x, farAway, farAway)
 			}
 		}
 	}
 	for _, l := range links {
 		if l[0] < 0 || l[1] < 0 || l[0] >= len(points) || l[1] >= len(points) {
-			return fmt.Errorf("link %d–%d: there are %d points", l[0]+1, l[1]+1, len(points))
+			return message.Errorf("link %d–%d: there are %d points", l[0]+1, l[1]+1, len(points))
 		}
 	}
 	if !(tolerance > 0) {
-		return fmt.Errorf("tolerance %g Å: it must be positive", tolerance)
+		return message.Errorf("tolerance %g Å: it must be positive", tolerance)
 	}
 	return nil
 }

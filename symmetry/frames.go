@@ -1,12 +1,12 @@
 package symmetry
 
 import (
-	"errors"
-	"fmt"
 	"math"
 	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/symmetry/message"
 )
 
 // Names of the rules for axes beside "default". Each is offered where it
@@ -97,7 +97,7 @@ func (f *Fit) Frame(name string) (Frame, error) {
 		}
 		names = append(names, fr.Rule.Name)
 	}
-	return Frame{}, fmt.Errorf("no frame %q for %s: it has %s", name, f.Setting.Symbol, strings.Join(names, ", "))
+	return Frame{}, message.Errorf("no frame %q for %s: it has %s", name, f.Setting.Symbol, strings.Join(names, ", "))
 }
 
 // rules lists the choices of axes of a kind of group, from its standard axes.
@@ -232,19 +232,19 @@ func (f *Fit) In(frame Frame) *Fit {
 // though the group has such.
 func (f *Fit) FrameAlong(z, x mgl64.Vec3) (Frame, error) {
 	if f.Setting.Infinite() {
-		return Frame{}, fmt.Errorf("the axes of %s are not chosen: z lies along the molecule, and x is free", f.Setting.Symbol)
+		return Frame{}, message.Errorf("the axes of %s are not chosen: z lies along the molecule, and x is free", f.Setting.Symbol)
 	}
 	up := mgl64.Vec3{0, 0, 1}
 	if z != (mgl64.Vec3{}) {
 		if z.Len() < 1e-9 {
-			return Frame{}, errors.New("z has no direction: the two places are the same")
+			return Frame{}, message.Errorf("z has no direction: the two places are the same")
 		}
 		up = z.Normalize()
 	}
 	allowed := f.Setting.AxesForZ()
 	up, ok := nearestLine(up, allowed)
 	if !ok {
-		return Frame{}, fmt.Errorf("z cannot lie there in %s: %s", f.Setting.Symbol, f.Setting.possible(allowed, "z"))
+		return Frame{}, message.Errorf("z cannot lie there in %s: %s", f.Setting.Symbol, f.Setting.possible(allowed, "z"))
 	}
 	across := f.Setting.LinesForX(up)
 	side := mgl64.Vec3{}
@@ -252,10 +252,10 @@ func (f *Fit) FrameAlong(z, x mgl64.Vec3) (Frame, error) {
 	case x != (mgl64.Vec3{}):
 		side = x.Sub(up.Mul(x.Dot(up)))
 		if side.Len() < 1e-6*x.Len() {
-			return Frame{}, errors.New("x cannot lie along z")
+			return Frame{}, message.Errorf("x cannot lie along z")
 		}
 		if side, ok = nearestLine(side.Normalize(), across); !ok {
-			return Frame{}, fmt.Errorf("x cannot lie there in %s: %s", f.Setting.Symbol, f.Setting.possible(across, "x"))
+			return Frame{}, message.Errorf("x cannot lie there in %s: %s", f.Setting.Symbol, f.Setting.possible(across, "x"))
 		}
 	case math.Abs(up.Z()) > 1-1e-9:
 		side = mgl64.Vec3{1, 0, 0}

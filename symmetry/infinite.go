@@ -1,8 +1,9 @@
 package symmetry
 
 import (
-	"fmt"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // InfiniteIrrep returns an irrep of C∞v, D∞h or Kh, whose operations cannot be
@@ -23,7 +24,7 @@ func InfiniteIrrep(symbol string, lambda, gerade, mirror int) (Irrep, error) {
 		return Irrep{}, err
 	}
 	if !k.infinite() {
-		return Irrep{}, fmt.Errorf("%s is finite: C∞v, D∞h and Kh are the infinite groups", symbol)
+		return Irrep{}, message.Errorf("%s is finite: C∞v, D∞h and Kh are the infinite groups", symbol)
 	}
 	ir := Irrep{Lambda: lambda, Gerade: gerade, Mirror: mirror, Dimension: 2}
 	linear, central := k.family != spherical, k.family != linearPolar
@@ -37,7 +38,7 @@ func InfiniteIrrep(symbol string, lambda, gerade, mirror int) (Irrep, error) {
 		(gerade != 0) == central && gerade*gerade <= 1 &&
 		(mirror != 0) == (linear && lambda == 0) && mirror*mirror <= 1
 	if !ok {
-		return Irrep{}, fmt.Errorf("%s has no irrep with angular momentum %d, parity %d and mirror sign %d", symbol, lambda, gerade, mirror)
+		return Irrep{}, message.Errorf("%s has no irrep with angular momentum %d, parity %d and mirror sign %d", symbol, lambda, gerade, mirror)
 	}
 	letters := "ΣΠΔΦΓΗΙΚΛΜΝ"
 	if k.family == spherical {

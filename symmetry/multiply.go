@@ -1,9 +1,10 @@
 package symmetry
 
 import (
-	"fmt"
 	"math"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // A Content tells how many copies of an irrep a representation holds.
@@ -22,7 +23,7 @@ func (s *Setting) Irrep(label string) (*Irrep, error) {
 		}
 		labels = append(labels, s.Irreps[i].Label)
 	}
-	return nil, fmt.Errorf("%s has no irrep %q: it has %s", s.Symbol, label, strings.Join(labels, " "))
+	return nil, message.Errorf("%s has no irrep %q: it has %s", s.Symbol, label, strings.Join(labels, " "))
 }
 
 // Reduce splits a representation, given by one real character a class, into
@@ -31,7 +32,7 @@ func (s *Setting) Irrep(label string) (*Irrep, error) {
 // irreps' order, and an error if the characters are those of no representation.
 func (s *Setting) Reduce(characters []float64) ([]Content, error) {
 	if len(characters) != len(s.Classes) {
-		return nil, fmt.Errorf("%d characters for the %d classes of %s", len(characters), len(s.Classes), s.Symbol)
+		return nil, message.Errorf("%d characters for the %d classes of %s", len(characters), len(s.Classes), s.Symbol)
 	}
 	var out []Content
 	for _, ir := range s.Irreps {
@@ -45,7 +46,7 @@ func (s *Setting) Reduce(characters []float64) ([]Content, error) {
 		}
 		copies := math.Round(sum)
 		if math.Abs(sum-copies) > 1e-6 || copies < 0 {
-			return nil, fmt.Errorf("the characters are those of no representation of %s: %s would occur %.3f times", s.Symbol, ir.Label, sum)
+			return nil, message.Errorf("the characters are those of no representation of %s: %s would occur %.3f times", s.Symbol, ir.Label, sum)
 		}
 		if copies > 0 {
 			out = append(out, Content{ir, int(copies)})
@@ -107,7 +108,7 @@ func InfiniteIrrepByLabel(symbol, label string) (Irrep, error) {
 		}
 	}
 	examples := map[string]string{"C∞v": "Σ+ Σ- Π Δ Φ …", "D∞h": "Σg+ Σg- Πg Δg … Σu+ Σu- Πu Δu …", "Kh": "Sg Pg Dg … Su Pu Du …"}
-	return Irrep{}, fmt.Errorf("%s has no irrep %q: it has %s", symbol, label, examples[symbol])
+	return Irrep{}, message.Errorf("%s has no irrep %q: it has %s", symbol, label, examples[symbol])
 }
 
 // MultiplyInfinite returns the content of the direct product of two irreps of
@@ -138,7 +139,7 @@ func MultiplyInfinite(symbol string, a, b Irrep) (content, symmetric, antisymmet
 		low = -low
 	}
 	if high > maxLambda {
-		return nil, nil, nil, fmt.Errorf("the product goes beyond angular momentum %d", maxLambda)
+		return nil, nil, nil, message.Errorf("the product goes beyond angular momentum %d", maxLambda)
 	}
 	switch {
 	case symbol == "Kh":

@@ -2,12 +2,13 @@ package symmetry
 
 import (
 	"context"
-	"fmt"
 	"math"
 	"slices"
 	"sort"
 
 	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/symmetry/message"
 )
 
 // DefaultNearness (Å) is how far an atom may move to a group of the ladder.
@@ -68,7 +69,7 @@ func Near(ctx context.Context, points []Point, links []Link, limit float64, prog
 		return nil, nil
 	}
 	if _, straight := l.cloud.line(1e-6); straight {
-		return nil, fmt.Errorf("the points lie on one line: only finite groups are sought, and a linear set has infinitely many of them")
+		return nil, message.Errorf("the points lie on one line: only finite groups are sought, and a linear set has infinitely many of them")
 	}
 	if err := l.search(ctx, func(share float64) { progress(0.8 * share) }); err != nil {
 		return nil, err

@@ -1,12 +1,12 @@
 package symmetry
 
 import (
-	"errors"
-	"fmt"
 	"math"
 
 	"github.com/go-gl/mathgl/mgl64"
 	"gonum.org/v1/gonum/mat"
+
+	"lobewright/symmetry/message"
 )
 
 // MostShapePoints is the number of points up to which ShapeMeasure tries every
@@ -23,7 +23,7 @@ const MostShapePoints = 8
 // extent.
 func ShapeMeasure(points, reference []Point) (float64, error) {
 	if len(points) == 0 || len(points) != len(reference) {
-		return 0, fmt.Errorf("%d points against a shape of %d", len(points), len(reference))
+		return 0, message.Errorf("%d points against a shape of %d", len(points), len(reference))
 	}
 	q, p := newCloud(points), newCloud(reference)
 	spread := func(c *cloud) (sum float64) {
@@ -34,7 +34,7 @@ func ShapeMeasure(points, reference []Point) (float64, error) {
 	}
 	qq, pp := spread(q), spread(p)
 	if qq == 0 || pp == 0 {
-		return 0, errors.New("a set of points in one place has no shape")
+		return 0, message.Errorf("a set of points in one place has no shape")
 	}
 	count := map[int]int{}
 	for i := range points {
@@ -43,7 +43,7 @@ func ShapeMeasure(points, reference []Point) (float64, error) {
 	}
 	for kind, n := range count {
 		if n != 0 {
-			return 0, fmt.Errorf("the shape has another number of points of kind %d", kind)
+			return 0, message.Errorf("the shape has another number of points of kind %d", kind)
 		}
 	}
 	s := shapeSearch{q: q, p: p, image: make([]int32, len(points)), taken: make([]bool, len(points))}

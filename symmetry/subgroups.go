@@ -2,9 +2,10 @@ package symmetry
 
 import (
 	"encoding/binary"
-	"fmt"
 	"math/bits"
 	"sort"
+
+	"lobewright/symmetry/message"
 )
 
 // An opSet is a set of operations of a Setting, a bit for each index.
@@ -117,7 +118,7 @@ func (s *Setting) Subgroups() ([][]int, error) {
 
 func (s *Setting) subgroups() ([]opSet, error) {
 	if s.Infinite() || s.Order() > MaxSubgroupOrder {
-		return nil, fmt.Errorf("the subgroups of %s are not listed: only finite groups of at most %d operations are searched", s.Symbol, MaxSubgroupOrder)
+		return nil, message.Errorf("the subgroups of %s are not listed: only finite groups of at most %d operations are searched", s.Symbol, MaxSubgroupOrder)
 	}
 	known := map[string]bool{}
 	trivial := s.generated()

@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // family is a series of point groups that are built alike.
@@ -58,7 +60,7 @@ func parseSymbol(symbol string) (kind, error) {
 	if k, ok := namedKinds[symbol]; ok {
 		return k, nil
 	}
-	unknown := fmt.Errorf("unknown point group %q: known are %s", symbol, symbolsKnown)
+	unknown := message.Errorf("unknown point group %q: known are %s", symbol, symbolsKnown)
 	if len(symbol) < 2 || !strings.ContainsRune("CDS", rune(symbol[0])) {
 		return kind{}, unknown
 	}
@@ -69,7 +71,7 @@ func parseSymbol(symbol string) (kind, error) {
 		return kind{}, unknown
 	}
 	if n > MaxFold {
-		return kind{}, fmt.Errorf("point group %q: n goes up to %d", symbol, MaxFold)
+		return kind{}, message.Errorf("point group %q: n goes up to %d", symbol, MaxFold)
 	}
 	f, ok := map[string]family{
 		"C": cyclic, "Cv": pyramidal, "Ch": cyclicHorizontal,
@@ -79,7 +81,7 @@ func parseSymbol(symbol string) (kind, error) {
 		return kind{}, unknown
 	}
 	if usual := usualSymbol(f, n); usual != "" {
-		return kind{}, fmt.Errorf("point group %q is usually written %s", symbol, usual)
+		return kind{}, message.Errorf("point group %q is usually written %s", symbol, usual)
 	}
 	if f == improperCyclic {
 		n /= 2

@@ -6,12 +6,12 @@ import (
 	"encoding/binary"
 	"encoding/json"
 	"encoding/xml"
-	"errors"
-	"fmt"
 	"io"
 	"slices"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // findInGIF walks from block to block (CompuServe, Graphics Interchange
@@ -29,7 +29,7 @@ func findInGIF(r io.ReaderAt, size int64) ([]byte, error) {
 			comment := g.blocks(len(studyKeyword) + 1 + maxStudy)
 			if data, ok := bytes.CutPrefix(comment, []byte(studyKeyword+"\n")); ok {
 				if g.overfull {
-					return nil, fmt.Errorf("the study is larger than %d bytes", maxStudy)
+					return nil, message.Errorf("the study is larger than %d bytes", maxStudy)
 				}
 				return data, g.err
 			}
@@ -167,9 +167,9 @@ func findInGLB(r io.ReaderAt, size int64) ([]byte, error) {
 	n := int64(binary.LittleEndian.Uint32(head[12:]))
 	switch {
 	case binary.LittleEndian.Uint32(head[4:]) != 2:
-		return nil, errors.New("this is not GLB of version 2")
+		return nil, message.Errorf("this is not GLB of version 2")
 	case string(head[16:]) != "JSON":
-		return nil, errors.New("the first chunk is not JSON")
+		return nil, message.Errorf("the first chunk is not JSON")
 	case n > size-20:
 		return nil, errCutOff
 	}
@@ -181,7 +181,7 @@ func findInGLB(r io.ReaderAt, size int64) ([]byte, error) {
 		Extras json.RawMessage `json:"extras"`
 	}
 	if err := json.Unmarshal(text, &document); err != nil {
-		return nil, errors.New("its JSON is damaged")
+		return nil, message.Errorf("its JSON is damaged")
 	}
 	var extras map[string]json.RawMessage
 	if err := json.Unmarshal(document.Extras, &extras); err != nil {
@@ -189,7 +189,7 @@ func findInGLB(r io.ReaderAt, size int64) ([]byte, error) {
 	}
 	found := extras[studyKeyword]
 	if len(found) > maxStudy {
-		return nil, fmt.Errorf("the study is larger than %d bytes", maxStudy)
+		return nil, message.Errorf("the study is larger than %d bytes", maxStudy)
 	}
 	return found, nil
 }
@@ -200,7 +200,7 @@ const svgSpace = "urn:x-lobewright:study"
 // findInSVG reads elements up to the one that holds a study.
 func findInSVG(r io.ReaderAt, size int64) ([]byte, error) {
 	if size > maxHeld {
-		return nil, fmt.Errorf("the file is larger than %d bytes", maxHeld)
+		return nil, message.Errorf("the file is larger than %d bytes", maxHeld)
 	}
 	d := xml.NewDecoder(io.NewSectionReader(r, 0, size))
 	d.Strict = true
@@ -212,12 +212,12 @@ func findInSVG(r io.ReaderAt, size int64) ([]byte, error) {
 		case err == io.EOF && depth == 0:
 			return nil, nil
 		case err != nil:
-			return nil, errors.New("its XML is damaged or cut off")
+			return nil, message.Errorf("its XML is damaged or cut off")
 		}
 		switch t := token.(type) {
 		case xml.StartElement:
 			if depth++; depth > deepest {
-				return nil, fmt.Errorf("its elements stand within each other more than %d deep", deepest)
+				return nil, message.Errorf("its elements stand within each other more than %d deep", deepest)
 			}
 			if t.Name.Local == "study" && slices.ContainsFunc(t.Attr, func(a xml.Attr) bool { return a.Value == svgSpace }) {
 				return studyOfElement(d)
@@ -234,12 +234,12 @@ func studyOfElement(d *xml.Decoder) ([]byte, error) {
 	for {
 		token, err := d.RawToken()
 		if err != nil {
-			return nil, errors.New("its XML is damaged or cut off")
+			return nil, message.Errorf("its XML is damaged or cut off")
 		}
 		switch t := token.(type) {
 		case xml.CharData:
 			if out = append(out, t...); len(out) > maxStudy {
-				return nil, fmt.Errorf("the study is larger than %d bytes", maxStudy)
+				return nil, message.Errorf("the study is larger than %d bytes", maxStudy)
 			}
 		case xml.EndElement:
 			return out, nil
@@ -257,7 +257,7 @@ const pdfSubtype = "/application#2Fx-lobewright"
 // 7.11.4).
 func findInPDF(r io.ReaderAt, size int64) ([]byte, error) {
 	if size > maxHeld {
-		return nil, fmt.Errorf("the file is larger than %d bytes", maxHeld)
+		return nil, message.Errorf("the file is larger than %d bytes", maxHeld)
 	}
 	data, err := held(r, 0, size, maxHeld)
 	if err != nil {
@@ -270,7 +270,7 @@ func findInPDF(r io.ReaderAt, size int64) ([]byte, error) {
 	if at < 0 {
 		return nil, nil
 	}
-	damaged := errors.New("the study in it is damaged or cut off")
+	damaged := message.Errorf("the study in it is damaged or cut off")
 	begin := bytes.Index(data[at:], []byte("stream"))
 	if begin < 0 {
 		return nil, damaged

@@ -4,9 +4,10 @@ import (
 	"bytes"
 	"compress/zlib"
 	"encoding/binary"
-	"errors"
 	"hash/crc32"
 	"io"
+
+	"lobewright/symmetry/message"
 )
 
 // findInPNG walks from chunk to chunk.
@@ -45,11 +46,11 @@ func studyOfText(r io.ReaderAt, at, n int64) ([]byte, error) {
 	}
 	body, sum := chunk[:4+n], binary.BigEndian.Uint32(chunk[4+n:])
 	if crc32.ChecksumIEEE(body) != sum {
-		return nil, errors.New("the study in it is damaged: its check sum is wrong")
+		return nil, message.Errorf("the study in it is damaged: its check sum is wrong")
 	}
 	rest := body[4+len(studyKeyword)+1:]
 	if len(rest) < 2 {
-		return nil, errors.New("the study in it is damaged")
+		return nil, message.Errorf("the study in it is damaged")
 	}
 	compressed := rest[0] == 1
 	// Behind the method stand a language and a translated keyword, each up to
@@ -58,7 +59,7 @@ func studyOfText(r io.ReaderAt, at, n int64) ([]byte, error) {
 	for range 2 {
 		i := bytes.IndexByte(rest, 0)
 		if i < 0 {
-			return nil, errors.New("the study in it is damaged")
+			return nil, message.Errorf("the study in it is damaged")
 		}
 		rest = rest[i+1:]
 	}
@@ -67,7 +68,7 @@ func studyOfText(r io.ReaderAt, at, n int64) ([]byte, error) {
 	}
 	z, err := zlib.NewReader(bytes.NewReader(rest))
 	if err != nil {
-		return nil, errors.New("the study in it is damaged")
+		return nil, message.Errorf("the study in it is damaged")
 	}
 	return expanded(z)
 }

@@ -5,9 +5,10 @@ import (
 	"compress/lzw"
 	"context"
 	"encoding/binary"
-	"fmt"
 	"image"
 	"io"
+
+	"lobewright/symmetry/message"
 )
 
 // Numbers and names of this format: CompuServe, Graphics Interchange Format,
@@ -191,7 +192,7 @@ func (b *blockWriter) close() {
 // CheckGIF tells of a rate that no GIF can show.
 func CheckGIF(rate float64) error {
 	if rate > MostGIFRate {
-		return fmt.Errorf("a GIF shows %d pictures a second at the most, not %g; an APNG or MP4 shows more", MostGIFRate, rate)
+		return message.Errorf("a GIF shows %d pictures a second at the most, not %g; an APNG or MP4 shows more", MostGIFRate, rate)
 	}
 	return nil
 }

@@ -3,7 +3,6 @@ package export
 import (
 	"bytes"
 	"context"
-	"errors"
 	"fmt"
 	"image"
 	"io"
@@ -13,12 +12,14 @@ import (
 	"path/filepath"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // CheckMP4 tells beforehand whether this computer can write MP4.
 func CheckMP4() error {
 	if _, err := exec.LookPath("ffmpeg"); err != nil {
-		return errors.New("MP4 is written by the program ffmpeg, which is not installed here; GIF, APNG and GLB need nothing")
+		return message.Errorf("MP4 is written by the program ffmpeg, which is not installed here; GIF, APNG and GLB need nothing")
 	}
 	return nil
 }
@@ -31,7 +32,7 @@ func (f *Film) EncodeMP4(ctx context.Context, w io.Writer, rate float64, study [
 		return err
 	}
 	if !f.Opaque {
-		return errors.New("MP4 knows no transparent ground; choose another")
+		return message.Errorf("MP4 knows no transparent ground; choose another")
 	}
 	// The writer of this format goes back in its file, so it needs a real one.
 	folder, err := os.MkdirTemp("", "lobewright-")
@@ -74,7 +75,7 @@ func (f *Film) feed(ctx context.Context, path string, rate float64) error {
 		return err
 	}
 	if err := command.Start(); err != nil {
-		return fmt.Errorf("ffmpeg cannot be started: %w", err)
+		return message.Errorf("ffmpeg cannot be started: %w", err)
 	}
 	feeding := f.each(ctx, func(k int, img *image.RGBA) error {
 		for range max(1, int(math.Round(f.Seconds[k]*rate))) {
@@ -91,7 +92,7 @@ func (f *Film) feed(ctx context.Context, path string, rate float64) error {
 		return ctx.Err()
 	case err != nil:
 		line, _, _ := strings.Cut(strings.TrimSpace(said.String()), "\n")
-		return fmt.Errorf("ffmpeg says: %s", oneLine(line))
+		return message.Errorf("ffmpeg says: %s", oneLine(line))
 	}
 	return feeding
 }

@@ -2,7 +2,6 @@ package export
 
 import (
 	"context"
-	"fmt"
 	"image"
 	"image/color"
 	"io"
@@ -11,6 +10,7 @@ import (
 	"strings"
 
 	"lobewright/app/sheet"
+	"lobewright/symmetry/message"
 )
 
 // SheetEndings are the endings of files that sheets can be written to.
@@ -41,7 +41,7 @@ func WriteSheet(ctx context.Context, w io.Writer, s *sheet.Sheet, name string, d
 	case ".pdf":
 		return sheetPDF(ctx, w, s, dpi, study)
 	}
-	return fmt.Errorf("%s: the name must end in %s", name, strings.Join(SheetEndings, " or "))
+	return message.Errorf("%s: the name must end in %s", name, strings.Join(SheetEndings, " or "))
 }
 
 func sheetPNG(ctx context.Context, w io.Writer, s *sheet.Sheet, dpi float64, study []byte) error {
@@ -67,7 +67,7 @@ type painted struct {
 // itself has.
 func pictureOf(ctx context.Context, s *sheet.Sheet, p *sheet.Panel, dpi float64) (*painted, error) {
 	if r := p.Pixels(dpi); r.Dx() > maxPanel || r.Dy() > maxPanel {
-		return nil, fmt.Errorf("a panel of %d × %d pixels is too large; each side may have %d", r.Dx(), r.Dy(), maxPanel)
+		return nil, message.Errorf("a panel of %d × %d pixels is too large; each side may have %d", r.Dx(), r.Dy(), maxPanel)
 	}
 	img, err := p.Paint(ctx, dpi)
 	if err != nil {

@@ -2,7 +2,6 @@ package export
 
 import (
 	"bytes"
-	"errors"
 	"fmt"
 	"io"
 	"os"
@@ -12,6 +11,7 @@ import (
 
 	"lobewright/app/files"
 	"lobewright/app/study"
+	"lobewright/symmetry/message"
 )
 
 // Every figure carries its study where its format has a place for such things:
@@ -31,7 +31,7 @@ const studyKeyword = "lobewright study"
 
 // ErrNoStudy is wrapped by the error for a file that is a figure and carries
 // no study.
-var ErrNoStudy = errors.New("carries no study; figures of this program do, unless they were made with --no-study")
+var ErrNoStudy = message.Errorf("carries no study; figures of this program do, unless they were made with --no-study")
 
 // Limits of what is read of a figure.
 const (
@@ -90,17 +90,17 @@ func CarriesStudy(path string) bool {
 func StudyIn(path string) (study.Study, error) {
 	f, err := os.Open(path)
 	if err != nil {
-		return study.Study{}, fmt.Errorf("cannot open %s: %w", path, files.Cause(err))
+		return study.Study{}, message.Errorf("cannot open %s: %w", path, files.Cause(err))
 	}
 	defer f.Close()
 	info, err := f.Stat()
 	switch {
 	case err != nil:
-		return study.Study{}, fmt.Errorf("cannot open %s: %w", path, files.Cause(err))
+		return study.Study{}, message.Errorf("cannot open %s: %w", path, files.Cause(err))
 	case info.IsDir():
-		return study.Study{}, fmt.Errorf("cannot open %s: it is a folder", path)
+		return study.Study{}, message.Errorf("cannot open %s: it is a folder", path)
 	case !info.Mode().IsRegular():
-		return study.Study{}, fmt.Errorf("cannot open %s: it is not an ordinary file", path)
+		return study.Study{}, message.Errorf("cannot open %s: it is not an ordinary file", path)
 	}
 	return ReadStudy(f, info.Size(), filepath.Base(path))
 }
@@ -110,7 +110,7 @@ func ReadStudy(r io.ReaderAt, size int64, name string) (study.Study, error) {
 	name = oneLine(name)
 	head := make([]byte, min(size, 4096))
 	if _, err := r.ReadAt(head, 0); err != nil && err != io.EOF {
-		return study.Study{}, fmt.Errorf("%s: cannot be read: %w", name, files.Cause(err))
+		return study.Study{}, message.Errorf("%s: cannot be read: %w", name, files.Cause(err))
 	}
 	if strings.EqualFold(filepath.Ext(name), study.Extension) {
 		return study.Read(io.NewSectionReader(r, 0, size), name)
@@ -120,18 +120,18 @@ func ReadStudy(r io.ReaderAt, size int64, name string) (study.Study, error) {
 			continue
 		}
 		if size > maxFile {
-			return study.Study{}, fmt.Errorf("%s: the file is larger than %d bytes", name, maxFile)
+			return study.Study{}, message.Errorf("%s: the file is larger than %d bytes", name, maxFile)
 		}
 		data, err := c.find(r, size)
 		switch {
 		case err != nil:
-			return study.Study{}, fmt.Errorf("%s: %w", name, err)
+			return study.Study{}, message.Errorf("%s: %w", name, err)
 		case data == nil:
-			return study.Study{}, fmt.Errorf("%s %w", name, ErrNoStudy)
+			return study.Study{}, message.Errorf("%s %w", name, ErrNoStudy)
 		}
 		return study.Decode(data, "the study in "+name)
 	}
-	return study.Study{}, fmt.Errorf("%s: this is no figure that could carry a study: neither PNG, GIF, SVG, PDF, GLB nor MP4", name)
+	return study.Study{}, message.Errorf("%s: this is no figure that could carry a study: neither PNG, GIF, SVG, PDF, GLB nor MP4", name)
 }
 
 // oneLine keeps a message on one line, whatever a file's name contains.
@@ -147,7 +147,7 @@ func oneLine(s string) string {
 // held reads a part of a file into memory if it is within a limit.
 func held(r io.ReaderAt, at, n, limit int64) ([]byte, error) {
 	if n > limit {
-		return nil, fmt.Errorf("the study would have more than %d bytes", limit)
+		return nil, message.Errorf("the study would have more than %d bytes", limit)
 	}
 	data := make([]byte, n)
 	if _, err := io.ReadFull(io.NewSectionReader(r, at, n), data); err != nil {
@@ -156,16 +156,16 @@ func held(r io.ReaderAt, at, n, limit int64) ([]byte, error) {
 	return data, nil
 }
 
-var errCutOff = errors.New("the file is cut off")
+var errCutOff = message.Errorf("the file is cut off")
 
 // expanded reads a compressed study up to its limit.
 func expanded(z io.Reader) ([]byte, error) {
 	data, err := io.ReadAll(io.LimitReader(z, int64(maxStudy)+1))
 	switch {
 	case len(data) > maxStudy:
-		return nil, fmt.Errorf("the study is larger than %d bytes", maxStudy)
+		return nil, message.Errorf("the study is larger than %d bytes", maxStudy)
 	case err != nil:
-		return nil, errors.New("the study in it is damaged")
+		return nil, message.Errorf("the study in it is damaged")
 	}
 	return data, nil
 }

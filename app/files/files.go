@@ -7,16 +7,17 @@ import (
 	"crypto/rand"
 	"encoding/hex"
 	"errors"
-	"fmt"
 	"io"
 	"io/fs"
 	"os"
 	"path/filepath"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // ErrExists is wrapped by the error for a file that is there already.
-var ErrExists = errors.New("exists already")
+var ErrExists = message.Errorf("exists already")
 
 // Options say how a file is written.
 type Options struct {
@@ -90,7 +91,7 @@ type part struct {
 }
 
 func cannot(path string, err error) error {
-	return fmt.Errorf("cannot write %s: %w", path, Cause(err))
+	return message.Errorf("cannot write %s: %w", path, Cause(err))
 }
 
 // Check tells beforehand whether Write would refuse a path, so that nothing is
@@ -103,9 +104,9 @@ func Check(path string, force bool) error {
 	folder := filepath.Dir(path)
 	switch info, err := os.Stat(folder); {
 	case errors.Is(err, fs.ErrNotExist):
-		return fmt.Errorf("cannot write %s: there is no folder %s", path, folder)
+		return message.Errorf("cannot write %s: there is no folder %s", path, folder)
 	case err == nil && !info.IsDir():
-		return fmt.Errorf("cannot write %s: %s is no folder", path, folder)
+		return message.Errorf("cannot write %s: %s is no folder", path, folder)
 	}
 	return nil
 }
@@ -121,17 +122,17 @@ func check(path string, o Options) (target string, mode fs.FileMode, isNew bool,
 	switch {
 	case errors.Is(err, fs.ErrNotExist):
 		if to, err := os.Readlink(path); err == nil {
-			return "", 0, false, fmt.Errorf("cannot write %s: it is a link to %s, which does not exist", path, to)
+			return "", 0, false, message.Errorf("cannot write %s: it is a link to %s, which does not exist", path, to)
 		}
 		return path, mode, true, nil
 	case err != nil:
 		return "", 0, false, cannot(path, err)
 	case info.IsDir():
-		return "", 0, false, fmt.Errorf("cannot write %s: it is a folder; give the name of a file", path)
+		return "", 0, false, message.Errorf("cannot write %s: it is a folder; give the name of a file", path)
 	case !info.Mode().IsRegular():
-		return "", 0, false, fmt.Errorf("cannot write %s: it is not an ordinary file", path)
+		return "", 0, false, message.Errorf("cannot write %s: it is not an ordinary file", path)
 	case !o.Force:
-		return "", 0, false, fmt.Errorf("%s %w; --force overwrites it", path, ErrExists)
+		return "", 0, false, message.Errorf("%s %w; --force overwrites it", path, ErrExists)
 	}
 	target, err = filepath.EvalSymlinks(path)
 	if err != nil {
@@ -203,7 +204,7 @@ func takeName(temporary, target string, force bool) error {
 			return os.Remove(temporary)
 		}
 		if errors.Is(err, fs.ErrExist) {
-			return fmt.Errorf("it %w; --force overwrites it", ErrExists)
+			return message.Errorf("it %w; --force overwrites it", ErrExists)
 		}
 	}
 	return os.Rename(temporary, target)

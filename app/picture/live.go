@@ -1,8 +1,6 @@
 package picture
 
 import (
-	"fmt"
-
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/notation"
@@ -10,6 +8,7 @@ import (
 	"lobewright/app/work"
 	"lobewright/assets"
 	"lobewright/render"
+	"lobewright/symmetry/message"
 )
 
 // Shown is what a live picture shows. It is a plain value; what it points to
@@ -92,7 +91,7 @@ const ghostSize = 0.97
 func (l *Live) Frame(shown Shown, orbit Orbit, width, height int, dpi float64, quick bool) (*Frame, error) {
 	fonts, err := fonts()
 	if err != nil {
-		return nil, fmt.Errorf("the built-in typefaces cannot be read: %w", err)
+		return nil, message.Errorf("the built-in typefaces cannot be read: %w", err)
 	}
 	palette := paletteOf(shown.Look)
 	if shown.Palette != nil {

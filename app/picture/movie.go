@@ -13,6 +13,7 @@ import (
 	"lobewright/app/work"
 	"lobewright/orbitals"
 	"lobewright/render"
+	"lobewright/symmetry/message"
 )
 
 // A Movie is an operation that is played on a function or a group orbital, as a
@@ -73,7 +74,7 @@ func NewMovie(p *work.Play, s study.Study) (*Movie, error) {
 	}
 	short := min(m.Width, m.Height)
 	if short < leastMovie {
-		return nil, fmt.Errorf("%d × %d pixels leave no room for a picture; each side must have %d", m.Width, m.Height, leastMovie)
+		return nil, message.Errorf("%d × %d pixels leave no room for a picture; each side must have %d", m.Width, m.Height, leastMovie)
 	}
 	// Type and lines grow with the picture; in small ones they stay legible.
 	m.Resolution = max(72, 96*float64(short)/DefaultMovieHeight)
@@ -130,7 +131,7 @@ func stills(op work.Operation, a study.Animation) []Still {
 func (m *Movie) addCaption() error {
 	fonts, err := fonts()
 	if err != nil {
-		return fmt.Errorf("the built-in typefaces cannot be read: %w", err)
+		return message.Errorf("the built-in typefaces cannot be read: %w", err)
 	}
 	room := float64(m.Width)*25.4/m.Resolution - 2*movieMargin
 	for _, t := range captionsOf(m.play) {

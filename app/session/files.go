@@ -11,6 +11,7 @@ import (
 	"strings"
 
 	"lobewright/app/files"
+	"lobewright/symmetry/message"
 )
 
 // write replaces a file by a whole new one that only its owner may read.
@@ -39,7 +40,7 @@ func openRegular(path string) (*os.File, error) {
 		return nil, bare(path, err)
 	}
 	if !info.Mode().IsRegular() {
-		return nil, fmt.Errorf("%s: this is no ordinary file", filepath.Base(path))
+		return nil, message.Errorf("%s: this is no ordinary file", filepath.Base(path))
 	}
 	f, err := os.Open(path)
 	return f, bare(path, err)
@@ -51,7 +52,7 @@ func bare(path string, err error) error {
 	if err == nil {
 		return nil
 	}
-	return fmt.Errorf("%s: %w", filepath.Base(path), files.Cause(err))
+	return message.Errorf("%s: %w", filepath.Base(path), files.Cause(err))
 }
 
 // mostAside is how many files of one name are kept aside; the last place is

@@ -34,6 +34,7 @@ import (
 	"time"
 
 	"lobewright/app/study"
+	"lobewright/symmetry/message"
 )
 
 // FolderVariable is the environment variable that names another folder than
@@ -181,7 +182,7 @@ func (s *Session) save() error {
 		err = write(s.path("lobewright"), data)
 	}
 	if err != nil {
-		return fmt.Errorf("the study cannot be saved: %w", err)
+		return message.Errorf("the study cannot be saved: %w", err)
 	}
 	s.mu.Lock()
 	s.saved, s.onDisk = st, true
@@ -264,7 +265,7 @@ func takeSlot(folder string) (int, *lock, error) {
 	case free != nil:
 		return freeSlot, free, nil
 	}
-	return 0, nil, fmt.Errorf("%d instances of the program run already", mostSlots)
+	return 0, nil, message.Errorf("%d instances of the program run already", mostSlots)
 }
 
 // mostDeaths is how often the program may end before a restored study has been
@@ -288,7 +289,7 @@ func (s *Session) restoreStudy(deaths int) []Note {
 		if _, err := os.Lstat(path); err != nil {
 			return nil
 		}
-		return []Note{putAside(path, fmt.Errorf("%s: the program ended %d times before this study was shown", filepath.Base(path), deaths))}
+		return []Note{putAside(path, message.Errorf("%s: the program ended %d times before this study was shown", filepath.Base(path), deaths))}
 	}
 	f, err := openRegular(path)
 	if errors.Is(err, fs.ErrNotExist) {

@@ -1,7 +1,6 @@
 package sheet
 
 import (
-	"errors"
 	"fmt"
 	"strconv"
 	"strings"
@@ -13,6 +12,7 @@ import (
 	"lobewright/app/work"
 	"lobewright/orbitals"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // A correlation says what becomes of the irreps of a group in a subgroup.
@@ -29,7 +29,7 @@ type correlation struct {
 func correlate(g *work.Group, text string) (*correlation, error) {
 	setting := g.Fit.Setting
 	if text == "" {
-		return nil, errors.New("no subgroup is chosen")
+		return nil, message.Errorf("no subgroup is chosen")
 	}
 	symbol, number, numbered := strings.Cut(text, ":")
 	c := &correlation{symbol: setting.Symbol}
@@ -59,7 +59,7 @@ func correlate(g *work.Group, text string) (*correlation, error) {
 	n := 1
 	if numbered {
 		if n, err = strconv.Atoi(number); err != nil || n < 1 || n > len(all) {
-			return nil, fmt.Errorf("%s lies in %s in %d ways that differ; %q is none of them", symbol, setting.Symbol, len(all), text)
+			return nil, message.Errorf("%s lies in %s in %d ways that differ; %q is none of them", symbol, setting.Symbol, len(all), text)
 		}
 	}
 	d := all[n-1]
@@ -149,7 +149,7 @@ func (m *maker) adapted(o *work.Orbitals, c *correlation) ([]parent, error) {
 	for i, irrep := range o.Irreps {
 		at := c.index(irrep.Label)
 		if o.Content[i] > 0 && at < 0 {
-			return nil, fmt.Errorf("%s cannot be followed into %s", irrep.Label, c.subgroup)
+			return nil, message.Errorf("%s cannot be followed into %s", irrep.Label, c.subgroup)
 		}
 		for copy := range o.Content[i] {
 			p := parent{label: irrep.Label}
@@ -218,7 +218,7 @@ func (m *maker) branches(g *work.Group, parents []parent, c *correlation, d card
 		}
 	}
 	if rows > mostPanels {
-		return block{}, fmt.Errorf("there are %d branches; a sheet holds %d", rows, mostPanels)
+		return block{}, message.Errorf("there are %d branches; a sheet holds %d", rows, mostPanels)
 	}
 	if most == 0 {
 		view = picture.NewViewpoint(m.study.Camera, m.bodies.Molecule(g, m.study))

@@ -1,7 +1,6 @@
 package sheet
 
 import (
-	"errors"
 	"fmt"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -10,6 +9,7 @@ import (
 	"lobewright/app/picture"
 	"lobewright/app/study"
 	"lobewright/app/work"
+	"lobewright/symmetry/message"
 )
 
 // frames shows the structure, or the group orbital that is chosen, in the frame
@@ -25,7 +25,7 @@ func (m *maker) frames() (*Sheet, error) {
 		return nil, err
 	}
 	if e == nil {
-		return nil, errors.New("no second frame is chosen")
+		return nil, message.Errorf("no second frame is chosen")
 	}
 	second := m.secondStudy(g, e)
 	cells := make([]cell, 2)

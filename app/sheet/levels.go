@@ -1,7 +1,6 @@
 package sheet
 
 import (
-	"errors"
 	"fmt"
 	"math"
 	"strconv"
@@ -9,6 +8,7 @@ import (
 	"lobewright/app/notation"
 	"lobewright/app/picture"
 	"lobewright/app/work"
+	"lobewright/symmetry/message"
 )
 
 // A level is one set of partners: a group orbital on the left, orbitals of the
@@ -80,7 +80,7 @@ func (m *maker) centralAtom(o *work.Orbitals) (int, error) {
 	atoms := len(o.Group.Sites.Positions)
 	if n := m.study.Central; n > 0 {
 		if n > atoms {
-			return 0, fmt.Errorf("there is no atom %d; the structure has %d", n, atoms)
+			return 0, message.Errorf("there is no atom %d; the structure has %d", n, atoms)
 		}
 		return n - 1, nil
 	}
@@ -103,7 +103,7 @@ func (m *maker) centralAtom(o *work.Orbitals) (int, error) {
 		}
 	}
 	if !found {
-		return 0, errors.New("no atom without functions stays in its place under all operations; choose the central one")
+		return 0, message.Errorf("no atom without functions stays in its place under all operations; choose the central one")
 	}
 	return best, nil
 }

@@ -11,6 +11,7 @@ import (
 	"lobewright/app/work"
 	"lobewright/assets"
 	"lobewright/render"
+	"lobewright/symmetry/message"
 )
 
 // The kinds of sheets, as study.Figure.Sheet names them.
@@ -50,7 +51,7 @@ func (m *maker) make() (*Sheet, error) {
 	s := m.study
 	kind := Kind(s)
 	if kind != Molecule && kind != Frames && kind != Descent && len(s.Basis) == 0 {
-		return nil, fmt.Errorf("a sheet of this kind (%s) shows functions, and none are chosen", kind)
+		return nil, message.Errorf("a sheet of this kind (%s) shows functions, and none are chosen", kind)
 	}
 	switch kind {
 	case One, Set:
@@ -68,7 +69,7 @@ func (m *maker) make() (*Sheet, error) {
 	case Levels:
 		return m.levels()
 	}
-	return nil, fmt.Errorf("%q is no kind of sheet", kind)
+	return nil, message.Errorf("%q is no kind of sheet", kind)
 }
 
 // Kind is the kind of sheet that a study asks for.
@@ -118,7 +119,7 @@ const (
 func newMaker(ctx context.Context, w *work.Work, s study.Study) (*maker, error) {
 	fonts, err := picture.FontsOf(s.Figure.Font)
 	if err != nil {
-		return nil, fmt.Errorf("the built-in typefaces cannot be read: %w", err)
+		return nil, message.Errorf("the built-in typefaces cannot be read: %w", err)
 	}
 	f := s.Figure
 	m := &maker{
@@ -149,7 +150,7 @@ func newMaker(ctx context.Context, w *work.Work, s study.Study) (*maker, error) 
 		m.margin = m.width / 34
 	}
 	if m.width < leastWidth {
-		return nil, fmt.Errorf("a width of %.4g mm is too narrow for a picture; give at least %d mm", m.width, leastWidth)
+		return nil, message.Errorf("a width of %.4g mm is too narrow for a picture; give at least %d mm", m.width, leastWidth)
 	}
 	return m, nil
 }
@@ -214,7 +215,7 @@ func (m *maker) finish(title string, content block) (*Sheet, error) {
 			height, math.Ceil(content.h+2*m.margin)))
 	}
 	if content.w > m.inner()+slack {
-		return nil, fmt.Errorf("a width of %.4g mm is too narrow for this sheet; give at least %.0f mm, or a smaller text",
+		return nil, message.Errorf("a width of %.4g mm is too narrow for this sheet; give at least %.0f mm, or a smaller text",
 			m.width, math.Ceil(content.w+2*m.margin))
 	}
 	page := block{}

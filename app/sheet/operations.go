@@ -9,6 +9,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/orbitals"
+	"lobewright/symmetry/message"
 )
 
 // operations is a strip with a panel for each operation, by class, that shows
@@ -21,7 +22,7 @@ func (m *maker) operations() (*Sheet, error) {
 	b := subject.basis
 	all := b.Operations(m.study.Angle)
 	if len(all) > mostPanels {
-		return nil, fmt.Errorf("%s has %d operations; a sheet holds %d panels", b.Fit.Setting.Symbol, len(all), mostPanels)
+		return nil, message.Errorf("%s has %d operations; a sheet holds %d panels", b.Fit.Setting.Symbol, len(all), mostPanels)
 	}
 	g := grid{flows: true, widest: m.largest(), unlettered: len(all) > 26}
 	first := m.bodies.Lobes(b, subject.coefficients, m.study)
@@ -82,7 +83,7 @@ func (m *maker) subject() (subject, error) {
 	}
 	n := max(p.Function, 1)
 	if n > len(b.Functions) {
-		return subject{}, fmt.Errorf("function %d does not exist; the basis has %d", n, len(b.Functions))
+		return subject{}, message.Errorf("function %d does not exist; the basis has %d", n, len(b.Functions))
 	}
 	s := subject{basis: b, coefficients: make([]float64, len(b.Functions)), shown: make([]float64, len(b.Functions))}
 	s.coefficients[n-1] = 1

@@ -8,6 +8,7 @@ import (
 	"lobewright/app/picture"
 	"lobewright/app/work"
 	"lobewright/orbitals"
+	"lobewright/symmetry/message"
 )
 
 // all is the sheet of all group orbitals: a row an irrep, in columns by partner
@@ -30,7 +31,7 @@ func (m *maker) all() (*Sheet, error) {
 		}
 	}
 	if g.cells() > mostPanels {
-		return nil, fmt.Errorf("the basis has %d group orbitals; a sheet holds %d: choose an irrep", g.cells(), mostPanels)
+		return nil, message.Errorf("the basis has %d group orbitals; a sheet holds %d: choose an irrep", g.cells(), mostPanels)
 	}
 	return m.orbitalSheet(o, g, "all group orbitals")
 }

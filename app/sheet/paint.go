@@ -2,12 +2,12 @@ package sheet
 
 import (
 	"context"
-	"fmt"
 	"image"
 	"image/color"
 	"math"
 
 	"lobewright/render"
+	"lobewright/symmetry/message"
 )
 
 // samples a pixel: enough that the edges of bodies look even in print.
@@ -20,9 +20,9 @@ func (s *Sheet) Pixels(dpi float64) (width, height int, err error) {
 	w, h := math.Round(s.Width*perMM), math.Round(s.Height*perMM)
 	switch {
 	case !(w >= 1) || !(h >= 1):
-		return 0, 0, fmt.Errorf("%.4g mm × %.4g mm at %g dots per inch are less than a pixel", s.Width, s.Height, dpi)
+		return 0, 0, message.Errorf("%.4g mm × %.4g mm at %g dots per inch are less than a pixel", s.Width, s.Height, dpi)
 	case w > render.MaxSide || h > render.MaxSide:
-		return 0, 0, fmt.Errorf("%g mm × %.5g mm at %g dots per inch are %.0f × %.0f pixels; each side may have %d",
+		return 0, 0, message.Errorf("%g mm × %.5g mm at %g dots per inch are %.0f × %.0f pixels; each side may have %d",
 			s.Width, s.Height, dpi, w, h, render.MaxSide)
 	}
 	return int(w), int(h), nil

@@ -1,11 +1,11 @@
 package study
 
 import (
-	"fmt"
 	"io"
 	"strings"
 
 	"lobewright/app/study/record"
+	"lobewright/symmetry/message"
 )
 
 // Version is the version of the study's file that this program writes. Every
@@ -56,7 +56,7 @@ func Read(r io.Reader, name string) (Study, error) {
 func (s Study) WithCoordinates(name, text string) (Study, error) {
 	text = strings.ToValidUTF8(text, "\uFFFD")
 	if len(text) > MaxCoordinates {
-		return s, fmt.Errorf("%s: the text has %d bytes; at most %d are taken, more come from a file", name, len(text), MaxCoordinates)
+		return s, message.Errorf("%s: the text has %d bytes; at most %d are taken, more come from a file", name, len(text), MaxCoordinates)
 	}
 	out := s.Opened(name)
 	out.Coordinates = text

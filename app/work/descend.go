@@ -6,6 +6,7 @@ import (
 	"strings"
 
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // Descents lists the ways in which subgroups of a symbol lie in a finite group,
@@ -27,7 +28,7 @@ func Descents(s *symmetry.Setting, to string, keep []int) ([]*symmetry.Descent, 
 		}
 	}
 	if out == nil {
-		return nil, fmt.Errorf("no subgroup %s of %s holds %s", all[0].Subgroup.Symbol, s.Symbol, operationList(s, keep))
+		return nil, message.Errorf("no subgroup %s of %s holds %s", all[0].Subgroup.Symbol, s.Symbol, operationList(s, keep))
 	}
 	return out, nil
 }

@@ -2,10 +2,10 @@ package work
 
 import (
 	"errors"
-	"fmt"
 
 	"lobewright/app/study"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // points are the core atoms as the search for symmetry sees them. Kinds are
@@ -37,7 +37,7 @@ func detect(read *Structure, core []int, s study.Study) (*symmetry.Fit, error) {
 	if errors.As(err, &close) {
 		// Points are counted within the core; people know the atoms.
 		names := read.AtomNames()
-		return nil, blame(StageGroup, ConcernTolerance, fmt.Errorf(
+		return nil, blame(StageGroup, ConcernTolerance, message.Errorf(
 			"tolerance %g Å is too large: %s and %s are only %.3f Å apart; take less than half of that",
 			close.Tolerance, names[core[close.A]], names[core[close.B]], close.Distance))
 	}

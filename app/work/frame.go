@@ -1,7 +1,6 @@
 package work
 
 import (
-	"fmt"
 	"strconv"
 	"strings"
 
@@ -9,6 +8,7 @@ import (
 
 	"lobewright/app/study"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // inFrame writes a fit in the frame that a study chooses: by the name of a rule,
@@ -27,11 +27,11 @@ func inFrame(fit *symmetry.Fit, read *Structure, core []int, s study.Study) (*sy
 	d := directions{fit, read, core}
 	z, err := d.parse(s.Z)
 	if err != nil {
-		return nil, blame(StageGroup, ConcernZ, fmt.Errorf("z: %w", err))
+		return nil, blame(StageGroup, ConcernZ, message.Errorf("z: %w", err))
 	}
 	x, err := d.parse(s.X)
 	if err != nil {
-		return nil, blame(StageGroup, ConcernX, fmt.Errorf("x: %w", err))
+		return nil, blame(StageGroup, ConcernX, message.Errorf("x: %w", err))
 	}
 	frame, err := fit.FrameAlong(z, x)
 	if err != nil {
@@ -89,10 +89,10 @@ func (d directions) parse(text string) (mgl64.Vec3, error) {
 		out = d.fit.Rotation.Mul3x1(mgl64.Vec3{numbers[0], numbers[1], numbers[2]})
 		what = "the vector " + text + " has no length"
 	default:
-		return mgl64.Vec3{}, fmt.Errorf("%q: an operation, one atom, two atoms or a vector of three numbers would do", text)
+		return mgl64.Vec3{}, message.Errorf("%q: an operation, one atom, two atoms or a vector of three numbers would do", text)
 	}
 	if !(out.Len() > shortest) || !(out.Len() < 1e12) {
-		return mgl64.Vec3{}, fmt.Errorf("%s: that gives no direction", what)
+		return mgl64.Vec3{}, message.Errorf("%s: that gives no direction", what)
 	}
 	return out, nil
 }
@@ -100,14 +100,14 @@ func (d directions) parse(text string) (mgl64.Vec3, error) {
 func (d directions) operation(name string) (mgl64.Vec3, error) {
 	group := Group{Structure: d.read, Fit: d.fit}
 	if d.fit.Setting.Infinite() {
-		return mgl64.Vec3{}, fmt.Errorf("%q: the axes of %s are not chosen by operations", name, d.fit.Setting.Symbol)
+		return mgl64.Vec3{}, message.Errorf("%q: the axes of %s are not chosen by operations", name, d.fit.Setting.Symbol)
 	}
 	o, err := group.Operation(name, 0)
 	if err != nil {
 		return mgl64.Vec3{}, err
 	}
 	if o.Axis == (mgl64.Vec3{}) {
-		return mgl64.Vec3{}, fmt.Errorf("%s has no axis", o.Name)
+		return mgl64.Vec3{}, message.Errorf("%s has no axis", o.Name)
 	}
 	return o.Axis, nil
 }
@@ -115,7 +115,7 @@ func (d directions) operation(name string) (mgl64.Vec3, error) {
 func (d directions) atom(text string) (mgl64.Vec3, error) {
 	n, err := strconv.Atoi(strings.TrimSpace(text))
 	if count := len(d.read.Molecule.Atoms); err != nil || n < 1 || n > count {
-		return mgl64.Vec3{}, fmt.Errorf("there is no atom %s: the structure has atoms 1 to %d", strings.TrimSpace(text), count)
+		return mgl64.Vec3{}, message.Errorf("there is no atom %s: the structure has atoms 1 to %d", strings.TrimSpace(text), count)
 	}
 	for k, i := range d.core {
 		if i == n-1 {

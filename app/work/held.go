@@ -1,13 +1,13 @@
 package work
 
 import (
-	"errors"
 	"math"
 	"slices"
 
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // RuleHeld names the frame of a subgroup whose axes are those of a larger group
@@ -57,7 +57,7 @@ func (l *Ladder) held(fit *symmetry.Fit) (symmetry.Frame, error) {
 		}
 	}
 	if larger == nil {
-		return symmetry.Frame{}, errors.New("no larger group that the structure nearly has holds this one, and there are no axes to keep")
+		return symmetry.Frame{}, message.Errorf("no larger group that the structure nearly has holds this one, and there are no axes to keep")
 	}
 	d, err := larger.Fit.Setting.Descend(images)
 	if err != nil {

@@ -2,12 +2,12 @@ package work
 
 import (
 	"context"
-	"fmt"
 	"strings"
 
 	"lobewright/app/study"
 	"lobewright/orbitals"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // Ledger projects one function of the basis, operation by operation. A group
@@ -35,7 +35,7 @@ func (w *Work) ledgerOf(ctx context.Context, basis *Basis, s study.Study) (*Ledg
 	return w.ledgers.get(ledgerInputs{basis, p.Function, p.Irrep, p.TheElement(), turnKey(s)}, func() (*Ledger, error) {
 		setting := basis.Fit.Setting
 		if setting.Infinite() {
-			return nil, blame(StageLedger, ConcernStructure, fmt.Errorf(
+			return nil, blame(StageLedger, ConcernStructure, message.Errorf(
 				"%s has infinitely many operations, so there is no ledger; project lists its group orbitals", setting.Symbol))
 		}
 		if err := checkFunction(basis, p.Function); err != nil {
@@ -88,7 +88,7 @@ func partnersOf(r *orbitals.Representation, function, irrep int, a symmetry.Irre
 // checkFunction refuses a function, counted from 1, that a basis lacks.
 func checkFunction(basis *Basis, function int) error {
 	if n := len(basis.Functions); function < 1 || function > n {
-		return fmt.Errorf("function %d does not exist; the basis has functions 1 to %d", function, n)
+		return message.Errorf("function %d does not exist; the basis has functions 1 to %d", function, n)
 	}
 	return nil
 }
@@ -100,7 +100,7 @@ func elementOf(p study.Projection, irrep symmetry.Irrep) ([2]int, error) {
 	}
 	e, d := p.TheElement(), irrep.Dimension
 	if e[0] < 1 || e[0] > d || e[1] < 1 || e[1] > d {
-		return e, fmt.Errorf("matrix element %d,%d does not exist; the matrices of %s have %d × %d elements",
+		return e, message.Errorf("matrix element %d,%d does not exist; the matrices of %s have %d × %d elements",
 			e[0], e[1], irrep.Label, d, d)
 	}
 	return [2]int{e[0] - 1, e[1] - 1}, nil
@@ -119,5 +119,5 @@ func FindIrrep(spelling, group string, irreps []symmetry.Irrep) (int, error) {
 	if i, ok := matchLabel(spelling, labels); ok {
 		return i, nil
 	}
-	return 0, fmt.Errorf("%s has no irrep %q; there are %s", group, spelling, strings.Join(labels, ", "))
+	return 0, message.Errorf("%s has no irrep %q; there are %s", group, spelling, strings.Join(labels, ", "))
 }

@@ -13,6 +13,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/orbitals"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // A Match pairs group orbitals with the functions of a central atom that
@@ -265,9 +266,9 @@ func centralAtom(b *Basis, chosen int) (int, error) {
 	names := g.AtomNames()
 	switch {
 	case chosen > len(names):
-		return -1, fmt.Errorf("atom %d does not exist; there are atoms 1 to %d", chosen, len(names))
+		return -1, message.Errorf("atom %d does not exist; there are atoms 1 to %d", chosen, len(names))
 	case len(can) == 0:
-		return -1, fmt.Errorf("there is no central atom: the operations of %s leave no atom in its place", g.Fit.Setting.Symbol)
+		return -1, message.Errorf("there is no central atom: the operations of %s leave no atom in its place", g.Fit.Setting.Symbol)
 	case chosen > 0 && !slices.Contains(can, chosen-1):
 		return -1, g.notCentral(chosen-1, can)
 	case chosen > 0:
@@ -313,10 +314,10 @@ func (g *Group) notCentral(atom int, can []int) error {
 		if to := g.Sites.Permutations[r][atom]; to >= 0 {
 			image = "to " + names[to]
 		}
-		return fmt.Errorf("%s cannot be the central atom: %s carries it %s, so that its functions are no set by themselves; %s can",
+		return message.Errorf("%s cannot be the central atom: %s carries it %s, so that its functions are no set by themselves; %s can",
 			names[atom], g.Fit.Setting.Operations[r].Name, image, which)
 	}
-	return fmt.Errorf("%s cannot be the central atom, since it does not lie in the centre; %s can", names[atom], which)
+	return message.Errorf("%s cannot be the central atom, since it does not lie in the centre; %s can", names[atom], which)
 }
 
 // Names are those of the central functions, with the number of the valence shell

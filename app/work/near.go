@@ -3,8 +3,6 @@ package work
 import (
 	"cmp"
 	"context"
-	"errors"
-	"fmt"
 	"math"
 	"slices"
 	"strconv"
@@ -14,6 +12,7 @@ import (
 
 	"lobewright/app/study"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // A Ladder is the groups that a structure's core nearly has, by rising
@@ -128,7 +127,7 @@ func ParseEmbedding(text string) (symbol string, embedding int, err error) {
 	embedding = 1
 	if numbered {
 		if embedding, err = strconv.Atoi(number); err != nil || embedding < 1 {
-			return "", 0, fmt.Errorf("%q: the number behind the colon counts from 1", text)
+			return "", 0, message.Errorf("%q: the number behind the colon counts from 1", text)
 		}
 	}
 	setting, err := symmetry.New(name)
@@ -181,11 +180,11 @@ func (l *Ladder) Find(text string) (*symmetry.Nearness, error) {
 	}
 	switch {
 	case most > 0:
-		return nil, fmt.Errorf("there is no %s:%d within %g Å: the last is %s:%d", symbol, embedding, symmetry.DefaultNearness, symbol, most)
+		return nil, message.Errorf("there is no %s:%d within %g Å: the last is %s:%d", symbol, embedding, symmetry.DefaultNearness, symbol, most)
 	case len(symbols) == 0:
-		return nil, errors.New("the structure is near to no group")
+		return nil, message.Errorf("the structure is near to no group")
 	}
-	return nil, fmt.Errorf("the structure is not within %g Å of %s: it is of %s", symmetry.DefaultNearness, symbol, strings.Join(symbols, " "))
+	return nil, message.Errorf("the structure is not within %g Å of %s: it is of %s", symmetry.DefaultNearness, symbol, strings.Join(symbols, " "))
 }
 
 // Within finds the largest group that the structure has within the usual
@@ -226,7 +225,7 @@ func (l *Ladder) choose(s study.Study) (*symmetry.Fit, error) {
 	if linear := l.Linear(); linear != nil {
 		symbol, embedding, err := ParseEmbedding(s.As)
 		if err == nil && embedding > 1 {
-			err = fmt.Errorf("there is one %s with the z of a linear molecule, not %d", symbol, embedding)
+			err = message.Errorf("there is one %s with the z of a linear molecule, not %d", symbol, embedding)
 		}
 		if err == nil && symbol != linear.Setting.Symbol {
 			linear, err = linear.LinearAs(symbol)

@@ -1,13 +1,13 @@
 package work
 
 import (
-	"fmt"
 	"math"
 	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // An Operation is an operation of a Group, ready to be played.
@@ -141,13 +141,13 @@ func (g *Group) Operation(name string, angle float64) (Operation, error) {
 	}
 	symbol := g.Fit.Setting.Symbol
 	if len(all) > mostNamed {
-		return Operation{}, fmt.Errorf("%s has no operation %q; it has %s … %s", symbol, name, all[0].Name, all[len(all)-1].Name)
+		return Operation{}, message.Errorf("%s has no operation %q; it has %s … %s", symbol, name, all[0].Name, all[len(all)-1].Name)
 	}
 	names := make([]string, len(all))
 	for i, o := range all {
 		names[i] = o.Name
 	}
-	return Operation{}, fmt.Errorf("%s has no operation %q; it has %s", symbol, name, strings.Join(names, ", "))
+	return Operation{}, message.Errorf("%s has no operation %q; it has %s", symbol, name, strings.Join(names, ", "))
 }
 
 // mostNamed is how many operations a message lists.

@@ -1,11 +1,11 @@
 package work
 
 import (
-	"fmt"
 	"strings"
 
 	"lobewright/app/study"
 	"lobewright/orbitals"
+	"lobewright/symmetry/message"
 )
 
 // Orbital returns the group orbital that a projection chooses: of an irrep,
@@ -35,7 +35,7 @@ func (o *Orbitals) Orbital(p study.Projection) (*orbitals.GroupOrbital, error) {
 }
 
 func orbitalProblem(concern Concern, format string, arguments ...any) error {
-	return blame(StageOrbital, concern, fmt.Errorf(format, arguments...))
+	return blame(StageOrbital, concern, message.Errorf(format, arguments...))
 }
 
 // occurring lists the labels of the irreps that the basis contains.

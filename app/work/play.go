@@ -2,7 +2,6 @@ package work
 
 import (
 	"context"
-	"fmt"
 	"math"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -11,6 +10,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/orbitals"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // A Play is an operation with what it makes of the chosen function or group
@@ -221,7 +221,7 @@ func continuous(basis *Basis, matrix mgl64.Mat3, sites []int) imager {
 			}
 		}
 		if math.Abs(square-1) > 1e-9 {
-			return nil, fmt.Errorf("the operation carries φ%d out of the basis", function+1)
+			return nil, message.Errorf("the operation carries φ%d out of the basis", function+1)
 		}
 		return terms, nil
 	}

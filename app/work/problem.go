@@ -9,6 +9,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/orbitals"
 	"lobewright/orbitals/structure"
+	"lobewright/symmetry/message"
 )
 
 // A Stage is a step on the way from a study to its results.
@@ -71,6 +72,9 @@ type Problem struct {
 // Error is the line of the error within.
 func (p *Problem) Error() string { return p.Err.Error() }
 
+// In is Error in a language.
+func (p *Problem) In(l *message.Language) string { return message.In(p.Err, l) }
+
 // Unwrap returns the error within.
 func (p *Problem) Unwrap() error { return p.Err }
 
@@ -89,7 +93,7 @@ func caught(stage Stage, value any) *Problem {
 	if !ok {
 		fault = &PanicError{value, debug.Stack()}
 	}
-	return &Problem{Stage: stage, Concern: ConcernProgram, Err: fmt.Errorf("internal error: %w", fault)}
+	return &Problem{Stage: stage, Concern: ConcernProgram, Err: message.Errorf("internal error: %w", fault)}
 }
 
 // blame ties an error to what it is about, unless that is done, or the

@@ -10,6 +10,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/orbitals"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // turnKey is what of a study turns partners and mixes copies; empty if nothing
@@ -40,7 +41,7 @@ func Rotation(n int, rotations []study.PlaneRotation, what string) (*mat.Dense, 
 	}
 	for _, r := range rotations {
 		if from, to := r.From, r.To; from < 1 || to < 1 || from > n || to > n || from == to {
-			return nil, fmt.Errorf("%d cannot be turned into %d: %s 1 to %d", from, to, what, n)
+			return nil, message.Errorf("%d cannot be turned into %d: %s 1 to %d", from, to, what, n)
 		}
 		sin, cos := sincos(r.Angle)
 		f, t := r.From-1, r.To-1

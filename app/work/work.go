@@ -9,7 +9,6 @@ package work
 
 import (
 	"context"
-	"errors"
 	"strconv"
 	"sync"
 	"sync/atomic"
@@ -18,6 +17,7 @@ import (
 	"lobewright/orbitals"
 	"lobewright/orbitals/structure"
 	"lobewright/symmetry"
+	"lobewright/symmetry/message"
 )
 
 // Work computes results and keeps the last one of every stage. It may be used
@@ -153,7 +153,7 @@ func (w *Work) knownStructure(key structureKey) *Structure {
 	return read
 }
 
-var errUnknown = errors.New("not known")
+var errUnknown = message.Errorf("not known")
 
 // Group finds the point group of a study's core and its frame.
 func (w *Work) Group(ctx context.Context, s study.Study) (*Group, error) {
@@ -257,7 +257,7 @@ func parseChoices(texts []string) ([]orbitals.Choice, error) {
 		}
 	}
 	if len(choices) == 0 {
-		return nil, blame(StageBasis, ConcernBasis, errors.New("no functions are chosen"))
+		return nil, blame(StageBasis, ConcernBasis, message.Errorf("no functions are chosen"))
 	}
 	return choices, nil
 }

@@ -4,6 +4,7 @@ import (
 	"math"
 	"math/rand/v2"
 	"reflect"
+	"strconv"
 	"testing"
 	"time"
 
@@ -148,7 +149,7 @@ func BenchmarkBonds(b *testing.B) {
 			m.Atoms = append(m.Atoms, Atom{79, mgl64.Vec3{
 				2.88 * float64(i%edge), 2.88 * float64(i/edge%edge), 2.88 * float64(i/edge/edge)}})
 		}
-		b.Run(grouped(n), func(b *testing.B) {
+		b.Run(strconv.Itoa(n), func(b *testing.B) {
 			for b.Loop() {
 				Bonds(m)
 			}

@@ -1,16 +1,17 @@
 package structure
 
 import (
-	"fmt"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // maxChoice is the greatest length in bytes of a choice of atoms; every one of 20,000 atoms by its number takes
 // about 120,000.
 const maxChoice = 200_000
 
-const wantAtoms = "atoms are chosen by element (F), number (2-4,7), all, or orbit (orbit:2)"
+var wantAtoms = message.Words("atoms are chosen by element (F), number (2-4,7), all, or orbit (orbit:2)")
 
 // ParseAtoms reads a choice of atoms: terms with commas between them, each an element in any case ("F"), an atom
 // number or a range of them, which count from 1 ("7", "2-4"), "all", or "orbit:N". It returns their indices, from
@@ -18,7 +19,7 @@ const wantAtoms = "atoms are chosen by element (F), number (2-4,7), all, or orbi
 // orbits are refused. The error is an *Error, or the error of orbit.
 func ParseAtoms(text string, m *Molecule, orbit func(n int) ([]int, error)) ([]int, error) {
 	if len(text) > maxChoice {
-		return nil, badAtoms("a choice of atoms of %s characters", grouped(len(text)))
+		return nil, badAtoms("a choice of atoms of %s characters", message.Count(len(text)))
 	}
 	chosen := make([]bool, len(m.Atoms))
 	for term := range strings.SplitSeq(text, ",") {
@@ -63,8 +64,8 @@ func chooseTerm(term string, m *Molecule, orbit func(n int) ([]int, error), chos
 		}
 	}
 	if !occurs {
-		return &Error{Problem: NoSuchAtom, What: "the structure has no " + e.Symbol(),
-			Want: "its elements are " + list(m.Elements())}
+		return &Error{Problem: NoSuchAtom, What: message.Words("the structure has no %s", e.Symbol()),
+			Want: message.Words("its elements are %s", list(m.Elements()))}
 	}
 	return nil
 }
@@ -83,8 +84,8 @@ func chooseNumbers(term string, chosen []bool) error {
 		}
 	}
 	if to < from {
-		return &Error{Problem: BadAtoms, What: "the range " + found(term) + " runs backward",
-			Want: "write " + strconv.Itoa(to) + "-" + strconv.Itoa(from)}
+		return &Error{Problem: BadAtoms, What: message.Words("the range %s runs backward", found(term)),
+			Want: message.Words("write %d-%d", to, from)}
 	}
 	for i := from; i <= to; i++ {
 		chosen[i-1] = true
@@ -105,8 +106,8 @@ func atomNumber(text string, chosen []bool) (int, error) {
 	}
 	n, err := strconv.Atoi(text)
 	if err != nil || n < 1 || n > len(chosen) {
-		return 0, &Error{Problem: NoSuchAtom, What: "atom " + strings.Trim(found(text), `"`) + " does not exist",
-			Want: "the structure's atoms are 1 to " + strconv.Itoa(len(chosen))}
+		return 0, &Error{Problem: NoSuchAtom, What: message.Words("atom %s does not exist", strings.Trim(found(text), `"`)),
+			Want: message.Words("the structure's atoms are 1 to %d", len(chosen))}
 	}
 	return n, nil
 }
@@ -118,8 +119,8 @@ func chooseOrbit(text string, orbit func(n int) ([]int, error), chosen []bool) e
 		return badAtoms("%s is no orbit", found("orbit:"+text))
 	}
 	if orbit == nil {
-		return &Error{Problem: BadAtoms, What: "orbits are not known here",
-			Want: "choose atoms by element (F), number (2-4,7) or all"}
+		return &Error{Problem: BadAtoms, What: message.Words("orbits are not known here"),
+			Want: message.Words("choose atoms by element (F), number (2-4,7) or all")}
 	}
 	atoms, err := orbit(n)
 	if err != nil {
@@ -156,14 +157,14 @@ func Core(m *Molecule, core, ignore string) ([]int, error) {
 		}
 	}
 	if len(out) == 0 {
-		return nil, &Error{Problem: NoCore, What: "no atom is left to decide the group",
-			Want: "ignore fewer atoms or choose a larger core"}
+		return nil, &Error{Problem: NoCore, What: message.Words("no atom is left to decide the group"),
+			Want: message.Words("ignore fewer atoms or choose a larger core")}
 	}
 	return out, nil
 }
 
 func badAtoms(format string, args ...any) *Error {
-	return &Error{Problem: BadAtoms, What: fmt.Sprintf(format, args...), Want: wantAtoms}
+	return &Error{Problem: BadAtoms, What: message.Words(format, args...), Want: wantAtoms}
 }
 
 // list writes elements with commas between them.

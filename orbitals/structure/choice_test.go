@@ -48,22 +48,22 @@ func TestAtomsAreChosenByElementNumberAllAndOrbit(t *testing.T) {
 
 func TestBadChoicesSayWhatWouldBeRight(t *testing.T) {
 	cases := map[string]string{
-		"":                     `a choice of atoms is empty; ` + wantAtoms,
-		"O,,H":                 `a choice of atoms is empty; ` + wantAtoms,
+		"":                     `a choice of atoms is empty; ` + wantAtoms.String(),
+		"O,,H":                 `a choice of atoms is empty; ` + wantAtoms.String(),
 		"Fe":                   `the structure has no Fe; its elements are H, O, Cl, Cu`,
-		"Xx":                   `"Xx" is no choice of atoms; ` + wantAtoms,
-		"CuO":                  `"CuO" is no choice of atoms; ` + wantAtoms,
+		"Xx":                   `"Xx" is no choice of atoms; ` + wantAtoms.String(),
+		"CuO":                  `"CuO" is no choice of atoms; ` + wantAtoms.String(),
 		"0":                    `atom 0 does not exist; the structure's atoms are 1 to 9`,
 		"10":                   `atom 10 does not exist; the structure's atoms are 1 to 9`,
 		"8-10":                 `atom 10 does not exist; the structure's atoms are 1 to 9`,
 		"99999999999999999999": `atom 99999999999999999999 does not exist; the structure's atoms are 1 to 9`,
 		"4-2":                  `the range "4-2" runs backward; write 2-4`,
-		"4-":                   `a range of atoms has no end; ` + wantAtoms,
-		"2-4-6":                `"4-6" is no atom number; ` + wantAtoms,
-		"-4":                   `"-4" is no choice of atoms; ` + wantAtoms,
-		"2.5":                  `"2.5" is no atom number; ` + wantAtoms,
-		"orbit:":               `"orbit:" is no orbit; ` + wantAtoms,
-		"orbit:0":              `"orbit:0" is no orbit; ` + wantAtoms,
+		"4-":                   `a range of atoms has no end; ` + wantAtoms.String(),
+		"2-4-6":                `"4-6" is no atom number; ` + wantAtoms.String(),
+		"-4":                   `"-4" is no choice of atoms; ` + wantAtoms.String(),
+		"2.5":                  `"2.5" is no atom number; ` + wantAtoms.String(),
+		"orbit:":               `"orbit:" is no orbit; ` + wantAtoms.String(),
+		"orbit:0":              `"orbit:0" is no orbit; ` + wantAtoms.String(),
 		"orbit:3":              `there is no orbit 3`,
 	}
 	for text, want := range cases {

@@ -1,11 +1,12 @@
 package structure
 
 import (
-	"fmt"
 	"strconv"
 	"strings"
 	"unicode"
 	"unicode/utf8"
+
+	"lobewright/symmetry/message"
 )
 
 // A Problem is the key of an Error or a Note: it stays the same whatever the language of the text.
@@ -55,13 +56,16 @@ type Error struct {
 	// Problem is the key of what is wrong.
 	Problem Problem
 	// What says what is wrong, with the words found; Want says what would be right. Want may be empty.
-	What, Want string
+	What, Want message.Text
 	// Err is the error of the system below, or nil.
 	Err error
 }
 
 // Error returns one line: file, line, what is wrong, what would be right.
-func (e *Error) Error() string {
+func (e *Error) Error() string { return e.In(nil) }
+
+// In is Error in a language.
+func (e *Error) In(l *message.Language) string {
 	var b strings.Builder
 	if e.File != "" {
 		b.WriteString(printable(e.File))
@@ -70,11 +74,11 @@ func (e *Error) Error() string {
 		}
 		b.WriteString(": ")
 	} else if e.Line > 0 {
-		fmt.Fprintf(&b, "line %d: ", e.Line)
+		b.WriteString(message.Words("line %d: ", e.Line).In(l))
 	}
-	b.WriteString(e.What)
-	if e.Want != "" {
-		b.WriteString("; " + e.Want)
+	b.WriteString(e.What.In(l))
+	if !e.Want.Empty() {
+		b.WriteString("; " + e.Want.In(l))
 	}
 	return b.String()
 }
@@ -88,12 +92,15 @@ type Note struct {
 	Line int // from 1, 0 for none
 	// Problem is the key of what is remarked.
 	Problem Problem
-	What    string
+	What    message.Text
 }
 
 // String returns one line: file, line, remark.
-func (n Note) String() string {
-	return (&Error{File: n.File, Line: n.Line, What: n.What}).Error()
+func (n Note) String() string { return n.In(nil) }
+
+// In is String in a language.
+func (n Note) In(l *message.Language) string {
+	return (&Error{File: n.File, Line: n.Line, What: n.What}).In(l)
 }
 
 // printable returns text that fits on one line of a terminal: control characters and what is not UTF-8 are
@@ -116,15 +123,6 @@ func found(text string) string {
 		return strconv.Quote(string(runes[:most])) + " …"
 	}
 	return strconv.Quote(text)
-}
-
-// grouped writes a count with commas between the thousands: 20,000.
-func grouped(n int) string {
-	s := strconv.Itoa(n)
-	for i := len(s) - 3; i > 0; i -= 3 {
-		s = s[:i] + "," + s[i:]
-	}
-	return s
 }
 
 func appendInt(b []byte, n int) []byte { return strconv.AppendInt(b, int64(n), 10) }

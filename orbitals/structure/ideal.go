@@ -4,6 +4,8 @@ import (
 	"math"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 const (
@@ -16,9 +18,9 @@ const (
 	carbonRing = 1.39
 )
 
-const (
-	wantPolyhedron = "write ideal:OC-6, or with elements and distance ideal:OC-6,Co,N,1.96"
-	wantRing       = "write ideal:ring-6, or with element and distance of neighbours ideal:ring-6,C,1.39"
+var (
+	wantPolyhedron = message.Words("write ideal:OC-6, or with elements and distance ideal:OC-6,Co,N,1.96")
+	wantRing       = message.Words("write ideal:ring-6, or with element and distance of neighbours ideal:ring-6,C,1.39")
 )
 
 // Ideal makes an ideal structure from what follows "ideal:":
@@ -47,8 +49,8 @@ func Ideal(text string) (*Molecule, error) {
 	for _, p := range Polyhedra() {
 		known = append(known, p.Symbol)
 	}
-	return nil, &Error{Problem: UnknownShape, What: "unknown polyhedral symbol " + found(parts[0]),
-		Want: "there are " + strings.Join(known, " ") + " and ring-3 to ring-" + strconv.Itoa(MaxRing)}
+	return nil, &Error{Problem: UnknownShape, What: message.Words("unknown polyhedral symbol %s", found(parts[0])),
+		Want: message.Words("there are %s and ring-3 to ring-%d", strings.Join(known, " "), MaxRing)}
 }
 
 func cutPrefixFold(text, prefix string) (string, bool) {
@@ -85,7 +87,7 @@ func idealPolyhedron(text string, p Polyhedron, parts []string) (*Molecule, erro
 func idealRing(text, count string, parts []string) (*Molecule, error) {
 	n, err := strconv.Atoi(count)
 	if err != nil || n < 3 || n > MaxRing {
-		return nil, badIdeal(text, wantRing, "a ring has 3 to "+strconv.Itoa(MaxRing)+" atoms, not "+found(count))
+		return nil, badIdeal(text, wantRing, "a ring has 3 to %d atoms, not %s", MaxRing, found(count))
 	}
 	if len(parts) > 2 {
 		return nil, badIdeal(text, wantRing, "too many parts")
@@ -110,30 +112,30 @@ func idealRing(text, count string, parts []string) (*Molecule, error) {
 }
 
 // idealElement reads part i into e, if there is one.
-func idealElement(text string, parts []string, i int, e *Element, want string) error {
+func idealElement(text string, parts []string, i int, e *Element, want message.Text) error {
 	if i >= len(parts) {
 		return nil
 	}
 	read, ok := ElementOf(parts[i])
 	if !ok {
-		return badIdeal(text, want, "unknown element "+found(parts[i]))
+		return badIdeal(text, want, "unknown element %s", found(parts[i]))
 	}
 	*e = read
 	return nil
 }
 
 // idealDistance reads part i into d (Å), if there is one.
-func idealDistance(text string, parts []string, i int, d *float64, want string) error {
+func idealDistance(text string, parts []string, i int, d *float64, want message.Text) error {
 	if i >= len(parts) {
 		return nil
 	}
 	x, err := number(parts[i])
 	if err != nil {
-		return badIdeal(text, want, "the distance is "+found(parts[i]))
+		return badIdeal(text, want, "the distance is %s", found(parts[i]))
 	}
 	if x < minIdeal || x > maxIdeal {
-		return badIdeal(text, "it must lie between "+plainNumber(minIdeal)+" and "+plainNumber(maxIdeal)+" Å",
-			"the distance is "+strings.Trim(found(parts[i]), `"`)+" Å")
+		return badIdeal(text, message.Words("it must lie between %g and %g Å", minIdeal, float64(maxIdeal)),
+			"the distance is %s Å", strings.Trim(found(parts[i]), `"`))
 	}
 	*d = x
 	return nil
@@ -144,8 +146,8 @@ func roundedDistance(d float64) float64 { return math.Round(d*100) / 100 }
 
 func plainNumber(x float64) string { return strconv.FormatFloat(x, 'f', -1, 64) }
 
-func badIdeal(text, want, what string) *Error {
-	return &Error{File: "ideal:" + shorten(text), Problem: BadIdeal, What: what, Want: want}
+func badIdeal(text string, want message.Text, format string, args ...any) *Error {
+	return &Error{File: "ideal:" + shorten(text), Problem: BadIdeal, What: message.Words(format, args...), Want: want}
 }
 
 // shorten cuts a long text for the head of a message.

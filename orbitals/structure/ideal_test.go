@@ -268,16 +268,16 @@ func TestBadIdealStructuresSayWhatWouldBeRight(t *testing.T) {
 	cases := map[string]string{
 		"OC-7":            `unknown polyhedral symbol "OC-7"; there are ` + shapes + ` and ring-3 to ring-100`,
 		"":                `unknown polyhedral symbol ""; there are ` + shapes + ` and ring-3 to ring-100`,
-		"OC-6,Xx":         `ideal:OC-6,Xx: unknown element "Xx"; ` + wantPolyhedron,
-		"OC-6,Co,N,":      `ideal:OC-6,Co,N,: the distance is ""; ` + wantPolyhedron,
-		"OC-6,Co,N,long":  `ideal:OC-6,Co,N,long: the distance is "long"; ` + wantPolyhedron,
-		"OC-6,Co,N,NaN":   `ideal:OC-6,Co,N,NaN: the distance is "NaN"; ` + wantPolyhedron,
+		"OC-6,Xx":         `ideal:OC-6,Xx: unknown element "Xx"; ` + wantPolyhedron.String(),
+		"OC-6,Co,N,":      `ideal:OC-6,Co,N,: the distance is ""; ` + wantPolyhedron.String(),
+		"OC-6,Co,N,long":  `ideal:OC-6,Co,N,long: the distance is "long"; ` + wantPolyhedron.String(),
+		"OC-6,Co,N,NaN":   `ideal:OC-6,Co,N,NaN: the distance is "NaN"; ` + wantPolyhedron.String(),
 		"OC-6,Co,N,-1.96": `ideal:OC-6,Co,N,-1.96: the distance is -1.96 Å; it must lie between 0.3 and 100 Å`,
 		"OC-6,Co,N,1e308": `ideal:OC-6,Co,N,1e308: the distance is 1e308 Å; it must lie between 0.3 and 100 Å`,
-		"OC-6,Co,N,2,3":   `ideal:OC-6,Co,N,2,3: too many parts; ` + wantPolyhedron,
-		"ring-1000":       `ideal:ring-1000: a ring has 3 to 100 atoms, not "1000"; ` + wantRing,
-		"ring-x":          `ideal:ring-x: a ring has 3 to 100 atoms, not "x"; ` + wantRing,
-		"ring-6,C,1.4,2":  `ideal:ring-6,C,1.4,2: too many parts; ` + wantRing,
+		"OC-6,Co,N,2,3":   `ideal:OC-6,Co,N,2,3: too many parts; ` + wantPolyhedron.String(),
+		"ring-1000":       `ideal:ring-1000: a ring has 3 to 100 atoms, not "1000"; ` + wantRing.String(),
+		"ring-x":          `ideal:ring-x: a ring has 3 to 100 atoms, not "x"; ` + wantRing.String(),
+		"ring-6,C,1.4,2":  `ideal:ring-6,C,1.4,2: too many parts; ` + wantRing.String(),
 	}
 	for text, want := range cases {
 		if m, err := Ideal(text); err == nil || err.Error() != want {

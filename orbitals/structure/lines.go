@@ -3,9 +3,10 @@ package structure
 import (
 	"bufio"
 	"errors"
-	"fmt"
 	"io"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // Limits of what is read, held before any work is done.
@@ -33,8 +34,8 @@ func newLines(r io.Reader, file string) *lines {
 	return &lines{in: bufio.NewReaderSize(r, 32<<10), file: file}
 }
 
-func (l *lines) fail(p Problem, line int, want, format string, args ...any) *Error {
-	return &Error{File: l.file, Line: line, Problem: p, What: fmt.Sprintf(format, args...), Want: want}
+func (l *lines) fail(p Problem, line int, want message.Text, format string, args ...any) *Error {
+	return &Error{File: l.file, Line: line, Problem: p, What: message.Words(format, args...), Want: want}
 }
 
 // start takes away a byte order mark and refuses UTF-16.
@@ -46,7 +47,7 @@ func (l *lines) start() error {
 		return err
 	case strings.HasPrefix(string(head), "\xff\xfe"), strings.HasPrefix(string(head), "\xfe\xff"),
 		len(head) >= 2 && (head[0] == 0) != (head[1] == 0):
-		return l.fail(NotText, 1, "save it as UTF-8 or plain ASCII", "the file is UTF-16 text")
+		return l.fail(NotText, 1, message.Words("save it as UTF-8 or plain ASCII"), "the file is UTF-16 text")
 	}
 	return nil
 }
@@ -63,13 +64,13 @@ func (l *lines) next() (string, error) {
 			return l.end(false), nil
 		}
 		if err != nil {
-			e := l.fail(CannotRead, l.number+1, "", "reading broke off: %s", systemText(err))
+			e := l.fail(CannotRead, l.number+1, message.Text{}, "reading broke off: %s", systemError(err))
 			e.Err = err
 			return "", e
 		}
 		if l.bytes++; l.bytes > MaxBytes {
-			return "", l.fail(TooLarge, l.number+1, "the first frame may take "+grouped(MaxBytes)+" bytes",
-				"no end of the first frame within %s bytes", grouped(MaxBytes))
+			return "", l.fail(TooLarge, l.number+1, message.Words("the first frame may take %s bytes", message.Count(MaxBytes)),
+				"no end of the first frame within %s bytes", message.Count(MaxBytes))
 		}
 		switch {
 		case c == '\n' && l.afterR && len(l.line) == 0:
@@ -79,8 +80,8 @@ func (l *lines) next() (string, error) {
 		case c == 0 || c == 0x7f || c < ' ' && !strings.ContainsRune("\t\v\f\x1a", rune(c)):
 			return "", l.fail(NotText, l.number+1, wantFile, "the file is binary, not text (byte %#02x)", c)
 		case len(l.line) == MaxLine:
-			return "", l.fail(LineTooLong, l.number+1, "a line may take "+grouped(MaxLine)+" bytes",
-				"the line is longer than %s bytes", grouped(MaxLine))
+			return "", l.fail(LineTooLong, l.number+1, message.Words("a line may take %s bytes", message.Count(MaxLine)),
+				"the line is longer than %s bytes", message.Count(MaxLine))
 		default:
 			l.line = append(l.line, c)
 		}
@@ -104,12 +105,15 @@ func (l *lines) nextFilled() (string, error) {
 	}
 }
 
-// systemText shortens an error of the operating system to its last part: "no such file or directory".
-func systemText(err error) string {
+// systemError is the last part of an error of the operating system, fit for one line: "no such file or directory".
+func systemError(err error) error {
 	for {
 		inner := errors.Unwrap(err)
 		if inner == nil {
-			return printable(err.Error())
+			if text := err.Error(); printable(text) != text {
+				return errors.New(printable(text))
+			}
+			return err
 		}
 		err = inner
 	}

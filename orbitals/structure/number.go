@@ -5,13 +5,15 @@ import (
 	"math"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // What would be right in place of a bad number.
 var (
-	errNumber = errors.New("expected a number such as -1.234 or 1.2D-3")
-	errComma  = errors.New("write decimals with a point")
-	errFinite = errors.New("expected a finite number")
+	errNumber = message.Errorf("expected a number such as -1.234 or 1.2D-3")
+	errComma  = message.Errorf("write decimals with a point")
+	errFinite = message.Errorf("expected a finite number")
 )
 
 // number reads a decimal number with an optional exponent after e, E, d or D, or after q or Q (Fortran). A minus

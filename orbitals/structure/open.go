@@ -6,6 +6,8 @@ import (
 	"io/fs"
 	"os"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // Inputs are the places besides the file system from which Open reads. Either may be nil.
@@ -35,7 +37,7 @@ func Open(spec string, in Inputs) (*Molecule, []Note, error) {
 	if spec == "-" {
 		const name = "standard input"
 		if in.Stdin == nil {
-			return nil, nil, &Error{File: name, Problem: CannotOpen, What: "there is no standard input"}
+			return nil, nil, &Error{File: name, Problem: CannotOpen, What: message.Words("there is no standard input")}
 		}
 		return Read(in.Stdin, name)
 	}
@@ -44,8 +46,8 @@ func Open(spec string, in Inputs) (*Molecule, []Note, error) {
 
 func openFile(path string) (*Molecule, []Note, error) {
 	if path == "" {
-		return nil, nil, &Error{Problem: CannotOpen, What: "the name of the structure is empty",
-			Want: "give a file, - for standard input, ideal:OC-6 or demo:NAME"}
+		return nil, nil, &Error{Problem: CannotOpen, What: message.Words("the name of the structure is empty"),
+			Want: message.Words("give a file, - for standard input, ideal:OC-6 or demo:NAME")}
 	}
 	f, err := os.Open(path)
 	if err != nil {
@@ -53,23 +55,23 @@ func openFile(path string) (*Molecule, []Note, error) {
 	}
 	defer f.Close()
 	if info, err := f.Stat(); err == nil && info.IsDir() {
-		return nil, nil, &Error{File: path, Problem: IsDirectory, What: "this is a directory",
-			Want: "name a file in it"}
+		return nil, nil, &Error{File: path, Problem: IsDirectory, What: message.Words("this is a directory"),
+			Want: message.Words("name a file in it")}
 	}
 	return Read(f, path)
 }
 
 func cannotOpen(path string, err error) *Error {
-	e := &Error{File: path, Problem: CannotOpen, What: "cannot be opened: " + systemText(err), Err: err}
+	e := &Error{File: path, Problem: CannotOpen, What: message.Words("cannot be opened: %s", systemError(err)), Err: err}
 	if errors.Is(err, fs.ErrNotExist) {
-		e.What = "there is no such file"
+		e.What = message.Words("there is no such file")
 	}
 	return e
 }
 
 func openDemo(name string, demos fs.FS) (*Molecule, []Note, error) {
 	if demos == nil {
-		return nil, nil, &Error{File: "demo:" + name, Problem: UnknownDemo, What: "no demonstrations are at hand"}
+		return nil, nil, &Error{File: "demo:" + name, Problem: UnknownDemo, What: message.Words("no demonstrations are at hand")}
 	}
 	if !fs.ValidPath(name) || strings.Contains(name, "/") {
 		return nil, nil, unknownDemo(name, demos)
@@ -90,6 +92,6 @@ func unknownDemo(name string, demos fs.FS) *Error {
 			names = append(names, n)
 		}
 	}
-	return &Error{Problem: UnknownDemo, What: "there is no demonstration " + found(name),
-		Want: "there are " + strings.Join(names, ", ")}
+	return &Error{Problem: UnknownDemo, What: message.Words("there is no demonstration %s", found(name)),
+		Want: message.Words("there are %s", strings.Join(names, ", "))}
 }

@@ -9,6 +9,8 @@ import (
 	"strings"
 	"unicode"
 	"unicode/utf8"
+
+	"lobewright/symmetry/message"
 )
 
 const (
@@ -20,10 +22,11 @@ const (
 	MinDistance = 0.1
 )
 
-const (
-	wantFile  = `expected a coordinate list: the number of atoms, a title, then lines such as "O 0.0 0.0 0.117"`
-	wantAtom  = `expected element x y z in Å, such as "O 0.0 0.0 0.117"`
-	wantCount = "line 1 must hold the number of atoms, line 2 a title"
+var (
+	wantFile  = message.Words(`expected a coordinate list: the number of atoms, a title, then lines such as "O 0.0 0.0 0.117"`)
+	wantAtom  = message.Words(`expected element x y z in Å, such as "O 0.0 0.0 0.117"`)
+	wantCount = message.Words("line 1 must hold the number of atoms, line 2 a title")
+	wantLines = message.Words("the count must equal the number of atom lines")
 )
 
 // Read reads a plain coordinate list: a line with the number of atoms, a line with a title, then a line an atom
@@ -81,13 +84,13 @@ func readCount(in *lines) (count, line int, err error) {
 	}
 	switch {
 	case errors.Is(bad, strconv.ErrRange), bad == nil && n > MaxAtoms:
-		return 0, 0, in.fail(TooManyAtoms, in.number, "a structure may have up to "+grouped(MaxAtoms),
+		return 0, 0, in.fail(TooManyAtoms, in.number, message.Words("a structure may have up to %s", message.Count(MaxAtoms)),
 			"%s atoms are too many", strings.Trim(found(fields[0]), `"`))
 	case bad != nil:
 		return 0, 0, in.fail(BadCount, in.number, wantCount, "expected the number of atoms, found %s",
 			found(strings.TrimSpace(text)))
 	case n < 1:
-		return 0, 0, in.fail(BadCount, in.number, wantCount, "the number of atoms is %d, it must be from 1 to %s", n, grouped(MaxAtoms))
+		return 0, 0, in.fail(BadCount, in.number, wantCount, "the number of atoms is %d, it must be from 1 to %s", n, message.Count(MaxAtoms))
 	}
 	return n, in.number, nil
 }
@@ -102,8 +105,8 @@ type parser struct {
 	labels, isotopes bool // already remarked
 }
 
-func (p *parser) note(key Problem, what string) {
-	p.notes = append(p.notes, Note{File: p.in.file, Line: p.in.number, Problem: key, What: what})
+func (p *parser) note(key Problem, format string, args ...any) {
+	p.notes = append(p.notes, Note{File: p.in.file, Line: p.in.number, Problem: key, What: message.Words(format, args...)})
 }
 
 // title reads the title. A title in an older encoding is read as Latin-1, so that an Å stays an Å.
@@ -145,7 +148,7 @@ func (p *parser) atoms() error {
 	for len(p.molecule.Atoms) < p.count {
 		text, err := p.in.nextFilled()
 		if errors.Is(err, io.EOF) {
-			return p.in.fail(CutShort, max(p.in.number, 1), "the count must equal the number of atom lines",
+			return p.in.fail(CutShort, max(p.in.number, 1), wantLines,
 				"the file ends after %d of the %d atoms that line %d counts", len(p.molecule.Atoms), p.count, p.countLine)
 		}
 		if err != nil {
@@ -173,11 +176,11 @@ func (p *parser) atom(text string) error {
 	for i, f := range fields[1:4] {
 		x, bad := number(f)
 		if bad != nil {
-			return p.in.fail(BadNumber, p.in.number, bad.Error(), "%c of atom %d is %s", "xyz"[i],
+			return p.in.fail(BadNumber, p.in.number, message.Words("%s", bad), "%c of atom %d is %s", "xyz"[i],
 				len(p.molecule.Atoms)+1, found(f))
 		}
 		if math.Abs(x) > MaxCoordinate {
-			return p.in.fail(TooFar, p.in.number, "coordinates are in Å and may reach "+grouped(MaxCoordinate),
+			return p.in.fail(TooFar, p.in.number, message.Words("coordinates are in Å and may reach %s", message.Count(MaxCoordinate)),
 				"%c of atom %d is %s Å", "xyz"[i], len(p.molecule.Atoms)+1, strings.Trim(found(f), `"`))
 		}
 		a.Position[i] = x
@@ -209,7 +212,7 @@ func (p *parser) element(text string) (Element, error) {
 	if text == "D" || text == "T" {
 		if !p.isotopes {
 			p.isotopes = true
-			p.note(IsotopesRead, text+" was read as hydrogen")
+			p.note(IsotopesRead, "%s was read as hydrogen", text)
 		}
 		return 1, nil
 	}
@@ -217,18 +220,18 @@ func (p *parser) element(text string) (Element, error) {
 	if e, ok := ElementOf(symbol); ok {
 		if !p.labels {
 			p.labels = true
-			p.note(LabelsRead, "labels such as "+shorten(text)+" were read as elements")
+			p.note(LabelsRead, "labels such as %s were read as elements", shorten(text))
 		}
 		return e, nil
 	}
 	if head := strings.TrimRight(text, "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ'"); head != text {
 		symbol := strings.TrimRight(head, "0123456789")
 		if _, ok := ElementOf(symbol); ok && symbol != head {
-			return 0, p.in.fail(UnknownElement, p.in.number, "write "+head+" or "+symbol,
+			return 0, p.in.fail(UnknownElement, p.in.number, message.Words("write %s or %s", head, symbol),
 				"unknown element %s: letters after the number are not read", found(text))
 		}
 	}
-	return 0, p.in.fail(UnknownElement, p.in.number, "write a symbol such as Fe, or an atomic number from 1 to 118",
+	return 0, p.in.fail(UnknownElement, p.in.number, message.Words("write a symbol such as Fe, or an atomic number from 1 to 118"),
 		"unknown element %s", found(text))
 }
 
@@ -249,7 +252,7 @@ func (p *parser) rest() error {
 		return nil
 	}
 	if len(fields) == 4 && allNumbers(fields[1:]) {
-		return p.in.fail(AtomsLeft, p.in.number, "the count must equal the number of atom lines",
+		return p.in.fail(AtomsLeft, p.in.number, wantLines,
 			"another atom follows the %d that line %d counts", p.count, p.countLine)
 	}
 	p.note(TextLeft, "what follows the last atom was not read")
@@ -272,7 +275,6 @@ func (p *parser) spots() error {
 		return nil
 	}
 	d := p.molecule.Atoms[i].Position.Sub(p.molecule.Atoms[j].Position).Len()
-	return p.in.fail(OneSpot, p.lineOf[j], "no two atoms may be nearer than "+
-		strconv.FormatFloat(MinDistance, 'g', -1, 64)+" Å",
+	return p.in.fail(OneSpot, p.lineOf[j], message.Words("no two atoms may be nearer than %g Å", MinDistance),
 		"atom %d lies on the spot of atom %d of line %d (%.2g Å apart)", j+1, i+1, p.lineOf[i], d)
 }

@@ -10,6 +10,7 @@ import (
 	"path/filepath"
 	"reflect"
 	"runtime"
+	"strconv"
 	"strings"
 	"testing"
 	"testing/fstest"
@@ -305,7 +306,7 @@ func TestOpenSaysWhatIsWrong(t *testing.T) {
 		"demo:xenon":     `there is no demonstration "xenon"; there are argon, neon`,
 		"demo:../argon":  `there is no demonstration "../argon"; there are argon, neon`,
 		"demo:":          `there is no demonstration ""; there are argon, neon`,
-		"demo:argon":     `demo:argon:1: the file is empty; ` + wantFile,
+		"demo:argon":     `demo:argon:1: the file is empty; ` + wantFile.String(),
 		"ideal:OC-6,,":   `ideal:OC-6,,: unknown element ""; write ideal:OC-6, or with elements and distance ideal:OC-6,Co,N,1.96`,
 		"ideal:ring-2":   `ideal:ring-2: a ring has 3 to 100 atoms, not "2"; write ideal:ring-6, or with element and distance of neighbours ideal:ring-6,C,1.39`,
 		"ideal:ring-6,9": `ideal:ring-6,9: unknown element "9"; write ideal:ring-6, or with element and distance of neighbours ideal:ring-6,C,1.39`,
@@ -334,7 +335,7 @@ func FuzzRead(f *testing.F) {
 		if err != nil {
 			holdsOneLine(t, err.Error())
 			var e *Error
-			if !errors.As(err, &e) || e.Line < 1 || e.What == "" || e.Want == "" {
+			if !errors.As(err, &e) || e.Line < 1 || e.What.Empty() || e.Want.Empty() {
 				t.Errorf("%#v lacks the line, what is wrong or what would be right", err)
 			}
 			return
@@ -374,7 +375,7 @@ func BenchmarkRead(b *testing.B) {
 		if err := Write(&text, m); err != nil {
 			b.Fatal(err)
 		}
-		b.Run(grouped(n), func(b *testing.B) {
+		b.Run(strconv.Itoa(n), func(b *testing.B) {
 			b.SetBytes(int64(text.Len()))
 			for b.Loop() {
 				if _, _, err := Read(bytes.NewReader(text.Bytes()), "test.xyz"); err != nil {

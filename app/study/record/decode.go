@@ -1,12 +1,13 @@
 package record
 
 import (
-	"fmt"
 	"io"
 	"math"
 	"reflect"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // Read is Decode of all that r holds; a file that is too large is refused
@@ -14,7 +15,7 @@ import (
 func (f Form) Read(r io.Reader, name string, value any) error {
 	data, err := io.ReadAll(io.LimitReader(r, int64(f.MaxBytes)+1))
 	if err != nil {
-		return fmt.Errorf("%s: cannot be read: %w", oneLine(name), err)
+		return message.Errorf("%s: cannot be read: %w", oneLine(name), err)
 	}
 	return f.Decode(data, name, value)
 }
@@ -32,7 +33,7 @@ func (f Form) Decode(data []byte, name string, value any) error {
 
 func (f Form) decode(data []byte, value any) error {
 	if len(data) > f.MaxBytes {
-		return &Error{What: fmt.Sprintf("the file is larger than %d bytes", f.MaxBytes)}
+		return &Error{What: message.Words("the file is larger than %d bytes", f.MaxBytes)}
 	}
 	root, err := parse(data)
 	if err != nil {
@@ -59,19 +60,19 @@ func (f Form) decode(data []byte, value any) error {
 // form.
 func (f Form) raise(root *Node) error {
 	if root.Kind != Object {
-		return &Error{Line: root.Line, What: fmt.Sprintf("the file holds %s where an object is due", root.Kind)}
+		return &Error{Line: root.Line, What: message.Words("the file holds %s where an object is due", root.Kind.text())}
 	}
 	node := root.Take("version")
 	if node == nil {
-		return &Error{Key: "version", What: "the key is missing; this is no file of this program"}
+		return &Error{Key: "version", What: message.Words("the key is missing; this is no file of this program")}
 	}
 	version, err := strconv.Atoi(node.Text)
 	switch {
 	case node.Kind != Number || err != nil || version < 1:
-		return &Error{Line: node.Line, Key: "version", What: "a whole number from 1 is due"}
+		return &Error{Line: node.Line, Key: "version", What: message.Words("a whole number from 1 is due")}
 	case version > f.Version:
 		return &Error{Line: node.Line, Key: "version",
-			What: fmt.Sprintf("%d is newer than this program, which reads up to version %d", version, f.Version)}
+			What: message.Words("%d is newer than this program, which reads up to version %d", version, f.Version)}
 	}
 	for _, step := range f.Steps[version-1:] {
 		if err := step(root); err != nil {
@@ -107,7 +108,7 @@ func fill(v reflect.Value, n *Node, key string, lines bool) error {
 		}
 		i, err := strconv.ParseInt(n.Text, 10, 32)
 		if err != nil {
-			return &Error{Line: n.Line, Key: key, What: fmt.Sprintf("%s is no whole number of a sensible size", cut(n.Text))}
+			return &Error{Line: n.Line, Key: key, What: message.Words("%s is no whole number of a sensible size", cut(n.Text))}
 		}
 		v.SetInt(i)
 	case reflect.Float64:
@@ -116,7 +117,7 @@ func fill(v reflect.Value, n *Node, key string, lines bool) error {
 		}
 		x, err := strconv.ParseFloat(n.Text, 64)
 		if err != nil || math.IsInf(x, 0) {
-			return &Error{Line: n.Line, Key: key, What: cut(n.Text) + " is too large for a number"}
+			return &Error{Line: n.Line, Key: key, What: message.Words("%s is too large for a number", cut(n.Text))}
 		}
 		v.SetFloat(x + 0)
 	default:
@@ -126,14 +127,14 @@ func fill(v reflect.Value, n *Node, key string, lines bool) error {
 }
 
 func mistaken(n *Node, key string, due Kind) *Error {
-	found := string(n.Kind)
+	found := n.Kind.text()
 	switch n.Kind {
 	case String:
-		found = "the text " + quoted(n.Text)
+		found = message.Words("the text %s", quoted(n.Text))
 	case Number, Bool:
-		found = cut(n.Text)
+		found = message.Words("%s", cut(n.Text))
 	}
-	return &Error{Line: n.Line, Key: key, What: fmt.Sprintf("%s is due, not %s", due, found)}
+	return &Error{Line: n.Line, Key: key, What: message.Words("%s is due, not %s", due.text(), found)}
 }
 
 func fillStruct(v reflect.Value, n *Node, key string) error {
@@ -151,23 +152,24 @@ members:
 				continue members
 			}
 		}
-		return &Error{Line: m.Value.Line, Key: join(key, cut(m.Key)), What: "there is no such key" + nearest(m.Key, fields)}
+		return &Error{Line: m.Value.Line, Key: join(key, cut(m.Key)), What: nearest(m.Key, fields)}
 	}
 	return nil
 }
 
-// nearest names the key that was probably meant.
-func nearest(key string, fields []field) string {
+// nearest names the key that was probably meant in the place of one that there
+// is not.
+func nearest(key string, fields []field) message.Text {
 	for _, f := range fields {
 		if strings.EqualFold(f.key, key) {
-			return "; " + quoted(f.key) + " is one"
+			return message.Words("there is no such key; %s is one", quoted(f.key))
 		}
 	}
 	names := make([]string, len(fields))
 	for i, f := range fields {
 		names[i] = f.key
 	}
-	return "; there are " + strings.Join(names, ", ")
+	return message.Words("there is no such key; there are %s", strings.Join(names, ", "))
 }
 
 func fillList(v reflect.Value, n *Node, key string) error {
@@ -177,7 +179,7 @@ func fillList(v reflect.Value, n *Node, key string) error {
 	if v.Kind() == reflect.Slice {
 		v.Set(reflect.MakeSlice(v.Type(), len(n.Items), len(n.Items)))
 	} else if len(n.Items) != v.Len() {
-		return &Error{Line: n.Line, Key: key, What: fmt.Sprintf("%d numbers are due, not %d", v.Len(), len(n.Items))}
+		return &Error{Line: n.Line, Key: key, What: message.Words("%d numbers are due, not %d", v.Len(), len(n.Items))}
 	}
 	for i, entry := range n.Items {
 		if err := fill(v.Index(i), entry, item(key, i), false); err != nil {

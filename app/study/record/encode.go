@@ -3,12 +3,14 @@ package record
 import (
 	"bytes"
 	"encoding/json"
-	"fmt"
+
 	"math"
 	"reflect"
 	"strconv"
 	"strings"
 	"unicode/utf8"
+
+	"lobewright/symmetry/message"
 )
 
 // Encode writes a value, a struct. Equal values give the same bytes. The
@@ -26,7 +28,7 @@ func (f Form) Encode(value any) ([]byte, error) {
 	}
 	w.WriteString("\n}\n")
 	if w.Len() > f.MaxBytes {
-		return nil, &Error{What: fmt.Sprintf("the file would have %d bytes; it may have %d", w.Len(), f.MaxBytes)}
+		return nil, &Error{What: message.Words("the file would have %d bytes; it may have %d", w.Len(), f.MaxBytes)}
 	}
 	return w.Bytes(), nil
 }

@@ -7,20 +7,29 @@ import (
 	"fmt"
 	"strings"
 	"unicode/utf8"
+
+	"lobewright/symmetry/message"
 )
 
-// A Kind is a sort of JSON value, as messages name it.
+// A Kind is the key of a sort of JSON value.
 type Kind string
 
 // The kinds.
 const (
-	Object Kind = "an object"
-	List   Kind = "a list"
-	String Kind = "a text"
-	Number Kind = "a number"
-	Bool   Kind = "true or false"
+	Object Kind = "object"
+	List   Kind = "list"
+	String Kind = "text"
+	Number Kind = "number"
+	Bool   Kind = "bool"
 	Null   Kind = "null"
 )
+
+var kinds = map[Kind]message.Text{
+	Object: message.Words("an object"), List: message.Words("a list"), String: message.Words("a text"),
+	Number: message.Words("a number"), Bool: message.Words("true or false"), Null: message.Words("null"),
+}
+
+func (k Kind) text() message.Text { return kinds[k] }
 
 // A Node is a JSON value as read.
 type Node struct {
@@ -86,10 +95,10 @@ func (n *Node) find(key string) *Node {
 func parse(data []byte) (*Node, error) {
 	data = bytes.TrimPrefix(data, []byte("\ufeff"))
 	if len(bytes.TrimSpace(data)) == 0 {
-		return nil, &Error{What: "the file is empty"}
+		return nil, &Error{What: message.Words("the file is empty")}
 	}
 	if !utf8.Valid(data) {
-		return nil, &Error{Line: lineOf(data, invalidAt(data)), What: "the file is not UTF-8 text"}
+		return nil, &Error{Line: lineOf(data, invalidAt(data)), What: message.Words("the file is not UTF-8 text")}
 	}
 	p := &parser{data: data, decoder: json.NewDecoder(bytes.NewReader(data))}
 	p.decoder.UseNumber()
@@ -108,13 +117,13 @@ func parse(data []byte) (*Node, error) {
 func syntaxError(data []byte, err error) *Error {
 	var syntax *json.SyntaxError
 	if !errors.As(err, &syntax) {
-		return &Error{What: err.Error()}
+		return &Error{What: message.Words("%s", err)}
 	}
 	at := int(syntax.Offset)
 	if at >= len(bytes.TrimRight(data, " \t\r\n")) && strings.Contains(syntax.Error(), "end of JSON") {
-		return &Error{Line: lineOf(data, at), What: "the file is cut off here"}
+		return &Error{Line: lineOf(data, at), What: message.Words("the file is cut off here")}
 	}
-	return &Error{Line: lineOf(data, at-1), What: "this is not JSON: " + syntax.Error()}
+	return &Error{Line: lineOf(data, at-1), What: message.Words("this is not JSON: %s", syntax)}
 }
 
 func invalidAt(data []byte) int {
@@ -154,10 +163,10 @@ func (p *parser) value(key string, depth int) (*Node, error) {
 	token, err := p.decoder.Token()
 	line := p.here()
 	if err != nil {
-		return nil, &Error{Line: line, What: "this is not JSON: " + err.Error()}
+		return nil, &Error{Line: line, What: message.Words("this is not JSON: %s", err)}
 	}
 	if p.values++; p.values > maxValues {
-		return nil, &Error{Line: line, What: fmt.Sprintf("the file holds more than %d values", maxValues)}
+		return nil, &Error{Line: line, What: message.Words("the file holds more than %d values", maxValues)}
 	}
 	n := &Node{Line: line}
 	switch t := token.(type) {
@@ -171,7 +180,7 @@ func (p *parser) value(key string, depth int) (*Node, error) {
 		n.Kind, n.Text = Number, t.String()
 	case json.Delim:
 		if depth == maxDepth {
-			return nil, &Error{Line: line, Key: key, What: fmt.Sprintf("objects and lists stand within each other more than %d deep", maxDepth)}
+			return nil, &Error{Line: line, Key: key, What: message.Words("objects and lists stand within each other more than %d deep", maxDepth)}
 		}
 		if t == '{' {
 			n.Kind = Object
@@ -189,12 +198,12 @@ func (p *parser) members(n *Node, key string, depth int) error {
 	for p.decoder.More() {
 		token, err := p.decoder.Token()
 		if err != nil {
-			return &Error{Line: p.here(), What: "this is not JSON: " + err.Error()}
+			return &Error{Line: p.here(), What: message.Words("this is not JSON: %s", err)}
 		}
 		name, _ := token.(string) // the grammar has been checked
 		line := p.here()
 		if seen[name] {
-			return &Error{Line: line, Key: join(key, cut(name)), What: "the key stands here a second time"}
+			return &Error{Line: line, Key: join(key, cut(name)), What: message.Words("the key stands here a second time")}
 		}
 		seen[name] = true
 		value, err := p.value(join(key, cut(name)), depth+1)

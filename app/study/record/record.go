@@ -12,9 +12,10 @@
 package record
 
 import (
-	"fmt"
 	"strconv"
 	"strings"
+
+	"lobewright/symmetry/message"
 )
 
 // A Form says how one sort of file is written and read.
@@ -47,20 +48,21 @@ type Error struct {
 	Name string // of the file; may be empty
 	Line int    // from 1, 0 for none
 	Key  string // such as "camera.zoom"; may be empty
-	What string
+	What message.Text
 }
 
 // Error is one line: name, line, key, what is wrong.
-func (e *Error) Error() string {
+func (e *Error) Error() string { return e.In(nil) }
+
+// In is Error in a language.
+func (e *Error) In(l *message.Language) string {
 	var parts []string
 	place := oneLine(e.Name)
-	if e.Line > 0 {
-		if place == "" {
-			place = "line "
-		} else {
-			place += ":"
-		}
-		place += strconv.Itoa(e.Line)
+	switch {
+	case e.Line > 0 && place == "":
+		place = message.Words("line %d", e.Line).In(l)
+	case e.Line > 0:
+		place += ":" + strconv.Itoa(e.Line)
 	}
 	if place != "" {
 		parts = append(parts, place)
@@ -68,12 +70,12 @@ func (e *Error) Error() string {
 	if e.Key != "" {
 		parts = append(parts, oneLine(e.Key))
 	}
-	return strings.Join(append(parts, oneLine(e.What)), ": ")
+	return strings.Join(append(parts, oneLine(e.What.In(l))), ": ")
 }
 
 // Wrong makes an Error about a key, for the Check of a value.
 func Wrong(key, format string, arguments ...any) *Error {
-	return &Error{Key: key, What: fmt.Sprintf(format, arguments...)}
+	return &Error{Key: key, What: message.Words(format, arguments...)}
 }
 
 // oneLine keeps a message on one line, whatever a file or its name contains.

@@ -5,6 +5,8 @@ import (
 	"math"
 	"strings"
 	"testing"
+
+	"lobewright/symmetry/message"
 )
 
 type inner struct {
@@ -193,7 +195,7 @@ func TestOlderFilesAreReadForEver(t *testing.T) {
 		func(root *Node) error { // 2 → 3: the weight moved into an object
 			if w := root.Take("weight"); w != nil {
 				if w.Kind != Number {
-					return &Error{Line: w.Line, Key: "weight", What: "a number is due"}
+					return &Error{Line: w.Line, Key: "weight", What: message.Words("a number is due")}
 				}
 				root.Put("inner", &Node{Kind: Object, Line: w.Line, Members: []Member{{"weight", w}}})
 			}
