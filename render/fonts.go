@@ -62,6 +62,12 @@ const (
 	subDrop    = 0.2
 	superRise  = 0.36
 
+	// Two that stand over each other are smaller and farther apart, so that
+	// they do not touch on a screen: a seventh of the size lies between them.
+	pairSize = 0.62
+	pairDrop = 0.24
+	pairRise = 0.38
+
 	powerSize = 0.58 // of a power within an index, larger than a raised sign of the index's size
 	powerRise = 0.02
 )
@@ -99,12 +105,17 @@ func (s *setter) layout(f *Fonts, runs []Run, size float64) {
 		}
 		start = x
 		em, y := size, 0.0
-		switch r.Script {
-		case Sub:
+		pair := r.Stacked || i+1 < len(runs) && runs[i+1].Stacked
+		switch {
+		case r.Script == Sub && pair:
+			em, y = size*pairSize, -size*pairDrop
+		case r.Script == Super && pair:
+			em, y = size*pairSize, size*pairRise
+		case r.Script == Sub:
 			em, y = size*scriptSize, -size*subDrop
-		case Super:
+		case r.Script == Super:
 			em, y = size*scriptSize, size*superRise
-		case SubSuper:
+		case r.Script == SubSuper:
 			em, y = size*powerSize, size*powerRise
 		}
 		k := 0

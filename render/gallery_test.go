@@ -115,7 +115,7 @@ func TestTextsAreMeasuredAndKeptApart(t *testing.T) {
 	f := testFonts(t)
 	w, up, down := f.Measure([]Run{{Text: "Hn"}, {Text: "2", Script: Sub}, {Text: "+", Script: Super, Stacked: true}}, 72)
 	one, _, _ := f.Measure([]Run{{Text: "Hn"}}, 72)
-	wide, _, _ := f.Measure([]Run{{Text: "+"}}, 72*scriptSize)
+	wide, _, _ := f.Measure([]Run{{Text: "+"}}, 72*pairSize)
 	if math.Abs(w-one-wide) > 1e-6 || up < 0.7*25.4 || down < 0.2*25.4 {
 		t.Errorf("a stacked index makes the text %.3f mm wide, want %.3f; reach %.2f up, %.2f down", w, one+wide, up, down)
 	}

@@ -101,23 +101,24 @@ func fraction(top string, bottom int) string {
 	return top + "/" + strconv.Itoa(bottom)
 }
 
-// golden writes (±1 ± √5)/2 and (±1 ± √5)/4.
+// golden writes ±(√5 ± 1)/2 and ±(√5 ± 1)/4, the positive part first.
 func golden(x float64) string {
+	root := math.Sqrt(5)
 	for _, q := range []int{2, 4} {
-		for _, unit := range []float64{1, -1} {
-			for _, root := range []float64{1, -1} {
-				if near(x*float64(q), unit+root*math.Sqrt(5)) {
-					first, second := "1", " + √5"
-					if unit < 0 {
-						first = "−1"
-					}
-					if root < 0 {
-						second = " − √5"
-					}
-					return fmt.Sprintf("(%s%s)/%d", first, second, q)
-				}
-			}
+		top := ""
+		switch y := x * float64(q); {
+		case near(y, 1+root):
+			top = "(1 + √5)"
+		case near(y, root-1):
+			top = "(√5 − 1)"
+		case near(y, 1-root):
+			top = "(1 − √5)"
+		case near(y, -1-root):
+			top = "−(1 + √5)"
+		default:
+			continue
 		}
+		return top + "/" + strconv.Itoa(q)
 	}
 	return ""
 }

@@ -9,7 +9,7 @@ func TestExactNumbersAreRecognized(t *testing.T) {
 	for want, x := range map[string]float64{
 		"0": 0, "−1": -1, "12": 12, "1/2": 0.5, "−3/2": -1.5, "2/3": 2.0 / 3,
 		"√3/2": math.Sqrt(3) / 2, "−√2": -math.Sqrt2, "√6/6": 1 / math.Sqrt(6), "2√2/3": 2 * math.Sqrt2 / 3,
-		"(1 + √5)/2": math.Phi, "(1 − √5)/2": 1 - math.Phi, "(−1 + √5)/2": 2 * math.Cos(2*math.Pi/5), "(−1 − √5)/4": math.Cos(4 * math.Pi / 5),
+		"(1 + √5)/2": math.Phi, "(1 − √5)/2": 1 - math.Phi, "(√5 − 1)/2": 2 * math.Cos(2*math.Pi/5), "−(1 + √5)/4": math.Cos(4 * math.Pi / 5),
 		"2cos(2π/7)": 2 * math.Cos(2*math.Pi/7), "2cos(3π/8)": 2 * math.Cos(6*math.Pi/16), "cos(4π/9)": math.Cos(4 * math.Pi / 9),
 	} {
 		if got, ok := Exact(x); !ok || got != want {

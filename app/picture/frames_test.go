@@ -139,3 +139,22 @@ func TestASecondTriadIsDashedAndSharesWhatIsTheSame(t *testing.T) {
 		t.Errorf("without a second frame there are %d axes", n)
 	}
 }
+
+// TestBelowABandThePictureIsWhole moves a view under a heading: what touched
+// the edges of the picture touches those of what is left.
+func TestBelowABandThePictureIsWhole(t *testing.T) {
+	o := NewOrbit(0.4, 0.3)
+	o.Parallel, o.Span, o.Distance = true, 4, 20
+	const w, h, band = 300, 200, 50.0
+	moved := o.Below(band, w, h)
+	camera := moved.Camera(w, h)
+	up := o.Rows().Row(1)
+	for _, c := range []struct{ at, want float64 }{{2, band}, {-2, h}} {
+		if _, y, _, _ := camera.Project(o.Target.Add(up.Mul(c.at)), w, h); math.Abs(y-c.want) > 1e-9 {
+			t.Errorf("the edge is at %.3f, want %g", y, c.want)
+		}
+	}
+	if o.Below(0, w, h) != o || o.Below(180, w, h) != o {
+		t.Error("without a band, or with one that leaves nothing, the view moves")
+	}
+}

@@ -1,6 +1,8 @@
 package picture
 
 import (
+	"math"
+
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/notation"
@@ -205,7 +207,9 @@ func (s *stage) liveTriad(f *Frame, held *work.Exchange) {
 	if s.look.NoAxes {
 		return
 	}
-	const length, inset = 9.0, 6.0 // mm
+	const longest, widest = 9.0, 6.0 // mm
+	short := float64(min(f.Width, f.Height)) * 25.4 / f.Quality.DPI
+	length, inset := math.Min(longest, 0.12*short), math.Min(widest, 0.06*short)
 	ink := flat(s.palette.Ink)
 	place := render.Place{OffsetX: length + inset, OffsetY: length + inset, Unit: length, Turn: true}
 	for _, mark := range triadMarks(held) {
@@ -218,9 +222,23 @@ func (s *stage) liveTriad(f *Frame, held *work.Exchange) {
 	s.corner = rectangle{left: 0, right: side, top: float64(f.Height) - side, bottom: float64(f.Height)}
 }
 
+// Places of the lines in the upper left corner, mm.
+const (
+	noteInset = 4.0
+	noteLine  = 5.0
+)
+
+// NotesBand is the height in pixels that lines in the upper left corner take
+// from a picture with a number of pixels an inch.
+func NotesBand(lines int, dpi float64) float64 {
+	if lines == 0 {
+		return 0
+	}
+	return (noteInset + noteLine*float64(lines)) * dpi / 25.4
+}
+
 // liveNotes writes lines into the upper left corner.
 func (s *stage) liveNotes(f *Frame, notes []notation.Text) {
-	const inset, line = 4.0, 5.0 // mm
 	for i, note := range notes {
 		s.scene.Shapes = append(s.scene.Shapes, render.Shape{
 			Geometry: render.Text{
@@ -228,7 +246,7 @@ func (s *stage) liveNotes(f *Frame, notes []notation.Text) {
 				Halo: haloWidth, HaloColor: paint(s.palette.Ground),
 			},
 			Material: flat(s.palette.Quiet),
-			Place:    &render.Place{Y: 1, OffsetX: inset, OffsetY: -inset - line*float64(i), Unit: 1},
+			Place:    &render.Place{Y: 1, OffsetX: noteInset, OffsetY: -noteInset - noteLine*float64(i), Unit: 1},
 		})
 	}
 }

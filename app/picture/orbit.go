@@ -54,6 +54,19 @@ func (o Orbit) PerPixel(width, height int) float64 {
 	return o.Span / float64(max(1, min(width, height)))
 }
 
+// Below is the orbit moved and scaled so that what filled a picture of a size
+// fills what is left of it below a band at the top; all in pixels.
+func (o Orbit) Below(band float64, width, height int) Orbit {
+	side := float64(min(width, height))
+	left := math.Min(float64(width), float64(height)-band)
+	if band <= 0 || left < side/4 {
+		return o
+	}
+	o.Span *= math.Max(1, side/left)
+	o.Target = o.Target.Add(o.Rows().Row(1).Mul(band / 2 * o.PerPixel(width, height)))
+	return o
+}
+
 // Rows are the directions right, up and back of the picture, as of
 // render.Camera.Rotation.
 func (o Orbit) Rows() mgl64.Mat3 { return o.Turn.Mat4().Mat3() }

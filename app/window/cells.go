@@ -67,6 +67,13 @@ func drawCells(ctx context.Context, drawers *[]*drawer, d *drawn, r request, qui
 		blank := image.Rect(last.Max.X+gutter, last.Min.Y, r.width, last.Max.Y)
 		draw.Draw(d.image, blank, image.NewUniform(r.shown.Palette.Ground), image.Point{}, draw.Src)
 	}
+	lines := 0 // of the headings; a picture by itself keeps its place
+	if n > 1 {
+		lines = len(r.shown.Notes)
+	}
+	for _, shown := range r.beside {
+		lines = max(lines, len(shown.Notes))
+	}
 	for i, at := range cellsOf(n, r.width, r.height) {
 		if at.Dx() < 2 || at.Dy() < 2 {
 			continue
@@ -76,7 +83,8 @@ func drawCells(ctx context.Context, drawers *[]*drawer, d *drawn, r request, qui
 		if i > 0 {
 			shown = r.beside[i-1]
 		}
-		frame, err := w.live.Frame(shown, r.sight, at.Dx(), at.Dy(), r.dpi, quick)
+		sight := r.sight.Below(picture.NotesBand(lines, r.dpi), at.Dx(), at.Dy())
+		frame, err := w.live.Frame(shown, sight, at.Dx(), at.Dy(), r.dpi, quick)
 		if err != nil {
 			return err
 		}

@@ -216,7 +216,7 @@ func (u *ui) themeCommand(key string, t session.Theme) *command {
 
 func (u *ui) sizeCommands() []*command {
 	var out []*command
-	for _, percent := range []int{85, 100, 115, 130, 150} {
+	for _, percent := range []int{85, 100, 115, 130, 150, 175, 200} {
 		scale := float64(percent) / 100
 		out = append(out, &command{key: "menu.percent", more: []any{percent}, do: func() { u.setScale(scale) },
 			on: func() bool { return float32(u.zoom()) == float32(scale) }})

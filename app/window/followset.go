@@ -56,7 +56,7 @@ func (u *ui) drawWith(b *board, y, width float64, partners []orbitals.GroupOrbit
 	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
 	atom := notation.Words(m.Orbitals.AtomNames()[m.Central])
 	if len(p.Central) == 0 {
-		return b.paragraph(pad, y+4, width, fill(say("partners.nonBonding"), atom), quiet)
+		return b.paragraph(pad, y+7, width, fill(say("partners.nonBonding"), atom), quiet)
 	}
 	names := m.Names()
 	top := y
@@ -72,7 +72,7 @@ func (u *ui) drawWith(b *board, y, width float64, partners []orbitals.GroupOrbit
 			t = t.Then(notation.Words(" "), notation.Named(m.With(c, k), names, notation.Shell))
 		}
 	}
-	y = b.paragraph(pad, y+4, width, t, quiet)
+	y = b.paragraph(pad, y+7, width, t, quiet)
 	if len(m.Orbitals.CentralAtoms()) > 1 {
 		b.spot(spot{x: pad, y: top - 8, width: width, height: y - top - 2, name: "with " + strconv.Itoa(p.Irrep) + " " + strconv.Itoa(p.Copy), hint: say("partners.centralHint"), do: u.centralMenu})
 	}
@@ -83,11 +83,17 @@ func (u *ui) drawWith(b *board, y, width float64, partners []orbitals.GroupOrbit
 // partners, and the turn and the mixing.
 func (u *ui) drawSet(b *board, y, width float64, o *work.Orbitals, partners []orbitals.GroupOrbital) float64 {
 	formula := style{size: secondSize, color: b.palette.Ink, align: -1, whole: true}
+	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
 	irrep := o.Irreps[partners[0].Irrep]
 	if len(partners) > 1 {
 		for _, p := range partners {
 			label := fill(say("partners.equals"), u.shortName(b, irrep.Functions, p.Partner))
-			y = b.paragraph(pad, y+4, width, label.Then(u.forms.text(p.Coefficients)), formula)
+			form := label.Then(u.forms.text(p.Coefficients))
+			if len(b.wrapped(form, width, formula)) > mostFormLines {
+				y = b.paragraph(pad, y+4, width, label.Then(notation.Words(say("partners.longForm", terms(p.Coefficients)))), quiet)
+				continue
+			}
+			y = b.paragraph(pad, y+4, width, form, formula)
 		}
 		y += 4
 	}
@@ -99,7 +105,7 @@ func (u *ui) drawSet(b *board, y, width float64, o *work.Orbitals, partners []or
 			set: func(angle float64) { u.setTurn(angle, true) }, step: u.turnStep, ask: u.askTurn,
 		})
 		if m, ok := work.Snapped(u.turnMarks(), now, 0.051); ok {
-			y = b.paragraph(pad, y+2, width, markText(o, m), style{size: secondSize, color: b.palette.Quiet, align: -1})
+			y = b.paragraph(pad, y+2, width, markText(o, m), quiet)
 		}
 	}
 	if pair, ok := u.mixPair(); ok {
@@ -110,6 +116,21 @@ func (u *ui) drawSet(b *board, y, width float64, o *work.Orbitals, partners []or
 		})
 	}
 	return y
+}
+
+// mostFormLines is how long a combination may be to be listed with those of its
+// partners; the chosen one is written out below in any case.
+const mostFormLines = 4
+
+// terms is how many functions take part in a combination.
+func terms(coefficients []float64) int {
+	n := 0
+	for _, c := range coefficients {
+		if math.Abs(c) > 1e-9 {
+			n++
+		}
+	}
+	return n
 }
 
 // likeOnly is the simplest function that a partner is like; nil without one.
@@ -130,7 +151,7 @@ func (u *ui) shortName(b *board, functions [][]string, partner int) notation.Tex
 	for k := range functions {
 		f := likeOnly(functions, k)
 		if f == nil || b.measure(f, style{size: secondSize}) > longestName {
-			return notation.Text{{Text: "ψ", Italic: true}, {Text: strconv.Itoa(partner + 1), Place: notation.Sub}}
+			return numberedPartner(partner)
 		}
 	}
 	return likeOnly(functions, partner)

@@ -67,10 +67,31 @@ func newPane(content func(b *board), u *ui) *pane {
 // CreateRenderer implements fyne.Widget.
 func (p *pane) CreateRenderer() fyne.WidgetRenderer { return widget.NewSimpleRenderer(p.raster) }
 
-// MinSize implements fyne.CanvasObject.
-func (p *pane) MinSize() fyne.Size {
-	z := float32(p.zoom())
+// MinSize implements fyne.CanvasObject. It does not grow with magnified type:
+// where there is no room for that, the type is smaller.
+func (p *pane) MinSize() fyne.Size { return p.sized(min(p.zoom(), 1)) }
+
+// wanted is the least size at which the type is as large as it is wished.
+func (p *pane) wanted() fyne.Size { return p.sized(p.zoom()) }
+
+func (p *pane) sized(zoom float64) fyne.Size {
+	z := float32(zoom)
 	return fyne.NewSize(p.least.Width*z, p.least.Height*z)
+}
+
+// scale is how much everything on the pane is magnified: as it is wished, but no
+// more than leaves room for its least content in the direction that does not
+// scroll.
+func (p *pane) scale() float64 {
+	size, least := p.Size().Width, p.least.Width
+	if p.sideways {
+		size, least = p.Size().Height, p.least.Height
+	}
+	z := p.zoom()
+	if size < 1 || least < 1 {
+		return z
+	}
+	return max(min(z, float64(size/least)), min(z, 1))
 }
 
 // Update draws the pane anew.
@@ -89,7 +110,7 @@ func (p *pane) Resize(s fyne.Size) {
 }
 
 func (p *pane) size() (width, height float64) {
-	z := p.zoom()
+	z := p.scale()
 	return float64(p.Size().Width) / z, float64(p.Size().Height) / z
 }
 
@@ -130,7 +151,7 @@ func (p *pane) generate(w, h int) image.Image {
 
 func (p *pane) printSpots() {
 	at := fyne.CurrentApp().Driver().AbsolutePositionForObject(p)
-	z := p.zoom()
+	z := p.scale()
 	for _, s := range p.spots {
 		fmt.Fprintf(os.Stderr, "spot\t%s\t%.0f\t%.0f\n", s.name, float64(at.X)+z*(s.x+s.width/2), float64(at.Y)+z*(s.y+s.height/2))
 	}
@@ -182,7 +203,7 @@ func (p *pane) fresh() {
 
 func (p *pane) spotAt(at fyne.Position) (spot, bool) {
 	p.fresh()
-	z := p.zoom()
+	z := p.scale()
 	x, y := float64(at.X)/z, float64(at.Y)/z
 	for i := len(p.spots) - 1; i >= 0; i-- {
 		if p.spots[i].holds(x, y) {
@@ -208,7 +229,7 @@ func (p *pane) Tapped(e *fyne.PointEvent) {
 	if s, ok := p.spotAt(e.Position); ok && s.do != nil {
 		p.mark = s.name
 		if s.at != nil {
-			z := p.zoom()
+			z := p.scale()
 			p.guard(func() { s.at(float64(e.Position.X)/z-s.x, float64(e.Position.Y)/z-s.y) })
 		} else {
 			p.guard(s.do)
@@ -242,15 +263,15 @@ func (p *pane) Dragged(e *fyne.DragEvent) {
 	}
 	if p.held != "" {
 		if s, ok := p.spotNamed(p.held); ok && s.drag != nil {
-			z := p.zoom()
+			z := p.scale()
 			p.guard(func() { s.drag(float64(e.Position.X)/z-s.x, float64(e.Position.Y)/z-s.y) })
 		}
 		return
 	}
 	if p.sideways {
-		p.scrollTo(p.scroll - float64(e.Dragged.DX)/p.zoom())
+		p.scrollTo(p.scroll - float64(e.Dragged.DX)/p.scale())
 	} else {
-		p.scrollTo(p.scroll - float64(e.Dragged.DY)/p.zoom())
+		p.scrollTo(p.scroll - float64(e.Dragged.DY)/p.scale())
 	}
 }
 

@@ -192,7 +192,7 @@ func onSquares(img *image.RGBA) *image.RGBA {
 
 // draw draws the pane.
 func (p *preview) draw(b *board) {
-	scale := p.u.zoom()
+	scale := p.pane.scale()
 	if c := p.u.win.Canvas(); c != nil {
 		scale *= float64(c.Scale())
 	}

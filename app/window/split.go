@@ -3,6 +3,9 @@
 package window
 
 import (
+	"slices"
+	"strconv"
+
 	"fyne.io/fyne/v2"
 
 	"lobewright/app/notation"
@@ -143,31 +146,48 @@ func (u *ui) drawBeside(b *board) {
 	if m == nil {
 		return
 	}
-	d := len(m)
 	name := fill(say("partners.matrix"), notation.Operation(op.Name))
-	tall := 18*float64(d) + 4
-	middle := 8 + tall/2
+	middle := 8 + (18*float64(len(m))+4)/2
 	w := b.text(pad, middle+4, name, quiet)
-	x := b.matrix(pad+w+12, 8, m, plain.color)
-	x += 20
-	irrep := u.state.Orbitals.Irreps[o.Irrep]
-	for k := range d {
-		from := u.shortName(b, irrep.Functions, k)
-		t := from.Then(notation.Words(" → "))
+	x := b.matrix(pad+w+12, 8, m, plain.color) + 20
+	functions := u.state.Orbitals.Irreps[o.Irrep].Functions
+	lines := becomes(m, func(k int) notation.Text { return u.shortName(b, functions, k) })
+	fit := func() bool {
+		return !slices.ContainsFunc(lines, func(t notation.Text) bool { return b.measure(t, quiet) > b.width-x-pad })
+	}
+	if !fit() {
+		lines = becomes(m, numberedPartner)
+	}
+	if !fit() {
+		return // the matrix says it too
+	}
+	for k, t := range lines {
+		b.text(x, 8+18*float64(k)+14, t, quiet)
+	}
+}
+
+// becomes writes what a matrix makes of every partner: "x → −1/2 x + √3/2 y".
+func becomes(m [][]float64, name func(k int) notation.Text) []notation.Text {
+	out := make([]notation.Text, len(m))
+	for k := range m {
+		t := name(k).Then(notation.Words(" → "))
 		first := true
-		for l := range d {
+		for l := range m {
 			v := m[l][k]
 			if v < 1e-9 && v > -1e-9 {
 				continue
 			}
-			to := u.shortName(b, irrep.Functions, l)
-			t = t.Then(notation.Words(factor(v, first)), bracketed(to, v))
+			t = t.Then(notation.Words(factor(v, first)), bracketed(name(l), v))
 			first = false
 		}
-		if x < b.width-40 {
-			b.text(x, 8+18*float64(k)+14, t, quiet)
-		}
+		out[k] = t
 	}
+	return out
+}
+
+// numberedPartner stands for a partner where its function is too long.
+func numberedPartner(k int) notation.Text {
+	return notation.Text{{Text: "ψ", Italic: true}, {Text: strconv.Itoa(k + 1), Place: notation.Sub}}
 }
 
 // bracketed puts a sum that a factor other than 1 stands before in brackets.

@@ -268,7 +268,7 @@ func (u *ui) menuOnPage(items []*fyne.MenuItem, y float64) {
 		return
 	}
 	at := fyne.CurrentApp().Driver().AbsolutePositionForObject(u.pages.pane)
-	z := u.zoom()
+	z := u.pages.pane.scale()
 	widget.ShowPopUpMenuAtPosition(fyne.NewMenu("", items...), u.win.Canvas(), at.AddXY(float32(pad*z), float32((y+chipHeight)*z)))
 }
 

@@ -77,7 +77,7 @@ func (t *thumbs) get(orbital int, side float64) *image.RGBA {
 	if c := u.win.Canvas(); c != nil {
 		scale = float64(c.Scale())
 	}
-	scale *= u.zoom()
+	scale *= u.follows.scale()
 	o := u.state.Orbitals
 	key := thumbKey{orbital, int(math.Floor(side * scale)), fingerprint(o.Projection.Orbitals[orbital].Coefficients), u.palette(), t.round}
 	if img := t.images[key]; img != nil {

@@ -193,12 +193,11 @@ func (u *ui) assemble() fyne.CanvasObject {
 	rule := func() fyne.CanvasObject { return widget.NewSeparator() }
 	bars := container.New(&shares{weights: []float32{1, 1.1}}, u.onTrack(u.scrub), u.angles)
 	row := container.NewBorder(nil, nil, controls, nil, container.New(&shares{weights: []float32{1, 1.1}}, bars, u.said))
-	below := container.NewVBox(rule(), u.ledger, rule(), container.NewPadded(row))
-	left := container.NewBorder(nil, container.NewVBox(u.fault, container.NewPadded(u.basis)), nil, nil, container.NewStack(u.given, u.atoms.pane, u.pages.pane))
-	right := container.NewBorder(nil, container.NewVBox(rule(), u.detail), nil, nil, u.follows)
-	middle := container.NewBorder(nil, nil, container.NewBorder(nil, nil, nil, rule(), left),
-		container.NewBorder(nil, nil, rule(), nil, right), container.NewBorder(nil, u.beside, nil, nil, u.steps.over(container.NewStack(u.view, u.pages.preview.pane))))
-	whole := container.NewBorder(nil, below, nil, nil, middle)
+	left := container.New(&column{down: true, share: sideShare}, container.NewStack(u.given, u.atoms.pane, u.pages.pane), u.fault, container.NewPadded(u.basis))
+	right := container.New(&column{down: true, share: detailShare}, u.follows, rule(), u.detail)
+	picture := container.New(&column{down: true, share: ledgerShare}, u.steps.over(container.NewStack(u.view, u.pages.preview.pane)), u.beside)
+	middle := container.New(&column{rest: 2, share: sideShare}, left, rule(), picture, rule(), right)
+	whole := container.New(&column{down: true, share: ledgerShare}, middle, rule(), u.ledger, rule(), container.NewPadded(row))
 	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
 }
 

@@ -27,6 +27,7 @@ type viewport struct {
 	frames *frames
 	guard  func(func())
 	post   func(func())
+	zoom   func() float64 // of all sizes, by preference
 
 	// What the picture shows; the owner sets them and calls ask.
 	shown  picture.Shown
@@ -62,7 +63,7 @@ type viewport struct {
 }
 
 func newViewport(u *ui) *viewport {
-	v := &viewport{guard: u.guard, post: u.post, onHint: u.hint}
+	v := &viewport{guard: u.guard, post: u.post, zoom: u.zoom, onHint: u.hint}
 	v.raster = canvas.NewRaster(v.generate)
 	v.ring = canvas.NewRectangle(nil)
 	v.ring.StrokeWidth = 2
@@ -108,8 +109,15 @@ func (v *viewport) ask(moving bool) {
 }
 
 // dpi gives millimetres and points of the picture their size: 96 an inch at a
-// scale of 1.
-func (v *viewport) dpi() float64 { return 96 * v.scale() }
+// scale of 1, magnified like all type, though not so that labels would crowd a
+// small picture.
+func (v *viewport) dpi() float64 {
+	const roomy = 240 // units that a picture wants at a zoom of 1
+	cell := cellsOf(1+len(v.beside), v.width, v.height)[0]
+	side := float64(min(cell.Dx(), cell.Dy())) / v.scale()
+	z := v.zoom()
+	return 96 * v.scale() * max(min(z, side/roomy), min(z, 1))
+}
 
 // scale is the number of pixels a unit of the toolkit.
 func (v *viewport) scale() float64 {

@@ -138,7 +138,7 @@ func (u *ui) offer(list []*command, at string) {
 		menu.Items = append(menu.Items, item)
 	}
 	s, _ := u.ledger.spotNamed(at)
-	z := float32(u.zoom())
+	z := float32(u.ledger.scale())
 	place := fyne.CurrentApp().Driver().AbsolutePositionForObject(u.ledger)
 	pop := widget.NewPopUpMenu(menu, u.win.Canvas())
 	place = place.AddXY(z*float32(s.x), z*float32(s.y)-pop.MinSize().Height)
