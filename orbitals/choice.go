@@ -37,7 +37,7 @@ type item struct {
 // atoms by its number takes about 120,000.
 const maxChoice = 400_000
 
-const choiceExample = "write ATOMS:FUNCTIONS, such as F:sigma or 2-4:px,py"
+var choiceExample = message.Words("write ATOMS:FUNCTIONS, such as F:sigma or 2-4:px,py")
 
 // ParseChoice reads a choice of functions: atoms, a colon, and functions with
 // commas between them. Atoms are an element, atom numbers ("2-4,7"), all, or an

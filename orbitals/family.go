@@ -1,7 +1,6 @@
 package orbitals
 
 import (
-	"fmt"
 	"maps"
 	"math"
 	"slices"
@@ -46,8 +45,8 @@ func newBuilder(s *Sites) *builder {
 }
 
 // atom names an atom for a person.
-func (b *builder) atom(k int) string {
-	return fmt.Sprintf("atom %d (%s)", k+1, b.sites.Elements[k].Symbol())
+func (b *builder) atom(k int) message.Text {
+	return message.Words("atom %d (%s)", k+1, b.sites.Elements[k].Symbol())
 }
 
 // parseAtoms reads a choice of atoms.

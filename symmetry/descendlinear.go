@@ -38,9 +38,9 @@ func DescendLinear(symbol, subgroup string, most int) (*LinearDescent, error) {
 	}
 	polar := k.family == cyclic || k.family == pyramidal
 	if !k.axial() || group.family == linearPolar && !polar {
-		possible := "Cn and Cnv"
+		possible := message.Words("Cn and Cnv")
 		if group.family == linearCentral {
-			possible = "Cn, Cnv, Cnh, Dn, Dnh, Dnd, S2n, Cs and Ci"
+			possible = message.Words("Cn, Cnv, Cnh, Dn, Dnh, Dnd, S2n, Cs and Ci")
 		}
 		return nil, message.Errorf("%s is no subgroup of %s with the same z: possible are %s", k.symbol(), symbol, possible)
 	}

@@ -339,29 +339,29 @@ func (s *Setting) LinesForX(z mgl64.Vec3) []mgl64.Vec3 {
 }
 
 // possible lists the lines by operations that lie along them.
-func (s *Setting) possible(lines []mgl64.Vec3, axis string) string {
-	var names []string
+func (s *Setting) possible(lines []mgl64.Vec3, axis string) message.Text {
+	var names []message.Text
 	for _, l := range lines {
-		name := ""
+		var name message.Text
 		for _, o := range s.Operations {
 			along := math.Abs(math.Abs(o.Axis.Dot(l))-1) < 1e-9
-			if along && !o.Turn.Improper && name == "" {
-				name = o.Name
+			if along && !o.Turn.Improper && name.Empty() {
+				name = message.Words("%s", o.Name)
 			}
 		}
 		for _, o := range s.Operations {
 			in := o.Turn == Turn{0, 1, true} && math.Abs(o.Axis.Dot(l)) < 1e-9
-			if name == "" && in {
-				name = "in " + o.Name
+			if name.Empty() && in {
+				name = message.Words("in %s", o.Name)
 			}
 		}
-		if name != "" {
+		if !name.Empty() {
 			names = append(names, name)
 		}
 	}
 	const most = 12
 	if len(names) > most {
-		names = append(names[:most], "…")
+		names = append(names[:most], message.Words("…"))
 	}
-	return "possible for " + axis + " are " + strings.Join(names, ", ")
+	return message.Words("possible for %s are %s", axis, message.Join(names, ", "))
 }

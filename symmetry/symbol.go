@@ -52,7 +52,7 @@ var namedKinds = map[string]kind{
 	"Cinfv": {family: linearPolar}, "Dinfh": {family: linearCentral},
 }
 
-const symbolsKnown = "C1 Cs Ci Cn Cnv Cnh Dn Dnh Dnd (n from 2) S4 S6 S8 … T Td Th O Oh I Ih C∞v D∞h Kh"
+var symbolsKnown = message.Words("C1 Cs Ci Cn Cnv Cnh Dn Dnh Dnd (n from 2) S4 S6 S8 … T Td Th O Oh I Ih C∞v D∞h Kh")
 
 // parseSymbol reads a Schoenflies symbol in plain characters. Symbols that
 // name a group twice (S3 for C3h, C1v for Cs) are refused, with the usual one.

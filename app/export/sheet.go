@@ -41,7 +41,11 @@ func WriteSheet(ctx context.Context, w io.Writer, s *sheet.Sheet, name string, d
 	case ".pdf":
 		return sheetPDF(ctx, w, s, dpi, study)
 	}
-	return message.Errorf("%s: the name must end in %s", name, strings.Join(SheetEndings, " or "))
+	endings := message.Words("%s", SheetEndings[0])
+	for _, e := range SheetEndings[1:] {
+		endings = message.Words("%s or %s", endings, e)
+	}
+	return message.Errorf("%s: the name must end in %s", name, endings)
 }
 
 func sheetPNG(ctx context.Context, w io.Writer, s *sheet.Sheet, dpi float64, study []byte) error {

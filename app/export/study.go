@@ -129,7 +129,11 @@ func ReadStudy(r io.ReaderAt, size int64, name string) (study.Study, error) {
 		case data == nil:
 			return study.Study{}, message.Errorf("%s %w", name, ErrNoStudy)
 		}
-		return study.Decode(data, "the study in "+name)
+		s, err := study.Decode(data, name)
+		if err != nil {
+			err = message.Errorf("the study in %w", err)
+		}
+		return s, err
 	}
 	return study.Study{}, message.Errorf("%s: this is no figure that could carry a study: neither PNG, GIF, SVG, PDF, GLB nor MP4", name)
 }

@@ -2,7 +2,7 @@ package session
 
 import (
 	"errors"
-	"fmt"
+
 	"io"
 	"io/fs"
 	"os"
@@ -71,9 +71,9 @@ func putAside(path string, reason error) Note {
 		}
 	}
 	if err := os.Rename(path, aside); err != nil {
-		return Note{Text: oneLine(fmt.Sprintf("%v; it cannot be put aside: %v", reason, bare(path, err)))}
+		return Note{Text: message.Words("%v; it cannot be put aside: %v", reason, bare(path, err))}
 	}
-	return Note{Text: oneLine(fmt.Sprintf("%v; the file is kept as %s", reason, filepath.Base(aside))), Kept: aside}
+	return Note{Text: message.Words("%v; the file is kept as %s", reason, filepath.Base(aside)), Kept: aside}
 }
 
 // oneLine keeps a message on one line, whatever a file's name contains.

@@ -33,8 +33,8 @@ func TestBadStudiesAreKeptAsideAndTheProgramStarts(t *testing.T) {
 				t.Fatal(err)
 			}
 			s, notes := Open(Options{Folder: folder})
-			if len(notes) != 1 || !strings.Contains(notes[0].Text, bad.want) || strings.ContainsAny(notes[0].Text, "\n\r") ||
-				!strings.HasPrefix(notes[0].Text, "work-1.lobewright") || !strings.HasSuffix(notes[0].Text, "; the file is kept as work-1.unread-1.lobewright") {
+			if len(notes) != 1 || !strings.Contains(notes[0].In(nil), bad.want) || strings.ContainsAny(notes[0].In(nil), "\n\r") ||
+				!strings.HasPrefix(notes[0].In(nil), "work-1.lobewright") || !strings.HasSuffix(notes[0].In(nil), "; the file is kept as work-1.unread-1.lobewright") {
 				t.Fatalf("notes %v", notes)
 			}
 			if kept, err := os.ReadFile(notes[0].Kept); err != nil || string(kept) != bad.text {
@@ -69,7 +69,7 @@ func TestBadSettingsAreKeptAsideAndTheProgramStarts(t *testing.T) {
 			}
 			s, notes := Open(Options{Folder: folder})
 			defer s.Close()
-			if len(notes) != 1 || !strings.HasPrefix(notes[0].Text, "settings.json:") || filepath.Base(notes[0].Kept) != "settings.unread-1.json" {
+			if len(notes) != 1 || !strings.HasPrefix(notes[0].In(nil), "settings.json:") || filepath.Base(notes[0].Kept) != "settings.unread-1.json" {
 				t.Fatalf("notes %v", notes)
 			}
 			if s.Preferences() != (Preferences{}) || len(s.Recent()) != 0 {
@@ -93,7 +93,7 @@ func TestWhatIsNoFileDoesNotHoldTheStartUp(t *testing.T) {
 		}
 	}
 	s, notes := Open(Options{Folder: folder})
-	if len(notes) != 2 || !strings.Contains(notes[0].Text, "no ordinary file") || !strings.Contains(notes[1].Text, "no ordinary file") {
+	if len(notes) != 2 || !strings.Contains(notes[0].In(nil), "no ordinary file") || !strings.Contains(notes[1].In(nil), "no ordinary file") {
 		t.Errorf("%v", notes)
 	}
 	s.Keep(someStudy(0.1))

@@ -24,7 +24,7 @@ package session
 
 import (
 	"errors"
-	"fmt"
+
 	"io/fs"
 	"os"
 	"path/filepath"
@@ -60,10 +60,14 @@ type Options struct {
 
 // A Note is something that the user ought to know about a start, in one line.
 type Note struct {
-	Text string
+	Text message.Text
 	// Kept is the path to which a file that cannot be read was renamed, or "".
 	Kept string
 }
+
+// In is the text in a language, nil for English, on one line whatever the name
+// of a file contains.
+func (n Note) In(l *message.Language) string { return oneLine(n.Text.In(l)) }
 
 // A Session is one running instance of the program. Its methods may be called
 // by several goroutines. Without a folder to write to it keeps everything in
@@ -104,7 +108,7 @@ func Open(o Options) (*Session, []Note) {
 		s.slot, s.lock, err = takeSlot(folder)
 	}
 	if err != nil {
-		return s, []Note{{Text: oneLine(fmt.Sprintf("nothing can be saved: %v", err))}}
+		return s, []Note{{Text: message.Words("nothing can be saved: %v", err)}}
 	}
 	s.folder = folder
 	notes := s.restore()
@@ -278,7 +282,7 @@ func (s *Session) restore() []Note {
 	deaths := s.deaths()
 	var notes []Note
 	if err := write(s.path("running"), []byte(strconv.Itoa(deaths+1)+"\n")); err != nil {
-		notes = append(notes, Note{Text: oneLine(fmt.Sprintf("nothing can be saved: %v", err))})
+		notes = append(notes, Note{Text: message.Words("nothing can be saved: %v", err)})
 	}
 	return append(notes, s.restoreStudy(deaths)...)
 }

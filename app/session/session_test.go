@@ -167,7 +167,7 @@ func TestWithoutAFolderTheProgramRunsAllTheSame(t *testing.T) {
 		t.Fatal(err)
 	}
 	s, notes := Open(Options{Folder: blocked})
-	if len(notes) != 1 || !strings.HasPrefix(notes[0].Text, "nothing can be saved: ") || strings.Contains(notes[0].Text, "\n") {
+	if len(notes) != 1 || !strings.HasPrefix(notes[0].In(nil), "nothing can be saved: ") || strings.Contains(notes[0].In(nil), "\n") {
 		t.Errorf("%v", notes)
 	}
 	s.Keep(someStudy(0.1))
@@ -200,7 +200,7 @@ func TestAStudyThatEndsTheProgramIsSuspected(t *testing.T) {
 		s.crash()
 	}
 	s, notes := Open(Options{Folder: folder})
-	if _, found := s.Study(); found || len(notes) != 1 || !strings.Contains(notes[0].Text, "ended 2 times") || notes[0].Kept == "" {
+	if _, found := s.Study(); found || len(notes) != 1 || !strings.Contains(notes[0].In(nil), "ended 2 times") || notes[0].Kept == "" {
 		t.Errorf("%v %v", found, notes)
 	}
 	s.Keep(someStudy(0.2))

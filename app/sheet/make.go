@@ -211,8 +211,8 @@ func (m *maker) finish(title string, content block) (*Sheet, error) {
 	}
 	const slack = 0.01 // mm, of sums
 	if content.h > height-2*m.margin+slack {
-		return nil, tooSmall(fmt.Sprintf("a height of %.4g mm is too low for this sheet; give at least %.0f mm, or leave captions out",
-			height, math.Ceil(content.h+2*m.margin)))
+		return nil, tooSmall{message.Words("a height of %.4g mm is too low for this sheet; give at least %.0f mm, or leave captions out",
+			height, math.Ceil(content.h+2*m.margin))}
 	}
 	if content.w > m.inner()+slack {
 		return nil, message.Errorf("a width of %.4g mm is too narrow for this sheet; give at least %.0f mm, or a smaller text",
@@ -244,10 +244,10 @@ func (m *maker) note(format string, arguments ...any) {
 func (m *maker) group() (*work.Group, error) { return m.work.Group(m.ctx, m.study) }
 
 // tooSmall is the error of a page on which a sheet has no room.
-type tooSmall string
+type tooSmall struct{ message.Text }
 
 // Error implements error.
-func (e tooSmall) Error() string { return string(e) }
+func (e tooSmall) Error() string { return e.String() }
 
 func isTooSmall(err error) bool {
 	var e tooSmall
@@ -255,7 +255,7 @@ func isTooSmall(err error) bool {
 }
 
 // errTooSmall is refused where panels would be too small to show anything.
-const errTooSmall = tooSmall("there is no room for the panels: give a larger width or height, or a smaller text")
+var errTooSmall = tooSmall{message.Words("there is no room for the panels: give a larger width or height, or a smaller text")}
 
 // panel is a body on paper with its labels.
 func (m *maker) panel(body *picture.Body, v picture.Viewpoint, p picture.Panel, name string, named bool) (block, error) {

@@ -315,7 +315,7 @@ func (u *ui) typeBasis(text string) {
 	list := slices.Clone(u.now().Basis)
 	for _, choice := range orbitals.SplitChoices(text) {
 		if _, err := orbitals.ParseChoice(choice); err != nil {
-			u.sayTyped(say("errors.aboutBasis", err.Error()))
+			u.sayTyped(told(err))
 			return
 		}
 		if !slices.Contains(list, choice) {

@@ -142,7 +142,7 @@ func (q *question) answered(err error) {
 		q.close()
 		return
 	}
-	q.say(err.Error())
+	q.say(told(err))
 }
 
 // say shows what is wrong, in as many lines as the sheet is wide.

@@ -131,7 +131,7 @@ func axisText(g *work.Group, c work.AxisChoice) notation.Text {
 func (u *ui) tryAxes(frame, z, x string) error {
 	if g := u.state.Group; g != nil && !u.state.Stale(work.StageGroup) {
 		if err := g.TryAxes(frame, z, x); err != nil {
-			u.pages.axesProblem, u.pages.axesTried = err.Error(), u.now()
+			u.pages.axesProblem, u.pages.axesTried = told(err), u.now()
 			u.refreshPanes()
 			return err
 		}

@@ -49,7 +49,7 @@ func (u *ui) copyPicture() {
 			u.guard(func() {
 				switch {
 				case err != nil:
-					u.notice = say("errors.aboutCopying", err.Error())
+					u.notice = say("errors.aboutCopying", told(err))
 					u.given.Update()
 				case path != "":
 					u.app.Clipboard().SetContent(path)

@@ -226,7 +226,7 @@ func (u *ui) written(path string, err error, write figureWriter) {
 	case errors.Is(err, export.ErrExists):
 		u.askReplace(path, func() { u.startWriting(path, true, write) })
 	case err != nil:
-		w.said, w.failed = say("figure.notWritten", w.name, err.Error()), true
+		w.said, w.failed = say("figure.notWritten", w.name, told(err)), true
 	default:
 		w.said = say("figure.written", w.name)
 	}

@@ -94,7 +94,7 @@ func (u *ui) tell(err error, done func(error)) {
 		return
 	}
 	if err != nil {
-		u.openProblem = say("errors.aboutOpening", err.Error())
+		u.openProblem = told(err)
 		u.given.scrollTo(0)
 		u.given.Update()
 	}
@@ -103,7 +103,7 @@ func (u *ui) tell(err error, done func(error)) {
 // openStudy opens a study file, or the work that a figure shows.
 func (u *ui) openStudy(path string, done func(error)) {
 	if _, err := os.Stat(path); err != nil {
-		u.tell(errors.New(say("errors.cannotOpen", path, files.Cause(err))), done)
+		u.tell(errors.New(say("errors.cannotOpen", path, told(files.Cause(err)))), done)
 		return
 	}
 	s, err := export.StudyIn(path)
@@ -186,7 +186,7 @@ func (u *ui) save() {
 // saveOver writes over the study's own file.
 func (u *ui) saveOver() {
 	if err := u.writeStudy(u.studyFile, true); err != nil {
-		u.notice = say("errors.aboutSaving", err.Error())
+		u.notice = say("errors.aboutSaving", told(err))
 		u.given.Update()
 		return
 	}

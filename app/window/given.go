@@ -69,7 +69,7 @@ func (d *givenDrawing) heading(text string) {
 func (d *givenDrawing) problem(concerns ...work.Concern) {
 	for _, c := range concerns {
 		if p := d.state.Problem(c); p != nil {
-			d.words(problemText(p), d.accent)
+			d.words(told(p), d.accent)
 		}
 	}
 }
@@ -115,6 +115,10 @@ func (d *givenDrawing) structure() {
 	room := d.width - d.board.measure(formula, d.quiet)
 	d.y += 2
 	d.line(formula.Then(notation.Words(d.board.clipped(source, max(60, room), d.quiet))), d.quiet)
+	for _, n := range s.Notes {
+		n.File = "" // it stands above
+		d.words(n.In(tongue()), d.quiet)
+	}
 	d.problem(work.ConcernStructure, work.ConcernCore, work.ConcernIgnore, work.ConcernProgram)
 	if n := len(s.Molecule.Atoms); st.Group != nil && len(st.Group.Core) < n {
 		d.words(say("given.coreOf", len(st.Group.Core), n), d.quiet)

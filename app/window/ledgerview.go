@@ -187,7 +187,7 @@ func (u *ui) ledgerNeed() string {
 	case len(s.Basis) == 0:
 		return say("ledger.needBasis")
 	case u.state.Problem(work.ConcernElement) != nil:
-		return u.state.Problem(work.ConcernElement).Error()
+		return told(u.state.Problem(work.ConcernElement))
 	case s.Projection.Irrep == "":
 		return say("ledger.needIrrep")
 	case s.Projection.Function == 0:

@@ -127,7 +127,7 @@ func (u *ui) preferences(change func(*session.Preferences)) {
 	p := u.session.Preferences()
 	change(&p)
 	if err := u.session.SetPreferences(p); err != nil {
-		u.notice = err.Error()
+		u.notice = told(err)
 	}
 }
 

@@ -264,7 +264,7 @@ func (d *pageDrawing) searching() bool {
 	}
 	switch {
 	case n.Problem != nil:
-		d.words(n.Problem.Error(), d.accent)
+		d.words(told(n.Problem), d.accent)
 		again("")
 	case n.Running:
 		d.y += 2

@@ -132,7 +132,7 @@ func (p *preview) take(ctx context.Context, made *sheet.Sheet, img *image.RGBA, 
 	}
 	p.running, p.made, p.image, p.problem = false, made, img, ""
 	if err != nil {
-		p.made, p.image, p.problem = nil, nil, err.Error()
+		p.made, p.image, p.problem = nil, nil, told(err)
 	}
 	p.pane.Update()
 	p.u.pages.pane.Update()
@@ -245,7 +245,7 @@ func (p *preview) sizes() string {
 	dpi := p.u.now().Figure.TheResolution()
 	w, h, err := p.made.Pixels(dpi)
 	if err != nil {
-		return err.Error()
+		return told(err)
 	}
 	tenth := func(x float64) string { return fmt.Sprint(math.Round(10*x) / 10) }
 	return say("figure.sizes", tenth(p.made.Width), tenth(p.made.Height), w, h, tenth(dpi))

@@ -77,7 +77,7 @@ func Run(ctx context.Context, o Options) (err error) {
 	u := newUI(a, win, kept, o.Version, fyne.Do)
 	mark("the panes are made")
 	for _, n := range notes {
-		u.notice = n.Text
+		u.notice = n.In(tongue())
 	}
 	p := kept.Preferences()
 	size := fyne.NewSize(1280, 800)

@@ -52,7 +52,7 @@ func (d *pageDrawing) secondFrame() {
 		d.words(second.tried, d.accent)
 	}
 	if err != nil {
-		d.words(err.Error(), d.accent)
+		d.words(told(err), d.accent)
 	}
 	x := float64(pad)
 	byHand := s.Held.Z != "" || s.Held.X != ""
@@ -136,7 +136,7 @@ func (u *ui) hold(frame, z, x string) {
 	next.Frame, next.Z, next.X = frame, z, x
 	if g := u.state.Group; g != nil {
 		if _, err := g.Held(next); err != nil {
-			u.pages.second.tried = err.Error()
+			u.pages.second.tried = told(err)
 			u.pages.pane.Update()
 			return
 		}

@@ -65,26 +65,5 @@ func (u *ui) languageCommands() []*command {
 	return []*command{choice("menu.languageSystem", ""), choice("menu.languageEnglish", string(assets.English)), choice("menu.languageGerman", string(assets.German))}
 }
 
-// concernTexts are sentences about what a message of a computation, which
-// speaks English, is about.
-var concernTexts = map[work.Concern]string{
-	work.ConcernStructure: "errors.aboutStructure", work.ConcernCore: "errors.aboutCore", work.ConcernIgnore: "errors.aboutSpectators",
-	work.ConcernTolerance: "errors.aboutTolerance", work.ConcernAs: "errors.aboutGroup", work.ConcernFrame: "errors.aboutFrame",
-	work.ConcernZ: "errors.aboutFrame", work.ConcernX: "errors.aboutFrame", work.ConcernBasis: "errors.aboutBasis",
-	work.ConcernFunction: "errors.aboutFunction", work.ConcernIrrep: "errors.aboutOrbital", work.ConcernCopy: "errors.aboutOrbital",
-	work.ConcernPartner: "errors.aboutOrbital", work.ConcernElement: "errors.aboutOrbital", work.ConcernOperation: "errors.aboutOperation",
-	work.ConcernCentral: "errors.aboutOrbital",
-	work.ConcernProgram: "errors.aboutProgram",
-}
-
-// problemText is the sentence for a problem.
-func problemText(p *work.Problem) string {
-	key, known := concernTexts[p.Concern]
-	if !known {
-		key = "errors.aboutProgram"
-	}
-	return say(key, p.Error())
-}
-
-// problemWords is problemText, set.
-func problemWords(p *work.Problem) notation.Text { return notation.Words(problemText(p)) }
+// problemWords is what is wrong, set.
+func problemWords(p *work.Problem) notation.Text { return notation.Words(told(p)) }

@@ -56,7 +56,7 @@ func (c *subgroups) want(u *ui) {
 				}
 				c.list = list
 				if err != nil {
-					c.problem = err.Error()
+					c.problem = told(err)
 				}
 				u.pages.pane.Update()
 			})
@@ -467,7 +467,7 @@ func (d *pageDrawing) linearSubgroups(g *work.Group) {
 	const most = 4
 	l, err := symmetry.DescendLinear(symbol, s.Subgroup, most)
 	if err != nil {
-		d.words(err.Error(), d.accent)
+		d.words(told(err), d.accent)
 		return
 	}
 	d.y += 6

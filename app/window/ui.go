@@ -316,7 +316,7 @@ func (u *ui) deliver(st *work.State) {
 	}
 	u.state = st
 	if p := st.Problem(work.ConcernProgram); p != nil {
-		u.notice = say("errors.fault", p.Error(), say("errors.saved"))
+		u.notice = say("errors.fault", told(p), say("errors.saved"))
 		_ = u.session.SaveNow()
 	}
 	if before.Group != st.Group && st.Group != nil {
@@ -452,7 +452,7 @@ func (u *ui) failed(fault any) {
 	trace()
 	saved := say("errors.saved")
 	if err := u.session.SaveNow(); err != nil {
-		saved = say("errors.notSaved", err.Error())
+		saved = say("errors.notSaved", told(err))
 	}
 	u.notice = say("errors.fault", fmt.Sprint(fault), saved)
 	fmt.Fprintln(os.Stderr, "lobewright: "+strings.ReplaceAll(u.notice, "\n", " "))

@@ -29,7 +29,7 @@ func (u *ui) askView() {
 			s.Views = append(s.Views, v)
 		}
 		if err := s.Check(); err != nil {
-			return errors.New(say("view.refused", err.Error()))
+			return errors.New(say("view.refused", told(err)))
 		}
 		u.do(study.StepView, s)
 		return nil

@@ -72,7 +72,7 @@ func (d directions) parse(text string) (mgl64.Vec3, error) {
 		}
 	}
 	var out mgl64.Vec3
-	what := ""
+	var what message.Text
 	switch len(numbers) {
 	case 1, 2:
 		from := mgl64.Vec3{}
@@ -84,10 +84,12 @@ func (d directions) parse(text string) (mgl64.Vec3, error) {
 			return mgl64.Vec3{}, err
 		}
 		out = to.Sub(from)
-		what = map[int]string{1: "atom " + text + " lies at the origin", 2: "atoms " + text + " lie at one place"}[len(numbers)]
+		if what = message.Words("atoms %s lie at one place", text); len(numbers) == 1 {
+			what = message.Words("atom %s lies at the origin", text)
+		}
 	case 3:
 		out = d.fit.Rotation.Mul3x1(mgl64.Vec3{numbers[0], numbers[1], numbers[2]})
-		what = "the vector " + text + " has no length"
+		what = message.Words("the vector %s has no length", text)
 	default:
 		return mgl64.Vec3{}, message.Errorf("%q: an operation, one atom, two atoms or a vector of three numbers would do", text)
 	}

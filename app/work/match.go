@@ -5,7 +5,6 @@ import (
 	"fmt"
 	"math"
 	"slices"
-	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
 	"gonum.org/v1/gonum/mat"
@@ -301,18 +300,18 @@ func centralAtom(b *Basis, chosen int) (int, error) {
 // notCentral says why an atom cannot be the central one, and which can.
 func (g *Group) notCentral(atom int, can []int) error {
 	names := g.AtomNames()
-	var list []string
+	var list []message.Text
 	for _, k := range can {
-		list = append(list, names[k])
+		list = append(list, message.Words("%s", names[k]))
 	}
 	if n := len(list); n > 8 {
-		list = append(list[:8:8], fmt.Sprintf("%d more", n-8))
+		list = append(list[:8:8], message.Words("%d more", n-8))
 	}
-	which := strings.Join(list, ", ")
+	which := message.Join(list, ", ")
 	if r := g.mover(atom); r >= 0 {
-		image := "nowhere"
+		image := message.Words("nowhere")
 		if to := g.Sites.Permutations[r][atom]; to >= 0 {
-			image = "to " + names[to]
+			image = message.Words("to %s", names[to])
 		}
 		return message.Errorf("%s cannot be the central atom: %s carries it %s, so that its functions are no set by themselves; %s can",
 			names[atom], g.Fit.Setting.Operations[r].Name, image, which)

@@ -32,16 +32,16 @@ func turnKey(s study.Study) string {
 
 // Rotation is the orthogonal n×n matrix of plane rotations, carried out in
 // their order: row k is the new function k in terms of the old ones. The error
-// says which rotation names a function beyond n; what says what there is:
-// "Eu has partners".
-func Rotation(n int, rotations []study.PlaneRotation, what string) (*mat.Dense, error) {
+// says which rotation names a function beyond n; has says that there are n:
+// "Eu has partners 1 to 2".
+func Rotation(n int, rotations []study.PlaneRotation, has func(n int) message.Text) (*mat.Dense, error) {
 	out := mat.NewDense(n, n, nil)
 	for i := range n {
 		out.Set(i, i, 1)
 	}
 	for _, r := range rotations {
 		if from, to := r.From, r.To; from < 1 || to < 1 || from > n || to > n || from == to {
-			return nil, message.Errorf("%d cannot be turned into %d: %s 1 to %d", from, to, what, n)
+			return nil, message.Errorf("%d cannot be turned into %d: %s", from, to, has(n))
 		}
 		sin, cos := sincos(r.Angle)
 		f, t := r.From-1, r.To-1
@@ -54,12 +54,20 @@ func Rotation(n int, rotations []study.PlaneRotation, what string) (*mat.Dense, 
 	return out, nil
 }
 
+func hasPartners(irrep symmetry.Irrep) func(n int) message.Text {
+	return func(n int) message.Text { return message.Words("%s has partners 1 to %d", irrep.Label, n) }
+}
+
+func hasCopies(irrep symmetry.Irrep) func(n int) message.Text {
+	return func(n int) message.Text { return message.Words("%s has copies 1 to %d", irrep.Label, n) }
+}
+
 // turnedIrrep is an irrep in the partners that rotations make.
 func turnedIrrep(irrep symmetry.Irrep, turn []study.PlaneRotation) (symmetry.Irrep, error) {
 	if len(turn) == 0 {
 		return irrep, nil
 	}
-	rows, err := Rotation(irrep.Dimension, turn, irrep.Label+" has partners")
+	rows, err := Rotation(irrep.Dimension, turn, hasPartners(irrep))
 	if err != nil {
 		return irrep, err
 	}
@@ -97,7 +105,7 @@ func (o *Orbitals) Turned(label string, turn, mixing []study.PlaneRotation) (*Or
 		return nil, blame(StageOrbital, ConcernIrrep, err)
 	}
 	irrep := o.Irreps[a]
-	rows, err := Rotation(irrep.Dimension, turn, irrep.Label+" has partners")
+	rows, err := Rotation(irrep.Dimension, turn, hasPartners(irrep))
 	if err != nil {
 		return nil, blame(StageOrbital, ConcernPartner, err)
 	}
@@ -107,7 +115,7 @@ func (o *Orbitals) Turned(label string, turn, mixing []study.PlaneRotation) (*Or
 		p.Irreps[a] = irrep.WithPartners(rows)
 		return &Orbitals{Basis: o.Basis, Projection: &p, Plain: o}, nil
 	}
-	mix, err := Rotation(o.Content[a], mixing, irrep.Label+" has copies")
+	mix, err := Rotation(o.Content[a], mixing, hasCopies(irrep))
 	if err != nil {
 		return nil, blame(StageOrbital, ConcernCopy, err)
 	}

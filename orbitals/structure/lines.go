@@ -111,7 +111,7 @@ func systemError(err error) error {
 		inner := errors.Unwrap(err)
 		if inner == nil {
 			if text := err.Error(); printable(text) != text {
-				return errors.New(printable(text))
+				return message.Errorf("%s", printable(text))
 			}
 			return err
 		}
