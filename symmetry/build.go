@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"sort"
+	"sync"
 
 	"github.com/go-gl/mathgl/mgl64"
 )
@@ -19,8 +20,23 @@ func New(symbol string) (*Setting, error) {
 	return newSetting(k), nil
 }
 
-// newSetting builds the group in its standard axes.
+// settings keeps the groups that were built, up to n = MaxNearFold: a ladder names
+// some of them a hundred times. Settings are never changed, so all share them.
+var settings sync.Map // kind → *Setting
+
+// newSetting is the group in its standard axes.
 func newSetting(k kind) *Setting {
+	if s, ok := settings.Load(k); ok {
+		return s.(*Setting)
+	}
+	s := buildSetting(k)
+	if k.n <= MaxNearFold {
+		settings.Store(k, s)
+	}
+	return s
+}
+
+func buildSetting(k kind) *Setting {
 	s := &Setting{Symbol: k.symbol(), kind: k, turn: mgl64.Ident3()}
 	if k.infinite() {
 		return s

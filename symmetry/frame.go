@@ -37,6 +37,7 @@ const (
 	XThreefold      = "threefold-orbit"     // T, Td, Th: first orbit on threefold axes has an atom on (1,1,1)
 	XEquivalent     = "equivalent-settings" // all choices are equivalent
 	XFree           = "free"                // linear: any direction
+	XBend           = "bend-plane"          // linear ideal of a bent set: in the plane in which that is bent
 	XInput          = "input-axes"
 )
 

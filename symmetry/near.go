@@ -7,8 +7,6 @@ import (
 	"sort"
 
 	"github.com/go-gl/mathgl/mgl64"
-
-	"lobewright/symmetry/message"
 )
 
 // DefaultNearness (Å) is how far an atom may move to a group of the ladder.
@@ -36,9 +34,12 @@ type Nearness struct {
 	// (H. Zabrodsky, S. Peleg, D. Avnir, J. Am. Chem. Soc. 114, 7843 (1992);
 	// the scale to 100 is the later one, from memory).
 	Measure float64
+	// Whole is the linear group with the same z and the same ideal points, for a
+	// subgroup of one with a turn about z; else nil.
+	Whole *Nearness
 }
 
-// Near lists the finite groups, and their embeddings, that a set of points has
+// Near lists the groups, and their embeddings, that a set of points has
 // when no point moves by more than a limit (Å; 0 means DefaultNearness), none
 // changes its kind, and no two come nearer than 0.7 of their distance; by
 // rising deviation, the larger group first among equals. Axes go up to n = MaxNearFold.
@@ -51,6 +52,10 @@ type Nearness struct {
 // structures that are near to each other's groups both are told so. In sets of
 // more than smallCloud points only operations are sought that leave neighbours
 // neighbours.
+//
+// Points that a group brings onto one line have a linear group there with all of
+// its subgroups, of which permutations tell nothing: these are found apart
+// (onLines), and listed as far as they have the z of the line.
 //
 // progress, if not nil, is told the share done, from 0 to 1. Near stops with
 // the error of ctx when that is cancelled. Other errors are those of Detect.
@@ -69,7 +74,7 @@ func Near(ctx context.Context, points []Point, links []Link, limit float64, prog
 		return nil, nil
 	}
 	if _, straight := l.cloud.line(1e-6); straight {
-		return nil, message.Errorf("the points lie on one line: only finite groups are sought, and a linear set has infinitely many of them")
+		return NearLinear(points, links, limit)
 	}
 	if err := l.search(ctx, func(share float64) { progress(0.8 * share) }); err != nil {
 		return nil, err
@@ -78,14 +83,31 @@ func Near(ctx context.Context, points []Point, links []Link, limit float64, prog
 	if err != nil {
 		return nil, err
 	}
-	return l.sorted(groups, links), nil
+	linear, across := l.onLines(links)
+	return ranked(append(linear, l.sorted(append(groups, across...), links)...)), nil
+}
+
+// NearLinear is Near for points that lie nearly on one line, and taken for such:
+// it lists only groups that bring them onto it.
+func NearLinear(points []Point, links []Link, limit float64) ([]*Nearness, error) {
+	if limit == 0 {
+		limit = DefaultNearness
+	}
+	if err := check(points, links, limit); err != nil || len(points) == 1 {
+		return nil, err
+	}
+	l := &ladder{cloud: newCloud(points), limit: limit, straight: true}
+	linear, _ := l.onLines(links)
+	return ranked(linear), nil
 }
 
 // A ladder is the search for all groups near a cloud.
 type ladder struct {
 	cloud *cloud
 	limit float64
-	seen  map[elementKey]*placed
+	// straight says that the points are taken for ones that lie on a line.
+	straight bool
+	seen     map[elementKey]*placed
 	// generators has one element of each cyclic group found, of an order that
 	// is a power of a prime; pool has all of their powers, and others holds other
 	// elements. All have the matrices that are the best for them.
@@ -161,7 +183,6 @@ func (l *ladder) sorted(groups []*placed, links []Link) []*Nearness {
 	for _, q := range l.cloud.at {
 		spread += q.Dot(q)
 	}
-	count := map[string]int{}
 	var out []*Nearness
 	for len(groups) > 0 {
 		n := 1
@@ -172,17 +193,29 @@ func (l *ladder) sorted(groups []*placed, links []Link) []*Nearness {
 		groups = groups[n:]
 		sort.SliceStable(equal, func(a, b int) bool { return equal[a].before(equal[b]) })
 		for i, p := range equal {
-			if p.standsAmong(equal[:i]) {
+			if p.turnsAboutLine() || p.standsAmong(equal[:i]) {
 				continue
 			}
 			fit := l.cloud.frame(p, links, l.limit)
-			count[fit.Setting.Symbol]++
-			out = append(out, &Nearness{
-				Fit: fit, Embedding: count[fit.Setting.Symbol], Axis: fit.Rotation.Row(2), Measure: 100 * p.misfit(l.cloud) / spread,
-			})
+			out = append(out, &Nearness{Fit: fit, Axis: fit.Rotation.Row(2), Measure: 100 * p.misfit(l.cloud) / spread})
 		}
 	}
 	return out
+}
+
+// turnsAboutLine tells whether a turn of the group leaves all points in place:
+// then they lie on its axis, and onLines finds the group.
+func (p *placed) turnsAboutLine() bool {
+	for r, m := range p.matrices {
+		still := m.Det() > 0 && m.Trace() < 3-1e-6
+		for k, to := range p.permutations[r] {
+			still = still && int(to) == k
+		}
+		if still {
+			return true
+		}
+	}
+	return false
 }
 
 // before orders groups of equal deviation: the larger first, then by what they

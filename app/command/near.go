@@ -16,6 +16,7 @@ import (
 	"lobewright/app/study"
 	"lobewright/app/table"
 	"lobewright/app/work"
+	"lobewright/symmetry"
 )
 
 func (p *program) nearCommand() *cobra.Command {
@@ -125,7 +126,7 @@ func ladderText(ctx context.Context, l *work.Ladder, all bool) (string, error) {
 	largest, below := l.Within()
 	var folded []string // the subgroups of what it has
 	for i, n := range l.Groups {
-		if symbol := n.Fit.Setting.Symbol; below[i] && !slices.Contains(folded, symbol) {
+		if symbol := n.Fit.Setting.Symbol; below[i] && n.Whole == nil && !slices.Contains(folded, symbol) {
 			folded = append(folded, symbol)
 		}
 	}
@@ -133,7 +134,7 @@ func ladderText(ctx context.Context, l *work.Ladder, all bool) (string, error) {
 	lines := make([]bool, len(l.Groups))
 	for i, n := range l.Groups {
 		symbol := n.Fit.Setting.Symbol
-		lines[i] = all || !below[i] && !shown[symbol]
+		lines[i] = all || !below[i] && !shown[symbol] && (n.Whole == nil || work.Usual(n))
 		shown[symbol] = shown[symbol] || lines[i]
 	}
 	show := func(i int) bool { return lines[i] }
@@ -145,10 +146,26 @@ func ladderText(ctx context.Context, l *work.Ladder, all bool) (string, error) {
 	if folded != nil && !all {
 		fmt.Fprintf(&b, "\nWith %s it has the subgroups %s (--all lists them).\n", l.Groups[largest].Fit.Setting.Symbol, strings.Join(folded, " "))
 	}
-	if l.Linear() != nil {
-		b.WriteString("\nA linear molecule can be taken for any finite group with the same z (--as C2v); descend --to\ntells what its irreps become there.\n")
-	}
+	b.WriteString(lineNote(l, all))
 	return b.String(), nil
+}
+
+// lineNote says which groups are not listed since they leave all atoms on the line
+// on which a linear group has them.
+func lineNote(l *work.Ladder, all bool) string {
+	if l.Linear() != nil {
+		return "\nA linear molecule can be taken for any finite group with the same z (--as C2v); descend --to\ntells what its irreps become there.\n"
+	}
+	if all {
+		return ""
+	}
+	for _, n := range l.Groups {
+		if n.Fit.Setting.Infinite() && n.Whole == nil && len(l.Core) > 1 {
+			return fmt.Sprintf("\nThe linear structure of %s has its finite subgroups with the same z, too, up to n = %d (--all\nlists them, and --as takes them).\n",
+				n.Fit.Setting.Symbol, symmetry.MaxNearFold)
+		}
+	}
+	return ""
 }
 
 type ladderDocument struct {

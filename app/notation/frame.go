@@ -117,6 +117,8 @@ func axisRules(t assets.Texts, fit *symmetry.Fit, whole bool) (z, x string) {
 		x = t.Say("axes.xThreefold")
 	case symmetry.XFree:
 		x = t.Say("axes.xFree")
+	case symmetry.XBend:
+		x = t.Say("axes.xBend")
 	case symmetry.XPlaneXZ:
 		x = t.Say("axes.xzMost") + rest(t.Say("axes.thenBonds"))
 		if planesHoldAlike(fit) {

@@ -43,6 +43,9 @@ func Ladder(l *work.Ladder, shares [][]work.Share, show func(i int) bool) Table 
 		if below[i] {
 			which = strings.TrimSpace(which + "  in " + l.Groups[largest].Fit.Setting.Symbol)
 		}
+		if n.Whole != nil && !below[i] {
+			which = strings.TrimSpace(which + "  of " + n.Whole.Fit.Setting.Symbol)
+		}
 		distortion, partners := Distortion(shares[i])
 		if distortion == "" {
 			distortion = "none"
@@ -69,7 +72,7 @@ func Distortion(shares []work.Share) (byIrrep, byPartner string) {
 		if squares[s.Irrep] == nil {
 			order = append(order, s.Irrep)
 		}
-		for len(squares[s.Irrep]) <= s.Partner {
+		for len(squares[s.Irrep]) < s.Dimension {
 			squares[s.Irrep] = append(squares[s.Irrep], 0)
 		}
 		squares[s.Irrep][s.Partner] += s.Amount * s.Amount

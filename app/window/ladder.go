@@ -33,17 +33,24 @@ func (d *pageDrawing) ladder() {
 	l := d.pages.nearby.Ladder
 	if l.Linear() != nil {
 		d.linearChoices(l.Linear().Setting.Symbol)
+		d.otherLine(l)
 		return
 	}
 	d.ladderHead()
 	count := map[string]int{}
 	for _, n := range l.Groups {
-		count[n.Fit.Setting.Symbol]++
+		if n.Whole == nil || work.Usual(n) {
+			count[n.Fit.Setting.Symbol]++
+		}
 	}
 	for _, i := range l.ByOrder() {
 		n := l.Groups[i]
 		symbol := n.Fit.Setting.Symbol
-		if on := s.As == asText(n); n.Embedding == 1 || d.pages.opened[symbol] || on {
+		on := s.As == asText(n)
+		if n.Whole != nil && !work.Usual(n) && !on {
+			continue // all atoms on the line of a group that stands here
+		}
+		if n.Embedding == 1 || d.pages.opened[symbol] || on {
 			d.ladderRow(n, d.pages.nearby.Shares[i], count[symbol], on)
 		}
 	}
@@ -179,6 +186,22 @@ func (d *pageDrawing) linearChoices(symbol string) {
 		d.choice(&x, notation.Group(as), chip{name: "group " + as, on: s.As == as, do: func() { d.takeGroup(as) }})
 	}
 	d.endChoices()
+}
+
+// otherLine shows the linear groups that a linear molecule nearly has.
+func (d *pageDrawing) otherLine(l *work.Ladder) {
+	_, below := l.Within()
+	head := false
+	for i, n := range l.Groups {
+		if !n.Fit.Setting.Infinite() || n.Fit == l.Linear() || below[i] {
+			continue
+		}
+		if !head {
+			d.ladderHead()
+			head = true
+		}
+		d.ladderRow(n, d.pages.nearby.Shares[i], 1, d.now().As == asText(n))
+	}
 }
 
 // takeGroup takes the structure for a group of the ladder, or for the one that

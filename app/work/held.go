@@ -18,16 +18,23 @@ const (
 )
 
 // holds finds the operations of a larger group that carry the atoms as those of
-// a fit do, in the order of the fit's; nil if there are none for some.
-func holds(larger *symmetry.Nearness, fit *symmetry.Fit) []int {
-	big := larger.Fit.Setting
+// another do, in the order of that one's; nil if there are none for some.
+//
+// In a subgroup of a linear group the permutations do not tell operations apart:
+// there the matrices must be the same, too, in the axes of the input.
+func holds(larger, smaller *symmetry.Nearness) []int {
+	big, fit := larger.Fit.Setting, smaller.Fit
 	if big.Infinite() || big.Order() <= fit.Setting.Order() {
 		return nil
 	}
 	var out []int
+	turn := fit.Rotation.Mul3(larger.Fit.Rotation.Transpose())
 	for r, o := range fit.Setting.Operations {
 		at := -1
 		for q, p := range big.Operations {
+			if larger.Whole != nil && o.Matrix.Transpose().Mul3(turn.Mul3(p.Matrix).Mul3(turn.Transpose())).Trace() < alike {
+				continue
+			}
 			// A plane and the inversion may carry the points alike, too.
 			if p.Turn.Improper == o.Turn.Improper && math.Abs(p.Matrix.Trace()-o.Matrix.Trace()) < 1e-6 && slices.Equal(larger.Fit.Permutations[q], fit.Permutations[r]) {
 				at = q
@@ -42,17 +49,25 @@ func holds(larger *symmetry.Nearness, fit *symmetry.Fit) []int {
 	return out
 }
 
-// held is the frame of a fit in which its axes are, as far as they can, those of
+// alike is the trace of the turn between operations that are the same but for the
+// displacement of the atoms: that of 20°.
+const alike = 2.879
+
+// held is the frame of a group in which its axes are, as far as they can, those of
 // the largest group of the ladder that holds it, so that going down from that
 // group turns nothing that need not be turned.
-func (l *Ladder) held(fit *symmetry.Fit) (symmetry.Frame, error) {
+func (l *Ladder) held(near *symmetry.Nearness) (symmetry.Frame, error) {
+	fit := near.Fit
 	var larger *symmetry.Nearness
 	var images []int
 	for _, n := range l.Groups {
 		if larger != nil && n.Fit.Setting.Order() <= larger.Fit.Setting.Order() {
 			continue
 		}
-		if found := holds(n, fit); found != nil {
+		if n.Whole != nil && !Usual(n) {
+			continue // of those with the same line the usual one stands for all
+		}
+		if found := holds(n, near); found != nil {
 			larger, images = n, found
 		}
 	}

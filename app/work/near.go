@@ -8,8 +8,6 @@ import (
 	"strconv"
 	"strings"
 
-	"github.com/go-gl/mathgl/mgl64"
-
 	"lobewright/app/study"
 	"lobewright/symmetry"
 	"lobewright/symmetry/message"
@@ -21,6 +19,9 @@ type Ladder struct {
 	*Structure
 	Core   []int // atoms, from 0, rising
 	Groups []*symmetry.Nearness
+
+	// linear is the group within the usual tolerance, if it is a linear one.
+	linear *symmetry.Nearness
 }
 
 // Ladder finds the groups that a study's core has within 1 Å. progress, if not
@@ -91,34 +92,37 @@ func search(ctx context.Context, read *Structure, s study.Study, progress func(f
 	}
 	points, links := points(read, core)
 	if fit, err := symmetry.Detect(points, links, symmetry.Options{}); err == nil && fit.Setting.Infinite() {
-		return &Ladder{read, core, []*symmetry.Nearness{infinitelyNear(fit, points)}}, nil
+		return linearLadder(read, core, fit, points, links)
 	}
 	groups, err := symmetry.Near(ctx, points, links, 0, progress)
 	if err != nil {
 		return nil, blame(StageGroup, ConcernStructure, err)
 	}
-	return &Ladder{read, core, groups}, nil
+	return &Ladder{Structure: read, Core: core, Groups: groups}, nil
 }
 
-// infinitelyNear is the one entry for a linear molecule or an atom, whose
-// subgroups cannot be listed.
-func infinitelyNear(fit *symmetry.Fit, points []symmetry.Point) *symmetry.Nearness {
-	n := &symmetry.Nearness{Fit: fit, Embedding: 1, Axis: fit.Rotation.Row(2)}
-	var centre mgl64.Vec3
-	for _, p := range points {
-		centre = centre.Add(p.Position.Mul(1 / float64(len(points))))
+// linearLadder is that of a linear molecule, or of an atom, which has one entry:
+// the subgroups of Kh are not listed.
+func linearLadder(read *Structure, core []int, fit *symmetry.Fit, points []symmetry.Point, links []symmetry.Link) (*Ladder, error) {
+	l := &Ladder{Structure: read, Core: core}
+	if len(points) == 1 {
+		l.Groups = []*symmetry.Nearness{{Fit: fit, Embedding: 1, Axis: fit.Rotation.Row(2)}}
+		return l, nil
 	}
-	moved, spread := 0.0, 0.0
-	for k, p := range points {
-		d := fit.Rotation.Mul3x1(p.Position.Sub(fit.Origin)).Sub(fit.Ideal[k])
-		q := p.Position.Sub(centre)
-		moved += d.Dot(d)
-		spread += q.Dot(q)
+	groups, err := symmetry.NearLinear(points, links, 0)
+	if err != nil {
+		return nil, blame(StageGroup, ConcernStructure, err)
 	}
-	if spread > 0 {
-		n.Measure = 100 * moved / spread
+	l.Groups = groups
+	for _, n := range groups {
+		if n.Fit.Setting.Symbol == fit.Setting.Symbol && n.Embedding == 1 {
+			l.linear = n
+		}
 	}
-	return n
+	if l.linear == nil {
+		return nil, blame(StageGroup, ConcernStructure, message.Errorf("two atoms are too near to each other along %s for a linear molecule", fit.Setting.Symbol))
+	}
+	return l, nil
 }
 
 // ParseEmbedding reads "D4h" or "D4h:2"; without a number the embedding is 1.
@@ -151,7 +155,7 @@ func (l *Ladder) ByOrder() []int {
 	slices.SortStableFunc(order, func(a, b int) int {
 		x, y := l.Groups[a], l.Groups[b]
 		return cmp.Or(
-			cmp.Compare(y.Fit.Setting.Order(), x.Fit.Setting.Order()),
+			cmp.Compare(size(y), size(x)),
 			cmp.Compare(nearest[x.Fit.Setting.Symbol], nearest[y.Fit.Setting.Symbol]),
 			cmp.Compare(x.Embedding, y.Embedding))
 	})
@@ -174,7 +178,7 @@ func (l *Ladder) Find(text string) (*symmetry.Nearness, error) {
 				return n, nil
 			}
 		}
-		if !slices.Contains(symbols, name) {
+		if !slices.Contains(symbols, name) && (n.Whole == nil || Usual(n)) {
 			symbols = append(symbols, name)
 		}
 	}
@@ -194,56 +198,98 @@ func (l *Ladder) Within() (largest int, below []bool) {
 	below = make([]bool, len(l.Groups))
 	largest = -1
 	for i, n := range l.Groups {
-		if n.Fit.Deviation > symmetry.DefaultTolerance || n.Fit.Setting.Infinite() {
-			continue
-		}
-		if largest < 0 || n.Fit.Setting.Order() > l.Groups[largest].Fit.Setting.Order() {
+		if n.Fit.Deviation <= symmetry.DefaultTolerance && (largest < 0 || size(n) > size(l.Groups[largest])) {
 			largest = i
 		}
 	}
 	if largest < 0 {
 		return largest, below
 	}
+	has := l.Groups[largest]
 	for i, n := range l.Groups {
-		below[i] = i != largest && !n.Fit.Setting.Infinite() && holds(l.Groups[largest], n.Fit) != nil
+		if has.Fit.Setting.Infinite() {
+			below[i] = i != largest && n.Fit.Deviation <= symmetry.DefaultTolerance && (n.Whole != nil || n.Fit.Setting.Infinite())
+			continue
+		}
+		below[i] = i != largest && holds(has, n) != nil
 	}
 	return largest, below
 }
 
-// Linear is the fit of a linear molecule, whose ladder is its one entry; else
-// nil.
-func (l *Ladder) Linear() *symmetry.Fit {
-	if len(l.Groups) == 1 && l.Groups[0].Fit.Setting.Infinite() && len(l.Core) > 1 {
-		return l.Groups[0].Fit
+// size orders groups: that of a linear molecule with a centre is larger than that
+// of one without, and both than all others.
+func size(n *symmetry.Nearness) int {
+	switch {
+	case !n.Fit.Setting.Infinite():
+		return n.Fit.Setting.Order()
+	case n.Fit.Setting.Symbol == "C∞v":
+		return math.MaxInt - 1
 	}
-	return nil
+	return math.MaxInt
 }
 
-// choose is the fit of the group that a study takes the structure for. Its
-// tolerance is that of the study, or what the group needs.
-func (l *Ladder) choose(s study.Study) (*symmetry.Fit, error) {
-	if linear := l.Linear(); linear != nil {
-		symbol, embedding, err := ParseEmbedding(s.As)
-		if err == nil && embedding > 1 {
-			err = message.Errorf("there is one %s with the z of a linear molecule, not %d", symbol, embedding)
-		}
-		if err == nil && symbol != linear.Setting.Symbol {
-			linear, err = linear.LinearAs(symbol)
-		}
-		return linear, blame(StageGroup, ConcernAs, err)
+// Usual tells whether a subgroup of a linear group is the one in which linear
+// molecules are usually computed: the abelian D2h, and C2v without a centre.
+func Usual(n *symmetry.Nearness) bool {
+	switch n.Fit.Setting.Symbol {
+	case "D2h":
+		return n.Whole != nil
+	case "C2v":
+		return n.Whole != nil && n.Whole.Fit.Setting.Symbol == "C∞v"
 	}
-	near, err := l.Find(s.As)
+	return false
+}
+
+// Linear is the fit of a molecule that is linear within the usual tolerance; else
+// nil.
+func (l *Ladder) Linear() *symmetry.Fit {
+	if l.linear == nil {
+		return nil
+	}
+	return l.linear.Fit
+}
+
+// find is Find; in a linear molecule it takes finite groups with the same z that
+// are not listed, too: those of a higher n.
+func (l *Ladder) find(text string) (*symmetry.Nearness, error) {
+	near, err := l.Find(text)
+	if err == nil || l.linear == nil {
+		return near, err
+	}
+	symbol, embedding, wrong := ParseEmbedding(text)
+	if wrong != nil || embedding > 1 {
+		return nil, err
+	}
+	fit, err := l.linear.Fit.LinearAs(symbol)
 	if err != nil {
-		return nil, blame(StageGroup, ConcernAs, err)
+		return nil, err
+	}
+	return &symmetry.Nearness{Fit: fit, Embedding: 1, Axis: l.linear.Axis, Measure: l.linear.Measure, Whole: l.linear}, nil
+}
+
+// choose is the fit of the group that a study takes the structure for, and the
+// linear group that it is a subgroup of, if any. Its tolerance is that of the
+// study, or what the group needs.
+func (l *Ladder) choose(s study.Study) (*symmetry.Fit, string, error) {
+	near, err := l.find(s.As)
+	if err != nil {
+		return nil, "", blame(StageGroup, ConcernAs, err)
+	}
+	linear := ""
+	if whole := near.Whole; whole != nil {
+		if l.linear != nil && size(whole) < size(l.linear) {
+			whole = l.linear // a centre within the tolerance
+		}
+		linear = whole.Fit.Setting.Symbol
 	}
 	fit := *near.Fit
 	fit.Tolerance = math.Max(s.TheTolerance(), fit.Deviation)
-	if !s.KeepAxes {
-		return &fit, nil
+	if !s.KeepAxes || near.Whole != nil || fit.Setting.Infinite() { // these have the axes of the line
+		return &fit, linear, nil
 	}
-	frame, err := l.held(&fit)
+	frame, err := l.held(near)
 	if err != nil {
-		return nil, blame(StageGroup, ConcernFrame, err)
+		return nil, "", blame(StageGroup, ConcernFrame, err)
 	}
-	return fit.In(frame), nil
+	return fit.In(frame), linear, nil
 }

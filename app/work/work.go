@@ -72,7 +72,8 @@ type Group struct {
 	Sites *orbitals.Sites
 	// As is the group that the structure is taken for, if one was chosen: "D4h".
 	As string
-	// Linear is C∞v or D∞h where a linear molecule is taken for a finite group.
+	// Linear is C∞v or D∞h where the structure is taken for a finite subgroup of
+	// that, all atoms on one line.
 	Linear string
 
 	// base is the fit before the study's axes were laid: their names and
@@ -192,7 +193,7 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, ladder *Ladder, s s
 		if err := ctx.Err(); err != nil {
 			return nil, err
 		}
-		base, err := fitOf(read, core, ladder, s)
+		base, linear, err := fitOf(read, core, ladder, s)
 		if err != nil {
 			return nil, err
 		}
@@ -208,8 +209,8 @@ func (w *Work) groupOf(ctx context.Context, read *Structure, ladder *Ladder, s s
 		if ladder != nil {
 			g.As = fit.Setting.Symbol
 		}
-		if ladder != nil && !fit.Setting.Infinite() && ladder.Linear() != nil {
-			g.Linear = ladder.Linear().Setting.Symbol
+		if !fit.Setting.Infinite() {
+			g.Linear = linear
 		}
 		return g, nil
 	})
@@ -225,10 +226,12 @@ func coreOf(read *Structure, s study.Study) ([]int, error) {
 }
 
 // fitOf is the group in its default frame: the one that the core has within the
-// tolerance, or the one of the ladder that is chosen.
-func fitOf(read *Structure, core []int, ladder *Ladder, s study.Study) (*symmetry.Fit, error) {
+// tolerance, or the one of the ladder that is chosen; with the linear group that
+// this is a subgroup of, if any.
+func fitOf(read *Structure, core []int, ladder *Ladder, s study.Study) (*symmetry.Fit, string, error) {
 	if ladder == nil {
-		return detect(read, core, s)
+		fit, err := detect(read, core, s)
+		return fit, "", err
 	}
 	return ladder.choose(s)
 }
