@@ -2,8 +2,10 @@ package command
 
 import (
 	"errors"
+	"fmt"
 
 	"github.com/spf13/cobra"
+	"github.com/spf13/pflag"
 )
 
 const structureHelp = `
@@ -66,7 +68,7 @@ figures of the demonstrations into the folder out instead.`,
 	root.SetOut(p.Out)
 	root.SetErr(p.Err)
 	root.SetFlagErrorFunc(func(cmd *cobra.Command, err error) error {
-		return usagef("%w; see %q", err, cmd.CommandPath()+" --help")
+		return usagef("%w; see %q", readable(err), cmd.CommandPath()+" --help")
 	})
 	root.AddCommand(p.groupCommand(), p.projectCommand(), p.matchCommand(), p.ledgerCommand(), p.tableCommand(), p.figureCommand(),
 		p.animationCommand(),
@@ -74,4 +76,25 @@ figures of the demonstrations into the folder out instead.`,
 		p.manualCommand())
 	completions(root, p)
 	return root
+}
+
+// readable says what a flag takes where what was given for it cannot be read:
+// the reader of flags names the function that failed instead.
+func readable(err error) error {
+	var invalid *pflag.InvalidValueError
+	if !errors.As(err, &invalid) {
+		return err
+	}
+	name := "--" + invalid.GetFlag().Name
+	switch invalid.GetFlag().Value.Type() {
+	case "bool":
+		return fmt.Errorf("%s is there or not: write %s, or %s=false, not =%s", name, name, name, invalid.GetValue())
+	case "int":
+		return fmt.Errorf("%s takes a whole number, not %q", name, invalid.GetValue())
+	case "float64":
+		return fmt.Errorf("%s takes a number, not %q", name, invalid.GetValue())
+	case "duration":
+		return fmt.Errorf("%s takes a time such as 90s, not %q", name, invalid.GetValue())
+	}
+	return err
 }

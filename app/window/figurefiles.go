@@ -48,20 +48,11 @@ var filmEndings = []string{".gif", ".apng", ".mp4", ".png", ".glb"}
 // sheetCommands are the commands of sheets and animations.
 func (u *ui) sheetCommands() []*command {
 	p := &u.pages
-	turn := func(key string, to page, letter fyne.KeyName) *command {
-		return (&command{key: key, do: func() {
-			if p.open == to {
-				p.turnTo(noPage)
-			} else {
-				p.turnTo(to)
-			}
-		}, on: func() bool { return p.open == to }}).withKey(letter, control)
-	}
 	there := func() bool { return u.state.Group != nil }
 	return []*command{
-		turn("figure.menuSheet", sheetPage, fyne.Key5),
+		p.command("figure.menuSheet", sheetPage, fyne.Key5),
 		{key: "figure.menuSaveSheet", do: u.askSheetFile, can: there},
-		turn("figure.menuFilm", filmPage, fyne.Key6),
+		p.command("figure.menuFilm", filmPage, fyne.Key6),
 		{key: "figure.menuSaveFilm", do: u.askFilmFile, can: func() bool { return there() && u.noFilm() == "" }},
 	}
 }

@@ -71,11 +71,6 @@ func (u *ui) try(s study.Study, done func(error)) {
 			if err == nil {
 				u.openProblem = ""
 				u.studyFile = "" // whoever opened a study's own file says so after this
-				if now := u.now(); s.Structure != now.Structure || s.Coordinates != now.Coordinates {
-					for _, p := range []*pane{u.ledger, u.follows, u.detail} {
-						p.scrollTo(0)
-					}
-				}
 				u.do(study.StepOpen, s)
 				if s.Coordinates == "" {
 					_ = u.session.AddRecent(s.Structure)
@@ -322,11 +317,16 @@ var keysText = [][2]string{
 	{"help.keysNextOperation", "help.keysNextOperationDoes"},
 	{"help.keysNextFunction", "help.keysNextFunctionDoes"},
 	{"help.keysNextOrbital", "help.keysNextOrbitalDoes"},
+	{"help.keysOneByOne", "help.keysOneByOneDoes"},
+	{"help.keysPartners", "help.keysPartnersDoes"},
+	{"help.keysTurnSet", "help.keysTurnSetDoes"},
 	{"help.keysEverywhere"},
 	{"help.keysTab", "help.keysTabDoes"},
 	{"help.keysOpen", "help.keysOpenDoes"},
 	{"help.keysSave", "help.keysSaveDoes"},
 	{"help.keysUndo", "help.keysUndoDoes"},
+	{"help.keysPages", "help.keysPagesDoes"},
+	{"help.keysFind", "help.keysFindDoes"},
 	{"help.keysMenu", "help.keysMenuDoes"},
 	{"help.keysEscape", "help.keysEscapeDoes"},
 }
@@ -375,7 +375,7 @@ func (c twoColumns) sizes(objects []fyne.CanvasObject) (first, both, row float32
 		}
 		row = max(row, m.Height)
 	}
-	const lead = 1.25
+	const lead = 1.18
 	return first, first + c.gap + second, lead * row
 }
 

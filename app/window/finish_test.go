@@ -127,6 +127,41 @@ func TestEveryControlHasAHint(t *testing.T) {
 	}
 }
 
+// TestAnotherStructureIsSeenFromTheTop opens one and goes back: the panes do
+// not stay where those of the other one were scrolled to.
+func TestAnotherStructureIsSeenFromTheTop(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("octahedron")
+	b.do(study.StepOpen, demoStudy(b.now(), "sandwich-staggered"))
+	b.until("the other", func() bool { return b.state.Orbitals != nil && b.now().Equal(b.state.Study) })
+	panes := map[string]*pane{"right": b.follows, "below": b.ledger}
+	for _, p := range panes {
+		p.Resize(fyne.NewSize(240, 180))
+		p.lay()
+		if p.scrollTo(60); p.scroll == 0 {
+			t.Fatal("the pane cannot be scrolled")
+		}
+	}
+	b.undo()
+	b.until("the one before", func() bool { return b.now().Structure == "demo:octahedron" && b.now().Equal(b.state.Study) })
+	for name, p := range panes {
+		if p.scroll != 0 {
+			t.Errorf("%s: the pane stands at %g", name, p.scroll)
+		}
+	}
+}
+
+// TestWhatHasNoSumToPlaySaysWhatIsMissing asks for one by one without a function.
+func TestWhatHasNoSumToPlaySaysWhatIsMissing(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.do(study.StepOpen, b.now().Opened("demo:water"))
+	b.until("the group", func() bool { return b.state.Group != nil })
+	b.typed('o')
+	if want := b.ledgerNeed(); want == "" || b.hints.text.Text != want {
+		t.Errorf("it says %q, want %q", b.hints.text.Text, want)
+	}
+}
+
 func TestAFileThatChangesOnTheDiskIsNoticed(t *testing.T) {
 	b := newBench(t, t.TempDir())
 	b.watch.close()

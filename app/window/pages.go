@@ -135,18 +135,20 @@ func (p *pages) show(shown *picture.Shown) {
 	}
 }
 
+// command opens a page, or closes it where it is open.
+func (p *pages) command(key string, to page, letter fyne.KeyName) *command {
+	return (&command{key: key, do: func() {
+		if p.open == to {
+			p.turnTo(noPage)
+		} else {
+			p.turnTo(to)
+		}
+	}, on: func() bool { return p.open == to }}).withKey(letter, control)
+}
+
 // frameCommands are the commands about frames.
 func (u *ui) frameCommands() []*command {
 	p := &u.pages
-	turn := func(key string, to page, letter fyne.KeyName) *command {
-		return (&command{key: key, do: func() {
-			if p.open == to {
-				p.turnTo(noPage)
-			} else {
-				p.turnTo(to)
-			}
-		}, on: func() bool { return p.open == to }}).withKey(letter, control)
-	}
 	look := func(key string, of func(*study.Look) *bool) *command {
 		return &command{key: key, do: func() {
 			s := u.now()
@@ -155,10 +157,10 @@ func (u *ui) frameCommands() []*command {
 		}, on: func() bool { s := u.now(); return *of(&s.Look) }}
 	}
 	return []*command{
-		turn("frames.menuAxes", axesPage, fyne.Key1),
-		turn("frames.menuLadder", ladderPage, fyne.Key2),
-		turn("frames.menuSecond", secondPage, fyne.Key3),
-		turn("frames.menuSubgroups", subgroupsPage, fyne.Key4),
+		p.command("frames.menuAxes", axesPage, fyne.Key1),
+		p.command("frames.menuLadder", ladderPage, fyne.Key2),
+		p.command("frames.menuSecond", secondPage, fyne.Key3),
+		p.command("frames.menuSubgroups", subgroupsPage, fyne.Key4),
 		rule,
 		look("frames.menuElements", func(l *study.Look) *bool { return &l.Elements }),
 		look("frames.menuDisplacements", func(l *study.Look) *bool { return &l.Displacements }),

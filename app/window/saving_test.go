@@ -172,7 +172,7 @@ func TestANewNameIsNoFault(t *testing.T) {
 func TestKeysStandInTwoColumns(t *testing.T) {
 	b := newBench(t, t.TempDir())
 	table := keysTable(b.ui).(*container.Scroll)
-	if size := table.Content.MinSize(); size.Height > 500 || size.Width > 660 {
+	if size := table.Content.MinSize(); size.Height > 530 || size.Width > 660 {
 		t.Errorf("the table is %g wide and %g high", size.Width, size.Height)
 	}
 	for _, row := range keysText {

@@ -55,7 +55,7 @@ func (t *tally) start() {
 	u.player.stop()
 	l := u.theLedger()
 	if l == nil {
-		u.said.Update()
+		u.remark(u.oneByOne.hint())
 		return
 	}
 	u.history.Begin(study.StepPlay)

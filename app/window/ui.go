@@ -61,6 +61,7 @@ type ui struct {
 	fault     *pane // above basis: what is wrong with what was typed
 	play      *hintButton
 	oneByOne  *hintButton
+	scrolled  string // the structure that the panes are scrolled for
 	hints     *hintBox
 	thumbs    *thumbs
 	player    *player
@@ -270,6 +271,12 @@ func (u *ui) commit() {
 func (u *ui) changed() {
 	s := u.now()
 	u.hints.show("", fyne.Position{})
+	if s.Structure != u.scrolled {
+		u.scrolled = s.Structure
+		for _, p := range []*pane{u.given, u.ledger, u.follows, u.detail} {
+			p.scrollTo(0)
+		}
+	}
 	u.session.Keep(s)
 	u.watchFiles()
 	u.service.Request(s)
