@@ -122,7 +122,7 @@ func (m *Maker) add(body *Body, b *work.Basis, coefficients []float64, op work.O
 	parts := m.live.parts(s, Shown{Group: b.Group, Basis: b, Coefficients: coefficients})
 	by := mgl64.Ident3()
 	if moved && op.Steps() > 0 {
-		m.live.addParts(s, b.Group, parts, by, ghostOpacity, coarse)
+		m.live.addParts(s, b.Group, uncovered(b.Group, parts, op.At(1)), by, ghostOpacity, coarse)
 		by = op.At(1)
 	}
 	m.live.addParts(s, b.Group, parts, by, 1, detail)

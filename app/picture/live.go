@@ -173,7 +173,11 @@ func (l *Live) fill(s *stage, shown Shown, toward mgl64.Vec3, quick bool) {
 		return
 	}
 	if shown.Operation != nil && shown.Moment > 0 {
-		l.addParts(s, g, parts, at, ghostOpacity, coarse)
+		ghosts := parts
+		if shown.Moment == 1 {
+			ghosts = uncovered(g, parts, shown.Operation.At(1))
+		}
+		l.addParts(s, g, ghosts, at, ghostOpacity, coarse)
 		at = shown.Operation.At(shown.Moment)
 	}
 	l.addParts(s, g, parts, at, 1, detail)
