@@ -105,6 +105,10 @@ func (r *Renderer) Draw(ctx context.Context, dst *image.RGBA, scene *Scene, came
 	return ctx.Err()
 }
 
+// Forget gives up the buffers, which are as large as the largest frame needed
+// them. The next frame makes its own.
+func (r *Renderer) Forget() { *r = Renderer{} }
+
 // begin sets the frame's fixed values.
 func (r *Renderer) begin(ctx context.Context, rect image.Rectangle, w, h int, camera Camera, look Look, quality Quality) {
 	f := &r.frame

@@ -54,18 +54,15 @@ type Shown struct {
 	Palette *assets.Palette
 }
 
-// Live makes the scenes of a picture that moves. It keeps meshes and the
-// places of labels from frame to frame, and serves one goroutine at a time.
+// Live makes the scenes of a picture that moves. It keeps the places of labels
+// from frame to frame, and serves one goroutine at a time.
 type Live struct {
-	meshes map[string]meshPair
 	labels map[int]labelOffset
 	group  *work.Group
 	room   room
 	steady bool // labels stay where they stand
 	balls  basisBalls
 }
-
-type meshPair struct{ plus, minus *render.Mesh }
 
 // labelOffset is where a label stands beside its atom's disc: a direction and
 // how far from the rim.

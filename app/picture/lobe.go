@@ -2,6 +2,7 @@ package picture
 
 import (
 	"math"
+	"slices"
 	"sync"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -102,7 +103,7 @@ func surface(f field, detail detail) *render.Mesh {
 // the nucleus itself, then layer by layer a node in every direction.
 type shells struct {
 	nodes      []mgl64.Vec3
-	tetrahedra [][4]int
+	tetrahedra [][4]int32 // indices of nodes
 	directions []mgl64.Vec3
 	radii      []float64 // of the layers
 }
@@ -133,7 +134,7 @@ var gridOf = map[detail]func() *shells{
 
 func newShells(detail detail) *shells {
 	points, triangles := directions(detail.halvings)
-	g := &shells{nodes: []mgl64.Vec3{{}}, directions: points}
+	g := &shells{nodes: make([]mgl64.Vec3, 1, 1+detail.layers*len(points)), directions: points}
 	for layer := 1; layer <= detail.layers; layer++ {
 		// Layers lie closer near the nucleus; the last one is outside.
 		share := float64(layer) / float64(detail.layers)
@@ -143,25 +144,26 @@ func newShells(detail detail) *shells {
 			g.nodes = append(g.nodes, p.Mul(r))
 		}
 	}
-	n := len(points)
+	n := int32(len(points))
+	g.tetrahedra = make([][4]int32, 0, len(triangles)*(1+3*(detail.layers-1)))
 	for _, t := range triangles {
 		a, b, c := sorted(t)
-		g.tetrahedra = append(g.tetrahedra, [4]int{0, 1 + a, 1 + b, 1 + c})
-		for layer := 1; layer < detail.layers; layer++ {
-			in, out := 1+(layer-1)*n, 1+layer*n
+		g.tetrahedra = append(g.tetrahedra, [4]int32{0, 1 + a, 1 + b, 1 + c})
+		for layer := range int32(detail.layers - 1) {
+			in, out := 1+layer*n, 1+(layer+1)*n
 			// Cut by rising index of direction, so that the diagonals of
 			// prisms side by side agree.
 			g.tetrahedra = append(g.tetrahedra,
-				[4]int{in + a, in + b, in + c, out + c},
-				[4]int{in + a, in + b, out + b, out + c},
-				[4]int{in + a, out + a, out + b, out + c})
+				[4]int32{in + a, in + b, in + c, out + c},
+				[4]int32{in + a, in + b, out + b, out + c},
+				[4]int32{in + a, out + a, out + b, out + c})
 		}
 	}
 	return g
 }
 
-func sorted(t [3]int) (a, b, c int) {
-	a, b, c = t[0], t[1], t[2]
+func sorted(t [3]int) (a, b, c int32) {
+	a, b, c = int32(t[0]), int32(t[1]), int32(t[2])
 	if a > b {
 		a, b = b, a
 	}
@@ -186,16 +188,19 @@ type march struct {
 
 // cut adds the part of the surface within one tetrahedron: nothing, a
 // triangle round one node, or a quadrangle between two pairs of nodes.
-func (m *march) cut(t [4]int) {
-	var inside, outside []int
+func (m *march) cut(t [4]int32) {
+	var inside, outside [4]int
+	n, out := 0, 0
 	for _, node := range t {
 		if m.values[node] > 0 {
-			inside = append(inside, node)
+			inside[n] = int(node)
+			n++
 		} else {
-			outside = append(outside, node)
+			outside[out] = int(node)
+			out++
 		}
 	}
-	switch len(inside) {
+	switch n {
 	case 1:
 		i, a, b, c := inside[0], outside[0], outside[1], outside[2]
 		m.add(m.handed(i, a, b, c), m.vertex(i, a), m.vertex(i, b), m.vertex(i, c))
@@ -247,12 +252,16 @@ func (m *march) add(asIs bool, a, b, c uint32) {
 // mesh has as surface coordinates the distance from the nucleus and the angle
 // about z.
 func (m *march) mesh() *render.Mesh {
-	out := &render.Mesh{Closed: true, Triangles: m.triangles}
-	for _, p := range m.vertices {
+	n := len(m.vertices)
+	out := &render.Mesh{
+		Closed: true, Triangles: slices.Clip(slices.Clone(m.triangles)),
+		Positions: make([][3]float32, n), Normals: make([][3]float32, n), Coords: make([][2]float32, n),
+	}
+	for i, p := range m.vertices {
 		n := m.outward(p)
-		out.Positions = append(out.Positions, [3]float32{float32(p[0]), float32(p[1]), float32(p[2])})
-		out.Normals = append(out.Normals, [3]float32{float32(n[0]), float32(n[1]), float32(n[2])})
-		out.Coords = append(out.Coords, [2]float32{float32(p.Len()), float32(math.Atan2(p[1], p[0]))})
+		out.Positions[i] = [3]float32{float32(p[0]), float32(p[1]), float32(p[2])}
+		out.Normals[i] = [3]float32{float32(n[0]), float32(n[1]), float32(n[2])}
+		out.Coords[i] = [2]float32{float32(p.Len()), float32(math.Atan2(p[1], p[0]))}
 	}
 	return out
 }

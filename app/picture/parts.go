@@ -122,7 +122,7 @@ func (l *Live) addParts(s *stage, g *work.Group, parts []part, by mgl64.Mat3, op
 			s.lobes = append(s.lobes, ball{place.Apply(at), p.length / 2})
 			continue
 		}
-		plus, minus, turn := l.shapeOf(p.mixture, formOf(s.look.Shape, detail))
+		plus, minus, turn := shapeKept(p.mixture, formOf(s.look.Shape, detail))
 		length := p.length
 		if opacity < 1 {
 			length *= ghostSize
@@ -177,22 +177,16 @@ func blend(a, b render.Color, share float64) render.Color {
 	return render.Color{R: mix(a.R, b.R), G: mix(a.G, b.G), B: mix(a.B, b.B)}
 }
 
-// maxMeshes bounds the memory of meshes that are kept: about 100 KB each.
-const maxMeshes = 300
-
-// shapeOf is the function of this name with the meshes kept.
-func (l *Live) shapeOf(m mixture, form form) (plus, minus *render.Mesh, turn mgl64.Mat3) {
+// shapeKept is shapeOf with the meshes kept.
+func shapeKept(m mixture, form form) (plus, minus *render.Mesh, turn mgl64.Mat3) {
 	if m.shell == 1 {
 		return shapeOf(m, form)
 	}
 	key := meshKey(m, form)
-	pair, ok := l.meshes[key]
+	pair, ok := keptMeshes.get(key)
 	if !ok {
-		if len(l.meshes) >= maxMeshes || l.meshes == nil {
-			l.meshes = make(map[string]meshPair)
-		}
 		pair.plus, pair.minus, _ = shapeOf(m, form)
-		l.meshes[key] = pair
+		keptMeshes.put(key, pair)
 	}
 	return pair.plus, pair.minus, mgl64.Ident3()
 }

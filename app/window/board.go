@@ -3,11 +3,12 @@
 package window
 
 import (
-	"context"
+	"encoding/binary"
 	"image"
 	"image/color"
-	"image/draw"
+	"math"
 	"strings"
+	"sync"
 
 	"github.com/go-gl/mathgl/mgl64"
 
@@ -25,6 +26,7 @@ type board struct {
 	palette       assets.Palette
 
 	scene  render.Scene
+	boxes  []box // of the shapes of the scene: where they are at most
 	images []boardImage
 	spots  []spot
 	bottom float64 // of everything drawn
@@ -33,6 +35,15 @@ type board struct {
 type boardImage struct {
 	x, y float64
 	img  *image.RGBA
+}
+
+// corner is the pixel where an image begins.
+func (i boardImage) corner(scale float64) image.Point {
+	return image.Pt(int(i.x*scale+0.5), int(i.y*scale+0.5))
+}
+
+func (i boardImage) box(scale float64) box {
+	return box{i.x, i.y, i.x + float64(i.img.Rect.Dx())/scale, i.y + float64(i.img.Rect.Dy())/scale}
 }
 
 // A spot is a rectangle that does something.
@@ -76,7 +87,8 @@ func newBoard(width, height float64, palette assets.Palette) *board {
 // place is the point of the scene for a place on the board.
 func (b *board) place(x, y float64) mgl64.Vec3 { return mgl64.Vec3{x, b.height - y} }
 
-func (b *board) add(g render.Geometry, c color.NRGBA) {
+func (b *board) add(g render.Geometry, c color.NRGBA, at box) {
+	b.boxes = append(b.boxes, at)
 	b.scene.Shapes = append(b.scene.Shapes, render.Shape{
 		Geometry: g,
 		Material: render.Material{Color: render.Color{R: c.R, G: c.G, B: c.B}, Opacity: float64(c.A) / 255, Flat: true, NoOutline: true},
@@ -102,26 +114,73 @@ type style struct {
 
 // text sets a line with its base at y and returns its width.
 func (b *board) text(x, y float64, t notation.Text, s style) float64 {
-	set := picture.Runs(t)
-	for i := range set {
-		set[i].Bold = s.bold
-	}
+	w := b.measure(t, s)
 	if b.seen(y-s.size, y+0.3*s.size) {
-		b.add(render.Text{At: b.place(x, y), Runs: set, Size: s.size, AlignX: s.align, AlignY: -1, Fixed: true, Through: true}, s.color)
+		left := x - w*(1+s.align)/2
+		at := box{left - 0.5*s.size, y - 1.5*s.size, left + w + 0.5*s.size, y + 0.8*s.size} // and what leans or hangs out
+		b.add(render.Text{At: b.place(x, y), Runs: runsOf(t, s), Size: s.size, AlignX: s.align, AlignY: -1, Fixed: true, Through: true}, s.color, at)
 	}
-	return b.measure(t, s)
+	return w
 }
 
+// measure is the width of a text.
 func (b *board) measure(t notation.Text, s style) float64 {
 	if b.scene.Fonts == nil || len(t) == 0 {
 		return 0
 	}
+	return widths.of(t, s, func() float64 {
+		w, _, _ := b.scene.Fonts.Measure(runsOf(t, s), s.size)
+		return w / unitMM
+	})
+}
+
+func runsOf(t notation.Text, s style) []render.Run {
 	set := picture.Runs(t)
 	for i := range set {
 		set[i].Bold = s.bold
 	}
-	w, _, _ := b.scene.Fonts.Measure(set, s.size)
-	return w / unitMM
+	return set
+}
+
+// widths are those of texts that were measured before: setting them takes
+// longer than laying out all the rest of a pane.
+var widths widthCache
+
+// A widthCache is safe for several goroutines.
+type widthCache struct {
+	mu    sync.Mutex
+	known map[string]float64
+	key   []byte
+}
+
+// mostWidths bounds what is kept.
+const mostWidths = 5000
+
+func (c *widthCache) of(t notation.Text, s style, measure func() float64) float64 {
+	c.mu.Lock()
+	defer c.mu.Unlock()
+	c.key = binary.LittleEndian.AppendUint64(c.key[:0], math.Float64bits(s.size))
+	c.key = append(c.key, truth(s.bold))
+	for _, r := range t {
+		c.key = binary.AppendUvarint(c.key, uint64(len(r.Text)))
+		c.key = append(append(c.key, r.Text...), truth(r.Italic), byte(r.Place))
+	}
+	if w, ok := c.known[string(c.key)]; ok {
+		return w
+	}
+	if c.known == nil || len(c.known) >= mostWidths {
+		c.known = map[string]float64{}
+	}
+	w := measure()
+	c.known[string(c.key)] = w
+	return w
+}
+
+func truth(b bool) byte {
+	if b {
+		return 1
+	}
+	return 0
 }
 
 // paragraph sets a text in lines of a width, the first one with its base at
@@ -210,7 +269,7 @@ func (b *board) fill(x, y, width, height float64, c color.NRGBA) {
 	if b.seen(y, y+height) && width > 0 && height > 0 {
 		b.add(render.Polygon{Points: []mgl64.Vec3{
 			b.place(x, y), b.place(x, y+height), b.place(x+width, y+height), b.place(x+width, y),
-		}}, c)
+		}}, c, box{x, y, x + width, y + height})
 	}
 }
 
@@ -240,22 +299,6 @@ func (b *board) image(x, y float64, img *image.RGBA) {
 }
 
 func (b *board) spot(s spot) { b.spots = append(b.spots, s) }
-
-// paint draws the board at a number of pixels a unit.
-func (b *board) paint(r *render.Renderer, dst *image.RGBA, scale float64) error {
-	ground := b.palette.Panel
-	camera := render.Camera{Eye: mgl64.Vec3{0, 0, 1}, Up: mgl64.Vec3{0, 1, 0}, Height: 1}
-	look := render.PlainLook(render.Color{R: ground.R, G: ground.G, B: ground.B})
-	quality := render.Quality{Samples: 4, DPI: boardDPI * scale, Workers: 1}
-	if err := r.Draw(context.Background(), dst, &b.scene, camera, look, quality, render.Band{}); err != nil {
-		return err
-	}
-	for _, i := range b.images {
-		at := image.Pt(int(i.x*scale+0.5), int(i.y*scale+0.5))
-		draw.Draw(dst, i.img.Bounds().Add(at), i.img, image.Point{}, draw.Src)
-	}
-	return nil
-}
 
 // matrix sets a matrix, given by rows, in square brackets with its left upper
 // corner at x and y, and returns the place right of it.

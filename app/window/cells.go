@@ -6,8 +6,10 @@ import (
 	"context"
 	"image"
 	"image/draw"
+	"slices"
 
 	"lobewright/app/picture"
+	"lobewright/app/work"
 	"lobewright/render"
 )
 
@@ -17,12 +19,14 @@ type drawnCell struct {
 	at    image.Rectangle
 }
 
-// A drawer draws one of several pictures. It keeps meshes, the places of labels
-// and an image from frame to frame, and must not be copied.
+// A drawer draws the pictures of a frame one after the other. It keeps the places
+// of labels and an image from frame to frame.
 type drawer struct {
-	live     picture.Live
+	group    *work.Group // of the last frame
+	basis    *work.Basis
+	lives    []*picture.Live
 	renderer render.Renderer
-	image    *image.RGBA
+	image    *image.RGBA // of one of several pictures
 }
 
 // gutter is the width in pixels of the line between two pictures.
@@ -53,11 +57,21 @@ func cellsOf(n, width, height int) []image.Rectangle {
 	return out
 }
 
-// drawCells draws the pictures of a request one after the other.
-func drawCells(ctx context.Context, drawers *[]*drawer, d *drawn, r request, quick bool) error {
+// draw draws the pictures of a request.
+func (w *drawer) draw(ctx context.Context, d *drawn, r request, quick bool) error {
 	n := 1 + len(r.beside)
-	for len(*drawers) < n {
-		*drawers = append(*drawers, new(drawer))
+	for len(w.lives) < n {
+		w.lives = append(w.lives, new(picture.Live))
+	}
+	if w.group != r.shown.Group || w.basis != r.shown.Basis {
+		w.group, w.basis = r.shown.Group, r.shown.Basis
+		w.renderer.Forget() // the buffers were those of another scene
+	}
+	if !quick {
+		w.lives = slices.Delete(w.lives, n, len(w.lives)) // at rest, so none of them is wanted again at once
+		if n == 1 {
+			w.image = nil
+		}
 	}
 	d.cells = make([]drawnCell, 0, n)
 	if n > 1 && r.shown.Palette != nil {
@@ -78,13 +92,12 @@ func drawCells(ctx context.Context, drawers *[]*drawer, d *drawn, r request, qui
 		if at.Dx() < 2 || at.Dy() < 2 {
 			continue
 		}
-		w := (*drawers)[i]
 		shown := r.shown
 		if i > 0 {
 			shown = r.beside[i-1]
 		}
 		sight := r.sight.Below(picture.NotesBand(lines, r.dpi), at.Dx(), at.Dy())
-		frame, err := w.live.Frame(shown, sight, at.Dx(), at.Dy(), r.dpi, quick)
+		frame, err := w.lives[i].Frame(shown, sight, at.Dx(), at.Dy(), r.dpi, quick)
 		if err != nil {
 			return err
 		}

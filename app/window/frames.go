@@ -120,9 +120,9 @@ func (f *frames) work() {
 		}
 	}()
 	var (
-		drawers []*drawer
-		half    bool
-		next    *request
+		drawer drawer
+		half   bool
+		next   *request
 	)
 	for {
 		var r request
@@ -140,7 +140,7 @@ func (f *frames) work() {
 			if half {
 				q.width, q.height, q.dpi = (r.width+1)/2, (r.height+1)/2, r.dpi/2
 			}
-			if !f.draw(f.ctx, &drawers, q, true) {
+			if !f.draw(f.ctx, &drawer, q, true) {
 				return
 			}
 			switch {
@@ -165,7 +165,7 @@ func (f *frames) work() {
 		if len(f.want) > 0 {
 			cancel()
 		}
-		ok := f.draw(ctx, &drawers, r, false)
+		ok := f.draw(ctx, &drawer, r, false)
 		f.mu.Lock()
 		f.cancel = nil
 		f.mu.Unlock()
@@ -192,7 +192,7 @@ func (f *frames) waitTaken() {
 }
 
 // draw draws a frame and hands it over; false after close.
-func (f *frames) draw(ctx context.Context, drawers *[]*drawer, r request, quick bool) bool {
+func (f *frames) draw(ctx context.Context, w *drawer, r request, quick bool) bool {
 	began := time.Now()
 	var d *drawn
 	select {
@@ -204,7 +204,7 @@ func (f *frames) draw(ctx context.Context, drawers *[]*drawer, r request, quick 
 		d = &drawn{image: image.NewRGBA(image.Rect(0, 0, r.width, r.height))}
 	}
 	d.full, d.structure = !quick, r.shown.Group != nil
-	if err := drawCells(ctx, drawers, d, r, quick); err != nil {
+	if err := w.draw(ctx, d, r, quick); err != nil {
 		f.free <- d
 		return f.ctx.Err() == nil
 	}

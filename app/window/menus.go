@@ -4,9 +4,11 @@ package window
 
 import (
 	"path/filepath"
+	"time"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/driver/desktop"
+	"fyne.io/fyne/v2/widget"
 
 	"lobewright/app/session"
 	"lobewright/app/study"
@@ -97,9 +99,30 @@ func (u *ui) updateMenus() {
 	for _, m := range u.commands {
 		update(m.commands)
 	}
-	if menu := u.win.MainMenu(); menu != nil {
-		menu.Refresh()
+	u.menusLater()
+}
+
+// menusLater has the bar of menus made anew when nothing has changed for a
+// while: the toolkit makes every menu with all its items, which costs more than
+// a picture.
+func (u *ui) menusLater() {
+	const rest = 300 * time.Millisecond
+	if u.menusDue != nil {
+		u.menusDue.Stop()
 	}
+	u.menusDue = time.AfterFunc(rest, func() {
+		u.post(func() {
+			menu := u.win.MainMenu()
+			if u.closing || menu == nil {
+				return
+			}
+			if _, open := u.win.Canvas().Focused().(interface{ Child() *widget.Menu }); open {
+				u.menusLater() // it would close
+				return
+			}
+			menu.Refresh()
+		})
+	})
 }
 
 // addShortcuts adds the keys that entries must keep for themselves, so that

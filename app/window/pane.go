@@ -36,7 +36,8 @@ type pane struct {
 
 	raster   *canvas.Raster
 	image    *image.RGBA
-	renderer render.Renderer
+	painted  painting         // what stands on the image
+	renderer *render.Renderer // all panes have one, since they are drawn one after the other
 	stale    bool
 	spots    []spot
 	mark     string // name of the spot that the keyboard is on
@@ -58,7 +59,7 @@ type pane struct {
 }
 
 func newPane(content func(b *board), u *ui) *pane {
-	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint, onRune: u.typed, onHelp: u.showHelp}
+	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint, onRune: u.typed, onHelp: u.showHelp, renderer: &u.panes}
 	p.raster = canvas.NewRaster(p.generate)
 	p.ExtendBaseWidget(p)
 	return p
@@ -131,7 +132,7 @@ func (p *pane) generate(w, h int) image.Image {
 		return p.image
 	}
 	if p.image == nil || p.image.Rect.Dx() != w || p.image.Rect.Dy() != h {
-		p.image = image.NewRGBA(image.Rect(0, 0, w, h))
+		p.image, p.painted = image.NewRGBA(image.Rect(0, 0, w, h)), painting{}
 	}
 	p.stale = false
 	p.guard(func() {
@@ -144,7 +145,7 @@ func (p *pane) generate(w, h int) image.Image {
 		if measureSpots {
 			p.printSpots()
 		}
-		_ = b.paint(&p.renderer, p.image, float64(w)/b.width)
+		_ = p.painted.paint(b, p.renderer, p.image, float64(w)/b.width)
 	})
 	return p.image
 }

@@ -19,7 +19,8 @@ import (
 	"lobewright/app/picture"
 	"lobewright/app/session"
 	"lobewright/app/study"
-	_ "lobewright/app/window/language" // before the toolkit
+	_ "lobewright/app/window/language"     // before the toolkit
+	_ "lobewright/app/window/toolkitcache" // before the toolkit
 	"lobewright/assets"
 )
 
@@ -55,6 +56,10 @@ func Run(ctx context.Context, o Options) (err error) {
 	}
 	mark("the program runs")
 	go picture.Prepare() // while the toolkit opens the window
+	ended := make(chan struct{})
+	defer close(ended)
+	limitHeap(ended)
+	fewerTypefaces()
 	app.SetMetadata(fyne.AppMetadata{
 		ID: "org.lobewright.window", Name: "Lobewright", Version: o.Version,
 		// Every call from another goroutine goes through fyne.Do; without

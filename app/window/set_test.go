@@ -188,7 +188,7 @@ func BenchmarkFrames(b *testing.B) {
 	partners := o.Partners(first.Irrep, 0)
 	r.shown.Coefficients = partners[0].Coefficients
 	run := func(b *testing.B) {
-		var drawers []*drawer
+		var w drawer
 		d := &drawn{image: image.NewRGBA(image.Rect(0, 0, r.width, r.height))}
 		for n := 0; b.Loop(); n++ {
 			moment := float64(n%60) / 60
@@ -196,7 +196,7 @@ func BenchmarkFrames(b *testing.B) {
 			for i := range r.beside {
 				r.beside[i].Moment = moment
 			}
-			if err := drawCells(b.Context(), &drawers, d, r, true); err != nil {
+			if err := w.draw(b.Context(), d, r, true); err != nil {
 				b.Fatal(err)
 			}
 		}

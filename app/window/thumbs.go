@@ -118,6 +118,9 @@ func (t *thumbs) work() {
 	var renderer render.Renderer
 	for {
 		var job thumbJob
+		if len(t.want) == 0 {
+			renderer.Forget() // nothing may be wanted for long
+		}
 		select {
 		case job = <-t.want:
 		case <-t.ctx.Done():

@@ -7,6 +7,7 @@ import (
 	"slices"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/theme"
 
 	"lobewright/assets"
 )
@@ -46,4 +47,20 @@ func withLine(font []byte) []byte {
 	binary.BigEndian.PutUint16(hhea[4:], uint16(int16(lineAbove*unitsPerEm)))
 	binary.BigEndian.PutUint16(hhea[6:], uint16(-int16(lineBelow*unitsPerEm)))
 	return font
+}
+
+// fewerTypefaces has the toolkit do without its own typefaces and its pictographs,
+// which it would read anew for every style: the program's hold all that it
+// writes, and what else a file's title may hold is looked for in those of the
+// system.
+func fewerTypefaces() {
+	small := theme.DefaultSymbolFont()
+	for _, r := range []fyne.Resource{
+		theme.DefaultEmojiFont(), theme.DefaultTextFont(), theme.DefaultTextBoldFont(), theme.DefaultTextItalicFont(),
+		theme.DefaultTextBoldItalicFont(), theme.DefaultTextMonospaceFont(),
+	} {
+		if r, ok := r.(*fyne.StaticResource); ok {
+			r.StaticContent = small.Content()
+		}
+	}
 }

@@ -8,6 +8,7 @@ import (
 	"runtime"
 	"runtime/debug"
 	"strings"
+	"time"
 
 	"fyne.io/fyne/v2"
 	"fyne.io/fyne/v2/canvas"
@@ -23,6 +24,7 @@ import (
 	"lobewright/assets"
 	"lobewright/orbitals"
 	"lobewright/orbitals/structure"
+	"lobewright/render"
 )
 
 // An ui is the whole window. Its fields belong to the toolkit's goroutine.
@@ -67,6 +69,8 @@ type ui struct {
 	player    *player
 	commands  []commandMenu
 	menusSaid string // the state that the menus show
+	menusDue  *time.Timer
+	panes     render.Renderer // of all panes
 
 	// typedProblem is what is wrong with the functions that were typed.
 	typedProblem string
@@ -488,6 +492,9 @@ func (u *ui) close() {
 		return
 	}
 	u.closing = true
+	if u.menusDue != nil {
+		u.menusDue.Stop()
+	}
 	u.watch.close()
 	u.player.stop()
 	u.service.Close()

@@ -14,6 +14,7 @@ import (
 	"fyne.io/fyne/v2/widget"
 
 	"lobewright/app/picture"
+	"lobewright/app/work"
 	"lobewright/render"
 )
 
@@ -36,6 +37,7 @@ type viewport struct {
 
 	width, height int // of the picture in pixels
 	picker        render.Renderer
+	picked        *work.Basis // that was last picked from
 	posted        atomic.Bool
 	painted       func() // called once, when the toolkit first asks for the picture
 	first         func() // called once, with the first picture of a structure
@@ -161,6 +163,10 @@ func (v *viewport) pick(at fyne.Position, slack float64) (picture.Picked, bool) 
 	d := v.frames.shown
 	if d == nil || v.Size().Width < 1 {
 		return picture.Picked{Atom: -1}, false
+	}
+	if v.picked != v.shown.Basis {
+		v.picked = v.shown.Basis
+		v.picker.Forget() // the buffers were those of another scene
 	}
 	s := float64(d.image.Rect.Dx()) / float64(v.Size().Width)
 	x, y := int(float64(at.X)*s), int(float64(at.Y)*s)
