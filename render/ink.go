@@ -383,7 +383,35 @@ func (f *frame) inked(d2 float32) float32 {
 	return min(1, max(0, h+0.5-d)) * min(1, 2*h)
 }
 
-// inkLayer draws the outline of a translucent sheet as fragments: where the
+// lined returns which of the pixels of a group, of which i is the first, have
+// an outline over what is opaque.
+func (t *tile) lined(i int, valid uint8) (bit uint8) {
+	if !(t.f.ink.half > 0) {
+		return 0
+	}
+	for m := valid; m != 0; m &= m - 1 {
+		if k := lowest(m); t.lines.dist[i+k] < 1e9 {
+			bit |= 1 << k
+		}
+	}
+	return bit
+}
+
+// lineStrip makes a strip of the outlines over what is opaque, for a group
+// that has other strips too.
+func (t *tile) lineStrip(i int, lines uint8) int32 {
+	k := t.takeStrip(-1, -1)
+	s := &t.strips[k]
+	c := &t.f.light.line
+	s.even, s.a, s.n = true, [lanes]float32{}, [lanes]float32{}
+	for m := lines; m != 0; m &= m - 1 {
+		j := lowest(m)
+		t.paint(s, j, t.full, t.lines.near[i+j], c[0], c[1], c[2], t.f.inked(t.lines.dist[i+j]))
+	}
+	return k
+}
+
+// inkLayer draws the outline of a translucent sheet as strips: where the
 // samples of the layer end.
 func (t *tile) inkLayer(l *layer, part int32) {
 	f := t.f
@@ -394,38 +422,16 @@ func (t *tile) inkLayer(l *layer, part int32) {
 	area := t.clip
 	area.Min.Y, area.Max.Y = max(area.Min.Y, l.y0-1), min(area.Max.Y, l.y1+2)
 	k.ready(t.side*t.side, area.Min.Y*t.side, area.Max.Y*t.side)
-	n := float32(int(1) << t.lg)
 	any := false
-	meet := func(i, j int, b *border) {
-		p, q := l.at[i].mask, l.at[j].mask
-		cp, cq := float32(bits.OnesCount32(p))/n, float32(bits.OnesCount32(q))/n
-		if (cp >= 0.5) == (cq >= 0.5) {
-			return
-		}
-		at := cp + cq - 0.5
-		slot := l.at[i].slot
-		if cp < 0.5 {
-			at = 1 - at
-			slot = l.at[j].slot
-		}
-		b.on, b.at = true, min(1, max(0, at))
-		// A little nearer than the sheet, so that a line where it dips into a
-		// body is seen on both sides; but facets at the rim are so steep that
-		// their slope says little.
-		z, zx, zy := t.plane(slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
-		d := f.pixelDepth(part, z)
-		b.near = z + min(2*(abs32(zx)+abs32(zy)), 10*d) + 4*d
-		any = true
-	}
 	for y := area.Min.Y; y < area.Max.Y; y++ {
 		for x := area.Min.X; x < area.Max.X; x++ {
 			i := y*t.side + x
-			m := l.at[i].mask
-			if x+1 < area.Max.X && m != l.at[i+1].mask {
-				meet(i, i+1, &k.right[i])
+			m := t.maskAt(l, x, y)
+			if x+1 < area.Max.X && m != t.maskAt(l, x+1, y) && t.rim(l, part, x, y, x+1, y, &k.right[i]) {
+				any = true
 			}
-			if y+1 < area.Max.Y && m != l.at[i+t.side].mask {
-				meet(i, i+t.side, &k.down[i])
+			if y+1 < area.Max.Y && m != t.maskAt(l, x, y+1) && t.rim(l, part, x, y, x, y+1, &k.down[i]) {
+				any = true
 			}
 		}
 	}
@@ -438,43 +444,67 @@ func (t *tile) inkLayer(l *layer, part int32) {
 	}
 }
 
+// maskAt returns the samples of a pixel that a layer covers.
+func (t *tile) maskAt(l *layer, x, y int) uint16 {
+	g, lane := t.groupOf(x, y)
+	if k := l.at[g]; k >= 0 {
+		return t.strips[k].mask[lane]
+	}
+	return 0
+}
+
+// rim fills in the border between two neighbouring pixels of which a layer
+// covers one for the most part and the other not.
+func (t *tile) rim(l *layer, part int32, x, y, x1, y1 int, b *border) bool {
+	n := float32(int(1) << t.lg)
+	cp, cq := float32(bits.OnesCount16(t.maskAt(l, x, y)))/n, float32(bits.OnesCount16(t.maskAt(l, x1, y1)))/n
+	if (cp >= 0.5) == (cq >= 0.5) {
+		return false
+	}
+	at := cp + cq - 0.5
+	if cp < 0.5 {
+		at = 1 - at
+		x, y, x1, y1 = x1, y1, x, y
+	}
+	b.on, b.at = true, min(1, max(0, at))
+	g, lane := t.groupOf(x, y)
+	// A little nearer than the sheet, so that a line where it dips into a
+	// body is seen on both sides; but facets at the rim are so steep that
+	// their slope says little.
+	z, zx, zy := t.plane(t.strips[l.at[g]].slot[lane], float32(min(x, x1))+0.5, float32(min(y, y1))+0.5)
+	d := t.f.pixelDepth(part, z)
+	b.near = z + min(2*(abs32(zx)+abs32(zy)), 10*d) + 4*d
+	return true
+}
+
 // inkFrag is a pixel of a translucent sheet's outline.
 type inkFrag struct {
 	pixel, part int32
 	n, a        float32
 }
 
-// addInks turns the outlines of translucent sheets into fragments. Their slot
-// names the part alone.
+// addInks turns the outlines of translucent sheets into strips.
 func (t *tile) addInks() {
-	if len(t.inks) == 0 {
-		return
-	}
-	slot := uint32(0)
+	lc := &t.f.light.line
+	l := &t.front
 	last := int32(-1)
 	for _, k := range t.inks {
-		if k.a <= 0 {
+		if k.part != last {
+			last = k.part
+			t.forget(l)
+		}
+		x, y := int(k.pixel)%t.side, int(k.pixel)/t.side
+		if k.a <= 0 || !image.Pt(x, y).In(t.inner) {
 			continue
 		}
-		if k.part != last || slot == 0 {
-			last, slot = k.part, uint32(len(t.slots))
-			t.slots = append(t.slots, lineSlot(k.part))
-		}
-		mask := uint32(0)
-		key := uint64(math.Float32bits(k.n))<<32 | math.MaxUint32
-		for s, v := range t.keys[int(k.pixel)<<t.lg:][:1<<t.lg] {
-			if key > v {
-				mask |= 1 << s
-			}
-		}
+		mask := t.before(int(k.pixel), k.n)
 		if mask == 0 {
 			continue
 		}
-		t.frags = append(t.frags, frag{next: t.first[k.pixel], slot: slot, mask: mask, n: k.n, a: k.a})
-		t.first[k.pixel] = int32(len(t.frags) - 1)
-		t.anyFrag = true
+		g, lane := t.groupOf(x, y)
+		s := t.sheet(l, g, y, k.part)
+		s.rank = outline
+		t.paint(s, lane, mask, k.n, lc[0], lc[1], lc[2], k.a)
 	}
+	t.forget(l)
 }
-
-// lineSlot marks fragments that are a part's outline, not its surface.
-func lineSlot(part int32) slot { return slot{part, -2, 0} }

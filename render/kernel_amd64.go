@@ -38,3 +38,13 @@ func lookEight(s *sights)
 //
 //go:noescape
 func rodFour(k *rodKernel)
+
+// stackEight is stack.plain for the eight pixels of a group at once.
+//
+//go:noescape
+func stackEight(k *stack)
+
+// scanFour is scan.plain for four samples a pixel.
+//
+//go:noescape
+func scanFour(s *scan, keys *uint64)

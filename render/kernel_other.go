@@ -10,3 +10,5 @@ func maskFour(*triEight, int) bool       { panic("unreachable") }
 func skyEight(*skyKernel)                { panic("unreachable") }
 func lookEight(*sights)                  { panic("unreachable") }
 func rodFour(*rodKernel)                 { panic("unreachable") }
+func stackEight(*stack)                  { panic("unreachable") }
+func scanFour(*scan, *uint64)            { panic("unreachable") }

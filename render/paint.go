@@ -135,7 +135,7 @@ func (t *tile) stroke(s *stroke, layered bool) {
 		for x := x0; x < x1; x++ {
 			n := float32(s.near(float64(t.x+x)+t.sx[k], y))
 			if layered {
-				if t.front.at[py*t.side+x].mask>>k&1 == 0 {
+				if !t.covers(&t.front, py, x, k) {
 					t.cover(&t.front, py, x, k, n, slot)
 				}
 				continue

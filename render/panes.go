@@ -20,6 +20,7 @@ type paneColor struct {
 // middle of the pixel (px, py) is n + nx·px + ny·py.
 type wide struct {
 	slot      uint32
+	part      int32
 	n, nx, ny float32
 }
 
@@ -53,237 +54,226 @@ func (t *tile) evenColor(p *part) (c paneColor) {
 	}
 	c.even = true
 	half := float32(t.side) / 2
-	t.sights.n = 0
-	i := t.want(uint32(len(t.slots)-1), half, half)
+	t.sights.reset()
+	o := &t.sights.all[t.sights.block()]
+	t.aim(o, 0, uint32(len(t.slots)-1), half, half)
 	t.look()
-	c.r, c.g, c.b = t.sights.color(i)
-	t.sights.n = 0
+	c.r, c.g, c.b = o.red[0], o.green[0], o.blue[0]
 	return c
 }
 
 // pane draws a translucent disc without a hole. It is one sheet, so its
-// fragments are made at once, pixel row by pixel row, unless the layer is
-// wanted for an outline.
+// strips are made at once, pixel row by pixel row; the layer gets them when
+// it is wanted for an outline.
 func (t *tile) pane(d *disc, p *part, slot uint32, keep bool) {
 	b := &p.box
-	n := 1 << t.lg
-	y0, y1 := max(t.clip.Min.Y, int(math.Max(-1e6, b.y0))-t.y-1), min(t.clip.Max.Y, int(math.Min(1e6, b.y1))-t.y+2)
-	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
-	var piece [2][2]float64
-	var x0, x1 [16]int
-	nx, ny := float32(d.n[1]), float32(d.n[2])
-	full := uint32(1)<<n - 1
 	area := t.clip
 	all := d.fills(float64(t.x), float64(t.y), float64(t.x+t.side), float64(t.y+t.side), t.f.projs[p.proj].nMin)
-	if keep = keep && (!all || t.solidAny); !keep {
+	if keep = keep && (!all || t.bodies); !keep {
 		area = t.inner
-		y0, y1 = max(y0, area.Min.Y), min(y1, area.Max.Y)
 	}
+	at := func(x, y float64) float64 {
+		return d.n[0] + d.n[1]*(float64(t.x)+x-d.mx) + d.n[2]*(float64(t.y)+y-d.my)
+	}
+	part := t.slots[slot].part
 	if all && !keep {
-		corner := d.n[0] + d.n[1]*(float64(t.x)+0.5-d.mx) + d.n[2]*(float64(t.y)+0.5-d.my)
-		t.wides = append(t.wides, wide{slot, float32(corner), nx, ny})
+		t.wides = append(t.wides, wide{slot, part, float32(at(0.5, 0.5)), float32(d.n[1]), float32(d.n[2])})
 		return
 	}
+	side := float64(t.side)
+	hidden := t.bodies || min(at(0, 0), at(side, 0), at(0, side), at(side, side)) <= 1.001*float64(t.near)
+	y0, y1 := max(area.Min.Y, int(math.Max(-1e6, b.y0))-t.y-1), min(area.Max.Y, int(math.Min(1e6, b.y1))-t.y+2)
 	for py := y0; py < y1; py++ {
-		from, to, coreFrom, coreTo := math.MaxInt, 0, 0, math.MaxInt
-		if all {
-			from, to = area.Min.X, area.Max.X
+		row := chord{from: area.Min.X, to: area.Max.X, coreTo: math.MaxInt}
+		if !all {
+			row = t.chord(d, b, py)
+			row.from, row.to = max(row.from, area.Min.X), min(row.to, area.Max.X)
 		}
-		for k := 0; k < n && !all; k++ {
-			x0[k], x1[k] = 0, 0
-			y := float64(t.y+py) + (float64(k)+0.5)/float64(n)
-			if d.spans(y, lo, hi, &piece) > 0 {
-				x0[k], x1[k] = t.pixelRange(piece[0][0], piece[0][1], k)
-			}
-			if x0[k] < x1[k] {
-				from, to = min(from, x0[k]), max(to, x1[k])
-			}
-			coreFrom, coreTo = max(coreFrom, x0[k]), min(coreTo, x1[k])
+		if row.from >= row.to {
+			continue
 		}
-		row := d.n[0] + d.n[2]*(float64(t.y+py)+0.5-d.my) + d.n[1]*(float64(t.x)+0.5-d.mx)
-		from, to = max(from, area.Min.X), min(to, area.Max.X)
-		for x := from; x < to; x++ {
-			mask := full
-			if x < coreFrom || x >= coreTo {
-				mask = 0
-				for k := range n {
-					if x >= x0[k] && x < x1[k] {
-						mask |= 1 << k
-					}
-				}
-			}
-			i := py*t.side + x
-			fr := frag{slot: slot, mask: mask, n: float32(row + d.n[1]*float64(x)), nx: nx, ny: ny}
-			if t.solidAny {
-				fr.mask = t.inFront(i, &fr)
-				if fr.mask == 0 {
-					continue
-				}
-			}
-			if keep {
-				t.front.at[i] = sheet{fr.mask, slot, fr.n, nx, ny}
-				t.front.touch(py)
+		for k := (row.from + t.pad) >> 3; k <= (row.to-1+t.pad)>>3; k++ {
+			x := k<<3 - t.pad
+			masks, any := t.paneMasks(&row, x, py)
+			if !any {
 				continue
 			}
-			t.push(i, fr)
+			n := at(float64(x)+0.5, float64(py)+0.5)
+			if hidden && !t.paneSeen(&masks, x, py, n, d) {
+				continue
+			}
+			g := py*t.perRow + k
+			var s *strip
+			if keep {
+				s = t.sheet(&t.front, g, py, part)
+			} else {
+				s = &t.strips[t.newStrip(g, part)]
+			}
+			s.mask = masks
+			t.fillPlane(s, slot, n, d.n[1], float32(d.n[1]), float32(d.n[2]))
 		}
 	}
 }
 
-// ahead returns the samples of a pixel where a plane lies in front of what is
-// there.
-func (t *tile) ahead(keys []uint64, near, nx, ny float32) (mask uint32) {
-	// Mostly all samples agree.
-	lo, hi := keys[0], keys[0]
-	for _, key := range keys[1:] {
-		lo, hi = min(lo, key), max(hi, key)
+// fillPlane gives a strip of a disc its nearness, n at its first pixel, and
+// its colour where that is even.
+func (t *tile) fillPlane(s *strip, slot uint32, n, step float64, nx, ny float32) {
+	for i := range lanes {
+		s.n[i], s.nx[i], s.ny[i], s.slot[i] = float32(n+step*float64(i)), nx, ny, slot
 	}
-	half := (abs32(nx) + abs32(ny)) / 2
-	if near-half > math.Float32frombits(uint32(hi>>32)) {
-		return 1<<len(keys) - 1
+	if c := &t.panes[t.slots[slot].tri]; c.even {
+		s.even = true
+		for i := range lanes {
+			s.r[i], s.g[i], s.b[i] = c.r, c.g, c.b
+		}
+		t.finish(s, t.f.parts[s.part].alpha)
 	}
-	if near+half < math.Float32frombits(uint32(lo>>32)) {
-		return 0
+}
+
+// chord is what a disc covers of a row of pixels: from where to where the
+// samples of every kind, the pixels with any, and those with all.
+type chord struct {
+	x0, x1           [16]int
+	from, to         int
+	coreFrom, coreTo int
+}
+
+func (t *tile) chord(d *disc, b *box, py int) (c chord) {
+	n := 1 << t.lg
+	lo, hi := math.Max(b.x0, float64(t.x)), math.Min(b.x1, float64(t.x+t.side+1))
+	var piece [2][2]float64
+	c.from, c.coreTo = math.MaxInt, math.MaxInt
+	for k := range n {
+		y := float64(t.y+py) + (float64(k)+0.5)/float64(n)
+		if d.spans(y, lo, hi, &piece) > 0 {
+			c.x0[k], c.x1[k] = t.pixelRange(piece[0][0], piece[0][1], k)
+		}
+		if c.x0[k] < c.x1[k] {
+			c.from, c.to = min(c.from, c.x0[k]), max(c.to, c.x1[k])
+		}
+		c.coreFrom, c.coreTo = max(c.coreFrom, c.x0[k]), min(c.coreTo, c.x1[k])
 	}
-	step := 1 / float32(len(keys))
-	for k, key := range keys {
-		at := near + nx*(float32(t.sx[k&15])-0.5) + ny*((float32(k)+0.5)*step-0.5)
-		if int64(uint64(math.Float32bits(at))<<32|math.MaxUint32) > int64(key) {
-			mask |= 1 << k
+	return c
+}
+
+// paneMasks returns the samples of a group, with its first pixel at x, that a
+// disc covers, and whether there are any.
+func (t *tile) paneMasks(c *chord, x, py int) (m [lanes]uint16, any bool) {
+	for i := range lanes {
+		px := x + i
+		switch {
+		case px < c.from || px >= c.to:
+			continue
+		case px >= c.coreFrom && px < c.coreTo:
+			m[i] = t.full
+		default:
+			for k := range 1 << t.lg {
+				if px >= c.x0[k] && px < c.x1[k] {
+					m[i] |= 1 << k
+				}
+			}
+		}
+		any = any || m[i] != 0
+	}
+	return m, any
+}
+
+// paneSeen takes from the masks of a group what bodies hide, and tells
+// whether anything is left.
+func (t *tile) paneSeen(m *[lanes]uint16, x, py int, n float64, d *disc) bool {
+	any := false
+	for i := range lanes {
+		if m[i] != 0 {
+			m[i] &= t.inFront(py*t.side+x+i, float32(n+d.n[1]*float64(i)), float32(d.n[1]), float32(d.n[2]))
+			any = any || m[i] != 0
 		}
 	}
-	return mask
+	return any
 }
 
 // blank tells that the canvas shows nothing but its ground and the discs that
 // fill it, in one order, and returns its pixel.
 func (t *tile) blank() (uint32, bool) {
-	return t.calmPixel, t.calm && !t.anyFrag && !t.bodies
+	return t.calmPixel, t.calm && t.kept == 0 && !t.bodies
 }
 
-// layWides adds the discs that fill the canvas to the layers of a pixel,
-// where nothing opaque hides them; solid tells that there may be something.
-func (t *tile) layWides(i, px, py int, solid bool) {
-	next, at := t.first[i], int32(len(t.frags))
-	full := uint32(1)<<(1<<t.lg) - 1
+// layWides adds the discs that fill the canvas to the pile of a group, each
+// at the place of its part; solid has the pixels where something opaque may
+// hide them.
+func (t *tile) layWides(from, x, py int, solid uint8) {
 	for k := range t.wides {
 		w := &t.wides[k]
-		fr := frag{next: next, slot: w.slot, mask: full, n: w.near(px, py), nx: w.nx, ny: w.ny}
-		if solid {
-			fr.mask = t.ahead(t.keys[i<<t.lg:][:1<<t.lg], fr.n, w.nx, w.ny)
-			if fr.mask == 0 {
-				continue
-			}
+		j := t.takeStrip(-1, w.part)
+		s := &t.strips[j]
+		for i := range lanes {
+			s.mask[i] = t.full
 		}
-		next = at
-		at++
-		t.frags = append(t.frags, fr)
+		n := w.near(x, py)
+		for m := solid; m != 0; m &= m - 1 {
+			i := lowest(m)
+			s.mask[i] = t.inFront(py*t.side+x+i, n+w.nx*float32(i), w.nx, w.ny)
+		}
+		t.fillPlane(s, w.slot, float64(n), float64(w.nx), w.nx, w.ny)
+		t.pile = append(t.pile, j)
+		at := len(t.pile) - 1
+		for ; at > from && t.strips[t.pile[at-1]].order() > s.order(); at-- {
+			t.pile[at] = t.pile[at-1]
+		}
+		t.pile[at] = j
 	}
-	t.first[i] = next
-}
-
-// inFront returns the samples of a pixel where a plane is not hidden.
-func (t *tile) inFront(i int, fr *frag) uint32 {
-	keys := t.keys[i<<t.lg:][:1<<t.lg]
-	any := t.empty
-	for _, key := range keys {
-		any |= key
-	}
-	if any == 0 {
-		return fr.mask
-	}
-	return fr.mask & t.ahead(keys, fr.n, fr.nx, fr.ny)
 }
 
 const maxEven = 4
-
-// stack is an order of even discs, from the front.
-type stack struct {
-	slots [maxEven]uint32
-	n     int
-	pixel uint32 // its bytes over the ground
-}
 
 // findCalm finds out whether the discs that fill the canvas lie in one order
 // all over it.
 func (t *tile) findCalm() {
 	t.calm = false
-	t.last.n = -1
-	if len(t.wides) == 0 {
+	if len(t.wides) == 0 || len(t.wides) > maxEven {
 		return
 	}
-	var first stack
+	var first [maxEven]int
 	for k, c := range [4][2]int{{0, 0}, {t.side - 1, 0}, {0, t.side - 1}, {t.side - 1, t.side - 1}} {
-		if _, ok := t.evenStack(0, c[0], c[1], false); !ok {
+		order, ok := t.orderOfWides(c[0], c[1])
+		if !ok || k > 0 && order != first {
 			return
 		}
-		if k == 0 {
-			first = t.last
-		} else if first != t.last {
-			return
-		}
+		first = order
 	}
-	t.calm, t.calmPixel = true, t.last.pixel
+	t.calm, t.calmPixel = true, t.stackPixel(first[:len(t.wides)])
 }
 
-// evenStack returns the pixel of a stack of even discs in front of the
-// ground. Neighbouring pixels mostly show the same stack, so that the last
-// one is kept.
-func (t *tile) evenStack(i, px, py int, frags bool) (uint32, bool) {
-	if !frags && t.calm {
-		return t.calmPixel, true
-	}
-	if len(t.wides) > maxEven {
-		return 0, false
-	}
-	var near, slope [maxEven]float32
-	var next stack
-	place := func(n, nx, ny float32, slot uint32) {
-		j := next.n & (maxEven - 1)
-		for ; j > 0 && n > near[j-1]; j-- {
-			near[j], slope[j], next.slots[j] = near[j-1], slope[j-1], next.slots[j-1]
-		}
-		near[j], slope[j], next.slots[j] = n, abs32(nx)+abs32(ny), slot
-		next.n++
-	}
+// orderOfWides returns the discs that fill the canvas from front to back at a
+// pixel, and whether they are even and keep their order in it.
+func (t *tile) orderOfWides(px, py int) (order [maxEven]int, ok bool) {
 	for k := range t.wides {
 		w := &t.wides[k]
 		if !t.panes[t.slots[w.slot].tri].even {
-			return 0, false
+			return order, false
 		}
-		place(w.near(px, py), w.nx, w.ny, w.slot)
-	}
-	full := uint32(1)<<(1<<t.lg) - 1
-	for k := t.first[i]; frags && k >= 0; {
-		fr := &t.frags[k]
-		s := &t.slots[fr.slot]
-		if next.n == maxEven || fr.mask != full || s.batch != -1 || t.f.parts[s.part].form != formDisc || !t.panes[s.tri].even {
-			return 0, false
+		j := k
+		for ; j > 0 && w.near(px, py) > t.wides[order[j-1]].near(px, py); j-- {
+			order[j] = order[j-1]
 		}
-		place(fr.n, fr.nx, fr.ny, fr.slot)
-		k = fr.next
+		order[j] = k
 	}
-	same := next.n == t.last.n
-	for j := range next.n {
-		if j > 0 && near[j-1]-near[j] < (slope[j]+slope[j-1])/2 {
-			return 0, false // they may cross here
+	for j := 1; j < len(t.wides); j++ {
+		a, b := &t.wides[order[j-1]], &t.wides[order[j]]
+		if a.near(px, py)-b.near(px, py) < (abs32(a.nx)+abs32(a.ny)+abs32(b.nx)+abs32(b.ny))/2 {
+			return order, false
 		}
-		same = same && next.slots[j] == t.last.slots[j]
 	}
-	if !same {
-		next.pixel = t.stackPixel(next.slots[:next.n])
-		t.last = next
-	}
-	return t.last.pixel, true
+	return order, true
 }
 
 // stackPixel blends even discs over the ground.
-func (t *tile) stackPixel(slots []uint32) uint32 {
+func (t *tile) stackPixel(order []int) uint32 {
 	var c [4]float32
 	left := float32(1)
-	for _, k := range slots {
-		p := &t.panes[t.slots[k].tri]
-		w := left * t.f.parts[t.slots[k].part].alpha
+	for _, k := range order {
+		s := &t.slots[t.wides[k].slot]
+		p := &t.panes[s.tri]
+		w := left * t.f.parts[s.part].alpha
 		c[0], c[1], c[2], left = c[0]+w*p.r, c[1]+w*p.g, c[2]+w*p.b, left-w
 	}
 	g := &t.f.ground

@@ -38,32 +38,26 @@ func (r *Renderer) Pick(scene *Scene, camera Camera, quality Quality, width, hei
 	t.see(f.listed[f.heads[0]:f.heads[1]])
 	i := (y-t.y)*t.side + x - t.x
 	found, best := int32(-1), float32(0)
-	var slot uint32
 	if s := uint32(t.keys[i]); s != 0 {
 		found = t.slots[s].part
 		best, _, _ = t.plane(s, float32(x-t.x)+0.5, float32(y-t.y)+0.5)
-		slot = s
 	}
 	if found >= 0 && scene.Shapes[f.parts[found].shape].Material.ID == 0 {
 		found = -1
 	}
-	if t.anyFrag || len(t.wides) > 0 {
-		t.layWides(i, i%t.side, i/t.side, true)
-		for k := t.first[i]; k >= 0; k = t.frags[k].next {
-			fr := &t.frags[k]
-			p := t.slots[fr.slot].part
-			if p < 0 || scene.Shapes[f.parts[p].shape].Material.ID == 0 {
-				continue
-			}
-			if found < 0 || fr.n > best {
-				found, best, slot = p, fr.n, fr.slot
-			}
+	for _, k := range t.pileAt(x-t.x, y-t.y) {
+		fr := &t.strips[k]
+		_, lane := t.groupOf(x-t.x, y-t.y)
+		if fr.mask[lane] == 0 || fr.part < 0 || scene.Shapes[f.parts[fr.part].shape].Material.ID == 0 {
+			continue
+		}
+		if n := fr.n[lane]; found < 0 || n >= best {
+			found, best = fr.part, n
 		}
 	}
 	if found < 0 {
 		return Hit{}, false
 	}
-	_ = slot
 	shape := int(f.parts[found].shape)
 	h := Hit{ID: scene.Shapes[shape].Material.ID, Shape: shape}
 	if f.parts[found].proj == 0 {

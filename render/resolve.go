@@ -4,6 +4,7 @@ import (
 	"encoding/binary"
 	"image"
 	"math/bits"
+	"slices"
 )
 
 // fillGround fills a part of the picture with the ground.
@@ -51,17 +52,25 @@ type share struct {
 	sight int32
 }
 
-// task is a pixel that waits for its sights.
-type task struct {
-	x        int32 // on the canvas
+// group is what eight neighbouring pixels of a row show and want.
+type group struct {
+	x                    int   // the first pixel
+	block                int32 // of the sights of opaque pixels, or -1
+	pileFrom, pileTo     int32 // of its strips
+	mixedFrom, mixedTo   int32 // of its pixels that show several surfaces
+	valid, ground, lines uint8 // pixels to write, with nothing opaque, with an outline over what is opaque
+	cells                uint8 // pixels whose colour is that of their ink cell
+}
+
+// mixed is a pixel that shows several opaque surfaces.
+type mixed struct {
+	lane     int
 	from, to int32 // of its shares
-	layered  bool
-	line     bool
 }
 
 // resolve shades the canvas and writes it to the picture, row by row: first
-// pixels say which sights they want, then these are looked at together, then
-// pixels are composed of their colours.
+// groups of pixels say which sights they want, then these are looked at
+// together, then pixels are composed of their colours.
 func (t *tile) resolve(out image.Rectangle) {
 	f := t.f
 	if f.light.style == Ink {
@@ -75,90 +84,133 @@ func (t *tile) resolve(out image.Rectangle) {
 		return
 	}
 	at := f.dst.Rect.Min.Sub(f.rect.Min)
+	gp := f.groundPixel()
+	t.groundPixel = binary.LittleEndian.Uint32(gp[:])
 	for y := out.Min.Y; y < out.Max.Y; y++ {
 		row := f.dst.Pix[f.dst.PixOffset(out.Min.X+at.X, y+at.Y):][:4*out.Dx()]
-		t.sights.n, t.tasks, t.shares = 0, t.tasks[:0], t.shares[:0]
-		frags := len(t.frags)
-		t.wishRow(row, y-t.y, out.Min.X-t.x)
+		t.wishRow(row, y-t.y)
 		t.look()
-		for i := range t.tasks {
-			t.compose(row[4*(int(t.tasks[i].x)+t.x-out.Min.X):], &t.tasks[i], y-t.y)
+		for i := range t.groups {
+			t.compose(row, &t.groups[i], y-t.y)
 		}
-		t.frags = t.frags[:frags]
 	}
 }
 
-// wishRow collects the sights of a row of pixels and writes those pixels that
+// wishRow collects the sights of a row of pixels and writes those groups that
 // need none.
-func (t *tile) wishRow(row []uint8, py, px int) {
-	f := t.f
-	gp := f.groundPixel()
-	ground := binary.LittleEndian.Uint32(gp[:])
-	n := 1 << t.lg
-	inked := f.ink.half > 0
-	inkLook := f.light.style == Ink
-	i := py*t.side + px - 1
-	px--
-	for ; len(row) >= 4; row = row[4:] {
-		o := row[:4:4]
-		i++
-		px++
-		keys := t.keys[i<<t.lg:][:n]
-		line := inked && t.lines.dist[i] < 1e9
-		var any uint32
-		if len(keys) == 4 {
-			any = uint32(keys[0] | keys[1] | keys[2] | keys[3])
+func (t *tile) wishRow(row []uint8, py int) {
+	t.sights.reset()
+	t.groups, t.pile, t.mixed, t.shares = t.groups[:0], t.pile[:0], t.mixed[:0], t.shares[:0]
+	t.strips = t.strips[:t.kept]
+	lo, hi := t.inner.Min.X, t.inner.Max.X
+	for k := (lo + t.pad) >> 3; k <= (hi-1+t.pad)>>3; k++ {
+		x := k<<3 - t.pad
+		valid := laneBits(lo-x, hi-x)
+		any, same := t.scan(py*t.side + x)
+		any &= valid
+		lines := t.lined(py*t.side+x, valid)
+		layered := t.layered && t.piles[py*t.perRow+k] >= 0
+		if any|lines == 0 && !layered {
+			if len(t.wides) == 0 {
+				fillLanes(row, x-lo, valid, t.groundPixel)
+				continue
+			} else if t.calm {
+				fillLanes(row, x-lo, valid, t.calmPixel)
+				continue
+			}
+		}
+		g := group{x: x, block: -1, valid: valid, ground: valid &^ any, mixedFrom: int32(len(t.mixed)), pileFrom: int32(len(t.pile))}
+		if layered || len(t.wides) > 0 {
+			t.collectPile(&g, py, py*t.perRow+k, any, lines)
 		} else {
-			for _, k := range keys {
-				any |= uint32(k)
-			}
+			g.lines = lines
 		}
-		frags := t.anyFrag && t.first[i] >= 0
-		if any == 0 && !line {
-			if !frags && len(t.wides) == 0 {
-				binary.LittleEndian.PutUint32(o, ground)
+		g.pileTo = int32(len(t.pile))
+		t.wishSolid(&g, py, any, same)
+		g.mixedTo = int32(len(t.mixed))
+		t.groups = append(t.groups, g)
+	}
+}
+
+// collectPile lists the strips of a group from the first shape to the last
+// and wants the sights of those that have no colour.
+func (t *tile) collectPile(g *group, py, k int, any, lines uint8) {
+	from := len(t.pile)
+	if lines != 0 {
+		t.pile = append(t.pile, t.lineStrip(py*t.side+g.x, lines))
+	}
+	first := len(t.pile)
+	if t.layered {
+		for s := t.piles[k]; s >= 0; s = t.strips[s].next {
+			t.pile = append(t.pile, s)
+		}
+		slices.Reverse(t.pile[first:])
+		t.sortPile(t.pile[first:])
+	}
+	t.layWides(first, g.x, py, any)
+	for _, s := range t.pile[from:] {
+		if !t.strips[s].even {
+			t.wishStrip(s, g.x, py)
+		}
+	}
+}
+
+// sortPile puts strips, mostly so already, into their order.
+func (t *tile) sortPile(pile []int32) {
+	for i := 1; i < len(pile); i++ {
+		k := pile[i]
+		o := t.strips[k].order()
+		j := i
+		for ; j > 0 && t.strips[pile[j-1]].order() > o; j-- {
+			pile[j] = pile[j-1]
+		}
+		pile[j] = k
+	}
+}
+
+// pileAt returns the strips of the group of a pixel.
+func (t *tile) pileAt(x, y int) []int32 {
+	g, _ := t.groupOf(x, y)
+	x, y = t.place(g)
+	grp := group{x: x}
+	t.pile = t.pile[:0]
+	t.sights.reset()
+	_, _ = t.scan(y*t.side + x)
+	t.collectPile(&grp, y, g, 0xff, 0)
+	return t.pile
+}
+
+// wishSolid wants a sight of what is opaque in the pixels of a group.
+func (t *tile) wishSolid(g *group, py int, any, same uint8) {
+	if any == 0 {
+		return
+	}
+	b := t.sights.block()
+	g.block = int32(b)
+	n := 1 << t.lg
+	cells := t.f.light.style == Ink && g.pileTo == g.pileFrom
+	for m := any; m != 0; m &= m - 1 {
+		i := lowest(m)
+		px := g.x + i
+		slot := t.scanned.slot[i]
+		if same>>i&1 == 0 {
+			keys := t.keys[(py*t.side+px)<<t.lg:][:n]
+			if slot = t.whole(keys); slot == 0 {
+				t.wishParts(keys, i, px, py)
 				continue
 			}
-			if v, ok := t.evenStack(i, px, py, frags); ok {
-				binary.LittleEndian.PutUint32(o, v)
-				continue
-			}
 		}
-		k := uint32(0)
-		if any != 0 {
-			k = t.whole(keys)
-		}
-		layered := frags || len(t.wides) > 0
-		if k != 0 && inkLook && !layered && f.parts[t.slots[k].part].hatch.period == 0 {
-			r, g, b := t.inkWhole(i, px, py)
-			if line {
-				c := t.under([4]float32{r, g, b, 1}, f.inked(t.lines.dist[i]))
-				r, g, b = c[0], c[1], c[2]
-			}
-			binary.LittleEndian.PutUint32(o, f.solidPixel(r, g, b))
+		if cells && t.f.parts[t.slots[slot].part].hatch.period == 0 {
+			g.cells |= 1 << i
 			continue
 		}
-		from := int32(len(t.shares))
-		switch {
-		case k != 0:
-			t.shares = append(t.shares, share{1<<n - 1, t.want(k, float32(px)+0.5, float32(py)+0.5)})
-		case any == 0:
-			t.shares = append(t.shares, share{1<<n - 1, -1})
-		default:
-			t.wishParts(keys, px, py)
-		}
-		if layered {
-			if len(t.wides) > 0 {
-				t.layWides(i, px, py, any != 0)
-			}
-			t.wishFrags(t.first[i], px, py)
-		}
-		t.tasks = append(t.tasks, task{int32(px), from, int32(len(t.shares)), layered, line})
+		t.aim(&t.sights.all[b], i, slot, float32(px)+0.5, float32(py)+0.5)
 	}
 }
 
 // wishParts wants a sight of every surface that a pixel shows.
-func (t *tile) wishParts(keys []uint64, px, py int) {
+func (t *tile) wishParts(keys []uint64, lane, px, py int) {
+	from := int32(len(t.shares))
 	for todo := uint32(1)<<len(keys) - 1; todo != 0; {
 		mask, slot := t.group(keys, todo)
 		todo &^= mask
@@ -169,37 +221,90 @@ func (t *tile) wishParts(keys []uint64, px, py int) {
 		}
 		t.shares = append(t.shares, share{mask, s})
 	}
+	t.mixed = append(t.mixed, mixed{lane, from, int32(len(t.shares))})
 }
 
-// compose writes a pixel from its sights.
-func (t *tile) compose(o []uint8, k *task, py int) {
-	f := t.f
-	i := py*t.side + int(k.x)
-	shares := t.shares[k.from:k.to]
-	var c [4]float32
-	switch {
-	case k.layered:
-		c = t.blend(i, int(k.x), py, shares)
-	case len(shares) == 1 && shares[0].sight >= 0:
-		r, g, b := t.sights.color(shares[0].sight)
-		if !k.line {
-			binary.LittleEndian.PutUint32(o, f.solidPixel(r, g, b))
-			return
+// compose writes a group of pixels from its sights.
+func (t *tile) compose(row []uint8, g *group, py int) {
+	k := &t.stack
+	t.behindGroup(g, py)
+	if pile := t.pile[g.pileFrom:g.pileTo]; len(pile) > 0 {
+		t.blendGroup(g, pile)
+	}
+	for m := g.lines; m != 0; m &= m - 1 {
+		i := lowest(m)
+		c := t.under([4]float32{k.r[i], k.g[i], k.b[i], k.a[i]}, t.f.inked(t.lines.dist[py*t.side+g.x+i]))
+		k.r[i], k.g[i], k.b[i], k.a[i] = c[0], c[1], c[2], c[3]
+	}
+	for m := g.valid; m != 0; m &= m - 1 {
+		i := lowest(m)
+		v := t.f.pixel(k.r[i], k.g[i], k.b[i], k.a[i])
+		binary.LittleEndian.PutUint32(row[4*(g.x+i-t.inner.Min.X):], binary.LittleEndian.Uint32(v[:]))
+	}
+}
+
+// behindGroup fills the stack with what is opaque in the pixels of a group.
+func (t *tile) behindGroup(g *group, py int) {
+	k := &t.stack
+	if g.block >= 0 {
+		o := &t.sights.all[g.block]
+		k.r, k.g, k.b = o.red, o.green, o.blue
+		for i := range lanes {
+			k.a[i] = 1
 		}
-		c = [4]float32{r, g, b, 1}
-	default:
-		c = t.solid(shares)
 	}
-	if k.line && !k.layered {
-		c = t.under(c, f.inked(t.lines.dist[i]))
+	if g.ground != 0 {
+		c := &t.f.ground
+		r, gr, b := c[0]*c[3], c[1]*c[3], c[2]*c[3]
+		for m := g.ground; m != 0; m &= m - 1 {
+			i := lowest(m)
+			k.r[i], k.g[i], k.b[i], k.a[i] = r, gr, b, c[3]
+		}
 	}
-	v := f.pixel(c[0], c[1], c[2], c[3])
-	binary.LittleEndian.PutUint32(o, uint32(v[0])|uint32(v[1])<<8|uint32(v[2])<<16|uint32(v[3])<<24)
+	for m := g.cells; m != 0; m &= m - 1 {
+		i := lowest(m)
+		k.r[i], k.g[i], k.b[i] = t.inkWhole(py*t.side+g.x+i, g.x+i, py)
+	}
+	for _, m := range t.mixed[g.mixedFrom:g.mixedTo] {
+		c := t.solid(t.shares[m.from:m.to])
+		k.r[m.lane], k.g[m.lane], k.b[m.lane], k.a[m.lane] = c[0], c[1], c[2], c[3]
+	}
 }
 
-// solidPixel returns the bytes of an opaque working colour as a number.
-func (f *frame) solidPixel(r, g, b float32) uint32 {
-	return uint32(encode(r, f.linear)) | uint32(encode(g, f.linear))<<8 | uint32(encode(b, f.linear))<<16 | 0xff<<24
+// blendGroup blends the strips of a group over what is in the stack: side by
+// side where every sheet covers all samples or none and lies clearly before
+// or behind the others, else sample by sample.
+func (t *tile) blendGroup(g *group, pile []int32) {
+	k := &t.stack
+	single := uint8(0)
+	for _, m := range t.mixed[g.mixedFrom:g.mixedTo] {
+		single |= 1 << m.lane
+	}
+	for _, s := range pile {
+		single |= t.strips[s].partial
+	}
+	behind := [4][lanes]float32{k.r, k.g, k.b, k.a}
+	k.blend(t.strips, pile)
+	single |= uint8(k.crosses)
+	for m := single & g.valid; m != 0; m &= m - 1 {
+		i := lowest(m)
+		list := t.collect(pile, i)
+		if len(list) == 0 {
+			continue
+		}
+		t.opaque1[0] = share{uint32(t.full), -1}
+		shares := t.opaque1[:]
+		t.rear = [4]float32{behind[0][i], behind[1][i], behind[2][i], behind[3][i]}
+		for _, x := range t.mixed[g.mixedFrom:g.mixedTo] {
+			if x.lane == i {
+				shares = t.shares[x.from:x.to]
+				o := &t.f.ground
+				t.rear = [4]float32{o[0] * o[3], o[1] * o[3], o[2] * o[3], o[3]}
+			}
+		}
+		c := t.blend(list, shares)
+		k.r[i], k.g[i], k.b[i], k.a[i] = c[0], c[1], c[2], c[3]
+	}
 }
 
 // whole returns a slot of the part that all samples show, or 0.

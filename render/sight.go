@@ -1,8 +1,9 @@
 package render
 
 // A sight is a place of the canvas that wants shading. Sights are collected
-// for a row of pixels, looked at eight side by side, and then coloured as the
-// look has it. Every look goes this way.
+// for a row of pixels, in blocks that mostly belong to a group of pixels,
+// looked at eight side by side, and then coloured as the look has it. Every
+// look goes this way.
 //
 // The fields of a block of eight sights lie side by side; its layout is known
 // to the assembly.
@@ -38,7 +39,9 @@ type sights struct {
 	specular  float32 // 64
 	_         int32   // 68
 	all       []eight
-	n         int
+	n         int     // blocks in use
+	owner     []int32 // strips whose colours the blocks show, or -1
+	open      int32   // the next sight that want gives
 	noCorners [1]vert
 }
 
@@ -58,19 +61,50 @@ func (s *sights) ready(f *frame) {
 	if len(f.verts) > 0 {
 		s.verts = &f.verts[0]
 	}
-	s.n = 0
+	s.reset()
+}
+
+// emptyEight is a block without sights: slot 0 is the ground.
+var emptyEight = func() (o eight) {
+	for i := range lanes {
+		o.nz[i] = 1
+	}
+	return o
+}()
+
+// reset forgets all sights.
+func (s *sights) reset() {
+	s.n, s.open, s.owner = 0, -1, s.owner[:0]
+}
+
+// block adds an empty block and returns its number.
+func (s *sights) block() int {
+	if s.n == len(s.all) {
+		s.all = append(s.all, make([]eight, len(s.all)+8)...)
+	}
+	o := &s.all[s.n]
+	o.a, o.b, o.c, o.mesh, o.slot = emptyEight.a, emptyEight.b, emptyEight.c, emptyEight.mesh, emptyEight.slot
+	o.nx, o.ny, o.nz = emptyEight.nx, emptyEight.ny, emptyEight.nz
+	s.owner = append(s.owner, -1)
+	s.n++
+	return s.n - 1
 }
 
 // want adds a sight of a slot at a place of the canvas and returns its
 // number.
 func (t *tile) want(k uint32, x, y float32) int32 {
 	s := &t.sights
-	i := s.n
-	s.n++
-	if i>>3 >= len(s.all) {
-		s.all = append(s.all, make([]eight, len(s.all)+8)...)
+	if s.open < 0 || s.open&7 == 0 {
+		s.open = int32(s.block() * lanes)
 	}
-	o := &s.all[i>>3]
+	i := s.open
+	s.open++
+	t.aim(&s.all[i>>3], int(i&7), k, x, y)
+	return i
+}
+
+// aim fills in one of the sights of a block: a slot at a place of the canvas.
+func (t *tile) aim(o *eight, i int, k uint32, x, y float32) {
 	i &= 7
 	sl := &t.slots[k]
 	p := &t.f.parts[sl.part]
@@ -81,12 +115,11 @@ func (t *tile) want(k uint32, x, y float32) int32 {
 		v := uint32(p.vert0)
 		o.a[i], o.b[i], o.c[i] = v+ix[0], v+ix[1], v+ix[2]
 		o.mesh[i], o.turn[i], o.hatched[i] = -1, p.turn, 0
-		return int32(s.n - 1)
+		return
 	}
-	o.a[i], o.b[i], o.c[i], o.mesh[i] = 0, 0, 0, 0
 	if p.flat && p.hatch.period == 0 {
 		o.nx[i], o.ny[i], o.nz[i], o.side[i], o.n[i], o.hatched[i] = 0, 0, 1, 0, 0, 0
-		return int32(s.n - 1)
+		return
 	}
 	nx, ny, nz, side := t.lookAt(sl, p, x, y)
 	o.nx[i], o.ny[i], o.nz[i], o.side[i], o.n[i] = nx, ny, nz, float32(side), t.surf.n
@@ -94,7 +127,6 @@ func (t *tile) want(k uint32, x, y float32) int32 {
 	if p.hatch.period > 0 {
 		o.hatched[i] = t.hatching(sl, p, x, y)
 	}
-	return int32(s.n - 1)
 }
 
 // color returns the colour of a sight.
@@ -103,38 +135,37 @@ func (s *sights) color(i int32) (r, g, b float32) {
 	return o.red[i&7], o.green[i&7], o.blue[i&7]
 }
 
-// look finds normals, light and colours of the sights.
+// look finds normals, light and colours of the sights; strips get theirs.
 func (t *tile) look() {
 	s := &t.sights
 	if s.n == 0 {
 		return
 	}
-	blocks := s.all[:(s.n+7)>>3]
-	for i := s.n; i&7 != 0; i++ { // fill up the last block
-		o := &blocks[i>>3]
-		o.mesh[i&7], o.a[i&7], o.b[i&7], o.c[i&7] = 0, 0, 0, 0
-		o.nx[i&7], o.ny[i&7], o.nz[i&7] = 0, 0, 1
-	}
+	blocks := s.all[:s.n]
 	s.blocks, s.count = &blocks[0], int64(len(blocks))
 	if useVectors {
 		lookEight(s)
 	} else {
 		s.lookPlain(t.f.verts, blocks)
 	}
-	left := s.n
 	for k := range blocks {
-		t.colorEight(&blocks[k], min(left, 8))
-		left -= 8
+		t.colorEight(&blocks[k])
+		if s.owner[k] >= 0 {
+			o, to := &blocks[k], &t.strips[s.owner[k]]
+			to.r, to.g, to.b = o.red, o.green, o.blue
+		}
 	}
 }
 
 // colorEight gives the sights of a block their colours. It is where the looks
 // part.
-func (t *tile) colorEight(o *eight, n int) {
+func (t *tile) colorEight(o *eight) {
 	f := t.f
 	l := &f.light
-	for i := range n {
-		i &= 7
+	for i := range lanes {
+		if o.slot[i] == 0 {
+			continue
+		}
 		sl := &t.slots[o.slot[i]]
 		p := &f.parts[sl.part]
 		r, g, b := p.col[0], p.col[1], p.col[2]

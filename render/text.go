@@ -278,36 +278,32 @@ func (l *label) spread(w, h int) {
 	}
 }
 
-// label adds a text's pixels to the fragments of the canvas.
+// label adds a text's pixels to the strips of the canvas.
 func (t *tile) label(it *item) {
 	l := &t.f.labels[it.first]
 	if l.sign.Rect.Empty() {
 		return
 	}
-	s := uint32(len(t.slots))
-	t.slots = append(t.slots, slot{it.part, -1, uint32(it.first)})
-	r := l.rect.Sub(image.Pt(t.x, t.y)).Intersect(t.clip)
-	n := 1 << t.lg
-	key := uint64(math.Float32bits(l.n))<<32 | math.MaxUint32
+	p := &t.f.parts[it.part]
+	r := l.rect.Sub(image.Pt(t.x, t.y)).Intersect(t.inner)
 	for y := r.Min.Y; y < r.Max.Y; y++ {
+		last := -1
+		var s *strip
 		for x := r.Min.X; x < r.Max.X; x++ {
 			a, b := l.at(x+t.x, y+t.y)
 			if a|b == 0 {
 				continue
 			}
-			i := y*t.side + x
-			mask := uint32(0)
-			for k, v := range t.keys[i<<t.lg:][:n] {
-				if key > v {
-					mask |= 1 << k
-				}
-			}
+			mask := t.before(y*t.side+x, l.n)
 			if mask == 0 {
 				continue
 			}
-			t.frags = append(t.frags, frag{next: t.first[i], slot: s, mask: mask, n: l.n})
-			t.first[i] = int32(len(t.frags) - 1)
-			t.anyFrag = true
+			g, lane := t.groupOf(x, y)
+			if g != last {
+				last, s = g, &t.strips[t.newStrip(g, it.part)]
+			}
+			r, gr, b8, o := t.labelColor(p, x, y)
+			t.paint(s, lane, mask, l.n, r, gr, b8, o)
 		}
 	}
 }

@@ -25,31 +25,39 @@ type tile struct {
 	empty       uint64
 	slots       []slot
 	front, back layer
-	frags       []frag
-	first       []int32 // of a pixel's layers
-	anyFrag     bool
-	solidAny    bool // something opaque is on the canvas, or there is a far limit
+	strips      []strip
+	piles       []int32 // the last strip of every group, or -1
+	kept        int     // strips of the canvas; those of a row follow
+	perRow, pad int     // groups in a row, and empty pixels before the first
+	full        uint16  // the mask of all samples
+	near        float32 // the far limit
 
-	tris      triEight
-	rods      rodKernel
-	sky       skyKernel
-	surf      surf
-	free      bool // look beyond the edges of a triangle
-	deep      bool // shading needs the nearness
-	inks      []inkFrag
-	samples   [16][4]float32
-	panes     []paneColor // of the translucent discs
-	wides     []wide
-	last      stack // the even discs of the pixel before
-	calm      bool  // all pixels without other layers are calmPixel
-	calmPixel uint32
-	bodies    bool // something opaque is on the canvas
-	sights    sights
-	tasks     []task
-	shares    []share
-	sorted    []int32
-	colors    [][4]float32
-	lines     inkTile
+	tris        triEight
+	rods        rodKernel
+	sky         skyKernel
+	surf        surf
+	free        bool // look beyond the edges of a triangle
+	deep        bool // shading needs the nearness
+	inks        []inkFrag
+	samples     [16][4]float32
+	panes       []paneColor // of the translucent discs
+	wides       []wide
+	calm        bool // all pixels without other layers are calmPixel
+	calmPixel   uint32
+	groundPixel uint32
+	layered     bool // something translucent is on the canvas
+	bodies      bool // something opaque is on the canvas
+	sights      sights
+	scanned     scan
+	groups      []group
+	pile        []int32 // strips of the row's groups
+	mixed       []mixed
+	shares      []share
+	frags       []frag
+	stack       stack
+	opaque1     [1]share
+	rear        [4]float32
+	lines       inkTile
 }
 
 // slot says what a sample shows: a triangle of a batch, a kind of surface of
@@ -58,31 +66,6 @@ type slot struct {
 	part  int32
 	batch int32
 	tri   uint32
-}
-
-// layer collects one sheet of a translucent part, pixel by pixel.
-type layer struct {
-	at     []sheet
-	any    bool
-	y0, y1 int // rows that were touched
-}
-
-// sheet is a layer's share of a pixel; n, nx and ny are as in frag and set
-// for meshes only.
-type sheet struct {
-	mask, slot uint32
-	n, nx, ny  float32
-}
-
-// frag is one translucent sheet in one pixel.
-type frag struct {
-	next   int32
-	slot   uint32
-	mask   uint32
-	n      float32 // nearness at the pixel's middle
-	nx, ny float32 // its growth to the right and down
-	a      float32 // opacity of a line
-	sight  int32   // that shows its colour
 }
 
 // drawTile draws one tile of the frame into the destination.
@@ -116,17 +99,22 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	t.deep = f.light.style == Lit
 	t.sights.ready(f)
 	n := t.side * t.side
-	t.keys = grow(t.keys, n<<t.lg)
-	t.first = grow(t.first, n)
-	if len(t.front.at) != n {
-		t.front.at, t.back.at = make([]sheet, n), make([]sheet, n)
-	}
+	t.keys = grow(t.keys, (n+lanes)<<t.lg) // a group may reach beyond the last row
+	t.full = uint16(uint32(1)<<(1<<t.lg) - 1)
+	// The first pixel without apron begins a group.
+	t.pad = -f.apron & (lanes - 1)
+	t.perRow = (t.side + t.pad + lanes - 1) / lanes
+	t.piles = grow(t.piles, t.side*t.perRow)
+	t.front.ready(len(t.piles))
+	t.back.ready(len(t.piles))
+	t.back.rank = backSheet
 	t.tris.ready(t)
 }
 
 // reset forgets what the canvas shows.
 func (t *tile) reset() {
-	t.empty = uint64(math.Float32bits(float32(t.f.projs[0].nMin))) << 32
+	t.near = float32(t.f.projs[0].nMin)
+	t.empty = uint64(math.Float32bits(t.near)) << 32
 	if t.empty == 0 {
 		clear(t.keys)
 	} else {
@@ -135,11 +123,11 @@ func (t *tile) reset() {
 		}
 	}
 	t.slots = append(t.slots[:0], slot{part: -1})
-	t.frags = t.frags[:0]
+	t.strips = t.strips[:0]
 	t.inks = t.inks[:0]
 	t.panes = t.panes[:0]
 	t.wides = t.wides[:0]
-	t.anyFrag = false
+	t.kept = 0
 }
 
 // see finds what every sample shows: first the opaque items, then the
@@ -148,6 +136,7 @@ func (t *tile) see(list []int32) {
 	f := t.f
 	t.reset()
 	layered := false
+	t.bodies = false
 	for _, k := range list {
 		it := &f.items[k]
 		p := &f.parts[it.part]
@@ -157,14 +146,14 @@ func (t *tile) see(list []int32) {
 		}
 		t.opaque(it, p)
 	}
+	t.bodies = len(t.slots) > 1
+	t.layered = layered
 	if !layered {
 		return
 	}
-	for i := range t.first {
-		t.first[i] = -1
+	for i := range t.piles {
+		t.piles[i] = -1
 	}
-	t.bodies = len(t.slots) > 1
-	t.solidAny = t.bodies || t.empty != 0
 	last := int32(-1)
 	for _, k := range list {
 		it := &f.items[k]
@@ -180,6 +169,7 @@ func (t *tile) see(list []int32) {
 	}
 	t.flush(last)
 	t.addInks()
+	t.kept = len(t.strips)
 }
 
 // opaque draws an item whose samples hide what is behind them.
@@ -250,82 +240,4 @@ func (t *tile) batch(it *item, p *part, layered bool) {
 		}
 	}
 	t.drawBlock(it, p, layered)
-}
-
-// cover adds one sample to a layer when nothing opaque hides it. A sample
-// that the layer has already belongs to another sheet: the pixel so far
-// becomes a fragment of its own.
-func (t *tile) cover(l *layer, py, x, k int, n float32, slot uint32) {
-	i := py*t.side + x
-	if int64(uint64(math.Float32bits(n))<<32|math.MaxUint32) <= int64(t.keys[i<<t.lg+k]) {
-		return
-	}
-	s := &l.at[i]
-	if s.mask>>k&1 != 0 {
-		t.emit(s, i)
-	}
-	l.touch(py)
-	s.mask |= 1 << k
-	s.slot = slot
-}
-
-func (l *layer) touch(y int) {
-	if !l.any {
-		l.any, l.y0, l.y1 = true, y, y
-	} else if y < l.y0 {
-		l.y0 = y
-	} else if y > l.y1 {
-		l.y1 = y
-	}
-}
-
-// flush turns what the layers hold into fragments.
-func (t *tile) flush(part int32) {
-	if t.front.any {
-		t.inkLayer(&t.front, part)
-	}
-	for _, l := range [2]*layer{&t.front, &t.back} {
-		if !l.any {
-			continue
-		}
-		at := l.at[l.y0*t.side : (l.y1+1)*t.side]
-		apron := t.f.apron > 0
-		form := t.f.parts[part].form
-		mesh := form == formMesh || form == formDisc && t.f.discs[t.f.parts[part].index].hole < 0
-		for i := range at {
-			s := &at[i]
-			if s.mask == 0 {
-				continue
-			}
-			if apron && !image.Pt(i%t.side, l.y0+i/t.side).In(t.inner) {
-				s.mask = 0 // wanted for outlines alone
-				continue
-			}
-			if mesh {
-				t.push(l.y0*t.side+i, frag{slot: s.slot, mask: s.mask, n: s.n, nx: s.nx, ny: s.ny})
-				s.mask = 0
-			} else {
-				t.emit(s, l.y0*t.side+i)
-			}
-		}
-		l.any = false
-	}
-}
-
-// emit makes a fragment of a layer's share of pixel i and empties it.
-func (t *tile) emit(s *sheet, i int) {
-	fr := frag{slot: s.slot, mask: s.mask, n: s.n, nx: s.nx, ny: s.ny}
-	if t.f.parts[t.slots[s.slot].part].form != formMesh {
-		fr.n, fr.nx, fr.ny = t.plane(s.slot, float32(i%t.side)+0.5, float32(i/t.side)+0.5)
-	}
-	t.push(i, fr)
-	s.mask = 0
-}
-
-// push adds a fragment to a pixel.
-func (t *tile) push(i int, fr frag) {
-	fr.next = t.first[i]
-	t.first[i] = int32(len(t.frags))
-	t.frags = append(t.frags, fr)
-	t.anyFrag = true
 }

@@ -315,55 +315,33 @@ func (t *tile) addMasks(k *kernel, l *layer) bool {
 	hit := false
 	m := 0
 	pixel := k.at >> t.lg
-	l.touch(pixel / t.side)
-	l.touch(pixel/t.side + int(k.rows) - 1)
+	y0 := pixel / t.side
+	x0 := pixel - y0*t.side + t.pad
 	for r := range int(k.rows) {
-		for p := range int(k.pairs) {
+		y := y0 + r
+		row := y * t.perRow
+		n := k.n0 + k.gy*(k.y+float32(r)+0.5) + k.gx*(k.x+0.5)
+		for q := range 2 * int(k.pairs) {
+			mask := uint16(0)
 			if t.lg > 2 {
-				for q := range 2 {
-					mask := uint32(0)
-					for s := range 1 << t.lg {
-						if t.inside(k, r, 2*p+q, s) {
-							mask |= 1 << s
-						}
-					}
-					if mask != 0 {
-						t.coverMask(l, pixel+r*t.side+2*p+q, mask, k, 2*p+q, r)
-						hit = true
+				for s := range 1 << t.lg {
+					if t.inside(k, r, q, s) {
+						mask |= 1 << s
 					}
 				}
-				continue
+			} else {
+				mask = uint16(t.tris.maskBuf[m]) >> (4 * (q & 1)) & 15
+				m += q & 1
 			}
-			b := t.tris.maskBuf[m]
-			m++
-			if b == 0 {
+			if mask == 0 {
 				continue
 			}
 			hit = true
-			i := pixel + r*t.side + 2*p
-			if b&15 != 0 {
-				t.coverMask(l, i, uint32(b&15), k, 2*p, r)
-			}
-			if b>>4 != 0 {
-				t.coverMask(l, i+1, uint32(b>>4), k, 2*p+1, r)
-			}
+			x := x0 + q
+			t.coverMask(l, row+x>>3, x&7, y, mask, k.slot, n+k.gx*float32(q), k.gx, k.gy)
 		}
 	}
 	return hit
-}
-
-// coverMask adds samples of one pixel to a layer. When the layer has one of
-// them already, they belong to another sheet: the pixel so far becomes a
-// fragment of its own.
-func (t *tile) coverMask(l *layer, i int, mask uint32, k *kernel, x, y int) {
-	s := &l.at[i]
-	if s.mask&mask != 0 {
-		t.emit(s, i)
-	}
-	s.mask |= mask
-	s.slot = k.slot
-	s.n = k.n0 + k.gy*(k.y+float32(y)+0.5) + k.gx*(k.x+float32(x)+0.5)
-	s.nx, s.ny = k.gx, k.gy
 }
 
 // large draws a triangle of any size, sample row by sample row: the whole
@@ -420,10 +398,10 @@ func (t *tile) large(a, b, c *vert, n0, gx, gy float32, slot uint32, l *layer) b
 			for x := int(x0); x <= int(x1); x++ {
 				near := row + gx*(float32(x)+float32(t.sx[s&15]))
 				if l != nil {
-					t.cover(l, py, x, s, near, slot)
-					if sh := &l.at[py*t.side+x]; sh.slot == slot {
-						sh.n = n0 + gy*(float32(py)+0.5) + gx*(float32(x)+0.5)
-						sh.nx, sh.ny = gx, gy
+					if t.cover(l, py, x, s, near, slot) {
+						g, lane := t.groupOf(x, py)
+						sh := &t.strips[l.at[g]]
+						sh.n[lane], sh.nx[lane], sh.ny[lane] = n0+gy*(float32(py)+0.5)+gx*(float32(x)+0.5), gx, gy
 					}
 					continue
 				}
