@@ -36,6 +36,8 @@ type cell struct {
 	n       float32 // nearness of one of its samples
 	step    float32 // nearness that counts as a jump
 	x, y, z float32 // unit normal towards the viewer
+	nl      float32 // cosine between it and the key light
+	whole   bool    // its colour is that of the pixel
 }
 
 // border is a place where a line crosses the way from one pixel's middle to
@@ -127,53 +129,76 @@ func (k *inkTile) ready(n, from, to int) {
 
 // fillCells finds what every pixel shows for the most part.
 func (t *tile) fillCells() {
-	n := 1 << t.lg
-	full := uint32(1)<<n - 1
 	for y := t.clip.Min.Y; y < t.clip.Max.Y; y++ {
-		for x := t.clip.Min.X; x < t.clip.Max.X; x++ {
-			i := y*t.side + x
-			c := &t.lines.cells[i]
-			keys := t.keys[i<<t.lg:][:n]
-			mx, my := float32(0.5), float32(0.5)
-			slot := t.whole(keys)
-			if slot == 0 {
-				any := uint32(0)
-				for _, k := range keys {
-					any |= uint32(k)
-				}
-				if any == 0 {
-					*c = cell{part: -1}
-					continue
-				}
-				best := uint32(0)
-				for todo := full; todo != 0; {
-					mask, s := t.partGroup(keys, todo)
-					todo &^= mask
-					if bits.OnesCount32(mask) > bits.OnesCount32(best) {
-						best, slot = mask, s
-					}
-				}
-				if slot == 0 {
-					*c = cell{part: -1}
-					continue
-				}
-				mx, my = t.middle(best)
+		t.sights.reset()
+		for x := t.clip.Min.X; x < t.clip.Max.X; x += lanes {
+			valid := laneBits(0, t.clip.Max.X-x)
+			any, same := t.scan(y*t.side + x)
+			for m := valid &^ any; m != 0; m &= m - 1 {
+				t.lines.cells[y*t.side+x+lowest(m)] = cell{part: -1}
 			}
-			c.slot = slot
-			for _, k := range keys {
-				if uint32(k) == slot {
-					c.n = math.Float32frombits(uint32(k >> 32))
-					break
-				}
+			if any &= valid; any == 0 {
+				continue
 			}
-			s := &t.slots[slot]
-			nx, ny, nz, side := t.lookAt(s, &t.f.parts[s.part], float32(x)+mx, float32(y)+my)
-			k := 1 / sqrt32(nx*nx+ny*ny+nz*nz+1e-30)
-			if side < 0 || side == 0 && nz < 0 {
-				k = -k
+			b := t.sights.block()
+			t.sights.owner[b] = int32(x)
+			for m := any; m != 0; m &= m - 1 {
+				t.fillCell(b, x, y, lowest(m), same)
 			}
-			c.part, c.x, c.y, c.z = s.part, nx*k, ny*k, nz*k
-			c.step = jumpPixels * t.f.pixelDepth(s.part, c.n)
+		}
+		t.seeSights()
+		for b := range t.sights.n {
+			t.readCells(&t.sights.all[b], y*t.side+int(t.sights.owner[b]))
+		}
+	}
+}
+
+// fillCell finds what pixel i of the group at x shows, and wants its sight in
+// block b.
+func (t *tile) fillCell(b, x, y, i int, same uint8) {
+	x += i
+	c := &t.lines.cells[y*t.side+x]
+	keys := t.keys[(y*t.side+x)<<t.lg:][:1<<t.lg]
+	slot := t.scanned.slot[i]
+	if same>>i&1 == 0 {
+		slot = t.whole(keys)
+	}
+	mx, my := float32(0.5), float32(0.5)
+	whole := slot != 0
+	if !whole {
+		best := uint32(0)
+		for todo := uint32(t.full); todo != 0; {
+			mask, s := t.partGroup(keys, todo)
+			todo &^= mask
+			if bits.OnesCount32(mask) > bits.OnesCount32(best) {
+				best, slot = mask, s
+			}
+		}
+		if slot == 0 {
+			*c = cell{part: -1}
+			return
+		}
+		mx, my = t.middle(best)
+	}
+	t.aim(&t.sights.all[b], i, slot, float32(x)+mx, float32(y)+my)
+	c.slot, c.part, c.whole = slot, t.slots[slot].part, whole
+	c.whole = whole && t.f.parts[c.part].hatch.period == 0
+	for _, k := range keys {
+		if uint32(k) == slot {
+			c.n = math.Float32frombits(uint32(k >> 32))
+			break
+		}
+	}
+	c.step = jumpPixels * t.f.pixelDepth(c.part, c.n)
+}
+
+// readCells takes the normals of a block to the cells, of which i is the
+// first.
+func (t *tile) readCells(o *eight, i int) {
+	for j := range lanes {
+		if o.slot[j] != 0 {
+			c := &t.lines.cells[i+j]
+			c.x, c.y, c.z, c.nl = o.nx[j], o.ny[j], o.nz[j], o.nl[j]
 		}
 	}
 }

@@ -185,24 +185,28 @@ func (t *tile) wishSolid(g *group, py int, any, same uint8) {
 	if any == 0 {
 		return
 	}
+	if t.f.light.style == Ink {
+		for m := any; m != 0; m &= m - 1 {
+			if i := lowest(m); t.lines.cells[py*t.side+g.x+i].whole {
+				g.cells |= 1 << i
+			}
+		}
+		if any &^= g.cells; any == 0 {
+			return
+		}
+	}
 	b := t.sights.block()
 	g.block = int32(b)
-	n := 1 << t.lg
-	cells := t.f.light.style == Ink && g.pileTo == g.pileFrom
 	for m := any; m != 0; m &= m - 1 {
 		i := lowest(m)
 		px := g.x + i
 		slot := t.scanned.slot[i]
 		if same>>i&1 == 0 {
-			keys := t.keys[(py*t.side+px)<<t.lg:][:n]
+			keys := t.keys[(py*t.side+px)<<t.lg:][:1<<t.lg]
 			if slot = t.whole(keys); slot == 0 {
 				t.wishParts(keys, i, px, py)
 				continue
 			}
-		}
-		if cells && t.f.parts[t.slots[slot].part].hatch.period == 0 {
-			g.cells |= 1 << i
-			continue
 		}
 		t.aim(&t.sights.all[b], i, slot, float32(px)+0.5, float32(py)+0.5)
 	}
@@ -264,6 +268,7 @@ func (t *tile) behindGroup(g *group, py int) {
 	for m := g.cells; m != 0; m &= m - 1 {
 		i := lowest(m)
 		k.r[i], k.g[i], k.b[i] = t.inkWhole(py*t.side+g.x+i, g.x+i, py)
+		k.a[i] = 1
 	}
 	for _, m := range t.mixed[g.mixedFrom:g.mixedTo] {
 		c := t.solid(t.shares[m.from:m.to])

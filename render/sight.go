@@ -135,19 +135,25 @@ func (s *sights) color(i int32) (r, g, b float32) {
 	return o.red[i&7], o.green[i&7], o.blue[i&7]
 }
 
-// look finds normals, light and colours of the sights; strips get theirs.
-func (t *tile) look() {
+// seeSights finds normals and light of the sights.
+func (t *tile) seeSights() {
 	s := &t.sights
 	if s.n == 0 {
 		return
 	}
-	blocks := s.all[:s.n]
-	s.blocks, s.count = &blocks[0], int64(len(blocks))
 	if useVectors {
+		s.blocks, s.count = &s.all[0], int64(s.n)
 		lookEight(s)
 	} else {
-		s.lookPlain(t.f.verts, blocks)
+		s.lookPlain(t.f.verts, s.all[:s.n])
 	}
+}
+
+// look finds normals, light and colours of the sights; strips get theirs.
+func (t *tile) look() {
+	t.seeSights()
+	s := &t.sights
+	blocks := s.all[:s.n]
 	for k := range blocks {
 		t.colorEight(&blocks[k])
 		if s.owner[k] >= 0 {

@@ -11,7 +11,7 @@ func (t *tile) inkWhole(i, px, py int) (r, g, b float32) {
 		return p.col[0], p.col[1], p.col[2]
 	}
 	l := &t.f.light
-	nl := c.x*l.kx + c.y*l.ky + c.z*l.kz
+	nl := c.nl
 	m := l.tones[0]
 	for k := 1; k < l.nTones; k++ {
 		d := nl - l.edges[k-1]
@@ -34,7 +34,6 @@ func softStep(d, w float32) float32 {
 // cellSlope returns how much the key light changes over a pixel, from the
 // pixels around.
 func (t *tile) cellSlope(i, px, py int) float32 {
-	l := &t.f.light
 	c := &t.lines.cells[i]
 	along := func(a, b int) float32 {
 		p, q := &t.lines.cells[a], &t.lines.cells[b]
@@ -45,7 +44,7 @@ func (t *tile) cellSlope(i, px, py int) float32 {
 		if q.part != c.part {
 			q, k = c, 1
 		}
-		return ((p.x-q.x)*l.kx + (p.y-q.y)*l.ky + (p.z-q.z)*l.kz) * k
+		return (p.nl - q.nl) * k
 	}
 	var gx, gy float32
 	if px > t.clip.Min.X && px+1 < t.clip.Max.X {
