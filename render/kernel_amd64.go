@@ -19,10 +19,10 @@ func setupEight(s *triEight) uint32
 //go:noescape
 func drawEight(s *triEight, todo uint32) uint32
 
-// maskFour is maskPlain for four samples a pixel, two pixels at a time.
+// maskEight is maskPlain for four samples a pixel, two pixels at a time.
 //
 //go:noescape
-func maskFour(s *triEight, lane int) bool
+func maskEight(s *triEight, todo uint32) int
 
 // skyEight is skyPlain, eight balls at a time.
 //

@@ -50,7 +50,7 @@ DATA twos<>+16(SB)/8, $0x4000000040000000
 DATA twos<>+24(SB)/8, $0x4000000040000000
 GLOBL twos<>(SB), RODATA|NOPTR, $32
 
-// Registers of both functions; R12 points to the triangle's lane in the block:
+// Registers of both functions: R12 points to the triangle's lane in the block:
 // Y0 Y1 Y2   edge functions of the row's first pair
 // Y3 Y4 Y5   edge functions of the pair
 // Y6         n0 + gy·y of the row; Y7 x of the pair; Y8 y of the row
@@ -198,62 +198,92 @@ drawOther:
 	MOVL AX, ret+16(FP)
 	RET
 
-// func maskFour(s *triEight, lane int) bool
-TEXT ·maskFour(SB), NOSPLIT, $136-17
+// func maskEight(s *triEight, todo uint32) int
+TEXT ·maskEight(SB), NOSPLIT, $152-24
 	MOVQ s+0(FP), DI
-	MOVQ lane+8(FP), AX
-	LEAQ (DI)(AX*4), R12
+	MOVQ DI, R12
+	XORL R13, R13
+	MOVQ 568(DI), DX
+	MOVQ DX, out-136(SP)
+
+maskLane:
+	MOVL  todo+8(FP), AX
+	BTL   R13, AX
+	JCC   maskOther
+	MOVL  448(R12), AX
+	TESTL AX, AX
+	JLE   maskOther
 	PREPARE
-	MOVQ 568(DI), DI              // masks
-	XORL AX, AX
 	VPCMPEQD Y12, Y12, Y12
+	VCVTTSS2SIQ 384(R12), AX      // x
+	VCVTTSS2SIQ 416(R12), DX      // y
+	SHLQ  $3, AX
+	SHLQ  $16, DX
+	ORQ   R13, AX
+	ORQ   DX, AX
+	SHLQ  $32, AX
+	MOVQ  AX, rowRecord-144(SP)
 
 maskRow:
 	ROW
 	MOVQ SI, BX
 	MOVL R9, CX
+	MOVQ rowRecord-144(SP), R14
 
 maskPair:
 	VPOR      Y3, Y4, Y13
 	VPOR      Y5, Y13, Y13
-	XORL      R11, R11
 	VMOVMSKPS Y13, DX
 	CMPL      DX, $255
 	JEQ       maskNext
 	VMULPS    Y11, Y7, Y14
 	VADDPS    Y14, Y6, Y14
-	VPSRAD    $31, Y13, Y13
+	VPSRAD    $31, Y13, Y13       // all ones outside
 	VPUNPCKLDQ Y14, Y12, Y15
 	VPCMPGTQ  (BX), Y15, Y15
-	VMOVMSKPD Y15, R11
 	VPUNPCKHDQ Y14, Y12, Y14
 	VPCMPGTQ  32(BX), Y14, Y14
+	VPUNPCKLDQ Y13, Y13, Y9
+	VPANDN    Y15, Y9, Y15
+	VPUNPCKHDQ Y13, Y13, Y9
+	VPANDN    Y14, Y9, Y14
+	VMOVMSKPD Y15, R11
 	VMOVMSKPD Y14, DX
-	SHLL      $4, DX
+	SHLL      $16, DX
 	ORL       DX, R11
-	VPUNPCKLDQ Y13, Y13, Y14
-	VPUNPCKHDQ Y13, Y13, Y15
-	VMOVMSKPD Y14, DX
-	VMOVMSKPD Y15, R13
-	SHLL      $4, R13
-	ORL       R13, DX
-	NOTL      DX
-	ANDL      DX, R11
-	ORL       R11, AX
+	JZ        maskNext
+	ORQ       R14, R11
+	MOVQ      out-136(SP), DX
+	MOVQ      R11, (DX)
+	ADDQ      $8, DX
+	MOVQ      DX, out-136(SP)
 
 maskNext:
-	MOVB R11, (DI)
-	INCQ DI
+	DECL CX
+	JZ   maskEnd
 	RIGHT
 	ADDQ $64, BX
-	DECL CX
-	JNZ  maskPair
+	MOVQ $(2<<35), DX
+	ADDQ DX, R14
+	JMP  maskPair
+
+maskEnd:
+	DECL R8
+	JZ   maskOther
 	DOWN
 	ADDQ R10, SI
-	DECL R8
-	JNZ  maskRow
+	MOVQ $(1<<48), DX
+	ADDQ DX, rowRecord-144(SP)
+	JMP  maskRow
+
+maskOther:
+	ADDQ $4, R12
+	INCL R13
+	CMPL R13, $8
+	JNE  maskLane
 	VZEROUPPER
-	TESTL AX, AX
-	SETNE AX
-	MOVB AX, ret+16(FP)
+	MOVQ out-136(SP), AX
+	SUBQ 568(DI), AX
+	SHRQ $3, AX
+	MOVQ AX, ret+16(FP)
 	RET

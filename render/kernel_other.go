@@ -6,7 +6,7 @@ var useVectors = false
 
 func setupEight(*triEight) uint32        { panic("unreachable") }
 func drawEight(*triEight, uint32) uint32 { panic("unreachable") }
-func maskFour(*triEight, int) bool       { panic("unreachable") }
+func maskEight(*triEight, uint32) int    { panic("unreachable") }
 func skyEight(*skyKernel)                { panic("unreachable") }
 func lookEight(*sights)                  { panic("unreachable") }
 func rodFour(*rodKernel)                 { panic("unreachable") }

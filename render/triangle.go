@@ -52,7 +52,7 @@ type triEight struct {
 	verts       *vert       // 544
 	keys        *uint64     // 552
 	stride      int64       // 560: bytes from row to row
-	masks       *uint8      // 568: where a layer's masks go, one a pair
+	records     *uint64     // 568: where a layer's masks go
 	slot        uint32      // 576: of the next triangle that is seen
 	ox, oy      float32     // 580, 584: place of the canvas
 	rim         int32       // 588: from a pixel's rim to the first sample
@@ -60,7 +60,7 @@ type triEight struct {
 	side, shift int32       // 608, 612: of the canvas; log2 of the bytes of a pixel
 	ids         [8]uint32   // entries of the batch
 	n           int
-	maskBuf     [maxMasks]uint8
+	recordBuf   [8 * maxMasks]uint64
 }
 
 // maxMasks is the largest field of pixel pairs that the innermost loop takes.
@@ -74,7 +74,7 @@ func (s *triEight) ready(t *tile) {
 	s.rim = sub / 2 >> t.lg
 	s.clip = [4]int32{int32(t.clip.Min.X), int32(t.clip.Min.Y), int32(t.clip.Max.X - 1), int32(t.clip.Max.Y - 1)}
 	s.side, s.shift = int32(t.side), int32(t.lg+3)
-	s.masks = &s.maskBuf[0]
+	s.records = &s.recordBuf[0]
 	if len(t.f.verts) > 0 {
 		s.verts = &t.f.verts[0]
 	}
@@ -157,70 +157,75 @@ func (t *tile) drawBlock(it *item, p *part, layered bool) {
 		return
 	}
 	verts, loose := t.f.verts, t.f.batches[it.batch].loose
-	large := uint32(1) // anything: look at every triangle
+	large := uint32(0)
 	if s.ids[0]&looseBit != 0 || !useVectors {
 		for i := range n {
 			a, b, c := s.corners(i, verts, loose)
 			s.setup(i, a, b, c)
+			if s.rows[i] < 0 {
+				large |= 1 << i
+			}
 		}
 	} else {
 		for i := n; i < 8; i++ {
 			s.a[i], s.b[i], s.c[i] = s.a[0], s.b[0], s.c[0]
 		}
-		large = setupEight(s)
+		large = setupEight(s) & (1<<n - 1)
 	}
-	if !layered && large == 0 && t.lg == 2 && useVectors {
-		s.slot = uint32(len(t.slots))
-		for seen := drawEight(s, 1<<n-1); seen != 0; seen &= seen - 1 {
-			t.slots = append(t.slots, slot{it.part, it.batch, s.ids[bits.TrailingZeros32(seen)&7]})
+	if layered && t.side > 56 { // the buffer would not hold their masks
+		for i := range n {
+			if s.rows[i]*s.pairs[i] > maxMasks {
+				large |= 1 << i
+			}
 		}
+	}
+	if large == 0 {
+		t.drawSmall(it, p, 1<<n-1, layered)
 		return
 	}
 	for i := range n {
-		if s.rows[i] == 0 {
+		if large>>i&1 == 0 {
+			t.drawSmall(it, p, 1<<i, layered)
 			continue
 		}
-		k := uint32(len(t.slots))
-		// Known before it is drawn: a layer may turn into fragments on the
-		// way.
-		t.slots = append(t.slots, slot{it.part, it.batch, s.ids[i]})
 		a, b, c := s.corners(i, verts, loose)
 		var l *layer
 		if layered {
-			l = &t.front
-			if ((b.x-a.x)*(a.y-c.y)-(c.x-a.x)*(a.y-b.y) < 0) != p.mirrored {
-				l = &t.back
-			}
+			l = t.layerOf(p, a, b, c)
 		}
-		if !t.triangle(i, a, b, c, k, l) {
-			t.slots = t.slots[:k]
+		slot := t.addSlot(it, s.ids[i])
+		if !t.large(a, b, c, s.n0[i], s.gx[i], s.gy[i], slot, l) {
+			t.slots = t.slots[:slot]
 		}
 	}
 }
 
-// triangle draws a triangle of the block: onto the samples when l is nil,
-// otherwise into the layer. It tells whether it reached a sample.
-func (t *tile) triangle(i int, a, b, c *vert, slot uint32, l *layer) bool {
+// addSlot adds a slot for a triangle of a batch.
+func (t *tile) addSlot(it *item, id uint32) uint32 {
+	t.slots = append(t.slots, slot{it.part, it.batch, id})
+	return uint32(len(t.slots) - 1)
+}
+
+// drawSmall draws those small triangles of the block that have a bit in todo.
+func (t *tile) drawSmall(it *item, p *part, todo uint32, layered bool) {
 	s := &t.tris
-	if s.rows[i] < 0 || l != nil && s.rows[i]*s.pairs[i] > maxMasks {
-		return t.large(a, b, c, s.n0[i], s.gx[i], s.gy[i], slot, l)
-	}
-	if l == nil && t.lg == 2 && useVectors {
-		s.slot = slot
-		return drawEight(s, 1<<i) != 0
-	}
-	k := s.lane(i, slot)
-	if l == nil {
-		return t.drawPlain(&k)
+	if layered {
+		t.coverSmall(it, p, todo)
+		return
 	}
 	if t.lg == 2 && useVectors {
-		if !maskFour(s, i) {
-			return false
+		s.slot = uint32(len(t.slots))
+		for seen := drawEight(s, todo); seen != 0; seen &= seen - 1 {
+			t.addSlot(it, s.ids[bits.TrailingZeros32(seen)&7])
 		}
-	} else if !t.maskPlain(&k) {
-		return false
+		return
 	}
-	return t.addMasks(&k, l)
+	for ; todo != 0; todo &= todo - 1 {
+		i := bits.TrailingZeros32(todo) & 7
+		if k := s.lane(i, uint32(len(t.slots))); t.drawPlain(&k) {
+			t.addSlot(it, s.ids[i])
+		}
+	}
 }
 
 // onEdge is -1 for edges whose own samples belong to the neighbour.
@@ -231,7 +236,7 @@ func onEdge(a, b int32) int32 {
 	return -1
 }
 
-// drawPlain draws a small triangle, sample by sample. drawFour does the same
+// drawPlain draws a small triangle, sample by sample. drawEight does the same
 // for four samples a pixel.
 func (t *tile) drawPlain(k *kernel) bool {
 	n := 1 << t.lg
@@ -264,162 +269,4 @@ func (t *tile) drawPlain(k *kernel) bool {
 		}
 	}
 	return hit
-}
-
-// maskPlain finds which samples a small triangle covers in front of what is
-// there: for each pixel pair a byte for up to four samples a pixel. With more
-// samples it draws nothing and leaves them to addMasks.
-func (t *tile) maskPlain(k *kernel) bool {
-	if t.lg > 2 {
-		return true
-	}
-	n := 1 << t.lg
-	m := 0
-	any := uint8(0)
-	for r := range int(k.rows) {
-		for p := range int(k.pairs) {
-			mask := uint8(0)
-			for q := range 2 {
-				for s := range n {
-					if t.inside(k, r, 2*p+q, s) {
-						mask |= 1 << (4*q + s)
-					}
-				}
-			}
-			t.tris.maskBuf[m] = mask
-			any |= mask
-			m++
-		}
-	}
-	return any != 0
-}
-
-// inside tells whether a sample of pixel (x, r) of the kernel's field is
-// covered and not hidden.
-func (t *tile) inside(k *kernel, r, x, s int) bool {
-	sy := int32(r*sub + (2*s+1)*sub/2>>t.lg)
-	sx := int32(x*sub) + int32(t.sx[s&15]*sub)
-	e0 := k.e[0] + k.a[0]*sx + k.b[0]*sy
-	e1 := k.e[1] + k.a[1]*sx + k.b[1]*sy
-	e2 := k.e[2] + k.a[2]*sx + k.b[2]*sy
-	if e0|e1|e2 < 0 {
-		return false
-	}
-	y := k.y + float32(r) + (float32(s)+0.5)/float32(int(1)<<t.lg)
-	n := (k.n0 + k.gy*y) + k.gx*(k.x+float32(x)+float32(t.sx[s&15]))
-	return int64(uint64(math.Float32bits(n))<<32|math.MaxUint32) > int64(t.keys[k.at+(r*t.side+x)<<t.lg+s])
-}
-
-// addMasks adds the covered samples to a layer.
-func (t *tile) addMasks(k *kernel, l *layer) bool {
-	hit := false
-	m := 0
-	pixel := k.at >> t.lg
-	y0 := pixel / t.side
-	x0 := pixel - y0*t.side + t.pad
-	for r := range int(k.rows) {
-		y := y0 + r
-		row := y * t.perRow
-		n := k.n0 + k.gy*(k.y+float32(r)+0.5) + k.gx*(k.x+0.5)
-		for q := range 2 * int(k.pairs) {
-			mask := uint16(0)
-			if t.lg > 2 {
-				for s := range 1 << t.lg {
-					if t.inside(k, r, q, s) {
-						mask |= 1 << s
-					}
-				}
-			} else {
-				mask = uint16(t.tris.maskBuf[m]) >> (4 * (q & 1)) & 15
-				m += q & 1
-			}
-			if mask == 0 {
-				continue
-			}
-			hit = true
-			x := x0 + q
-			t.coverMask(l, row+x>>3, x&7, y, mask, k.slot, n+k.gx*float32(q), k.gx, k.gy)
-		}
-	}
-	return hit
-}
-
-// large draws a triangle of any size, sample row by sample row: the whole
-// pixels whose samples lie inside are found by division.
-func (t *tile) large(a, b, c *vert, n0, gx, gy float32, slot uint32, l *layer) bool {
-	const most = 1 << 22
-	var x, y [3]int64
-	for i, v := range [3]*vert{a, b, c} {
-		if !(v.x > -most && v.x < most && v.y > -most && v.y < most) {
-			return false
-		}
-		x[i], y[i] = int64(v.x*sub)-int64(t.x)*sub, int64(v.y*sub)-int64(t.y)*sub
-	}
-	if (x[1]-x[0])*(y[2]-y[0])-(x[2]-x[0])*(y[1]-y[0]) < 0 {
-		x[1], y[1], x[2], y[2] = x[2], y[2], x[1], y[1]
-	}
-	var e triEdges
-	for i := range 3 {
-		j := (i + 1) % 3
-		e.a[i], e.b[i] = y[i]-y[j], x[j]-x[i]
-		e.c[i] = -e.a[i]*x[i] - e.b[i]*y[i]
-		if !(e.a[i] > 0 || e.a[i] == 0 && e.b[i] > 0) {
-			e.c[i]--
-		}
-	}
-	n := 1 << t.lg
-	yLo, yHi := min(y[0], y[1], y[2]), max(y[0], y[1], y[2])
-	hit := false
-	for py := t.clip.Min.Y; py < t.clip.Max.Y; py++ {
-		if int64(py+1)*sub < yLo || int64(py)*sub > yHi {
-			continue
-		}
-		for s := range n {
-			sy := int64(py*sub + (2*s+1)*sub/2>>t.lg)
-			sx := int64(t.sx[s&15] * sub)
-			x0, x1 := int64(t.clip.Min.X), int64(t.clip.Max.X-1)
-			for i := range 3 {
-				// Inside where d + a·256·x is not negative.
-				d, g := e.a[i]*sx+e.b[i]*sy+e.c[i], e.a[i]*sub
-				switch {
-				case g > 0:
-					x0 = max(x0, -floorDiv(d, g))
-				case g < 0:
-					x1 = min(x1, floorDiv(d, -g))
-				case d < 0:
-					x1 = x0 - 1
-				}
-			}
-			if x0 > x1 {
-				continue
-			}
-			hit = true
-			row := n0 + gy*(float32(py)+(float32(s)+0.5)/float32(n))
-			for x := int(x0); x <= int(x1); x++ {
-				near := row + gx*(float32(x)+float32(t.sx[s&15]))
-				if l != nil {
-					if t.cover(l, py, x, s, near, slot) {
-						g, lane := t.groupOf(x, py)
-						sh := &t.strips[l.at[g]]
-						sh.n[lane], sh.nx[lane], sh.ny[lane] = n0+gy*(float32(py)+0.5)+gx*(float32(x)+0.5), gx, gy
-					}
-					continue
-				}
-				key := uint64(math.Float32bits(near))<<32 | uint64(slot)
-				if p := &t.keys[(py*t.side+x)<<t.lg+s]; int64(key) > int64(*p) {
-					*p = key
-				}
-			}
-		}
-	}
-	return hit
-}
-
-// floorDiv returns the largest whole number not above a/b, for b > 0.
-func floorDiv(a, b int64) int64 {
-	q := a / b
-	if a%b < 0 {
-		q--
-	}
-	return q
 }
