@@ -54,7 +54,7 @@ func encode(v float32, linear bool) uint8 {
 		v = 1
 	}
 	if !linear {
-		return uint8(int32(v*255 + 0.5))
+		return uint8(int32(float32(v*255) + 0.5))
 	}
 	i := int(math.Float32bits(v)>>13) - srgbBase
 	if i < 0 {

@@ -48,3 +48,19 @@ func stackEight(k *stack)
 //
 //go:noescape
 func scanFour(s *scan, keys *uint64)
+
+// packNumbers writes eight opaque pixels of plain numbers: reds, greens and
+// blues follow each other.
+//
+//go:noescape
+func packNumbers(dst *uint8, r *[lanes]float32)
+
+// packLinear does the same for linear light, with the table toSRGB.
+//
+//go:noescape
+func packLinear(dst *uint8, r *[lanes]float32, table *uint8)
+
+// normalEight is quadric.normals for eight pixels at once.
+//
+//go:noescape
+func normalEight(k *roundKernel)

@@ -197,19 +197,15 @@ func (t *tile) wishSolid(g *group, py int, any, same uint8) {
 	}
 	b := t.sights.block()
 	g.block = int32(b)
-	for m := any; m != 0; m &= m - 1 {
+	for m := any &^ same; m != 0; m &= m - 1 {
 		i := lowest(m)
-		px := g.x + i
-		slot := t.scanned.slot[i]
-		if same>>i&1 == 0 {
-			keys := t.keys[(py*t.side+px)<<t.lg:][:1<<t.lg]
-			if slot = t.whole(keys); slot == 0 {
-				t.wishParts(keys, i, px, py)
-				continue
-			}
+		keys := t.keys[(py*t.side+g.x+i)<<t.lg:][:1<<t.lg]
+		if t.scanned.slot[i] = t.whole(keys); t.scanned.slot[i] == 0 {
+			any &^= 1 << i
+			t.wishParts(keys, i, g.x+i, py)
 		}
-		t.aim(&t.sights.all[b], i, slot, float32(px)+0.5, float32(py)+0.5)
 	}
+	t.aimLanes(&t.sights.all[b], &t.scanned.slot, any, g.x, py)
 }
 
 // wishParts wants a sight of every surface that a pixel shows.
@@ -230,6 +226,11 @@ func (t *tile) wishParts(keys []uint64, lane, px, py int) {
 
 // compose writes a group of pixels from its sights.
 func (t *tile) compose(row []uint8, g *group, py int) {
+	if g.ground|g.lines|g.cells == 0 && g.mixedTo == g.mixedFrom && g.pileTo == g.pileFrom {
+		o := &t.sights.all[g.block]
+		t.pack(row, g, &o.red, &o.green, &o.blue, &ones)
+		return
+	}
 	k := &t.stack
 	t.behindGroup(g, py)
 	if pile := t.pile[g.pileFrom:g.pileTo]; len(pile) > 0 {
@@ -240,12 +241,29 @@ func (t *tile) compose(row []uint8, g *group, py int) {
 		c := t.under([4]float32{k.r[i], k.g[i], k.b[i], k.a[i]}, t.f.inked(t.lines.dist[py*t.side+g.x+i]))
 		k.r[i], k.g[i], k.b[i], k.a[i] = c[0], c[1], c[2], c[3]
 	}
+	t.pack(row, g, &k.r, &k.g, &k.b, &k.a)
+}
+
+// pack writes the bytes of a group of pixels.
+func (t *tile) pack(row []uint8, g *group, r, gr, b, a *[lanes]float32) {
+	f := t.f
+	at := 4 * (g.x - t.inner.Min.X)
+	if g.valid == 0xff && useVectors && min(a[0], a[1], a[2], a[3], a[4], a[5], a[6], a[7]) >= 0.9995 {
+		if o := row[at:][:4*lanes]; f.linear {
+			packLinear(&o[0], r, &toSRGB[0])
+		} else {
+			packNumbers(&o[0], r)
+		}
+		return
+	}
 	for m := g.valid; m != 0; m &= m - 1 {
 		i := lowest(m)
-		v := t.f.pixel(k.r[i], k.g[i], k.b[i], k.a[i])
-		binary.LittleEndian.PutUint32(row[4*(g.x+i-t.inner.Min.X):], binary.LittleEndian.Uint32(v[:]))
+		v := f.pixel(r[i], gr[i], b[i], a[i])
+		binary.LittleEndian.PutUint32(row[at+4*i:], binary.LittleEndian.Uint32(v[:]))
 	}
 }
+
+var ones = [lanes]float32{1, 1, 1, 1, 1, 1, 1, 1}
 
 // behindGroup fills the stack with what is opaque in the pixels of a group.
 func (t *tile) behindGroup(g *group, py int) {
@@ -253,9 +271,7 @@ func (t *tile) behindGroup(g *group, py int) {
 	if g.block >= 0 {
 		o := &t.sights.all[g.block]
 		k.r, k.g, k.b = o.red, o.green, o.blue
-		for i := range lanes {
-			k.a[i] = 1
-		}
+		k.a = ones
 	}
 	if g.ground != 0 {
 		c := &t.f.ground

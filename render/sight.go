@@ -129,6 +129,39 @@ func (t *tile) aim(o *eight, i int, k uint32, x, y float32) {
 	}
 }
 
+// aimLanes fills in those sights of a block that have a bit in want: slots at
+// the middles of neighbouring pixels, of which the first is (px, py).
+func (t *tile) aimLanes(o *eight, slots *[lanes]uint32, want uint8, px, py int) {
+	y := float32(py+t.y) + 0.5
+	for m := want; m != 0; m &= m - 1 {
+		i := lowest(m)
+		k := slots[i]
+		sl := &t.slots[k]
+		p := &t.f.parts[sl.part]
+		if p.form == formQuadric && p.hatch.period == 0 && !p.flat {
+			same := uint8(0)
+			for n := m; n != 0; n &= n - 1 {
+				if j := lowest(n); slots[j] == k {
+					same |= 1 << j
+				}
+			}
+			t.aimRound(o, k, p, same, px, py)
+			m = m&^same | 1<<i // the loop takes this one away
+			continue
+		}
+		if !p.smooth || sl.tri&looseBit != 0 {
+			t.aim(o, i, k, float32(px+i)+0.5, float32(py)+0.5)
+			continue
+		}
+		ix := &p.mesh.Triangles[sl.tri]
+		v := uint32(p.vert0)
+		o.slot[i] = k
+		o.x[i], o.y[i] = float32(px+t.x+i)+0.5, y
+		o.a[i], o.b[i], o.c[i] = v+ix[0], v+ix[1], v+ix[2]
+		o.mesh[i], o.turn[i], o.hatched[i] = -1, p.turn, 0
+	}
+}
+
 // color returns the colour of a sight.
 func (s *sights) color(i int32) (r, g, b float32) {
 	o := &s.all[i>>3]

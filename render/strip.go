@@ -294,36 +294,11 @@ func (t *tile) wishStrip(k int32, px, py int) {
 	b := t.sights.block()
 	t.sights.owner[b] = k
 	o := &t.sights.all[b]
-	p := &t.f.parts[s.part]
-	x, y := float32(px+t.x), float32(py+t.y)
-	if !p.smooth {
-		for i, m := range s.mask {
-			if m != 0 {
-				mx, my := t.middle(uint32(m))
-				t.aim(o, i, s.slot[i], float32(px+i)+mx, float32(py)+my)
-			}
-		}
-		return
-	}
-	tris, v0 := p.mesh.Triangles, uint32(p.vert0)
-	for i, m := range s.mask {
-		if m == 0 {
-			continue
-		}
-		mx, my := float32(0.5), float32(0.5)
-		if m != t.full {
-			mx, my = t.middle(uint32(m))
-		}
-		tri := t.slots[s.slot[i]].tri
-		if tri&looseBit != 0 {
-			t.aim(o, i, s.slot[i], float32(px+i)+mx, float32(py)+my)
-			continue
-		}
-		ix := &tris[tri]
-		o.slot[i] = s.slot[i]
-		o.x[i], o.y[i] = x+float32(i)+mx, y+my
-		o.a[i], o.b[i], o.c[i] = v0+ix[0], v0+ix[1], v0+ix[2]
-		o.mesh[i], o.turn[i], o.hatched[i] = -1, p.turn, 0
+	t.aimLanes(o, &s.slot, s.covered()&^s.partial, px, py)
+	for m := s.partial; m != 0; m &= m - 1 {
+		i := lowest(m)
+		mx, my := t.middle(uint32(s.mask[i]))
+		t.aim(o, i, s.slot[i], float32(px+i)+mx, float32(py)+my)
 	}
 }
 

@@ -34,6 +34,7 @@ type tile struct {
 
 	tris        triEight
 	rods        rodKernel
+	rounds      roundKernel
 	sky         skyKernel
 	surf        surf
 	free        bool // look beyond the edges of a triangle
