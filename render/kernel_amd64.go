@@ -64,3 +64,8 @@ func packLinear(dst *uint8, r *[lanes]float32, table *uint8)
 //
 //go:noescape
 func normalEight(k *roundKernel)
+
+// goOnEight is cells.goesOn for eight pixels at once.
+//
+//go:noescape
+func goOnEight(c *cells, i, j int) uint32

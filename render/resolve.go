@@ -187,7 +187,7 @@ func (t *tile) wishSolid(g *group, py int, any, same uint8) {
 	}
 	if t.f.light.style == Ink {
 		for m := any; m != 0; m &= m - 1 {
-			if i := lowest(m); t.lines.cells[py*t.side+g.x+i].whole {
+			if i := lowest(m); t.lines.cells.whole[py*t.side+g.x+i] {
 				g.cells |= 1 << i
 			}
 		}

@@ -30,6 +30,7 @@ type tile struct {
 	kept        int     // strips of the canvas; those of a row follow
 	perRow, pad int     // groups in a row, and empty pixels before the first
 	full        uint16  // the mask of all samples
+	allFull     [lanes]uint16
 	near        float32 // the far limit
 
 	tris        triEight
@@ -102,6 +103,9 @@ func (t *tile) begin(f *frame, out image.Rectangle) {
 	n := t.side * t.side
 	t.keys = grow(t.keys, (n+lanes)<<t.lg) // a group may reach beyond the last row
 	t.full = uint16(uint32(1)<<(1<<t.lg) - 1)
+	for i := range t.allFull {
+		t.allFull[i] = t.full
+	}
 	// The first pixel without apron begins a group.
 	t.pad = -f.apron & (lanes - 1)
 	t.perRow = (t.side + t.pad + lanes - 1) / lanes

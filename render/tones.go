@@ -5,13 +5,13 @@ package render
 // inkWhole returns the colour of a pixel that shows one part alone, from its
 // cell.
 func (t *tile) inkWhole(i, px, py int) (r, g, b float32) {
-	c := &t.lines.cells[i]
-	p := &t.f.parts[c.part]
+	c := &t.lines.cells
+	p := &t.f.parts[c.part[i]]
 	if p.flat {
 		return p.col[0], p.col[1], p.col[2]
 	}
 	l := &t.f.light
-	nl := c.nl
+	nl := c.nl[i]
 	m := l.tones[0]
 	for k := 1; k < l.nTones; k++ {
 		d := nl - l.edges[k-1]
@@ -34,17 +34,17 @@ func softStep(d, w float32) float32 {
 // cellSlope returns how much the key light changes over a pixel, from the
 // pixels around.
 func (t *tile) cellSlope(i, px, py int) float32 {
-	c := &t.lines.cells[i]
+	c := &t.lines.cells
+	part := c.part[i]
 	along := func(a, b int) float32 {
-		p, q := &t.lines.cells[a], &t.lines.cells[b]
 		k := float32(0.5)
-		if p.part != c.part {
-			p, k = c, 1
+		if c.part[a] != part {
+			a, k = i, 1
 		}
-		if q.part != c.part {
-			q, k = c, 1
+		if c.part[b] != part {
+			b, k = i, 1
 		}
-		return (p.nl - q.nl) * k
+		return (c.nl[a] - c.nl[b]) * k
 	}
 	var gx, gy float32
 	if px > t.clip.Min.X && px+1 < t.clip.Max.X {
