@@ -68,6 +68,7 @@ The ending of FILE chooses the format
 	flags.BoolVar(&s.Camera.Orthographic, "orthographic", false, "draw without perspective")
 	flags.BoolVar(&s.Look.NoLabels, "no-labels", false, "leave out the atoms' labels")
 	flags.BoolVar(&s.Look.NoAxes, "no-axes", false, "leave out the axes in the corner")
+	flags.Var(oneOf{&s.Figure.Language, []string{"en", "de"}}, "language", "`LANGUAGE` of the words in the figure, en or de")
 	flags.BoolVar(&s.Figure.NoCaption, "no-caption", false, "leave out the caption")
 	noStudyFlag(flags, &s)
 	several.flags(flags)

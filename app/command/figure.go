@@ -103,6 +103,7 @@ func pageFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.Float64Var(&f.Height, "height", 0, "height in `MM` (default: what suits the content)")
 	flags.BoolVar(&f.Slide, "slide", false, "a page of 16:9 with text of 18 pt")
 	flags.Var(&positive{&f.Resolution, study.DefaultResolution}, "dpi", "resolution in `DOTS` per inch")
+	flags.Var(oneOf{&f.Language, []string{"en", "de"}}, "language", "`LANGUAGE` of the words in the figure, en or de")
 	flags.Var(oneOf{&f.Font, []string{"sans", "serif"}}, "font", "`FAMILY` of the text, sans (DejaVu Sans) or serif (DejaVu Serif)")
 	flags.Float64Var(&f.TextSize, "text", 0, "size of the text in `POINTS` (default 8, on a slide 18)")
 	flags.BoolVar(&s.Look.Elements, "elements", false, "draw all symmetry elements with their names")

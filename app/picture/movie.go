@@ -11,6 +11,7 @@ import (
 	"lobewright/app/notation"
 	"lobewright/app/study"
 	"lobewright/app/work"
+	"lobewright/assets"
 	"lobewright/orbitals"
 	"lobewright/render"
 	"lobewright/symmetry/message"
@@ -83,7 +84,7 @@ func NewMovie(p *work.Play, s study.Study) (*Movie, error) {
 	m.orbit = BestOrbit(p.Group, p.Basis).Seen(s.Camera)
 	m.Title = p.Group.Molecule.Title + ", " + notation.Operation(p.Operation.Name).String()
 	if !s.Figure.NoCaption {
-		if err := m.addCaption(); err != nil {
+		if err := m.addCaption(assets.TextsIn(assets.Language(s.Figure.Language))); err != nil {
 			return nil, err
 		}
 	}
@@ -128,13 +129,13 @@ func stills(op work.Operation, a study.Animation) []Still {
 }
 
 // addCaption sets what the operation does, and makes room for it below.
-func (m *Movie) addCaption() error {
+func (m *Movie) addCaption(texts assets.Texts) error {
 	fonts, err := fonts()
 	if err != nil {
 		return message.Errorf("the built-in typefaces cannot be read: %w", err)
 	}
 	room := float64(m.Width)*25.4/m.Resolution - 2*movieMargin
-	for _, t := range captionsOf(m.play) {
+	for _, t := range captionsOf(m.play, texts) {
 		set := runs(t)
 		if w, _, _ := fonts.Measure(set, movieCaption); w <= room {
 			m.caption = set
@@ -220,7 +221,7 @@ func enclosingRadius(balls []ball) float64 {
 
 // captionsOf are texts for what an operation does, from the longest to the
 // shortest: "C₄(z):  φ₁ (σ on Cl2) → φ₂ (σ on Cl3)", "C₄(z)".
-func captionsOf(p *work.Play) []notation.Text {
+func captionsOf(p *work.Play, texts assets.Texts) []notation.Text {
 	name := notation.Operation(p.Operation.Name)
 	if p.Operation.Family {
 		degrees := notation.Short(mgl64.RadToDeg(p.Operation.Angle), 1)
@@ -236,21 +237,21 @@ func captionsOf(p *work.Play) []notation.Text {
 	case p.Function >= 0:
 		start := []orbitals.Term{{Function: p.Function, Coefficient: 1}}
 		out = append(out,
-			name.Then(colon, functionsText(p, start, true), arrow, functionsText(p, p.Terms, true)),
-			name.Then(colon, functionsText(p, start, false), arrow, functionsText(p, p.Terms, false)))
+			name.Then(colon, functionsText(p, start, texts), arrow, functionsText(p, p.Terms, texts)),
+			name.Then(colon, functionsText(p, start, nil), arrow, functionsText(p, p.Terms, nil)))
 	}
 	return append(out, name)
 }
 
 var arrow = notation.Words(" → ")
 
-// functionsText sets a sum of functions of the basis; a single function can be
-// named with its atom.
-func functionsText(p *work.Play, terms []orbitals.Term, named bool) notation.Text {
+// functionsText sets a sum of functions of the basis; with texts a single
+// function is named with its atom.
+func functionsText(p *work.Play, terms []orbitals.Term, texts assets.Texts) notation.Text {
 	t := sumText(terms, p.Operation.Family, notation.PhiText)
-	if named && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
+	if texts != nil && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
 		f := p.Basis.Functions[terms[0].Function]
-		t = t.Then(notation.Words(" ("), notation.Function(f.Name), notation.Words(" on "+p.Group.AtomNames()[f.Site]+")"))
+		t = t.Then(notation.Words(" ("), notation.Fill(texts.Say("sheet.onAtoms", p.Group.AtomNames()[f.Site]), notation.Function(f.Name)), notation.Words(")"))
 	}
 	return t
 }

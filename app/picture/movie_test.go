@@ -76,15 +76,20 @@ func TestCaptionsSayWhatAnOperationDoes(t *testing.T) {
 	} {
 		_, p := movieOf(t, s)
 		var all []string
-		for _, text := range captionsOf(p) {
+		for _, text := range captionsOf(p, assets.TextsIn(assets.English)) {
 			all = append(all, text.String())
 		}
 		if plain(all[0]) != plain(want) {
 			t.Errorf("%q, want %q", all, want)
 		}
 	}
-	if _, p := movieOf(t, linear); !strings.Contains(captionsOf(p)[0].String(), "30") {
-		t.Error(captionsOf(p)[0].String())
+	_, p := movieOf(t, linear)
+	if first := captionsOf(p, assets.TextsIn(assets.English))[0].String(); !strings.Contains(first, "30") {
+		t.Error(first)
+	}
+	_, p = movieOf(t, functionOn("demo:square-plane", "Cl:sigma", "C4(z)"))
+	if got, want := captionsOf(p, assets.TextsIn(assets.German))[0].String(), "C₄(z):  φ1 (σ an Cl2) → φ2 (σ an Cl3)"; plain(got) != plain(want) {
+		t.Errorf("%q, want %q", got, want)
 	}
 }
 

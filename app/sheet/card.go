@@ -1,7 +1,6 @@
 package sheet
 
 import (
-	"fmt"
 	"math"
 
 	"lobewright/app/notation"
@@ -99,13 +98,13 @@ func (m *maker) placeCard(c card, p plan, width float64, beside bool) placedCard
 // keptText keeps what cardText makes: the same widths are tried again and
 // again. A maker has one card.
 func (m *maker) keptText(c card, width float64) (block, bool) {
-	kept, known := m.texts[width]
+	kept, known := m.cards[width]
 	if !known {
 		kept.block, kept.torn = m.cardText(c, width)
-		if m.texts == nil {
-			m.texts = map[float64]cardTexts{}
+		if m.cards == nil {
+			m.cards = map[float64]cardTexts{}
 		}
-		m.texts[width] = kept
+		m.cards[width] = kept
 	}
 	return kept.block, kept.torn
 }
@@ -130,7 +129,7 @@ func (m *maker) drawCard(c card, at placedCard, p plan) (block, error) {
 		x = max(0, (at.w-at.key.Width-at.triad.w-innerGap)/2)
 	}
 	if at.key.Width > 0 {
-		key, err := m.panel(c.key, p.grid.view, at.key, "the atoms and their names", true)
+		key, err := m.panel(c.key, p.grid.view, at.key, m.say("sheet.atomsAndNames"), true)
 		if err != nil {
 			return out, err
 		}
@@ -171,12 +170,12 @@ func (m *maker) cardText(c card, width float64) (out block, torn bool) {
 		out.put(m.legend(width), 0, out.h)
 	}
 	if m.study.Look.Displacements && !m.figure.NoLegend {
-		if note := displacementText(c.group); note != nil {
+		if note := m.displacementText(c.group); note != nil {
 			put(note, m.quiet())
 		}
 	}
 	if !m.figure.NoCard && !c.bare && m.width >= narrow {
-		put(notation.Group(c.group.Fit.Setting.Symbol).Then(notation.Words(": "), notation.Sentence(notation.ShortConvention(c.group.Fit))), m.quiet())
+		put(notation.Group(c.group.Fit.Setting.Symbol).Then(notation.Words(": "), notation.Sentence(notation.ShortConventionIn(m.texts, c.group.Fit))), m.quiet())
 	}
 	return out, torn
 }
@@ -240,16 +239,22 @@ func (m *maker) hatched(x, y, radius float64) []Item {
 }
 
 // displacementText says what the arrows on atoms mean; nil where there are none.
-func displacementText(g *work.Group) notation.Text {
+func (m *maker) displacementText(g *work.Group) notation.Text {
 	factor, longest := picture.DisplacementScale(g)
 	if factor == 0 {
 		return nil
 	}
-	times := ", true to scale"
-	if factor != 1 {
-		times = fmt.Sprintf(" × %g", factor)
+	if factor == 1 {
+		return notation.Words(m.say("sheet.arrowsTrue", notation.Decimal(longest, 3)))
 	}
-	return notation.Words(fmt.Sprintf("arrows: displacements from the ideal places%s, the longest %s\u00a0Å", times, notation.Decimal(longest, 3)))
+	return notation.Words(m.say("sheet.arrowsTimes", factor, notation.Decimal(longest, 3)))
+}
+
+// lobeSizes are the sentences for what goes with |c|, in full and short.
+var lobeSizes = map[string][2]string{
+	"length": {"sheet.lobeLength", "sheet.lobeLengthShort"},
+	"area":   {"sheet.lobeArea", "sheet.lobeAreaShort"},
+	"volume": {"sheet.lobeVolume", "sheet.lobeVolumeShort"},
 }
 
 // legendText says what the size and the shape of a lobe mean.
@@ -258,16 +263,18 @@ func (m *maker) legendText() notation.Text {
 	if size == "" {
 		size = "length"
 	}
-	what := " of a lobe as |"
+	key := lobeSizes[size][0]
 	if m.width < narrow {
-		what = " as |"
+		key = lobeSizes[size][1]
 	}
-	t := notation.Words(size+what).Then(notation.Text{{Text: "c", Italic: true}}, notation.Words("|"))
+	bar := notation.Words("|")
+	t := notation.Fill(m.say(key), bar.Then(notation.Text{{Text: "c", Italic: true}}, bar))
+	plotted := notation.Text{{Text: "Y", Italic: true}}
 	switch m.study.Look.Shape {
 	case "polar":
-		t = t.Then(notation.Words("; polar plot of |"), notation.Text{{Text: "Y", Italic: true}}, notation.Words("|"))
+		return notation.Fill(m.say("sheet.polarPlot"), t, bar.Then(plotted, bar))
 	case "square":
-		t = t.Then(notation.Words("; polar plot of "), notation.Text{{Text: "Y", Italic: true}, {Text: "2", Place: notation.Super}})
+		return notation.Fill(m.say("sheet.polarPlot"), t, plotted.Then(notation.Text{{Text: "2", Place: notation.Super}}))
 	}
 	return t
 }

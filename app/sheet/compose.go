@@ -45,10 +45,10 @@ func (m *maker) compose(g grid, c card) (block, error) {
 		return block{}, errTooSmall
 	}
 	if !best.forms && g.hasForms() && !m.figure.NoCoefficients && !m.figure.NoCaption {
-		m.note("coefficients left out, there is no room for them below the panels")
+		m.note("sheet.noCoefficients")
 	}
 	if best.card.keyless {
-		m.note("names of atoms left out, there is no room for a key")
+		m.note("sheet.noKey")
 	}
 	if best.within {
 		// Rows are shared by all options.

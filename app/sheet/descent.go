@@ -1,7 +1,6 @@
 package sheet
 
 import (
-	"fmt"
 	"strconv"
 	"strings"
 
@@ -124,7 +123,7 @@ func (m *maker) descent() (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(fmt.Sprintf("%s: from %s to %s", g.Molecule.Title, c.symbol, c.subgroup), content)
+	return m.finish(m.say("sheet.titleDescent", g.Molecule.Title, c.symbol, c.subgroup), content)
 }
 
 func bareParents(c *correlation) []parent {
@@ -248,7 +247,7 @@ func (m *maker) branches(g *work.Group, parents []parent, c *correlation, d card
 		widest := min((between-2*fan)/float64(most)-1, 0.5*between, m.largest())
 		scale = min(maxScale, widest/view.Width)
 		if widest < leastPanel {
-			m.note("group orbitals left out, there is no room for them")
+			m.note("sheet.noOrbitals")
 			return m.branches(g, bared(parents), c, d)
 		}
 		room := m.room()

@@ -1,8 +1,6 @@
 package sheet
 
 import (
-	"fmt"
-
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/notation"
@@ -40,14 +38,14 @@ func (m *maker) frames() (*Sheet, error) {
 	both.view = picture.NewViewpoint(m.study.Camera, cells[0].body)
 	c := card{group: g, bare: true, lobes: len(m.study.Basis) > 0 && m.study.Projection.Irrep != ""}
 	c.lines = append(c.lines, cardLine{notation.Words(g.Molecule.Title + "   ").Then(notation.Group(g.Fit.Setting.Symbol)), m.title()})
-	for _, t := range renamed(g, e) {
+	for _, t := range m.renamed(g, e) {
 		c.lines = append(c.lines, cardLine{t, m.text()})
 	}
 	content, err := m.compose(both, c)
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(fmt.Sprintf("%s: two frames of %s", g.Molecule.Title, g.Fit.Setting.Symbol), content)
+	return m.finish(m.say("sheet.titleFrames", g.Molecule.Title, g.Fit.Setting.Symbol), content)
 }
 
 // secondStudy is the study in the second frame. A group orbital that is not
@@ -79,11 +77,11 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 	if name == "" {
 		name = "default"
 		if s.Z != "" || s.X != "" {
-			name = "by hand"
+			name = m.say("sheet.byHand")
 		}
 	}
-	c.title, c.name = notation.Words(name), "the frame "+name
-	c.form, c.small = notation.Sentence(notation.ShortConvention(g.Fit)), true
+	c.title, c.name = notation.Words(name), m.say("sheet.frame", name)
+	c.form, c.small = notation.Sentence(notation.ShortConventionIn(m.texts, g.Fit)), true
 	letters := plainLetters
 	if second {
 		for i := range letters {
@@ -103,7 +101,7 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 		irrep := o.Irreps[orbital.Irrep]
 		c.title = c.title.Then(notation.Words(":  "), notation.OrbitalText(irrep.Label))
 		if irrep.Dimension > 1 {
-			c.which = notation.Words(fmt.Sprintf("%d\u00a0of\u00a0%d", orbital.Partner+1, irrep.Dimension))
+			c.which = notation.Words(m.say("sheet.partnerOf", orbital.Partner+1, irrep.Dimension))
 		}
 	} else {
 		c.body = m.bodies.Molecule(g, s)
@@ -115,10 +113,10 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 
 // renamed says which irreps and which classes have other names in the second
 // frame.
-func renamed(g *work.Group, e *work.Exchange) []notation.Text {
+func (m *maker) renamed(g *work.Group, e *work.Exchange) []notation.Text {
 	here, there := g.Fit.Setting, e.Fit.Setting
 	if e.Names == nil {
-		return []notation.Text{notation.Words("All irreps keep their names.")}
+		return []notation.Text{notation.Words(m.say("sheet.sameNames"))}
 	}
 	var out []notation.Text
 	list := func(pairs [][2]notation.Text) notation.Text {
@@ -143,12 +141,12 @@ func renamed(g *work.Group, e *work.Exchange) []notation.Text {
 		}
 	}
 	if len(irreps) == 0 {
-		out = append(out, notation.Words("All irreps keep their names."))
+		out = append(out, notation.Words(m.say("sheet.sameNames")))
 	} else {
-		out = append(out, notation.Words("Irreps: ").Then(list(irreps)))
+		out = append(out, notation.Fill(m.say("sheet.irreps"), list(irreps)))
 	}
 	if len(classes) > 0 {
-		out = append(out, notation.Words("Classes: ").Then(list(classes)))
+		out = append(out, notation.Fill(m.say("sheet.classes"), list(classes)))
 	}
 	return out
 }

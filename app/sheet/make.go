@@ -3,8 +3,9 @@ package sheet
 import (
 	"context"
 	"errors"
-	"fmt"
+
 	"math"
+	"strings"
 
 	"lobewright/app/picture"
 	"lobewright/app/study"
@@ -41,7 +42,7 @@ func Make(ctx context.Context, w *work.Work, s study.Study) (*Sheet, error) {
 			return nil, err
 		}
 		m.cardless = true
-		m.note("axes, legend and names of atoms left out, there is no room for them")
+		m.note("sheet.noCard")
 		sheet, err = m.make()
 	}
 	return sheet, err
@@ -103,7 +104,8 @@ type maker struct {
 	// cardless leaves the card out, where a page of a fixed height has no room
 	// for it.
 	cardless bool
-	texts    map[float64]cardTexts
+	cards    map[float64]cardTexts
+	texts    assets.Texts // in the language of the figure
 }
 
 // The size of a slide: 13⅓ × 7½ inches, common practice for 16:9.
@@ -124,6 +126,7 @@ func newMaker(ctx context.Context, w *work.Work, s study.Study) (*maker, error) 
 	f := s.Figure
 	m := &maker{
 		typesetter: typesetter{fonts}, ctx: ctx, work: w, study: s, figure: f, palette: picture.PaletteOf(s.Look),
+		texts: assets.TextsIn(assets.Language(f.Language)),
 		width: f.Width, height: f.Height, size: f.TextSize,
 	}
 	switch {
@@ -236,9 +239,12 @@ func (m *maker) finish(title string, content block) (*Sheet, error) {
 }
 
 // note says something that the sheet leaves out.
-func (m *maker) note(format string, arguments ...any) {
-	m.notes = append(m.notes, fmt.Sprintf(format, arguments...))
+func (m *maker) note(key string, arguments ...any) {
+	m.notes = append(m.notes, m.say(key, arguments...))
 }
+
+// say is a text in the language of the figure.
+func (m *maker) say(key string, arguments ...any) string { return m.texts.Say(key, arguments...) }
 
 // group is the study's group.
 func (m *maker) group() (*work.Group, error) { return m.work.Group(m.ctx, m.study) }
@@ -271,7 +277,7 @@ func (m *maker) panel(body *picture.Body, v picture.Viewpoint, p picture.Panel, 
 			return out, err
 		}
 		if len(missing) > 0 {
-			m.note("no room for the names of %s beside the atoms", enumerated(missing))
+			m.note("sheet.noNames", m.enumerated(missing))
 		}
 	} else {
 		labels = body.Signs(v, p, m.size, m.fonts)
@@ -300,21 +306,13 @@ func (m *maker) label(l picture.Label) []Item {
 }
 
 // enumerated lists a few names and counts the others.
-func enumerated(names []string) string {
+func (m *maker) enumerated(names []string) string {
 	const most = 8
 	if n := len(names); n > most {
-		return fmt.Sprintf("%d atoms", n)
+		return m.say("sheet.atoms", n)
 	}
-	out := ""
-	for i, n := range names {
-		switch {
-		case i == 0:
-		case i == len(names)-1:
-			out += " and "
-		default:
-			out += ", "
-		}
-		out += n
+	if n := len(names); n > 1 {
+		return m.say("axes.and", strings.Join(names[:n-1], ", "), names[n-1])
 	}
-	return out
+	return strings.Join(names, "")
 }

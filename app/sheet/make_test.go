@@ -6,6 +6,7 @@ import (
 	"image"
 	"image/color"
 	"math"
+	"regexp"
 	"strings"
 	"testing"
 
@@ -59,7 +60,7 @@ var kinds = map[string]study.Study{
 var variants = map[string]func(*study.Study){
 	"":         func(*study.Study) {},
 	"serif":    func(s *study.Study) { s.Figure.Font = "serif"; s.Figure.NoLetters = true },
-	"printed":  func(s *study.Study) { s.Look.Signs = "printed"; s.Look.Shape = "polar" },
+	"printed":  func(s *study.Study) { s.Look.Signs = "printed"; s.Look.Shape = "polar"; s.Figure.Language = "de" },
 	"hatching": func(s *study.Study) { s.Look.Signs = "hatching"; s.Look.Style = "ink" },
 	"bare":     func(s *study.Study) { s.Figure.NoCard, s.Figure.NoLegend, s.Figure.NoCoefficients = true, true, true },
 }
@@ -374,6 +375,31 @@ func TestSheetsSayWhatTheyShow(t *testing.T) {
 			}
 			if !strings.Contains(text, w) {
 				t.Errorf("%s: does not say %q:\n%s", name, w, text)
+			}
+		}
+	}
+}
+
+func TestSheetsSpeakTheLanguageOfTheirFigure(t *testing.T) {
+	english := regexp.MustCompile(`(?i)\b(the|of|on|and|with|along|rule|axis|axes|are|atoms|orbitals?|as|levels|irreps|operations|carry|copy|left|longest|there|most)\b`)
+	for name, s := range kinds {
+		s.Figure.Language, s.Look.Displacements = "de", true
+		s.Figure.Width = 140
+		made := sheetOf(t, s)
+		all := append([]string{said(made), made.Title}, made.Notes...)
+		for _, item := range made.Items {
+			if p, ok := item.(*Panel); ok {
+				all = append(all, p.Name)
+			}
+		}
+		group, err := newWork().Group(t.Context(), s)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, text := range all {
+			text = strings.ReplaceAll(text, group.Molecule.Title, "")
+			if found := english.FindString(text); found != "" {
+				t.Errorf("%s says %q in %q", name, found, text)
 			}
 		}
 	}

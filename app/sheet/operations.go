@@ -1,7 +1,6 @@
 package sheet
 
 import (
-	"fmt"
 	"strconv"
 
 	"lobewright/app/notation"
@@ -43,14 +42,14 @@ func (m *maker) operations() (*Sheet, error) {
 	g.view = picture.NewViewpoint(m.study.Camera, bodies...)
 	c := card{group: b.Group, lobes: true, key: m.bodies.Carriers(b, m.study)}
 	c.lines = append(c.lines, cardLine{subject.text, m.title()})
-	if t := basisText(b, subject.shown); len(t) > 0 {
+	if t := m.basisText(b, subject.shown); len(t) > 0 {
 		c.lines = append(c.lines, cardLine{t, m.text()})
 	}
 	content, err := m.compose(g, c)
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(fmt.Sprintf("%s: where the operations of %s carry %s", b.Molecule.Title, b.Fit.Setting.Symbol, subject.name), content)
+	return m.finish(m.say("sheet.titleOperations", b.Molecule.Title, b.Fit.Setting.Symbol, subject.name), content)
 }
 
 func (m *maker) classText(g *work.Group, op work.Operation) notation.Text {
@@ -93,7 +92,7 @@ func (m *maker) subject() (subject, error) {
 		}
 	}
 	s.name = notation.Phi(n - 1)
-	s.text = notation.Words("Where the operations carry ").Then(notation.PhiText(strconv.Itoa(n)))
+	s.text = notation.Fill(m.say("sheet.operations"), notation.PhiText(strconv.Itoa(n)))
 	representation, err := m.representation(b)
 	if err != nil {
 		return s, err
@@ -129,10 +128,10 @@ func (m *maker) orbitalSubject() (subject, error) {
 	irrep := o.Irreps[chosen.Irrep]
 	label := notation.OrbitalText(irrep.Label)
 	s.name = notation.Orbital(irrep.Label)
-	s.text = notation.Words("Where the operations carry ").Then(label)
+	s.text = notation.Fill(m.say("sheet.operations"), label)
 	if irrep.Dimension > 1 {
-		s.text = s.text.Then(notation.Words(fmt.Sprintf(", partner %d", chosen.Partner+1)))
-		s.name += fmt.Sprintf(", partner %d", chosen.Partner+1)
+		s.text = notation.Fill(m.say("sheet.operationsPartner", chosen.Partner+1), label)
+		s.name = m.say("sheet.partner", s.name, chosen.Partner+1)
 	}
 	s.image = func(op work.Operation) notation.Text {
 		if op.Index < 0 || op.Index >= len(irrep.Matrices) {

@@ -33,7 +33,7 @@ func (m *maker) all() (*Sheet, error) {
 	if g.cells() > mostPanels {
 		return nil, message.Errorf("the basis has %d group orbitals; a sheet holds %d: choose an irrep", g.cells(), mostPanels)
 	}
-	return m.orbitalSheet(o, g, "all group orbitals")
+	return m.orbitalSheet(o, g, m.say("sheet.allOrbitals"))
 }
 
 // mostPanels bounds a sheet to what can still be looked at.
@@ -62,10 +62,10 @@ func (m *maker) orbitals(set bool) (*Sheet, error) {
 		if len(c.form) > 0 && !m.figure.NoCoefficients {
 			d.lines = append(d.lines, cardLine{c.form, m.text()})
 		}
-		if t := basisText(o.Basis, chosen.Coefficients); len(t) > 0 && m.width >= narrow {
+		if t := m.basisText(o.Basis, chosen.Coefficients); len(t) > 0 && m.width >= narrow {
 			d.lines = append(d.lines, cardLine{t, m.text()})
 		}
-		return m.single(o.Group, c, d, "group orbital "+label)
+		return m.single(o.Group, c, d, m.say("sheet.oneOrbital", label))
 	}
 	r := row{unit: o.Irreps[chosen.Irrep].Dimension}
 	for k := range o.Projection.Orbitals {
@@ -73,7 +73,7 @@ func (m *maker) orbitals(set bool) (*Sheet, error) {
 			r.cells = append(r.cells, m.orbitalCell(o, orbital))
 		}
 	}
-	return m.orbitalSheet(o, grid{rows: []row{r}, widest: m.largest()}, "the partners of "+label)
+	return m.orbitalSheet(o, grid{rows: []row{r}, widest: m.largest()}, m.say("sheet.partners", label))
 }
 
 // orbitalCell is the panel of a group orbital.
@@ -88,13 +88,13 @@ func (m *maker) orbitalCell(o *work.Orbitals, orbital *orbitals.GroupOrbital) ce
 	}
 	which := ""
 	if irrep.Dimension > 1 {
-		which = fmt.Sprintf("%d\u00a0of\u00a0%d", orbital.Partner+1, irrep.Dimension)
+		which = m.say("sheet.partnerOf", orbital.Partner+1, irrep.Dimension)
 	}
 	if n := o.Content[orbital.Irrep]; n > 1 {
 		if which != "" {
 			which += ", "
 		}
-		which += fmt.Sprintf("copy\u00a0%d", orbital.Copy+1)
+		which += m.say("sheet.copy", orbital.Copy+1)
 	}
 	if which != "" {
 		c.which, c.name = notation.Words(which), c.name+" "+strings.ReplaceAll(which, "\u00a0", " ")
@@ -120,7 +120,7 @@ func (m *maker) orbitalSheet(o *work.Orbitals, g grid, what string) (*Sheet, err
 	for i := range all {
 		all[i] = 1
 	}
-	if t := basisText(o.Basis, all); len(t) > 0 {
+	if t := m.basisText(o.Basis, all); len(t) > 0 {
 		c.lines = append(c.lines, cardLine{t, m.text()})
 	}
 	c.lines = append(c.lines, cardLine{m.contentText(o), m.text()})

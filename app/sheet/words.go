@@ -1,7 +1,6 @@
 package sheet
 
 import (
-	"fmt"
 	"slices"
 	"strconv"
 	"strings"
@@ -20,7 +19,7 @@ const longestForm = 56
 // functions occur by its letter alone, "φ1–φ10: d on Re1, Re2". Where that is
 // too long the numbers are left out, and then the names of the atoms: "s on 60
 // atoms".
-func basisText(b *work.Basis, coefficients []float64) notation.Text {
+func (m *maker) basisText(b *work.Basis, coefficients []float64) notation.Text {
 	parts := functionGroups(b, coefficients)
 	list := func(numbered, named bool) notation.Text {
 		var t notation.Text
@@ -31,15 +30,15 @@ func basisText(b *work.Basis, coefficients []float64) notation.Text {
 			if numbered {
 				t = t.Then(p.phis(), notation.Words(": "))
 			}
-			on := fmt.Sprintf(" on %d atoms", len(p.atoms))
+			on := m.say("sheet.onMany", len(p.atoms))
 			if named {
 				var parts []string
 				for _, run := range runsOf(p.atoms) {
 					parts = append(parts, strings.Join(run, "–"))
 				}
-				on = " on " + strings.Join(parts, ", ")
+				on = m.say("sheet.onAtoms", strings.Join(parts, ", "))
 			}
-			t = t.Then(p.name, notation.Words(on))
+			t = t.Then(notation.Fill(on, p.name))
 		}
 		return t
 	}

@@ -201,6 +201,7 @@ func (c *checker) look(l Look) {
 
 func (c *checker) figure(f Figure) {
 	c.word("figure.sheet", f.Sheet, "one", "all", "set", "operations", "molecule", "frames", "descent", "levels")
+	c.word("figure.language", f.Language, "en", "de")
 	c.word("figure.font", f.Font, "sans", "serif")
 	c.number("figure.textSize", f.TextSize, 0, 200)
 	c.number("figure.width", f.Width, 0, maxSize)

@@ -190,6 +190,9 @@ type Figure struct {
 	Sheet string `record:"sheet"`
 	// Slide makes the sheet 16:9, with text to be read from afar.
 	Slide bool `record:"slide"`
+	// Language is that of the words in figures, "en" or "de"; empty stands for
+	// that of the window, and for "en" outside of it.
+	Language string `record:"language"`
 	// Font is "sans" or "serif"; empty stands for "sans".
 	Font string `record:"font"`
 	// TextSize is in points; zero stands for 8, or 18 on a slide.

@@ -25,7 +25,7 @@ var full = Study{
 	Central: 7, Subgroup: "C4v:2",
 	Views:     []View{{"from above", Camera{Set: true, Elevation: 90}}, {"default", Camera{}}},
 	Look:      Look{"ink", "dark", "area", "polar", "hatching", true, true, true, true, true, true, true},
-	Figure:    Figure{"levels", true, "serif", 9, true, true, true, true, true, 85, 60, 600, true},
+	Figure:    Figure{"levels", true, "de", "serif", 9, true, true, true, true, true, 85, 60, 600, true},
 	Levels:    []Level{{"group", "Eg", 1, 25}},
 	Animation: Animation{2, 25, 800, 600, true},
 }
@@ -40,7 +40,7 @@ var full1 = Study{
 }
 
 const fullText = `{
-  "version": 2,
+  "version": 3,
   "structure": "pasted",
   "coordinates": [
     "1",
@@ -129,6 +129,7 @@ const fullText = `{
   "figure": {
     "sheet": "levels",
     "slide": true,
+    "language": "de",
     "font": "serif",
     "textSize": 9,
     "noLetters": true,
@@ -250,6 +251,17 @@ func TestFileOfVersion1IsRead(t *testing.T) {
 	}
 }
 
+// Version 2 knew everything but the language of figures.
+func TestFileOfVersion2IsRead(t *testing.T) {
+	text := strings.Replace(strings.Replace(fullText, `"version": 3`, `"version": 2`, 1), "    \"language\": \"de\",\n", "", 1)
+	want := full
+	want.Figure.Language = ""
+	s, err := Decode([]byte(text), "f")
+	if err != nil || !s.Equal(want) {
+		t.Errorf("%v: %#v", err, s)
+	}
+}
+
 func TestEveryChoiceCountsForEquality(t *testing.T) {
 	if !full.Equal(full) || !(Study{Basis: []string{}}).Equal(Study{}) {
 		t.Error("a study differs from itself")
@@ -318,6 +330,7 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 		"levels[1].height":      func(s *Study) { s.Levels = []Level{{Height: 101}} },
 		"animation.rate":        func(s *Study) { s.Animation.Rate = 1e4 },
 		"animation.width":       func(s *Study) { s.Animation.Width = 1 << 20 },
+		"figure.language":       func(s *Study) { s.Figure.Language = "la" },
 		"figure.width":          func(s *Study) { s.Figure.Width = -1 },
 		"figure.height":         func(s *Study) { s.Figure.Height = 1e9 },
 		"figure.resolution":     func(s *Study) { s.Figure.Resolution = math.NaN() },
@@ -343,7 +356,7 @@ func TestAHandWrittenFileIsToldWhereItIsWrong(t *testing.T) {
 		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:75: look.style: "gaudy" is not known; there are lit, ink`,
 		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:61: camera.zoom: a number is due, not a list",
 		fullText[:300]: "f:19: the file is cut off here",
-		strings.Replace(fullText, `"version": 2`, `"version": 3`, 1): "f:2: version: 3 is newer than this program, which reads up to version 2",
+		strings.Replace(fullText, `"version": 3`, `"version": 4`, 1): "f:2: version: 4 is newer than this program, which reads up to version 3",
 	} {
 		s, err := Decode([]byte(text), "f")
 		if err == nil || err.Error() != want {

@@ -172,7 +172,7 @@ func (u *ui) startWriting(path string, force bool, write figureWriter) {
 	if w.running {
 		return
 	}
-	s, structure := u.now(), u.state.Structure
+	s, structure := inLanguage(u.now()), u.state.Structure
 	ctx, stop := context.WithCancel(context.Background())
 	*w = writing{running: true, name: filepath.Base(path), stop: stop, done: make(chan struct{})}
 	done := w.done

@@ -99,7 +99,7 @@ const (
 // want has the sheet made for a room in units at a number of pixels a unit,
 // unless it is being made or there already.
 func (p *preview) want(width, height, scale float64) {
-	key := previewKey{shownOn(p.u.now()), int((width - 2*pad) * scale), int((height - previewHead - pad) * scale), scale}
+	key := previewKey{shownOn(inLanguage(p.u.now())), int((width - 2*pad) * scale), int((height - previewHead - pad) * scale), scale}
 	if k := p.asked; k.width == key.width && k.height == key.height && k.scale == key.scale && k.study.Equal(key.study) {
 		return
 	}

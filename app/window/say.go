@@ -13,8 +13,9 @@ import (
 // A speech is a language in force: the texts of the window by their keys, and
 // how messages from below are said; tongue is nil in English.
 type speech struct {
-	texts  assets.Texts
-	tongue *message.Language
+	language assets.Language
+	texts    assets.Texts
+	tongue   *message.Language
 }
 
 // spoken is the language in force. There is one window in a process, so there
@@ -23,7 +24,7 @@ var spoken atomic.Pointer[speech]
 
 // speak chooses the language of everything that is made from now on.
 func speak(l assets.Language) {
-	s := speech{texts: assets.TextsIn(l)}
+	s := speech{language: l, texts: assets.TextsIn(l)}
 	if l == assets.German {
 		s.tongue = &message.Language{Forms: assets.Sentences(l), Point: ",", Thousands: "."}
 	}
@@ -41,6 +42,14 @@ func texts() assets.Texts {
 		return s.texts
 	}
 	return assets.TextsIn(assets.English)
+}
+
+// language is the language in force.
+func language() assets.Language {
+	if s := spoken.Load(); s != nil {
+		return s.language
+	}
+	return assets.English
 }
 
 // tongue is how messages from below are said in the language in force.

@@ -11,6 +11,7 @@ import (
 
 	"lobewright/app/sheet"
 	"lobewright/app/study"
+	"lobewright/assets"
 )
 
 // A word of a study with the keys of what it is called and of its hint.
@@ -45,8 +46,18 @@ var (
 	signOptions = []option{
 		{"", "figure.tones", "figure.tonesHint"}, {"hatching", "figure.hatching", "figure.hatchingHint"}, {"printed", "figure.printed", "figure.printedHint"},
 	}
-	fontOptions = []option{{"sans", "figure.sans", "figure.sansHint"}, {"serif", "figure.serif", "figure.serifHint"}}
+	languageOptions = []option{{string(assets.English), "menu.languageEnglish", "figure.languageHint"}, {string(assets.German), "menu.languageGerman", "figure.languageHint"}}
+	fontOptions     = []option{{"sans", "figure.sans", "figure.sansHint"}, {"serif", "figure.serif", "figure.serifHint"}}
 )
+
+// inLanguage is a study whose figures speak the language in force, unless it
+// chooses one.
+func inLanguage(s study.Study) study.Study {
+	if s.Figure.Language == "" && language() != assets.English {
+		s.Figure.Language = string(language())
+	}
+	return s
+}
 
 // setFigure is a step that changes the figure or the animation.
 func (u *ui) setFigure(change func(*study.Study)) {
@@ -155,6 +166,19 @@ func (d *pageDrawing) sheetSettings() {
 	d.label(say("figure.resolution"))
 	x = pad
 	d.numbers(&x, "resolution", "", say("figure.resolutionHint"), []float64{150, 300, 600}, f.TheResolution(), d.setResolution, d.askResolution)
+	d.endChoices()
+
+	d.label(say("figure.language"))
+	x = pad
+	chosen := f.Language
+	if chosen == "" {
+		chosen = string(language())
+	}
+	for _, o := range languageOptions {
+		d.option(&x, "language "+o.word, say(o.key), say(o.hint), chosen == o.word, func() {
+			d.setFigure(func(s *study.Study) { s.Figure.Language = o.word })
+		})
+	}
 	d.endChoices()
 
 	d.label(say("figure.type"))
