@@ -251,7 +251,7 @@ func functionsText(p *work.Play, terms []orbitals.Term, texts assets.Texts) nota
 	t := sumText(terms, p.Operation.Family, notation.PhiText)
 	if texts != nil && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
 		f := p.Basis.Functions[terms[0].Function]
-		t = t.Then(notation.Words(" ("), notation.Fill(texts.Say("sheet.onAtoms", p.Group.AtomNames()[f.Site]), notation.Function(f.Name)), notation.Words(")"))
+		t = t.Then(notation.Words(" ("), notation.Fill(texts.Say("captions.onAtoms", p.Group.AtomNames()[f.Site]), notation.Function(f.Name)), notation.Words(")"))
 	}
 	return t
 }

@@ -129,7 +129,7 @@ func (m *maker) drawCard(c card, at placedCard, p plan) (block, error) {
 		x = max(0, (at.w-at.key.Width-at.triad.w-innerGap)/2)
 	}
 	if at.key.Width > 0 {
-		key, err := m.panel(c.key, p.grid.view, at.key, m.say("sheet.atomsAndNames"), true)
+		key, err := m.panel(c.key, p.grid.view, at.key, m.say("captions.atomsAndNames"), true)
 		if err != nil {
 			return out, err
 		}
@@ -245,16 +245,16 @@ func (m *maker) displacementText(g *work.Group) notation.Text {
 		return nil
 	}
 	if factor == 1 {
-		return notation.Words(m.say("sheet.arrowsTrue", notation.Decimal(longest, 3)))
+		return notation.Words(m.say("captions.arrowsTrue", notation.Decimal(longest, 3)))
 	}
-	return notation.Words(m.say("sheet.arrowsTimes", factor, notation.Decimal(longest, 3)))
+	return notation.Words(m.say("captions.arrowsTimes", factor, notation.Decimal(longest, 3)))
 }
 
 // lobeSizes are the sentences for what goes with |c|, in full and short.
 var lobeSizes = map[string][2]string{
-	"length": {"sheet.lobeLength", "sheet.lobeLengthShort"},
-	"area":   {"sheet.lobeArea", "sheet.lobeAreaShort"},
-	"volume": {"sheet.lobeVolume", "sheet.lobeVolumeShort"},
+	"length": {"captions.lobeLength", "captions.lobeLengthShort"},
+	"area":   {"captions.lobeArea", "captions.lobeAreaShort"},
+	"volume": {"captions.lobeVolume", "captions.lobeVolumeShort"},
 }
 
 // legendText says what the size and the shape of a lobe mean.
@@ -272,9 +272,9 @@ func (m *maker) legendText() notation.Text {
 	plotted := notation.Text{{Text: "Y", Italic: true}}
 	switch m.study.Look.Shape {
 	case "polar":
-		return notation.Fill(m.say("sheet.polarPlot"), t, bar.Then(plotted, bar))
+		return notation.Fill(m.say("captions.polarPlot"), t, bar.Then(plotted, bar))
 	case "square":
-		return notation.Fill(m.say("sheet.polarPlot"), t, plotted.Then(notation.Text{{Text: "2", Place: notation.Super}}))
+		return notation.Fill(m.say("captions.polarPlot"), t, plotted.Then(notation.Text{{Text: "2", Place: notation.Super}}))
 	}
 	return t
 }

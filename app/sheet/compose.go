@@ -45,10 +45,10 @@ func (m *maker) compose(g grid, c card) (block, error) {
 		return block{}, errTooSmall
 	}
 	if !best.forms && g.hasForms() && !m.figure.NoCoefficients && !m.figure.NoCaption {
-		m.note("sheet.noCoefficients")
+		m.note("captions.noCoefficients")
 	}
 	if best.card.keyless {
-		m.note("sheet.noKey")
+		m.note("captions.noKey")
 	}
 	if best.within {
 		// Rows are shared by all options.

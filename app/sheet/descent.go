@@ -123,7 +123,7 @@ func (m *maker) descent() (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(m.say("sheet.titleDescent", g.Molecule.Title, c.symbol, c.subgroup), content)
+	return m.finish(m.say("captions.titleDescent", g.Molecule.Title, c.symbol, c.subgroup), content)
 }
 
 func bareParents(c *correlation) []parent {
@@ -247,7 +247,7 @@ func (m *maker) branches(g *work.Group, parents []parent, c *correlation, d card
 		widest := min((between-2*fan)/float64(most)-1, 0.5*between, m.largest())
 		scale = min(maxScale, widest/view.Width)
 		if widest < leastPanel {
-			m.note("sheet.noOrbitals")
+			m.note("captions.noOrbitals")
 			return m.branches(g, bared(parents), c, d)
 		}
 		room := m.room()

@@ -45,7 +45,7 @@ func (m *maker) frames() (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(m.say("sheet.titleFrames", g.Molecule.Title, g.Fit.Setting.Symbol), content)
+	return m.finish(m.say("captions.titleFrames", g.Molecule.Title, g.Fit.Setting.Symbol), content)
 }
 
 // secondStudy is the study in the second frame. A group orbital that is not
@@ -77,10 +77,10 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 	if name == "" {
 		name = "default"
 		if s.Z != "" || s.X != "" {
-			name = m.say("sheet.byHand")
+			name = m.say("captions.byHand")
 		}
 	}
-	c.title, c.name = notation.Words(name), m.say("sheet.frame", name)
+	c.title, c.name = notation.Words(name), m.say("captions.frame", name)
 	c.form, c.small = notation.Sentence(notation.ShortConventionIn(m.texts, g.Fit)), true
 	letters := plainLetters
 	if second {
@@ -101,7 +101,7 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 		irrep := o.Irreps[orbital.Irrep]
 		c.title = c.title.Then(notation.Words(":  "), notation.OrbitalText(irrep.Label))
 		if irrep.Dimension > 1 {
-			c.which = notation.Words(m.say("sheet.partnerOf", orbital.Partner+1, irrep.Dimension))
+			c.which = notation.Words(m.say("captions.partnerOf", orbital.Partner+1, irrep.Dimension))
 		}
 	} else {
 		c.body = m.bodies.Molecule(g, s)
@@ -116,7 +116,7 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 func (m *maker) renamed(g *work.Group, e *work.Exchange) []notation.Text {
 	here, there := g.Fit.Setting, e.Fit.Setting
 	if e.Names == nil {
-		return []notation.Text{notation.Words(m.say("sheet.sameNames"))}
+		return []notation.Text{notation.Words(m.say("captions.sameNames"))}
 	}
 	var out []notation.Text
 	list := func(pairs [][2]notation.Text) notation.Text {
@@ -141,12 +141,12 @@ func (m *maker) renamed(g *work.Group, e *work.Exchange) []notation.Text {
 		}
 	}
 	if len(irreps) == 0 {
-		out = append(out, notation.Words(m.say("sheet.sameNames")))
+		out = append(out, notation.Words(m.say("captions.sameNames")))
 	} else {
-		out = append(out, notation.Fill(m.say("sheet.irreps"), list(irreps)))
+		out = append(out, notation.Fill(m.say("captions.irreps"), list(irreps)))
 	}
 	if len(classes) > 0 {
-		out = append(out, notation.Fill(m.say("sheet.classes"), list(classes)))
+		out = append(out, notation.Fill(m.say("captions.classes"), list(classes)))
 	}
 	return out
 }

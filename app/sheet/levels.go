@@ -57,21 +57,21 @@ func (m *maker) levels() (*Sheet, error) {
 	d := card{group: o.Group, lobes: true}
 	name := o.Group.AtomNames()[atom]
 	d.lines = append(d.lines, cardLine{m.contentText(o), m.text()},
-		cardLine{notation.Words(m.say("sheet.levelsText", name)), m.quiet()},
+		cardLine{notation.Words(m.say("captions.levelsText", name)), m.quiet()},
 		cardLine{notation.Words(m.heightsText()), m.quiet()})
 	view := picture.NewViewpoint(m.study.Camera, left[0].body, right[0].body)
 	content, err := m.sketch(left, right, view, d)
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(m.say("sheet.titleLevels", o.Molecule.Title, name), content)
+	return m.finish(m.say("captions.titleLevels", o.Molecule.Title, name), content)
 }
 
 func (m *maker) heightsText() string {
 	if len(m.study.Levels) > 0 {
-		return m.say("sheet.levelsByHand")
+		return m.say("captions.levelsByHand")
 	}
-	return m.say("sheet.levelsEven")
+	return m.say("captions.levelsEven")
 }
 
 // centralAtom is the one that the study chooses, or the one that all operations
@@ -219,7 +219,7 @@ func (m *maker) sketch(left, right []level, view picture.Viewpoint, d card) (blo
 	if max(view.Width, view.Height)*scale >= 0.8*leastPanel {
 		panel = picture.Panel{Width: view.Width*scale + 1, Height: view.Height*scale + 0.7, Scale: scale}
 	} else {
-		m.note("sheet.noPictures")
+		m.note("captions.noPictures")
 	}
 	caption := 0.0
 	for _, c := range columns {

@@ -42,7 +42,7 @@ func Make(ctx context.Context, w *work.Work, s study.Study) (*Sheet, error) {
 			return nil, err
 		}
 		m.cardless = true
-		m.note("sheet.noCard")
+		m.note("captions.noCard")
 		sheet, err = m.make()
 	}
 	return sheet, err
@@ -277,7 +277,7 @@ func (m *maker) panel(body *picture.Body, v picture.Viewpoint, p picture.Panel, 
 			return out, err
 		}
 		if len(missing) > 0 {
-			m.note("sheet.noNames", m.enumerated(missing))
+			m.note("captions.noNames", m.enumerated(missing))
 		}
 	} else {
 		labels = body.Signs(v, p, m.size, m.fonts)
@@ -309,7 +309,7 @@ func (m *maker) label(l picture.Label) []Item {
 func (m *maker) enumerated(names []string) string {
 	const most = 8
 	if n := len(names); n > most {
-		return m.say("sheet.atoms", n)
+		return m.say("captions.atoms", n)
 	}
 	if n := len(names); n > 1 {
 		return m.say("axes.and", strings.Join(names[:n-1], ", "), names[n-1])

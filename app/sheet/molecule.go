@@ -17,12 +17,12 @@ func (m *maker) molecule(elements bool) (*Sheet, error) {
 		return nil, err
 	}
 	first := cell{
-		body: m.bodies.Molecule(g, m.study), named: true, name: m.say("sheet.structure"),
+		body: m.bodies.Molecule(g, m.study), named: true, name: m.say("captions.structure"),
 		title: notation.Words(g.Molecule.Title + "   ").Then(notation.Group(g.Fit.Setting.Symbol)),
 	}
 	kinds := elementKinds(g, m.study.Angle)
 	if !elements || m.study.Operation != "" || len(kinds) == 0 {
-		return m.single(g, first, card{group: g, lines: []cardLine{{first.title, m.title()}}}, m.say("sheet.structureInAxes"))
+		return m.single(g, first, card{group: g, lines: []cardLine{{first.title, m.title()}}}, m.say("captions.structureInAxes"))
 	}
 	r := row{unit: 1}
 	alone := m.study // each panel has the elements of its class
@@ -43,7 +43,7 @@ func (m *maker) molecule(elements bool) (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(m.say("sheet.titleElements", g.Molecule.Title, g.Fit.Setting.Symbol), content)
+	return m.finish(m.say("captions.titleElements", g.Molecule.Title, g.Fit.Setting.Symbol), content)
 }
 
 // An elementKind is symmetry elements of one class.

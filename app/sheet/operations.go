@@ -49,7 +49,7 @@ func (m *maker) operations() (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	return m.finish(m.say("sheet.titleOperations", b.Molecule.Title, b.Fit.Setting.Symbol, subject.name), content)
+	return m.finish(m.say("captions.titleOperations", b.Molecule.Title, b.Fit.Setting.Symbol, subject.name), content)
 }
 
 func (m *maker) classText(g *work.Group, op work.Operation) notation.Text {
@@ -92,7 +92,7 @@ func (m *maker) subject() (subject, error) {
 		}
 	}
 	s.name = notation.Phi(n - 1)
-	s.text = notation.Fill(m.say("sheet.operations"), notation.PhiText(strconv.Itoa(n)))
+	s.text = notation.Fill(m.say("captions.operations"), notation.PhiText(strconv.Itoa(n)))
 	representation, err := m.representation(b)
 	if err != nil {
 		return s, err
@@ -128,10 +128,10 @@ func (m *maker) orbitalSubject() (subject, error) {
 	irrep := o.Irreps[chosen.Irrep]
 	label := notation.OrbitalText(irrep.Label)
 	s.name = notation.Orbital(irrep.Label)
-	s.text = notation.Fill(m.say("sheet.operations"), label)
+	s.text = notation.Fill(m.say("captions.operations"), label)
 	if irrep.Dimension > 1 {
-		s.text = notation.Fill(m.say("sheet.operationsPartner", chosen.Partner+1), label)
-		s.name = m.say("sheet.partner", s.name, chosen.Partner+1)
+		s.text = notation.Fill(m.say("captions.operationsPartner", chosen.Partner+1), label)
+		s.name = m.say("captions.partner", s.name, chosen.Partner+1)
 	}
 	s.image = func(op work.Operation) notation.Text {
 		if op.Index < 0 || op.Index >= len(irrep.Matrices) {

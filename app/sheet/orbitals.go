@@ -33,7 +33,7 @@ func (m *maker) all() (*Sheet, error) {
 	if g.cells() > mostPanels {
 		return nil, message.Errorf("the basis has %d group orbitals; a sheet holds %d: choose an irrep", g.cells(), mostPanels)
 	}
-	return m.orbitalSheet(o, g, m.say("sheet.allOrbitals"))
+	return m.orbitalSheet(o, g, m.say("captions.allOrbitals"))
 }
 
 // mostPanels bounds a sheet to what can still be looked at.
@@ -65,7 +65,7 @@ func (m *maker) orbitals(set bool) (*Sheet, error) {
 		if t := m.basisText(o.Basis, chosen.Coefficients); len(t) > 0 && m.width >= narrow {
 			d.lines = append(d.lines, cardLine{t, m.text()})
 		}
-		return m.single(o.Group, c, d, m.say("sheet.oneOrbital", label))
+		return m.single(o.Group, c, d, m.say("captions.oneOrbital", label))
 	}
 	r := row{unit: o.Irreps[chosen.Irrep].Dimension}
 	for k := range o.Projection.Orbitals {
@@ -73,7 +73,7 @@ func (m *maker) orbitals(set bool) (*Sheet, error) {
 			r.cells = append(r.cells, m.orbitalCell(o, orbital))
 		}
 	}
-	return m.orbitalSheet(o, grid{rows: []row{r}, widest: m.largest()}, m.say("sheet.partners", label))
+	return m.orbitalSheet(o, grid{rows: []row{r}, widest: m.largest()}, m.say("captions.partners", label))
 }
 
 // orbitalCell is the panel of a group orbital.
@@ -88,13 +88,13 @@ func (m *maker) orbitalCell(o *work.Orbitals, orbital *orbitals.GroupOrbital) ce
 	}
 	which := ""
 	if irrep.Dimension > 1 {
-		which = m.say("sheet.partnerOf", orbital.Partner+1, irrep.Dimension)
+		which = m.say("captions.partnerOf", orbital.Partner+1, irrep.Dimension)
 	}
 	if n := o.Content[orbital.Irrep]; n > 1 {
 		if which != "" {
 			which += ", "
 		}
-		which += m.say("sheet.copy", orbital.Copy+1)
+		which += m.say("captions.copy", orbital.Copy+1)
 	}
 	if which != "" {
 		c.which, c.name = notation.Words(which), c.name+" "+strings.ReplaceAll(which, "\u00a0", " ")

@@ -54,7 +54,7 @@ func (t tree) draw(parents []parent, c *correlation, view picture.Viewpoint) (bl
 			middle := y + t.rowHeight/2
 			middles = append(middles, middle)
 			for k, body := range b.bodies {
-				panel, err := m.panel(body, view, t.panel, m.say("sheet.as", p.label, b.label), false)
+				panel, err := m.panel(body, view, t.panel, m.say("captions.as", p.label, b.label), false)
 				if err != nil {
 					return out, err
 				}

@@ -30,13 +30,13 @@ func (m *maker) basisText(b *work.Basis, coefficients []float64) notation.Text {
 			if numbered {
 				t = t.Then(p.phis(), notation.Words(": "))
 			}
-			on := m.say("sheet.onMany", len(p.atoms))
+			on := m.say("captions.onMany", len(p.atoms))
 			if named {
 				var parts []string
 				for _, run := range runsOf(p.atoms) {
 					parts = append(parts, strings.Join(run, "–"))
 				}
-				on = m.say("sheet.onAtoms", strings.Join(parts, ", "))
+				on = m.say("captions.onAtoms", strings.Join(parts, ", "))
 			}
 			t = t.Then(notation.Fill(on, p.name))
 		}

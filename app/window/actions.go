@@ -7,7 +7,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
-	"strconv"
+
 	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
@@ -356,8 +356,8 @@ func (u *ui) setTolerance(t float64) {
 }
 
 func (u *ui) askTolerance() {
-	u.ask(say("given.askTolerance"), say("given.askToleranceText"), strconv.FormatFloat(u.now().TheTolerance(), 'g', 6, 64), func(text string) error {
-		t, err := strconv.ParseFloat(strings.TrimSpace(strings.TrimSuffix(strings.ReplaceAll(text, ",", "."), "Å")), 64)
+	u.ask(say("given.askTolerance"), say("given.askToleranceText"), plainText(u.now().TheTolerance()), func(text string) error {
+		t, err := readNumber(text, "Å")
 		if err != nil || !(t > 0) || t > 10 {
 			return errors.New(say("errors.tolerance"))
 		}

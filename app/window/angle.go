@@ -147,7 +147,7 @@ func matrixText(m *mat.Dense) notation.Text {
 			if j > 0 {
 				text += "  "
 			}
-			text += notation.Minus(notation.Short(m.At(i, j), 3)) // at any angle there is some long cosine
+			text += shortText(m.At(i, j), 3) // at any angle there is some long cosine
 		}
 	}
 	if n > 1 {

@@ -211,7 +211,7 @@ func combinationText(c []float64) notation.Text {
 	if form, ok := orbitals.FindClosedForm(c); ok {
 		return notation.ClosedForm(form)
 	}
-	return phiTexts(strings.Join(notation.Combination(notation.Terms(c), notation.DecimalCoefficient), " "))
+	return spelledText(phiTexts(strings.Join(notation.Combination(notation.Terms(c), notation.DecimalCoefficient), " ")))
 }
 
 // phiTexts sets the names of functions in a plain combination ("φ3" with the
@@ -270,5 +270,5 @@ func entry(x float64) string {
 	if exact, ok := notation.Exact(x); ok && notation.Width(exact) <= 6 {
 		return exact
 	}
-	return notation.Short(x, 3)
+	return shortText(x, 3)
 }

@@ -69,7 +69,7 @@ func (u *ui) drawWith(b *board, y, width float64, partners []orbitals.GroupOrbit
 			if k > 0 {
 				t = t.Then(notation.Words(","))
 			}
-			t = t.Then(notation.Words(" "), notation.Named(m.With(c, k), names, notation.Shell))
+			t = t.Then(notation.Words(" "), spelledText(notation.Named(m.With(c, k), names, notation.Shell)))
 		}
 	}
 	y = b.paragraph(pad, y+7, width, t, quiet)
@@ -205,7 +205,7 @@ type slider struct {
 // drawSlider draws a slider with its marks; a click on the number asks for one.
 func (u *ui) drawSlider(b *board, y, width float64, s slider) float64 {
 	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
-	number := notation.Words(notation.Decimal(s.angle, decimals(s.angle)) + "°")
+	number := notation.Words(decimalText(s.angle, decimals(s.angle)) + "°")
 	w := b.measure(notation.Words("359.9°"), quiet) + 8
 	lead := b.text(pad, y+15, notation.Words(s.label), quiet) + 12
 	left, long := pad+lead, width-lead-w-8

@@ -177,9 +177,9 @@ func (d *givenDrawing) group() {
 	}
 	d.board.text(x+10, d.y+groupSize, notation.Words(count), d.quiet)
 	d.y += groupSize + 10
-	off := say("given.off", notation.Decimal(fit.Deviation, 3))
+	off := say("given.off", decimalText(fit.Deviation, 3))
 	if fit.Deviation >= 0.0005 && fit.Worst < len(st.Group.Core) {
-		off = say("given.offMost", notation.Decimal(fit.Deviation, 3), st.Group.CoreNames()[fit.Worst])
+		off = say("given.offMost", decimalText(fit.Deviation, 3), st.Group.CoreNames()[fit.Worst])
 	}
 	d.words(off, d.plain)
 	d.tolerance()
@@ -213,7 +213,7 @@ func (d *givenDrawing) tolerance() {
 	d.y += 2
 	x := float64(pad)
 	x += d.board.text(x, d.y+textSize, notation.Words(say("given.allowed")+" "), d.plain)
-	value := notation.Minus(strconv.FormatFloat(now, 'g', 4, 64)) + " Å"
+	value := plainText(now) + " Å"
 	w := d.board.text(x, d.y+textSize, notation.Words(value), d.plain)
 	d.board.fill(x, d.y+textSize+3, w, 1, d.board.palette.Rule)
 	d.board.spot(spot{x: x - 3, y: d.y - 3, width: w + 6, height: 22, name: "tolerance", hint: say("given.allowedHint"), do: d.askTolerance})

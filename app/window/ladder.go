@@ -60,7 +60,7 @@ func (d *pageDrawing) ladder() {
 func (d *pageDrawing) asFound() {
 	s := d.now()
 	d.row("as found", say("frames.asFoundHint"), s.As == "", func() { d.takeGroup("") }, func() {
-		d.words(say("frames.asFound", notation.Minus(strconv.FormatFloat(s.TheTolerance(), 'g', 4, 64))), d.plain)
+		d.words(say("frames.asFound", plainText(s.TheTolerance())), d.plain)
 	})
 }
 
@@ -95,8 +95,8 @@ func (d *pageDrawing) ladderRow(n *symmetry.Nearness, shares []work.Share, of in
 	d.row("group "+name, say("frames.rowHint", symbol), on, func() { d.takeGroup(name) }, func() {
 		y := d.y + textSize
 		d.board.text(pad+d.left, y, notation.Group(symbol), d.strong)
-		d.board.text(pad+deviationColumn, y, notation.Words(notation.Decimal(n.Fit.Deviation, 3)), right)
-		d.board.text(pad+measureColumn, y, notation.Words(notation.Decimal(n.Measure, 3)), right)
+		d.board.text(pad+deviationColumn, y, notation.Words(decimalText(n.Fit.Deviation, 3)), right)
+		d.board.text(pad+measureColumn, y, notation.Words(decimalText(n.Measure, 3)), right)
 		d.y += textSize + 5
 		if text := distortionText(shares); len(text) > 0 {
 			d.line(text, d.quiet)
@@ -153,14 +153,14 @@ func distortionText(shares []work.Share) notation.Text {
 		if len(t) > 0 {
 			t = t.Then(notation.Words(",  "))
 		}
-		t = t.Then(notation.OrbitalText(p.Irrep), notation.Words("\u00a0"+notation.Decimal(p.Amount, 3)))
+		t = t.Then(notation.OrbitalText(p.Irrep), notation.Words("\u00a0"+decimalText(p.Amount, 3)))
 		if len(p.Partners) > 1 {
 			text := ""
 			for i, a := range p.Partners {
 				if i > 0 {
 					text += "\u00a0|\u00a0"
 				}
-				text += notation.Decimal(a, 3)
+				text += decimalText(a, 3)
 			}
 			t = t.Then(notation.Words("\u00a0(" + text + ")"))
 		}
@@ -248,7 +248,7 @@ func displacementNote(g *work.Group) notation.Text {
 	case factor == 0:
 		return notation.Words(say("frames.noDisplacement"))
 	case factor == 1:
-		return notation.Words(say("frames.displacementsTrue", notation.Decimal(longest, 3)))
+		return notation.Words(say("frames.displacementsTrue", decimalText(longest, 3)))
 	}
-	return notation.Words(say("frames.displacementsTimes", strconv.Itoa(int(math.Round(factor))), notation.Decimal(longest, 3)))
+	return notation.Words(say("frames.displacementsTimes", strconv.Itoa(int(math.Round(factor))), decimalText(longest, 3)))
 }

@@ -217,8 +217,8 @@ func (u *ui) edgeOperation(last bool) {
 
 // operationHint says in words what an operation does.
 func operationHint(op work.Operation) string {
-	axis := notation.Vector(op.Axis[:], 3)
-	degrees := notation.Short(op.Angle*180/math.Pi, 1) + "°"
+	axis := vectorText(op.Axis[:], 3)
+	degrees := shortText(op.Angle*180/math.Pi, 1) + "°"
 	switch {
 	case op.HasCentre():
 		return say("ledger.inversion")

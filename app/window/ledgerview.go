@@ -162,7 +162,7 @@ func (u *ui) makeSheet(measure func(notation.Text, style) float64) *ledgerSheet 
 			c.set[2] = notation.Words(weightText(row.Weight))
 			sum := notation.Terms(row.Sum)
 			c.set[3] = abbreviated(sum, notation.PhiText)
-			lines = append(lines, say("ledger.hintSum", notation.CombinationText(sum, notation.PhiText, notation.OneKind(sum)).String()))
+			lines = append(lines, say("ledger.hintSum", combination(sum, notation.PhiText, notation.OneKind(sum)).String()))
 		}
 		c.hint = strings.Join(lines, "; ")
 		c.width = columnWidth(c, measure)
@@ -258,7 +258,7 @@ func (u *ui) imageOf(op work.Operation) (notation.Text, string) {
 		return nil, ""
 	}
 	text := abbreviated(terms, name)
-	if full := notation.CombinationText(terms, name, notation.OneKind(terms)).String(); full != text.String() {
+	if full := combination(terms, name, notation.OneKind(terms)).String(); full != text.String() {
 		return text, full
 	}
 	return text, ""
@@ -277,9 +277,9 @@ func abbreviated(terms []orbitals.Term, name func(string) notation.Text) notatio
 		}
 	}
 	if len(terms) <= mostTerms {
-		return notation.CombinationText(terms, name, write)
+		return combination(terms, name, write)
 	}
-	return notation.CombinationText(terms[:mostTerms-1], name, write).Then(notation.Words(say("ledger.andMore", len(terms)-mostTerms+1)))
+	return combination(terms[:mostTerms-1], name, write).Then(notation.Words(say("ledger.andMore", len(terms)-mostTerms+1)))
 }
 
 // weightShort says how the operations are weighed: D with its indices, or χ.
@@ -318,7 +318,7 @@ func (u *ui) ledgerEnd(l *work.Ledger) []ledgerEnd {
 	}
 	total := notation.Terms(l.Total())
 	out := []ledgerEnd{
-		{text: notation.Words(say("ledger.total") + " ").Then(totalText(l)), hint: notation.CombinationText(total, notation.PhiText, notation.OneKind(total)).String()},
+		{text: notation.Words(say("ledger.total") + " ").Then(totalText(l)), hint: combination(total, notation.PhiText, notation.OneKind(total)).String()},
 		{text: fill(say("ledger.norm"), notation.Words(table.NormText(l.Norm)))},
 		{text: notation.Words("⇒ ").Then(table.CombinationForm(l.Result()))},
 	}
@@ -377,7 +377,7 @@ func (u *ui) amongText(l *work.Ledger) notation.Text {
 		n, _ := strconv.Atoi(number)
 		return u.orbitalText(&all.Projection.Orbitals[n-1])
 	}
-	return notation.CombinationText(among, name, notation.OneKind(among))
+	return combination(among, name, notation.OneKind(among))
 }
 
 // zeroEnd says why nothing is left.
@@ -490,5 +490,5 @@ func weightText(x float64) string {
 	if exact := notation.ExactCoefficient(x); notation.Width(exact) <= longest {
 		return sign + exact
 	}
-	return sign + notation.Short(x, 3)
+	return sign + shortText(x, 3)
 }

@@ -76,9 +76,8 @@ func Run(ctx context.Context, o Options) (err error) {
 		return errors.New("the window cannot be opened: " + reason)
 	}
 	mark("the toolkit has a window")
-	spoken := languageOf(kept.Preferences())
-	speak(spoken)
-	speakToolkit(spoken)
+	speak(languageOf(kept.Preferences()))
+	speakToolkit()
 	u := newUI(a, win, kept, o.Version, fyne.Do)
 	mark("the panes are made")
 	for _, n := range notes {

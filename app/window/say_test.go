@@ -14,7 +14,10 @@ import (
 	"strings"
 	"testing"
 
+	"fyne.io/fyne/v2/lang"
+
 	"lobewright/app/notation"
+	"lobewright/app/study"
 	"lobewright/assets"
 )
 
@@ -254,4 +257,79 @@ func TestTheWholeWindowSpeaksTheChosenLanguage(t *testing.T) {
 	if got := b.win.MainMenu().Items[0].Label; got != "File" {
 		t.Errorf("the first menu is %q", got)
 	}
+}
+
+// The words of the menu of an entry, which the toolkit makes, follow at once,
+// whatever the language of the system.
+func TestTheToolkitSpeaksTheChosenLanguage(t *testing.T) {
+	defer func() {
+		speak(assets.English)
+		speakToolkit()
+	}()
+	b := newBench(t, t.TempDir())
+	for _, l := range []assets.Language{assets.German, assets.English, assets.German} {
+		b.setLanguage(string(l))
+		for english, german := range map[string]string{"Cut": "Ausschneiden", "Copy": "Kopieren", "Paste": "Einfügen", "Select all": "Alles auswählen", "Undo": "Rückgängig"} {
+			want := english
+			if l == assets.German {
+				want = german
+			}
+			if got := lang.L(english); got != want {
+				t.Errorf("%q, want %q", got, want)
+			}
+		}
+	}
+}
+
+func TestNumbersOnTheScreenHaveTheDecimalPointOfTheLanguage(t *testing.T) {
+	defer speak(assets.English)
+	for l, want := range map[assets.Language][]string{
+		assets.English: {"0.125", "0.5", "(0.50, 0, −0.25)", "0.408 φ1 − 12.5"},
+		assets.German:  {"0,125", "0,5", "(0,50; 0; −0,25)", "0,408 φ1 − 12,5"},
+	} {
+		speak(l)
+		got := []string{decimalText(0.125, 3), plainText(0.5), vectorText([]float64{0.5, 0, -0.25}, 2), spelled("0.408 φ1 − 12.5")}
+		if !slices.Equal(got, want) {
+			t.Errorf("%q, want %q", got, want)
+		}
+		for _, typed := range []string{"-1.25", "−1,25 Å", " -1.25Å"} {
+			if x, err := readNumber(typed, "Å"); x != -1.25 || err != nil {
+				t.Errorf("%q: %v %v", typed, x, err)
+			}
+		}
+	}
+	if _, err := readNumber("1,2,3", ""); err == nil {
+		t.Error("1,2,3 is taken for a number")
+	}
+}
+
+// What is refused is said in German, with the numbers of German.
+func TestRefusalsAreGermanInTheGermanWindow(t *testing.T) {
+	defer speak(assets.English)
+	b := newBench(t, t.TempDir())
+	b.open("square-plane")
+	b.setLanguage(string(assets.German))
+	for want, change := range map[string]func(*study.Study){
+		"liegen nur 3,": func(s *study.Study) { s.Tolerance = 5 },
+		"die Struktur liegt nicht innerhalb von 1 Å bei Ih": func(s *study.Study) { s.As = "Ih" },
+		"ist keine Funktion; wählen Sie eine Schale":        func(s *study.Study) { s.Basis = []string{"Cl:q"} },
+	} {
+		s := b.now()
+		change(&s)
+		b.do(study.StepOpen, s)
+		b.until(want, func() bool { return len(b.state.Problems) > 0 && strings.Contains(paneText(b.given), want) })
+		b.undo()
+		b.until("undone", func() bool { return len(b.state.Problems) == 0 })
+	}
+}
+
+// paneText is all that a pane shows, its lines joined by blanks.
+func paneText(p *pane) string {
+	var lines []string
+	for _, s := range p.lay().scene.Shapes {
+		if text := textOf(s.Geometry); text != "" {
+			lines = append(lines, strings.TrimSpace(text))
+		}
+	}
+	return strings.Join(lines, " ")
 }

@@ -4,7 +4,7 @@ package window
 
 import (
 	"math"
-	"strconv"
+
 	"strings"
 
 	"fyne.io/fyne/v2"
@@ -242,7 +242,7 @@ func partnersText(e *work.Exchange, irrep int) notation.Text {
 		if k > 0 {
 			t = t.Then(notation.Words(",  "))
 		}
-		t = t.Then(partnerText(itoa(k+1)), notation.Words("\u00a0=\u00a0"), notation.CombinationText(terms, secondPartner, shortCoefficient))
+		t = t.Then(partnerText(itoa(k+1)), notation.Words("\u00a0=\u00a0"), combination(terms, secondPartner, shortCoefficient))
 	}
 	if same {
 		return notation.Words(say("frames.samePartners"))
@@ -276,7 +276,7 @@ func axesChange(e *work.Exchange) notation.Text {
 
 // degrees writes an angle in degrees to a tenth.
 func degrees(angle float64) string {
-	return notation.Minus(strconv.FormatFloat(math.Round(10*angle)/10, 'f', -1, 64))
+	return plainText(math.Round(10*angle) / 10)
 }
 
 // whyTexts say of every irrep that changes its name why it does.

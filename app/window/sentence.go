@@ -66,7 +66,7 @@ func (u *ui) sentence() notation.Text {
 func familyText(op work.Operation, angle float64) notation.Text {
 	before, after, _ := strings.Cut(op.Name, "φ")
 	t := notation.Operation(strings.TrimSuffix(before, "("))
-	return t.Then(notation.Words("(" + notation.Short(angle, 1) + "°" + after))
+	return t.Then(notation.Words("(" + shortText(angle, 1) + "°" + after))
 }
 
 // stepText says what happens at a moment.
@@ -135,7 +135,7 @@ func (u *ui) imageText(op work.Operation) notation.Text {
 	if op.Family {
 		write = shortCoefficient // for any angle there is some long cosine
 	}
-	t := notation.CombinationText(terms, name, write)
+	t := combination(terms, name, write)
 	// The function that it has become is named, where it is one.
 	if s.Projection.TheSubject() == study.SubjectFunction && len(terms) == 1 && math.Abs(math.Abs(terms[0].Coefficient)-1) < 1e-9 {
 		f := st.Basis.Functions[terms[0].Function]

@@ -205,8 +205,8 @@ func (u *ui) askMixing() {
 }
 
 func (u *ui) askAngle(text string, now float64, set func(float64)) {
-	u.ask(say("partners.angle"), text, strconv.FormatFloat(now, 'f', -1, 64), func(typed string) error {
-		x, err := strconv.ParseFloat(strings.TrimSpace(strings.TrimSuffix(strings.ReplaceAll(strings.ReplaceAll(typed, ",", "."), "−", "-"), "°")), 64)
+	u.ask(say("partners.angle"), text, plainText(now), func(typed string) error {
+		x, err := readNumber(typed, "°")
 		if err != nil || !(math.Abs(x) <= 360) {
 			return errors.New(say("partners.noAngle"))
 		}

@@ -6,8 +6,6 @@ import (
 	"errors"
 	"math"
 	"slices"
-	"strconv"
-	"strings"
 
 	"lobewright/app/sheet"
 	"lobewright/app/study"
@@ -115,7 +113,7 @@ func (d *pageDrawing) numbers(x *float64, name, unit, hint string, usual []float
 	d.option(x, name+" typed", other, say("figure.typeHint"), typed, ask)
 }
 
-func numberText(x float64) string { return strconv.FormatFloat(math.Round(100*x)/100, 'f', -1, 64) }
+func numberText(x float64) string { return plainText(math.Round(100*x) / 100) }
 
 // sheetSettings is the page on which a sheet is set.
 func (d *pageDrawing) sheetSettings() {
@@ -293,7 +291,7 @@ func (u *ui) askTextSize() {
 // askNumber asks for a number within bounds.
 func (u *ui) askNumber(title, text string, now, least, most float64, set func(float64)) {
 	u.ask(title, text, numberText(now), func(typed string) error {
-		x, err := strconv.ParseFloat(strings.ReplaceAll(strings.TrimSpace(typed), ",", "."), 64)
+		x, err := readNumber(typed, "")
 		if err != nil || !(x >= least && x <= most) {
 			return errors.New(say("figure.noNumber", numberText(least), numberText(most)))
 		}

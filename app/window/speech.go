@@ -3,7 +3,7 @@
 package window
 
 import (
-	"os"
+	"encoding/json"
 	"sync"
 
 	"fyne.io/fyne/v2"
@@ -15,15 +15,13 @@ import (
 	"lobewright/assets"
 )
 
-// systemLanguage is that of the desktop. It is asked for once, before the
-// toolkit is told anything else.
-var systemLanguage = sync.OnceValue(func() assets.Language {
-	return assets.LanguageOf(lang.SystemLocale().LanguageString())
-})
+// systemLocale is that of the desktop, as the toolkit finds it. It is asked for
+// once, before the toolkit is told anything else.
+var systemLocale = sync.OnceValue(func() string { return lang.SystemLocale().LanguageString() })
 
 // languageOf is the language that a person chose, or that of the system.
 func languageOf(p session.Preferences) assets.Language {
-	system := systemLanguage()
+	system := assets.LanguageOf(systemLocale())
 	for _, l := range assets.Languages() {
 		if string(l) == p.Language {
 			return l
@@ -32,12 +30,18 @@ func languageOf(p session.Preferences) assets.Language {
 	return system
 }
 
-// speakToolkit has the toolkit's own words, such as those of the menu of an
-// entry, follow. It takes them from the system's language, which on Linux is
-// what the environment says, whenever translations are added.
-func speakToolkit(l assets.Language) {
-	_ = os.Setenv("LANGUAGE", string(l))
-	_ = lang.AddTranslationsForLocale([]byte(`{"Lobewright": "Lobewright"}`), fyne.Locale(l))
+// speakToolkit has the words that the toolkit puts into this window, those of
+// the menu of an entry, follow the language in force at once. The toolkit knows
+// the system's locale alone, so there these words are put in the place of its
+// own.
+func speakToolkit() {
+	words, err := json.Marshal(map[string]string{
+		"Cut": say("toolkit.cut"), "Copy": say("toolkit.copy"), "Paste": say("toolkit.paste"), "Select all": say("toolkit.selectAll"),
+		"Undo": say("toolkit.undo"), "Redo": say("toolkit.redo"), "Quit": say("toolkit.quit"),
+	})
+	if err == nil {
+		_ = lang.AddTranslationsForLocale(words, fyne.Locale(systemLocale()))
+	}
 }
 
 // setLanguage keeps a choice of language, "" for the system's, and has the
@@ -46,7 +50,7 @@ func (u *ui) setLanguage(chosen string) {
 	u.preferences(func(p *session.Preferences) { p.Language = chosen })
 	l := languageOf(u.session.Preferences())
 	speak(l)
-	speakToolkit(l)
+	speakToolkit()
 	u.win.SetMainMenu(u.mainMenu())
 	u.menusSaid = ""
 	u.oneByOne.SetText(say("ledger.oneByOne"))

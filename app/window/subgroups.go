@@ -322,7 +322,7 @@ func say3(sentence string, m mgl64.Mat3) notation.Text {
 	var parts []notation.Text
 	for i := range 3 {
 		r := m.Row(i)
-		parts = append(parts, notation.Words(notation.Vector(r[:], 3)))
+		parts = append(parts, notation.Words(vectorText(r[:], 3)))
 	}
 	return fill(sentence, parts...)
 }
@@ -395,7 +395,7 @@ func goingOver(content []symmetry.Content, partners *mat.Dense) notation.Text {
 		if k > 0 {
 			t = t.Then(notation.Words(",  "))
 		}
-		t = t.Then(partnerText(itoa(k+1)), notation.Words("\u00a0=\u00a0"), notation.CombinationText(terms, func(number string) notation.Text {
+		t = t.Then(partnerText(itoa(k+1)), notation.Words("\u00a0=\u00a0"), combination(terms, func(number string) notation.Text {
 			if i, err := strconv.Atoi(number); err == nil && i <= len(names) {
 				return names[i-1]
 			}
