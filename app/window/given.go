@@ -29,6 +29,8 @@ func (u *ui) drawGiven(b *board) {
 			d.group()
 			d.frameOfAxes()
 			d.functions()
+		} else {
+			d.withoutGroup()
 		}
 	}
 	u.given.extent = d.y + pad + u.given.scroll
@@ -203,6 +205,32 @@ func (d *givenDrawing) takenFor() {
 	drawChip(d.board, pad, d.y, w, label, secondSize, chip{name: "group none", hint: say("frames.asFoundHint"), on: true, do: func() { d.takeGroup("") }})
 	d.y += chipHeight + 6
 	d.problem(work.ConcernAs)
+}
+
+// withoutGroup shows what keeps a study that was just opened from having a
+// group, with the way back from each choice.
+func (d *givenDrawing) withoutGroup() {
+	d.y += 6
+	d.takenFor()
+	if d.state.Problem(work.ConcernTolerance) != nil {
+		d.tolerance()
+	}
+	s := d.now()
+	if s.Frame+s.Z+s.X == "" {
+		return
+	}
+	chosen := s.Frame
+	for _, axis := range [][2]string{{"z", s.Z}, {"x", s.X}} {
+		if axis[1] != "" {
+			chosen = strings.TrimSpace(chosen + "  " + axis[0] + ": " + axis[1])
+		}
+	}
+	label := notation.Words(d.board.clipped(chosen, d.width-40, d.quiet) + "  ×")
+	w := d.board.measure(label, d.quiet) + 16
+	drawChip(d.board, pad, d.y, w, label, secondSize, chip{name: "frame none", hint: say("frames.defaultHint"), on: true,
+		do: func() { d.chooseFrame(symmetry.FrameDefault) }})
+	d.y += chipHeight + 6
+	d.problem(work.ConcernFrame, work.ConcernZ, work.ConcernX)
 }
 
 // tolerances are the steps that the two signs walk through, in Å.

@@ -221,3 +221,22 @@ func TestTheAngleOfALinearMoleculeIsTypedAndItsMatricesAreShown(t *testing.T) {
 		}
 	}
 }
+
+// A study that is opened with a choice that its structure cannot have shows
+// what is wrong, and one click leads back.
+func TestAChoiceThatLeavesNoGroupIsToldAndTakenBack(t *testing.T) {
+	for chip, bad := range map[string]study.Study{
+		"group none":     {Structure: "demo:square-plane", As: "Ih"},
+		"frame none":     {Structure: "demo:square-plane", Z: "1,2,3"},
+		"tolerance less": {Structure: "demo:square-plane", Tolerance: 5},
+	} {
+		b := newBench(t, t.TempDir())
+		b.do(study.StepOpen, bad)
+		b.until("what is wrong with "+chip, func() bool { return len(b.state.Problems) > 0 && b.state.Progress == nil })
+		if problem := b.state.Problems[0].Error(); !strings.Contains(paneText(b.given), problem) {
+			t.Errorf("%q is not shown: %q", problem, paneText(b.given))
+		}
+		b.tap(b.given, chip)
+		b.until("the group", func() bool { return b.state.Group != nil && len(b.state.Problems) == 0 })
+	}
+}
