@@ -4,7 +4,7 @@ package window
 
 import (
 	"context"
-	"fmt"
+
 	"image"
 	"image/color"
 	"image/draw"
@@ -247,6 +247,6 @@ func (p *preview) sizes() string {
 	if err != nil {
 		return told(err)
 	}
-	tenth := func(x float64) string { return fmt.Sprint(math.Round(10*x) / 10) }
+	tenth := func(x float64) string { return plainText(math.Round(10*x) / 10) }
 	return say("figure.sizes", tenth(p.made.Width), tenth(p.made.Height), w, h, tenth(dpi))
 }

@@ -311,7 +311,7 @@ func TestRefusalsAreGermanInTheGermanWindow(t *testing.T) {
 	b.setLanguage(string(assets.German))
 	for want, change := range map[string]func(*study.Study){
 		"liegen nur 3,": func(s *study.Study) { s.Tolerance = 5 },
-		"die Struktur liegt nicht innerhalb von 1 Å bei Ih": func(s *study.Study) { s.As = "Ih" },
+		"nicht nahe an Ih": func(s *study.Study) { s.As = "Ih" },
 		"ist keine Funktion; wählen Sie eine Schale":        func(s *study.Study) { s.Basis = []string{"Cl:q"} },
 	} {
 		s := b.now()
