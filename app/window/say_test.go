@@ -310,9 +310,9 @@ func TestRefusalsAreGermanInTheGermanWindow(t *testing.T) {
 	b.open("square-plane")
 	b.setLanguage(string(assets.German))
 	for want, change := range map[string]func(*study.Study){
-		"liegen nur 3,": func(s *study.Study) { s.Tolerance = 5 },
+		"liegen nur 3,":    func(s *study.Study) { s.Tolerance = 5 },
 		"nicht nahe an Ih": func(s *study.Study) { s.As = "Ih" },
-		"ist keine Funktion; wählen Sie eine Schale":        func(s *study.Study) { s.Basis = []string{"Cl:q"} },
+		"ist keine Funktion; wählen Sie eine Schale": func(s *study.Study) { s.Basis = []string{"Cl:q"} },
 	} {
 		s := b.now()
 		change(&s)
