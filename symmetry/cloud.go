@@ -90,18 +90,24 @@ func (c *cloud) fill() {
 
 func (c *cloud) index(x float64) int { return int(math.Floor(x / c.cell)) }
 
-// visit calls f for every point in the cells that a ball meets.
-func (c *cloud) visit(v mgl64.Vec3, reach float64, f func(i int)) {
-	var low, high [3]int
+// cellsAround are the cells that a ball meets, from the first to the last in each
+// direction.
+func (c *cloud) cellsAround(v mgl64.Vec3, reach float64) (low, high [3]int) {
 	for k := range low {
 		low[k] = max(c.index(v[k]-reach)-c.low[k], 0)
 		high[k] = min(c.index(v[k]+reach)-c.low[k], c.size[k]-1)
 	}
+	return low, high
+}
+
+// visit calls f for every point in the cells that a ball meets.
+func (c *cloud) visit(v mgl64.Vec3, reach float64, f func(i int)) {
+	low, high := c.cellsAround(v, reach)
+	if low[2] > high[2] {
+		return
+	}
 	for x := low[0]; x <= high[0]; x++ {
 		for y := low[1]; y <= high[1]; y++ {
-			if low[2] > high[2] {
-				continue
-			}
 			row := (x*c.size[1] + y) * c.size[2]
 			for _, i := range c.member[c.first[row+low[2]]:c.first[row+high[2]+1]] {
 				f(int(i))
@@ -113,17 +119,24 @@ func (c *cloud) visit(v mgl64.Vec3, reach float64, f func(i int)) {
 // nearest returns the point of a kind that lies nearest to v, within reach; −1
 // if there is none.
 func (c *cloud) nearest(v mgl64.Vec3, kind int, reach float64) int {
-	best, limit := -1, reach*reach
-	c.visit(v, reach, func(i int) {
-		if c.kind[i] != kind {
-			return
+	best, limit := int32(-1), reach*reach
+	low, high := c.cellsAround(v, reach)
+	if low[2] > high[2] {
+		return -1
+	}
+	for x := low[0]; x <= high[0]; x++ {
+		for y := low[1]; y <= high[1]; y++ {
+			row := (x*c.size[1] + y) * c.size[2]
+			for _, i := range c.member[c.first[row+low[2]]:c.first[row+high[2]+1]] {
+				at := &c.at[i]
+				a, b, d := at[0]-v[0], at[1]-v[1], at[2]-v[2]
+				if sq := a*a + b*b + d*d; sq <= limit && c.kind[i] == kind {
+					best, limit = i, sq
+				}
+			}
 		}
-		d := c.at[i].Sub(v)
-		if sq := d.Dot(d); sq <= limit {
-			best, limit = i, sq
-		}
-	})
-	return best
+	}
+	return int(best)
 }
 
 // closestLike returns the shortest distance between two points of one kind,

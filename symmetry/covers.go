@@ -19,6 +19,7 @@ type covers struct {
 	share   float64
 	order   []int       // of the points: each the nearest to those before it
 	apart   [][]float64 // distances between points
+	around  [][]int32   // of each point, those whose places could come too near to its own
 	most    int         // steps for one motion
 	// margin (Å) is how much farther than the nearest point an image may lie.
 	margin float64
@@ -47,7 +48,23 @@ func newCovers(c *cloud, allowed []float64, share float64) *covers {
 		}
 	}
 	s.order = s.contiguous()
+	s.around = make([][]int32, n)
+	for i, row := range s.apart {
+		for j, d := range row {
+			// Places are no farther apart than d less what both may be off.
+			if j != i && d-allowed[i]-allowed[j] < share*d {
+				s.around[i] = append(s.around[i], int32(j))
+			}
+		}
+	}
 	return s
+}
+
+// another is one that tries on its own, beside s.
+func (s *covers) another() *covers {
+	o := *s
+	o.image, o.ideal, o.placed = make([]int32, len(s.image)), make([]mgl64.Vec3, len(s.ideal)), nil
+	return &o
 }
 
 // contiguous orders the points so that each is the nearest to those before it,
@@ -297,7 +314,10 @@ func (s *covers) close(o *orbit, at int) {
 // keepsFrom tells whether a place for a point is not too near to those taken.
 func (s *covers) keepsFrom(j int, place mgl64.Vec3) bool {
 	row := s.apart[j]
-	for _, i := range s.placed {
+	for _, i := range s.around[j] {
+		if s.image[i] < 0 {
+			continue
+		}
 		d := place.Sub(s.ideal[i])
 		if least := s.share * row[i]; d.Dot(d) < least*least {
 			return false

@@ -99,13 +99,51 @@ func (s *Setting) placements(set opSet) ([]placement, error) {
 	return out, nil
 }
 
+// Renamings lists the same subgroup in its standard frames, as far as its classes
+// have other names there, and with them the irreps: D2h can be laid with any of
+// its axes along z. The descent itself comes first, the others by the turn.
+func (d *Descent) Renamings() ([]*Descent, error) {
+	set := newOpSet(d.Group.Order())
+	for _, o := range d.Operations {
+		set.add(o)
+	}
+	list, err := d.Group.placements(set)
+	if err != nil {
+		return nil, err
+	}
+	sort.SliceStable(list, func(a, b int) bool { return list[a].score() > list[b].score()+1e-12 })
+	names := func(images []int) string {
+		key := ""
+		for _, i := range images {
+			key += d.Subgroup.Classes[d.Subgroup.Operations[i].Class].Name + " "
+		}
+		return key
+	}
+	out := []*Descent{d}
+	known := map[string]bool{names(d.Images): true}
+	for _, p := range list {
+		if key := names(d.Group.images(p, d.Subgroup)); !known[key] {
+			known[key] = true
+			out = append(out, d.Group.descend(p))
+		}
+	}
+	return out, nil
+}
+
+// images are the operations of the subgroup as it stands in its standard frame.
+func (s *Setting) images(p placement, subgroup *Setting) []int {
+	var out []int
+	for _, o := range p.operations {
+		m := p.turn.Mul3(s.Operations[o].Matrix).Mul3(p.turn.Transpose())
+		out = append(out, subgroup.find(func(q Operation) bool { return equalTo(q.Matrix, m, 1e-6) }))
+	}
+	return out
+}
+
 // descend correlates the irreps for one placement.
 func (s *Setting) descend(p placement) *Descent {
 	d := &Descent{Group: s, Subgroup: newSetting(p.kind), Operations: p.operations, Rotation: p.turn}
-	for _, o := range d.Operations {
-		m := p.turn.Mul3(s.Operations[o].Matrix).Mul3(p.turn.Transpose())
-		d.Images = append(d.Images, d.Subgroup.find(func(q Operation) bool { return equalTo(q.Matrix, m, 1e-6) }))
-	}
+	d.Images = s.images(p, d.Subgroup)
 	for i := range s.Irreps {
 		content, partners := d.restrict(&s.Irreps[i])
 		d.Correlation = append(d.Correlation, content)

@@ -316,3 +316,54 @@ func TestLinearGroupsDescendAsPrinted(t *testing.T) {
 		}
 	}
 }
+
+// In every frame that gives a subgroup other names its operations multiply as they
+// do in the group, and what becomes of each irrep has its characters.
+func TestRenamedSubgroupsMultiplyAndCorrelateAlike(t *testing.T) {
+	for _, c := range []struct {
+		group, subgroup string
+		ways            []int // by embedding
+	}{
+		// Three like axes of D2h can be laid in six ways, and so can the others.
+		{"Oh", "D2h", []int{6, 6}}, {"Oh", "C2v", []int{2, 2, 2}}, {"D4h", "D2h", []int{6, 6}}, {"Oh", "D4h", []int{2}}, {"Ih", "D3d", []int{1}},
+	} {
+		s, err := New(c.group)
+		if err != nil {
+			t.Fatal(err)
+		}
+		descents, err := s.Descents(c.subgroup)
+		if err != nil || len(descents) != len(c.ways) {
+			t.Fatalf("%s in %s: %d ways, %v", c.subgroup, c.group, len(descents), err)
+		}
+		for e, first := range descents {
+			list, err := first.Renamings()
+			if err != nil || len(list) != c.ways[e] || list[0] != first {
+				t.Errorf("%s:%d in %s: %d frames, want %d (%v)", c.subgroup, e+1, c.group, len(list), c.ways[e], err)
+			}
+			for _, d := range list {
+				at := map[int]int{}
+				for i, o := range d.Operations {
+					at[o] = d.Images[i]
+				}
+				for _, a := range d.Operations {
+					for _, b := range d.Operations {
+						if at[s.Product(a, b)] != d.Subgroup.Product(at[a], at[b]) {
+							t.Fatalf("%s in %s: %d·%d does not multiply alike", c.subgroup, c.group, a, b)
+						}
+					}
+				}
+				for i, ir := range s.Irreps {
+					for _, o := range d.Operations {
+						sum := 0.0
+						for _, part := range d.Correlation[i] {
+							sum += float64(part.Copies) * part.Irrep.Characters[d.Subgroup.Operations[at[o]].Class]
+						}
+						if math.Abs(sum-ir.Characters[s.Operations[o].Class]) > 1e-9 {
+							t.Errorf("%s in %s: %s has the character %g, not %g", c.subgroup, c.group, ir.Label, sum, ir.Characters[s.Operations[o].Class])
+						}
+					}
+				}
+			}
+		}
+	}
+}

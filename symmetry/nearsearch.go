@@ -3,6 +3,9 @@ package symmetry
 import (
 	"context"
 	"math"
+	"runtime"
+	"slices"
+	"sync"
 )
 
 // Starts lie so near together that the farthest point is off by no more than
@@ -47,23 +50,63 @@ func (l *ladder) search(ctx context.Context, progress func(float64)) error {
 	l.tried = map[elementKey]bool{}
 	for k, t := range motionTypes {
 		first := len(l.generators)
-		for i := range n {
-			if err := ctx.Err(); err != nil {
-				return err
-			}
-			if t.fold == 2 && t.improper && i > 0 {
-				break // the inversion has no axis
-			}
-			s.try(t.at(spiral(i, n)), l.meet)
-			if i%16 == 0 {
-				progress((float64(k) + float64(i)/float64(n)) / float64(len(motionTypes)))
-			}
+		told := func(share float64) { progress((float64(k) + share) / float64(len(motionTypes))) }
+		found, err := s.everywhere(ctx, t, n, told)
+		if err != nil {
+			return err
+		}
+		for _, f := range found {
+			l.meet(f.motion, f.image)
 		}
 		if found := l.generators[first:]; s.beside != nil && t.fold <= 2 && len(found) <= mostHalved {
 			s.halfWay(t, found, l.meet)
 		}
 	}
 	return nil
+}
+
+// A finding is a way in which a motion can carry the points.
+type finding struct {
+	motion *motion
+	image  []int32
+}
+
+// everywhere tries a type of motion about n axes, on all cores, and lists what is
+// found in the order of the axes, each way at least where it comes first: so
+// nothing depends on which core tried what.
+func (s *covers) everywhere(ctx context.Context, t motionType, n int, progress func(float64)) ([]finding, error) {
+	if t.fold == 2 && t.improper {
+		n = 1 // the inversion has no axis
+	}
+	found := make([][]finding, n)
+	workers := min(runtime.GOMAXPROCS(0), n)
+	var done sync.WaitGroup
+	var telling sync.Mutex
+	tried := 0
+	for w := range workers {
+		done.Add(1)
+		go func() {
+			defer done.Done()
+			own := s.another()
+			known := map[elementKey]bool{}
+			for i := w; i < n && ctx.Err() == nil; i += workers {
+				own.try(t.at(spiral(i, n)), func(m *motion, image []int32) {
+					e := &element{permutation: image, improper: m.improper, matrix: m.powers[1]}
+					if k := e.key(); !known[k] {
+						known[k] = true
+						found[i] = append(found[i], finding{m, slices.Clone(image)})
+					}
+				})
+				telling.Lock()
+				if tried++; tried%16 == 0 {
+					progress(float64(tried) / float64(n))
+				}
+				telling.Unlock()
+			}
+		}()
+	}
+	done.Wait()
+	return slices.Concat(found...), ctx.Err()
 }
 
 // mostHalved bounds the number of operations between which others are sought.

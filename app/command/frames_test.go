@@ -37,7 +37,9 @@ type contractFrames struct {
 		Given []string `json:"given"`
 		Here  []string `json:"here"`
 		Lifts []struct {
+			Embedding  int                 `json:"embedding"`
 			Operations []string            `json:"operations"`
+			Names      []string            `json:"names"`
 			Ways       [][]contractContent `json:"ways"`
 			Telling    []string            `json:"telling"`
 			Complete   bool                `json:"complete"`
@@ -207,6 +209,23 @@ func TestLabelsAreTranslatedAndLifted(t *testing.T) {
 	}
 	if got := strings.Join(ways, " or "); got != "T1u or T2u" || len(f.Translation.Lifts[0].Telling) == 0 || !f.Translation.Lifts[0].Complete {
 		t.Errorf("lifted: %s %+v", got, f.Translation.Lifts[0])
+	}
+	// D2h lies in Oh in two ways. With two C2 that are no powers of C4 it has the
+	// characters of T2u on them, so that b1u + b2u + b3u are T1u alone there.
+	lifts := f.Translation.Lifts
+	if len(lifts) != 2 || lifts[0].Embedding != 1 || lifts[1].Embedding != 2 || len(lifts[1].Ways) != 1 || contentOf(lifts[1].Ways[0]) != "T1u" {
+		t.Errorf("lifted: %+v", lifts)
+	}
+	// z² and x²−y² (Eg) go over into ag + b1g there if z is along C4², into ag + b3g
+	// if x is.
+	f = contractFrames{}
+	runJSON(t, &f, "frames", "demo:octahedron", "--translate", "ag, b3g", "--from", "D2h")
+	lifts = f.Translation.Lifts
+	if n := len(lifts); n != 3 || lifts[2].Embedding != 2 || len(lifts[2].Ways) != 2 || contentOf(lifts[2].Ways[1]) != "Eg" {
+		t.Fatalf("lifted: %+v", lifts)
+	}
+	if at := slices.Index(lifts[2].Operations, "C2(z)"); at < 0 || lifts[2].Names[at] != "C2(x)" {
+		t.Errorf("the C4² is %v of %v", lifts[2].Names, lifts[2].Operations)
 	}
 	// x and y of a linear molecule, and what has three nodal planes.
 	f = contractFrames{}

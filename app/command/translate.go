@@ -76,7 +76,15 @@ type translation struct {
 	from        string
 	given, here []level
 	rule        string // of from, in words
-	lifts       []*work.Lift
+	lifts       []*lift
+}
+
+// A lift is what the labels become in the full group in one way in which their
+// group lies in it.
+type lift struct {
+	*work.Lift
+	embedding, of int  // 0 for a linear molecule
+	turned        bool // in other axes than those in which the embedding is told
 }
 
 // translated reads labels and whose they are.
@@ -141,19 +149,34 @@ func sameSet(a, b []string) bool {
 	return slices.Equal(slices.Sorted(slices.Values(a)), slices.Sorted(slices.Values(b)))
 }
 
-// lift looks for the irreps of the full group in every embedding of a subgroup.
+// lift looks for the irreps of the full group in every embedding of a subgroup
+// and, since nobody knows how its axes were laid there, in all of its frames in
+// which these get other labels.
 func (t *translation) lift(setting *symmetry.Setting) error {
 	descents, err := setting.Descents(t.from)
 	if err != nil {
 		return err
 	}
 	copies, err := t.copies(descents[0].Subgroup)
-	for _, d := range descents {
-		if err == nil {
-			t.lifts = append(t.lifts, work.LiftContent(d, copies))
+	if err != nil {
+		return err
+	}
+	for i, d := range descents {
+		list, err := d.Renamings()
+		if err != nil {
+			return err
+		}
+		var known []string
+		for n, r := range list {
+			l := &lift{work.LiftContent(r, copies), i + 1, len(descents), n > 0}
+			result := strings.Join(waysText(l.Lift), " or ")
+			if !slices.Contains(known, result) && (n == 0 || len(l.Ways) > 0 || l.More) {
+				known = append(known, result)
+				t.lifts = append(t.lifts, l)
+			}
 		}
 	}
-	return err
+	return nil
 }
 
 // liftLinear does the same for a linear molecule.
@@ -167,7 +190,7 @@ func (t *translation) liftLinear(symbol string) error {
 	}
 	copies, err := t.copies(d.Subgroup)
 	if err == nil {
-		t.lifts = []*work.Lift{work.LiftLinear(d, copies)}
+		t.lifts = []*lift{{Lift: work.LiftLinear(d, copies)}}
 	}
 	return err
 }
@@ -207,15 +230,61 @@ func (t *translation) text(g *work.Group) string {
 		fmt.Fprintf(&b, "Here, by %s (%s)\n  %s\n", g.Fit.Rule.Name, notation.ShortConvention(g.Fit), levelsText(t.here))
 		return b.String()
 	}
-	for i, l := range t.lifts {
-		where := ""
+	fmt.Fprintf(&b, "\n%s of %s\n", levelsText(t.given), t.from)
+	for _, l := range t.lifts {
 		if len(t.lifts) > 1 {
-			where = fmt.Sprintf(", embedding %d of %d: %s", i+1, len(t.lifts), operationNames(l.Descent))
+			b.WriteString("  " + l.where() + "\n  ")
 		}
-		fmt.Fprintf(&b, "\n%s of %s%s\n", levelsText(t.given), t.from, where)
-		b.WriteString("  " + liftSentence(l, g.Fit.Setting.Symbol, t.from) + "\n")
+		b.WriteString("  " + liftSentence(l.Lift, g.Fit.Setting.Symbol, t.from) + "\n")
+	}
+	if verdict := t.verdict(g.Fit.Setting.Symbol); verdict != "" {
+		b.WriteString("\n" + verdict + "\n")
 	}
 	return b.String()
+}
+
+// where says how the subgroup lies in the group and, if other axes of it are
+// meant, what its operations are called there.
+func (l *lift) where() string {
+	d := l.Descent
+	names := make([]string, len(d.Operations))
+	for i, o := range d.Operations {
+		names[i] = d.Group.Operations[o].Name
+		if there := d.Subgroup.Operations[d.Images[i]].Name; there != names[i] {
+			names[i] += "→" + there
+		}
+	}
+	text := fmt.Sprintf("embedding %d of %d: %s", l.embedding, l.of, strings.Join(names, " "))
+	if l.turned {
+		text = "the same with other axes: " + strings.Join(names, " ")
+	}
+	return text
+}
+
+// verdict says whether the answer is the same however the subgroup lies in the
+// group; empty where there is one way, or no answer.
+func (t *translation) verdict(symbol string) string {
+	var results, told []string
+	for _, l := range t.lifts {
+		if l.More {
+			return ""
+		}
+		text := strings.Join(waysText(l.Lift), " or ")
+		if text == "" {
+			continue
+		}
+		if !slices.Contains(results, text) {
+			results = append(results, text)
+		}
+		told = append(told, fmt.Sprintf("%s by embedding %d", text, l.embedding))
+	}
+	switch {
+	case len(t.lifts) < 2 || len(results) == 0:
+		return ""
+	case len(results) == 1:
+		return fmt.Sprintf("If these labels come from %s at all, they are %s there.", symbol, results[0])
+	}
+	return fmt.Sprintf("The embeddings disagree: %s. How %s lies in %s decides.", strings.Join(told, ", "), t.from, symbol)
 }
 
 // liftSentence says what the labels can be in the full group, and why they
@@ -285,7 +354,9 @@ type translationDocument struct {
 }
 
 type liftDocument struct {
+	Embedding  int                 `json:"embedding"` // 0 for a linear molecule
 	Operations []string            `json:"operations"`
+	Names      []string            `json:"names"` // of the operations, in the subgroup
 	Ways       [][]contentDocument `json:"ways"`
 	Telling    []string            `json:"telling"`
 	Complete   bool                `json:"complete"`
@@ -300,9 +371,12 @@ func (t *translation) document() *translationDocument {
 		d.Here = append(d.Here, l.String())
 	}
 	for _, l := range t.lifts {
-		lift := liftDocument{Operations: []string{}, Ways: [][]contentDocument{}, Telling: append([]string{}, l.Telling...), Complete: !l.More}
+		lift := liftDocument{Embedding: l.embedding, Operations: []string{}, Names: []string{}, Ways: [][]contentDocument{}, Telling: append([]string{}, l.Telling...), Complete: !l.More}
 		if l.Descent != nil {
 			lift.Operations = strings.Fields(operationNames(l.Descent))
+			for _, i := range l.Descent.Images {
+				lift.Names = append(lift.Names, l.Descent.Subgroup.Operations[i].Name)
+			}
 		}
 		for _, way := range l.Ways {
 			lift.Ways = append(lift.Ways, describeContent(way))
