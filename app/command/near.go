@@ -147,6 +147,9 @@ func ladderText(ctx context.Context, l *work.Ladder, all bool) (string, error) {
 		fmt.Fprintf(&b, "\nWith %s it has the subgroups %s (--all lists them).\n", l.Groups[largest].Fit.Setting.Symbol, strings.Join(folded, " "))
 	}
 	b.WriteString(lineNote(l, all))
+	if len(l.Core) > symmetry.FullyTried {
+		fmt.Fprintf(&b, "\nOf more than %d atoms only operations are sought that leave neighbours neighbours, each atom\ncarried no more than %g Å farther than to the nearest of its kind.\n", symmetry.FullyTried, symmetry.NearestImage)
+	}
 	return b.String(), nil
 }
 
