@@ -208,9 +208,11 @@ func (s *stage) liveTriad(f *Frame, held *work.Exchange) {
 	if s.look.NoAxes {
 		return
 	}
-	const longest, widest = 9.0, 6.0 // mm
+	const usual, widest = 9.0, 6.0 // mm
 	short := float64(min(f.Width, f.Height)) * 25.4 / f.Quality.DPI
-	length, inset := math.Min(longest, 0.12*short), math.Min(widest, 0.06*short)
+	// The triad as a whole, which is twice as wide as an axis is long, takes 12 %
+	// of the short side, though no less than can be read where there is room.
+	length, inset := math.Max(0.06*short, math.Min(usual, 0.12*short)), math.Min(widest, 0.06*short)
 	ink := flat(s.palette.Ink)
 	place := render.Place{OffsetX: length + inset, OffsetY: length + inset, Unit: length, Turn: true}
 	for _, mark := range triadMarks(held) {
