@@ -8,6 +8,7 @@ package picture
 
 import (
 	"context"
+	"fmt"
 	"image"
 
 	"lobewright/app/study"
@@ -66,13 +67,20 @@ func (s *stage) reachOf(b *work.Basis) []ball {
 func (s *stage) roomFor(b *work.Basis, beyond float64) []ball {
 	unit := lobeUnit(b.Group, s.carries)
 	var room []ball
+	found := map[string][]ball{} // searching takes time, and atoms have like functions
 	for _, f := range b.Functions {
 		at := b.Group.Sites.Positions[f.Site]
 		if f.Shell == 0 {
 			room = append(room, ball{at, unit / 2})
 			continue
 		}
-		for _, l := range lobeBalls(f.Value, f.Shell, s.look.Shape) {
+		key := fmt.Sprint(f.Shell, f.Vector)
+		balls, ok := found[key]
+		if !ok {
+			balls = lobeBalls(f.Value, f.Shell, s.look.Shape)
+			found[key] = balls
+		}
+		for _, l := range balls {
 			room = append(room, ball{at.Add(l.centre.Mul(unit)), beyond * l.radius * unit})
 		}
 	}

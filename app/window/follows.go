@@ -53,6 +53,12 @@ func (u *ui) drawFollows(b *board) {
 		chosen = nil
 	}
 	list := o.Projection.Orbitals
+	u.thumbs.missing = 0
+	defer func() {
+		if !st.Stale(work.StageOrbitals) && u.thumbs.missing == 0 {
+			u.measured.pictures(st.Study.Basis)
+		}
+	}()
 	copies := 0
 	for i := 0; i < len(list); {
 		n := o.Irreps[list[i].Irrep].Dimension

@@ -61,6 +61,7 @@ type pane struct {
 func newPane(content func(b *board), u *ui) *pane {
 	p := &pane{content: content, palette: u.palette, zoom: u.zoom, guard: u.guard, onHint: u.hint, onRune: u.typed, onHelp: u.showHelp, renderer: &u.panes}
 	p.raster = canvas.NewRaster(p.generate)
+	p.raster.ScaleMode = canvas.ImageScalePixels // pixel by pixel, which costs less
 	p.ExtendBaseWidget(p)
 	return p
 }

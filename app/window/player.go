@@ -142,7 +142,7 @@ type clock struct {
 func startClock(post func(func()), tick func()) *clock {
 	c := &clock{done: make(chan struct{})}
 	go func() {
-		t := time.NewTicker(time.Second / 60)
+		t := time.NewTicker(time.Second / 120)
 		defer t.Stop()
 		for {
 			select {

@@ -104,7 +104,9 @@ func Run(ctx context.Context, o Options) (err error) {
 	u.mark = mark
 	if measure {
 		measureSpots = true
-		go u.measure()
+		u.measured = &measured{out: os.Stderr}
+		u.view.fresh = func() { u.measured.frame(u.player.playing || u.tally.playing) }
+		go u.measure(ended)
 	}
 	var failure error
 	var once sync.Once
@@ -205,27 +207,3 @@ func (l *toolkitLog) reason() string {
 }
 
 func oneLine(s string) string { return strings.Join(strings.Fields(s), " ") }
-
-// measureSpots has panes print where their spots are, for whoever moves the
-// mouse by program.
-var measureSpots bool
-
-// measure prints how many frames were drawn and shown in each second that had
-// some.
-func (u *ui) measure() {
-	last, lastShown := int64(0), 0
-	for range time.Tick(time.Second) {
-		drawn := u.view.frames.count.Load()
-		fyne.Do(func() {
-			shown := u.view.shownCount
-			for name, o := range map[string]fyne.CanvasObject{"view": u.view, "scrub": u.scrub, "angle": u.angle, "typed": u.basis} {
-				at := fyne.CurrentApp().Driver().AbsolutePositionForObject(o)
-				fmt.Fprintf(os.Stderr, "spot\t%s\t%.0f\t%.0f\n", name, at.X+o.Size().Width/2, at.Y+o.Size().Height/2)
-			}
-			if drawn-last > 1 {
-				fmt.Fprintf(os.Stderr, "frames in a second: %d drawn, %d shown\n", drawn-last, shown-lastShown)
-			}
-			last, lastShown = drawn, shown
-		})
-	}
-}

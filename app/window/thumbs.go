@@ -24,7 +24,10 @@ type thumbs struct {
 	ctx    context.Context
 	stop   context.CancelFunc
 	done   sync.WaitGroup
-	round  int // raised when other group orbitals take the place of these
+	// missing is how many pictures that were asked for were not there, since
+	// the owner set it to 0.
+	missing int
+	round   int // raised when other group orbitals take the place of these
 }
 
 // mostThumbs bounds the pictures that are kept: turning a set makes many.
@@ -83,6 +86,7 @@ func (t *thumbs) get(orbital int, side float64) *image.RGBA {
 	if img := t.images[key]; img != nil {
 		return img
 	}
+	t.missing++
 	before := t.latest[orbital]
 	if before != nil && before.Rect.Dx() != key.pixels {
 		before = nil

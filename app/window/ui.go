@@ -93,6 +93,8 @@ type ui struct {
 	fading  *fading
 	closing bool
 	mark    func(string) // measures, if asked
+	// measured is nil if nobody asks.
+	measured *measured
 }
 
 // firstDemo is what the window shows the first time.
@@ -282,6 +284,7 @@ func (u *ui) changed() {
 		}
 	}
 	u.session.Keep(s)
+	u.measured.chosen(s.Basis)
 	u.watchFiles()
 	u.service.Request(s)
 	u.pages.changed()

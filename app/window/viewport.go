@@ -41,6 +41,7 @@ type viewport struct {
 	posted        atomic.Bool
 	painted       func() // called once, when the toolkit first asks for the picture
 	first         func() // called once, with the first picture of a structure
+	fresh         func() // called with every new picture
 	shownCount    int
 
 	button        desktop.MouseButton // that is down; 0 none
@@ -139,11 +140,20 @@ func (v *viewport) generate(w, h int) image.Image {
 		v.width, v.height = w, h
 		v.ask(true) // quick first
 	}
+	before := v.frames.shown
 	d := v.frames.take()
+	if d != before && v.fresh != nil {
+		v.fresh()
+	}
 	if d == nil {
 		return image.NewRGBA(image.Rect(0, 0, 1, 1))
 	}
 	v.shownCount++
+	// Pixel by pixel, which costs less, unless a quick picture has fewer.
+	v.raster.ScaleMode = canvas.ImageScalePixels
+	if d.image.Rect.Dx() != w || d.image.Rect.Dy() != h {
+		v.raster.ScaleMode = canvas.ImageScaleSmooth
+	}
 	if v.first != nil && d.structure {
 		f := v.first
 		v.first = nil
