@@ -25,7 +25,8 @@ A figure is a sheet of panels, all from one place and at one scale:
                a function (--function) or a group orbital (--irrep)
   molecule     the structure with its axes and a panel for each class of
                symmetry elements
-  frames       the structure in two frames (the second by --second)
+  frames       the structure in two frames (the second by --second); a picture of
+               one group orbital, or of the structure alone, shows both triads
   descent      what becomes of irreps and group orbitals in --subgroup
   levels       columns of levels for a sketch of interactions: group orbitals,
                and orbitals of a central atom (--central) that go with them
@@ -89,7 +90,7 @@ func shownFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.IntVar(&s.Projection.Partner, "partner", 1, "which `N` of the partners of a degenerate irrep")
 	flags.IntVar(&s.Projection.Function, "function", 0, "which `N` of the functions the operations carry (default 1)")
 	flags.StringVar(&s.Operation, "operation", "", "`NAME` of an operation whose symmetry element is shown")
-	flags.StringVar(&s.Held.Frame, "second", "", "`RULE` that puts the axes of the second frame")
+	flags.StringVar(&s.Held.Frame, "second", "", "`RULE` that puts the axes of a second frame, drawn beside the first or into the same picture")
 	flags.StringVar(&s.Subgroup, "subgroup", "", "`GROUP` to descend to: C4v, or C4v:2 for the second way")
 	flags.IntVar(&s.Central, "central", 0, "which `ATOM` is the central one (default: the one that all operations leave)")
 }
@@ -166,6 +167,8 @@ func checkFigure(cmd *cobra.Command, s *study.Study, output string) error {
 		return usagef("--copy and --partner need --irrep LABEL, such as --irrep Eu; project lists the group orbitals")
 	case kind == sheet.Descent && s.Subgroup == "":
 		return usagef("--sheet descent needs --subgroup GROUP, such as --subgroup C2v; descend lists them")
+	case s.Held.Frame != "" && !sheet.HoldsSecond(*s):
+		return usagef("--second: a second frame is shown by --sheet frames, by one group orbital (--irrep) and by the structure alone")
 	case kind == sheet.Frames && s.Held.Frame == "":
 		return usagef("--sheet frames needs --second RULE for the second frame; frames lists the rules")
 	}

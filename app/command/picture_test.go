@@ -17,6 +17,7 @@ var figures = []struct{ file, line string }{
 	{"assets/readme/eu-2.png", "demo:square-plane --on Cl:sigma --irrep Eu --partner 2"},
 	{"assets/readme/sheet.png", "demo:tetrahedron --on Cl:sigma,pi --width 180 --dpi 150"},
 	{"testdata/pictures/operations.png", "demo:square-plane --on Cl:sigma --sheet operations --width 120 --dpi 80 --signs printed"},
+	{"testdata/pictures/two-triads.png", "demo:water --second plane-xz --dpi 100"},
 	{"testdata/pictures/frames.png", "demo:water --on H:s --irrep B2 --sheet frames --second plane-xz --dpi 100 --shape polar"},
 	{"testdata/pictures/descent.png", "demo:tetrahedron --on Cl:sigma --sheet descent --subgroup C3v --dpi 100 --signs hatching"},
 	{"testdata/pictures/levels.png", "demo:tetrahedron --on Cl:sigma --sheet levels --dpi 100 --look ink --font serif"},

@@ -73,13 +73,7 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 	if err != nil {
 		return c, err
 	}
-	name := s.Frame
-	if name == "" {
-		name = "default"
-		if s.Z != "" || s.X != "" {
-			name = m.say("captions.byHand")
-		}
-	}
+	name := frameName(s.Frame, s.Z, s.X, m)
 	c.title, c.name = notation.Words(name), m.say("captions.frame", name)
 	c.form, c.small = notation.Sentence(notation.ShortConventionIn(m.texts, g.Fit)), true
 	letters := plainLetters

@@ -171,6 +171,9 @@ func (m *maker) addOperation(g *work.Group, cells grid) error {
 
 // single is a sheet of one panel.
 func (m *maker) single(g *work.Group, c cell, d card, what string) (*Sheet, error) {
+	if err := m.withSecond(g, &c, &d); err != nil {
+		return nil, err
+	}
 	v := picture.NewViewpoint(m.study.Camera, c.body)
 	if m.study.Operation != "" {
 		op, err := g.Operation(m.study.Operation, m.study.Angle)

@@ -1,0 +1,69 @@
+package sheet
+
+import (
+	"lobewright/app/notation"
+	"lobewright/app/study"
+	"lobewright/app/work"
+	"lobewright/symmetry"
+)
+
+// withSecond draws the axes of the frame in force and, dashed, those of the second
+// one into a panel, if a second frame is held against it; the card then tells both
+// rules, and what is called differently, in the place of its own triad.
+func (m *maker) withSecond(g *work.Group, c *cell, d *card) error {
+	e, err := g.Held(m.study.Held)
+	if err != nil || e == nil {
+		return err
+	}
+	c.body.AddTriads(e)
+	d.bare = true
+	if m.figure.NoCard {
+		return nil
+	}
+	s := m.study
+	d.lines = append(d.lines,
+		cardLine{m.ruleLine("", frameName(s.Frame, s.Z, s.X, m), g.Fit), m.text()},
+		cardLine{m.ruleLine("2", frameName(s.Held.Frame, s.Held.Z, s.Held.X, m), e.Fit), m.text()})
+	for _, t := range m.renamed(g, e) {
+		d.lines = append(d.lines, cardLine{t, m.text()})
+	}
+	return nil
+}
+
+// ruleLine tells by which rule the axes with an index lie.
+func (m *maker) ruleLine(index, name string, fit *symmetry.Fit) notation.Text {
+	var t notation.Text
+	for i, letter := range plainLetters {
+		if i > 0 {
+			t = t.Then(notation.Words(", "))
+		}
+		t = t.Then(letter)
+		if index != "" {
+			t = t.Then(notation.Text{{Text: index, Place: notation.Sub}})
+		}
+	}
+	return t.Then(notation.Words(" ("+name+"): "), notation.Sentence(notation.ShortConventionIn(m.texts, fit)))
+}
+
+// frameName is what a choice of axes is called.
+func frameName(frame, z, x string, m *maker) string {
+	switch {
+	case frame != "":
+		return frame
+	case z != "" || x != "":
+		return m.say("captions.byHand")
+	}
+	return symmetry.FrameDefault
+}
+
+// HoldsSecond tells whether a kind of sheet shows a second frame that a study
+// holds: two panels in two frames, or one picture with both triads.
+func HoldsSecond(s study.Study) bool {
+	switch Kind(s) {
+	case Frames, One:
+		return true
+	case Molecule:
+		return s.Figure.Sheet != Molecule || s.Operation != ""
+	}
+	return false
+}
