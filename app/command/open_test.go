@@ -139,3 +139,28 @@ func TestAStudyFileStandsForItsStructure(t *testing.T) {
 		t.Errorf("it prints\n%s", got)
 	}
 }
+
+// The language of a figure is kept in it, and the words are those of the
+// language.
+func TestAFigureSpeaksTheLanguageThatItKeeps(t *testing.T) {
+	file := inFolder(t)
+	command(t, "figure", file, "--on", "H:s", "--irrep", "B2", "--language", "de", "-o", "old.svg")
+	if err := os.Remove(file); err != nil {
+		t.Fatal(err)
+	}
+	command(t, "figure", "old.svg", "-o", "new.svg")
+	command(t, "figure", "old.svg", "--language", "en", "-o", "english.svg")
+	for name, language := range map[string]string{"old.svg": "de", "new.svg": "de", "english.svg": "en"} {
+		data, err := os.ReadFile(name)
+		if err != nil {
+			t.Fatal(err)
+		}
+		german, english := strings.Contains(string(data), "Gruppenorbital b2"), strings.Contains(string(data), "group orbital b2")
+		if german != (language == "de") || english != (language == "en") {
+			t.Errorf("%s: German %v, English %v", name, german, english)
+		}
+	}
+	if out, status := tryCommand("figure", "demo:water", "--language", "la", "-o", "x.svg"); status != 2 || !strings.Contains(out, "must be en or de") {
+		t.Errorf("%d: %s", status, out)
+	}
+}

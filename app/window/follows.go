@@ -155,7 +155,7 @@ func (u *ui) drawCopy(b *board, y, width float64, o *work.Orbitals, partners []o
 // likeness is the simplest function that a partner transforms like.
 func likeness(irrep symmetry.Irrep, partner int) notation.Text {
 	if partner < len(irrep.Functions) && len(irrep.Functions[partner]) > 0 {
-		return fill(say("partners.like"), notation.Polynomial(irrep.Functions[partner][notation.Likest(irrep.Functions[0])]))
+		return fill(say("partners.like"), spelledText(notation.Polynomial(irrep.Functions[partner][notation.Likest(irrep.Functions[0])])))
 	}
 	if irrep.Dimension > 1 {
 		return notation.Words(say("partners.partner", partner+1))
@@ -244,7 +244,7 @@ func irrepFunctions(irrep symmetry.Irrep, partner int) notation.Text {
 		if i > 0 {
 			t = t.Then(notation.Words(", "))
 		}
-		t = t.Then(notation.Polynomial(f))
+		t = t.Then(spelledText(notation.Polynomial(f)))
 	}
 	return t
 }

@@ -138,7 +138,7 @@ func likeOnly(functions [][]string, partner int) notation.Text {
 	if partner >= len(functions) || len(functions[partner]) == 0 {
 		return nil
 	}
-	return notation.Polynomial(functions[partner][notation.Likest(functions[0])])
+	return spelledText(notation.Polynomial(functions[partner][notation.Likest(functions[0])]))
 }
 
 // longestName is the width of a function that still stands for a partner in

@@ -151,7 +151,7 @@ func distortionText(shares []work.Share) notation.Text {
 			continue
 		}
 		if len(t) > 0 {
-			t = t.Then(notation.Words(",  "))
+			t = t.Then(notation.Words(",\u00a0 "))
 		}
 		t = t.Then(notation.OrbitalText(p.Irrep), notation.Words("\u00a0"+decimalText(p.Amount, 3)))
 		if len(p.Partners) > 1 {

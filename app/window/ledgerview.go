@@ -470,7 +470,7 @@ func partnerNames(irrep symmetry.Irrep) func(number string) notation.Text {
 		}
 		which := notation.Words(number)
 		if n, err := strconv.Atoi(number); err == nil && n >= 1 && n <= len(irrep.Functions) && len(irrep.Functions[n-1]) > 0 {
-			like := notation.Polynomial(irrep.Functions[n-1][notation.Likest(irrep.Functions[0])])
+			like := spelledText(notation.Polynomial(irrep.Functions[n-1][notation.Likest(irrep.Functions[0])]))
 			const short = 6
 			if notation.Width(like.String()) <= short {
 				which = like
