@@ -1,8 +1,10 @@
 package render
 
 import (
+	"encoding/binary"
 	"math"
 	"math/bits"
+	"slices"
 )
 
 // cells are what the pixels of the canvas show for the most part, field by
@@ -18,7 +20,7 @@ type cells struct {
 	step       []float32 // nearness that counts as a jump
 	x, y, z    []float32 // unit normal towards the viewer
 	nl         []float32 // cosine between it and the key light
-	whole      []bool    // its colour is that of the pixel
+	whole      []uint8   // 1 where its colour is that of the pixel
 }
 
 // cell is one of them.
@@ -35,7 +37,7 @@ func (c *cells) ready(n int) {
 	if len(c.slot) == n {
 		return
 	}
-	c.slot, c.part, c.whole = make([]uint32, n), make([]int32, n), make([]bool, n)
+	c.slot, c.part, c.whole = make([]uint32, n), make([]int32, n), make([]uint8, n)
 	for _, p := range [6]*[]float32{&c.n, &c.step, &c.x, &c.y, &c.z, &c.nl} {
 		*p = make([]float32, n)
 	}
@@ -48,7 +50,14 @@ func (c *cells) at(i int) cell {
 }
 
 // clear makes a pixel one of the ground.
-func (c *cells) clear(i int) { c.slot[i], c.part[i], c.whole[i] = 0, -1, false }
+func (c *cells) clear(i int) { c.slot[i], c.part[i], c.whole[i] = 0, -1, 0 }
+
+// wholes returns which of the eight cells from i on have the colour of their
+// pixel.
+func (c *cells) wholes(i int) uint8 {
+	// Gathers the lowest bits of eight bytes in the highest byte.
+	return uint8(binary.LittleEndian.Uint64(c.whole[i:][:lanes]) * 0x0102040810204080 >> 56)
+}
 
 // goOn returns in which of the eight pixels from i on the surface goes on
 // smoothly into those from j on.
@@ -101,40 +110,53 @@ func (t *tile) fillCells() {
 // fillGroup finds what those pixels of the scanned group at x show that have
 // a bit in any, and wants their sights.
 func (t *tile) fillGroup(x, y int, any, same uint8) {
-	c := &t.lines.cells
+	sc := &t.scanned
 	b := t.sights.block()
 	t.sights.owner[b] = int32(x)
 	i := y*t.side + x
-	part, jump := int32(-1), float32(0) // the last part's
 	whole := any
+	for m := any &^ same; m != 0; m &= m - 1 {
+		j := lowest(m)
+		if t.whole(t.keys[(i+j)<<t.lg:][:1<<t.lg]) != 0 {
+			continue
+		}
+		whole &^= 1 << j
+		key := t.mainKey(b, j, x+j, y)
+		if key == 0 {
+			any &^= 1 << j
+			t.lines.cells.clear(i + j)
+		}
+		sc.slot[j], sc.near[j] = uint32(key), math.Float32frombits(uint32(key>>32))
+	}
+	t.setCells(i, any, whole)
+	t.aimLanes(&t.sights.all[b], &sc.slot, whole, x, y)
+}
+
+// setCells fills in the cells from i on that have a bit in any, from the
+// scanned slots; whole has those that show one part alone.
+func (t *tile) setCells(i int, any, whole uint8) {
+	sc, c := &t.scanned, &t.lines.cells
+	slots, parts := c.slot[i:][:lanes], c.part[i:][:lanes]
+	ns, steps, wholes := c.n[i:][:lanes], c.step[i:][:lanes], c.whole[i:][:lanes]
+	part, jump, persp := int32(-1), float32(0), false // the last part's
+	flat := uint8(0)
 	for m := any; m != 0; m &= m - 1 {
 		j := lowest(m)
-		keys := t.keys[(i+j)<<t.lg:][:1<<t.lg]
-		key := keys[len(keys)/2]
-		if same>>j&1 == 0 {
-			slot := t.whole(keys)
-			if slot == 0 {
-				whole &^= 1 << j
-				if key = t.mainKey(b, j, x+j, y); key == 0 {
-					c.clear(i + j)
-					continue
-				}
+		slot := sc.slot[j]
+		if p := t.slots[slot].part; p != part {
+			part, jump = p, jumpPixels*t.f.pixelDepth(p, 1)
+			persp, flat = t.f.parts[p].persp, 0xff
+			if t.f.parts[p].hatch.period > 0 {
+				flat = 0
 			}
 		}
-		slot := uint32(key)
-		t.scanned.slot[j] = slot
-		p := t.slots[slot].part
-		if p != part {
-			part, jump = p, jumpPixels*t.f.pixelDepth(p, 1)
+		n, step := sc.near[j], jump
+		if persp {
+			step *= n
 		}
-		c.slot[i+j], c.part[i+j], c.n[i+j] = slot, p, math.Float32frombits(uint32(key>>32))
-		c.step[i+j] = jump
-		if t.f.parts[p].persp {
-			c.step[i+j] *= c.n[i+j]
-		}
-		c.whole[i+j] = whole>>j&1 != 0 && t.f.parts[p].hatch.period == 0
+		slots[j], parts[j], ns[j], steps[j] = slot, part, n, step
+		wholes[j] = whole & flat >> j & 1
 	}
-	t.aimLanes(&t.sights.all[b], &t.scanned.slot, whole, x, y)
 }
 
 // mainKey returns a sample of the part that covers most of a pixel that shows
@@ -166,6 +188,13 @@ func (t *tile) mainKey(b, j, x, y int) (key uint64) {
 // first.
 func (t *tile) readCells(o *eight, i int) {
 	c := &t.lines.cells
+	if !slices.Contains(o.slot[:], 0) {
+		copy(c.x[i:][:lanes], o.nx[:])
+		copy(c.y[i:][:lanes], o.ny[:])
+		copy(c.z[i:][:lanes], o.nz[:])
+		copy(c.nl[i:][:lanes], o.nl[:])
+		return
+	}
 	for j := range lanes {
 		if o.slot[j] != 0 {
 			c.x[i+j], c.y[i+j], c.z[i+j], c.nl[i+j] = o.nx[j], o.ny[j], o.nz[j], o.nl[j]

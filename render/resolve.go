@@ -186,11 +186,7 @@ func (t *tile) wishSolid(g *group, py int, any, same uint8) {
 		return
 	}
 	if t.f.light.style == Ink {
-		for m := any; m != 0; m &= m - 1 {
-			if i := lowest(m); t.lines.cells.whole[py*t.side+g.x+i] {
-				g.cells |= 1 << i
-			}
-		}
+		g.cells = any & t.lines.cells.wholes(py*t.side+g.x)
 		if any &^= g.cells; any == 0 {
 			return
 		}
@@ -281,11 +277,7 @@ func (t *tile) behindGroup(g *group, py int) {
 			k.r[i], k.g[i], k.b[i], k.a[i] = r, gr, b, c[3]
 		}
 	}
-	for m := g.cells; m != 0; m &= m - 1 {
-		i := lowest(m)
-		k.r[i], k.g[i], k.b[i] = t.inkWhole(py*t.side+g.x+i, g.x+i, py)
-		k.a[i] = 1
-	}
+	t.inkCells(g, py)
 	for _, m := range t.mixed[g.mixedFrom:g.mixedTo] {
 		c := t.solid(t.shares[m.from:m.to])
 		k.r[m.lane], k.g[m.lane], k.b[m.lane], k.a[m.lane] = c[0], c[1], c[2], c[3]

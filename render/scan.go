@@ -1,10 +1,13 @@
 package render
 
-// scan is what the opaque samples of a group show: for every pixel the slot of
-// one of them. The layout is known to the assembly.
+import "math"
+
+// scan is what the opaque samples of a group show: for every pixel slot and
+// nearness of one of them. The layout is known to the assembly.
 type scan struct {
-	slot      [lanes]uint32 // 0
-	any, same uint32        // 32, 36: pixels with any sample not 0, with all samples the same
+	slot      [lanes]uint32  // 0
+	near      [lanes]float32 // 32
+	any, same uint32         // 64, 68: pixels with any sample not 0, with all samples the same
 }
 
 // scan looks at the samples of the group whose first pixel is i.
@@ -24,13 +27,14 @@ func (s *scan) plain(keys []uint64, n int) {
 	s.any, s.same = 0, 0
 	for k := range lanes {
 		p := keys[k*n:][:n]
-		first := uint32(p[0])
+		one := p[n/2]
+		first := uint32(one)
 		any, same := uint32(0), true
 		for _, v := range p {
 			any |= uint32(v)
 			same = same && uint32(v) == first
 		}
-		s.slot[k] = first
+		s.slot[k], s.near[k] = first, math.Float32frombits(uint32(one>>32))
 		if any != 0 {
 			s.any |= 1 << k
 		}

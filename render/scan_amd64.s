@@ -4,8 +4,10 @@
 // from the first, Y4 all of them.
 #define PIXEL(k) \
 	VMOVDQU (32*k)(SI), Y0; \
-	MOVL (32*k)(SI), AX; \
+	MOVL (32*k+16)(SI), AX; \
 	MOVL AX, (4*k)(DI); \
+	MOVL (32*k+20)(SI), AX; \
+	MOVL AX, (32+4*k)(DI); \
 	VPBROADCASTQ X0, Y1; \
 	VPXOR Y0, Y1, Y1; \
 	VPAND Y15, Y1, Y1; \
@@ -37,7 +39,7 @@ TEXT ·scanFour(SB), NOSPLIT, $0-16
 	PIXEL(5)
 	PIXEL(6)
 	PIXEL(7)
-	MOVL R8, 32(DI)
-	MOVL R9, 36(DI)
+	MOVL R8, 64(DI)
+	MOVL R9, 68(DI)
 	VZEROUPPER
 	RET

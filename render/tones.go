@@ -2,27 +2,29 @@ package render
 
 // The flat tones of the ink look.
 
-// inkWhole returns the colour of a pixel that shows one part alone, from its
-// cell.
-func (t *tile) inkWhole(i, px, py int) (r, g, b float32) {
-	c := &t.lines.cells
-	p := &t.f.parts[c.part[i]]
-	if p.flat {
-		return p.col[0], p.col[1], p.col[2]
-	}
-	l := &t.f.light
-	nl := c.nl[i]
-	m := l.tones[0]
-	for k := 1; k < l.nTones; k++ {
-		d := nl - l.edges[k-1]
-		step := l.tones[k] - m
-		if d > 0.15 {
-			m += step
-		} else if d > -0.15 {
-			m += step * softStep(d, t.cellSlope(i, px, py)*max(l.soft, 0.7))
+// inkCells puts the colours of a group's pixels that show one part alone into
+// the stack, from their cells.
+func (t *tile) inkCells(g *group, py int) {
+	k, c, l := &t.stack, &t.lines.cells, &t.f.light
+	i := py*t.side + g.x
+	for m := g.cells; m != 0; m &= m - 1 {
+		j := lowest(m)
+		p := &t.f.parts[c.part[i+j]]
+		tone := float32(1)
+		if !p.flat {
+			tone = l.tones[0]
+			nl := c.nl[i+j]
+			for s := 1; s < l.nTones; s++ {
+				d, step := nl-l.edges[s-1], l.tones[s]-tone
+				if d > 0.15 {
+					tone += step
+				} else if d > -0.15 {
+					tone += step * softStep(d, t.cellSlope(i+j, g.x+j, py)*max(l.soft, 0.7))
+				}
+			}
 		}
+		k.r[j], k.g[j], k.b[j], k.a[j] = p.col[0]*tone, p.col[1]*tone, p.col[2]*tone, 1
 	}
-	return p.col[0] * m, p.col[1] * m, p.col[2] * m
 }
 
 // softStep is 0 well below d = 0 and 1 well above, with a change of width w.
