@@ -92,6 +92,7 @@ func shownFlags(flags *pflag.FlagSet, s *study.Study) {
 	flags.StringVar(&s.Operation, "operation", "", "`NAME` of an operation whose symmetry element is shown")
 	flags.StringVar(&s.Held.Frame, "second", "", "`RULE` that puts the axes of a second frame, drawn beside the first or into the same picture")
 	flags.StringVar(&s.Subgroup, "subgroup", "", "`GROUP` to descend to: C4v, or C4v:2 for the second way")
+	flags.StringVar(&s.Kept, "keep", "", "`OPERATIONS` that the subgroup holds, such as \"C4(x)\", by their names in the group")
 	flags.IntVar(&s.Central, "central", 0, "which `ATOM` is the central one (default: the one that all operations leave)")
 }
 
@@ -167,6 +168,8 @@ func checkFigure(cmd *cobra.Command, s *study.Study, output string) error {
 		return usagef("--copy and --partner need --irrep LABEL, such as --irrep Eu; project lists the group orbitals")
 	case kind == sheet.Descent && s.Subgroup == "":
 		return usagef("--sheet descent needs --subgroup GROUP, such as --subgroup C2v; descend lists them")
+	case s.Kept != "" && s.Subgroup == "":
+		return usagef("--keep tells which one --subgroup GROUP is; choose that too")
 	case s.Held.Frame != "" && !sheet.HoldsSecond(*s):
 		return usagef("--second: a second frame is shown by --sheet frames, by one group orbital (--irrep) and by the structure alone")
 	case kind == sheet.Frames && s.Held.Frame == "":

@@ -24,8 +24,9 @@ type correlation struct {
 }
 
 // correlate follows the irreps of a group into the subgroup that a study names,
-// "C4v" or "C4v:2" for the second way in which it lies in the group.
-func correlate(g *work.Group, text string) (*correlation, error) {
+// "C4v" or "C4v:2" for the second way in which it lies in the group; kept are
+// operations that it holds.
+func correlate(g *work.Group, text, kept string) (*correlation, error) {
 	setting := g.Fit.Setting
 	if text == "" {
 		return nil, message.Errorf("no subgroup is chosen")
@@ -61,7 +62,10 @@ func correlate(g *work.Group, text string) (*correlation, error) {
 			return nil, message.Errorf("%s lies in %s in %d ways that differ; %q is none of them", symbol, setting.Symbol, len(all), text)
 		}
 	}
-	d := all[n-1]
+	d, err := g.Conjugate(all[n-1], kept)
+	if err != nil {
+		return nil, err
+	}
 	fill(d.Subgroup, setting.Irreps)
 	c.content, c.partners = d.Correlation, d.Partners
 	return c, nil
@@ -98,7 +102,7 @@ func (m *maker) descent() (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	c, err := correlate(g, m.study.Subgroup)
+	c, err := correlate(g, m.study.Subgroup, m.study.Kept)
 	if err != nil {
 		return nil, err
 	}

@@ -70,6 +70,7 @@ func (s Study) Check() error {
 	c.count("held.partner", s.Held.Partner)
 	c.count("central", s.Central)
 	c.text("subgroup", s.Subgroup, maxName)
+	c.text("kept", s.Kept, maxName)
 	c.camera("camera", s.Camera)
 	c.views(s.Views)
 	c.look(s.Look)

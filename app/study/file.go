@@ -10,7 +10,7 @@ import (
 
 // Version is the version of the study's file that this program writes. Every
 // lower one is read.
-const Version = 3
+const Version = 4
 
 // Extension is what the names of study files end with.
 const Extension = ".lobewright"
@@ -19,7 +19,7 @@ const Extension = ".lobewright"
 // each character written with up to six, and room for the rest.
 const MaxBytes = 16 << 20
 
-var form = record.Form{Version: Version, MaxBytes: MaxBytes, Steps: []record.Step{unchanged, unchanged}}
+var form = record.Form{Version: Version, MaxBytes: MaxBytes, Steps: []record.Step{unchanged, unchanged, unchanged}}
 
 // unchanged is the step to a version that only knows more keys.
 func unchanged(*record.Node) error { return nil }

@@ -71,7 +71,11 @@ type Study struct {
 	// Subgroup is a group into which the irreps are followed: "C4v", or
 	// "C4v:2" for the second embedding.
 	Subgroup string `record:"subgroup"`
-	Camera   Camera `record:"camera"`
+	// Kept are operations that Subgroup holds, "C4(x), σv(xy)": they choose one
+	// of the subgroups that the operations of the group carry into each other.
+	// Empty leaves it to the program.
+	Kept   string `record:"kept"`
+	Camera Camera `record:"camera"`
 	// Views are cameras with names, kept to come back to.
 	Views  []View `record:"views"`
 	Look   Look   `record:"look"`

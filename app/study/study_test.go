@@ -22,7 +22,7 @@ var full = Study{
 	Camera: Camera{true, 30, -20, [4]float64{0.5, 0.5, -0.5, 0.5}, 2, [2]float64{0.5, -1}, true},
 	Turn:   []PlaneRotation{{1, 2, 45}}, Mixing: []PlaneRotation{{1, 3, -30}, {2, 1, 0.5}},
 	Held:    Held{"x-on-atoms", "C2(z)", "1,2", "A1g", 1, 2},
-	Central: 7, Subgroup: "C4v:2",
+	Central: 7, Subgroup: "C4v:2", Kept: "C4(x), σv(xy)",
 	Views:     []View{{"from above", Camera{Set: true, Elevation: 90}}, {"default", Camera{}}},
 	Look:      Look{"ink", "dark", "area", "polar", "hatching", true, true, true, true, true, true, true},
 	Figure:    Figure{"levels", true, "de", "serif", 9, true, true, true, true, true, 85, 60, 600, true},
@@ -40,7 +40,7 @@ var full1 = Study{
 }
 
 const fullText = `{
-  "version": 3,
+  "version": 4,
   "structure": "pasted",
   "coordinates": [
     "1",
@@ -94,6 +94,7 @@ const fullText = `{
   },
   "central": 7,
   "subgroup": "C4v:2",
+  "kept": "C4(x), σv(xy)",
   "camera": {
     "set": true,
     "azimuth": 30,
@@ -253,11 +254,27 @@ func TestFileOfVersion1IsRead(t *testing.T) {
 
 // Version 2 knew everything but the language of figures.
 func TestFileOfVersion2IsRead(t *testing.T) {
-	text := strings.Replace(strings.Replace(fullText, `"version": 3`, `"version": 2`, 1), "    \"language\": \"de\",\n", "", 1)
+	text := strings.Replace(version3(), `"version": 3`, `"version": 2`, 1)
+	text = strings.Replace(text, "    \"language\": \"de\",\n", "", 1)
 	want := full
-	want.Figure.Language = ""
+	want.Figure.Language, want.Kept = "", ""
 	s, err := Decode([]byte(text), "f")
 	if err != nil || !s.Equal(want) {
+		t.Errorf("%v: %#v", err, s)
+	}
+}
+
+// version3 is the text of full as version 3 had it, which did not know which one of
+// several like subgroups is meant.
+func version3() string {
+	text := strings.Replace(fullText, `"version": 4`, `"version": 3`, 1)
+	return strings.Replace(text, "  \"kept\": \"C4(x), σv(xy)\",\n", "", 1)
+}
+
+func TestFileOfVersion3IsRead(t *testing.T) {
+	want := full
+	want.Kept = ""
+	if s, err := Decode([]byte(version3()), "f"); err != nil || !s.Equal(want) {
 		t.Errorf("%v: %#v", err, s)
 	}
 }
@@ -322,6 +339,7 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 		"held.partner":          func(s *Study) { s.Held.Partner = -1 },
 		"central":               func(s *Study) { s.Central = -1 },
 		"subgroup":              func(s *Study) { s.Subgroup = "\x00" },
+		"kept":                  func(s *Study) { s.Kept = strings.Repeat("E,", 200) },
 		"views[1].name":         func(s *Study) { s.Views = []View{{}} },
 		"views[1].camera.zoom":  func(s *Study) { s.Views = []View{{"v", Camera{Zoom: 1e9}}} },
 		"figure.sheet":          func(s *Study) { s.Figure.Sheet = "bed" },
@@ -353,10 +371,10 @@ func TestValuesOutOfRangeAreRefusedByTheirKey(t *testing.T) {
 func TestAHandWrittenFileIsToldWhereItIsWrong(t *testing.T) {
 	for text, want := range map[string]string{
 		strings.Replace(fullText, "0.25", "25", 1):               "f:44: moment: 25 is too large; the most is 1",
-		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:75: look.style: "gaudy" is not known; there are lit, ink`,
-		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:61: camera.zoom: a number is due, not a list",
+		strings.Replace(fullText, `"ink"`, `"gaudy"`, 1):         `f:76: look.style: "gaudy" is not known; there are lit, ink`,
+		strings.Replace(fullText, `"zoom": 2`, `"zoom": [2]`, 1): "f:62: camera.zoom: a number is due, not a list",
 		fullText[:300]: "f:19: the file is cut off here",
-		strings.Replace(fullText, `"version": 3`, `"version": 4`, 1): "f:2: version: 4 is newer than this program, which reads up to version 3",
+		strings.Replace(fullText, `"version": 4`, `"version": 5`, 1): "f:2: version: 5 is newer than this program, which reads up to version 4",
 	} {
 		s, err := Decode([]byte(text), "f")
 		if err == nil || err.Error() != want {
@@ -463,7 +481,7 @@ func anyStudy(t *rapid.T) Study {
 		},
 		Turn:    []PlaneRotation{{1 + count.Draw(t, "from")/2, maxNumber, number(-360, 360)}},
 		Held:    Held{name.Draw(t, "held frame"), name.Draw(t, "held z"), name.Draw(t, "held x"), name.Draw(t, "held irrep"), count.Draw(t, "held copy"), count.Draw(t, "held partner")},
-		Central: count.Draw(t, "central"), Subgroup: name.Draw(t, "subgroup"),
+		Central: count.Draw(t, "central"), Subgroup: name.Draw(t, "subgroup"), Kept: name.Draw(t, "kept"),
 		Levels:    []Level{{from("group", "central"), name.Draw(t, "level"), count.Draw(t, "level copy"), number(0, 100)}},
 		Animation: Animation{number(0, 60), number(0, 60), rapid.IntRange(0, maxPixels).Draw(t, "width"), 7, flag.Draw(t, "once")},
 		Operation: name.Draw(t, "operation"), Moment: number(0, 1), Angle: number(0, 360),

@@ -310,14 +310,14 @@ func withGroup(s study.Study, as string) study.Study {
 	s.As = as
 	s.Z, s.X = "", ""
 	s.Held = study.Held{}
-	s.Subgroup = ""
+	s.Subgroup, s.Kept = "", ""
 	return withoutNames(s)
 }
 
 // withoutNames is the study without what is chosen by names that belong to a
 // frame.
 func withoutNames(s study.Study) study.Study {
-	s.Operation, s.Moment = "", 0
+	s.Operation, s.Moment, s.Kept = "", 0, ""
 	s.Turn, s.Mixing = nil, nil
 	s.Held.Irrep, s.Held.Copy, s.Held.Partner = "", 0, 0
 	s.Projection.Irrep, s.Projection.Copy, s.Projection.Partner = "", 0, 0

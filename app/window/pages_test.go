@@ -3,6 +3,7 @@
 package window
 
 import (
+	"slices"
 	"strings"
 	"testing"
 
@@ -173,6 +174,20 @@ func TestASubgroupIsFollowedAndUsed(t *testing.T) {
 	c.keep, c.leave = nil, []int{1}
 	if list := c.narrow(b.state.Group); list[0].Subgroup.Symbol != "C2v" {
 		t.Errorf("Cl2 is left in place by %s", list[0].Subgroup.Symbol)
+	}
+	// Which of the like subgroups is meant stays in the study: Cl2 is left in place
+	// by the C2v about x, not by that about y which stands in the list of all.
+	b.pages.pane.lay()
+	site := c.narrow(b.state.Group)[0]
+	b.tap(b.pages.pane, "subgroup "+site.Name())
+	c.leave = nil
+	all, err := work.Descents(b.state.Group.Fit.Setting, "C2v", nil)
+	if err != nil || b.now().Subgroup != site.Name() || b.now().Kept == "" {
+		t.Fatalf("%q with %q (%v)", b.now().Subgroup, b.now().Kept, err)
+	}
+	d, err := b.state.Group.Conjugate(all[site.Embedding-1], b.now().Kept)
+	if err != nil || !slices.Equal(d.Operations, b.state.Group.Leaving([]int{1})) {
+		t.Errorf("%v holds not what leaves Cl2 in place: %v", d, err)
 	}
 }
 

@@ -95,7 +95,7 @@ func (c *subgroups) narrow(g *work.Group) []work.Embedded {
 			list = slices.DeleteFunc(slices.Clone(list), func(e work.Embedded) bool {
 				return slices.ContainsFunc(e.Operations, func(o int) bool { return !slices.Contains(stay, o) })
 			})
-			list = placeFirst(list, d)
+			list = placeFirst(list, c.list, d)
 		}
 	}
 	c.narrowed, c.narrowedFor = list, key
@@ -103,15 +103,23 @@ func (c *subgroups) narrow(g *work.Group) []work.Embedded {
 }
 
 // placeFirst puts a subgroup first, where it may stand already in another of
-// its conjugates.
-func placeFirst(list []work.Embedded, d *symmetry.Descent) []work.Embedded {
-	embedding, of := 1, 1
+// its conjugates; all are the subgroups of the group, one a class, which tell the
+// number of its class.
+func placeFirst(list, all []work.Embedded, d *symmetry.Descent) []work.Embedded {
 	for i, e := range list {
 		if slices.Equal(e.Operations, d.Operations) {
 			return append([]work.Embedded{e}, slices.Delete(slices.Clone(list), i, i+1)...)
 		}
 	}
-	return append([]work.Embedded{{Descent: d, Embedding: embedding, Of: of}}, list...)
+	first := work.Embedded{Descent: d, Embedding: 1, Of: 1}
+	if alike, err := work.Holding(d.Group, all, d.Operations); err == nil {
+		for _, e := range alike {
+			if len(e.Operations) == len(d.Operations) {
+				first.Embedding, first.Of = e.Embedding, e.Of
+			}
+		}
+	}
+	return append([]work.Embedded{first}, list...)
 }
 
 // allSubgroups is the page of subgroups and of what becomes of everything
@@ -153,7 +161,7 @@ func (d *pageDrawing) allSubgroups() {
 			label = label.Then(notation.Words(" " + strconv.Itoa(e.Embedding)))
 		}
 		d.choice(&x, label, chip{
-			name: "subgroup " + name, hint: say("frames.subgroupHint", keptText(e.Descent)), on: on, do: func() { d.chooseSubgroup(name) },
+			name: "subgroup " + name, hint: say("frames.subgroupHint", keptText(e.Descent)), on: on, do: func() { d.chooseSubgroup(name, d.pages.subgroups.kept(e)) },
 		})
 	}
 	d.endChoices()
@@ -164,7 +172,21 @@ func (d *pageDrawing) allSubgroups() {
 		d.words(say("frames.chooseSubgroup"), d.quiet)
 		return
 	}
+	if held, err := g.Conjugate(chosen.Descent, s.Kept); err == nil {
+		chosen = &work.Embedded{Descent: held, Embedding: chosen.Embedding, Of: chosen.Of}
+	}
 	d.descent(g, *chosen)
+}
+
+// kept says which of the subgroups that the group carries into each other is
+// meant: nothing for the one that stands in the list of all.
+func (c *subgroups) kept(e work.Embedded) string {
+	for _, other := range c.list {
+		if slices.Equal(other.Operations, e.Operations) {
+			return ""
+		}
+	}
+	return work.Kept(e.Descent)
 }
 
 // keptText lists the operations that a subgroup holds.
@@ -272,12 +294,12 @@ func (u *ui) menuOnPage(items []*fyne.MenuItem, y float64) {
 	widget.ShowPopUpMenuAtPosition(fyne.NewMenu("", items...), u.win.Canvas(), at.AddXY(float32(pad*z), float32((y+chipHeight)*z)))
 }
 
-func (u *ui) chooseSubgroup(name string) {
+func (u *ui) chooseSubgroup(name, kept string) {
 	s := u.now()
-	if s.Subgroup == name {
-		name = ""
+	if s.Subgroup == name && s.Kept == kept {
+		name, kept = "", ""
 	}
-	s.Subgroup = name
+	s.Subgroup, s.Kept = name, kept
 	u.pages.subgroups.taken = ""
 	u.do(study.StepSubgroup, s)
 }
@@ -458,7 +480,7 @@ func (d *pageDrawing) linearSubgroups(g *work.Group) {
 	x := float64(pad)
 	for _, sub := range linearGroups[symbol] {
 		sub := sub
-		d.choice(&x, notation.Group(sub), chip{name: "subgroup " + sub, on: s.Subgroup == sub, do: func() { d.chooseSubgroup(sub) }})
+		d.choice(&x, notation.Group(sub), chip{name: "subgroup " + sub, on: s.Subgroup == sub, do: func() { d.chooseSubgroup(sub, "") }})
 	}
 	d.endChoices()
 	if s.Subgroup == "" {

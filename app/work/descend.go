@@ -67,6 +67,42 @@ func holding(s *symmetry.Setting, d *symmetry.Descent, keep []int) (*symmetry.De
 	return best, nil
 }
 
+// Conjugate is, of the subgroups that the group carries into that of a descent, the
+// one that holds some operations, "C4(x), σh(xy)" as Study.Kept has them; the
+// descent itself if there are none. The error says which operations there are, or
+// that no such subgroup holds them.
+func (g *Group) Conjugate(d *symmetry.Descent, kept string) (*symmetry.Descent, error) {
+	var keep []int
+	for _, name := range strings.FieldsFunc(kept, func(r rune) bool { return r == ',' }) {
+		o, err := g.Operation(strings.TrimSpace(name), 0)
+		if err != nil {
+			return nil, err
+		}
+		keep = append(keep, o.Index)
+	}
+	if len(keep) == 0 {
+		return d, nil
+	}
+	s := g.Fit.Setting
+	found, err := holding(s, d, keep)
+	if err == nil && found == nil {
+		err = message.Errorf("no subgroup %s of %s holds %s", d.Subgroup.Symbol, s.Symbol, operationList(s, keep))
+	}
+	return found, err
+}
+
+// Kept names operations that generate the subgroup of a descent, as Study.Kept has
+// them.
+func Kept(d *symmetry.Descent) string {
+	var generators []int
+	for _, o := range d.Operations {
+		if !slices.Contains(Generated(d.Group, generators), o) {
+			generators = append(generators, o)
+		}
+	}
+	return operationList(d.Group, generators)
+}
+
 // Generated is the smallest subgroup that holds some operations, by rising
 // index.
 func Generated(s *symmetry.Setting, generators []int) []int {
