@@ -46,7 +46,7 @@ func (f *face) post(g func()) {
 func (f *face) run(what string, done func(*State) bool) *State {
 	f.t.Helper()
 	seen := len(f.states)
-	timeout := time.After(20 * time.Second)
+	timeout := time.After(90 * time.Second)
 	for {
 		select {
 		case g := <-f.posts:

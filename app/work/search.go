@@ -16,8 +16,8 @@ import (
 // thread. One structure is sought at a time; the newest wins.
 type Search struct {
 	work    *Work
-	post    func(func())
 	deliver func(*Nearby)
+	news    notice
 
 	closing context.Context
 	close   context.CancelFunc
@@ -28,7 +28,6 @@ type Search struct {
 	number int // counts the searches, so that late news of one is known
 	stop   context.CancelFunc
 	state  Nearby
-	posted bool
 }
 
 // Nearby is how far a search has come. It is never changed after it was
@@ -55,7 +54,8 @@ type Nearby struct {
 
 // NewSearch starts nothing yet. post and deliver are as for NewService.
 func NewSearch(w *Work, post func(func()), deliver func(*Nearby)) *Search {
-	v := &Search{work: w, post: post, deliver: deliver}
+	v := &Search{work: w, deliver: deliver}
+	v.news.post, v.news.run = post, v.hand
 	v.closing, v.close = context.WithCancel(context.Background())
 	return v
 }
@@ -90,7 +90,7 @@ func (v *Search) Again(s study.Study) {
 	number := v.number
 	v.running.Add(1)
 	v.mu.Unlock()
-	v.publish()
+	v.news.now()
 	go func() {
 		defer v.running.Done()
 		defer stop()
@@ -117,7 +117,7 @@ func (v *Search) Cancel() {
 	v.interrupt()
 	v.state.Running, v.state.Cancelled = false, true
 	v.mu.Unlock()
-	v.publish()
+	v.news.now()
 }
 
 // Close stops everything and waits until it has stopped. Nothing is delivered
@@ -206,41 +206,15 @@ func (v *Search) tell(number int, now bool, change func(*Nearby)) {
 	change(&v.state)
 	v.mu.Unlock()
 	if now {
-		v.publish()
+		v.news.now()
 	} else {
-		v.publishSoon()
+		v.news.soon(often, func() bool { return v.closing.Err() != nil })
 	}
 }
 
-// publish has the state delivered, unless a function that will do so is waiting
-// already.
-func (v *Search) publish() {
-	v.mu.Lock()
-	waiting := v.posted
-	v.posted = true
-	v.mu.Unlock()
-	if !waiting {
-		v.post(v.hand)
-	}
-}
-
-func (v *Search) publishSoon() {
-	v.mu.Lock()
-	waiting := v.posted
-	v.posted = true
-	v.mu.Unlock()
-	if !waiting {
-		time.AfterFunc(often, func() {
-			if v.closing.Err() == nil {
-				v.post(v.hand)
-			}
-		})
-	}
-}
-
+// hand delivers the state as it is now.
 func (v *Search) hand() {
 	v.mu.Lock()
-	v.posted = false
 	state := v.state
 	closed := v.closing.Err() != nil
 	v.mu.Unlock()

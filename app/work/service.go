@@ -20,6 +20,7 @@ type Service struct {
 	work    *Work
 	post    func(func())
 	deliver func(*State)
+	news    notice
 
 	wake    chan struct{} // holds one: there may be something to do
 	closing context.Context
@@ -36,7 +37,6 @@ type Service struct {
 	problems  []*Problem
 	progress  *Progress
 	cancelled bool
-	posted    bool
 	delivered *State
 	trial     int // counts the calls of Try
 }
@@ -46,6 +46,7 @@ type Service struct {
 // there. deliver is called by functions that are posted, never elsewhere.
 func NewService(w *Work, post func(func()), deliver func(*State)) *Service {
 	v := &Service{work: w, post: post, deliver: deliver, wake: make(chan struct{}, 1), delivered: &State{}}
+	v.news.post, v.news.run = post, v.hand
 	v.closing, v.close = context.WithCancel(context.Background())
 	v.running.Add(1)
 	go v.serve()
@@ -91,7 +92,7 @@ func (v *Service) Cancel() {
 	v.pending, v.cancelled, v.progress = false, true, nil
 	v.interrupt()
 	v.mu.Unlock()
-	v.publish()
+	v.news.now()
 }
 
 // Close stops everything and waits until it has stopped; a stage that has begun
@@ -150,7 +151,7 @@ func (v *Service) serveNewest() {
 	v.stop = nil
 	v.shown, v.problems, v.progress = settle(v.shown, c, asked), problems, nil
 	v.mu.Unlock()
-	v.publish()
+	v.news.now()
 }
 
 // An attempt is one computation, which tells of itself once patience is lost.
@@ -197,25 +198,12 @@ func (a *attempt) tell() {
 	v.shown, v.progress = settle(v.shown, known, a.asked), &progress
 	v.problems = nil
 	v.mu.Unlock()
-	v.publish()
-}
-
-// publish has the state delivered, unless a function that will do so is waiting
-// already.
-func (v *Service) publish() {
-	v.mu.Lock()
-	waiting := v.posted
-	v.posted = true
-	v.mu.Unlock()
-	if !waiting {
-		v.post(v.hand)
-	}
+	v.news.now()
 }
 
 // hand delivers the state as it is now, if it differs from the last.
 func (v *Service) hand() {
 	v.mu.Lock()
-	v.posted = false
 	if v.closing.Err() != nil {
 		v.mu.Unlock()
 		return
