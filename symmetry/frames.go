@@ -229,11 +229,9 @@ func (f *Fit) In(frame Frame) *Fit {
 // the former x where z is kept, else a C2, else a plane that holds z. It
 // returns an error, with what would be possible, where z is along no axis of
 // the group that can be its z, or where x is neither along a C2 nor in a plane
-// though the group has such.
+// though the group has such. In a linear group z can be turned round, and x may lie
+// anywhere.
 func (f *Fit) FrameAlong(z, x mgl64.Vec3) (Frame, error) {
-	if f.Setting.Infinite() {
-		return Frame{}, message.Errorf("the axes of %s are not chosen: z lies along the molecule, and x is free", f.Setting.Symbol)
-	}
 	up := mgl64.Vec3{0, 0, 1}
 	if z != (mgl64.Vec3{}) {
 		if z.Len() < 1e-9 {
@@ -242,7 +240,13 @@ func (f *Fit) FrameAlong(z, x mgl64.Vec3) (Frame, error) {
 		up = z.Normalize()
 	}
 	allowed := f.Setting.AxesForZ()
+	if k := f.Setting.kind; k.infinite() && k.family != spherical {
+		allowed = []mgl64.Vec3{{0, 0, 1}}
+	}
 	up, ok := nearestLine(up, allowed)
+	if !ok && f.Setting.Infinite() {
+		return Frame{}, message.Errorf("z cannot lie there in %s: it lies along the molecule, and x is free", f.Setting.Symbol)
+	}
 	if !ok {
 		return Frame{}, message.Errorf("z cannot lie there in %s: %s", f.Setting.Symbol, f.Setting.possible(allowed, "z"))
 	}

@@ -72,6 +72,25 @@ func TestABentMoleculeIsTakenForALinearOne(t *testing.T) {
 	}
 }
 
+// x of a linear group is free: it can be laid square to the bend.
+func TestTheXOfALinearMoleculeIsChosen(t *testing.T) {
+	t.Chdir(t.TempDir())
+	if err := os.WriteFile("bent.xyz", []byte(bent), 0o666); err != nil {
+		t.Fatal(err)
+	}
+	for as, irreps := range map[string]string{"D∞h": "Σg+ + Πg + Σu+ + Πu", "D2h": "Ag + B2g + B3g + B1u + B2u + B3u"} {
+		var p contractProjection
+		runJSON(t, &p, "project", "bent.xyz", "--as", as, "--x", "0,0,2", "--on", "O:p")
+		if got := contentIn(p); got != irreps || distance(p.Frame.Rotation[0], []float64{0, 0, 1}) > 1e-9 || math.Abs(math.Abs(p.Frame.Rotation[2][0])-1) > 1e-9 {
+			t.Errorf("%s: %s in the frame %v", as, got, p.Frame.Rotation)
+		}
+	}
+	status, out, messages := run(t, "group", "bent.xyz", "--as", "D∞h", "--z", "0,1,0")
+	if want := "lobewright: z cannot lie there in D∞h: it lies along the molecule, and x is free\n"; status != 1 || out != "" || messages != want {
+		t.Errorf("status %d, %q %q", status, out, messages)
+	}
+}
+
 func contentIn(p contractProjection) string {
 	var content []contractContent
 	for _, part := range p.Content {
