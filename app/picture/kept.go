@@ -11,7 +11,7 @@ type meshPair struct{ plus, minus *render.Mesh }
 
 // keptMeshes are the meshes of all pictures of the program, which ask for the
 // same ones.
-var keptMeshes = meshStore{most: 16 << 20}
+var keptMeshes = meshStore{most: 12 << 20}
 
 // A meshStore keeps meshes by a key, those that were asked for last, in a
 // bounded amount of memory. It serves many goroutines.

@@ -60,6 +60,8 @@ const (
 	// slow is a quick frame that takes too long to turn smoothly: from then on
 	// quick frames have half the resolution; fast brings the whole back.
 	slow, fast = 24 * time.Millisecond, 6 * time.Millisecond
+	// idle is how long nothing is drawn before the buffers are given up.
+	idle = 2 * time.Second
 )
 
 func newFrames(notify func(), failed func(any)) *frames {
@@ -131,6 +133,13 @@ func (f *frames) work() {
 		} else {
 			select {
 			case r = <-f.want:
+			case <-time.After(idle):
+				drawer.renderer.Forget()
+				select {
+				case r = <-f.want:
+				case <-f.ctx.Done():
+					return
+				}
 			case <-f.ctx.Done():
 				return
 			}

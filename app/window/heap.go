@@ -14,8 +14,11 @@ import (
 // use that looking never becomes the main work. Without a limit it would hold
 // twice what was ever in use at once.
 const (
-	usualHeap = 125 << 20
-	roomHeap  = 40 << 20
+	usualHeap = 110 << 20
+	roomHeap  = 30 << 20
+	// garbage is how much of what is in use may come to it unused, in percent:
+	// a picture in motion makes little.
+	garbage = 60
 )
 
 // limitHeap keeps the memory that Go holds near what is in use, until done is
@@ -25,6 +28,7 @@ func limitHeap(done <-chan struct{}) {
 		return
 	}
 	live := []metrics.Sample{{Name: "/gc/heap/live:bytes"}}
+	debug.SetGCPercent(garbage)
 	debug.SetMemoryLimit(usualHeap)
 	go func() {
 		const often = time.Second

@@ -170,6 +170,7 @@ func (u *ui) setScale(scale float64) {
 func (u *ui) restyle() {
 	u.app.Settings().SetTheme(u.colours)
 	u.thumbs.forget()
+	u.view.ring.paint(u.palette().Accent)
 	u.scale.restyle(u)
 	for _, t := range u.tracks {
 		t.line.FillColor = u.palette().Rule

@@ -31,7 +31,7 @@ type thumbs struct {
 }
 
 // mostThumbs bounds the pictures that are kept: turning a set makes many.
-const mostThumbs = 400
+const mostThumbs = 120
 
 type thumbKey struct {
 	orbital, pixels int

@@ -4,6 +4,7 @@ package window
 
 import (
 	"image"
+	"image/color"
 	"math"
 	"sync/atomic"
 	"time"
@@ -24,7 +25,8 @@ import (
 type viewport struct {
 	widget.BaseWidget
 	raster *canvas.Raster
-	ring   *canvas.Rectangle // around the picture while it has the focus
+	ring   *ring // around the picture while it has the focus
+	accent func() color.Color
 	frames *frames
 	guard  func(func())
 	post   func(func())
@@ -68,9 +70,8 @@ type viewport struct {
 func newViewport(u *ui) *viewport {
 	v := &viewport{guard: u.guard, post: u.post, zoom: u.zoom, onHint: u.hint}
 	v.raster = canvas.NewRaster(v.generate)
-	v.ring = canvas.NewRectangle(nil)
-	v.ring.StrokeWidth = 2
-	v.ring.Hide()
+	v.ring = newRing()
+	v.accent = func() color.Color { return u.palette().Accent }
 	v.frames = newFrames(v.ready, u.failedAside)
 	v.ExtendBaseWidget(v)
 	return v
@@ -78,7 +79,7 @@ func newViewport(u *ui) *viewport {
 
 // CreateRenderer implements fyne.Widget.
 func (v *viewport) CreateRenderer() fyne.WidgetRenderer {
-	return widget.NewSimpleRenderer(&fyne.Container{Layout: stacked{}, Objects: []fyne.CanvasObject{v.raster, v.ring}})
+	return widget.NewSimpleRenderer(&fyne.Container{Layout: stacked{}, Objects: []fyne.CanvasObject{v.raster, v.ring.Container}})
 }
 
 // stacked gives every object the whole size, however small.
@@ -340,13 +341,14 @@ func (v *viewport) Cursor() desktop.Cursor {
 // FocusGained implements fyne.Focusable.
 func (v *viewport) FocusGained() {
 	v.ring.Show()
-	v.ring.Refresh()
+	v.ring.paint(v.accent())
+	v.raster.Refresh() // the toolkit draws nothing anew for what is shown or hidden
 }
 
 // FocusLost implements fyne.Focusable.
 func (v *viewport) FocusLost() {
 	v.ring.Hide()
-	v.ring.Refresh()
+	v.raster.Refresh()
 }
 
 // TypedKey implements fyne.Focusable.

@@ -685,7 +685,9 @@ func TestRandomEventsDoNoHarm(t *testing.T) {
 	if n := runtime.NumGoroutine(); n > before+2 {
 		t.Errorf("%d goroutines are left of %d before", n, before)
 	}
-	if grown := heap() - heapBefore; grown > 150<<20 {
+	grown := heap() - heapBefore
+	t.Logf("after %d events the heap has grown by %d KiB, and there are %d goroutines of %d", events, grown>>10, runtime.NumGoroutine(), before)
+	if grown > 90<<20 { // meshes, typefaces and what the toolkit keeps of widgets for a while
 		t.Errorf("the heap has grown by %d MiB", grown>>20)
 	}
 }
