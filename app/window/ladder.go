@@ -37,10 +37,16 @@ func (d *pageDrawing) ladder() {
 		return
 	}
 	d.ladderHead()
-	count := map[string]int{}
+	// Of the groups of a linear structure with the same z the linear one stands
+	// for all; of the ways in which another lies, the first.
+	count, lead := map[string]int{}, map[string]int{}
 	for _, n := range l.Groups {
 		if n.Whole == nil || work.Usual(n) {
-			count[n.Fit.Setting.Symbol]++
+			symbol := n.Fit.Setting.Symbol
+			count[symbol]++
+			if first := lead[symbol]; first == 0 || n.Embedding < first {
+				lead[symbol] = n.Embedding
+			}
 		}
 	}
 	for _, i := range l.ByOrder() {
@@ -48,10 +54,10 @@ func (d *pageDrawing) ladder() {
 		symbol := n.Fit.Setting.Symbol
 		on := s.As == asText(n)
 		if n.Whole != nil && !work.Usual(n) && !on {
-			continue // all atoms on the line of a group that stands here
+			continue
 		}
-		if n.Embedding == 1 || d.pages.opened[symbol] || on {
-			d.ladderRow(n, d.pages.nearby.Shares[i], count[symbol], on)
+		if leads := n.Embedding == lead[symbol]; leads || d.pages.opened[symbol] || on {
+			d.ladderRow(n, d.pages.nearby.Shares[i], count[symbol], leads, on)
 		}
 	}
 }
@@ -87,7 +93,7 @@ func (d *pageDrawing) ladderHead() {
 
 // ladderRow is one group: how far an atom moves, the measure, and the
 // distortion by symmetry.
-func (d *pageDrawing) ladderRow(n *symmetry.Nearness, shares []work.Share, of int, on bool) {
+func (d *pageDrawing) ladderRow(n *symmetry.Nearness, shares []work.Share, of int, leads, on bool) {
 	symbol := n.Fit.Setting.Symbol
 	name := asText(n)
 	right := d.plain
@@ -109,16 +115,16 @@ func (d *pageDrawing) ladderRow(n *symmetry.Nearness, shares []work.Share, of in
 	}
 	label := say("frames.embedding", n.Embedding, of)
 	w := d.board.measure(notation.Words(label), d.quiet)
-	d.embeddingMark(n, label, w, symbol)
+	d.embeddingMark(leads, label, w, symbol)
 }
 
 // embeddingMark says which of several ways in which a group lies in the
-// structure a row is; a click shows or hides the others.
-func (d *pageDrawing) embeddingMark(n *symmetry.Nearness, label string, width float64, symbol string) {
+// structure a row is; a click on the one that leads shows or hides the others.
+func (d *pageDrawing) embeddingMark(leads bool, label string, width float64, symbol string) {
 	spots := d.board.spots
 	top := spots[len(spots)-1].y
 	d.board.text(pad+embeddingColumn, top+4+textSize, notation.Words(label), d.quiet)
-	if n.Embedding > 1 {
+	if !leads {
 		return
 	}
 	d.board.fill(pad+embeddingColumn, top+textSize+7, width, 1, d.board.palette.Rule)
@@ -200,7 +206,7 @@ func (d *pageDrawing) otherLine(l *work.Ladder) {
 			d.ladderHead()
 			head = true
 		}
-		d.ladderRow(n, d.pages.nearby.Shares[i], 1, d.now().As == asText(n))
+		d.ladderRow(n, d.pages.nearby.Shares[i], 1, true, d.now().As == asText(n))
 	}
 }
 

@@ -7,6 +7,8 @@ import (
 	"strings"
 	"testing"
 
+	"fyne.io/fyne/v2"
+
 	"lobewright/app/study"
 	"lobewright/app/work"
 )
@@ -70,6 +72,32 @@ func TestARowOfTheLadderTakesTheStructureForItsGroup(t *testing.T) {
 	}
 	if s := b.now(); s.As != "" || s.Look.Displacements || s.KeepAxes {
 		t.Errorf("five steps back it is %+v", s)
+	}
+}
+
+// TestTheLadderOfABentMoleculeHasEveryGroupOnce: that of the line, D2h for it,
+// and C2h with its axis across the line, of which the one along it is a part of
+// the linear group.
+func TestTheLadderOfABentMoleculeHasEveryGroupOnce(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.openText("3\n\nS 0 0 0\nO 1.235 0.72 0\nO -1.235 0.72 0\n")
+	b.pages.turnTo(ladderPage)
+	b.until("the ladder", func() bool { return b.pages.nearby.Ladder != nil && !b.pages.nearby.Running })
+	b.pages.pane.Resize(fyne.NewSize(pageWidth, 900))
+	rows := map[string]int{}
+	for _, s := range b.pages.pane.lay().spots {
+		if name, ok := strings.CutPrefix(s.name, "group "); ok {
+			symbol, _, _ := strings.Cut(name, ":")
+			rows[symbol]++
+		}
+	}
+	for _, symbol := range []string{"D∞h", "D2h", "C2v", "C2h", "Cs", "C2", "Ci", "C1"} {
+		if rows[symbol] != 1 {
+			t.Errorf("%s has %d rows", symbol, rows[symbol])
+		}
+	}
+	if len(rows) != 8 {
+		t.Errorf("the rows are %v", rows)
 	}
 }
 
