@@ -171,14 +171,7 @@ func (t *tile) lookAtMesh(s *slot, p *part, x, y float32) (nx, ny, nz float32, s
 		ny = wa*a.ny + wb*b.ny + wc*c.ny
 		nz = wa*a.nz + wb*b.nz + wc*c.nz
 	} else {
-		pa, pb, pc := &m.Positions[ix[0]], &m.Positions[ix[1]], &m.Positions[ix[2]]
-		ax, ay, az := pb[0]-pa[0], pb[1]-pa[1], pb[2]-pa[2]
-		bx, by, bz := pc[0]-pa[0], pc[1]-pa[1], pc[2]-pa[2]
-		gx, gy, gz := ay*bz-az*by, az*bx-ax*bz, ax*by-ay*bx
-		r := &p.nrm
-		nx = r[0]*gx + r[1]*gy + r[2]*gz
-		ny = r[3]*gx + r[4]*gy + r[5]*gz
-		nz = r[6]*gx + r[7]*gy + r[8]*gz
+		nx, ny, nz = p.flatNormal(ix)
 	}
 	if p.hatch.period > 0 && m.Coords != nil {
 		if p.persp {
@@ -188,13 +181,29 @@ func (t *tile) lookAtMesh(s *slot, p *part, x, y float32) (nx, ny, nz float32, s
 			w := &l.weight
 			wa, wb, wc = wa*w[0][0]+wb*w[1][0]+wc*w[2][0], wa*w[0][1]+wb*w[1][1]+wc*w[2][1], wa*w[0][2]+wb*w[1][2]+wc*w[2][2]
 		}
-		ca, cb, cc := &m.Coords[ix[0]], &m.Coords[ix[1]], &m.Coords[ix[2]]
-		k := float32(0)
-		if sum := wa + wb + wc; sum != 0 {
-			k = 1 / sum
-		}
-		t.surf.u = (wa*ca[0] + wb*cb[0] + wc*cc[0]) * k
-		t.surf.v = (wa*ca[1] + wb*cb[1] + wc*cc[1]) * k
+		t.mixCoords(m, ix, wa, wb, wc)
 	}
 	return nx, ny, nz, side
+}
+
+// flatNormal returns the normal of a triangle's plane.
+func (p *part) flatNormal(ix *[3]uint32) (nx, ny, nz float32) {
+	pos := p.mesh.Positions
+	pa, pb, pc := &pos[ix[0]], &pos[ix[1]], &pos[ix[2]]
+	ax, ay, az := pb[0]-pa[0], pb[1]-pa[1], pb[2]-pa[2]
+	bx, by, bz := pc[0]-pa[0], pc[1]-pa[1], pc[2]-pa[2]
+	gx, gy, gz := ay*bz-az*by, az*bx-ax*bz, ax*by-ay*bx
+	r := &p.nrm
+	return r[0]*gx + r[1]*gy + r[2]*gz, r[3]*gx + r[4]*gy + r[5]*gz, r[6]*gx + r[7]*gy + r[8]*gz
+}
+
+// mixCoords mixes the surface coordinates of a triangle's corners.
+func (t *tile) mixCoords(m *Mesh, ix *[3]uint32, wa, wb, wc float32) {
+	ca, cb, cc := &m.Coords[ix[0]], &m.Coords[ix[1]], &m.Coords[ix[2]]
+	k := float32(0)
+	if sum := wa + wb + wc; sum != 0 {
+		k = 1 / sum
+	}
+	t.surf.u = (wa*ca[0] + wb*cb[0] + wc*cc[0]) * k
+	t.surf.v = (wa*ca[1] + wb*cb[1] + wc*cc[1]) * k
 }

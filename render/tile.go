@@ -57,7 +57,7 @@ type tile struct {
 	shares      []share
 	frags       []frag
 	stack       stack
-	opaque1     [1]share
+	rearShare   [1]share
 	rear        [4]float32
 	lines       inkTile
 }

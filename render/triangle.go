@@ -21,12 +21,6 @@ const snapBig = 1.5 * (1 << (52 - subBits))
 
 func snap(v float32) float32 { return float32(float64(v) + snapBig - snapBig) }
 
-// triEdges are the edge functions a·x + b·y + c of a triangle in grid units
-// of the canvas, less 1 where 0 is outside.
-type triEdges struct {
-	a, b, c [3]int64
-}
-
 // kernel is what the innermost loop needs of a triangle.
 type kernel struct {
 	e           [3]int32 // edge functions at the corner of the first pixel
