@@ -167,7 +167,10 @@ func (t *tile) differ(i, j int, dx, dy float32, b *border) bool {
 			abs32(p.n-q.n) < 12*t.f.pixelDepth(front.part, front.n) {
 			return false
 		}
-		b.on, b.near = true, front.n
+		// A little nearer than the body, whose depth changes by some pixels
+		// within the pixel at its rim: otherwise a translucent plane through
+		// its axis would lie now before and now behind the line.
+		b.on, b.near = true, front.n+10*t.f.pixelDepth(front.part, front.n)
 		b.at = t.between(i, j, p.part, q.part)
 		return true
 	}

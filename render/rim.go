@@ -119,14 +119,14 @@ func (t *tile) rim(l *layer, part int32, x, y, x1, y1 int, b *border) bool {
 	at := cp + cq - 0.5
 	if cp < 0.5 {
 		at = 1 - at
-		x, y, x1, y1 = x1, y1, x, y
+		x, y = x1, y1
 	}
 	b.on, b.at = true, min(1, max(0, at))
 	g, lane := t.groupOf(x, y)
 	// A little nearer than the sheet, so that a line where it dips into a
 	// body is seen on both sides; but facets at the rim are so steep that
 	// their slope says little.
-	z, zx, zy := t.plane(t.strips[l.at[g]].slot[lane], float32(min(x, x1))+0.5, float32(min(y, y1))+0.5)
+	z, zx, zy := t.plane(t.strips[l.at[g]].slot[lane], float32(x)+0.5, float32(y)+0.5)
 	d := t.f.pixelDepth(part, z)
 	b.near = z + min(2*(abs32(zx)+abs32(zy)), 10*d) + 4*d
 	return true
@@ -136,6 +136,20 @@ func (t *tile) rim(l *layer, part int32, x, y, x1, y1 int, b *border) bool {
 type inkFrag struct {
 	pixel, part int32
 	n, a        float32
+}
+
+// overOwn returns the nearness of an outline in a pixel, no less than that of
+// its own sheet: beside the rim a round body soon comes nearer.
+func (t *tile) overOwn(k inkFrag, g, lane int) float32 {
+	reach := 24 * (t.f.ink.half + 1) * t.f.pixelDepth(k.part, k.n)
+	n := k.n
+	for j := t.piles[g]; j >= 0; j = t.strips[j].next {
+		s := &t.strips[j]
+		if s.part == k.part && s.rank != outline && s.mask[lane] != 0 && s.n[lane]-k.n < reach {
+			n = max(n, s.n[lane])
+		}
+	}
+	return n
 }
 
 // addInks turns the outlines of translucent sheets into strips.
@@ -157,6 +171,7 @@ func (t *tile) addInks() {
 			continue
 		}
 		g, lane := t.groupOf(x, y)
+		k.n = t.overOwn(k, g, lane)
 		s := t.sheet(l, g, y, k.part)
 		s.rank = outline
 		t.paint(s, lane, mask, k.n, lc[0], lc[1], lc[2], k.a)
