@@ -39,9 +39,12 @@ type item struct {
 
 // binScratch is what a worker needs to sort a batch.
 type binScratch struct {
-	tri   []uint32
-	rect  [][4]int16
-	count []int32
+	tri            []uint32
+	rect           [][4]int16
+	count          []int32
+	all            image.Rectangle // tiles of all triangles
+	lx, ly, hx, hy float32         // the band with its apron
+	rows           float64         // sample rows a pixel
 }
 
 const (
@@ -134,7 +137,6 @@ func (r *Renderer) binBatch(w *worker, i int) {
 	b := &f.batches[i]
 	p := &f.parts[b.part]
 	s := &w.bin
-	s.tri, s.rect = s.tri[:0], s.rect[:0]
 	b.loose = b.loose[:0]
 	vs := f.verts[p.vert0 : p.vert0+len(p.mesh.Positions)]
 	nv := uint32(len(vs))
@@ -143,29 +145,7 @@ func (r *Renderer) binBatch(w *worker, i int) {
 	if p.mirrored {
 		sign = -1
 	}
-	// Sample rows and tiles of the band, with its apron.
-	lim := f.rect.Inset(-f.apron)
-	lx, ly, hx, hy := float32(lim.Min.X), float32(lim.Min.Y), float32(lim.Max.X), float32(lim.Max.Y)
-	rows := float64(int(1) << f.lg)
-	all := image.Rectangle{Min: image.Pt(math.MaxInt16, math.MaxInt16), Max: image.Pt(-1, -1)}
-	add := func(id uint32, a, c, d *vert) {
-		x0, x1 := min(a.x, c.x, d.x), max(a.x, c.x, d.x)
-		y0, y1 := min(a.y, c.y, d.y), max(a.y, c.y, d.y)
-		if !(x1 > lx && x0 < hx && y1 > ly && y0 < hy) {
-			return
-		}
-		if y1-y0 < 1 && rowFrom(float64(y0), rows) >= rowFrom(float64(y1), rows) {
-			return
-		}
-		if x1-x0 < 1 && rowFrom(float64(x0), rows) >= rowFrom(float64(x1), rows) {
-			return
-		}
-		t := f.tileRect(x0, y0, x1, y1)
-		s.tri = append(s.tri, id)
-		s.rect = append(s.rect, t)
-		all.Min.X, all.Min.Y = min(all.Min.X, int(t[0])), min(all.Min.Y, int(t[1]))
-		all.Max.X, all.Max.Y = max(all.Max.X, int(t[2])+1), max(all.Max.Y, int(t[3])+1)
-	}
+	s.begin(f)
 	for t, tri := range p.mesh.Triangles[b.from:b.to] {
 		if tri[0] >= nv || tri[1] >= nv || tri[2] >= nv {
 			continue
@@ -176,7 +156,7 @@ func (r *Renderer) binBatch(w *worker, i int) {
 			f.cutNear(b, p, uint32(t)+uint32(b.from))
 			for k := n; k < len(b.loose); k++ {
 				l := &b.loose[k]
-				add(looseBit|uint32(k), &l.v[0], &l.v[1], &l.v[2])
+				s.add(f, looseBit|uint32(k), &l.v[0], &l.v[1], &l.v[2])
 			}
 			continue
 		}
@@ -189,13 +169,42 @@ func (r *Renderer) binBatch(w *worker, i int) {
 		} else if !(area > 0 || area < 0) {
 			continue
 		}
-		add(uint32(t)+uint32(b.from), a, c, d)
+		s.add(f, uint32(t)+uint32(b.from), a, c, d)
 	}
 	b.rect = image.Rectangle{}
 	if len(s.tri) > 0 {
-		b.rect = all
+		b.rect = s.all
 	}
 	b.fill(s)
+}
+
+// begin readies for a batch.
+func (s *binScratch) begin(f *frame) {
+	s.tri, s.rect = s.tri[:0], s.rect[:0]
+	s.all = image.Rectangle{Min: image.Pt(math.MaxInt16, math.MaxInt16), Max: image.Pt(-1, -1)}
+	lim := f.rect.Inset(-f.apron)
+	s.lx, s.ly, s.hx, s.hy = float32(lim.Min.X), float32(lim.Min.Y), float32(lim.Max.X), float32(lim.Max.Y)
+	s.rows = float64(int(1) << f.lg)
+}
+
+// add adds a triangle that lies on the band and may reach a sample.
+func (s *binScratch) add(f *frame, id uint32, a, c, d *vert) {
+	x0, x1 := min(a.x, c.x, d.x), max(a.x, c.x, d.x)
+	y0, y1 := min(a.y, c.y, d.y), max(a.y, c.y, d.y)
+	if !(x1 > s.lx && x0 < s.hx && y1 > s.ly && y0 < s.hy) {
+		return
+	}
+	if y1-y0 < 1 && rowFrom(float64(y0), s.rows) >= rowFrom(float64(y1), s.rows) {
+		return
+	}
+	if x1-x0 < 1 && rowFrom(float64(x0), s.rows) >= rowFrom(float64(x1), s.rows) {
+		return
+	}
+	t := f.tileRect(x0, y0, x1, y1)
+	s.tri = append(s.tri, id)
+	s.rect = append(s.rect, t)
+	s.all.Min.X, s.all.Min.Y = min(s.all.Min.X, int(t[0])), min(s.all.Min.Y, int(t[1]))
+	s.all.Max.X, s.all.Max.Y = max(s.all.Max.X, int(t[2])+1), max(s.all.Max.Y, int(t[3])+1)
 }
 
 // fill makes the lists of a batch's tiles from the sorted-out triangles.

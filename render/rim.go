@@ -55,8 +55,25 @@ func (t *tile) inkLayer(l *layer, part int32) {
 	}
 	t.join(area)
 	for _, i := range k.touch {
-		t.inks = append(t.inks, inkFrag{pixel: i, n: k.near[i], a: f.inked(k.dist[i]), part: part})
+		x, y := int(i)%t.side, int(i)/t.side
+		if a := f.inked(k.dist[i]); a > 0 && image.Pt(x, y).In(t.inner) {
+			t.inks = append(t.inks, inkFrag{pixel: i, n: t.overSheet(l, x, y, k.near[i], part), a: a, part: part})
+		}
 	}
+}
+
+// overSheet returns the nearness of a layer's outline in a pixel, no less
+// than that of its sheet: beside the rim a round body soon comes nearer.
+func (t *tile) overSheet(l *layer, x, y int, n float32, part int32) float32 {
+	g, lane := t.groupOf(x, y)
+	if k := l.at[g]; k >= 0 {
+		s := &t.strips[k]
+		reach := 24 * (t.f.ink.half + 1) * t.f.pixelDepth(part, n)
+		if s.mask[lane] != 0 && s.n[lane] > n && s.n[lane]-n < reach {
+			return s.n[lane]
+		}
+	}
+	return n
 }
 
 // even tells that the pixels of a group, the next pixel and those below are
@@ -138,20 +155,6 @@ type inkFrag struct {
 	n, a        float32
 }
 
-// overOwn returns the nearness of an outline in a pixel, no less than that of
-// its own sheet: beside the rim a round body soon comes nearer.
-func (t *tile) overOwn(k inkFrag, g, lane int) float32 {
-	reach := 24 * (t.f.ink.half + 1) * t.f.pixelDepth(k.part, k.n)
-	n := k.n
-	for j := t.piles[g]; j >= 0; j = t.strips[j].next {
-		s := &t.strips[j]
-		if s.part == k.part && s.rank != outline && s.mask[lane] != 0 && s.n[lane]-k.n < reach {
-			n = max(n, s.n[lane])
-		}
-	}
-	return n
-}
-
 // addInks turns the outlines of translucent sheets into strips.
 func (t *tile) addInks() {
 	lc := &t.f.light.line
@@ -163,15 +166,11 @@ func (t *tile) addInks() {
 			t.forget(l)
 		}
 		x, y := int(k.pixel)%t.side, int(k.pixel)/t.side
-		if k.a <= 0 || !image.Pt(x, y).In(t.inner) {
-			continue
-		}
 		mask := t.before(int(k.pixel), k.n)
 		if mask == 0 {
 			continue
 		}
 		g, lane := t.groupOf(x, y)
-		k.n = t.overOwn(k, g, lane)
 		s := t.sheet(l, g, y, k.part)
 		s.rank = outline
 		t.paint(s, lane, mask, k.n, lc[0], lc[1], lc[2], k.a)

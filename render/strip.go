@@ -182,17 +182,18 @@ func (t *tile) moveOut(l *layer, g, lane int) *strip {
 
 // flush ends the layers of a part.
 func (t *tile) flush(part int32) {
-	if len(t.front.touched) > 0 {
-		t.inkLayer(&t.front, part)
-	}
 	for _, l := range [2]*layer{&t.front, &t.back} {
 		if len(l.touched) > 0 && !t.knowsPlanes(part) {
 			for _, k := range l.touched {
 				t.setPlanes(&t.strips[k])
 			}
 		}
-		t.forget(l)
 	}
+	if len(t.front.touched) > 0 {
+		t.inkLayer(&t.front, part)
+	}
+	t.forget(&t.front)
+	t.forget(&t.back)
 }
 
 // forget empties a layer whose strips are done.
