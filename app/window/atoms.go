@@ -42,7 +42,7 @@ func newAtomTable(u *ui) *atomTable {
 	t.pane = newPane(t.draw, u)
 	t.pane.least = fyne.NewSize(leftWidth+90, 100) // wide enough for most numbers
 	t.pane.onKey, t.pane.onRune, t.pane.onLeave = t.key, t.rune, t.leave
-	t.pane.holdsTab = func() bool { return t.editing }
+	t.pane.holdsTab = func() bool { return true } // Escape and Ctrl+Tab leave
 	t.pane.Hide()
 	return t
 }
@@ -287,12 +287,7 @@ func (t *atomTable) key(e *fyne.KeyEvent) bool {
 			t.end()
 			t.mark(t.row-1, t.column)
 		case fyne.KeyTab:
-			t.end()
-			if t.column == 3 {
-				t.mark(t.row+1, 0)
-			} else {
-				t.mark(t.row, t.column+1)
-			}
+			t.tab()
 		case fyne.KeyEscape:
 			t.giveUp()
 		default:
@@ -329,6 +324,8 @@ func (t *atomTable) key(e *fyne.KeyEvent) bool {
 			t.begin(false)
 			t.letter()
 		}
+	case fyne.KeyTab:
+		t.tab()
 	case fyne.KeyInsert:
 		t.add()
 	case fyne.KeyEscape:
@@ -337,6 +334,25 @@ func (t *atomTable) key(e *fyne.KeyEvent) bool {
 		return false
 	}
 	return true
+}
+
+// tab takes what was typed and goes on to the next cell, row by row; back with
+// the shift key.
+func (t *atomTable) tab() {
+	by := 1
+	if t.u.modifiers()&fyne.KeyModifierShift != 0 {
+		by = -1
+	}
+	t.end()
+	t.step(by)
+}
+
+// step moves the mark by cells, row by row; it stays where the table ends.
+func (t *atomTable) step(by int) {
+	to := t.row*4 + t.column + by
+	if to >= 0 && to < 4*len(t.rows) {
+		t.mark(to/4, to%4)
+	}
 }
 
 // giveUp puts the cell back as it was.

@@ -150,3 +150,53 @@ func TestTwoHundredAtomsAreEditedSmoothly(t *testing.T) {
 		}
 	}
 }
+
+// Number, Tab, number, Tab … fills a row and goes on in the next one; Tab never
+// leaves the table, whether something was typed or not.
+func TestTabGoesFromCellToCellOfTheTable(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("water")
+	b.showAtoms()
+	p := b.atoms.pane
+	at := func() [2]int {
+		row, column, ok := b.atoms.marked()
+		if !ok {
+			t.Fatalf("the mark is on %q", p.mark)
+		}
+		return [2]int{row, column}
+	}
+	b.atoms.mark(0, 1)
+	for _, cell := range [][2]int{{0, 2}, {0, 3}, {1, 0}} {
+		typeIn(p, "0.5")
+		if !p.AcceptsTab() {
+			t.Fatal("Tab leaves a cell that is being typed in")
+		}
+		press(p, fyne.KeyTab)
+		if at() != cell {
+			t.Errorf("Tab leads to %v, not to %v", at(), cell)
+		}
+	}
+	if r := b.atoms.rows[0]; r[1] != "0.5" || r[2] != "0.5" || r[3] != "0.5" {
+		t.Errorf("the row holds %q", r)
+	}
+	press(p, fyne.KeyReturn, fyne.KeyReturn)
+	if !p.AcceptsTab() {
+		t.Fatal("Tab leaves the table after Return")
+	}
+	press(p, fyne.KeyTab)
+	if at() != [2]int{2, 1} {
+		t.Errorf("after Return Tab leads to %v", at())
+	}
+	for range 10 {
+		press(p, fyne.KeyTab)
+	}
+	if at() != [2]int{2, 3} {
+		t.Errorf("the table ends at %v", at())
+	}
+	for range 20 {
+		b.atoms.step(-1)
+	}
+	if at() != [2]int{0, 0} {
+		t.Errorf("the table begins at %v", at())
+	}
+}

@@ -5,7 +5,9 @@ package window
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strconv"
+	"strings"
 
 	"lobewright/app/notation"
 	"lobewright/app/picture"
@@ -32,7 +34,7 @@ func (d *pageDrawing) ladder() {
 	}
 	l := d.pages.nearby.Ladder
 	if l.Linear() != nil {
-		d.linearChoices(l.Linear().Setting.Symbol)
+		d.linearChoices(l.Linear())
 		d.otherLine(l)
 		return
 	}
@@ -181,17 +183,47 @@ var linearGroups = map[string][]string{
 	"D∞h": {"D6h", "D5h", "D4h", "D3h", "D2h", "D4d", "D3d", "D2d", "C6v", "C4v", "C2v", "C2h"},
 }
 
-func (d *pageDrawing) linearChoices(symbol string) {
+func (d *pageDrawing) linearChoices(fit *symmetry.Fit) {
+	symbol := fit.Setting.Symbol
 	d.y += 4
 	d.words(say("frames.linearText"), d.quiet)
 	d.y += 4
 	x := float64(pad)
 	s := d.now()
-	for _, as := range append([]string{symbol}, linearGroups[symbol]...) {
-		as := as
+	for _, as := range withChosen(append([]string{symbol}, linearGroups[symbol]...), s.As) {
 		d.choice(&x, notation.Group(as), chip{name: "group " + as, on: s.As == as, do: func() { d.takeGroup(as) }})
 	}
+	u := d.ui
+	d.choice(&x, notation.Words(say("frames.otherGroup")), chip{name: "other group", hint: say("frames.otherGroupHint"), do: func() {
+		u.askLinearGroup(symbol, s.As, func(as string) error {
+			if _, err := fit.LinearAs(as); err != nil {
+				return err
+			}
+			u.takeGroup(as)
+			return nil
+		})
+	}})
 	d.endChoices()
+}
+
+// withChosen adds to usual groups the one that was chosen beyond them.
+func withChosen(usual []string, chosen string) []string {
+	if chosen == "" || strings.Contains(chosen, ":") || slices.Contains(usual, chosen) {
+		return usual
+	}
+	return append(slices.Clip(usual), chosen)
+}
+
+// askLinearGroup asks for a finite group with the z of a linear one, by its
+// symbol.
+func (u *ui) askLinearGroup(linear, now string, take func(symbol string) error) {
+	example := "C7v"
+	if linear == "D∞h" {
+		example = "D8h"
+	}
+	u.ask(say("frames.otherGroupAsk"), say("frames.otherGroupText", linear, example), now, func(text string) error {
+		return take(strings.TrimSpace(text))
+	})
 }
 
 // otherLine shows the linear groups that a linear molecule nearly has.

@@ -134,6 +134,9 @@ func (u *ui) addShortcuts() {
 	add(&fyne.ShortcutRedo{}, u.redo)
 	add(&desktop.CustomShortcut{KeyName: fyne.KeyZ, Modifier: fyne.KeyModifierShortcutDefault | fyne.KeyModifierShift}, u.redo)
 	add(&fyne.ShortcutPaste{}, u.paste)
+	// Where Tab goes from cell to cell these go to the next region.
+	add(&desktop.CustomShortcut{KeyName: fyne.KeyTab, Modifier: fyne.KeyModifierControl}, c.FocusNext)
+	add(&desktop.CustomShortcut{KeyName: fyne.KeyTab, Modifier: fyne.KeyModifierControl | fyne.KeyModifierShift}, c.FocusPrevious)
 	c.SetOnTypedKey(func(e *fyne.KeyEvent) { u.guard(func() { u.key(e) }) })
 	c.SetOnTypedRune(func(r rune) { u.guard(func() { u.typed(r) }) })
 }

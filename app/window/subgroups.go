@@ -478,10 +478,21 @@ func (d *pageDrawing) linearSubgroups(g *work.Group) {
 	d.y += 6
 	s := d.now()
 	x := float64(pad)
-	for _, sub := range linearGroups[symbol] {
-		sub := sub
+	for _, sub := range withChosen(linearGroups[symbol], s.Subgroup) {
 		d.choice(&x, notation.Group(sub), chip{name: "subgroup " + sub, on: s.Subgroup == sub, do: func() { d.chooseSubgroup(sub, "") }})
 	}
+	u := d.ui
+	d.choice(&x, notation.Words(say("frames.otherGroup")), chip{name: "other subgroup", hint: say("frames.otherGroupHint"), do: func() {
+		u.askLinearGroup(symbol, s.Subgroup, func(sub string) error {
+			if _, err := symmetry.DescendLinear(symbol, sub, 0); err != nil {
+				return err
+			}
+			if u.now().Subgroup != sub {
+				u.chooseSubgroup(sub, "")
+			}
+			return nil
+		})
+	}})
 	d.endChoices()
 	if s.Subgroup == "" {
 		return
