@@ -5,7 +5,6 @@ import (
 
 	"github.com/go-gl/mathgl/mgl64"
 
-	"lobewright/app/notation"
 	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/assets"
@@ -205,49 +204,3 @@ func (b *Body) must() []ball {
 
 // PaletteOf is the palette for a look.
 func PaletteOf(look study.Look) assets.Palette { return paletteOf(look) }
-
-// AddAxes draws arrows along x, y and z from the origin, a little beyond the
-// atoms, with letters at their ends.
-func (b *Body) AddAxes(letters [3]notation.Text) {
-	for i, l := range letters {
-		var e mgl64.Vec3
-		e[i] = 1
-		b.addAxis(triadMark{direction: e, letters: l})
-	}
-}
-
-// AddTriads draws the axes like AddAxes, and dashed those of a second frame, with
-// an index 2; an axis of both bears both names.
-func (b *Body) AddTriads(second *work.Exchange) {
-	for _, m := range triadMarks(second) {
-		b.addAxis(m)
-	}
-}
-
-func (b *Body) addAxis(m triadMark) {
-	const beyond, least = 1.22, 0.6 // of the atoms' reach; Å
-	reach := 0.0
-	for _, a := range b.stage.atoms {
-		reach = max(reach, a.centre.Len())
-	}
-	reach = max(least, beyond*reach)
-	const radius, head, wide = 0.022, 0.1, 0.03 // of the length
-	const dashedWidth = 0.35                    // mm
-	tip := m.direction.Mul(reach)
-	ink := flat(b.stage.palette.Ink)
-	if m.dashed {
-		b.stage.scene.Add(render.Line{Points: []mgl64.Vec3{{}, tip.Mul(1 - head/2)}, Width: dashedWidth, Dash: dash}, ink)
-		b.stage.scene.Add(render.Cone{Base: tip.Mul(1 - head), Apex: tip, Radius: wide * reach}, ink)
-	} else {
-		b.stage.scene.Add(render.Arrow{To: tip, Radius: radius * reach / 2, HeadLength: head * reach, HeadRadius: wide * reach}, ink)
-	}
-	end := ball{tip, 0.02 * reach}
-	b.stage.elements = append(b.stage.elements, end)
-	b.axes = append(b.axes, axisEnd{end, m.letters})
-}
-
-// An axisEnd is where the letter of an axis stands.
-type axisEnd struct {
-	ball
-	letter notation.Text
-}

@@ -34,6 +34,7 @@ func (m *maker) frames() (*Sheet, error) {
 		}
 	}
 	cells[1].turn = &turn
+	cells[0].body.Reserve(cells[1].body, turn)
 	both := grid{rows: []row{{unit: 2, cells: cells}}, widest: 80, side: m.labelRoom(2)}
 	both.view = picture.NewViewpoint(m.study.Camera, cells[0].body)
 	c := card{group: g, bare: true, lobes: len(m.study.Basis) > 0 && m.study.Projection.Irrep != ""}

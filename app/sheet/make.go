@@ -268,6 +268,7 @@ func (m *maker) panel(body *picture.Body, v picture.Viewpoint, p picture.Panel, 
 	drawn := &Panel{Rect: Rect{0, 0, p.Width, p.Height}, Name: name, Scene: body.Scene(p.Scale), Camera: v.Camera(p), Look: body.Look()}
 	drawn.weigh(m.weight())
 	out := block{w: p.Width, h: p.Height, items: []Item{drawn}}
+	out.items = append(out.items, m.ghostAxes(body, v, p)...)
 	var labels []picture.Label
 	if named && !m.study.Look.NoLabels {
 		var missing []string

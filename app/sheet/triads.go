@@ -2,6 +2,7 @@ package sheet
 
 import (
 	"lobewright/app/notation"
+	"lobewright/app/picture"
 	"lobewright/app/study"
 	"lobewright/app/work"
 	"lobewright/symmetry"
@@ -43,6 +44,28 @@ func (m *maker) ruleLine(index, name string, fit *symmetry.Fit) notation.Text {
 		}
 	}
 	return t.Then(notation.Words(" ("+name+"): "), notation.Sentence(notation.ShortConventionIn(m.texts, fit)))
+}
+
+// ghostAlpha is how strongly axes show through bodies, of 255.
+const ghostAlpha = 110
+
+// ghostAxes draws the axes of a body lightly over its picture, so that one sees them
+// where atoms and lobes cover them.
+func (m *maker) ghostAxes(body *picture.Body, v picture.Viewpoint, p picture.Panel) []Item {
+	const width = 0.2
+	var out []Item
+	ink := m.palette.Ink
+	ink.A = ghostAlpha
+	for _, l := range body.AxisLines(v, p) {
+		if onPanel(l.From, p) && onPanel(l.To, p) {
+			out = append(out, Line{Points: [][2]float64{l.From, l.To}, Width: width * m.weight(), Dash: l.Dash, Color: ink})
+		}
+	}
+	return out
+}
+
+func onPanel(at [2]float64, p picture.Panel) bool {
+	return at[0] >= 0 && at[1] >= 0 && at[0] <= p.Width && at[1] <= p.Height
 }
 
 // frameName is what a choice of axes is called.

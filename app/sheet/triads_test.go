@@ -31,3 +31,25 @@ func TestOnePictureShowsTwoFrames(t *testing.T) {
 		}
 	}
 }
+
+// Axes that atoms and lobes cover are drawn lightly over them.
+func TestAxesShowThroughBodies(t *testing.T) {
+	for _, s := range []study.Study{
+		{Structure: "demo:square-plane", Held: study.Held{Frame: "x-between"}},
+		{Structure: "demo:square-plane", Basis: []string{"Cl:sigma"}, Projection: study.Projection{Irrep: "Eu"}, Held: study.Held{Frame: "x-between"}},
+	} {
+		full, dashed := 0, 0
+		for _, item := range sheetOf(t, s).Items {
+			if l, ok := item.(Line); ok && l.Color.A == ghostAlpha {
+				if len(l.Dash) > 0 {
+					dashed++
+				} else {
+					full++
+				}
+			}
+		}
+		if full != 3 || dashed != 2 { // both z are one
+			t.Errorf("%v: %d full and %d dashed axes", s.Basis, full, dashed)
+		}
+	}
+}
