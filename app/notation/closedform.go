@@ -1,7 +1,6 @@
 package notation
 
 import (
-	"regexp"
 	"strconv"
 	"strings"
 	"unicode"
@@ -30,41 +29,42 @@ func PhiText(number string) Text {
 // Phi is the plain name of a function of the basis, from its index: φ1 for 0.
 func Phi(function int) string { return "φ" + strconv.Itoa(function+1) }
 
+// atomMark stands before the name of an atom in a sentence that is to be set:
+// C2 is a carbon atom there and not an axis.
+const atomMark = "\ue000" // for private use
+
 // Sentence sets a sentence in which names of axes, operations and planes
 // occur: x, y, z and their planes in italic, C4, C2′, σv and the like as
-// operations. What follows "toward" is the name of an atom: C2 is one there.
+// operations, by themselves or at the head of a word (C4-Achsen).
 func Sentence(s string) Text {
 	var t Text
-	naming := false // words after "toward", "of", "lie" may be names of atoms
 	for _, word := range strings.SplitAfter(s, " ") {
-		core := strings.TrimRightFunc(word, func(r rune) bool { return unicode.IsSpace(r) || strings.ContainsRune(",;:.", r) })
-		rest := word[len(core):]
-		switch {
-		case naming && isAtomName(core):
-			t = t.Then(Words(core))
-		case isAxes(core):
-			t = t.Then(Text{{Text: core, Italic: true}})
-		case isOperation(core):
-			t = t.Then(Operation(strings.ReplaceAll(core, "′", "'")))
-		default:
-			t = t.Then(Words(core))
-		}
-		t = t.Then(Words(rest))
-		switch core {
-		case "toward", "of", "lie", "lies":
-			naming = true
-		case "and":
-		default:
-			naming = naming && isAtomName(core)
-		}
+		core := strings.TrimLeft(word, "(")
+		before := word[:len(word)-len(core)]
+		core = strings.TrimRightFunc(core, func(r rune) bool { return unicode.IsSpace(r) || strings.ContainsRune(",;:.)", r) })
+		after := word[len(before)+len(core):]
+		t = t.Then(Words(before), wordText(core), Words(after))
 	}
 	return t
 }
 
-// isAtomName tells whether a word may name an atom: "C2", "Cl12".
-func isAtomName(word string) bool { return atomName.MatchString(word) }
-
-var atomName = regexp.MustCompile(`^[A-Z][a-z]?[0-9]+$`)
+func wordText(word string) Text {
+	if name, ok := strings.CutPrefix(word, atomMark); ok {
+		return Words(name)
+	}
+	if isAxes(word) {
+		return Text{{Text: word, Italic: true}}
+	}
+	head, tail, compound := strings.Cut(word, "-")
+	if !isOperation(head) {
+		return Words(word)
+	}
+	t := Operation(strings.NewReplacer("′", "'", "″", "''").Replace(head))
+	if compound {
+		t = t.Then(Words("-" + tail))
+	}
+	return t
+}
 
 // isAxes tells whether a word is x, y, z or a plane of two of them.
 func isAxes(word string) bool {

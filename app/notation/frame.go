@@ -3,6 +3,7 @@ package notation
 import (
 	"fmt"
 	"math"
+	"regexp"
 	"slices"
 	"strings"
 
@@ -21,13 +22,42 @@ func Convention(fit *symmetry.Fit, names []string) string {
 
 // ConventionIn is Convention in the language of the texts.
 func ConventionIn(t assets.Texts, fit *symmetry.Fit, names []string) string {
-	z, x := axisRules(t, fit, true)
+	z, x := conventionClauses(t, fit, names)
+	return joinClauses(z, x)
+}
+
+func conventionClauses(t assets.Texts, fit *symmetry.Fit, names []string) (z, x string) {
+	z, x = axisRules(t, fit, true)
 	z += toward(t, fit, names, 2)
 	if x != "" {
 		x += toward(t, fit, names, 0)
 	}
-	return joinClauses(z, x)
+	return z, x
 }
+
+// ConventionTexts are the clauses of ConventionIn, set. Asides tells whether
+// remarks in brackets, on how a rule settles ties, are among them.
+func ConventionTexts(t assets.Texts, fit *symmetry.Fit, names []string, asides bool) []Text {
+	marked := make([]string, len(names))
+	for i, name := range names {
+		marked[i] = atomMark + name
+	}
+	var out []Text
+	z, x := conventionClauses(t, fit, marked)
+	for _, clause := range strings.Split(joinClauses(z, x), "; ") {
+		if !asides {
+			clause = bracketed.ReplaceAllString(clause, "")
+		}
+		if clause != "" {
+			out = append(out, Sentence(clause))
+		}
+	}
+	return out
+}
+
+// bracketed are remarks in brackets; those of the names of operations follow no
+// blank.
+var bracketed = regexp.MustCompile(` \([^()]*\)`)
 
 // ShortConvention is Convention without what settles rare cases and without
 // atoms, for captions.

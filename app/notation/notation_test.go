@@ -5,7 +5,11 @@ import (
 	"strings"
 	"testing"
 
+	"github.com/go-gl/mathgl/mgl64"
+
+	"lobewright/assets"
 	"lobewright/orbitals"
+	"lobewright/symmetry"
 )
 
 // brief writes a Text with _ before what is lowered, ^ before what is raised
@@ -94,16 +98,29 @@ func TestSentencesSetAxesAndOperations(t *testing.T) {
 	if got != want {
 		t.Errorf("set as %s", got)
 	}
-	if got, want := brief(Sentence("z along C2, +z toward C2")), "*z* along *C*_[2], +z toward C2"; got != want {
-		t.Errorf("an axis and an atom of one name are set as %s, want %s", got, want)
+	got, want = brief(Sentence("x between them (along the C2, which is C2″); längs der drei C4-Achsen")),
+		"*x* between them (along the *C*_[2], which is *C*_[2]″); längs der drei *C*_[4]-Achsen"
+	if got != want {
+		t.Errorf("set as %s", got)
 	}
 }
 
-func TestSentencesSetNamesOfAtomsUpright(t *testing.T) {
-	got := brief(Sentence("x along a C2′ (all C2′ are equivalent), in xz at +x lie C2, C3 and C7; z along C5, +z toward C2, C4 of C3"))
-	want := "*x* along a *C*_[2]′ (all *C*_[2]′ are equivalent), in *xz* at +x lie C2, C3 and C7; *z* along *C*_[5], +z toward C2, C4 of C3"
-	if got != want {
-		t.Errorf("got  %s\nwant %s", got, want)
+// TestConventionsSetNamesOfAtomsUpright has an axis and an atom of one name.
+func TestConventionsSetNamesOfAtomsUpright(t *testing.T) {
+	fit, err := symmetry.Detect([]symmetry.Point{ // formaldehyde
+		{Kind: 8, Position: mgl64.Vec3{0, 0, -1.2}}, {Kind: 6}, {Kind: 1, Position: mgl64.Vec3{0, 0.94, 0.59}}, {Kind: 1, Position: mgl64.Vec3{0, -0.94, 0.59}},
+	}, nil, symmetry.Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for language, want := range map[assets.Language]string{
+		assets.English: "*z* along *C*_[2], +z toward C2",
+		assets.German:  "*z* längs *C*_[2], +z zu C2 hin",
+	} {
+		texts := ConventionTexts(assets.TextsIn(language), fit, []string{"O1", "C2", "H3", "H4"}, false)
+		if got := brief(texts[0]); got != want {
+			t.Errorf("got  %s\nwant %s", got, want)
+		}
 	}
 }
 

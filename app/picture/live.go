@@ -152,7 +152,15 @@ func (l *Live) fill(s *stage, shown Shown, toward mgl64.Vec3, quick bool) {
 	}
 	if len(shown.Nodes) > 0 {
 		r := l.roomOf(s, shown)
+		from := len(s.scene.Shapes)
 		s.addNodes(shown.Nodes, r.centre, nodeReach(r.radius))
+		if shown.Operation != nil && shown.Moment > 0 && shown.Traveller == nil {
+			// They go with the lobes whose nodes they are.
+			at := render.Linear(shown.Operation.At(shown.Moment))
+			for i := range s.scene.Shapes[from:] {
+				s.scene.Shapes[from+i].Transform = &at
+			}
+		}
 	}
 	if shown.Basis == nil || len(shown.Coefficients) == 0 {
 		return

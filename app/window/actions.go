@@ -178,8 +178,31 @@ func (u *ui) chooseOrbital(irrep string, number, partner int) {
 	if !s.Projection.Character {
 		s.Projection.Element = elementFor(partner)
 	}
+	if o := u.state.Orbitals; o != nil && s.Projection.Function > 0 {
+		s.Projection.Function = functionWithPart(o, s.Projection)
+	}
 	u.fade()
 	u.do(step, s)
+}
+
+// functionWithPart is the chosen function, counted from 1, if it has a part in
+// the chosen group orbital or another copy of it, so that its projection shows
+// how that comes about; else the first function that has one.
+func functionWithPart(o *work.Orbitals, p study.Projection) int {
+	const seen = 1e-9
+	first := p.Function
+	for _, x := range o.Projection.Orbitals {
+		if o.Irreps[x.Irrep].Label != p.Irrep || x.Partner != p.Partner-1 || p.Function > len(x.Coefficients) {
+			continue
+		}
+		if math.Abs(x.Coefficients[p.Function-1]) > seen {
+			return p.Function
+		}
+		if x.Copy == p.Copy-1 {
+			first = 1 + slices.IndexFunc(x.Coefficients, func(c float64) bool { return math.Abs(c) > seen })
+		}
+	}
+	return max(first, 1)
 }
 
 // nextOrbital goes to another group orbital of the list.
@@ -326,6 +349,7 @@ func (u *ui) typeBasis(text string) {
 	if len(list) > len(u.now().Basis) {
 		u.setBasis(list)
 	}
+	u.win.Canvas().Focus(u.view) // where keys choose and play what follows
 }
 
 // sayTyped shows what is wrong with what was typed, right above it.

@@ -74,10 +74,8 @@ func rulesOf(g *work.Group) []symmetry.Frame {
 func (d *pageDrawing) ruleRow(name string, g *work.Group, f symmetry.Frame, on bool, do func()) {
 	d.row(name, "", on, do, func() {
 		d.words(f.Rule.Name, d.strong)
-		for _, clause := range strings.Split(notation.ConventionIn(texts(), g.Fit.In(f), g.CoreNames()), "; ") {
-			if clause != "" {
-				d.line(notation.Sentence(clause), d.plain)
-			}
+		for _, clause := range notation.ConventionTexts(texts(), g.Fit.In(f), g.CoreNames(), true) {
+			d.line(clause, d.plain)
 		}
 		d.words(notation.SourceIn(texts(), f.Rule), d.quiet)
 	})

@@ -4,7 +4,6 @@ package window
 
 import (
 	"math"
-	"regexp"
 	"slices"
 	"strconv"
 	"strings"
@@ -269,20 +268,13 @@ func (d *givenDrawing) tolerance() {
 	d.problem(work.ConcernTolerance)
 }
 
-// asides are remarks in brackets; those of the names of operations follow no
-// blank.
-var asides = regexp.MustCompile(` \([^()]*\)`)
-
 func (d *givenDrawing) frameOfAxes() {
 	fit := d.state.Group.Fit
 	d.heading(say("frames.heading"))
-	convention := notation.ConventionIn(texts(), fit, d.state.Group.CoreNames())
 	// How a rule settles ties stands on the page of the axes: here the functions
 	// below are to be in sight.
-	for _, clause := range strings.Split(asides.ReplaceAllString(convention, ""), "; ") {
-		if clause != "" {
-			d.line(notation.Sentence(clause), d.plain)
-		}
+	for _, clause := range notation.ConventionTexts(texts(), fit, d.state.Group.CoreNames(), false) {
+		d.line(clause, d.plain)
 	}
 	d.words(say("frames.rule", notation.SourceIn(texts(), fit.Rule)), d.quiet)
 	for _, tie := range notation.TiesIn(texts(), fit.Ties) {

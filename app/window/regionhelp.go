@@ -91,6 +91,7 @@ type hintEntry struct {
 	hint   string
 	onHint func(text string, at fyne.Position)
 	help   func()
+	leave  func() // gives the keyboard back
 }
 
 // MouseIn implements desktop.Hoverable.
@@ -110,9 +111,13 @@ func (e *hintEntry) TappedSecondary(p *fyne.PointEvent) {
 
 // TypedKey implements fyne.Focusable.
 func (e *hintEntry) TypedKey(k *fyne.KeyEvent) {
-	if k.Name == fyne.KeyF1 {
+	switch k.Name {
+	case fyne.KeyF1:
 		e.help()
-		return
+	case fyne.KeyEscape:
+		e.SetText("")
+		e.leave()
+	default:
+		e.Entry.TypedKey(k)
 	}
-	e.Entry.TypedKey(k)
 }

@@ -119,7 +119,7 @@ func TestAPictureIsReplacedOnlyAfterAQuestion(t *testing.T) {
 
 func TestSeveralSelectionsAreTypedAtOnce(t *testing.T) {
 	b := newBench(t, t.TempDir())
-	for _, text := range []string{typedExample, "Cl:sigma, 1:d", " Cl:sigma ;1:d; Cl:sigma"} {
+	for _, text := range []string{"Cl:sigma; 1:d", "Cl:sigma, 1:d", " Cl:sigma ;1:d; Cl:sigma"} {
 		b.open("square-plane")
 		b.setBasis(nil)
 		b.typeBasis(text)

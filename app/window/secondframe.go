@@ -76,10 +76,8 @@ func (d *pageDrawing) secondFrame() {
 		return
 	}
 	d.heading(say("frames.secondAxes"))
-	for _, clause := range strings.Split(notation.ConventionIn(texts(), e.Fit, g.CoreNames()), "; ") {
-		if clause != "" {
-			d.line(notation.Sentence(clause), d.plain)
-		}
+	for _, clause := range notation.ConventionTexts(texts(), e.Fit, g.CoreNames(), true) {
+		d.line(clause, d.plain)
 	}
 	d.words(say("frames.rule", notation.SourceIn(texts(), e.Frame.Rule)), d.quiet)
 	if e.Names == nil {

@@ -14,6 +14,7 @@ import (
 	"lobewright/app/work"
 	"lobewright/assets"
 	"lobewright/orbitals/structure"
+	"lobewright/render"
 )
 
 // euChosen opens the square plane and chooses the first partner of Eu.
@@ -206,4 +207,53 @@ func BenchmarkFrames(b *testing.B) {
 	second.Coefficients = partners[1].Coefficients
 	r.beside = []picture.Shown{second}
 	b.Run("two", run)
+}
+
+// TestAChosenOrbitalIsProjectedFromAFunctionThatHasAPart chooses partner y of
+// Eu: σ1, which was watched, lies on x, and the sum would be nothing.
+func TestAChosenOrbitalIsProjectedFromAFunctionThatHasAPart(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("square-plane")
+	for _, c := range []struct{ partner, want int }{{1, 1}, {2, 2}, {2, 2}, {1, 1}} {
+		b.chooseOrbital("Eu", 1, c.partner)
+		if got := b.now().Projection.Function; got != c.want {
+			t.Errorf("partner %d is projected from function %d, want %d", c.partner, got, c.want)
+		}
+	}
+	b.chooseFunction(4)
+	b.chooseOrbital("Eu", 1, 2)
+	if got := b.now().Projection.Function; got != 4 {
+		t.Errorf("function 4, which has a part, gives way to %d", got)
+	}
+}
+
+// TestNodalPlanesGoWithTheLobes plays C4 on partner y: at its end the plane of
+// the nodes, xz at first, is yz.
+func TestNodalPlanesGoWithTheLobes(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("square-plane")
+	b.chooseOrbital("Eu", 1, 2)
+	b.toggleNodes()
+	s := b.now()
+	s.Operation, s.Moment = "C4(z)", 1
+	b.do(study.StepPlay, s)
+	b.until("the planes", func() bool { return len(b.view.shown.Nodes) > 0 })
+	end := b.view.beside[len(b.view.beside)-1] // without motion: start, middle, end
+	var live picture.Live
+	f, err := live.Frame(end, b.view.sight, 200, 200, 96, true)
+	if err != nil {
+		t.Fatal(err)
+	}
+	planes := 0
+	for _, shape := range f.Scene.Shapes {
+		if d, ok := shape.Geometry.(render.Disc); ok && shape.Transform != nil {
+			planes++
+			if n := shape.Transform.Linear.Mul3x1(d.Normal); math.Abs(n[0]) < 0.99 {
+				t.Errorf("the plane that lay in xz has the normal %v", n)
+			}
+		}
+	}
+	if planes != 1 {
+		t.Errorf("%d planes go with the lobes", planes)
+	}
 }

@@ -54,6 +54,7 @@ func (u *ui) setLanguage(chosen string) {
 	u.win.SetMainMenu(u.mainMenu())
 	u.menusSaid = ""
 	u.oneByOne.SetText(say("ledger.oneByOne"))
+	u.sayBasisExample()
 	u.forms = formCache{} // with its decimal points
 	u.hints.show("", fyne.Position{})
 	u.win.Content().Refresh()

@@ -149,7 +149,8 @@ func newUI(app fyne.App, win fyne.Window, s *session.Session, version string, po
 	u.fault.Hide()
 	u.basis = &hintEntry{hint: "given.typeHint", onHint: u.hint, help: u.showHelp}
 	u.basis.ExtendBaseWidget(u.basis)
-	u.basis.SetPlaceHolder(typedExample)
+	u.basis.leave = func() { u.win.Canvas().Focus(u.view) }
+	u.sayBasisExample()
 	u.basis.OnChanged = func(string) { u.sayTyped("") }
 	u.basis.OnSubmitted = func(text string) { u.guard(func() { u.typeBasis(text) }) }
 	win.SetContent(u.assemble())
@@ -167,8 +168,28 @@ func systemIsDark(app fyne.App) bool {
 	return app.Settings().ThemeVariant() == theme.VariantDark
 }
 
-// typedExample is shown where functions are typed, and may be typed as it is.
-const typedExample = "Cl:sigma; 1:d" // no words: it is typed
+// sayBasisExample shows where functions are typed what may be typed there for
+// the structure at hand: its commonest atoms, hydrogen only if there are no
+// others, with σ functions.
+func (u *ui) sayBasisExample() {
+	example := "Cl:sigma" // no words: it is typed
+	if g := u.state.Group; g != nil {
+		count, best := map[string]int{}, ""
+		for _, a := range g.Molecule.Atoms {
+			count[a.Element.Symbol()]++
+		}
+		for _, a := range g.Molecule.Atoms {
+			if e := a.Element.Symbol(); best == "" || best == "H" || e != "H" && count[e] > count[best] {
+				best = e
+			}
+		}
+		example = best + ":sigma"
+		if best == "H" {
+			example = "H:s"
+		}
+	}
+	u.basis.SetPlaceHolder(say("given.typeExample", example))
+}
 
 // Widths and heights of the regions, in units.
 const (
@@ -335,6 +356,7 @@ func (u *ui) deliver(st *work.State) {
 	}
 	if before.Group != st.Group && st.Group != nil {
 		u.win.SetTitle(title(st.Group))
+		u.sayBasisExample()
 		u.session.Settled()
 	}
 	if before.Basis != st.Basis {

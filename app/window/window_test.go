@@ -786,7 +786,7 @@ func TestTheTypefaceHasEverySign(t *testing.T) {
 			check(text)
 		}
 	}
-	check(typedExample)
+	check(b.basis.PlaceHolder)
 	for _, m := range b.win.MainMenu().Items {
 		check(m.Label)
 		for _, i := range m.Items {
