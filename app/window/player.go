@@ -213,7 +213,7 @@ const fadeTime = 300 * time.Millisecond
 // fade begins a fading from what is shown now.
 func (u *ui) fade() {
 	shown := u.view.shown
-	if u.view.beside != nil {
+	if len(u.view.beside) > 0 {
 		return // partners side by side do not take each other's place
 	}
 	if !u.motion || len(shown.Coefficients) == 0 || shown.Moment > 0 {

@@ -111,7 +111,7 @@ func TestPartnersStandSideBySide(t *testing.T) {
 		t.Errorf("the orbital that is held is not beside: %d", n)
 	}
 	b.holdOrbital()
-	if b.view.beside != nil {
+	if len(b.view.beside) > 0 {
 		t.Error("the orbital that was held stays")
 	}
 }

@@ -445,10 +445,9 @@ func (u *ui) show(moving bool) {
 	u.fading.apply(u, &shown)
 	u.tally.apply(&shown)
 	shown.Nodes = u.nodes(s, u.orbital())
-	u.view.shown, u.view.beside = u.split(shown)
-	if u.view.beside == nil {
-		u.view.shown, u.view.beside = u.stills(shown)
-	}
+	first, beside := u.split(shown)
+	pictures := u.stills(append([]picture.Shown{first}, beside...))
+	u.view.shown, u.view.beside = pictures[0], pictures[1:]
 	u.fitBeside()
 	if st.Group != nil {
 		u.view.sight = u.sights.sight(s.Camera, st.Group, shown.Basis, len(s.Basis) > 0 && shown.Basis == nil)

@@ -461,6 +461,18 @@ func TestWithoutMotionStillsAreShown(t *testing.T) {
 			t.Errorf("%s: the stills are at %v", operation, moments)
 		}
 	}
+	// Partners side by side have three each.
+	b.chooseOrbital("Eu", 1, 1)
+	b.toggleSplit()
+	b.togglePlay()
+	for i, shown := range append([]picture.Shown{b.view.shown}, b.view.beside...) {
+		if want := 0.5 * float64(i%3); shown.Moment != want || len(shown.Notes) != 2 {
+			t.Errorf("still %d is at %v, want %v, and has the headings %v", i, shown.Moment, want, shown.Notes)
+		}
+	}
+	if got := len(b.view.beside); got != 5 {
+		t.Errorf("%d stills of two partners stand beside the first", got)
+	}
 }
 
 func TestTheHandTurnsMovesAndZooms(t *testing.T) {
