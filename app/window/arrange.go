@@ -8,6 +8,7 @@ import "fyne.io/fyne/v2"
 // below, takes for larger type: the picture is the subject and keeps its room.
 const (
 	sideShare   = 0.32
+	pageShare   = 0.45 // of an open page, which is read more than the picture beside it
 	ledgerShare = 0.34
 	detailShare = 0.46 // of the right region
 )
@@ -20,6 +21,9 @@ type column struct {
 	down  bool
 	rest  int
 	share float32
+	// first, which may be nil, is the share of the first object where another
+	// holds for it.
+	first func() float32
 }
 
 // Layout implements fyne.Layout.
@@ -29,7 +33,11 @@ func (c *column) Layout(objects []fyne.CanvasObject, size fyne.Size) {
 	lengths := make([]float32, len(objects))
 	for i, o := range objects {
 		if i != c.rest && o.Visible() {
-			lengths[i] = max(min(c.along(wanted(o)), c.share*whole), c.along(o.MinSize()))
+			share := c.share
+			if i == 0 && c.first != nil {
+				share = c.first()
+			}
+			lengths[i] = max(min(c.along(wanted(o)), share*whole), c.along(o.MinSize()))
 			left -= lengths[i]
 		}
 	}

@@ -7,6 +7,9 @@ import (
 	"testing"
 
 	"fyne.io/fyne/v2"
+	"fyne.io/fyne/v2/container"
+
+	"lobewright/assets"
 )
 
 // TestLargeTypeLeavesThePictureItsRoom lays the window out at twice the size
@@ -56,5 +59,36 @@ func TestLongCombinationsAreCountedAndNotListed(t *testing.T) {
 	}
 	if want, _, _ := strings.Cut(say("partners.longForm", long), ";"); !strings.Contains(words, want) {
 		t.Errorf("the list does not say %q:\n%s", want, words)
+	}
+}
+
+// A page is read more than the picture beside it: larger type reaches it.
+func TestLargeTypeReachesAPage(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("octahedron")
+	b.pages.turnTo(axesPage)
+	content := b.win.Content()
+	content.Resize(fyne.NewSize(1024, 700))
+	usual := b.pages.pane.Size().Width
+	b.setScale(1.5)
+	content.Resize(fyne.NewSize(1024, 700))
+	if w, z := b.pages.pane.Size().Width, b.pages.pane.scale(); w < 1.25*usual || w > pageShare*1024+1 || z < 1.25 {
+		t.Errorf("the page is %g wide after %g, and magnified by %g", w, usual, z)
+	}
+}
+
+func TestTheListOfKeysIsNoWiderThanItsSheet(t *testing.T) {
+	defer speak(assets.English)
+	b := newBench(t, t.TempDir())
+	b.win.Resize(fyne.NewSize(1024, 700))
+	for _, l := range []assets.Language{assets.English, assets.German} {
+		speak(l)
+		for _, scale := range []float64{1, 1.5, 2} {
+			b.setScale(scale)
+			list := keysTable(b.ui).(*container.Scroll).Content
+			if w, room := list.MinSize().Width, sheetWidth(b.ui); w > room-24 {
+				t.Errorf("%s at %g: the list is %g wide, the sheet %g", l, scale, w, room)
+			}
+		}
 	}
 }

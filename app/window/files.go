@@ -338,7 +338,19 @@ func (u *ui) showKeys() {
 // keysTable has two columns.
 func keysTable(u *ui) fyne.CanvasObject {
 	p, zoom := u.palette(), float32(u.zoom())
-	table := container.New(twoColumns{gap: 2 * pad * zoom})
+	room := u.win.Canvas().Size()
+	gap := 2 * pad * zoom
+	table := container.New(twoColumns{gap: gap})
+	first := float32(0)
+	for _, row := range keysText {
+		if row[1] != "" {
+			first = max(first, fyne.MeasureText(say(row[0]), textSize*zoom, fyne.TextStyle{}).Width)
+		}
+	}
+	const edges = 64 // of the sheet, and its scroll bar
+	room1 := (sheetWidth(u) - gap - edges) / 2
+	first = min(first, room1)
+	room2 := 2*room1 - first
 	cell := func(words string, c color.Color, style fyne.TextStyle) {
 		t := canvas.NewText(words, c)
 		t.TextSize, t.TextStyle = textSize*zoom, style
@@ -350,14 +362,24 @@ func keysTable(u *ui) fyne.CanvasObject {
 			cell("", p.Ink, fyne.TextStyle{})
 			continue
 		}
-		cell(say(row[0]), p.Ink, fyne.TextStyle{})
-		cell(say(row[1]), p.Quiet, fyne.TextStyle{})
+		keys, does := wrapPlain(say(row[0]), first, textSize*zoom), wrapPlain(say(row[1]), room2, textSize*zoom)
+		for i := range max(len(keys), len(does)) {
+			cell(line(keys, i), p.Ink, fyne.TextStyle{})
+			cell(line(does, i), p.Quiet, fyne.TextStyle{})
+		}
 	}
 	scroll := container.NewVScroll(container.NewPadded(table))
 	least := table.MinSize()
-	room := u.win.Canvas().Size()
 	scroll.SetMinSize(fyne.NewSize(0, min(least.Height+2*pad, room.Height-170*zoom)))
 	return scroll
+}
+
+// line is one of several lines, or nothing behind the last.
+func line(lines []string, i int) string {
+	if i < len(lines) {
+		return lines[i]
+	}
+	return ""
 }
 
 // twoColumns lays objects in rows of two, as close as lines of a text.
@@ -404,6 +426,9 @@ func (u *ui) showText(title, text string) {
 	u.showSheet(title, body)
 }
 
+// sheetWidth is that of a sheet with something to read.
+func sheetWidth(u *ui) float32 { return min(720*float32(u.zoom()), u.win.Canvas().Size().Width-40) }
+
 // showSheet shows something to read until it is closed.
 func (u *ui) showSheet(title string, body fyne.CanvasObject) {
 	var popup *widget.PopUp
@@ -420,8 +445,7 @@ func (u *ui) showSheet(title string, body fyne.CanvasObject) {
 		widget.NewLabelWithStyle(title, fyne.TextAlignLeading, fyne.TextStyle{Bold: true}), body,
 		container.NewBorder(nil, nil, nil, done))), u.win.Canvas())
 	popup.Show()
-	room := u.win.Canvas().Size()
-	width := min(720*float32(u.zoom()), room.Width-40)
+	width := sheetWidth(u)
 	popup.Resize(fyne.NewSize(width, popup.MinSize().Height))
 	popup.Resize(fyne.NewSize(width, popup.MinSize().Height)) // the text has been wrapped
 	u.win.Canvas().Focus(done)

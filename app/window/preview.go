@@ -215,7 +215,10 @@ func (p *preview) draw(b *board) {
 		p.pane.extent = y - top
 		return
 	case p.made != nil:
-		text = p.sizes()
+		text = p.sizes(false)
+		if b.measure(words(text), s) > b.width-2*pad {
+			text = p.sizes(true)
+		}
 	}
 	b.text(pad, top+pad+textSize, words(b.clipped(text, b.width-2*pad, s)), s)
 	if p.image == nil {
@@ -240,13 +243,17 @@ func (p *preview) draw(b *board) {
 	p.pane.extent = y - top
 }
 
-// sizes says how large the sheet is on paper and as a picture.
-func (p *preview) sizes() string {
+// sizes says how large the sheet is on paper and as a picture, in full or in
+// short.
+func (p *preview) sizes(short bool) string {
 	dpi := p.u.now().Figure.TheResolution()
 	w, h, err := p.made.Pixels(dpi)
 	if err != nil {
 		return told(err)
 	}
 	tenth := func(x float64) string { return plainText(math.Round(10*x) / 10) }
+	if short {
+		return say("figure.sizesShort", tenth(p.made.Width), tenth(p.made.Height), w, h)
+	}
 	return say("figure.sizes", tenth(p.made.Width), tenth(p.made.Height), w, h, tenth(dpi))
 }

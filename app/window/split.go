@@ -102,6 +102,7 @@ func besideHeight(d int) float32 { return float32(18*d + 20) }
 // fitBeside shows the pane with the matrix where partners are side by side.
 func (u *ui) fitBeside() {
 	o, _, ok := u.besideOf()
+	ok = ok && u.pages.open != sheetPage // the picture is not there
 	least := fyne.NewSize(100, 0)
 	if ok {
 		least.Height = besideHeight(u.state.Orbitals.Irreps[o.Irrep].Dimension)
@@ -139,7 +140,7 @@ func (u *ui) drawBeside(b *board) {
 	quiet := style{size: secondSize, color: b.palette.Quiet, align: -1}
 	plain := style{size: textSize, color: b.palette.Ink, align: -1}
 	if op.Name == "" {
-		b.text(pad, 22, notation.Words(say("partners.noOperation")), quiet)
+		b.paragraph(pad, 22, b.width-2*pad, notation.Words(say("partners.noOperation")), quiet)
 		return
 	}
 	m := u.matrix(o, op)

@@ -224,7 +224,13 @@ func (u *ui) assemble() fyne.CanvasObject {
 	left := container.New(&column{down: true, share: sideShare}, container.NewStack(u.given, u.atoms.pane, u.pages.pane), u.fault, container.NewPadded(u.basis))
 	right := container.New(&column{down: true, share: detailShare}, u.follows, rule(), u.detail)
 	picture := container.New(&column{down: true, share: ledgerShare}, u.steps.over(container.NewStack(u.view, u.pages.preview.pane)), u.beside)
-	middle := container.New(&column{rest: 2, share: sideShare}, left, rule(), picture, rule(), right)
+	first := func() float32 {
+		if u.pages.pane.Visible() || u.atoms.pane.Visible() {
+			return pageShare
+		}
+		return sideShare
+	}
+	middle := container.New(&column{rest: 2, share: sideShare, first: first}, left, rule(), picture, rule(), right)
 	whole := container.New(&column{down: true, share: ledgerShare}, middle, rule(), u.ledger, rule(), container.NewPadded(row))
 	return container.New(layout.NewStackLayout(), whole, u.hints.layer)
 }
