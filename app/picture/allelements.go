@@ -24,6 +24,7 @@ const (
 // A namedElement is where the name of a symmetry element can stand: at one of
 // several points, the first one best.
 type namedElement struct {
+	work.Element
 	name   notation.Text
 	points []mgl64.Vec3
 }
@@ -87,7 +88,20 @@ func (s *stage) allElements(g *work.Group, centre mgl64.Vec3, reach float64) {
 }
 
 func (s *stage) name(e work.Element, points ...mgl64.Vec3) {
-	s.named = append(s.named, namedElement{notation.Operation(e.Name), points})
+	s.named = append(s.named, namedElement{e, notation.Operation(e.Name), points})
+}
+
+// belongs tells whether an element is one of some operations.
+func (n namedElement) belongs(operations []work.Operation) bool {
+	for _, o := range operations {
+		along := math.Abs(o.Axis.Dot(n.Direction)) > 1-1e-6
+		if n.Kind == work.ElementCentre && o.HasCentre() ||
+			n.Kind == work.ElementAxis && o.HasAxis() && along ||
+			n.Kind == work.ElementPlane && o.HasPlane() && along {
+			return true
+		}
+	}
+	return false
 }
 
 // addElementNames writes the names beside the elements, each at the first of

@@ -26,6 +26,8 @@ type Body struct {
 	// key names only atoms that carry functions.
 	key  bool
 	axes []axisEnd
+	// chosen are the operations whose elements AddElements has drawn.
+	chosen []work.Operation
 }
 
 // A signMark is a place in a lobe where its sign can be printed.
@@ -153,6 +155,7 @@ func (b *Body) AddElements(operations []work.Operation, v Viewpoint, sense bool)
 	centre, radius := enclosing(b.must())
 	reach := overhang*radius + minOverhang
 	s := b.stage
+	b.chosen = append(b.chosen, operations...)
 	var axes, planes []work.Operation
 	has := func(list []work.Operation, o work.Operation) bool {
 		for _, p := range list {

@@ -30,7 +30,7 @@ func (s *stage) addCentre() {
 func (s *stage) addAxis(axis, middle mgl64.Vec3, reach float64) {
 	from, to := middle.Sub(axis.Mul(reach)), middle.Add(axis.Mul(reach))
 	const width = 0.5 // mm
-	s.scene.Add(render.Line{Points: []mgl64.Vec3{from, to}, Width: width}, s.elementMaterial(1))
+	s.scene.Add(render.Line{Points: []mgl64.Vec3{from, to}, Width: width * s.emphasis()}, s.elementMaterial(1))
 	s.elements = append(s.elements, ball{from, rimRoom}, ball{to, rimRoom})
 }
 
@@ -47,5 +47,14 @@ func (s *stage) addPlane(normal, middle mgl64.Vec3, reach float64) {
 		s.elements = append(s.elements, ball{rim[k], rimRoom})
 	}
 	const edge = 0.25 // mm
-	s.scene.Add(render.Line{Points: rim, Closed: true, Width: edge}, s.elementMaterial(1))
+	s.scene.Add(render.Line{Points: rim, Closed: true, Width: edge * s.emphasis()}, s.elementMaterial(1))
+}
+
+// emphasis is how much thicker the elements of the chosen operation are drawn:
+// among all symmetry elements they have to stand out.
+func (s *stage) emphasis() float64 {
+	if s.look.Elements {
+		return 2
+	}
+	return 1
 }

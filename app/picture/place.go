@@ -21,9 +21,16 @@ type Label struct {
 	Element bool
 	// Sign is +1 or −1 for the printed sign of a lobe, 0 for an atom's name.
 	Sign int
+	// Over says that there was no free place, and that the label stands over
+	// bodies: it needs a rim.
+	Over bool
 	// Size is in points.
 	Size float64
 }
+
+// Unnamed are the names for which there was no room on a panel: those of atoms, and
+// of axes of a frame, and those of symmetry elements.
+type Unnamed struct{ Atoms, Elements []string }
 
 // Distances of labels, in millimetres.
 const (
@@ -41,23 +48,41 @@ const (
 
 // Labels places the atoms' names on a panel so that none touches a body, a bond
 // or another label, and the printed signs of the lobes where they are wanted and
-// seen. blocked are parts of the panel that are taken. missing are the names of
-// atoms for which there was no room.
-func (b *Body) Labels(ctx context.Context, v Viewpoint, p Panel, size float64, fonts *render.Fonts, blocked []Box) (labels []Label, missing []string, err error) {
+// seen. blocked are parts of the panel that are taken. The elements of the operations
+// of AddElements are named first, and always.
+func (b *Body) Labels(ctx context.Context, v Viewpoint, p Panel, size float64, fonts *render.Fonts, blocked []Box) (labels []Label, missing Unnamed, err error) {
 	m, err := b.maskOf(ctx, v, p)
 	if err != nil {
-		return nil, nil, err
+		return nil, missing, err
 	}
 	taken := append([]Box(nil), blocked...)
 	names := b.group.AtomNames()
 	s := b.stage
 	middle := v.on(p, ball{centre: v.target})
+	named := func(chosen bool) {
+		for _, n := range s.named {
+			if n.belongs(b.chosen) != chosen {
+				continue
+			}
+			label, ok := b.elementName(n, v, p, size, fonts, m, middle, taken, chosen)
+			if !ok {
+				missing.Elements = append(missing.Elements, n.Name)
+				continue
+			}
+			taken = append(taken, Box{label.X, label.Y - label.Size*mmPerPoint, label.width, label.Size * mmPerPoint})
+			if label.Leader != nil {
+				taken = append(taken, alongLine(label.Leader)...)
+			}
+			labels = append(labels, label.Label)
+		}
+	}
+	named(true)
 	for _, a := range b.axes {
 		runs := runs(a.letter)
 		w, ascent, descent := fonts.Measure(runs, size)
 		box, _, ok := m.place(v.on(p, a.ball), middle, w, ascent+descent, taken)
 		if !ok {
-			missing = append(missing, a.letter.String())
+			missing.Atoms = append(missing.Atoms, a.letter.String())
 			continue
 		}
 		taken = append(taken, box)
@@ -75,7 +100,7 @@ func (b *Body) Labels(ctx context.Context, v Viewpoint, p Panel, size float64, f
 		w, ascent, descent := fonts.Measure(runs, size)
 		box, leader, ok := m.place(around, middle, w, ascent+descent, taken)
 		if !ok {
-			missing = append(missing, names[i])
+			missing.Atoms = append(missing.Atoms, names[i])
 			continue
 		}
 		taken = append(taken, box)
@@ -84,12 +109,7 @@ func (b *Body) Labels(ctx context.Context, v Viewpoint, p Panel, size float64, f
 		}
 		labels = append(labels, Label{Runs: runs, X: box.X, Y: box.Y + ascent, Leader: leader, Size: size})
 	}
-	for _, n := range s.named {
-		if label, ok := b.elementName(n, v, p, size, fonts, m, middle, taken); ok {
-			taken = append(taken, Box{label.X, label.Y - label.Size*mmPerPoint, label.width, label.Size * mmPerPoint})
-			labels = append(labels, label.Label)
-		}
-	}
+	named(false)
 	if s.look.Signs == "printed" {
 		labels = append(labels, b.printedSigns(v, p, size, fonts, m)...)
 	}
@@ -103,18 +123,48 @@ type elementLabel struct {
 }
 
 // elementName places the name of a symmetry element beside the first of its
-// points where there is room near by.
-func (b *Body) elementName(n namedElement, v Viewpoint, p Panel, size float64, fonts *render.Fonts, m mask, middle disc, taken []Box) (elementLabel, bool) {
-	const share = 0.85 // of the size of atoms' names
+// points where there is room near by. That of a chosen one is bold, stands further
+// away with a line that leads to it where there is no room, and at the last over
+// what lies there.
+func (b *Body) elementName(n namedElement, v Viewpoint, p Panel, size float64, fonts *render.Fonts, m mask, middle disc, taken []Box, chosen bool) (elementLabel, bool) {
+	share := 0.85 // of the size of atoms' names
 	text := runs(n.name)
-	width, ascent, _ := fonts.Measure(text, share*size)
-	for _, point := range n.points {
-		box, leader, ok := m.place(v.on(p, ball{point, rimRoom}), middle, width, ascent, taken)
-		if ok && leader == nil {
-			return elementLabel{Label{Runs: text, X: box.X, Y: box.Y + ascent, Size: share * size, Element: true}, width}, true
+	if chosen {
+		share = 1
+		for i := range text {
+			text[i].Bold = true
 		}
 	}
-	return elementLabel{}, false
+	width, ascent, _ := fonts.Measure(text, share*size)
+	const behind = 5.0 // mm of line, for an end that points away from the viewer
+	var led *elementLabel
+	shortest := math.Inf(1)
+	for _, point := range n.points {
+		box, leader, ok := m.place(v.on(p, ball{point, rimRoom}), middle, width, ascent, taken)
+		label := elementLabel{Label{Runs: text, X: box.X, Y: box.Y + ascent, Leader: leader, Size: share * size, Element: true}, width}
+		if !ok {
+			continue
+		}
+		if leader == nil {
+			return label, true
+		}
+		cost := math.Hypot(leader[1][0]-leader[0][0], leader[1][1]-leader[0][1])
+		if v.rows.Row(2).Dot(point.Sub(v.target)) < 0 {
+			cost += behind
+		}
+		if cost < shortest {
+			led, shortest = &label, cost
+		}
+	}
+	switch {
+	case !chosen:
+		return elementLabel{}, false
+	case led != nil:
+		return *led, true
+	}
+	at := v.on(p, ball{centre: n.points[0]})
+	x, y := min(max(at.x-width/2, 0), max(0, p.Width-width)), min(max(at.y-ascent/2, 0), max(0, p.Height-ascent))
+	return elementLabel{Label{Runs: text, X: x, Y: y + ascent, Size: share * size, Element: true, Over: true}, width}, true
 }
 
 // Signs are the printed signs alone, for panels without names.

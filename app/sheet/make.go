@@ -271,14 +271,17 @@ func (m *maker) panel(body *picture.Body, v picture.Viewpoint, p picture.Panel, 
 	out.items = append(out.items, m.ghostAxes(body, v, p)...)
 	var labels []picture.Label
 	if named && !m.study.Look.NoLabels {
-		var missing []string
+		var missing picture.Unnamed
 		var err error
 		labels, missing, err = body.Labels(m.ctx, v, p, m.size, m.fonts, nil)
 		if err != nil {
 			return out, err
 		}
-		if len(missing) > 0 {
-			m.note("captions.noNames", m.enumerated(missing))
+		if len(missing.Atoms) > 0 {
+			m.note("captions.noNames", m.enumerated(missing.Atoms, "captions.atoms"))
+		}
+		if len(missing.Elements) > 0 {
+			m.note("captions.noElements", m.enumerated(missing.Elements, "captions.elements"))
 		}
 	} else {
 		labels = body.Signs(v, p, m.size, m.fonts)
@@ -294,7 +297,11 @@ func (m *maker) label(l picture.Label) []Item {
 	const lead = 0.18 // mm
 	var out []Item
 	if l.Leader != nil {
-		out = append(out, Line{Points: l.Leader, Width: lead, Color: m.palette.Ink})
+		line := Line{Points: l.Leader, Width: lead, Color: m.palette.Ink}
+		if l.Element {
+			line.Color = m.palette.Element
+		}
+		out = append(out, line)
 	}
 	colour := m.palette.Ink
 	if l.Element {
@@ -303,14 +310,20 @@ func (m *maker) label(l picture.Label) []Item {
 	if l.Sign != 0 {
 		colour = picture.OnLobe(m.palette, l.Sign)
 	}
-	return append(out, Text{X: l.X, Y: l.Y, Runs: l.Runs, Size: l.Size, Color: colour})
+	text := Text{X: l.X, Y: l.Y, Runs: l.Runs, Size: l.Size, Color: colour}
+	if l.Over {
+		const rim = 0.5 // mm
+		text.Halo, text.HaloColor = rim, m.palette.Ground
+	}
+	return append(out, text)
 }
 
-// enumerated lists a few names and counts the others.
-func (m *maker) enumerated(names []string) string {
-	const most = 8
+// enumerated lists a few names; of many it says how many there are, with a text of
+// their kind.
+func (m *maker) enumerated(names []string, many string) string {
+	const most = 12
 	if n := len(names); n > most {
-		return m.say("captions.atoms", n)
+		return m.say(many, n)
 	}
 	if n := len(names); n > 1 {
 		return m.say("axes.and", strings.Join(names[:n-1], ", "), names[n-1])

@@ -511,3 +511,12 @@ func TestTheKeyHasTheView(t *testing.T) {
 		}
 	}
 }
+
+// What symmetry elements stay without a name is told.
+func TestElementsWithoutANameAreTold(t *testing.T) {
+	s := sheetOf(t, study.Study{Structure: "demo:octahedron", Operation: "C3(1)", Look: study.Look{Elements: true}})
+	notes := strings.Join(s.Notes, "\n")
+	if !strings.Contains(notes, "symmetry elements left without a name") || strings.Contains(notes, "C3(1)") {
+		t.Errorf("notes: %q", notes)
+	}
+}
