@@ -75,7 +75,7 @@ func (m *maker) frameCell(s study.Study, second bool) (cell, error) {
 		return c, err
 	}
 	name := frameName(s.Frame, s.Z, s.X, m)
-	c.title, c.name = notation.Words(name), m.say("captions.frame", name)
+	c.title, c.name = notation.Sentence(name), m.say("captions.frame", name)
 	c.form, c.small = notation.Sentence(notation.ShortConventionIn(m.texts, g.Fit)), true
 	letters := plainLetters
 	if second {

@@ -5,6 +5,7 @@ import (
 	"lobewright/app/picture"
 	"lobewright/app/study"
 	"lobewright/app/work"
+	"lobewright/assets"
 	"lobewright/symmetry"
 )
 
@@ -43,7 +44,7 @@ func (m *maker) ruleLine(index, name string, fit *symmetry.Fit) notation.Text {
 			t = t.Then(notation.Text{{Text: index, Place: notation.Sub}})
 		}
 	}
-	return t.Then(notation.Words(" ("+name+"): "), notation.Sentence(notation.ShortConventionIn(m.texts, fit)))
+	return t.Then(notation.Words(" ("), notation.Sentence(name), notation.Words("): "), notation.Sentence(notation.ShortConventionIn(m.texts, fit)))
 }
 
 // ghostAlpha is how strongly axes show through bodies, of 255.
@@ -68,15 +69,19 @@ func onPanel(at [2]float64, p picture.Panel) bool {
 	return at[0] >= 0 && at[1] >= 0 && at[0] <= p.Width && at[1] <= p.Height
 }
 
-// frameName is what a choice of axes is called.
+// frameName is what a choice of axes is called: a rule in English as in the
+// commands.
 func frameName(frame, z, x string, m *maker) string {
 	switch {
-	case frame != "":
-		return frame
-	case z != "" || x != "":
+	case frame == "" && (z != "" || x != ""):
 		return m.say("captions.byHand")
+	case frame == "":
+		frame = symmetry.FrameDefault
 	}
-	return symmetry.FrameDefault
+	if assets.Language(m.figure.Language) == assets.German {
+		return notation.RuleLabel(m.texts, frame)
+	}
+	return frame
 }
 
 // HoldsSecond tells whether a kind of sheet shows a second frame that a study

@@ -72,13 +72,24 @@ func rulesOf(g *work.Group) []symmetry.Frame {
 
 // ruleRow shows a rule in words, with its source.
 func (d *pageDrawing) ruleRow(name string, g *work.Group, f symmetry.Frame, on bool, do func()) {
-	d.row(name, "", on, do, func() {
-		d.words(f.Rule.Name, d.strong)
+	d.row(name, ruleHint(f.Rule), on, do, func() {
+		d.line(ruleLabel(f.Rule.Name), d.strong)
 		for _, clause := range notation.ConventionTexts(texts(), g.Fit.In(f), g.CoreNames(), true) {
 			d.line(clause, d.plain)
 		}
 		d.words(notation.SourceIn(texts(), f.Rule), d.quiet)
 	})
+}
+
+// ruleLabel names a rule for the axes on a button.
+func ruleLabel(name string) notation.Text {
+	return notation.Sentence(notation.RuleLabel(texts(), name))
+}
+
+// ruleHint adds to the label of a rule its name for the commands, and who made
+// it.
+func ruleHint(rule symmetry.Rule) string {
+	return say("frames.ruleHint", notation.RuleLabel(texts(), rule.Name), rule.Name, notation.SourceIn(texts(), rule))
 }
 
 // axisChoices shows the directions that an axis can take.

@@ -293,13 +293,13 @@ func (d *givenDrawing) frames() {
 	byHand := s.Z != "" || s.X != ""
 	x := float64(pad)
 	d.y += 4
-	offer := func(label, hint string, on bool, do func()) {
-		w := d.board.measure(notation.Words(label), d.quiet) + 14
+	offer := func(name string, label notation.Text, hint string, on bool, do func()) {
+		w := d.board.measure(label, d.quiet) + 14
 		if x+w > pad+d.width {
 			x = pad
 			d.y += chipHeight + 3
 		}
-		drawChip(d.board, x, d.y, w, notation.Words(label), secondSize, chip{name: "frame " + label, hint: hint, on: on, do: do})
+		drawChip(d.board, x, d.y, w, label, secondSize, chip{name: "frame " + name, hint: hint, on: on, do: do})
 		x += w + 3
 	}
 	for _, f := range d.state.Group.Fit.Frames() {
@@ -308,14 +308,14 @@ func (d *givenDrawing) frames() {
 			continue
 		}
 		now := s.Frame == name || s.Frame == "" && name == symmetry.FrameDefault
-		offer(name, say("frames.ruleHint", name, notation.SourceIn(texts(), f.Rule)), now && !byHand, func() { d.chooseFrame(name) })
+		offer(name, ruleLabel(name), ruleHint(f.Rule), now && !byHand, func() { d.chooseFrame(name) })
 	}
-	offer(say("frames.byHand"), say("frames.byHandHint"), byHand, func() { d.pages.turnTo(axesPage) })
+	offer("by hand", notation.Words(say("frames.byHand")), say("frames.byHandHint"), byHand, func() { d.pages.turnTo(axesPage) })
 	d.y += chipHeight + 5
 	x = pad
-	offer(say("frames.toLadder"), say("frames.toLadderHint"), s.As != "", func() { d.pages.turnTo(ladderPage) })
-	offer(say("frames.toSecond"), say("frames.toSecondHint"), s.Held.Frame != "" || s.Held.Z != "" || s.Held.X != "", func() { d.pages.turnTo(secondPage) })
-	offer(say("frames.toSubgroups"), say("frames.toSubgroupsHint"), s.Subgroup != "", func() { d.pages.turnTo(subgroupsPage) })
+	offer("ladder", notation.Words(say("frames.toLadder")), say("frames.toLadderHint"), s.As != "", func() { d.pages.turnTo(ladderPage) })
+	offer("second", notation.Words(say("frames.toSecond")), say("frames.toSecondHint"), s.Held.Frame != "" || s.Held.Z != "" || s.Held.X != "", func() { d.pages.turnTo(secondPage) })
+	offer("subgroups", notation.Words(say("frames.toSubgroups")), say("frames.toSubgroupsHint"), s.Subgroup != "", func() { d.pages.turnTo(subgroupsPage) })
 	d.y += chipHeight + 4
 }
 

@@ -62,8 +62,8 @@ func (d *pageDrawing) secondFrame() {
 		if name == work.RuleHeld || name == g.Fit.Rule.Name {
 			continue // it is the one in force
 		}
-		d.choice(&x, notation.Words(name), chip{
-			name: "second " + name, hint: say("frames.ruleHint", name, notation.SourceIn(texts(), f.Rule)),
+		d.choice(&x, ruleLabel(name), chip{
+			name: "second " + name, hint: ruleHint(f.Rule),
 			on: s.Held.Frame == name && !byHand, do: func() { d.hold(name, "", "") },
 		})
 	}
@@ -312,7 +312,7 @@ func namesText(g *work.Group, e *work.Exchange) string {
 	var b strings.Builder
 	line := func(s string) { b.WriteString(s + "\n") }
 	line(g.Fit.Setting.Symbol + ": " + notation.ConventionIn(texts(), g.Fit, g.CoreNames()))
-	line(e.Frame.Rule.Name + ": " + notation.ConventionIn(texts(), e.Fit, g.CoreNames()))
+	line(notation.RuleLabel(texts(), e.Frame.Rule.Name) + ": " + notation.ConventionIn(texts(), e.Fit, g.CoreNames()))
 	line(axesChange(e).String())
 	line("")
 	line(table.IrrepNames(both).Text())
