@@ -52,7 +52,15 @@ func (m *maker) levels() (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	left, right := m.levelsOf(o, groupSide, false), m.levelsOf(central, centralSide, true)
+	phase := func(irrep string, coefficients []float64) float64 {
+		for i, ir := range o.Irreps {
+			if ir.Label == irrep && o.Content[i] > 0 {
+				return float64(work.Phase(o.Basis, partnerOf(o, i, 0, 0).Coefficients, atom, central.Basis, coefficients))
+			}
+		}
+		return 1
+	}
+	left, right := m.levelsOf(o, groupSide, nil), m.levelsOf(central, centralSide, phase)
 	match(left, right)
 	d := card{group: o.Group, lobes: true}
 	name := o.Group.AtomNames()[atom]
@@ -109,21 +117,28 @@ func (m *maker) centralAtom(o *work.Orbitals) (int, error) {
 }
 
 // levelsOf lists the sets of a projection, from above down by irrep and copy
-// unless they are placed by hand.
-func (m *maker) levelsOf(o *work.Orbitals, side string, central bool) []level {
+// unless they are placed by hand. With phase, which gives the sign to draw
+// functions of an irrep with, they are those of the central atom.
+func (m *maker) levelsOf(o *work.Orbitals, side string, phase func(irrep string, coefficients []float64) float64) []level {
 	var out []level
+	central := phase != nil
 	for i, irrep := range o.Irreps {
 		for copy := range o.Content[i] {
-			first := partnerOf(o, i, copy, 0)
+			coefficients := partnerOf(o, i, copy, 0).Coefficients
+			sign := 1.0
+			if central {
+				sign = phase(irrep.Label, coefficients)
+				coefficients = scaled(coefficients, sign)
+			}
 			l := level{
 				irrep: irrep.Label, copy: copy, dimension: irrep.Dimension, text: notation.OrbitalText(irrep.Label),
-				body: m.bodies.Lobes(o.Basis, first.Coefficients, m.study),
+				body: m.bodies.Lobes(o.Basis, coefficients, m.study),
 			}
 			if o.Content[i] > 1 && !central {
 				l.text = l.text.Then(notation.Words(fmt.Sprintf(" (%d)", copy+1)))
 			}
 			if central {
-				l.functions = functionsOf(o, i, copy)
+				l.functions = functionsOf(o, i, copy, sign)
 			}
 			out = append(out, l)
 		}
@@ -140,12 +155,27 @@ func (m *maker) levelsOf(o *work.Orbitals, side string, central bool) []level {
 	return out
 }
 
-// functionsOf names the functions of an atom that a set is made of.
-func functionsOf(o *work.Orbitals, irrep, copy int) notation.Text {
+func scaled(v []float64, by float64) []float64 {
+	out := make([]float64, len(v))
+	for i, x := range v {
+		out[i] = by * x
+	}
+	return out
+}
+
+// functionsOf names the functions of an atom that a set is made of, with a minus
+// where a partner is one function that is drawn so.
+func functionsOf(o *work.Orbitals, irrep, copy int, sign float64) notation.Text {
 	var t notation.Text
 	used := map[string]bool{}
 	for partner := range o.Irreps[irrep].Dimension {
 		g := partnerOf(o, irrep, copy, partner)
+		several := -1
+		for _, c := range g.Coefficients {
+			if math.Abs(c) >= 1e-9 {
+				several++
+			}
+		}
 		for i, c := range g.Coefficients {
 			name := o.Basis.Functions[i].Name
 			if math.Abs(c) < 1e-9 || used[name] {
@@ -154,6 +184,9 @@ func functionsOf(o *work.Orbitals, irrep, copy int) notation.Text {
 			used[name] = true
 			if len(t) > 0 {
 				t = t.Then(notation.Words(", "))
+			}
+			if several == 0 && sign*c < 0 {
+				t = t.Then(notation.Words("−"))
 			}
 			t = t.Then(notation.Function(name))
 		}

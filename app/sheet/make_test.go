@@ -7,6 +7,7 @@ import (
 	"image/color"
 	"math"
 	"regexp"
+	"slices"
 	"strings"
 	"testing"
 
@@ -518,5 +519,22 @@ func TestElementsWithoutANameAreTold(t *testing.T) {
 	notes := strings.Join(s.Notes, "\n")
 	if !strings.Contains(notes, "symmetry elements left without a name") || strings.Contains(notes, "C3(1)") {
 		t.Errorf("notes: %q", notes)
+	}
+}
+
+// A sketch of levels draws the functions of the central atom with the sign with
+// which they bond, and names them so.
+func TestLevelsFaceEachOtherInPhase(t *testing.T) {
+	for name, want := range map[string][]string{
+		"demo:sandwich-staggered C:pz": {"−s", "−dz2", "−dxz, −dyz", "dx2−y2, dxy", "−pz", "−px, −py"},
+		"demo:square-plane Cl:sigma":   {"s", "−dz2", "dx2−y2", "px, py"},
+	} {
+		structure, basis, _ := strings.Cut(name, " ")
+		text := strings.Split(said(sheetOf(t, study.Study{Structure: structure, Basis: []string{basis}, Figure: study.Figure{Sheet: Levels}})), "\n")
+		for _, w := range want {
+			if !slices.Contains(text, w) {
+				t.Errorf("%s: %q is not said: %q", name, w, text)
+			}
+		}
 	}
 }

@@ -174,6 +174,17 @@ func (m *Match) phase(partners, functions []*orbitals.GroupOrbital) int {
 // practice, as in the angular overlap model.
 var bondWeights = [...]float64{1, 0.4, 0.1, 0.02}
 
+// Phase is +1 or −1, the factor of a combination of functions of an atom with which
+// it and a combination of a basis that transforms alike face each other with equal
+// signs, as CentralCopy.Phase tells it.
+func Phase(group *Basis, combination []float64, atom int, functions *Basis, central []float64) int {
+	m := Match{Orbitals: &Orbitals{Basis: group}, Central: atom, Functions: &Orbitals{Basis: functions}}
+	if m.overlap(combination, central) < -1e-9 {
+		return -1
+	}
+	return 1
+}
+
 // overlap is a model of the overlap of a combination of the basis with one of the
 // central functions. On the line between two atoms, with z from the first to
 // the second, functions of equal m overlap, and no others. With positive factors

@@ -174,3 +174,40 @@ func TestShellsOfElements(t *testing.T) {
 		}
 	}
 }
+
+// The sign of functions of an atom that faces a group orbital in phase is that of
+// the match. In bis(cyclopentadienyl)iron the lobes toward the metal of a1g are
+// negative where the outer ones are positive (pz of both rings points outward), so
+// that the metal's s goes with a minus; in the square plane a positive sum of σ
+// functions, which point to the metal, goes with +s.
+func TestPhaseIsThatOfTheMatch(t *testing.T) {
+	signs := map[string]int{}
+	for _, s := range []study.Study{
+		{Structure: "demo:sandwich-staggered", Basis: []string{"C:pz"}},
+		{Structure: "demo:square-plane", Basis: []string{"Cl:sigma"}},
+		{Structure: "demo:octahedron", Basis: []string{"C:sigma,pi"}},
+	} {
+		w := demoWork()
+		m, err := w.Match(t.Context(), s)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, p := range m.Pairs {
+			for _, c := range p.Central {
+				group, central := m.Orbitals.of(p.Irrep)[p.Copy], m.Functions.of(c.Irrep)[c.Copy]
+				for k := range group {
+					got := Phase(m.Orbitals.Basis, group[k].Coefficients, m.Central, m.Functions.Basis, central[k].Coefficients)
+					if got != c.Phase {
+						t.Errorf("%s %s: %d, want %d", s.Structure, m.Orbitals.Irreps[p.Irrep].Label, got, c.Phase)
+					}
+				}
+				if c.Copy == 0 {
+					signs[s.Structure+" "+m.Orbitals.Irreps[p.Irrep].Label] = c.Phase
+				}
+			}
+		}
+	}
+	if signs["demo:sandwich-staggered A1g"] != -1 || signs["demo:square-plane A1g"] != 1 {
+		t.Errorf("a1g with s: %v", signs)
+	}
+}
