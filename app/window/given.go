@@ -448,7 +448,8 @@ func (d *givenDrawing) list(b *work.Basis) {
 	names := b.AtomNames()
 	x := float64(pad)
 	const gap = 3.0
-	width := (d.width - 4*gap) / 5
+	const columns = 6 // so that those of six ligands, or of a ring, stand in one row
+	width := (d.width - (columns-1)*gap) / columns
 	for i, f := range b.Functions {
 		if x+width > pad+d.width+0.5 {
 			x = pad
