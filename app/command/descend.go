@@ -35,7 +35,8 @@ partners go over. Labels follow the axes of the group as far as they can; what
 the subgroup has to turn is told. The group is that of a structure, or any
 (--in).
 
-The subgroup is chosen by its symbol (--to), by operations that are kept
+The subgroup is chosen by its symbol (--to; C2v:2 is the second of the ways in
+which a C2v lies in the group), by operations that are kept
 (--keep: the smallest group that holds them, or with --to those that do), or by
 atoms that stay in place (--fix: the site symmetry of an atom). Without a choice
 all subgroups are listed, one a conjugacy class.
@@ -47,6 +48,7 @@ along the C2 or the plane on x.
 		Example: `  lobewright descend complex.xyz
   lobewright descend complex.xyz --to C2v
   lobewright descend --in Oh --to D4h
+  lobewright descend --in Oh --to C2v:2
   lobewright descend --in Oh --keep "C4(z)"
   lobewright descend complex.xyz --fix 3 --json
   lobewright descend --in D∞h --to D2h`,
@@ -79,7 +81,7 @@ along the C2 or the plane on x.
 	groupFlags(flags, &s)
 	jsonFlag(flags, &asJSON)
 	flags.StringVar(&choice.in, "in", "", "the `GROUP` to go out from, in the place of a structure")
-	flags.StringVar(&choice.to, "to", "", "the `GROUP` to descend to")
+	flags.StringVar(&choice.to, "to", "", "the `GROUP` to descend to: C2v, or C2v:2 for the second of the ways that are listed")
 	flags.StringArrayVar(&choice.keep, "keep", nil, "an `OPERATION` that is kept, by its name in the group; may be repeated")
 	flags.StringVar(&choice.fix, "fix", "", "`ATOMS` that stay in place, such as 3 or 3,5")
 	return cmd
@@ -107,6 +109,9 @@ type descentList struct {
 	subgroup string
 	found    []*symmetry.Descent
 	linear   *symmetry.LinearDescent
+	// embedding counts the only one of found, from 1, of embeddings; 0 where all
+	// are listed.
+	embedding, embeddings int
 }
 
 func (p *program) descend(ctx context.Context, s study.Study, c descentChoice) (*descentList, error) {
@@ -149,7 +154,14 @@ func (l *descentList) descendLinear(c descentChoice) error {
 	if len(c.keep) > 0 {
 		return fmt.Errorf("the operations of %s cannot be listed; choose the subgroup by its symbol alone", l.group.Symbol)
 	}
-	sub, err := symmetry.New(c.to)
+	symbol, n, err := work.ParseEmbedding(c.to)
+	if err != nil {
+		return err
+	}
+	if n > 1 {
+		return noEmbedding(symbol, l.group.Symbol, 1, c.to)
+	}
+	sub, err := symmetry.New(symbol)
 	if err != nil {
 		return err
 	}
@@ -157,11 +169,18 @@ func (l *descentList) descendLinear(c descentChoice) error {
 	for _, o := range sub.Operations {
 		most = min(max(most, o.Turn.Den), 6)
 	}
-	l.linear, err = symmetry.DescendLinear(l.group.Symbol, c.to, most)
+	l.linear, err = symmetry.DescendLinear(l.group.Symbol, symbol, most)
 	if err == nil {
 		l.subgroup = l.linear.Subgroup.Symbol
 	}
 	return err
+}
+
+func noEmbedding(symbol, group string, ways int, text string) error {
+	if ways == 1 {
+		return fmt.Errorf("%s lies in %s in one way; there is no %s", symbol, group, text)
+	}
+	return fmt.Errorf("%s lies in %s in %d ways that differ; %q is none of them", symbol, group, ways, text)
 }
 
 // choose finds the subgroup by its symbol, by operations, or by both.
@@ -175,6 +194,9 @@ func (l *descentList) choose(c descentChoice) error {
 		}
 		keep = append(keep, o.Index)
 	}
+	if strings.Contains(c.to, ":") {
+		return l.chooseEmbedding(c)
+	}
 	if c.to != "" {
 		var err error
 		l.found, err = work.Descents(l.group, c.to, keep)
@@ -184,6 +206,29 @@ func (l *descentList) choose(c descentChoice) error {
 		return err
 	}
 	return l.single(work.Generated(l.group, keep))
+}
+
+// chooseEmbedding finds the subgroup "C2v:2", in the conjugate that holds what is
+// kept.
+func (l *descentList) chooseEmbedding(c descentChoice) error {
+	symbol, n, err := work.ParseEmbedding(c.to)
+	if err != nil {
+		return err
+	}
+	all, err := work.Descents(l.group, symbol, nil)
+	if err != nil {
+		return err
+	}
+	if n > len(all) {
+		return noEmbedding(symbol, l.group.Symbol, len(all), c.to)
+	}
+	group := work.Group{Fit: &symmetry.Fit{Setting: l.group}}
+	d, err := group.Conjugate(all[n-1], strings.Join(c.keep, ","))
+	if err != nil {
+		return err
+	}
+	l.found, l.subgroup, l.embedding, l.embeddings = []*symmetry.Descent{d}, symbol, n, len(all)
+	return nil
 }
 
 func (l *descentList) fix(g *work.Group, text string) error {
@@ -233,6 +278,9 @@ func (l *descentList) text() string {
 			where := ""
 			if len(l.found) > 1 {
 				where = fmt.Sprintf(", embedding %d of %d", i+1, len(l.found))
+			}
+			if l.embeddings > 1 {
+				where = fmt.Sprintf(", embedding %d of %d", l.embedding, l.embeddings)
 			}
 			fmt.Fprintf(&b, "\nInto %s%s, keeping\n%s", l.subgroup, where, table.Kept(d).Text())
 			if turned(d.Rotation) {

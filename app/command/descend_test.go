@@ -140,3 +140,16 @@ func TestLinearGroupsDescend(t *testing.T) {
 		}
 	}
 }
+
+// A numbered subgroup is that one of all that are listed.
+func TestNumberedSubgroupsAreThoseListed(t *testing.T) {
+	var all contractDescent
+	runJSON(t, &all, "descend", "ideal:OC-6", "--to", "C2v")
+	for i, e := range all.Embeddings {
+		var one contractDescent
+		runJSON(t, &one, "descend", "ideal:OC-6", "--to", "C2v:"+string(rune('1'+i)))
+		if len(one.Embeddings) != 1 || strings.Join(one.Embeddings[0].Operations, " ") != strings.Join(e.Operations, " ") {
+			t.Errorf("C2v:%d: %v", i+1, one.Embeddings)
+		}
+	}
+}

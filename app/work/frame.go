@@ -106,7 +106,7 @@ func (d directions) operation(name string) (mgl64.Vec3, error) {
 	}
 	o, err := group.Operation(name, 0)
 	if err != nil {
-		return mgl64.Vec3{}, err
+		return mgl64.Vec3{}, message.Errorf("%w; an atom (2), two atoms (2,3) or a vector (1,0,0) can be given too", err)
 	}
 	if o.Axis == (mgl64.Vec3{}) {
 		return mgl64.Vec3{}, message.Errorf("%s has no axis", o.Name)
