@@ -32,6 +32,7 @@ type command struct {
 	label   func() string // where the text changes; else that of the key
 	on      func() bool   // commands that can be switched
 	can     func() bool   // nil: always
+	why     string        // key of why it cannot be done, where can says no
 	menu    []*command    // a menu of its own
 	refresh func() []*command
 	item    *fyne.MenuItem
@@ -141,8 +142,8 @@ func (u *ui) fileCommands() []*command {
 }
 
 func (u *ui) editCommands() []*command {
-	step := func(key string, of func() (study.Step, bool), do func()) *command {
-		return &command{key: key, do: do,
+	step := func(key, why string, of func() (study.Step, bool), do func()) *command {
+		return &command{key: key, do: do, why: why,
 			can: func() bool { _, can := of(); return can },
 			label: func() string {
 				if s, can := of(); can {
@@ -152,15 +153,15 @@ func (u *ui) editCommands() []*command {
 			}}
 	}
 	return []*command{
-		step("menu.undo", u.history.CanUndo, u.undo).byHand("menu.keyUndo"),
-		step("menu.redo", u.history.CanRedo, u.redo).byHand("menu.keyRedo"),
+		step("menu.undo", "menu.undoWhy", u.history.CanUndo, u.undo).byHand("menu.keyUndo"),
+		step("menu.redo", "menu.redoWhy", u.history.CanRedo, u.redo).byHand("menu.keyRedo"),
 		rule,
 		(&command{key: "menu.typeBasis", do: func() { u.win.Canvas().Focus(u.basis) }}).withKey(fyne.KeyB, control),
 		{key: "menu.noBasis", do: func() { u.setBasis(nil) }},
 		rule,
 		(&command{key: "menu.atomTable", also: func() string { return say("menu.atomTableAlso") }, do: u.showAtoms, on: func() bool { return u.atoms.pane.Visible() }}).withKey(fyne.KeyT, control),
-		{key: "menu.addAtom", do: u.atoms.add, can: u.atoms.pane.Visible},
-		{key: "menu.removeAtom", do: u.atoms.remove, can: u.atoms.pane.Visible},
+		{key: "menu.addAtom", do: u.atoms.add, can: u.atoms.pane.Visible, why: "menu.addAtomWhy"},
+		{key: "menu.removeAtom", do: u.atoms.remove, can: u.atoms.pane.Visible, why: "menu.addAtomWhy"},
 		rule,
 		{key: "menu.core", do: u.askCore},
 		{key: "menu.spectators", do: u.askIgnore},
@@ -282,6 +283,9 @@ func (c *command) menuLabel() string {
 	}
 	return c.text()
 }
+
+// off tells whether a command cannot be done now.
+func (c *command) off() bool { return c.can != nil && !c.can() }
 
 // makeItem makes the menu item of a command.
 func (u *ui) makeItem(c *command) *fyne.MenuItem {

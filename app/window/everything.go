@@ -28,12 +28,15 @@ func (u *ui) everything() []listedCommand {
 }
 
 // found are the commands whose name, menu or other words hold every word that is
-// typed; those whose name begins with the first word come first.
+// typed; those whose name begins with the first word come first, and what cannot
+// be done now last.
 func found(all []listedCommand, typed string) []listedCommand {
 	words := strings.Fields(strings.ToLower(typed))
 	rank := func(c listedCommand) int {
 		name := strings.ToLower(c.name)
 		switch {
+		case c.off():
+			return 3
 		case len(words) == 0:
 			return 0
 		case strings.HasPrefix(name, words[0]):
@@ -78,10 +81,13 @@ func (u *ui) showEverything() {
 				beside = keys + "   " + beside
 			}
 			name := c.name
+			if c.off() && c.why != "" {
+				beside = say(c.why) + "   " + beside
+			}
 			if c.on != nil && c.on() {
 				name = "✓ " + name
 			}
-			rows = append(rows, choiceRow{name: name, beside: beside, off: c.can != nil && !c.can(), do: func() {
+			rows = append(rows, choiceRow{name: name, beside: beside, off: c.off(), do: func() {
 				hide()
 				u.run(c.command)
 			}})

@@ -315,7 +315,7 @@ func (d *givenDrawing) frames() {
 	x = pad
 	offer("ladder", notation.Words(say("frames.toLadder")), say("frames.toLadderHint"), s.As != "", func() { d.pages.turnTo(ladderPage) })
 	offer("second", notation.Words(say("frames.toSecond")), say("frames.toSecondHint"), s.Held.Frame != "" || s.Held.Z != "" || s.Held.X != "", func() { d.pages.turnTo(secondPage) })
-	offer("subgroups", notation.Words(say("frames.toSubgroups")), say("frames.toSubgroupsHint"), s.Subgroup != "", func() { d.pages.turnTo(subgroupsPage) })
+	offer("subgroups", notation.Words(say("frames.toSubgroups")), say("frames.toSubgroupsHint"), false, func() { d.pages.turnTo(subgroupsPage) })
 	d.y += chipHeight + 4
 }
 

@@ -185,15 +185,23 @@ func (u *ui) ledgerNeed() string {
 	case g != nil && g.Fit.Setting.Infinite():
 		return say("ledger.infinite", g.Fit.Setting.Symbol)
 	case len(s.Basis) == 0:
-		return say("ledger.needBasis")
+		return u.onLeft(say("ledger.needBasis"))
 	case u.state.Problem(work.ConcernElement) != nil:
 		return told(u.state.Problem(work.ConcernElement))
 	case s.Projection.Irrep == "":
 		return say("ledger.needIrrep")
 	case s.Projection.Function == 0:
-		return say("ledger.needFunction")
+		return u.onLeft(say("ledger.needFunction"))
 	}
 	return ""
+}
+
+// onLeft adds to what is to be chosen on the left how to get there.
+func (u *ui) onLeft(text string) string {
+	if u.pages.open != noPage || u.atoms.pane.Visible() {
+		text += " " + say("ledger.covered")
+	}
+	return text
 }
 
 // columnWidth is that of the widest entry, and no less than columns need to be

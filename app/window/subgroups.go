@@ -156,12 +156,15 @@ func (d *pageDrawing) allSubgroups() {
 		if on {
 			chosen = &list[i]
 		}
-		label := notation.Group(e.Subgroup.Symbol)
+		label, hint := notation.Group(e.Subgroup.Symbol), say("frames.subgroupHint", keptText(e.Descent))
 		if e.Of > 1 {
-			label = label.Then(notation.Words(" " + strconv.Itoa(e.Embedding)))
+			label, hint = markedGroup(e, c.list), say("frames.subgroupOfHint", keptText(e.Descent), name)
+			if d.board.measure(label, d.quiet) > d.width/2 {
+				label = notation.Group(e.Subgroup.Symbol).Then(notation.Words(" " + strconv.Itoa(e.Embedding)))
+			}
 		}
 		d.choice(&x, label, chip{
-			name: "subgroup " + name, hint: say("frames.subgroupHint", keptText(e.Descent)), on: on, do: func() { d.chooseSubgroup(name, d.pages.subgroups.kept(e)) },
+			name: "subgroup " + name, hint: hint, on: on, do: func() { d.chooseSubgroup(name, d.pages.subgroups.kept(e)) },
 		})
 	}
 	d.endChoices()
@@ -201,6 +204,79 @@ func keptText(d *symmetry.Descent) string {
 		names = append(names, notation.Operation(d.Group.Operations[o].Name).String())
 	}
 	return strings.Join(names, "  ")
+}
+
+// markedGroup writes a subgroup with what tells it from the others of its
+// symbol: its axis, and what they do not hold.
+func markedGroup(e work.Embedded, all []work.Embedded) notation.Text {
+	marks := marksOf(e, all)
+	if len(marks) == 0 {
+		return notation.Group(e.Subgroup.Symbol)
+	}
+	names := notation.Text(nil)
+	for i, m := range marks {
+		if i > 0 {
+			names = names.Then(notation.Words(", "))
+		}
+		names = names.Then(notation.Operation(e.Group.Operations[m].Name))
+	}
+	sentence := say("frames.subgroupAlong")
+	if first := e.Group.Operations[marks[0]].Turn; first.Improper {
+		sentence = say("frames.subgroupWith")
+	}
+	return fill(sentence, notation.Group(e.Subgroup.Symbol), names)
+}
+
+// marksOf are operations of a subgroup, by index in the group, that no other
+// subgroup of its symbol holds all of, nor any that the group carries into it:
+// the principal one first.
+func marksOf(e work.Embedded, all []work.Embedded) []int {
+	main := mainOperation(e)
+	if main < 0 {
+		return nil
+	}
+	marks := []int{main}
+	holds := func(o work.Embedded, class int) bool {
+		return slices.ContainsFunc(o.Operations, func(k int) bool { return o.Group.Operations[k].Class == class })
+	}
+	for _, o := range all {
+		if o.Subgroup.Symbol != e.Subgroup.Symbol || o.Embedding == e.Embedding {
+			continue
+		}
+		missing := func(k int) bool { return !holds(o, e.Group.Operations[k].Class) }
+		if slices.ContainsFunc(marks, missing) {
+			continue
+		}
+		if i := slices.IndexFunc(e.Operations, missing); i >= 0 {
+			marks = append(marks, e.Operations[i])
+		}
+	}
+	return marks
+}
+
+// mainOperation is the turn of the highest order, along the z of the subgroup
+// where several have it, or without turns the first operation beside E; -1 if
+// there is none.
+func mainOperation(e work.Embedded) int {
+	best, order := -1, 0.0
+	z := e.Rotation.Row(2)
+	for _, k := range e.Operations {
+		o := e.Group.Operations[k]
+		if o.Name == "E" {
+			continue
+		}
+		rank := 0.5
+		if !o.Turn.Improper && o.Turn.Num == 1 {
+			rank = float64(o.Turn.Den)
+			if cos := o.Axis.Dot(z); cos*cos > 1-1e-6 {
+				rank += 0.5
+			}
+		}
+		if rank > order {
+			best, order = k, rank
+		}
+	}
+	return best
 }
 
 // narrowing offers to keep operations and to leave atoms in place.

@@ -7,6 +7,9 @@ import (
 
 	"fyne.io/fyne/v2/canvas"
 	"fyne.io/fyne/v2/test"
+
+	"lobewright/app/work"
+	"lobewright/symmetry"
 )
 
 // reply types an answer into the sheet that is open and returns what it says
@@ -73,5 +76,56 @@ func TestALinearMoleculeIsTakenForAnyFiniteGroupWithItsAxis(t *testing.T) {
 			t.Errorf("%s is used and %s is shown", c.group, got)
 		}
 		b.shut()
+	}
+}
+
+// Subgroups of one symbol are told apart by what their buttons say.
+func TestLikeSubgroupsAreToldApartByWhatTheyHold(t *testing.T) {
+	for _, symbol := range []string{"D2h", "D4h", "D6h", "Oh", "D4d"} {
+		g, err := symmetry.New(symbol)
+		if err != nil {
+			t.Fatal(err)
+		}
+		all, err := work.Subgroups(g)
+		if err != nil {
+			t.Fatal(err)
+		}
+		seen := map[string]string{}
+		several := 0
+		for _, e := range all {
+			if e.Of < 2 {
+				continue
+			}
+			several++
+			label := markedGroup(e, all).String()
+			if other, twice := seen[label]; twice {
+				t.Errorf("%s: %s and %s are both called %q", symbol, other, e.Name(), label)
+			}
+			seen[label] = e.Name()
+		}
+		if several == 0 {
+			t.Errorf("%s has no like subgroups", symbol)
+		}
+	}
+}
+
+// What cannot be done now stands last in the list of everything, with the
+// reason.
+func TestWhatCannotBeDoneStandsLast(t *testing.T) {
+	b := newBench(t, t.TempDir())
+	b.open("water")
+	list := found(b.everything(), say("menu.addAtom"))
+	if len(list) == 0 || !list[len(list)-1].off() {
+		t.Fatalf("%d commands are found", len(list))
+	}
+	off := false
+	for _, c := range found(b.everything(), "atom") {
+		if off && !c.off() {
+			t.Errorf("%q stands after what cannot be done", c.name)
+		}
+		off = off || c.off()
+	}
+	if !off {
+		t.Error("nothing is off")
 	}
 }
