@@ -129,25 +129,11 @@ func Rows(m mgl64.Mat3) Table {
 // LinearNames says which irreps of the linear group go over into those of the
 // finite group that hold functions of the basis.
 func LinearNames(o *work.Orbitals) Table {
-	const most = 3
 	t := Table{Head: []string{o.Fit.Setting.Symbol, o.Linear}}
-	d, err := symmetry.DescendLinear(o.Linear, o.Fit.Setting.Symbol, most)
-	if err != nil {
-		return t
-	}
 	for i, irrep := range o.Irreps {
-		if o.Content[i] == 0 {
-			continue
+		if o.Content[i] > 0 {
+			t.Add(irrep.Label, strings.Join(o.LinearNames(i), " or "))
 		}
-		var names []string
-		for k, content := range d.Correlation {
-			for _, c := range content {
-				if c.Irrep.Label == irrep.Label {
-					names = append(names, d.Irreps[k].Label)
-				}
-			}
-		}
-		t.Add(irrep.Label, strings.Join(names, " or "))
 	}
 	return t
 }
