@@ -322,6 +322,10 @@ func combination(list []named, v *mat.VecDense) string {
 		// of x, y and z keep their order.
 		sort.SliceStable(terms, func(a, b int) bool { return math.Abs(terms[a].c) > math.Abs(terms[b].c)+negligible })
 	}
+	// None begins with a minus that need not: z2-y2, y-x.
+	if len(terms) > 0 && terms[0].c < 0 {
+		sort.SliceStable(terms, func(a, b int) bool { return terms[a].c > 0 && terms[b].c < 0 })
+	}
 	common := math.Inf(1)
 	for _, t := range terms {
 		common = math.Min(common, math.Abs(t.c))

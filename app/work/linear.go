@@ -30,7 +30,7 @@ func (o *Orbitals) LinearNames(irrep int) []string {
 			}
 			label := d.Irreps[k].Label
 			all = append(all, label)
-			if occurs[partOf(label)] && !strings.Contains(label, "−") {
+			if occurs[partOf(label)] && !strings.HasSuffix(label, "-") {
 				out = append(out, label)
 			}
 		}

@@ -15,6 +15,7 @@ func TestNamesInTheLinearGroupComeFromFunctionsOnTheAxis(t *testing.T) {
 		{"typed", "D2h", "O:s", "Ag=Σg+ B1u=Σu+"},
 		{"typed", "D2h", "O:p", "Ag=Σg+ B2g=Πg B3g=Πg B1u=Σu+ B2u=Πu B3u=Πu"},
 		{"demo:rod", "C3v", "N:px,py", "E=Πg/Πu"},
+		{"demo:rod", "C2", "Ag:s,p", "A=Σg+/Σu+ B=Πu"},
 		{"demo:rod", "D3d", "Ag:d", "A1g=Σg+ Eg=Πg/Δg"},
 		{"demo:rod", "D3d", "Ag:f", "A1u=Φu A2u=Σu+/Φu Eu=Πu/Δu"},
 		{"demo:rod", "D2h", "N:dx2-y2,dxy", "Ag=Δg B1g=Δg Au=Δu B1u=Δu"},

@@ -138,7 +138,7 @@ func TestAFullTurnChangesNothing(t *testing.T) {
 
 // TestATurnOfEuPutsLobesBetweenTheLigands: worked out by hand. Partners (x, y)
 // of the σ functions of a square, (φ1 − φ3)/√2 and (φ2 − φ4)/√2, become
-// (φ1 + φ2 − φ3 − φ4)/2, like x + y, and (−φ1 + φ2 + φ3 − φ4)/2, like −x + y;
+// (φ1 + φ2 − φ3 − φ4)/2, like x + y, and (−φ1 + φ2 + φ3 − φ4)/2, like y − x;
 // C4 still carries the first into the second.
 func TestATurnOfEuPutsLobesBetweenTheLigands(t *testing.T) {
 	w := demoWork()
@@ -148,7 +148,7 @@ func TestATurnOfEuPutsLobesBetweenTheLigands(t *testing.T) {
 	a, _ := FindIrrep("Eu", "", o.Irreps)
 	for k, want := range []struct{ form, like string }{
 		{"(φ1 + φ2 − φ3 − φ4)/2", "x+y"},
-		{"(−φ1 + φ2 + φ3 − φ4)/2", "-x+y"},
+		{"(−φ1 + φ2 + φ3 − φ4)/2", "y-x"},
 	} {
 		form, _ := orbitals.FindClosedForm(o.Partners(a, 0)[k].Coefficients)
 		if form.String() != want.form || o.Irreps[a].Functions[k][0] != want.like {
@@ -161,7 +161,7 @@ func TestATurnOfEuPutsLobesBetweenTheLigands(t *testing.T) {
 	}
 	s.Operation = "σv(xz)"
 	if p := played(t, w, s); len(p.Partners) != 1 || p.Partners[0].Function != 1 || math.Abs(p.Partners[0].Coefficient+1) > 1e-12 {
-		t.Errorf("σv(xz) exchanges x + y with −(−x + y): %v", p.Partners)
+		t.Errorf("σv(xz) exchanges x + y with −(y − x): %v", p.Partners)
 	}
 	s.Projection.Function = 1
 	l, err := w.Ledger(context.Background(), s)
