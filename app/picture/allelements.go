@@ -104,43 +104,5 @@ func (n namedElement) belongs(operations []work.Operation) bool {
 	return false
 }
 
-// addElementNames writes the names beside the elements, each at the first of
-// its points where it covers no other name.
-func (s *stage) addElementNames(f *Frame, fonts *render.Fonts) {
-	perMM := f.Quality.DPI / 25.4
-	scr := screen{width: f.Width, height: f.Height, right: float64(f.Width), bottom: float64(f.Height), pixelsPerMM: perMM}
-	seen := newSight(f.Camera, scr)
-	taken := []rectangle{s.corner}
-	for _, n := range s.named {
-		text := runs(n.name)
-		width, ascent, _ := fonts.Measure(text, elementSize)
-		width, ascent = (width+0.4)*perMM, (ascent+0.4)*perMM
-		at, found := n.points[0], false
-		var place rectangle
-		for _, p := range n.points {
-			d := seen.disc(ball{p, 0})
-			if !(math.Abs(d.x) < 1e5) || !(math.Abs(d.y) < 1e5) {
-				continue
-			}
-			r := rectangle{d.x - width/2, d.x + width/2, d.y - ascent/2, d.y + ascent/2}
-			free := true
-			for _, t := range taken {
-				free = free && !r.overlaps(t)
-			}
-			if free || !found && place == (rectangle{}) {
-				at, place = p, r
-			}
-			if free {
-				found = true
-				break
-			}
-		}
-		taken = append(taken, place)
-		s.scene.Add(render.Text{
-			At: at, Runs: text, Size: elementSize, Halo: haloWidth, HaloColor: paint(s.palette.Ground), Through: true, Fixed: true,
-		}, flat(s.palette.Element))
-	}
-}
-
 // elementSize is the size of the names of elements, in points.
 const elementSize = 8.5

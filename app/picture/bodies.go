@@ -36,12 +36,16 @@ type stage struct {
 	// atoms are the balls of all atoms; lobes those of what is drawn on them.
 	// elements those at the rim of symmetry elements.
 	atoms, lobes, elements []ball
+	// arrow are balls along the arrow that shows the sense of a turn.
+	arrow []ball
 	// corner is where the triad stands on the picture, in pixels.
 	corner rectangle
 	// carries marks the atoms with functions; nil without a basis.
 	carries []bool
 	// named are the symmetry elements whose names are written.
 	named []namedElement
+	// written are where the names of atoms stand on a live picture, in pixels.
+	written []rectangle
 }
 
 // addMolecule draws the atoms and bonds of a structure.

@@ -47,6 +47,9 @@ type Shown struct {
 	Held *work.Exchange
 	// Notes are lines in the upper left corner.
 	Notes []notation.Text
+	// Nameless says, below them, for how many symmetry elements there is no room
+	// for a name: a form with one %d; empty if that is not said.
+	Nameless string
 	// Nodes are nodal planes to be drawn.
 	Nodes []work.NodalPlane
 	Look  study.Look
@@ -58,6 +61,11 @@ type Shown struct {
 // from frame to frame, and serves one goroutine at a time.
 type Live struct {
 	labels map[int]labelOffset
+	// elementNames are where the names of symmetry elements stand; nameless is how
+	// many are left out.
+	elementNames map[string]nameSpot
+	nameless     int
+
 	group  *work.Group
 	room   room
 	steady bool // labels stay where they stand
@@ -110,7 +118,7 @@ func (l *Live) Frame(shown Shown, orbit Orbit, width, height int, dpi float64, q
 	}
 	if shown.Group != nil {
 		if l.group != shown.Group {
-			l.group, l.labels = shown.Group, nil
+			l.group, l.labels, l.elementNames = shown.Group, nil, nil
 		}
 		l.fill(s, shown, f.Camera.Eye.Sub(f.Camera.Target), quick)
 		spaceHatching(s.scene.Shapes, 25.4/dpi/orbit.PerPixel(width, height))
@@ -120,7 +128,7 @@ func (l *Live) Frame(shown Shown, orbit Orbit, width, height int, dpi float64, q
 			l.addLabels(s, shown, f, quick || l.steady, fonts)
 		}
 		if shown.Look.Elements {
-			s.addElementNames(f, fonts)
+			l.addElementNames(s, shown.Group, f, fonts, shown.Nameless, len(shown.Notes), quick || l.steady)
 		}
 	}
 	f.Scene = s.scene
@@ -226,7 +234,7 @@ func (s *stage) liveTriad(f *Frame, held *work.Exchange) {
 	for _, mark := range triadMarks(held) {
 		for _, g := range mark.triadShapes(length, axisWidth, liveLabel) {
 			at := place
-			s.scene.Shapes = append(s.scene.Shapes, render.Shape{Geometry: g, Material: ink, Place: &at})
+			s.scene.Shapes = append(s.scene.Shapes, render.Shape{Geometry: mark.besideTip(g, f.Camera, s.scene.Fonts), Material: ink, Place: &at})
 		}
 	}
 	side := 2 * (length*triadLetter + inset) * f.Quality.DPI / 25.4
@@ -251,15 +259,20 @@ func NotesBand(lines int, dpi float64) float64 {
 // liveNotes writes lines into the upper left corner.
 func (s *stage) liveNotes(f *Frame, notes []notation.Text) {
 	for i, note := range notes {
-		s.scene.Shapes = append(s.scene.Shapes, render.Shape{
-			Geometry: render.Text{
-				Runs: runs(note), Size: liveLabel, AlignX: -1, AlignY: 1, Fixed: true, Through: true,
-				Halo: haloWidth, HaloColor: paint(s.palette.Ground),
-			},
-			Material: flat(s.palette.Quiet),
-			Place:    &render.Place{Y: 1, OffsetX: noteInset, OffsetY: -noteInset - noteLine*float64(i), Unit: 1},
-		})
+		s.liveNote(i, note)
 	}
+}
+
+// liveNote writes one line; lines count from 0.
+func (s *stage) liveNote(line int, note notation.Text) {
+	s.scene.Shapes = append(s.scene.Shapes, render.Shape{
+		Geometry: render.Text{
+			Runs: runs(note), Size: liveLabel, AlignX: -1, AlignY: 1, Fixed: true, Through: true,
+			Halo: haloWidth, HaloColor: paint(s.palette.Ground),
+		},
+		Material: flat(s.palette.Quiet),
+		Place:    &render.Place{Y: 1, OffsetX: noteInset, OffsetY: -noteInset - noteLine*float64(line), Unit: 1},
+	})
 }
 
 // Fonts are the built-in typefaces. The error is a fault of the program.

@@ -2,6 +2,7 @@ package picture
 
 import (
 	"context"
+	"fmt"
 	"image"
 	"math"
 	"testing"
@@ -248,6 +249,66 @@ func TestTheSenseOfATurnIsOnTheViewersSide(t *testing.T) {
 			if side := toward.Sub(axis.Mul(axis.Dot(toward))); side.Len() > 1e-9 && u.Dot(side.Normalize()) < 1-1e-9 {
 				t.Errorf("axis %v seen from %v: the arrow points along %v", axis, toward, u)
 			}
+		}
+	}
+}
+
+// The octahedron has 22 elements with names: on a picture of a usual size no two
+// of these lie on each other, nor on the name of an atom, and what has no room is
+// counted.
+func TestNamesOfElementsDoNotLieOnEachOther(t *testing.T) {
+	g, err := newWork().Group(context.Background(), study.Study{Structure: "demo:octahedron"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, side := range []int{300, 700} {
+		live := new(Live)
+		form := "%d elements have no name"
+		f, err := live.Frame(Shown{Group: g, Look: study.Look{Elements: true, NoAxes: true}, Nameless: form}, BestOrbit(g, nil), side, side, 96, false)
+		if err != nil {
+			t.Fatal(err)
+		}
+		perMM := 96 / 25.4
+		seen := newSight(f.Camera, screen{width: side, height: side, pixelsPerMM: perMM})
+		var boxes []rectangle
+		var names []string
+		written, said := 0, ""
+		for _, s := range f.Scene.Shapes {
+			text, ok := s.Geometry.(render.Text)
+			if !ok {
+				continue
+			}
+			name := ""
+			for _, r := range text.Runs {
+				name += r.Text
+			}
+			if s.Place != nil {
+				said = name
+				continue
+			}
+			w, ascent, _ := f.Scene.Fonts.Measure(text.Runs, text.Size)
+			w, ascent = w*perMM, ascent*perMM
+			at := seen.disc(ball{text.At, 0})
+			x, y := at.x+text.OffsetX*perMM-w/2*(1+text.AlignX), at.y-text.OffsetY*perMM-ascent/2*(1-text.AlignY)
+			boxes = append(boxes, rectangle{x, x + w, y, y + ascent})
+			names = append(names, name)
+			if text.Size == elementSize {
+				written++
+			}
+		}
+		for i, a := range boxes {
+			for k, b := range boxes[:i] {
+				if a.overlaps(b) {
+					t.Errorf("%d pixels: %s lies on %s", side, names[i], names[k])
+				}
+			}
+		}
+		all := len(g.Elements())
+		if written+live.nameless != all || side == 700 && live.nameless > 0 {
+			t.Errorf("%d pixels: %d of %d elements have names, %d are counted as without", side, written, all, live.nameless)
+		}
+		if want := fmt.Sprintf(form, live.nameless); live.nameless > 0 && said != want {
+			t.Errorf("%d pixels: it says %q, not %q", side, said, want)
 		}
 	}
 }

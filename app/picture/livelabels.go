@@ -24,6 +24,9 @@ func (l *Live) addLabels(s *stage, shown Shown, f *Frame, quick bool, fonts *ren
 			obstacles = append(obstacles, seen.disc(b))
 		}
 		obstacles = append(obstacles, s.bondDiscs(shown.Group, seen)...)
+		for _, b := range append(append([]ball(nil), s.elements...), s.arrow...) {
+			obstacles = append(obstacles, seen.disc(b))
+		}
 	}
 	if l.labels == nil {
 		l.labels = map[int]labelOffset{}
@@ -42,6 +45,7 @@ func (l *Live) addLabels(s *stage, shown Shown, f *Frame, quick bool, fonts *ren
 		width, ascent, _ := fonts.Measure(text, liveLabel)
 		place := l.labelPlace(i, around, width*perMM, ascent*perMM, obstacles, taken, scr, quick)
 		taken = append(taken, place)
+		s.written = append(s.written, place)
 		colour := s.palette.Ink
 		if slices.Contains(shown.Marked, i) {
 			colour = s.palette.Accent

@@ -1,6 +1,8 @@
 package picture
 
 import (
+	"math"
+
 	"github.com/go-gl/mathgl/mgl64"
 
 	"lobewright/app/notation"
@@ -60,6 +62,24 @@ func (m triadMark) triadShapes(length, width, size float64) []render.Geometry {
 		out = append(out, render.Arrow{To: m.direction, Radius: width / 2 / length, HeadLength: head, HeadRadius: wide})
 	}
 	return append(out, render.Text{At: m.direction.Mul(triadLetter), Runs: runs(m.letters), Size: size, Fixed: true, Through: true})
+}
+
+// besideTip moves letters with an index, which are wide, off the tip of their
+// arrow as the camera sees it.
+func (m triadMark) besideTip(g render.Geometry, c render.Camera, fonts *render.Fonts) render.Geometry {
+	text, ok := g.(render.Text)
+	const foreshortened = 0.15
+	seen := c.Rotation().Mul3x1(m.direction)
+	flat := math.Hypot(seen[0], seen[1])
+	if !ok || len(m.letters) < 2 || flat < foreshortened || fonts == nil {
+		return g
+	}
+	x, y := seen[0]/flat, seen[1]/flat
+	width, ascent, descent := fonts.Measure(text.Runs, text.Size)
+	const gap = 0.8 // mm
+	r := min(width/2/max(math.Abs(x), 1e-3), (ascent+descent)/2/max(math.Abs(y), 1e-3)) + gap
+	text.At, text.OffsetX, text.OffsetY = m.direction, r*x, r*y
+	return text
 }
 
 // axisLetters are x, y and z with an index, which is empty for the frame in

@@ -52,6 +52,9 @@ func (s *stage) addSense(op work.Operation, along mgl64.Vec3, reach float64, tow
 		points[k] = at(bow * float64(k) / float64(len(points)-1))
 	}
 	s.scene.Add(render.Line{Points: points, Width: 0.5}, s.elementMaterial(1))
+	for k := 0; k <= 4; k++ {
+		s.arrow = append(s.arrow, ball{at(angle * float64(k) / 4), tipRadius * reach})
+	}
 	s.scene.Add(render.Cone{Base: at(bow), Apex: at(angle), Radius: tipRadius * reach}, s.elementMaterial(1))
 }
 

@@ -130,6 +130,7 @@ func (p *pages) show(shown *picture.Shown) {
 	if e, _ := p.second.of(shown.Group, s.Held); e != nil {
 		shown.Held = e
 	}
+	shown.Nameless = say("frames.nameless")
 	if s.Look.Displacements {
 		shown.Notes = append(shown.Notes, displacementNote(shown.Group))
 	}
