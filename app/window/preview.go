@@ -9,6 +9,7 @@ import (
 	"image/color"
 	"image/draw"
 	"math"
+	"strings"
 
 	"fyne.io/fyne/v2"
 
@@ -220,7 +221,13 @@ func (p *preview) draw(b *board) {
 			text = p.sizes(true)
 		}
 	}
-	b.text(pad, top+pad+textSize, words(b.clipped(text, b.width-2*pad, s)), s)
+	base := top + pad + textSize
+	if paper, pixels, two := strings.Cut(text, "; "); two && b.measure(words(text), s) > b.width-2*pad {
+		const upper = 14.0 // the first of two lines above the page
+		b.text(pad, top+upper, words(paper), s)
+		text, base = pixels, top+upper+1.4*secondSize
+	}
+	b.text(pad, base, words(b.clipped(text, b.width-2*pad, s)), s)
 	if p.image == nil {
 		p.pane.extent = 0
 		return
