@@ -39,7 +39,7 @@ The subgroup is chosen by its symbol (--to; C2v:2 is the second of the ways in
 which a C2v lies in the group), by operations that are kept
 (--keep: the smallest group that holds them, or with --to those that do), or by
 atoms that stay in place (--fix: the site symmetry of an atom). Without a choice
-all subgroups are listed, one a conjugacy class.
+all subgroups are listed, one of each class of conjugate ones.
 
 A linear group descends into the groups with the same z: C∞v into Cn and Cnv,
 D∞h into every Cn, Cnv, Cnh, Dn, Dnh, Dnd and S2n. The x of the partners lies
@@ -248,7 +248,7 @@ func (l *descentList) single(operations []int) error {
 	return nil
 }
 
-// all lists one subgroup a conjugacy class.
+// all lists one subgroup of each class of conjugate ones.
 func (l *descentList) all() error {
 	sets, err := l.group.Subgroups()
 	if err != nil {
@@ -272,7 +272,7 @@ func (l *descentList) text() string {
 		fmt.Fprintf(&b, "\nInto %s, the same axes\n", l.subgroup)
 		fmt.Fprintf(&b, "\nCorrelation\n%s", table.LinearCorrelation(l.group.Symbol, l.linear).Text())
 	case l.subgroup == "":
-		b.WriteString("\nSubgroups, one a conjugacy class\n" + table.Subgroups(l.found).Text())
+		b.WriteString("\nSubgroups, one of each class of conjugate ones\n" + table.Subgroups(l.found).Text())
 	default:
 		for i, d := range l.found {
 			where := ""
