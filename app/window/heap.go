@@ -14,8 +14,8 @@ import (
 // use that looking never becomes the main work. Without a limit it would hold
 // twice what was ever in use at once.
 const (
-	usualHeap = 110 << 20
-	roomHeap  = 30 << 20
+	usualHeap = 100 << 20
+	roomHeap  = 20 << 20
 	// garbage is how much of what is in use may come to it unused, in percent:
 	// a picture in motion makes little.
 	garbage = 60
@@ -31,14 +31,17 @@ func limitHeap(done <-chan struct{}) {
 	debug.SetGCPercent(garbage)
 	debug.SetMemoryLimit(usualHeap)
 	go func() {
-		const often = time.Second
+		const often, seldom = time.Second, 15
 		tick := time.NewTicker(often)
 		defer tick.Stop()
-		for {
+		for n := 1; ; n++ {
 			select {
 			case <-done:
 				return
 			case <-tick.C:
+			}
+			if n%seldom == 0 {
+				trimC()
 			}
 			metrics.Read(live)
 			if live[0].Value.Kind() == metrics.KindUint64 {
