@@ -35,7 +35,7 @@ func conventionClauses(t assets.Texts, fit *symmetry.Fit, names []string) (z, x 
 	return z, x
 }
 
-// ConventionTexts are the clauses of ConventionIn, set. Asides tells whether
+// ConventionTexts are the clauses of ConventionIn, set; asides tells whether
 // remarks in brackets, on how a rule settles ties, are among them.
 func ConventionTexts(t assets.Texts, fit *symmetry.Fit, names []string, asides bool) []Text {
 	marked := make([]string, len(names))

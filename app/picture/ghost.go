@@ -2,6 +2,7 @@ package picture
 
 import (
 	"math"
+	"slices"
 
 	"github.com/go-gl/mathgl/mgl64"
 
@@ -13,26 +14,34 @@ import (
 // be seen, and where both surfaces come close, by the nucleus, they would be
 // drawn in patches.
 func uncovered(g *work.Group, parts []part, by mgl64.Mat3) []part {
+	const closeTo = 0.02 // Å
+	at := g.Sites.Positions
+	on := map[int][]part{} // by site
+	for _, p := range parts {
+		on[p.site] = append(on[p.site], p)
+	}
+	come := map[int][]part{} // what has come to a site
+	for to := range on {
+		for from, list := range on {
+			if by.Mul3x1(at[from]).Sub(at[to]).Len() < closeTo {
+				come[to] = list
+			}
+		}
+	}
 	var out []part
 	for _, ghost := range parts {
-		covered := false
-		for _, p := range parts {
-			covered = covered || covers(g, p, by, ghost)
-		}
-		if !covered {
+		if !slices.ContainsFunc(come[ghost.site], func(p part) bool { return covers(p, by, ghost) }) {
 			out = append(out, ghost)
 		}
 	}
 	return out
 }
 
-// covers tells whether a part that an operation has carried lies around another
-// that has stayed.
-func covers(g *work.Group, p part, by mgl64.Mat3, ghost part) bool {
-	const closeTo, alike = 0.02, 0.02 // Å, of the largest value
-	at := g.Sites.Positions
-	if p.shell != ghost.shell || p.length < (1-1e-6)*ghost.length || p.amplitude() == 0 || ghost.amplitude() == 0 ||
-		by.Mul3x1(at[p.site]).Sub(at[ghost.site]).Len() > closeTo {
+// covers tells whether a part that an operation has carried to the place of
+// another, which has stayed, lies around it.
+func covers(p part, by mgl64.Mat3, ghost part) bool {
+	const alike = 0.02 // of the largest value
+	if p.shell != ghost.shell || p.length < (1-1e-6)*ghost.length || p.amplitude() == 0 || ghost.amplitude() == 0 {
 		return false
 	}
 	moved, stayed, back := p.angular(), ghost.angular(), by.Transpose()

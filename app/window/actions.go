@@ -7,7 +7,6 @@ import (
 	"fmt"
 	"math"
 	"slices"
-
 	"strings"
 
 	"github.com/go-gl/mathgl/mgl64"
